@@ -1,0 +1,195 @@
+//! One file a joint kind: which checks, in which order; row forces, moment and shear.
+
+use crate::origin::{Datum, Missing, Origin};
+use crate::units::{Force, Length, Moment};
+use crate::working::Working;
+
+/// Which way the moment bends the joint.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Sense {
+    /// Tension at the top.
+    Hogging,
+    /// Tension at the bottom.
+    Sagging,
+}
+
+/// One row's part in the moment resistance.
+#[derive(Clone, Debug)]
+pub struct RowForce {
+    /// From the top, from 1, whatever the sense.
+    pub row: usize,
+    /// From the centre of compression.
+    pub lever_arm: Length,
+    /// Alone and in groups, before compression and panel shear cut it back.
+    pub potential: Force,
+    /// What counts.
+    pub force: Force,
+    /// What governs the force.
+    pub governed_by: String,
+}
+
+/// One component's check, with its working.
+#[derive(Clone, Debug)]
+pub struct Component {
+    /// Its id: `column-web-in-compression`.
+    pub id: String,
+    /// In words with rows: "column flange in bending, rows 1-2".
+    pub title: String,
+    /// Clause.
+    pub clause: &'static str,
+    /// Its resistance.
+    pub resistance: Force,
+    /// What it carries at the joint's own full moment resistance.
+    pub at_full: Force,
+    /// The working.
+    pub working: Working,
+}
+
+/// The moment resistance in one sense and for one β.
+#[derive(Clone, Debug)]
+pub struct MomentResistance {
+    /// Which sense.
+    pub sense: Sense,
+    /// The transformation parameter it was computed with.
+    pub beta: f64,
+    /// M_j,Rd, welds included where they are known.
+    pub moment: Moment,
+    /// What governs.
+    pub governed_by: String,
+    /// Row forces from the tension side.
+    pub rows: Vec<RowForce>,
+    /// Every component.
+    pub components: Vec<Component>,
+    /// Notes that the reader needs: "row 1 passes 1.9 Ft,Rd: lower rows limited in proportion".
+    pub notes: Vec<String>,
+}
+
+/// An input of the calculation with its origin, for the sheet.
+#[derive(Clone, Debug)]
+pub struct Input {
+    /// What it is: "end plate thickness".
+    pub name: String,
+    /// As printed: "25 mm".
+    pub value: String,
+    /// Where it came from.
+    pub origin: Origin,
+}
+
+impl Input {
+    /// An input from a datum.
+    pub fn of<T>(name: &str, datum: &Datum<T>, print: impl Fn(&T) -> String) -> Self {
+        Self { name: name.into(), value: print(&datum.value), origin: datum.origin.clone() }
+    }
+}
+
+/// Something that keeps a result from being a proof.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Gap {
+    /// A check could not be made.
+    NotChecked(Missing),
+    /// A check was made on the safe side: if it is met it is proven, if not it is unproven.
+    LowerBound(Missing),
+}
+
+/// What a verdict is about.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub enum About {
+    /// M_Ed against M_j,Rd of every component but the welds.
+    Moment,
+    /// V_Ed against bolts in shear with tension, bearing and the like.
+    Shear,
+    /// The welds between beam and end plate.
+    Weld,
+    /// N_Ed against the 5 % limit of 6.2.7.1(2).
+    Axial,
+}
+
+/// Whether something carries.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub enum State {
+    /// Proven to carry.
+    Met,
+    /// Proven not to carry.
+    NotMet,
+    /// Neither.
+    Unproven,
+}
+
+/// One required action against one resistance.
+#[derive(Clone, Debug)]
+pub struct Verdict {
+    /// What it is about.
+    pub about: About,
+    /// Whether it carries.
+    pub state: State,
+    /// Required, in `unit`; `None` if not stated.
+    pub required: Option<f64>,
+    /// The resistance that stands against it, in `unit`.
+    pub resistance: Option<f64>,
+    /// "kNm" or "kN".
+    pub unit: &'static str,
+    /// required / resistance.
+    pub utilisation: Option<f64>,
+    /// The component that governs.
+    pub governed_by: String,
+    /// Why it is unproven.
+    pub reason: Option<String>,
+}
+
+/// All verdicts of one load case.
+#[derive(Clone, Debug)]
+pub struct CaseResult {
+    /// Index into the scheduled joint's cases.
+    pub case: usize,
+    /// One of each [`About`] that applies.
+    pub verdicts: Vec<Verdict>,
+    /// The moment resistance of this case (its sense and β); `None` if M is not stated or nothing could be computed.
+    pub moment: Option<MomentResistance>,
+}
+
+/// The shear resistance of a joint, with the bolts' tension at its full moment resistance.
+#[derive(Clone, Debug)]
+pub struct ShearResistance {
+    /// V_Rd.
+    pub shear: Force,
+    /// What governs.
+    pub governed_by: String,
+    /// Every component.
+    pub components: Vec<Component>,
+}
+
+/// Everything that could be said about one joint's strength.
+#[derive(Clone, Debug, Default)]
+pub struct Assessment {
+    /// M_j,Rd with tension at the top.
+    pub hogging: Option<MomentResistance>,
+    /// M_j,Rd with tension at the bottom.
+    pub sagging: Option<MomentResistance>,
+    /// V_Rd.
+    pub shear: Option<ShearResistance>,
+    /// Results for each load case.
+    pub cases: Vec<CaseResult>,
+    /// What keeps it from being a proof.
+    pub gaps: Vec<Gap>,
+    /// What was assumed, one sentence each.
+    pub assumptions: Vec<String>,
+    /// Inputs with their origins.
+    pub inputs: Vec<Input>,
+}
+
+impl Assessment {
+    /// Whether the joint carries everything that is required of it.
+    pub fn carries(&self) -> State {
+        let verdicts = || self.cases.iter().flat_map(|case| &case.verdicts);
+        if verdicts().any(|v| v.state == State::NotMet) {
+            State::NotMet
+        } else if self.cases.is_empty()
+            || verdicts().any(|v| v.state == State::Unproven)
+            || self.gaps.iter().any(|gap| matches!(gap, Gap::NotChecked(_)))
+        {
+            State::Unproven
+        } else {
+            State::Met
+        }
+    }
+}

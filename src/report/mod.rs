@@ -1,0 +1,1 @@
+//! Output formats: the only room that knows them.
