@@ -25,7 +25,9 @@ pub struct Limit {
     pub last: usize,
     /// What they may carry together.
     pub resistance: Resistance,
-    /// Whether it is the T-stub of the row alone: then its share tells how far the bolts are used.
+    /// Σ l_eff,1 of the rows, which is also b_eff of the web.
+    pub length: Length,
+    /// Whether it is the T-stub of one row alone: then its share tells how far the bolts are used.
     pub bolts_used: bool,
 }
 
@@ -73,15 +75,18 @@ impl<'a> TensionSide<'a> {
         }
         let side = Self { n, rulebook, beta, rows, places };
         for (i, row) in side.rows.iter().enumerate() {
-            let distances =
-                [("m of the column flange", side.m_column(row)), ("e of the column flange", row.e_column), ("e of the end plate", row.e_plate)]
-                    .into_iter()
-                    .chain(match side.places[i] {
-                        OnPlate::Outside => vec![("m_x", side.m_x(row)), ("e_x", n.plate_top - row.height)],
-                        OnPlate::BelowFlange => vec![("m", side.m_plate(row)), ("m_2", side.m_2_plate(row))],
-                        OnPlate::Other => vec![("m", side.m_plate(row))],
-                    })
-                    .chain(side.next_to_stiffener(i).map(|(m_2, _)| ("m_2 beside the stiffener", m_2)));
+            let distances = [
+                ("m of the column flange", side.m_column(row)),
+                ("e of the column flange", row.e_column),
+                ("e of the end plate", row.e_plate),
+            ]
+            .into_iter()
+            .chain(match side.places[i] {
+                OnPlate::Outside => vec![("m_x", side.m_x(row)), ("e_x", n.plate_top - row.height)],
+                OnPlate::BelowFlange => vec![("m", side.m_plate(row)), ("m_2", side.m_2_plate(row))],
+                OnPlate::Other => vec![("m", side.m_plate(row))],
+            })
+            .chain(side.next_to_stiffener(i).map(|(m_2, _)| ("m_2 beside the stiffener", m_2)));
             for (what, value) in distances {
                 if !(value > Length::ZERO) {
                     return Err(format!("row {}: {what} is {value}, there is no room for a T-stub", row.number));
@@ -109,7 +114,8 @@ impl<'a> TensionSide<'a> {
         0.5 * (row.gauge - self.n.column.t_w - 2.0 * (0.8 * self.n.r_c))
     }
 
-    /// The stiffener right above (`up`) or below a tension row, with no other bolt row between: m_2 and the pair.
+    /// The stiffener right above (`up`) or below a tension row, with no other bolt row between, that the row's yield line
+    /// reaches (m_2 below half of the plain pattern): m_2 and the pair. One further away helps nothing.
     fn stiffener_beside(&self, i: usize, up: bool) -> Option<(Length, &StiffenerPair)> {
         let row = self.rows[i].height;
         let beyond = |height: Length| if up { height > row } else { height < row };
@@ -117,10 +123,13 @@ impl<'a> TensionSide<'a> {
         let pair = (self.n.stiffeners.iter().filter(|s| beyond(s.height)))
             .min_by(|a, b| distance(a.height).get().total_cmp(&distance(b.height).get()))?;
         let between = self.n.rows.iter().any(|other| {
-            beyond(other.height) && distance(other.height) > Length::ZERO && distance(other.height) < distance(pair.height)
+            beyond(other.height)
+                && distance(other.height) > Length::ZERO
+                && distance(other.height) < distance(pair.height)
         });
         let m_2 = distance(pair.height) - 0.5 * pair.t_s - Numbers::fillet(Some(pair.throat));
-        (!between).then_some((m_2, pair))
+        let reach = 2.0 * self.m_column(&self.rows[i]) + 0.625 * self.rows[i].e_column;
+        (!between && m_2 < reach).then_some((m_2, pair))
     }
 
     fn next_to_stiffener(&self, i: usize) -> Option<(Length, &StiffenerPair)> {
@@ -132,9 +141,7 @@ impl<'a> TensionSide<'a> {
         let row = &self.rows[i];
         match beside {
             None => RowPlace::Plain,
-            Some((m_2, _)) => {
-                RowPlace::Stiffened { alpha: self.alpha(self.m_column(row), row.e_column, m_2, w) }
-            }
+            Some((m_2, _)) => RowPlace::Stiffened { alpha: self.alpha(self.m_column(row), row.e_column, m_2, w) },
         }
     }
 
@@ -156,8 +163,12 @@ impl<'a> TensionSide<'a> {
 
     fn column_limits(&self, first: usize, last: usize, limits: &mut Vec<Limit>) {
         let n = self.n;
-        // A group never crosses a stiffener: then a row between has one right below it.
-        if (first..last).any(|i| self.stiffener_beside(i, false).is_some()) {
+        // A group never crosses a stiffener.
+        let parts = |i: usize| {
+            let between = self.rows[i + 1].height..self.rows[i].height;
+            n.stiffeners.iter().any(|s| between.contains(&s.height))
+        };
+        if (first..last).any(parts) {
             if last == first + 1 {
                 self.around_stiffener(first, last, limits);
             }
@@ -205,7 +216,14 @@ impl<'a> TensionSide<'a> {
             (first, last),
             limits,
         );
-        let web = column_web::tension(l_1, n.column.t_w, n.column_strength.f_y_web, n.column.a_v_z, self.beta, self.gamma_M0());
+        let web = column_web::tension(
+            l_1,
+            n.column.t_w,
+            n.column_strength.f_y_web,
+            n.column.a_v_z,
+            self.beta,
+            self.gamma_M0(),
+        );
         let pair = if first == last {
             self.next_to_stiffener(first)
         } else {
@@ -223,6 +241,7 @@ impl<'a> TensionSide<'a> {
             first,
             last,
             resistance,
+            length: l_1,
             bolts_used: false,
         });
     }
@@ -240,7 +259,14 @@ impl<'a> TensionSide<'a> {
             lengths.push(el::alone(place, self.m_column(row), row.e_column, self.column_end(i, i == first)));
         }
         let (l_1, _) = sum(&lengths, &mut w);
-        let web = column_web::tension(l_1, n.column.t_w, n.column_strength.f_y_web, n.column.a_v_z, self.beta, self.gamma_M0());
+        let web = column_web::tension(
+            l_1,
+            n.column.t_w,
+            n.column_strength.f_y_web,
+            n.column.a_v_z,
+            self.beta,
+            self.gamma_M0(),
+        );
         w.absorb(web.working);
         limits.push(Limit {
             id: "column-web-in-tension",
@@ -249,6 +275,7 @@ impl<'a> TensionSide<'a> {
             first,
             last,
             resistance: stiffened(pair, n, web.value, w, self.gamma_M0()),
+            length: l_1,
             bolts_used: false,
         });
     }
@@ -325,6 +352,7 @@ impl<'a> TensionSide<'a> {
             first,
             last,
             resistance: Resistance { value: web.value, working: w },
+            length: l_1,
             bolts_used: false,
         });
     }
@@ -364,6 +392,7 @@ impl<'a> TensionSide<'a> {
             first,
             last,
             resistance: Resistance { value: result.resistance.value, working },
+            length: stub.l_eff_1,
             bolts_used: first == last,
         });
     }
@@ -387,7 +416,13 @@ impl<'a> TensionSide<'a> {
         self.rows[i].height - self.rows[i + 1].height
     }
 
-    fn over(&self, first: usize, last: usize, of: impl Fn(&Row) -> Length, pick: fn(Length, Length) -> Length) -> Length {
+    fn over(
+        &self,
+        first: usize,
+        last: usize,
+        of: impl Fn(&Row) -> Length,
+        pick: fn(Length, Length) -> Length,
+    ) -> Length {
         self.rows[first + 1..=last].iter().map(&of).fold(of(&self.rows[first]), pick)
     }
 

@@ -316,7 +316,11 @@ fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Opti
         Ok(strength) => strength,
         Err(missing) => return refuse(&missing.to_string()),
     };
-    noted.inputs.push(Input::of(&format!("{at}: thickness"), &Datum::new(stiffener.thickness, Origin::Derived("the plates' bodies".into())), print_length));
+    noted.inputs.push(Input::of(
+        &format!("{at}: thickness"),
+        &Datum::new(stiffener.thickness, Origin::Derived("the plates' bodies".into())),
+        print_length,
+    ));
     noted.inputs.push(Input::of(&format!("{at}: grade"), grade, |g| g.0.clone()));
     let throat = match &stiffener.weld {
         Ok(weld) => weld.value,
