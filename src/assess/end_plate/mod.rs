@@ -1,5 +1,6 @@
 //! The bolted end-plate joint between a beam and a column's flange, EN 1993-1-8:2005 6.2.
 
+mod intended;
 mod limits;
 mod moment;
 mod numbers;
@@ -8,6 +9,7 @@ mod shear;
 mod totals;
 mod weld_checks;
 
+pub use intended::intended;
 use numbers::{Noted, Numbers};
 
 use super::{About, Assessment, CaseResult, Gap, MomentResistance, Sense, State, Verdict};
