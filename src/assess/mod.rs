@@ -153,6 +153,8 @@ pub struct CaseResult {
     pub verdicts: Vec<Verdict>,
     /// The moment resistance of this case (its sense and β); `None` if M is not stated or nothing could be computed.
     pub moment: Option<MomentResistance>,
+    /// The shear resistance beside this case's bolt tensions; `None` if V is not stated.
+    pub shear: Option<ShearResistance>,
 }
 
 /// The shear resistance of a joint, with the bolts' tension at its full moment resistance.

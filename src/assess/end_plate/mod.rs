@@ -103,7 +103,7 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
         govern(&mut assessment, demands);
     } else {
         for (case, demand) in demands.iter().enumerate() {
-            assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None });
+            assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None, shear: None });
         }
     }
     assessment.gaps = noted.gaps;
@@ -197,15 +197,17 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
             (Some(resistance), Some(m)) => (Some(resistance.clone()), m.abs() / resistance.without_welds),
             _ => ((self.solve)(Sense::Hogging, BETA_MAX).ok(), 1.0),
         };
-        match shear {
-            Some(v) => {
-                let share = if share.is_finite() { share.min(1.0) } else { 1.0 };
-                let resistance = shear::resistance(self.n, tension.as_ref(), share, self.rulebook);
-                let (kn, governed) = (resistance.shear.kn(), resistance.governed_by);
-                verdicts.push(self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, moment.is_none()));
+        let shear_resistance = shear.map(|_| {
+            let share = if share.is_finite() { share.min(1.0) } else { 1.0 };
+            shear::resistance(self.n, tension.as_ref(), share, self.rulebook)
+        });
+        verdicts.push(match (shear, &shear_resistance) {
+            (Some(v), Some(resistance)) => {
+                let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
+                self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, moment.is_none())
             }
-            None => verdicts.push(unproven_shear()),
-        }
+            _ => unproven_shear(),
+        });
         let limit = (self.rulebook.settings.axial_limit * self.n_pl).kn();
         verdicts.push(match axial {
             Some(n) if n.kn().abs() <= limit => Verdict {
@@ -236,7 +238,7 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
                 }),
             },
         });
-        CaseResult { case, verdicts, moment: solved }
+        CaseResult { case, verdicts, moment: solved, shear: shear_resistance }
     }
 
     fn verdict(
