@@ -12,6 +12,7 @@ pub mod origin;
 pub mod report;
 pub mod review;
 pub mod rulebook;
+pub mod run;
 pub mod shop;
 pub mod units;
 pub mod working;
