@@ -74,10 +74,8 @@ pub fn plates(steelwork: &Steelwork, joint: &Joint) -> Vec<PlateBrief> {
 
 /// The welds in short: by place where there is a layout, else as found.
 pub fn welds(steelwork: &Steelwork, joint: &Joint) -> Vec<WeldBrief> {
-    let brief = |role: &str, throat: &Known<Length>| WeldBrief {
-        role: role.to_owned(),
-        throat_mm: value(throat, |a| a.get()),
-    };
+    let brief =
+        |role: &str, throat: &Known<Length>| WeldBrief { role: role.to_owned(), throat_mm: value(throat, |a| a.get()) };
     match &joint.layout {
         Ok(layout) => vec![
             brief("flange-top", &layout.welds.flange_top),
@@ -102,7 +100,12 @@ pub fn lines(layout: &EndPlateLayout) -> Vec<String> {
         member("column", &layout.column),
         member("beam", &layout.beam),
         format!("end plate {:.0} mm {}", plate.thickness.get(), or(value(&plate.grade, |g| g.0.clone()))),
-        format!("end plate {:.0} mm wide, from {:.0} to {:.0} mm", plate.width.get(), plate.bottom.get(), plate.top.get()),
+        format!(
+            "end plate {:.0} mm wide, from {:.0} to {:.0} mm",
+            plate.width.get(),
+            plate.bottom.get(),
+            plate.top.get()
+        ),
         format!(
             "bolts M{} {}",
             or(value(&layout.bolts.diameter, |d| format!("{:.0}", d.get()))),

@@ -93,7 +93,11 @@ fn outcome(assessment: Option<&Assessment>, findings: &[Finding], missing: &[Mis
         // A rule for each of these stands in the findings; should one be silent, the joint is still held.
         Some(State::NotMet) => Outcome::Hold,
         Some(State::Met) if worst != Some(Outcome::Unproven) && missing.is_empty() => {
-            if worst.is_some() { Outcome::Comment } else { Outcome::Clear }
+            if worst.is_some() {
+                Outcome::Comment
+            } else {
+                Outcome::Clear
+            }
         }
         _ => Outcome::Unproven,
     }
@@ -111,7 +115,12 @@ fn reasons(findings: &[Finding], missing: &[Missing]) -> Vec<String> {
 }
 
 /// Everything that keeps the joint from being proven.
-fn missing(sources: &Sources<'_>, joint: &Joint, scheduled: Option<&ScheduledJoint>, computed: &Computed) -> Vec<Missing> {
+fn missing(
+    sources: &Sources<'_>,
+    joint: &Joint,
+    scheduled: Option<&ScheduledJoint>,
+    computed: &Computed,
+) -> Vec<Missing> {
     let said = |what: &str, reason: String| Missing { what: what.into(), reason, at: joint.place.clone() };
     let mut missing = Vec::new();
     if let Err(reason) = &joint.layout {
@@ -210,7 +219,8 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
     let by_moment = (assessment.cases.iter())
         .filter(|case| case.moment.is_some())
         .max_by(|a, b| use_of(&a.verdicts, About::Moment).total_cmp(&use_of(&b.verdicts, About::Moment)));
-    let moment = by_moment.and_then(|c| c.moment.as_ref()).or(assessment.hogging.as_ref()).or(assessment.sagging.as_ref());
+    let moment =
+        by_moment.and_then(|c| c.moment.as_ref()).or(assessment.hogging.as_ref()).or(assessment.sagging.as_ref());
     let rows = moment.iter().flat_map(|m| &m.rows);
     let rows = rows
         .map(|row| RowResult {
@@ -234,9 +244,10 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         // At a smaller moment each component carries its share of what it carries at the full one.
         checks.extend(moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()))));
     }
-    let shear_case = assessment.cases.iter().max_by(|a, b| {
-        use_of(&a.verdicts, About::Shear).total_cmp(&use_of(&b.verdicts, About::Shear))
-    });
+    let shear_case = assessment
+        .cases
+        .iter()
+        .max_by(|a, b| use_of(&a.verdicts, About::Shear).total_cmp(&use_of(&b.verdicts, About::Shear)));
     if let Some(shear) = shear_case.and_then(|case| case.shear.as_ref()).or(assessment.shear.as_ref()) {
         let verdict = shear_case.and_then(|case| case.verdicts.iter().find(|v| v.about == About::Shear));
         let required = verdict.and_then(|v| v.required);
@@ -247,8 +258,7 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
 }
 
 fn component(component: &Component, action: Option<f64>) -> CheckResult {
-    let mut result =
-        check(&component.id, &component.title, component.clause, component.resistance.kn(), action, "kN");
+    let mut result = check(&component.id, &component.title, component.clause, component.resistance.kn(), action, "kN");
     result.working = component.working.clone();
     result
 }

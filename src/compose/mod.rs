@@ -36,8 +36,7 @@ pub struct Sources<'a> {
 
 /// The review of everything.
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
-    let mut joints: Vec<JointReview> =
-        (0..sources.joints.joints.len()).map(|index| sources.found(index)).collect();
+    let mut joints: Vec<JointReview> = (0..sources.joints.joints.len()).map(|index| sources.found(index)).collect();
     joints.extend(sources.pairing.not_found.iter().filter_map(|&index| sources.not_found(index)));
     joints.sort_by(|a, b| natural(&a.mark).cmp(&natural(&b.mark)));
 
@@ -106,7 +105,9 @@ fn basis(rulebook: &Rulebook) -> Basis {
                 "row forces",
                 match settings.row_forces {
                     RowForces::LinearBeyond19 => "in proportion beyond 1.9 Ft,Rd (6.2.7.2(9))",
-                    RowForces::ThinPlateOrLinear => "plastic if plate or flange is thin, else in proportion (UK practice)",
+                    RowForces::ThinPlateOrLinear => {
+                        "plastic if plate or flange is thin, else in proportion (UK practice)"
+                    }
                 }
                 .into(),
             ),

@@ -141,7 +141,10 @@ fn ask(page: &mut Page, review: &Review) {
     page.heading("WHAT TO ASK THE FABRICATOR FOR");
     let questions = questions(review);
     if questions.is_empty() && review.counts.found == 0 {
-        page.line(3, "An export that holds the members, plates and bolts of the joints: no joint was found in this one.");
+        page.line(
+            3,
+            "An export that holds the members, plates and bolts of the joints: no joint was found in this one.",
+        );
     } else if questions.is_empty() {
         page.line(3, "Nothing: whatever was looked for is stated.");
     }

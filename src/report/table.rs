@@ -17,7 +17,17 @@ pub(super) fn draw(joints: &[&JointReview], width: usize) -> Vec<String> {
     table.set_style(TableComponent::MiddleHeaderIntersections, ' ');
     table.set_content_arrangement(ContentArrangement::Dynamic);
     table.set_width(u16::try_from(width).unwrap_or(u16::MAX));
-    table.set_header(["joint", "outcome", "util.", "governed by", "M_Ed\nkNm", "M_Rd\nkNm", "V_Ed\nkN", "V_Rd\nkN", "detail"]);
+    table.set_header([
+        "joint",
+        "outcome",
+        "util.",
+        "governed by",
+        "M_Ed\nkNm",
+        "M_Rd\nkNm",
+        "V_Ed\nkN",
+        "V_Rd\nkN",
+        "detail",
+    ]);
     for joint in joints {
         table.add_row(row(joint).map(|cell| clean(&cell)));
     }

@@ -11,8 +11,8 @@ use document::{
 };
 
 use super::{group, survey as drawn};
-use crate::review::{self, CAUTION, Review};
 use crate::origin;
+use crate::review::{self, CAUTION, Review};
 
 /// The review's schema and version.
 pub const REVIEW_SCHEMA: &str = "faying-review/1";
