@@ -1,6 +1,20 @@
 //! Who touches whom, what is one joint, and what kind of joint it is.
 
+mod bolts;
+mod boxes;
+mod cut;
+mod end_plate;
+mod frame;
+mod graph;
 mod layout;
+mod marks;
+mod near;
+mod recognise;
+mod scene;
+mod stiffeners;
+mod told;
+mod touch;
+mod welds;
 
 pub use layout::{BoltRow, Bolts, EndPlate, EndPlateLayout, MemberAt, Stiffener, Welds};
 
@@ -111,8 +125,18 @@ pub struct Joints {
     pub loose_bolts: Vec<usize>,
 }
 
-/// Builds the graph and cuts it into joints.
+/// Builds the graph and cuts it into joints. Geometry is the first witness, relations and names are the second.
 pub fn recognise(steelwork: &Steelwork, rulebook: &Rulebook) -> Joints {
-    let _ = (steelwork, rulebook);
-    Joints::default()
+    let scene = scene::Scene::new(steelwork, rulebook);
+    let graph = graph::build(steelwork, &scene.touches);
+    let mut drafts = recognise::name_kinds(&scene, cut::cut(&scene));
+    told::hear(&scene, &mut drafts);
+    marks::mark(&scene, &mut drafts);
+    let opposites: Vec<_> = recognise::opposites(&drafts);
+    let mut loose = vec![true; steelwork.bolts.len()];
+    for bolt in drafts.iter().flat_map(|draft| &draft.joint.bolts) {
+        loose[*bolt] = false;
+    }
+    let joints = drafts.into_iter().zip(opposites).map(|(draft, opposite)| Joint { opposite, ..draft.joint }).collect();
+    Joints { graph, joints, loose_bolts: (0..loose.len()).filter(|bolt| loose[*bolt]).collect() }
 }

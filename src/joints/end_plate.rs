@@ -1,0 +1,218 @@
+//! Lays out an end-plate joint on a column's flange, or says why it can't be.
+
+use glam::DVec2;
+
+use super::bolts;
+use super::boxes::{Ply, Slab};
+use super::frame::{Frame, Span, are_parallel, corners};
+use super::layout::{EndPlate, EndPlateLayout, MemberAt, Welds};
+use super::recognise::{Draft, Seat};
+use super::scene::Scene;
+use super::stiffeners::{self, OnColumn};
+use super::touch::{EndOn, Pass};
+use super::welds::{self, Role};
+use crate::shop::Part;
+use crate::units::mm;
+
+/// A column's end further than this from the joint, mm, is no end for any check.
+const RUNS_ON: f64 = 10_000.0;
+
+/// Beam depths that are not within 60° of the vertical have no upper flange to speak of.
+const UPRIGHT: f64 = 0.5;
+
+/// An end-plate joint before it is laid out.
+pub(super) struct Case<'a> {
+    pub(super) frame: Frame,
+    pub(super) plate: usize,
+    pub(super) end: EndOn,
+    /// Other member ends on the same plate.
+    pub(super) others: &'a [EndOn],
+    pub(super) column: usize,
+    /// The flange that the bolts pass through.
+    pub(super) ply: Ply,
+    pub(super) welds: Vec<(usize, Role)>,
+}
+
+/// Puts the layout (or the reason why there is none), the seat and the roles of plates and welds into the draft.
+pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
+    let column = &scene.steel.members[case.column];
+    draft.seat = Some(Seat {
+        column: case.column,
+        flange: case.ply.sign(),
+        level: (case.frame.origin - column.start).dot(column.along),
+        depth: scene.steel.members[case.end.member].extents.y,
+    });
+    let outline = case.frame.outline(&scene.steel.plates[case.plate]);
+    let bolted: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
+    let on_column = Span::of(outline.iter().map(|p| p.y))
+        .map(|heights| stiffeners::find(scene, case, heights, &bolted))
+        .unwrap_or_default();
+    for (_, plates, welded) in &on_column.stiffeners {
+        draft.joint.plates.extend(plates.iter().map(|plate| (*plate, "stiffener")));
+        draft.joint.welds.extend(welded.iter().map(|weld| (*weld, Role::Stiffener.word())));
+    }
+    let listed: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
+    draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
+    draft.joint.layout = assessable(scene, case, &outline, &bolted)
+        .and_then(|()| every_bolt_passes_flange(scene, draft, case))
+        .and_then(|()| laid_out(scene, draft, case, &outline, on_column));
+}
+
+/// # Errors
+/// One sentence on the first thing that the assessment does not cover.
+fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -> Result<(), String> {
+    let (beam, column) = (&scene.steel.members[case.end.member], &scene.steel.members[case.column]);
+    let plate = &scene.steel.plates[case.plate];
+    let tolerances = scene.tolerances();
+    let (touch, position, angle) = (tolerances.touch.get(), tolerances.position.get(), tolerances.angle);
+    for member in [case.end.member, case.column] {
+        if let Some(why) = &scene.steel.members[member].not_assessed {
+            return Err(format!("{}: {why}", scene.label(Part::Member(member))));
+        }
+    }
+    if !(case.frame.up.z >= UPRIGHT) {
+        return Err("the supported member is vertical or lies on its side: not assessed yet".into());
+    }
+    if !(case.end.slope <= angle) {
+        let rises = beam.along.dot(case.frame.up).abs() >= beam.along.dot(case.frame.side).abs();
+        let how = if rises { "beam slopes" } else { "beam is skewed in plan by" };
+        return Err(format!("{how} {:.1}° to the end plate's normal: not assessed yet", case.end.slope));
+    }
+    if !are_parallel(case.frame.up, column.along, angle) {
+        return Err("the beam's depth is not parallel to the column's axis: not assessed yet".into());
+    }
+    if !are_parallel(case.frame.out, column.depth, angle) {
+        return Err("the end plate is not parallel to the column's flange: not assessed yet".into());
+    }
+    if !(case.end.gap <= touch) {
+        return Err(format!("the beam's end stands {:.1} mm off the end plate: not assessed", case.end.gap));
+    }
+    if !(case.end.gap >= -touch) {
+        return Err(format!("the beam runs {:.1} mm into the end plate: not assessed", -case.end.gap));
+    }
+    if let Some(other) = case.others.first() {
+        let label = scene.label(Part::Member(other.member));
+        return Err(format!("{label} ends on the same end plate (a haunch?): not assessed yet"));
+    }
+    let eccentric = (case.frame.origin - column.start).dot(column.across).abs();
+    if !(eccentric <= position) {
+        return Err(format!("beam is eccentric to the column's web by {eccentric:.1} mm: not assessed"));
+    }
+    let face = column.start + column.depth * case.ply.sign() * column.extents.y / 2.0;
+    let gap = -plate.thickness.get() - case.frame.outward(face);
+    let packed = bolted.iter().copied().filter(|other| *other != case.plate).find(|other| {
+        let out = case.frame.outward(scene.steel.plates[*other].centre);
+        out < -plate.thickness.get() && out > case.frame.outward(face)
+    });
+    if let Some(packing) = packed {
+        let (thickness, label) = (scene.steel.plates[packing].thickness, scene.label(Part::Plate(packing)));
+        return Err(format!("{thickness} of packing ({label}) under the end plate: not assessed yet"));
+    }
+    if !(gap.abs() <= touch) {
+        let how = if gap > 0.0 { "stands off" } else { "runs into" };
+        return Err(format!("the end plate {how} the column's flange by {:.1} mm: not assessed", gap.abs()));
+    }
+    if !is_rectangular(outline, position) {
+        return Err("the end plate is no upright rectangle: not assessed yet".into());
+    }
+    beside_beam(scene, case, bolted)
+}
+
+/// Haunches and ribs made of plates.
+fn beside_beam(scene: &Scene, case: &Case, bolted: &[usize]) -> Result<(), String> {
+    let touch = scene.tolerances().touch.get();
+    let beam = Slab::of_member(&scene.steel.members[case.end.member]);
+    for other in scene.touches.plates[case.plate].iter().filter(|other| !bolted.contains(other)) {
+        let plate = &scene.steel.plates[*other];
+        let outward = Span::of(corners(plate).map(|p| case.frame.outward(p)));
+        let stands_out = outward.is_some_and(|span| span.lo >= -touch && span.hi > plate.thickness.get() + touch);
+        let within = beam.zip(Slab::of_plate(plate)).is_some_and(|(beam, plate)| {
+            let beam = Slab { half: beam.half + touch, ..beam };
+            let local = beam.local(plate.centre);
+            (0..3).all(|i| local[i].abs() <= beam.half[i])
+        });
+        if stands_out && !within {
+            let label = scene.label(Part::Plate(*other));
+            return Err(format!(
+                "{label} stands on the end plate beside the beam (a haunch or a rib): not assessed yet"
+            ));
+        }
+    }
+    Ok(())
+}
+
+fn every_bolt_passes_flange(scene: &Scene, draft: &Draft, case: &Case) -> Result<(), String> {
+    let flange = Pass::Member(case.column, case.ply);
+    let count = draft.joint.bolts.iter().filter(|bolt| !scene.touches.passes[**bolt].contains(&flange)).count();
+    if count > 0 {
+        return Err(format!("{count} bolts of the end plate do not pass through the column's flange: not assessed"));
+    }
+    Ok(())
+}
+
+/// Whether each corner of the outline's extents is a corner of it, and every other corner lies on an edge.
+fn is_rectangular(outline: &[DVec2], within: f64) -> bool {
+    let (Some(x), Some(y)) = (Span::of(outline.iter().map(|p| p.x)), Span::of(outline.iter().map(|p| p.y))) else {
+        return false;
+    };
+    let on_edge =
+        |p: &DVec2| [p.x - x.lo, x.hi - p.x, p.y - y.lo, y.hi - p.y].into_iter().any(|distance| distance <= within);
+    let corners = [(x.lo, y.lo), (x.hi, y.lo), (x.hi, y.hi), (x.lo, y.hi)];
+    outline.iter().all(on_edge)
+        && corners.iter().all(|(x, y)| outline.iter().any(|p| p.distance(DVec2::new(*x, *y)) <= within))
+}
+
+fn laid_out(
+    scene: &Scene,
+    draft: &mut Draft,
+    case: &Case,
+    outline: &[DVec2],
+    on_column: OnColumn,
+) -> Result<EndPlateLayout, String> {
+    let (column, plate) = (&scene.steel.members[case.column], &scene.steel.plates[case.plate]);
+    let spans = Span::of(outline.iter().map(|p| p.x)).zip(Span::of(outline.iter().map(|p| p.y)));
+    let (wide, high) = spans.ok_or("the end plate has no outline")?;
+    let bolts = bolts::lay_out(scene, draft, case)?;
+    let rows = Span::of(bolts.rows.iter().map(|row| row.height.get())).ok_or("the joint has no bolts")?;
+    let ends = [column.start, column.end].map(|end| case.frame.height(end));
+    let (above, below) = (ends[0].max(ends[1]) - rows.hi, rows.lo - ends[0].min(ends[1]));
+    let throat = |role, what| welds::throat(scene, &case.frame, case.end.member, &case.welds, role, what);
+    let mut not_credited = on_column.not_credited;
+    let backing = draft.joint.plates.iter().filter(|(other, role)| *other != case.plate && *role == "plate");
+    for (other, _) in backing.filter(|(other, _)| !on_column.others.contains(other)) {
+        not_credited.push(format!("plate {} under the bolts is not credited", scene.label(Part::Plate(*other))));
+    }
+    not_credited.sort();
+    Ok(EndPlateLayout {
+        column: member_at(scene, case.column),
+        beam: member_at(scene, case.end.member),
+        plate: EndPlate {
+            guid: plate.identity.guid.clone(),
+            thickness: plate.thickness,
+            width: mm(wide.size()),
+            bottom: mm(high.lo),
+            top: mm(high.hi),
+            grade: plate.grade.clone(),
+        },
+        bolts,
+        welds: Welds {
+            flange_top: throat(Role::FlangeTop, "weld at the upper flange"),
+            flange_bottom: throat(Role::FlangeBottom, "weld at the lower flange"),
+            web: throat(Role::Web, "weld at the web"),
+        },
+        stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),
+        column_above: (above <= RUNS_ON).then_some(mm(above)),
+        column_below: (below <= RUNS_ON).then_some(mm(below)),
+        not_credited,
+    })
+}
+
+fn member_at(scene: &Scene, member: usize) -> MemberAt {
+    let member = &scene.steel.members[member];
+    MemberAt {
+        guid: member.identity.guid.clone(),
+        mark: member.identity.mark.clone(),
+        section: member.section.clone(),
+        grade: member.grade.clone(),
+    }
+}

@@ -1,0 +1,336 @@
+//! Names each cluster's kind and says who supports whom.
+
+use std::collections::{BTreeMap, BTreeSet};
+
+use glam::DVec3;
+
+use super::boxes::{Ply, thicknesses};
+use super::cut::{self, Cluster};
+use super::end_plate::{self, Case};
+use super::frame::{Frame, Span, are_parallel, are_square};
+use super::scene::Scene;
+use super::touch::EndOn;
+use super::welds::{self, Role};
+use super::{Joint, Kind};
+use crate::shop::{Part, Shape};
+
+/// A member whose axis is within 60° of the vertical can stand on a base plate.
+const STANDS: f64 = 0.5;
+
+/// A joint before it has its mark.
+pub(super) struct Draft {
+    pub(super) joint: Joint,
+    /// All members in it, ascending.
+    pub(super) members: Vec<usize>,
+    /// The middle of its bolts.
+    pub(super) centre: DVec3,
+    /// Where it sits on its column.
+    pub(super) seat: Option<Seat>,
+    /// What relations call it.
+    pub(super) names: BTreeSet<String>,
+}
+
+/// Where an end-plate joint sits on its column.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Seat {
+    pub(super) column: usize,
+    /// Which flange: its sign along the column's depth.
+    pub(super) flange: f64,
+    /// The soffit along the column's axis, mm from its start.
+    pub(super) level: f64,
+    /// Depth of the supported member, mm.
+    pub(super) depth: f64,
+}
+
+impl Draft {
+    pub(super) fn new(scene: &Scene, kind: Kind, bolts: Vec<usize>, members: Vec<usize>) -> Self {
+        let centre = cut::centre(scene, &bolts);
+        let place = bolts.iter().map(|bolt| scene.place(Part::Bolt(*bolt))).min();
+        let joint = Joint {
+            mark: String::new(),
+            kind,
+            supporting: None,
+            supported: None,
+            at_end: None,
+            bolts,
+            plates: Vec::new(),
+            welds: Vec::new(),
+            layout: Err(format!("kind not assessed yet: {}", kind.word())),
+            opposite: None,
+            disagreements: Vec::new(),
+            place,
+        };
+        Self { joint, members, centre, seat: None, names: BTreeSet::new() }
+    }
+
+    /// Names the supported member and its end nearest to the joint.
+    fn support(&mut self, scene: &Scene, supporting: Option<usize>, supported: Option<usize>) {
+        self.joint.supporting = supporting;
+        self.joint.supported = supported;
+        self.joint.at_end = supported.map(|i| {
+            let member = &scene.steel.members[i];
+            member.end.distance(self.centre) < member.start.distance(self.centre)
+        });
+    }
+}
+
+/// All clusters as joints, without marks.
+pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
+    let mut drafts = Vec::new();
+    for cluster in clusters {
+        match cluster {
+            Cluster::EndPlates { plates, bolts } if plates.len() > 1 => drafts.push(splice(scene, &plates, bolts)),
+            Cluster::EndPlates { plates, bolts } => {
+                drafts.extend(plates.first().and_then(|plate| end_plate(scene, *plate, bolts)));
+            }
+            Cluster::Other { bolts } => drafts.push(other(scene, bolts)),
+        }
+    }
+    drafts
+}
+
+fn splice(scene: &Scene, plates: &[usize], bolts: Vec<usize>) -> Draft {
+    let ends: BTreeSet<usize> =
+        plates.iter().filter_map(|p| cut::ends_on(scene, *p).first().map(|e| e.member)).collect();
+    let members: Vec<usize> = ends.into_iter().collect();
+    let mut draft = Draft::new(scene, Kind::EndPlateSplice, bolts, members);
+    draft.joint.plates = plates.iter().map(|plate| (*plate, "end-plate")).collect();
+    draft.joint.place = plates.iter().map(|plate| scene.place(Part::Plate(*plate))).min();
+    let (first, second) = of_equal_rank(scene, &draft.members);
+    draft.support(scene, first, second);
+    draft
+}
+
+/// For each joint the one on the column's other flange whose soffit is nearest, if it is within the deeper beam's depth.
+pub(super) fn opposites(drafts: &[Draft]) -> Vec<Option<usize>> {
+    let mut on_column: BTreeMap<usize, Vec<(usize, Seat)>> = BTreeMap::new();
+    for (index, draft) in drafts.iter().enumerate() {
+        if let Some(seat) = draft.seat {
+            on_column.entry(seat.column).or_default().push((index, seat));
+        }
+    }
+    let across = |draft: &Draft| {
+        let seat = draft.seat?;
+        let others = on_column.get(&seat.column)?.iter().filter(|(_, other)| {
+            other.flange * seat.flange < 0.0 && (other.level - seat.level).abs() < other.depth.max(seat.depth)
+        });
+        others
+            .min_by(|(_, a), (_, b)| (a.level - seat.level).abs().total_cmp(&(b.level - seat.level).abs()))
+            .map(|(i, _)| *i)
+    };
+    drafts.iter().map(across).collect()
+}
+
+/// Two members neither of which supports the other: the first by mark stands as supporting, so that the file's order
+/// does not matter.
+fn of_equal_rank(scene: &Scene, members: &[usize]) -> (Option<usize>, Option<usize>) {
+    let mut by_label = members.to_vec();
+    let key = |i: &usize| {
+        let member = &scene.steel.members[*i];
+        (scene.label(Part::Member(*i)), scene.spot(member.start), member.identity.guid.clone())
+    };
+    by_label.sort_by_cached_key(key);
+    (by_label.first().copied(), by_label.get(1).copied())
+}
+
+fn end_plate(scene: &Scene, plate: usize, bolts: Vec<usize>) -> Option<Draft> {
+    let ends = cut::ends_on(scene, plate);
+    let end = *ends.first()?;
+    let (_, mut passed) = cut::passed(scene, &bolts);
+    passed.remove(&end.member);
+    let support = if passed.len() == 1 { passed.iter().next().map(|(member, plies)| (*member, plies)) } else { None };
+    let beam = &scene.steel.members[end.member];
+    let i_support = support.filter(|(member, _)| scene.steel.members[*member].shape == Shape::I);
+    let flange =
+        i_support.and_then(|(member, plies)| only(plies).filter(|ply| ply.sign() != 0.0).map(|ply| (member, ply)));
+    let on_web = i_support.is_some_and(|(_, plies)| only(plies) == Some(Ply::Web));
+
+    let mut members: Vec<usize> = passed.keys().copied().chain([end.member]).collect();
+    members.sort_unstable();
+    let frame = Frame::new(beam, &end, &scene.steel.plates[plate]);
+    let welds = frame.map(|frame| welds::at_plate(scene, &frame, end.member, plate)).unwrap_or_default();
+    let strong = frame.is_some_and(|frame| covers_both_flanges(scene, &frame, &end, plate)) && reaches_a_flange(&welds);
+
+    let (kind, why) = if passed.is_empty() {
+        let (foot, top) = if end.at_end { (beam.end, beam.start) } else { (beam.start, beam.end) };
+        let stands = (top - foot).normalize_or_zero().z >= STANDS;
+        let why = "the bolts pass through nothing but the end plate";
+        if stands { (Kind::ColumnBase, None) } else { (Kind::OtherBolted, Some(why)) }
+    } else if beam.shape != Shape::I {
+        (Kind::OtherBolted, Some("the member with the end plate is no I section"))
+    } else if !strong && (flange.is_some() || on_web) {
+        (Kind::FlexibleEndPlate, None)
+    } else if on_web {
+        (Kind::EndPlateToWeb, None)
+    } else if let Some((column, _)) = flange {
+        let column = &scene.steel.members[column];
+        if are_square(beam.across, column.along, scene.tolerances().angle) {
+            (Kind::EndPlateMoment, None)
+        } else {
+            (Kind::OtherBolted, Some("the supported member's depth does not run along the supporting member"))
+        }
+    } else if passed.len() > 1 {
+        (Kind::OtherBolted, Some("the bolts of the end plate pass through more than one other member"))
+    } else {
+        (Kind::OtherBolted, Some("the bolts pass through neither one flange nor the web of an I section"))
+    };
+
+    let mut draft = Draft::new(scene, kind, bolts, members);
+    draft.support(scene, support.map(|(member, _)| member), Some(end.member));
+    draft.joint.at_end = Some(end.at_end);
+    draft.joint.place = Some(scene.place(Part::Plate(plate)));
+    draft.joint.plates.push((plate, "end-plate"));
+    draft.joint.plates.extend(
+        cut::passed(scene, &draft.joint.bolts)
+            .0
+            .into_iter()
+            .filter(|other| *other != plate)
+            .map(|other| (other, "plate")),
+    );
+    draft.joint.welds = welds.iter().map(|(weld, role)| (*weld, role.word())).collect();
+    if let Some(why) = why {
+        draft.joint.layout = Err(format!("kind not assessed yet: {}: {why}", kind.word()));
+    }
+    welds::say_where_names_disagree(scene, &welds, &mut draft.joint.disagreements);
+    say_how_joined(scene, plate, &end, &welds, &mut draft.joint.disagreements);
+    if let (Kind::EndPlateMoment, Some(frame), Some((column, ply))) = (kind, frame, flange) {
+        end_plate::lay_out(scene, &mut draft, &Case { frame, plate, end, others: &ends[1..], column, ply, welds });
+    }
+    Some(draft)
+}
+
+fn only(plies: &BTreeSet<Ply>) -> Option<Ply> {
+    plies.first().copied().filter(|_| plies.len() == 1)
+}
+
+/// Whether the plate reaches at least to the middle of both flanges.
+fn covers_both_flanges(scene: &Scene, frame: &Frame, end: &EndOn, plate: usize) -> bool {
+    let beam = &scene.steel.members[end.member];
+    let (t_f, _) = thicknesses(beam);
+    let heights = Span::of(frame.outline(&scene.steel.plates[plate]).iter().map(|p| p.y));
+    heights.is_some_and(|heights| heights.holds(t_f / 2.0) && heights.holds(beam.extents.y - t_f / 2.0))
+}
+
+/// Whether a weld lies at a flange, or nothing is known of the welds' places.
+fn reaches_a_flange(welds: &[(usize, Role)]) -> bool {
+    let at_flange = |role: Role| matches!(role, Role::FlangeTop | Role::FlangeBottom);
+    welds.iter().any(|(_, role)| at_flange(*role)) || !welds.iter().any(|(_, role)| *role == Role::Web)
+}
+
+fn say_how_joined(scene: &Scene, plate: usize, end: &EndOn, welds: &[(usize, Role)], sentences: &mut Vec<String>) {
+    let (p, m) = (Part::Plate(plate), Part::Member(end.member));
+    if welds.is_empty() && !scene.are_one_piece(p, m) && !scene.are_told(p, m) {
+        sentences.push(format!(
+            "end plate {} bears on {}, but no weld, piece or relation holds them together",
+            scene.label(p),
+            scene.label(m)
+        ));
+    }
+}
+
+fn other(scene: &Scene, bolts: Vec<usize>) -> Draft {
+    let (plates, passed) = cut::passed(scene, &bolts);
+    let members = cut::members_of(scene, &bolts);
+    let cleats = passed.keys().any(|member| cut::is_cleat(scene, *member));
+    let stands_on = stands_on(scene, &plates, &members);
+    let centre = cut::centre(scene, &bolts);
+    let (kind, supporting, supported) = match members[..] {
+        [beam] if !plates.is_empty() => {
+            let kind = if scene.steel.members[beam].shape != Shape::I {
+                Kind::Gusset
+            } else if stands_on.is_some() && is_on_web(scene, beam, &passed, &plates) {
+                Kind::FinPlate
+            } else {
+                Kind::OtherBolted
+            };
+            (kind, stands_on, Some(beam))
+        }
+        [a, b] if !plates.is_empty() && are_in_line(scene, a, b) => {
+            let (first, second) = of_equal_rank(scene, &members);
+            (Kind::CoverPlateSplice, first, second)
+        }
+        [a, b] => {
+            let (supporting, supported) = ranked(scene, a, b, centre);
+            let web = passed.get(&supported).is_some_and(|plies| only(plies) == Some(Ply::Web));
+            let kind = if cleats && web { Kind::WebCleats } else { Kind::OtherBolted };
+            (kind, Some(supporting), Some(supported))
+        }
+        _ => (Kind::OtherBolted, None, members.first().copied().filter(|_| members.len() == 1)),
+    };
+    let mut all = members;
+    all.extend(supporting.filter(|member| !all.contains(member)));
+    all.sort_unstable();
+    let mut draft = Draft::new(scene, kind, bolts, all);
+    draft.support(scene, supporting, supported);
+    draft.joint.plates = plates.iter().map(|plate| (*plate, "plate")).collect();
+    let first_plate = plates.iter().map(|plate| scene.place(Part::Plate(*plate))).min();
+    draft.joint.place = first_plate.or(draft.joint.place);
+    let mut welds: Vec<usize> = plates.iter().flat_map(|plate| scene.welds_at(Part::Plate(*plate))).copied().collect();
+    welds.sort_unstable();
+    welds.dedup();
+    draft.joint.welds = welds.into_iter().map(|weld| (weld, Role::Other.word())).collect();
+    draft
+}
+
+/// The member on which the plates stand, if it is one and not a bolted one; a weld or piece decides between several.
+fn stands_on(scene: &Scene, plates: &BTreeSet<usize>, bolted: &[usize]) -> Option<usize> {
+    let mut held: BTreeMap<usize, bool> = BTreeMap::new();
+    for plate in plates {
+        for member in scene.touches.members[*plate].iter().filter(|member| !bolted.contains(member)) {
+            *held.entry(*member).or_default() |= scene.are_one_piece(Part::Plate(*plate), Part::Member(*member));
+        }
+    }
+    let one = |held: Vec<usize>| if let [one] = held[..] { Some(one) } else { None };
+    one(held.keys().copied().collect())
+        .or_else(|| one(held.iter().filter(|(_, held)| **held).map(|(m, _)| *m).collect()))
+}
+
+fn is_on_web(scene: &Scene, beam: usize, passed: &BTreeMap<usize, BTreeSet<Ply>>, plates: &BTreeSet<usize>) -> bool {
+    let across = scene.steel.members[beam].across;
+    let along_web = |plate: &usize| are_parallel(scene.steel.plates[*plate].normal, across, scene.tolerances().angle);
+    passed.get(&beam).is_some_and(|plies| only(plies) == Some(Ply::Web)) && plates.iter().all(along_web)
+}
+
+fn are_in_line(scene: &Scene, a: usize, b: usize) -> bool {
+    let (a, b) = (&scene.steel.members[a], &scene.steel.members[b]);
+    let aside = |point: DVec3| (point - a.start).reject_from_normalized(a.along).length();
+    let deep = a.extents.max_element().max(b.extents.max_element());
+    are_parallel(a.along, b.along, scene.tolerances().angle) && aside(b.start) <= deep / 2.0
+}
+
+/// (supporting, supported): the one whose end is nearer to the joint is supported; of two alike, the second by mark.
+fn ranked(scene: &Scene, a: usize, b: usize, centre: DVec3) -> (usize, usize) {
+    let to_end = |i: usize| {
+        let member = &scene.steel.members[i];
+        member.start.distance(centre).min(member.end.distance(centre))
+    };
+    let (to_a, to_b) = (to_end(a), to_end(b));
+    if (to_a - to_b).abs() > scene.tolerances().position.get() {
+        return if to_a < to_b { (b, a) } else { (a, b) };
+    }
+    match of_equal_rank(scene, &[a, b]) {
+        (Some(first), Some(second)) => (first, second),
+        _ => (a, b),
+    }
+}
+
+/// (supporting, supported) of two members that no bolts of ours join.
+pub(super) fn ranked_by_axes(scene: &Scene, a: usize, b: usize) -> (usize, usize) {
+    let (one, two) = (&scene.steel.members[a], &scene.steel.members[b]);
+    let ends = [one.start, one.end, two.start, two.end];
+    let nearest = [(0, 2), (0, 3), (1, 2), (1, 3)]
+        .into_iter()
+        .min_by(|x, y| ends[x.0].distance(ends[x.1]).total_cmp(&ends[y.0].distance(ends[y.1])));
+    let Some((i, j)) = nearest else { return (a, b) };
+    // A running member's axis passes nearer to the other's end than its own end does.
+    let beside = |point: DVec3, from: DVec3, to: DVec3| {
+        let t = ((point - from).dot(to - from) / (to - from).length_squared()).clamp(0.0, 1.0);
+        point.distance(from.lerp(to, if t.is_finite() { t } else { 0.0 }))
+    };
+    let (a_to_b, b_to_a) = (beside(ends[i], two.start, two.end), beside(ends[j], one.start, one.end));
+    if (a_to_b - b_to_a).abs() <= scene.tolerances().position.get() {
+        let (first, second) = of_equal_rank(scene, &[a, b]);
+        return first.zip(second).unwrap_or((a, b));
+    }
+    if a_to_b < b_to_a { (b, a) } else { (a, b) }
+}
