@@ -10,3 +10,4 @@ mod report;
 mod rulebook;
 mod sample;
 mod shop;
+mod writer;
