@@ -10,6 +10,7 @@ mod report;
 mod rulebook;
 mod sample;
 mod shop;
+<<<<<<< HEAD
 mod worked;
 
 /// Within a tolerance; says both values where it is not.
@@ -17,3 +18,6 @@ mod worked;
 fn close(got: f64, expected: f64, tolerance: f64) {
     assert!((got - expected).abs() <= tolerance, "got {got}, expected {expected} ± {tolerance}");
 }
+=======
+mod writer;
+>>>>>>> room/sample
