@@ -1,13 +1,16 @@
 //! Reads an exchange, of whatever form, into one entity graph. The only room that knows IFC syntax.
 
-mod entities;
+mod conform;
+mod entity;
+mod graph;
 mod ifcxml;
 mod problems;
 mod scalar;
 mod schema;
 mod sniff;
 
-pub use entities::{Entities, Entity, Id, Value};
+pub use entity::{Entity, Id, Value};
+pub use graph::Entities;
 
 use crate::origin::Problem;
 
