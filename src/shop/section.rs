@@ -16,8 +16,6 @@ use crate::units::mm;
 const OUTLINE: f64 = 1.0;
 /// Thicknesses read off an outline may differ by this, mm.
 const OUTLINE_THICKNESS: f64 = 0.5;
-/// Longest run of words in a name that is looked up as a designation ("UKB 457 x 191 x 67" has six).
-const WORDS: usize = 6;
 
 /// The cross-section as geometry shows it.
 #[derive(Clone, Debug)]
@@ -91,14 +89,16 @@ impl<'a> Reading<'a> {
         let missing = |reason: String| Missing { what: "section".into(), reason, at: Some(element.place()) };
         let mut found: Vec<(String, &Section)> = Vec::new();
         for (by, text) in self.section_names(element, profile) {
-            if let Some(section) = self.designation_in(&text) {
+            if let Some(section) = self.rulebook.section(&text) {
                 found.push((format!("{by} \"{text}\""), section));
             }
         }
         let modelled = || format!("{:.1} x {:.1}", seen.bounds.size.y, seen.bounds.size.x);
         let Some((witness, section)) = found.first() else {
             return match (seen.shape, seen.sizes) {
-                (Shape::I, Some(sizes)) => (Ok(self.own_section(element, profile, seen, sizes)), Vec::new()),
+                (Shape::I, Some(sizes)) => {
+                    (self.own_section(element, profile, seen, sizes).map_err(missing), Vec::new())
+                }
                 (shape, _) => {
                     let what = if shape == Shape::Hollow { "a hollow section" } else { &*seen.what };
                     (Err(missing(format!("it is {what}, {} mm, and no name states an I or H section", modelled()))), Vec::new())
@@ -114,7 +114,8 @@ impl<'a> Reading<'a> {
         }
         match self.against(section, seen) {
             None => {
-                let table = format!("section table, {} by {witness}, agrees with the geometry", section.designation);
+                let table = self.rulebook.section_source(&section.designation).unwrap_or("section table");
+                let table = format!("{table}, {} by {witness}, agrees with the geometry", section.designation);
                 (Ok(Datum::new((*section).clone(), Origin::LookedUp(table))), Vec::new())
             }
             Some(difference) => {
@@ -158,7 +159,7 @@ impl<'a> Reading<'a> {
     }
 
     /// An I section of which no table knows the name, by the model's own sizes.
-    fn own_section(&self, element: Entity<'a>, profile: &Profile, seen: &Seen, sizes: ISizes) -> Datum<Section> {
+    fn own_section(&self, element: Entity<'a>, profile: &Profile, seen: &Seen, sizes: ISizes) -> Result<Datum<Section>, String> {
         let named = profile.name.clone().or_else(|| element.text("ObjectType").map(str::to_owned));
         let designation =
             named.unwrap_or_else(|| format!("I {:.1}x{:.1}x{:.1}x{:.1}", sizes.h, sizes.b, sizes.t_w, sizes.t_f));
@@ -172,13 +173,13 @@ impl<'a> Reading<'a> {
             mm(sizes.t_f),
             sizes.r.map(mm),
             rolled,
-        );
+        )?;
         let origin = if seen.stated {
             Origin::Modelled { by: format!("sizes of the profile \"{designation}\""), at: Some(profile.place.clone()) }
         } else {
             Origin::Derived(format!("sizes read off the outline of the profile ({})", profile.place))
         };
-        Datum::new(section, origin)
+        Ok(Datum::new(section, origin))
     }
 
     /// Every text that may name the section, with what holds it.
@@ -191,17 +192,5 @@ impl<'a> Reading<'a> {
         let sections = |p: &&Property<'_>| self.rulebook.means("section", p.name);
         names.extend(properties.iter().filter(sections).filter_map(|p| Some((p.by(), p.text()?))));
         names
-    }
-
-    /// The catalogue section that a text names, alone or among other words ("family:UKB 457x191x67:id").
-    fn designation_in(&self, text: &str) -> Option<&'a Section> {
-        if let Some(section) = self.rulebook.section(text) {
-            return Some(section);
-        }
-        text.split([':', ';', ',', '|', '_', '(', ')']).find_map(|piece| {
-            let words: Vec<&str> = piece.split_whitespace().collect();
-            let longest = words.len().min(WORDS);
-            (1..=longest).rev().find_map(|n| words.windows(n).find_map(|run| self.rulebook.section(&run.join(" "))))
-        })
     }
 }

@@ -35,8 +35,3 @@ pub(super) fn says(text: &str, word: Word) -> bool {
     let lower = text.to_lowercase();
     lower.split(|c: char| !c.is_alphabetic()).any(|token| spellings(word).contains(&token))
 }
-
-/// Whether any of the texts says it.
-pub(super) fn any_says(names: &[(String, &str)], word: Word) -> bool {
-    names.iter().any(|(_, text)| says(text, word))
-}
