@@ -20,7 +20,7 @@ impl Units {
     pub fn read(exchange: &Exchange, problems: &mut Vec<Problem>) -> Self {
         let project = exchange.entities.of_class("IfcProject").next();
         let units = project.and_then(|p| p.entity("UnitsInContext")).map(|a| a.entities("Units")).unwrap_or_default();
-        let of_type = |wanted: &str| units.iter().copied().find(|u| u.token("UnitType") == Some(wanted));
+        let of_type = |wanted: &str| units.iter().copied().find(|u| measures(*u) == Some(wanted));
         let length = of_type("LENGTHUNIT");
         let metres = length.and_then(|unit| si_factor(unit, 0)).filter(|f| *f > 0.0 && f.is_finite());
         if metres.is_none() {
@@ -43,10 +43,19 @@ impl Units {
 
 /// mm per length unit of a property's own unit.
 pub(super) fn length_unit(unit: Entity<'_>) -> Option<f64> {
-    if unit.token("UnitType") != Some("LENGTHUNIT") {
+    if measures(unit) != Some("LENGTHUNIT") {
         return None;
     }
     si_factor(unit, 0).map(|metres| metres * 1e3)
+}
+
+/// What a unit measures; an SI unit says it by its name where an export left `UnitType` out.
+fn measures(unit: Entity<'_>) -> Option<&str> {
+    unit.token("UnitType").or_else(|| match unit.token("Name") {
+        Some("METRE") => Some("LENGTHUNIT"),
+        Some("RADIAN") => Some("PLANEANGLEUNIT"),
+        _ => None,
+    })
 }
 
 /// The factor to the SI unit without prefix: metre, radian.
