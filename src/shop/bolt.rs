@@ -1,14 +1,12 @@
 //! Bolts: one for each shank, however the exchange grouped them, and what is no bolt although it is a fastener.
 
-use std::cmp::Ordering;
-
-use glam::DVec3;
-
 use super::Bolt;
+use super::bolt_name::size_in;
 use super::material::said_by;
 use super::properties::{Plausible, Property};
 use super::reading::Reading;
 use super::section::see;
+use super::shank::{Cluster, round, small_part};
 use super::solid::Prism;
 use super::statement::{Statement, first_text};
 use super::words::{Word, says};
@@ -20,14 +18,6 @@ use crate::units::{Length, mm};
 const DIAMETERS: (f64, f64) = (8.0, 72.0);
 /// A "bolt" drawn this much thicker than it is said to be is a hole pattern.
 const HOLE_PATTERN: f64 = 1.5;
-/// The largest nut or washer, mm.
-pub(super) const SMALL: f64 = 150.0;
-
-/// The parts on one axis that touch: shank, head, nut.
-struct Cluster<'p> {
-    prisms: Vec<&'p Prism>,
-}
-
 impl<'a> Reading<'a> {
     /// Whether a part is to be looked at as a fastener: by class, or by name and a round shank.
     pub fn may_be_bolt(&self, element: Entity<'a>, prisms: &[&Prism]) -> bool {
@@ -43,13 +33,10 @@ impl<'a> Reading<'a> {
 
     /// Why a fastener is none of the bolts that hold a joint, by its type or name.
     pub fn no_bolt(&self, element: Entity<'a>) -> Option<String> {
-        if let Some(sort) = self.predefined(element) {
-            if !["BOLT", "USERDEFINED", "NOTDEFINED"].contains(&sort) && element.is_a("IfcMechanicalFastener") {
-                return Some(match sort {
-                    "ANCHORBOLT" => "anchor bolt: not assessed".into(),
-                    other => format!("a fastener of the type {other} is no bolt"),
-                });
-            }
+        match self.predefined(element).filter(|_| element.is_a("IfcMechanicalFastener")) {
+            None | Some("BOLT" | "USERDEFINED" | "NOTDEFINED") => {}
+            Some("ANCHORBOLT") => return Some("anchor bolt: not assessed".into()),
+            Some(other) => return Some(format!("a fastener of the type {other} is no bolt")),
         }
         match self.called(element)? {
             Word::Nut => Some("nut".into()),
@@ -76,7 +63,10 @@ impl<'a> Reading<'a> {
         }
         if shanks.len() < clusters.len() {
             let left = clusters.len() - shanks.len();
-            self.problem(element, format!("{left} of its {} solids apart have no round shank and are no bolts", clusters.len()));
+            self.problem(
+                element,
+                format!("{left} of its {} solids apart have no round shank and are no bolts", clusters.len()),
+            );
         }
         let properties = self.properties_of(element);
         let stated = self.diameters(element, &properties);
@@ -109,32 +99,6 @@ impl<'a> Reading<'a> {
         Ok(bolts)
     }
 
-    /// Prisms on one axis that touch belong to one bolt.
-    fn clusters<'p>(&self, prisms: &[&'p Prism]) -> Vec<Cluster<'p>> {
-        let mut clusters: Vec<Cluster<'p>> = Vec::new();
-        for prism in prisms {
-            let (mine, mut rest): (Vec<_>, Vec<_>) =
-                clusters.into_iter().partition(|c| c.prisms.iter().any(|other| self.one_bolt(prism, other)));
-            // Keeps the place of the first in the file.
-            let mut merged: Vec<&Prism> = mine.into_iter().flat_map(|c| c.prisms).collect();
-            merged.push(prism);
-            rest.push(Cluster { prisms: merged });
-            clusters = rest;
-        }
-        clusters
-    }
-
-    fn one_bolt(&self, a: &Prism, b: &Prism) -> bool {
-        let tolerances = &self.rulebook.tolerances;
-        let (axis, from) = axis_of(a);
-        let (other, to) = axis_of(b);
-        let along = (to - from).dot(axis);
-        let aside = (to - from - along * axis).length();
-        let same = axis.cross(other).length() <= tolerances.angle.to_radians().sin() && aside <= tolerances.position.get();
-        let far = along + other.dot(axis) * b.depth;
-        same && along.min(far) <= a.depth + tolerances.touch.get() && along.max(far) >= -tolerances.touch.get()
-    }
-
     /// All that is said of the diameter: attributes, properties, names.
     fn diameters(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Vec<Statement<f64>> {
         let mut all = self.attribute_lengths(element, "NominalDiameter");
@@ -142,7 +106,11 @@ impl<'a> Reading<'a> {
             p.name == "NominalDiameter" || p.name == "ThreadDiameter" || self.rulebook.means("bolt-diameter", p.name)
         }));
         for (by, text) in self.names_of(element) {
-            all.extend(size_in(text).map(|(d, _)| Statement { value: d, by: format!("{by} \"{text}\""), at: element.place() }));
+            all.extend(size_in(text).map(|(d, _)| Statement {
+                value: d,
+                by: format!("{by} \"{text}\""),
+                at: element.place(),
+            }));
         }
         all
     }
@@ -171,16 +139,30 @@ impl<'a> Reading<'a> {
             return Ok(Datum::new(mm(first.value), first.origin(&self.fastener(element))));
         }
         if drawn < least.value - tolerance {
-            self.problem(element, format!(
-                "Bolt diameter: {} says {:.1} mm, but {}; the smaller, {drawn:.1} mm, is taken.",
-                least.by, least.value, others.join(", ")
+            self.problem(
+                element,
+                format!(
+                    "Bolt diameter: {} says {:.1} mm, but {}; the smaller, {drawn:.1} mm, is taken.",
+                    least.by,
+                    least.value,
+                    others.join(", ")
+                ),
+            );
+            return Ok(Datum::new(
+                mm(drawn),
+                Origin::Derived("diameter of the modelled shank, the smaller of two that disagree".into()),
             ));
-            return Ok(Datum::new(mm(drawn), Origin::Derived("diameter of the modelled shank, the smaller of two that disagree".into())));
         }
-        self.problem(element, format!(
-            "Bolt diameter: {} says {:.1} mm, but {}; the smaller, {:.1} mm, is taken.",
-            least.by, least.value, others.join(", "), least.value
-        ));
+        self.problem(
+            element,
+            format!(
+                "Bolt diameter: {} says {:.1} mm, but {}; the smaller, {:.1} mm, is taken.",
+                least.by,
+                least.value,
+                others.join(", "),
+                least.value
+            ),
+        );
         Ok(Datum::new(mm(least.value), least.origin(&self.fastener(element))))
     }
 
@@ -236,81 +218,15 @@ impl<'a> Reading<'a> {
         });
         let first = all.first()?;
         if let Some(other) = all.iter().find(|s| !((s.value - first.value).abs() <= 0.1)) {
-            self.problem(element, format!(
-                "Hole diameter: {} says {:.1} mm, {} says {:.1} mm; neither is taken.",
-                first.by, first.value, other.by, other.value
-            ));
+            self.problem(
+                element,
+                format!(
+                    "Hole diameter: {} says {:.1} mm, {} says {:.1} mm; neither is taken.",
+                    first.by, first.value, other.by, other.value
+                ),
+            );
             return None;
         }
         Some(mm(first.value))
     }
-}
-
-impl<'p> Cluster<'p> {
-    /// The longest round solid that is longer than thick (of equals the thinnest): head and nut are short.
-    fn shank(&self) -> Option<&'p Prism> {
-        let radius = |p: &Prism| p.profile.outer.circle.map_or(0.0, |(_, r)| r);
-        let longer = |a: &&Prism, b: &&Prism| -> Ordering {
-            a.depth.total_cmp(&b.depth).then(radius(b).total_cmp(&radius(a)))
-        };
-        let shank = self.prisms.iter().copied().filter(|p| round(p) && p.profile.voids.is_empty()).max_by(longer)?;
-        (shank.depth >= 2.0 * radius(shank) || self.prisms.len() == 1).then_some(shank)
-    }
-}
-
-fn axis_of(prism: &Prism) -> (DVec3, DVec3) {
-    let centre = prism.profile.outer.circle.map(|(c, _)| c).unwrap_or_else(|| see(&prism.profile).bounds.centre);
-    (prism.axis(), prism.at(centre, 0.0))
-}
-
-/// Whether a prism is round.
-pub(super) fn round(prism: &Prism) -> bool {
-    prism.profile.outer.circle.is_some()
-}
-
-/// What a small part is by shape: a hexagon no longer than wide is a nut or a head, a flat ring a washer.
-pub(super) fn small_part(prisms: &[&Prism]) -> Option<String> {
-    let [prism] = prisms else { return None };
-    let outer = &prism.profile.outer;
-    let size = see(&prism.profile).bounds.size.max_element();
-    if !(size <= SMALL) {
-        return None;
-    }
-    let centre = outer.points.iter().sum::<glam::DVec2>() / outer.points.len().max(1) as f64;
-    let corner = size / 2.0;
-    let hexagon = outer.points.len() == 6 && outer.points.iter().all(|p| (p.distance(centre) - corner).abs() <= 0.05 * corner);
-    if hexagon && prism.depth <= size {
-        return Some("nut or bolt head by its shape".into());
-    }
-    let ring = outer.circle.is_some() && (prism.profile.voids.len() == 1 || prism.profile.kind == super::profile::Kind::Hollow);
-    (ring && prism.depth <= 0.5 * size).then(|| "washer by its shape".into())
-}
-
-/// Diameter and length that a name states: `M20 x 60`, `HV M24x85`, `M 16`.
-fn size_in(text: &str) -> Option<(f64, Option<f64>)> {
-    let starts = text.char_indices().filter(|(i, c)| {
-        matches!(c, 'M' | 'm') && !text[..*i].chars().next_back().is_some_and(char::is_alphanumeric)
-    });
-    for (start, _) in starts {
-        let Some((d, rest)) = number_at(text[start + 1..].trim_start()) else { continue };
-        if !(d >= 5.0 && d <= 100.0) || rest.chars().next().is_some_and(|c| c.is_alphabetic() && !matches!(c, 'x' | 'X')) {
-            continue;
-        }
-        let times = rest.trim_start().strip_prefix(['x', 'X', '×', '*']);
-        let length = times.and_then(|r| number_at(r.trim_start())).map(|(length, _)| length);
-        return Some((d, length.filter(|l| *l >= 10.0)));
-    }
-    None
-}
-
-/// The decimal number at the start of a text and what follows it.
-fn number_at(text: &str) -> Option<(f64, &str)> {
-    let digits = text.find(|c: char| !c.is_ascii_digit()).unwrap_or(text.len());
-    let end = match text[digits..].strip_prefix(['.', ',']) {
-        Some(rest) if rest.starts_with(|c: char| c.is_ascii_digit()) => {
-            digits + 1 + rest.find(|c: char| !c.is_ascii_digit()).unwrap_or(rest.len())
-        }
-        _ => digits,
-    };
-    Some((text[..end].replace(',', ".").parse().ok()?, &text[end..]))
 }

@@ -53,7 +53,8 @@ impl<'a> Reading<'a> {
         let mut texts = Vec::new();
         for material in self.materials(element) {
             for attribute in ["Name", "Category", "Description"] {
-                let by = if attribute == "Name" { "material".to_owned() } else { format!("{attribute} of the material") };
+                let by =
+                    if attribute == "Name" { "material".to_owned() } else { format!("{attribute} of the material") };
                 texts.extend(material.text(attribute).map(|t| Said { by, text: t.to_owned(), at: material.place() }));
             }
         }

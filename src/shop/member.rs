@@ -109,10 +109,11 @@ pub(super) fn contains(polygon: &[DVec2], point: DVec2) -> bool {
     let mut inside = false;
     let mut before = polygon.last();
     for at in polygon {
-        if let Some(b) = before {
-            if (at.y > point.y) != (b.y > point.y) && point.x < (b.x - at.x) * (point.y - at.y) / (b.y - at.y) + at.x {
-                inside = !inside;
-            }
+        if let Some(b) = before
+            && (at.y > point.y) != (b.y > point.y)
+            && point.x < (b.x - at.x) * (point.y - at.y) / (b.y - at.y) + at.x
+        {
+            inside = !inside;
         }
         before = Some(at);
     }

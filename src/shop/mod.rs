@@ -4,9 +4,11 @@
 //! coordinates of a map grid lose no digits.
 
 mod bolt;
+mod bolt_name;
 mod curve;
 mod material;
 mod member;
+mod outline;
 mod placement;
 mod plate;
 mod profile;
@@ -14,6 +16,7 @@ mod properties;
 mod reading;
 mod relation;
 mod section;
+mod shank;
 mod solid;
 mod statement;
 mod take_up;

@@ -38,7 +38,7 @@ impl Reading<'_> {
             }
             let relative =
                 link.entity("RelativePlacement").ok_or("its placement has no RelativePlacement".to_owned())?;
-            world = world * self.axes(relative)?;
+            world *= self.axes(relative)?;
             self.placements.borrow_mut().insert(link.id, world);
         }
         Ok(world)

@@ -2,7 +2,7 @@
 
 use glam::{DVec2, DVec3};
 
-use super::curve::Loop;
+use super::outline::Loop;
 use super::member::{contains, untaken};
 use super::profile::Kind;
 use super::reading::Reading;
@@ -207,8 +207,9 @@ impl<'a> Reading<'a> {
 
 /// Whether a flat body is too thick for a plate of steel; says so.
 pub(super) fn too_thick(flat: &Flat) -> Option<String> {
-    (!(flat.thickness <= THICKEST))
-        .then(|| format!("it is flat but {:.0} mm thick: no steel plate is thicker than {THICKEST:.0} mm", flat.thickness))
+    (!(flat.thickness <= THICKEST)).then(|| {
+        format!("it is flat but {:.0} mm thick: no steel plate is thicker than {THICKEST:.0} mm", flat.thickness)
+    })
 }
 
 fn hole(l: &Loop) -> Hole {

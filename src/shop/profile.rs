@@ -2,7 +2,7 @@
 
 use glam::{DAffine2, DVec2};
 
-use super::curve::Loop;
+use super::outline::Loop;
 use super::reading::Reading;
 use crate::exchange::Entity;
 use crate::origin::Place;

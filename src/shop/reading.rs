@@ -49,7 +49,12 @@ impl<'a> Reading<'a> {
             entities,
             rulebook,
             units,
-            property_sets: related(entities, "IfcRelDefinesByProperties", "RelatedObjects", "RelatingPropertyDefinition"),
+            property_sets: related(
+                entities,
+                "IfcRelDefinesByProperties",
+                "RelatedObjects",
+                "RelatingPropertyDefinition",
+            ),
             types: types.into_iter().filter_map(|(id, of)| Some((id, *of.first()?))).collect(),
             materials: related(entities, "IfcRelAssociatesMaterial", "RelatedObjects", "RelatingMaterial"),
             material_properties,
@@ -158,7 +163,8 @@ fn related(entities: &Entities, class: &str, from: &str, to: &str) -> BTreeMap<I
 
 /// The entities of a value: one, a list, or a list in a defined type (`IfcPropertySetDefinitionSet`).
 fn ids(value: &Value) -> Vec<Id> {
-    let listed = |list: &[Value]| list.iter().filter_map(|v| if let Value::Entity(id) = v { Some(*id) } else { None }).collect();
+    let listed =
+        |list: &[Value]| list.iter().filter_map(|v| if let Value::Entity(id) = v { Some(*id) } else { None }).collect();
     match value {
         Value::Entity(id) => vec![*id],
         Value::List(list) => listed(list),

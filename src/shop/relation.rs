@@ -24,7 +24,10 @@ impl<'a> Reading<'a> {
     fn descend(&self, whole: Entity<'a>, depth: usize, into: &mut BTreeSet<Id>) {
         for part in self.parts_of(whole) {
             if depth >= DEPTH {
-                self.problem(whole, format!("Assemblies nest deeper than {DEPTH} levels here; what lies below is left out."));
+                self.problem(
+                    whole,
+                    format!("Assemblies nest deeper than {DEPTH} levels here; what lies below is left out."),
+                );
             } else if into.insert(part.id) {
                 self.descend(part, depth + 1, into);
             }

@@ -2,11 +2,11 @@
 
 use glam::DVec2;
 
-use super::curve::{Box2, Loop};
+use super::Shape;
+use super::outline::{Box2, Loop};
 use super::profile::{ISizes, Kind, Profile};
 use super::properties::Property;
 use super::reading::Reading;
-use super::Shape;
 use crate::exchange::Entity;
 use crate::origin::{Datum, Known, Missing, Origin};
 use crate::rulebook::Section;
@@ -38,7 +38,8 @@ pub(super) fn see(profile: &Profile) -> Seen {
     let across = -profile.up.perp();
     let own = profile.outer.box_along(across);
     let area = profile.outer.area() - profile.voids.iter().map(Loop::area).sum::<f64>();
-    let seen = |shape, bounds, sizes, stated, what: &str| Seen { shape, bounds, sizes, stated, area, what: what.into() };
+    let seen =
+        |shape, bounds, sizes, stated, what: &str| Seen { shape, bounds, sizes, stated, area, what: what.into() };
     match profile.kind {
         Kind::I(sizes) => seen(Shape::I, own, Some(sizes), true, ""),
         Kind::Hollow => seen(Shape::Hollow, own, None, false, "a hollow section"),
@@ -71,7 +72,9 @@ fn i_sizes(outline: &Loop, bounds: &Box2) -> Option<ISizes> {
     };
     // Both flanges, cut beside the web.
     let flanges = |u: f64| match outline.chords(at(u, 0.0), y).as_slice() {
-        [(low, a), (c, high)] if near(*low, -h / 2.0) && near(*high, h / 2.0) && near(a - low, high - c) => Some(a - low),
+        [(low, a), (c, high)] if near(*low, -h / 2.0) && near(*high, h / 2.0) && near(a - low, high - c) => {
+            Some(a - low)
+        }
         _ => None,
     };
     let t_w = across(1e-4 * h)?;
@@ -101,7 +104,10 @@ impl<'a> Reading<'a> {
                 }
                 (shape, _) => {
                     let what = if shape == Shape::Hollow { "a hollow section" } else { &*seen.what };
-                    (Err(missing(format!("it is {what}, {} mm, and no name states an I or H section", modelled()))), Vec::new())
+                    (
+                        Err(missing(format!("it is {what}, {} mm, and no name states an I or H section", modelled()))),
+                        Vec::new(),
+                    )
                 }
             };
         };
@@ -136,7 +142,8 @@ impl<'a> Reading<'a> {
         let outer = off(section.h.get(), h, overall) || off(section.b.get(), b, overall);
         match seen.sizes {
             Some(sizes) => {
-                let inner = off(section.t_w.get(), sizes.t_w, thickness) || off(section.t_f.get(), sizes.t_f, thickness);
+                let inner =
+                    off(section.t_w.get(), sizes.t_w, thickness) || off(section.t_f.get(), sizes.t_f, thickness);
                 let root = |r: f64| section.r.is_some_and(|expected| off(expected.get(), r, OUTLINE));
                 if inner {
                     Some(format!(
@@ -159,7 +166,13 @@ impl<'a> Reading<'a> {
     }
 
     /// An I section of which no table knows the name, by the model's own sizes.
-    fn own_section(&self, element: Entity<'a>, profile: &Profile, seen: &Seen, sizes: ISizes) -> Result<Datum<Section>, String> {
+    fn own_section(
+        &self,
+        element: Entity<'a>,
+        profile: &Profile,
+        seen: &Seen,
+        sizes: ISizes,
+    ) -> Result<Datum<Section>, String> {
         let named = profile.name.clone().or_else(|| element.text("ObjectType").map(str::to_owned));
         let designation =
             named.unwrap_or_else(|| format!("I {:.1}x{:.1}x{:.1}x{:.1}", sizes.h, sizes.b, sizes.t_w, sizes.t_f));

@@ -75,7 +75,9 @@ impl<'a> Reading<'a> {
         };
         let mut items: Vec<_> = representations.iter().filter(body).flat_map(|r| r.entities("Items")).collect();
         if items.is_empty() {
-            let solid = |item: &Entity<'_>| item.is_a("IfcSolidModel") || item.is_a("IfcMappedItem") || item.is_a("IfcBooleanResult");
+            let solid = |item: &Entity<'_>| {
+                item.is_a("IfcSolidModel") || item.is_a("IfcMappedItem") || item.is_a("IfcBooleanResult")
+            };
             items = representations.iter().flat_map(|r| r.entities("Items")).filter(solid).collect();
         }
         let (mut solids, mut budget) = (Vec::new(), ITEMS);
@@ -185,7 +187,8 @@ impl<'a> Reading<'a> {
         let profile = self.profile(solid.entity("SweptArea").ok_or("its body has an extrusion without a profile")?)?;
         let position = solid.entity("Position").map_or(Ok(DAffine3::IDENTITY), |p| self.axes(p))?;
         let depth = solid.number("Depth").map(|d| d * self.units.length).filter(|d| *d > 0.0 && d.is_finite());
-        let depth = depth.ok_or_else(|| format!("its body has an extrusion whose Depth is not more than 0 ({})", solid.place()))?;
+        let depth = depth
+            .ok_or_else(|| format!("its body has an extrusion whose Depth is not more than 0 ({})", solid.place()))?;
         let direction = direction(solid, "ExtrudedDirection")?.unwrap_or(DVec3::Z);
         prism(profile, map * position, direction * depth, self.rulebook.tolerances.angle)
     }

@@ -4,11 +4,11 @@ use std::collections::BTreeMap;
 
 use glam::DVec3;
 
-use super::bolt::{SMALL, round, small_part};
 use super::plate::{flat, too_thick};
 use super::profile::Kind;
 use super::reading::Reading;
 use super::section::see;
+use super::shank::{SMALL, round, small_part};
 use super::solid::Prism;
 use super::words::Word;
 use super::{Part, Rejected, Shape, Steelwork};
@@ -91,7 +91,10 @@ impl<'a> Reading<'a> {
         if self.may_be_bolt(element, &prisms) {
             if let Some(reason) = unread.first() {
                 let count = unread.len();
-                self.problem(element, format!("{count} of the fastener's solids can't be read ({reason}); the others are."));
+                self.problem(
+                    element,
+                    format!("{count} of the fastener's solids can't be read ({reason}); the others are."),
+                );
             }
             let bolts = self.bolts(element, &prisms)?;
             let first = steelwork.bolts.len();
@@ -135,12 +138,16 @@ impl<'a> Reading<'a> {
         let seen = see(&main.profile);
         let size = seen.bounds.size;
         let long = main.depth >= LONG * size.max_element();
-        let section = main.profile.kind != Kind::Outline || seen.shape == Shape::I || seen.area < OPEN * size.x * size.y;
+        let section =
+            main.profile.kind != Kind::Outline || seen.shape == Shape::I || seen.area < OPEN * size.x * size.y;
         if !(long || section) || (prisms.len() > 1 && flat(main).is_some()) {
             return Err(if prisms.len() > 1 {
                 format!("its body is {} solids and none of them a member", prisms.len())
             } else {
-                format!("a block of {:.0} x {:.0} x {:.0} mm: neither flat as a plate nor long as a member", size.x, size.y, main.depth)
+                format!(
+                    "a block of {:.0} x {:.0} x {:.0} mm: neither flat as a plate nor long as a member",
+                    size.x, size.y, main.depth
+                )
             });
         }
         let mut member = self.member(element, main);
@@ -155,7 +162,11 @@ impl<'a> Reading<'a> {
 impl Steelwork {
     /// Takes a common origin (in whole metres) off coordinates that are too large.
     fn shift(&mut self) {
-        let firsts = [self.members.first().map(|m| m.start), self.plates.first().map(|p| p.centre), self.bolts.first().map(|b| b.start)];
+        let firsts = [
+            self.members.first().map(|m| m.start),
+            self.plates.first().map(|p| p.centre),
+            self.bolts.first().map(|b| b.start),
+        ];
         let Some(first) = firsts.into_iter().flatten().next() else { return };
         if !(first.abs().max_element() > FAR) {
             return;

@@ -69,7 +69,15 @@ impl<'a> Reading<'a> {
     }
 
     /// Lengths that the standard's set states under a letter (or its later name), or that the vocabulary knows.
-    fn sizes(&self, element: Entity<'a>, properties: &[Property<'_>], letter: &str, later: &str, concept: &str, plausible: Plausible) -> Vec<Statement<f64>> {
+    fn sizes(
+        &self,
+        element: Entity<'a>,
+        properties: &[Property<'_>],
+        letter: &str,
+        later: &str,
+        concept: &str,
+        plausible: Plausible,
+    ) -> Vec<Statement<f64>> {
         self.property_lengths(element, properties, plausible, |p| {
             let standard = p.set == SET && (p.name == letter || p.name == later);
             standard || (p.set != SET && !concept.is_empty() && self.rulebook.means(concept, p.name))
@@ -81,11 +89,11 @@ impl<'a> Reading<'a> {
         let throats = self.sizes(element, properties, "a", "NominalThroatThickness", "weld-throat", SIZE);
         let legs = self.sizes(element, properties, "z", "WeldLegLength", "weld-leg", SIZE);
         for all in [&throats, &legs] {
-            if let [first, rest @ ..] = all.as_slice() {
-                if let Some(other) = rest.iter().find(|s| !((s.value - first.value).abs() <= AGREE * first.value)) {
-                    let (a, b) = (first.value, other.value);
-                    return Err(missing(format!("{} says {a:.1} mm, {} says {b:.1} mm", first.by, other.by)));
-                }
+            if let [first, rest @ ..] = all.as_slice()
+                && let Some(other) = rest.iter().find(|s| !((s.value - first.value).abs() <= AGREE * first.value))
+            {
+                let (a, b) = (first.value, other.value);
+                return Err(missing(format!("{} says {a:.1} mm, {} says {b:.1} mm", first.by, other.by)));
             }
         }
         let modelled = |s: &Statement<f64>| Ok(Datum::new(mm(s.value), s.origin("weld")));
