@@ -38,7 +38,7 @@ pub fn match_rows(intended: &[Length], detailed: &[Length], tolerance: Length) -
     }
     let pairing = |i: usize, j: usize| match differs(intended[i], detailed[j], tolerance) {
         false => 0.0,
-        true => MOVED + 1e-6 * (intended[i] - detailed[j]).abs().get().clamp(0.0, 1e4),
+        true => MOVED + 1e-6 * (intended[i] - detailed[j]).abs().get().min(1e4),
     };
     // cost[i][j]: of laying intended[i..] on detailed[j..].
     let mut cost = vec![vec![0.0_f64; n + 1]; m + 1];

@@ -142,7 +142,7 @@ pub fn verdict(about: About, state: State, required: f64, unit: &'static str) ->
         required: Some(required),
         resistance: Some(resistance),
         unit,
-        utilisation: Some(required / resistance),
+        utilisation: Some(f64::abs(required) / resistance),
         governed_by: "column web in compression".into(),
         reason: None,
     }

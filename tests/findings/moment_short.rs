@@ -16,9 +16,9 @@ fn cases(bench: &mut Bench, first: (f64, State), second: (f64, State)) {
 fn the_worst_case_is_told() {
     check(
         "moment-short",
-        |b| cases(b, (450.0, State::NotMet), (-420.0, State::NotMet)),
-        &["hold | the joint does not carry the moment of load case W1: 450.0 kNm required, resistance 400.0 kNm, \
-           utilisation 1.13, governed by column web in compression | 450.0 kNm | 400.0 kNm"],
+        |b| cases(b, (452.0, State::NotMet), (-420.0, State::NotMet)),
+        &["hold | the joint does not carry the moment of load case W1: 452.0 kNm required, resistance 400.0 kNm, \
+           utilisation 1.13, governed by column web in compression | 452.0 kNm | 400.0 kNm"],
     );
 }
 
