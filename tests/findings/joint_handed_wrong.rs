@@ -75,6 +75,8 @@ fn without_rows_the_plate_decides() {
     );
     assert_eq!(plate(610.0, -25.0), [""; 0]);
     assert_eq!(plate(560.0, -25.0), [""; 0], "a shorter extension is still an extension at the top");
+    assert_eq!(plate(505.0, -15.0), [""; 0], "an extension that is gone is not at the other flange");
+    assert_eq!(plate(566.5, -68.0), [""; 0], "a plate that reaches past both flanges by the same is not turned");
     assert_eq!(plate(610.0, -110.0), [""; 0], "extended at both flanges is not turned");
 }
 

@@ -12,9 +12,12 @@ fn matched(intended: &[f64], detailed: &[f64]) -> RowMatch {
     match_rows(&lengths(intended), &lengths(detailed), mm(TOLERANCE))
 }
 
+/// Intended, detailed; pairs, missing, extra.
+type Case = (&'static [f64], &'static [f64], &'static [(usize, usize)], &'static [usize], &'static [usize]);
+
 #[test]
 fn the_fewest_changes_then_the_shortest_way() {
-    let cases: [(&[f64], &[f64], &[(usize, usize)], &[usize], &[usize]); 7] = [
+    let cases: [Case; 7] = [
         (&[500.0, 400.0, 50.0], &[500.0, 400.0, 50.0], &[(0, 0), (1, 1), (2, 2)], &[], &[]),
         (&[500.0, 400.0, 50.0], &[490.0, 390.0, 40.0], &[(0, 0), (1, 1), (2, 2)], &[], &[]),
         (&[500.0, 400.0, 50.0], &[400.0, 50.0], &[(1, 0), (2, 1)], &[0], &[]),

@@ -48,10 +48,16 @@ fn a_section_with_a_name_of_its_own_is_compared_by_its_sizes() {
     let own = |b: &mut Bench, thinner: f64| {
         let mut own = section(&b.rulebook, "HEB 300");
         own.designation = "COLUMN-A".into();
-        own.t_f = own.t_f - faying::units::mm(thinner);
+        own.t_f -= faying::units::mm(thinner);
         b.layout().column.section = known(own);
     };
     check(ID, |b| own(b, 0.0), &[]);
+    // The name alone with other sizes is for witnesses-disagree.
+    let named = |b: &mut Bench| {
+        own(b, 2.0);
+        b.layout().column.section.as_mut().unwrap().value.designation = "HE 300 B".into();
+    };
+    check(ID, named, &[]);
     check(
         ID,
         |b| own(b, 2.0),
