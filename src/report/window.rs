@@ -17,7 +17,9 @@ pub(super) struct Source<'a> {
 impl<'a> Source<'a> {
     /// `None` for bytes that are no text of ASCII's family: an archive, UTF-16.
     pub(super) fn new(bytes: &'a [u8]) -> Option<Self> {
-        if bytes.iter().take(1024).any(|&b| b == 0) || [&b"PK"[..], b"\xff\xfe", b"\xfe\xff"].iter().any(|m| bytes.starts_with(m)) {
+        if bytes.iter().take(1024).any(|&b| b == 0)
+            || [&b"PK"[..], b"\xff\xfe", b"\xfe\xff"].iter().any(|m| bytes.starts_with(m))
+        {
             return None;
         }
         let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);
