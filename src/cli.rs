@@ -26,6 +26,13 @@ Exit codes:
 
 An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
 
+const SURVEY_EXIT_CODES: &str = "\
+Exit codes:
+  0  the model was read, whatever was found in it
+  2  wrong use, or an input that can't be read
+
+An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
+
 /// Lays a steel shop model on the engineer's joint schedule and says which joints do not carry what is required.
 ///
 /// Reads the fabricator's shop model, finds the bolted joints, computes their resistance to EN 1993-1-8 from what was
@@ -47,7 +54,8 @@ enum Command {
     Review(ReviewArgs),
     /// Say what was recognised in a shop model and what is missing for a full assessment.
     ///
-    /// Needs no schedule; ends with what to ask the fabricator for. Exit code 0, or 2 if the model can't be read.
+    /// Needs no schedule; ends with what to ask the fabricator for.
+    #[command(after_help = SURVEY_EXIT_CODES)]
     Survey(SurveyArgs),
     /// List the rules, or print the page of one: what it finds, why it matters, what to do.
     Rules {

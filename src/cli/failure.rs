@@ -43,14 +43,22 @@ impl Failure {
 
     /// Says it on stderr and gives the exit code.
     pub fn tell(&self) -> u8 {
-        let told = match self {
-            Self::Sentence(sentence) => format!("faying: {sentence}\n"),
-            Self::Excerpt(diagnostic) => excerpt(diagnostic.as_ref()),
-        };
-        // Where even stderr is gone there is nobody left to tell.
-        let _ = io::stderr().lock().write_all(told.as_bytes());
+        match self {
+            Self::Sentence(sentence) => say(sentence),
+            Self::Excerpt(diagnostic) => to_stderr(&excerpt(diagnostic.as_ref())),
+        }
         2
     }
+}
+
+/// Says a sentence on stderr.
+pub fn say(sentence: &str) {
+    to_stderr(&format!("faying: {sentence}\n"));
+}
+
+fn to_stderr(text: &str) {
+    // Where even stderr is gone there is nobody left to tell.
+    let _ = io::stderr().lock().write_all(text.as_bytes());
 }
 
 impl From<Failed> for Failure {
@@ -70,7 +78,7 @@ fn excerpt(diagnostic: &dyn Diagnostic) -> String {
         false => GraphicalTheme::none(),
     };
     let mut drawn = String::new();
-    match GraphicalReportHandler::new_themed(theme).render_report(&mut drawn, diagnostic) {
+    match GraphicalReportHandler::new_themed(theme).with_links(terminal).render_report(&mut drawn, diagnostic) {
         Ok(()) => drawn,
         Err(_) => format!("faying: {diagnostic}\n"),
     }

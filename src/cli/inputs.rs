@@ -6,7 +6,7 @@ use std::path::{Path, PathBuf};
 
 use faying::run::Inputs;
 
-use super::failure::Failure;
+use super::failure::{self, Failure};
 
 /// What counts as a shop model in a folder, by extension.
 const MODELS: [&str; 3] = ["ifcxml", "ifc", "ifczip"];
@@ -46,7 +46,7 @@ impl Given {
             Some([]) => own,
             Some(named) => {
                 for unused in own.iter().filter(|own| !named.iter().any(|given| same(given, own))) {
-                    eprintln!("faying: {} is not used, because --schedule was given", unused.display());
+                    failure::say(&format!("{} is not used, because --schedule was given", unused.display()));
                 }
                 named.to_vec()
             }

@@ -124,6 +124,17 @@ fn help_says_what_the_exit_codes_mean() {
 }
 
 #[test]
+fn every_rule_has_its_page_and_a_misspelt_one_names_it() {
+    let list = String::from_utf8(faying(["rules"]).stdout).unwrap();
+    for rule in faying::findings::RULES {
+        assert!(list.lines().any(|line| line.split(' ').next() == Some(rule.id)), "{} in {list}", rule.id);
+        assert_eq!(String::from_utf8(faying(["rules", rule.id]).stdout).unwrap().trim(), rule.page.trim());
+        let told = refused(&["rules", &format!("{}r", rule.id)]);
+        assert!(told.contains(&format!("near it: {}", rule.id)), "{told}");
+    }
+}
+
+#[test]
 fn a_closed_pipe_is_no_failure() {
     let (reader, writer) = std::io::pipe().unwrap();
     drop(reader);
