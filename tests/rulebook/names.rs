@@ -38,6 +38,8 @@ fn section_spellings() {
         // two, or none
         ("IPE300/IPE330", None),
         ("HEA 200 + HEB 200", None),
+        ("UB 457x191x67 or UB 457x191x68", None),
+        ("IPE 300 or IPE 300 A", None),
         ("", None),
         ("IPE", None),
         ("beam", None),

@@ -45,8 +45,8 @@ fn bolts() {
         // A hexagon's corners lie at most 2/sqrt(3) flats apart.
         let across = bolt.across_corners.get() / flats;
         assert!(across > 1.08 && across < 2.0 / 3.0_f64.sqrt(), "M{d}: {across}");
-        // d^2 pi / 4, own arithmetic
-        assert!((bolt.a.get() - 0.785_398_163 * d * d).abs() < 1e-5, "M{d}");
+        // own arithmetic
+        assert!((bolt.a.get() - std::f64::consts::FRAC_PI_4 * d * d).abs() < 1e-9, "M{d}");
         assert!(bolt.a_s < bolt.a && bolt.head.get() < d && bolt.nut.get() < d, "M{d}");
     }
     assert_eq!(rules.bolt_size(mm(21.0)), None);
