@@ -189,7 +189,7 @@ fn every_error_says_what_was_given_and_what_is_allowed() {
         ("steel.toml", with(STEEL, "f_u = 360", "f_u = -360"), "f_u = -360; allowed is more than 0", Some("-360")),
         (
             "steel.toml",
-            with(STEEL, "[[alias]]\ngrade = \"S235\"", "[[alias]]\ngrade = \"S234\""),
+            with(STEEL, "[[alias]]\ngrade = \"S275\"", "[[alias]]\ngrade = \"S234\""),
             "S234 is in no table",
             Some("\"S234\""),
         ),
@@ -264,4 +264,48 @@ fn a_section_of_another_file_is_not_shadowed() {
     let own = "designation,h,b,t_w,t_f,r,A,W_el_y,W_pl_y,A_v_z,source\nhe300b,310,300,11,19,27,,,,,own\n";
     let error = Rulebook::with_overrides(&[("sections/own.csv", own)]).unwrap_err();
     assert!(error.message().contains("he300b stands twice"), "{error}");
+}
+
+/// What the command line prints: the line of the file, with a mark under the place.
+#[test]
+fn an_error_can_be_printed_with_an_excerpt() {
+    let text = with(TOLERANCES, "touch = 2.0", "touch = 200");
+    let error = Rulebook::with_overrides(&[("tolerances.toml", &text)]).unwrap_err();
+    let mut printed = String::new();
+    miette::NarratableReportHandler::new().render_report(&mut printed, &error).unwrap();
+    for part in ["touch = 200; allowed is 0.01 to 20", "tolerances.toml", "touch = 200", "here"] {
+        assert!(printed.contains(part), "{part:?} is not in {printed}");
+    }
+}
+
+/// An editor's byte order mark is no fault of the rules.
+#[test]
+fn a_byte_order_mark_is_passed_over() {
+    let text = format!("\u{feff}{TOLERANCES}");
+    assert!(Rulebook::with_overrides(&[("tolerances.toml", text)]).is_ok());
+}
+
+/// A file under `rules/` that is not embedded would be read by people and not by the program.
+#[test]
+fn every_rule_file_is_embedded() {
+    let rules = Rulebook::embedded();
+    let stems = |folder: &str| {
+        let folder = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("rules").join(folder);
+        let mut paths: Vec<_> = std::fs::read_dir(folder).unwrap().map(|entry| entry.unwrap().path()).collect();
+        paths.sort();
+        paths
+    };
+    let annexes: Vec<_> =
+        stems("annexes").iter().map(|p| p.file_stem().unwrap().to_str().unwrap().to_owned()).collect();
+    assert_eq!(rules.annexes().collect::<Vec<_>>(), annexes);
+    let rows = stems("sections").iter().map(|path| {
+        let text = std::fs::read_to_string(path).unwrap();
+        text.lines().filter(|line| !line.starts_with('#')).count() - 1
+    });
+    assert_eq!(rules.sections().count(), rows.sum::<usize>());
+    for path in stems("").iter().filter(|path| path.extension().is_some_and(|e| e == "toml")) {
+        let name = path.file_name().unwrap().to_str().unwrap();
+        let error = Rulebook::with_overrides(&[(name, "nonsense = 1")]).unwrap_err();
+        assert!(!error.message().contains("no such rule file"), "{name}");
+    }
 }

@@ -139,7 +139,8 @@ fn sections_of_a_worked_example() {
         assert!((s.area.get() - area).abs() <= 5.0, "{name}: {}", s.area.get());
         assert!(s.rolled);
     }
-    assert_eq!(rules.section_source("UB 533x210x92"), Some("BS 4-1:2005"));
+    assert_eq!(rules.section_source("UB 533x210x92"), Some("BS 4-1:2005 (radius from memory)"));
+    assert_eq!(rules.section_source("UC 254x254x107"), Some("BS 4-1:2005"));
     assert_eq!(rules.section_source("HEB 300"), Some("EN 10365:2017"));
     assert_eq!(rules.section_source("RHS 200x100x8"), None);
 }
