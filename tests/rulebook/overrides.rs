@@ -298,7 +298,7 @@ fn every_rule_file_is_embedded() {
     let annexes: Vec<_> =
         stems("annexes").iter().map(|p| p.file_stem().unwrap().to_str().unwrap().to_owned()).collect();
     assert_eq!(rules.annexes().collect::<Vec<_>>(), annexes);
-    let rows = stems("sections").iter().map(|path| {
+    let rows = stems("sections").into_iter().map(|path| {
         let text = std::fs::read_to_string(path).unwrap();
         text.lines().filter(|line| !line.starts_with('#')).count() - 1
     });
