@@ -10,7 +10,7 @@ use faying::intent::{Intent, read_all};
 
 /// Reads one file that must be sound.
 fn sound(file: &str, text: &str) -> Intent {
-    read_all(&[(text.as_bytes(), file)]).unwrap_or_else(|error| panic!("{error}\n{text}"))
+    read_all(&[(file, text.as_bytes())]).unwrap_or_else(|error| panic!("{error}\n{text}"))
 }
 
 /// M, V, N of every case in kNm and kN, by joint mark (or supported member) and case name, in the order of the file.

@@ -6,14 +6,14 @@ use miette::{GraphicalReportHandler, GraphicalTheme};
 /// Place of the fault, what was given, what is allowed.
 type Expected = (&'static str, &'static str, &'static str);
 
-fn faults(files: &[(&[u8], &str)]) -> ScheduleError {
+fn faults(files: &[(&str, &[u8])]) -> ScheduleError {
     read_all(files).map(|intent| panic!("{files:?} was read: {intent:?}")).unwrap_err()
 }
 
 /// Each text has exactly these faults, in this order.
 fn check(file: &str, table: &[(&str, &[Expected])]) {
     for (text, expected) in table {
-        let error = faults(&[(text.as_bytes(), file)]);
+        let error = faults(&[(file, text.as_bytes())]);
         let found: Vec<String> = error.faults().map(ToString::to_string).collect();
         assert_eq!(found.len(), expected.len(), "{text:?}\n{found:#?}");
         for (found, (place, given, allowed)) in found.iter().zip(*expected) {
@@ -175,7 +175,7 @@ fn faults_of_whole_files() {
         (rows.as_bytes(), "100002:1", "100000"),
     ];
     for (bytes, place, said) in table {
-        let error = faults(&[(bytes, "s.csv")]).to_string();
+        let error = faults(&[("s.csv", bytes)]).to_string();
         assert!(error.starts_with(&format!("s.csv:{place}: ")) && error.contains(said), "{error}");
     }
 }
@@ -184,7 +184,7 @@ fn faults_of_whole_files() {
 fn faults_between_files() {
     let csv = b"joint,case,supported,M_Ed_kNm\nJ1,ULS,B1,10\n".as_slice();
     let toml = b"[[joint]]\nmark = 'J1'\nsupported = 'B2'\n[[joint.case]]\nname = 'ULS'\nM_Ed_kNm = 10\n".as_slice();
-    let at_once = faults(&[(csv, "s.csv"), (toml, "s.toml")]);
+    let at_once = faults(&[("s.csv", csv), ("s.toml", toml)]);
     let found: Vec<String> = at_once.faults().map(ToString::to_string).collect();
     assert_eq!(found.len(), 2, "{found:#?}");
     assert!(
@@ -202,8 +202,8 @@ fn faults_between_files() {
 fn an_undefined_detail_is_said_once_and_only_when_all_files_are_there() {
     let csv = b"joint,detail\nJ1,M3\nJ2,M3\n".as_slice();
     assert!(read(csv, "s.csv").is_ok());
-    assert!(read_all(&[(csv, "s.csv"), (b"[detail.M3]\n", "s.toml")]).is_ok());
-    let error = faults(&[(csv, "s.csv")]);
+    assert!(read_all(&[("s.csv", csv), ("s.toml", b"[detail.M3]\n")]).is_ok());
+    let error = faults(&[("s.csv", csv)]);
     assert_eq!(error.faults().count(), 1);
     assert!(error.to_string().starts_with("s.csv:2:4: the detail \"M3\" is not defined"), "{error}");
     assert!(merge(vec![read(csv, "s.csv").unwrap()]).unwrap_err().to_string().starts_with("s.csv:2:1: "));
@@ -218,7 +218,7 @@ fn printed(error: &ScheduleError) -> String {
 
 #[test]
 fn the_printed_report_shows_each_faulty_line_with_its_place() {
-    let error = faults(&[(b"joint,M_Ed_kNm\nJ1,12\nJ2,abc\nJ3,def\n", "s.csv")]);
+    let error = faults(&[("s.csv", b"joint,M_Ed_kNm\nJ1,12\nJ2,abc\nJ3,def\n")]);
     assert!(error.to_string().ends_with(" (and 1 more)"), "{error}");
     let out = printed(&error);
     for part in ["[s.csv:3:4]", "3 │ J2,abc", "[s.csv:4:4]", "4 │ J3,def"] {
@@ -234,7 +234,7 @@ fn the_printed_report_shows_each_faulty_line_with_its_place() {
 fn a_long_line_is_cut_to_a_window() {
     let text =
         format!("joint,remark,M_Ed_kNm,remark\nJ1,{},oops\u{1b}[31m,{}\n", "ä".repeat(20_000), "y".repeat(20_000));
-    let error = faults(&[(text.as_bytes(), "s.csv")]);
+    let error = faults(&[("s.csv", text.as_bytes())]);
     let out = printed(&error);
     assert!(out.len() < 2_000, "{} bytes", out.len());
     assert!(out.contains("[s.csv:2:20005]") && out.contains("oops") && out.contains('…'), "{out}");
@@ -244,7 +244,7 @@ fn a_long_line_is_cut_to_a_window() {
 #[test]
 fn very_many_faults_are_counted() {
     let text = format!("joint,M_Ed_kNm\n{}", (0..500).map(|i| format!("J{i},x\n")).collect::<String>());
-    let error = faults(&[(text.as_bytes(), "s.csv")]);
+    let error = faults(&[("s.csv", text.as_bytes())]);
     assert_eq!(error.faults().count(), 200);
     assert!(error.to_string().ends_with(" (and 499 more)"), "{error}");
 }
@@ -253,7 +253,7 @@ fn very_many_faults_are_counted() {
 #[test]
 fn deep_nesting_is_a_fault_and_no_overflow() {
     for text in ["joint = ".to_owned() + &"[\n".repeat(1 << 20), format!("[{}b]\n", "a.".repeat(30_000))] {
-        let error = faults(&[(text.as_bytes(), "s.toml")]).to_string();
+        let error = faults(&[("s.toml", text.as_bytes())]).to_string();
         assert!(error.contains("no TOML"), "{error}");
     }
 }

@@ -70,8 +70,8 @@ proptest! {
             Just((',', false)), Just((';', false)), Just((';', true)), Just(('\t', true))
         ],
     ) {
-        let plain = read_all(&[(csv(&rows, &[0, 1, 2, 3, 4, 5], ',', false).as_bytes(), "a.csv")]).unwrap();
-        let other = read_all(&[(csv(&shuffled, &columns, separator, comma).as_bytes(), "b.csv")]).unwrap();
+        let plain = read_all(&[("a.csv", csv(&rows, &[0, 1, 2, 3, 4, 5], ',', false).as_bytes())]).unwrap();
+        let other = read_all(&[("b.csv", csv(&shuffled, &columns, separator, comma).as_bytes())]).unwrap();
         prop_assert_eq!(said(&plain), said(&other));
         // And it is what was written: eighths are exact in binary.
         let cases = |intent: &Intent| intent.joints.iter().map(|j| j.cases.len()).sum::<usize>();
@@ -107,7 +107,7 @@ proptest! {
     ) {
         let text = words.concat();
         for file in ["s.csv", "s.toml"] {
-            if let Err(error) = read_all(&[(text.as_bytes(), file)]) {
+            if let Err(error) = read_all(&[(file, text.as_bytes())]) {
                 for fault in error.faults() {
                     let line = text.replace("\r\n", "\n");
                     let line = line.trim_start_matches('\u{feff}').split('\n').nth(fault.at.line as usize - 1);

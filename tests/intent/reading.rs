@@ -132,7 +132,7 @@ fn actions_of_one_file_and_details_of_the_other_become_one_schedule() {
     let toml = b"[[joint]]\nmark = 'j1'\nsupported = 'B1'\n[[joint.case]]\nname = 'ULS 3'\nM_Ed_kNm = 30\n\
                  [detail.M3]\n[detail.M4]\n"
         .as_slice();
-    let at_once = read_all(&[(csv, "a.csv"), (toml, "a.toml")]).unwrap();
+    let at_once = read_all(&[("a.csv", csv), ("a.toml", toml)]).unwrap();
     let one_by_one = merge(vec![read(csv, "a.csv").unwrap(), read(toml, "a.toml").unwrap()]).unwrap();
     for intent in [&at_once, &one_by_one] {
         let moments: Vec<_> = actions(intent).into_iter().map(|(_, case, [m, _, _])| (case, m)).collect();
@@ -157,7 +157,7 @@ fn the_example_on_the_page_is_read() {
         start.split_once("```").unwrap().0.to_owned()
     };
     let (csv, toml) = (block("csv"), block("toml"));
-    let intent = read_all(&[(csv.as_bytes(), "schedule.csv"), (toml.as_bytes(), "schedule.toml")]).unwrap();
+    let intent = read_all(&[("schedule.csv", csv.as_bytes()), ("schedule.toml", toml.as_bytes())]).unwrap();
     assert_eq!((intent.joints.len(), intent.details.len(), intent.problems.len()), (3, 1, 0));
     assert_eq!(intent.joints[0].cases[1].axial, None);
     assert_eq!(intent.joints[1].cases[0].moment.map(|m| m.knm()), Some(185.5));
