@@ -3,6 +3,7 @@
 //! Bytes in, [`review::Review`] out; DEVELOPERS.md draws the trip of the data.
 
 pub mod assess;
+pub mod compose;
 pub mod eurocode;
 pub mod exchange;
 pub mod findings;
@@ -12,6 +13,7 @@ pub mod origin;
 pub mod report;
 pub mod review;
 pub mod rulebook;
+pub mod run;
 pub mod shop;
 pub mod units;
 pub mod working;

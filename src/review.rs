@@ -318,16 +318,21 @@ pub struct Survey {
     pub rejected: Vec<(String, String, Place)>,
 }
 
+/// [`Missing::what`] of a joint that nobody states actions for: a question to the engineer, never to the fabricator.
+pub const REQUIRED_ACTIONS: &str = "required actions";
+
 /// The caution that stands on every report.
 pub const CAUTION: &str =
     "An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
 
 impl Review {
     /// The exit code: 1 with some hold, 3 with nothing on hold but something unproven, else 0.
+    ///
+    /// A model in which no joint was found proves nothing either: 3, lest an empty reading pass a gate.
     pub fn exit_code(&self) -> u8 {
         match self.counts {
             Counts { hold: 1.., .. } => 1,
-            Counts { unproven: 1.., .. } => 3,
+            Counts { unproven: 1.., .. } | Counts { found: 0, .. } => 3,
             _ => 0,
         }
     }

@@ -8,6 +8,8 @@ use crate::units::{Quantity, Shown};
 /// One line of a working.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Step {
+    /// A heading printed before this step: "row 2".
+    pub heading: Option<String>,
     /// The symbol of the standard, in code spelling: `F_T_1_Rd`.
     pub symbol: &'static str,
     /// The expression as it was evaluated; `None` for a value given from outside.
@@ -23,9 +25,15 @@ pub struct Step {
 pub struct Working {
     /// The steps.
     pub steps: Vec<Step>,
+    pending: Option<String>,
 }
 
 impl Working {
+    /// Puts a heading before the next step.
+    pub fn heading(&mut self, heading: impl Into<String>) {
+        self.pending = Some(heading.into());
+    }
+
     /// Notes one evaluated step; called by [`step!`](crate::step).
     pub fn step<Q: Quantity>(
         &mut self,
@@ -34,17 +42,22 @@ impl Working {
         value: Q,
         clause: &'static str,
     ) {
-        self.steps.push(Step { symbol, expression: Some(expression), value: value.shown(), clause });
+        let heading = self.pending.take();
+        self.steps.push(Step { heading, symbol, expression: Some(expression), value: value.shown(), clause });
     }
 
     /// Notes a value given from outside; called by [`given!`](crate::given).
     pub fn given<Q: Quantity>(&mut self, symbol: &'static str, value: Q, what: &'static str) {
-        self.steps.push(Step { symbol, expression: None, value: value.shown(), clause: what });
+        let heading = self.pending.take();
+        self.steps.push(Step { heading, symbol, expression: None, value: value.shown(), clause: what });
     }
 
     /// Takes over the steps of another working.
-    pub fn absorb(&mut self, other: Working) {
-        self.steps.extend(other.steps);
+    pub fn absorb(&mut self, mut other: Working) {
+        if let (Some(first), heading @ Some(_)) = (other.steps.first_mut(), self.pending.take()) {
+            first.heading = heading;
+        }
+        self.steps.append(&mut other.steps);
     }
 }
 

@@ -10,3 +10,11 @@ mod report;
 mod rulebook;
 mod sample;
 mod shop;
+mod worked;
+mod writer;
+
+/// Within a tolerance; says both values where it is not.
+#[track_caller]
+fn close(got: f64, expected: f64, tolerance: f64) {
+    assert!((got - expected).abs() <= tolerance, "got {got}, expected {expected} ± {tolerance}");
+}

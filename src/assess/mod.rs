@@ -1,4 +1,6 @@
-//! One file a joint kind: which checks, in which order; row forces, moment and shear.
+//! One room a joint kind: which checks, in which order; row forces, moment and shear.
+
+pub mod end_plate;
 
 use crate::origin::{Datum, Missing, Origin};
 use crate::units::{Force, Length, Moment};
@@ -26,6 +28,8 @@ pub struct RowForce {
     pub force: Force,
     /// What governs the force.
     pub governed_by: String,
+    /// Share of F_t,Rd that the row's bolts carry, prying included: F over the smaller T-stub of the row alone.
+    pub bolt_share: f64,
 }
 
 /// One component's check, with its working.
@@ -54,8 +58,12 @@ pub struct MomentResistance {
     pub beta: f64,
     /// M_j,Rd, welds included where they are known.
     pub moment: Moment,
+    /// M_j,Rd of all components but the welds.
+    pub without_welds: Moment,
     /// What governs.
     pub governed_by: String,
+    /// The beam's web from the tension flange down to half a pattern below the lowest row in tension: not free for shear.
+    pub web_in_tension: Length,
     /// Row forces from the tension side.
     pub rows: Vec<RowForce>,
     /// Every component.
@@ -145,6 +153,8 @@ pub struct CaseResult {
     pub verdicts: Vec<Verdict>,
     /// The moment resistance of this case (its sense and β); `None` if M is not stated or nothing could be computed.
     pub moment: Option<MomentResistance>,
+    /// The shear resistance beside this case's bolt tensions; `None` if V is not stated.
+    pub shear: Option<ShearResistance>,
 }
 
 /// The shear resistance of a joint, with the bolts' tension at its full moment resistance.

@@ -1,8 +1,21 @@
 //! What the engineer asked for: required actions, intended details, and which joint each line means.
+//!
+//! `rules/schedule.md` says how a schedule is written; this room is its reader.
 
-use crate::joints::Joints;
+mod actions;
+mod csv_form;
+mod fault;
+mod gather;
+mod pairing;
+mod source;
+mod toml_form;
+
+pub use fault::{Fault, ScheduleError};
+pub use gather::{merge, read, read_all};
+pub use pairing::pair;
+pub use source::{MAX_BYTES, MAX_LINE_BYTES};
+
 use crate::origin::{Place, Problem};
-use crate::shop::Steelwork;
 use crate::units::{Force, Length, Moment};
 
 /// One concurrent set of actions. M is positive when it puts the top of the joint in tension, N positive in tension,
@@ -103,19 +116,25 @@ pub struct Intent {
     pub problems: Vec<Problem>,
 }
 
-/// Which scheduled joint means which joint of the steel.
+/// Most lines or joints that one schedule may hold.
+pub const MAX_JOINTS: usize = 100_000;
+
+/// Longest mark, case or detail name, in characters.
+pub const MAX_TEXT: usize = 200;
+
+/// The name of a load case that the schedule leaves unnamed.
+pub const UNNAMED_CASE: &str = "(unnamed)";
+
+/// Which scheduled joint means which joint of the steel. Each scheduled joint is either paired, or in `not_found`, or
+/// in `unclear`.
 #[derive(Debug, Default)]
 pub struct Pairing {
     /// For each joint of the steel, the index of its scheduled joint.
     pub scheduled: Vec<Option<usize>>,
     /// Scheduled joints without steel: indices.
     pub not_found: Vec<usize>,
+    /// Scheduled joints that may have steel, but nobody can say which: indices, each with a problem that says why.
+    pub unclear: Vec<usize>,
     /// Ambiguities and the like.
     pub problems: Vec<Problem>,
-}
-
-/// Pairs the schedule with the joints: by GlobalId, then joint mark, then member marks and end.
-pub fn pair(intent: &Intent, joints: &Joints, steelwork: &Steelwork) -> Pairing {
-    let _ = (intent, steelwork);
-    Pairing { scheduled: vec![None; joints.joints.len()], ..Pairing::default() }
 }

@@ -1,7 +1,8 @@
-//! The entity graph: what every exchange form is read into.
+//! One entity of the graph and its values.
 
-use std::sync::Arc;
-
+use super::graph::Entities;
+use super::problems::Spot;
+use super::schema::Attribute;
 use crate::origin::Place;
 
 /// An entity's index in the graph, in the order of the file.
@@ -32,87 +33,73 @@ pub enum Value {
     Typed(Box<str>, Box<Value>),
 }
 
-/// All entities of one exchange.
-#[derive(Debug, Default)]
-pub struct Entities {
-    nodes: Vec<Node>,
-    file: Option<Arc<str>>,
-}
-
-#[derive(Debug)]
-struct Node {
-    class: &'static str,
-    label: Box<str>,
-    line: u32,
-    column: u32,
-    values: Vec<(&'static str, Value)>,
-}
-
 /// One entity of the graph.
-#[derive(Clone, Copy)]
+#[derive(Clone, Copy, Debug)]
 pub struct Entity<'a> {
     graph: &'a Entities,
     /// Its index.
     pub id: Id,
 }
 
-impl Entities {
-    /// How many there are.
-    pub fn len(&self) -> usize {
-        self.nodes.len()
-    }
-
-    /// Whether there are none.
-    pub fn is_empty(&self) -> bool {
-        self.nodes.is_empty()
-    }
-
-    /// All, in the order of the file.
-    pub fn all(&self) -> impl Iterator<Item = Entity<'_>> {
-        (0..self.nodes.len() as u32).map(|i| self.get(Id(i)))
-    }
-
-    /// Those of the class or a subtype of it, in the order of the file.
-    pub fn of_class<'a>(&'a self, class: &'a str) -> impl Iterator<Item = Entity<'a>> {
-        self.all().filter(move |e| e.is_a(class))
-    }
-
-    /// One.
-    pub fn get(&self, id: Id) -> Entity<'_> {
-        Entity { graph: self, id }
-    }
-}
-
 impl<'a> Entity<'a> {
-    fn node(self) -> &'a Node {
-        &self.graph.nodes[self.id.0 as usize]
+    pub(super) fn new(graph: &'a Entities, id: Id) -> Self {
+        Self { graph, id }
+    }
+
+    pub(super) fn graph(self) -> &'a Entities {
+        self.graph
     }
 
     /// The class as EXPRESS spells it: `IfcBeam`.
     pub fn class(self) -> &'a str {
-        self.node().class
+        self.graph.class_name(self.graph.class(self.id))
     }
 
     /// Whether it is of that class or of a subtype.
     pub fn is_a(self, class: &str) -> bool {
-        self.node().class == class // until the table of supertypes is read
+        self.graph.lineage(self.id).any(|name| name == class)
     }
 
     /// The file's own name for it: `i110`, `#110`; empty where it has none.
     pub fn label(self) -> &'a str {
-        &self.node().label
+        self.graph.label(self.id)
     }
 
     /// Where its definition starts.
     pub fn place(self) -> Place {
-        let node = self.node();
-        Place { file: self.graph.file.clone().unwrap_or_else(|| "".into()), line: node.line, column: node.column }
+        let Spot { line, column } = self.spot();
+        Place { file: self.graph.file(), line, column }
+    }
+
+    pub(super) fn spot(self) -> Spot {
+        self.graph.spot(self.id)
     }
 
     /// The value of an attribute, by its EXPRESS name.
     pub fn value(self, attribute: &str) -> &'a Value {
         const ABSENT: &Value = &Value::Absent;
-        self.node().values.iter().find(|(name, _)| *name == attribute).map_or(ABSENT, |(_, value)| value)
+        self.values().find(|(name, _)| *name == attribute).map_or(ABSENT, |(_, value)| value)
+    }
+
+    /// All attributes with their values, absent ones too: the schema's in its order, then unknown ones.
+    pub fn values(self) -> impl Iterator<Item = (&'a str, &'a Value)> {
+        let extras = self.graph.extras(self.id).iter().map(|(name, value)| (&**name, value));
+        self.known_values().map(|(attribute, value)| (attribute.name, value)).chain(extras)
+    }
+
+    /// The schema's attributes with their values.
+    pub(super) fn known_values(self) -> impl Iterator<Item = (&'static Attribute, &'a Value)> {
+        self.graph.attributes(self.id).iter().zip(self.graph.values(self.id))
+    }
+
+    /// The entities that point here by any attribute, in the order of the file.
+    pub fn referring(self) -> impl Iterator<Item = Entity<'a>> {
+        self.graph.referring(self.id).map(|id| self.graph.get(id))
+    }
+
+    /// The entities of that class (or a subtype) that point here by that attribute, in the order of the file.
+    pub fn referring_by(self, class: &str, attribute: &str) -> Vec<Entity<'a>> {
+        self.referring().filter(|e| e.is_a(class) && e.entities(attribute).iter().any(|to| to.id == self.id)).collect()
     }
 
     /// A string attribute (also of a SELECT type); empty strings count as absent.
@@ -166,7 +153,11 @@ impl<'a> Entity<'a> {
 
     /// The entities of a list attribute (or the single one it holds).
     pub fn entities(self, attribute: &str) -> Vec<Entity<'a>> {
-        match self.value(attribute) {
+        let mut value = self.value(attribute);
+        while let Value::Typed(_, inner) = value {
+            value = inner;
+        }
+        match value {
             Value::List(items) => items
                 .iter()
                 .filter_map(|item| if let Value::Entity(id) = item { Some(self.graph.get(*id)) } else { None })

@@ -1,0 +1,306 @@
+//! The bolted end-plate joint between a beam and a column's flange, EN 1993-1-8:2005 6.2.
+
+mod intended;
+mod limits;
+mod moment;
+mod numbers;
+mod rows;
+mod shear;
+mod totals;
+mod weld_checks;
+
+pub use intended::intended;
+use numbers::{Noted, Numbers};
+
+use super::{About, Assessment, CaseResult, Gap, MomentResistance, Sense, State, Verdict};
+use crate::intent::LoadCase;
+use crate::joints::EndPlateLayout;
+use crate::origin::Missing;
+use crate::rulebook::Rulebook;
+use crate::units::Moment;
+
+/// What stands on the column's other flange in a load case.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub enum Opposite {
+    /// No joint there.
+    None,
+    /// A joint with this moment, positive with tension at its top.
+    Moment(Moment),
+    /// A joint whose moment nobody states: β at its upper bound.
+    NotStated,
+}
+
+/// One load case with what happens on the other side.
+#[derive(Clone, Debug)]
+pub struct Demand<'a> {
+    /// The load case.
+    pub case: &'a LoadCase,
+    /// The other side.
+    pub opposite: Opposite,
+}
+
+/// The upper bound of β, 5.3(9).
+const BETA_MAX: f64 = 2.0;
+
+/// β = |1 − M_2/M_1| ≤ 2, 5.3(9) (5.4), moments positive with tension at the top on either side.
+fn beta(own: Moment, opposite: Opposite) -> f64 {
+    match opposite {
+        Opposite::None => 1.0,
+        Opposite::NotStated => BETA_MAX,
+        Opposite::Moment(other) if own == Moment::ZERO => {
+            if other == Moment::ZERO {
+                1.0
+            } else {
+                BETA_MAX
+            }
+        }
+        Opposite::Moment(other) => (1.0 - other / own).abs().min(BETA_MAX),
+    }
+}
+
+/// Assesses a joint as laid out, against load cases if there are any. `two_sided`: whether a joint stands on the column's
+/// other flange (then, without load cases, β is at its upper bound).
+pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, rulebook: &Rulebook) -> Assessment {
+    let mut noted = Noted::default();
+    let numbers = Numbers::gather(layout, rulebook, &mut noted);
+    let mut assessment = Assessment { ..Assessment::default() };
+    if let Some(n) = &numbers {
+        noted
+            .assumptions
+            .push(format!("k_wc = {}: the column's axial stress is not stated (6.2.6.2(2))", rulebook.settings.k_wc));
+        noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
+        let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
+        if two_sided && demands.is_empty() {
+            noted.assumptions.push("β = 2, its upper bound: the moments of both sides are not stated".into());
+        }
+        let turned = n.upside_down();
+        let solve = |sense: Sense, beta: f64| match sense {
+            Sense::Hogging => moment::resistance(n, sense, beta, rulebook),
+            Sense::Sagging => moment::resistance(&turned, sense, beta, rulebook),
+        };
+        let at_rest = |sense, noted: &mut Noted| match solve(sense, plain_beta) {
+            Ok(resistance) => Some(resistance),
+            Err(reason) => {
+                let what = if sense == Sense::Hogging { "tension at the top" } else { "tension at the bottom" };
+                // The side that no case asks for keeps no proof back.
+                let needed = demands.is_empty() && sense == Sense::Hogging
+                    || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense));
+                if needed {
+                    noted.gaps.push(Gap::NotChecked(Missing { what: format!("moment with {what}"), reason, at: None }));
+                }
+                None
+            }
+        };
+        assessment.hogging = at_rest(Sense::Hogging, &mut noted);
+        assessment.sagging = at_rest(Sense::Sagging, &mut noted);
+        assessment.shear = Some(shear::resistance(n, assessment.hogging.as_ref(), 1.0, rulebook));
+        let n_pl = n.beam.area * n.beam_strength.f_y_flange / rulebook.annex.gamma_m0;
+        let lower_bound = noted.gaps.iter().any(|gap| matches!(gap, Gap::LowerBound(_)));
+        let context = Cases { n, rulebook, n_pl, lower_bound, solve: &solve };
+        for (case, demand) in demands.iter().enumerate() {
+            assessment.cases.push(context.result(case, demand));
+        }
+        govern(&mut assessment, demands);
+    } else {
+        for (case, demand) in demands.iter().enumerate() {
+            assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None, shear: None });
+        }
+    }
+    assessment.gaps = noted.gaps;
+    assessment.assumptions = noted.assumptions;
+    assessment.inputs = noted.inputs;
+    assessment
+}
+
+fn sense_of(moment: Moment) -> Sense {
+    if moment < Moment::ZERO { Sense::Sagging } else { Sense::Hogging }
+}
+
+/// With load cases, the joint's own resistance is that of the case that uses it most, in each sense.
+fn govern(assessment: &mut Assessment, demands: &[Demand<'_>]) {
+    for sense in [Sense::Hogging, Sense::Sagging] {
+        let used = |case: &&CaseResult| {
+            let required = demands[case.case].case.moment.unwrap_or(Moment::ZERO).abs();
+            case.moment.as_ref().map_or(0.0, |m| required / m.moment)
+        };
+        let worst = (assessment.cases.iter())
+            .filter(|case| case.moment.as_ref().is_some_and(|m| m.sense == sense))
+            .max_by(|a, b| used(a).total_cmp(&used(b)));
+        if let Some(moment) = worst.and_then(|case| case.moment.clone()) {
+            match sense {
+                Sense::Hogging => assessment.hogging = Some(moment),
+                Sense::Sagging => assessment.sagging = Some(moment),
+            }
+        }
+    }
+}
+
+fn not_computed(case: &LoadCase) -> Vec<Verdict> {
+    let reason = "an input is missing";
+    let unproven = |about, required: Option<f64>, unit| Verdict {
+        about,
+        state: State::Unproven,
+        required,
+        resistance: None,
+        unit,
+        utilisation: None,
+        governed_by: String::new(),
+        reason: Some(reason.into()),
+    };
+    vec![
+        unproven(About::Moment, case.moment.map(|m| m.knm()), "kNm"),
+        unproven(About::Shear, case.shear.map(|v| v.kn()), "kN"),
+        unproven(About::Axial, case.axial.map(|n| n.kn()), "kN"),
+    ]
+}
+
+struct Cases<'a, F> {
+    n: &'a Numbers,
+    rulebook: &'a Rulebook,
+    n_pl: crate::units::Force,
+    /// Whether the resistances are a lower bound: then "not met" is not proven.
+    lower_bound: bool,
+    solve: &'a F,
+}
+
+impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
+    fn result(&self, case: usize, demand: &Demand<'_>) -> CaseResult {
+        let LoadCase { moment, shear, axial, .. } = demand.case;
+        let mut verdicts = Vec::new();
+        let solved = moment.map(|m| (self.solve)(sense_of(m), beta(m, demand.opposite)));
+        let bound = demand.opposite == Opposite::NotStated;
+        match (moment, &solved) {
+            (Some(m), Some(Ok(resistance))) => {
+                let governed = if resistance.moment < resistance.without_welds {
+                    component_governing(resistance)
+                } else {
+                    resistance.governed_by.clone()
+                };
+                verdicts.push(self.verdict(
+                    About::Moment,
+                    m.knm().abs(),
+                    resistance.without_welds.knm(),
+                    "kNm",
+                    governed,
+                    bound,
+                ));
+                if self.n.a_tension.is_some() && self.n.a_web.is_some() {
+                    verdicts.push(self.weld_verdict(*m, resistance, bound));
+                }
+            }
+            (_, Some(Err(reason))) => verdicts.push(unproven(About::Moment, *moment, reason.clone())),
+            _ => verdicts.push(unproven(About::Moment, None, "M is not stated".into())),
+        }
+        let solved = solved.and_then(Result::ok);
+        // Without a stated moment the bolts might be fully in tension.
+        let (tension, share) = match (&solved, moment) {
+            (Some(resistance), Some(m)) => (Some(resistance.clone()), m.abs() / resistance.without_welds),
+            _ => ((self.solve)(Sense::Hogging, BETA_MAX).ok(), 1.0),
+        };
+        let shear_resistance = shear.map(|_| {
+            let share = if share.is_finite() { share.min(1.0) } else { 1.0 };
+            shear::resistance(self.n, tension.as_ref(), share, self.rulebook)
+        });
+        verdicts.push(match (shear, &shear_resistance) {
+            (Some(v), Some(resistance)) => {
+                let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
+                self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, moment.is_none())
+            }
+            _ => unproven_shear(),
+        });
+        let limit = (self.rulebook.settings.axial_limit * self.n_pl).kn();
+        verdicts.push(match axial {
+            Some(n) if n.kn().abs() <= limit => Verdict {
+                about: About::Axial,
+                state: State::Met,
+                required: Some(n.kn()),
+                resistance: None,
+                unit: "kN",
+                utilisation: None,
+                governed_by: format!("within {:.0} % of N_pl,Rd, neglected by 6.2.7.1(2)", 100.0 * self.rulebook.settings.axial_limit),
+                reason: None,
+            },
+            stated => Verdict {
+                about: About::Axial,
+                state: State::Unproven,
+                required: stated.map(|n| n.kn()),
+                resistance: None,
+                unit: "kN",
+                utilisation: None,
+                governed_by: String::new(),
+                reason: Some(match stated {
+                    Some(n) => format!(
+                        "N = {:.1} kN is above {:.0} % of the beam's N_pl,Rd ({limit:.1} kN), 6.2.7.1(2): moment with axial force is not assessed yet",
+                        n.kn(),
+                        100.0 * self.rulebook.settings.axial_limit
+                    ),
+                    None => "N is not stated".into(),
+                }),
+            },
+        });
+        CaseResult { case, verdicts, moment: solved, shear: shear_resistance }
+    }
+
+    fn verdict(
+        &self,
+        about: About,
+        required: f64,
+        resistance: f64,
+        unit: &'static str,
+        governed_by: String,
+        bound: bool,
+    ) -> Verdict {
+        let utilisation = required / resistance;
+        let met = required <= resistance * (1.0 + self.rulebook.tolerances.utilisation);
+        let bound = bound || self.lower_bound;
+        Verdict {
+            about,
+            state: match met {
+                true => State::Met,
+                false if bound => State::Unproven,
+                false => State::NotMet,
+            },
+            required: Some(required),
+            resistance: Some(resistance),
+            unit,
+            utilisation: Some(utilisation).filter(|u| u.is_finite()),
+            governed_by,
+            reason: (!met && bound).then(|| "the resistance is only a lower bound".into()),
+        }
+    }
+
+    fn weld_verdict(&self, required: Moment, resistance: &MomentResistance, bound: bool) -> Verdict {
+        // The welds' share of the moment: they limit it at moment/without_welds, or carry more than the rest can bring.
+        let worst = (resistance.components.iter())
+            .filter(|c| matches!(c.id.as_str(), "flange-weld" | "web-weld"))
+            .max_by(|a, b| (a.at_full / a.resistance).total_cmp(&(b.at_full / b.resistance)));
+        let Some(worst) = worst else {
+            return unproven(About::Weld, Some(required), "no weld could be computed".into());
+        };
+        let limit = resistance.without_welds * (worst.resistance / worst.at_full);
+        self.verdict(About::Weld, required.knm().abs(), limit.knm(), "kNm", worst.title.clone(), bound)
+    }
+}
+
+/// What governs besides the welds.
+fn component_governing(resistance: &MomentResistance) -> String {
+    let cut = resistance.rows.iter().find(|row| !(row.force >= row.potential));
+    cut.or(resistance.rows.first()).map_or_else(String::new, |row| row.governed_by.clone())
+}
+
+fn unproven(about: About, required: Option<Moment>, reason: String) -> Verdict {
+    Verdict {
+        about,
+        state: State::Unproven,
+        required: required.map(|m| m.knm()),
+        resistance: None,
+        unit: "kNm",
+        utilisation: None,
+        governed_by: String::new(),
+        reason: Some(reason),
+    }
+}
+
+fn unproven_shear() -> Verdict {
+    Verdict { unit: "kN", ..unproven(About::Shear, None, "V is not stated".into()) }
+}

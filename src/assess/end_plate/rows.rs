@@ -1,0 +1,89 @@
+//! Row forces in equilibrium, 6.2.7.2: from the tension side down, each row as much as it, its groups, the compression
+//! side, the panel and the rule of (9) allow, and only then the next.
+#![allow(non_snake_case)]
+
+use super::limits::Limit;
+use super::numbers::Numbers;
+use super::totals::Total;
+use crate::assess::RowForce;
+use crate::rulebook::RowForces;
+use crate::units::{Force, Length};
+
+/// What limits a row once a row above it has passed the limit of 6.2.7.2(9).
+struct Linear {
+    force: Force,
+    lever_arm: Length,
+    row: usize,
+}
+
+/// Whether the plate or the flange is thin enough for a plastic distribution whatever the row forces: UK practice,
+/// t ≤ (d/1.9) √(f_ub/f_y) of either (UK National Annex to EN 1993-1-8, NA.2.7, from memory).
+fn thin_enough(n: &Numbers) -> bool {
+    let limit = |f_y: crate::units::Stress| n.d / 1.9 * (n.f_ub / f_y).sqrt();
+    n.t_p <= limit(n.plate_strength.f_y) || n.column.t_f <= limit(n.column_strength.f_y_flange)
+}
+
+/// Works down the rows. `lever_arms` and `numbers` are of the tension rows, from the tension side.
+pub fn forces(
+    n: &Numbers,
+    lever_arms: &[Length],
+    numbers: &[usize],
+    limits: &[Limit],
+    totals: &[Total],
+    rule: RowForces,
+    notes: &mut Vec<String>,
+) -> Vec<RowForce> {
+    let plastic = rule == RowForces::ThinPlateOrLinear && thin_enough(n);
+    let mut forces: Vec<RowForce> = Vec::new();
+    let mut linear: Option<Linear> = None;
+    for (r, (&lever_arm, &number)) in lever_arms.iter().zip(numbers).enumerate() {
+        let mut potential: Option<(Force, &str)> = None;
+        for limit in limits.iter().filter(|limit| limit.last == r) {
+            let above: Force = forces[limit.first..r].iter().map(|f| f.force).sum();
+            let left = limit.resistance.value - above;
+            if potential.is_none_or(|(least, _)| !(left >= least)) {
+                potential = Some((left, &limit.title));
+            }
+        }
+        let Some((potential, governed_by)) = potential else { break };
+        let (mut force, mut governed_by) = (potential, governed_by.to_owned());
+        let above: Force = forces.iter().map(|f| f.force).sum();
+        for total in totals {
+            if let Some(allowed) = total.allows()
+                && !(allowed - above >= force)
+            {
+                (force, governed_by) = (allowed - above, total.title.to_owned());
+            }
+        }
+        if let Some(Linear { force: of_row, lever_arm: its_arm, row }) = &linear {
+            let allowed = *of_row * (lever_arm / *its_arm);
+            if !(allowed >= force) {
+                (force, governed_by) = (allowed, format!("in proportion to row {row}, 6.2.7.2(9)"));
+            }
+        }
+        force = force.max(Force::ZERO);
+        if linear.is_none() && !plastic {
+            let triggers = match rule {
+                RowForces::LinearBeyond19 => !(force <= 1.9 * n.F_t_Rd),
+                RowForces::ThinPlateOrLinear => true,
+            };
+            if triggers && r + 1 < lever_arms.len() {
+                notes.push(match rule {
+                    RowForces::LinearBeyond19 => format!(
+                        "row {number} carries {force}, more than 1.9 Ft,Rd = {}: the rows beyond it are limited in proportion to their lever arms (6.2.7.2(9))",
+                        1.9 * n.F_t_Rd
+                    ),
+                    RowForces::ThinPlateOrLinear => format!(
+                        "neither end plate nor column flange is thin enough for a plastic distribution: the rows beyond row {number} are limited in proportion to their lever arms"
+                    ),
+                });
+                linear = Some(Linear { force, lever_arm, row: number });
+            }
+        }
+        let alone = limits.iter().filter(|l| l.bolts_used && l.first == r).map(|l| l.resistance.value);
+        let bolt_share = alone.reduce(Force::min).map_or(1.0, |least| force / least);
+        let potential = potential.max(Force::ZERO);
+        forces.push(RowForce { row: number, lever_arm, potential, force, governed_by, bolt_share });
+    }
+    forces
+}

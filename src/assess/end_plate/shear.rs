@@ -1,0 +1,120 @@
+//! V_Rd: bolts in shear beside their tension, bearing in plate and column flange, the web's weld.
+#![allow(non_snake_case)]
+
+use super::numbers::Numbers;
+use super::weld_checks;
+use crate::assess::{Component, MomentResistance, ShearResistance};
+use crate::eurocode::bolts::{self, BearingPlace};
+use crate::rulebook::Rulebook;
+use crate::units::{Force, Length, mm};
+use crate::working::Working;
+use crate::{given, step};
+
+/// M12 and M14 in holes with 2 mm clearance carry 0.85 of their shear, 3.6.1(5).
+fn beta_hole(n: &Numbers) -> f64 {
+    if n.d <= mm(14.0) && !(n.d_0 - n.d < mm(2.0)) { 0.85 } else { 1.0 }
+}
+
+/// V_Rd with `share` (0 to 1) of the tension that `moment` puts into its rows. The bolts' own minimum is added up row by
+/// row (each bolt the smaller of its shear and bearing resistance); the shear may act up or down, the worse counts.
+pub fn resistance(n: &Numbers, moment: Option<&MomentResistance>, share: f64, rulebook: &Rulebook) -> ShearResistance {
+    let gamma_M2 = rulebook.annex.gamma_m2;
+    let (alpha_v, area) = if rulebook.settings.thread_in_shear_plane { (n.alpha_v, n.A_s) } else { (0.6, n.A) };
+    let shear = bolts::shear(alpha_v, n.f_ub, area, beta_hole(n), gamma_M2);
+
+    let mut in_shear = Force::ZERO;
+    let mut w = Working::default();
+    w.absorb(shear.working);
+    let mut per_row = Vec::new();
+    for row in &n.rows {
+        let tension =
+            moment.and_then(|m| m.rows.iter().find(|f| f.row == row.number)).filter(|f| f.force > Force::ZERO);
+        let used = match tension {
+            None => 0.0,
+            Some(_) if rulebook.settings.shear_with_full_tension => 1.0,
+            Some(row) => (row.bolt_share * share).min(1.0),
+        };
+        w.heading(format!("row {}", row.number));
+        let left = bolts::shear_beside_tension(shear.value, used * n.F_t_Rd, n.F_t_Rd);
+        w.absorb(left.working);
+        in_shear += 2.0 * left.value;
+        per_row.push(left.value);
+    }
+    let V_bolts = in_shear;
+    given!(w, "all bolts in shear"; V_bolts);
+
+    let mut components = vec![Component {
+        id: "bolts-in-shear".into(),
+        title: "bolts in shear with their tension".into(),
+        clause: "EN 1993-1-8:2005 3.6.1",
+        resistance: V_bolts,
+        at_full: Force::ZERO,
+        working: w,
+    }];
+    let mut least = (V_bolts, "bolts in shear with their tension".to_owned());
+    for (id, title, ply) in [
+        ("end-plate-in-bearing", "end plate in bearing", Ply::Plate),
+        ("column-flange-in-bearing", "column flange in bearing", Ply::Column),
+    ] {
+        let (up, down) = (bearing(n, ply, true, &per_row, gamma_M2), bearing(n, ply, false, &per_row, gamma_M2));
+        let worst = if up.1 <= down.1 { up } else { down };
+        if !(worst.1 >= least.0) {
+            least = (worst.1, format!("bolts in shear and {title}"));
+        }
+        components.push(Component {
+            id: id.into(),
+            title: title.into(),
+            clause: "EN 1993-1-8:2005 3.6.1",
+            resistance: worst.0,
+            at_full: Force::ZERO,
+            working: worst.2,
+        });
+    }
+    let reach = moment.map_or(Length::ZERO, |m| m.web_in_tension);
+    if let Some(weld) = weld_checks::in_shear(n, rulebook, reach) {
+        if !(weld.resistance >= least.0) {
+            least = (weld.resistance, weld.title.clone());
+        }
+        components.push(weld);
+    }
+    ShearResistance { shear: least.0, governed_by: least.1, components }
+}
+
+#[derive(Clone, Copy, PartialEq)]
+enum Ply {
+    Plate,
+    Column,
+}
+
+/// Bearing of all bolts in one ply alone, and the sum of each bolt's smaller of bearing and `shear_left`.
+///
+/// `up`: the bolts push the ply upwards.
+fn bearing(n: &Numbers, ply: Ply, up: bool, shear_left: &[Force], gamma_M2: f64) -> (Force, Force, Working) {
+    let mut w = Working::default();
+    let (mut all, mut with_shear) = (Force::ZERO, Force::ZERO);
+    let count = n.rows.len();
+    for (i, row) in n.rows.iter().enumerate() {
+        let ahead = if up { i.checked_sub(1) } else { Some(i + 1).filter(|&j| j < count) };
+        let p_1 = ahead.map(|j| (n.rows[j].height - row.height).abs());
+        let e_1 = match (ply, ahead, up) {
+            (_, Some(_), _) => None,
+            (Ply::Plate, None, true) => Some(n.plate_top - row.height),
+            (Ply::Plate, None, false) => Some(row.height - n.plate_bottom),
+            (Ply::Column, None, true) => n.column_above,
+            (Ply::Column, None, false) => n.column_below,
+        };
+        let (e_2, t, f_u) = match ply {
+            Ply::Plate => (row.e_plate, n.t_p, n.plate_strength.f_u),
+            Ply::Column => (row.e_column, n.column.t_f, n.column_strength.f_u),
+        };
+        w.heading(format!("row {}, bolts pushing {}", row.number, if up { "up" } else { "down" }));
+        let place = BearingPlace { e_1, p_1, e_2, p_2: Some(row.gauge) };
+        let bearing = bolts::bearing(place, n.d, n.d_0, t, f_u, n.f_ub, gamma_M2);
+        w.absorb(bearing.working);
+        all += 2.0 * bearing.value;
+        with_shear += 2.0 * bearing.value.min(shear_left[i]);
+    }
+    let V_bearing = all;
+    step!(w, "sum over the rows", V_b_Rd = V_bearing);
+    (V_b_Rd, with_shear, w)
+}

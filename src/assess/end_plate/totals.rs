@@ -1,0 +1,135 @@
+//! What limits the sum of all rows: the compression side and the web panel in shear.
+#![allow(non_snake_case)]
+
+use super::numbers::{Numbers, StiffenerPair};
+use crate::eurocode::stiffeners::{self, Pair, Web};
+use crate::eurocode::web_panel::{self, FrameAction};
+use crate::eurocode::{Resistance, beam, column_web};
+use crate::rulebook::Rulebook;
+use crate::units::{Force, Length};
+
+/// A component that limits Σ F over all rows.
+#[derive(Clone, Debug)]
+pub struct Total {
+    /// `column-web-panel-in-shear`.
+    pub id: &'static str,
+    /// In words.
+    pub title: &'static str,
+    /// Clause.
+    pub clause: &'static str,
+    /// Its own resistance.
+    pub resistance: Resistance,
+    /// The component's action per unit of Σ F: 1, or β for the panel.
+    pub share: f64,
+}
+
+impl Total {
+    /// What Σ F may be; `None` if the component is not loaded (β = 0).
+    pub fn allows(&self) -> Option<Force> {
+        (self.share != 0.0).then(|| self.resistance.value / self.share)
+    }
+}
+
+/// The credited pair level with a flange whose middle is at `level`: within half the flange's thickness.
+fn pair_at(n: &Numbers, level: Length) -> Option<&StiffenerPair> {
+    n.stiffeners.iter().find(|s| (s.height - level).abs() <= 0.5 * n.beam.t_f)
+}
+
+/// All total limits for tension at the top and one β.
+///
+/// # Errors
+/// Why the web panel can't be assessed.
+pub fn totals(n: &Numbers, rulebook: &Rulebook, beta: f64, notes: &mut Vec<String>) -> Result<Vec<Total>, String> {
+    let (gamma_M0, gamma_M1) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1);
+    let (column, strength) = (&n.column, n.column_strength);
+    let h_clear = column.h - 2.0 * column.t_f;
+    let d_wc = h_clear - 2.0 * n.r_c;
+    let compression_pair = pair_at(n, 0.5 * n.beam.t_f);
+    let tension_pair = pair_at(n, n.beam.h - 0.5 * n.beam.t_f);
+
+    let a_p = n.a_compression.unwrap_or(Length::ZERO);
+    let web = column_web::Compression {
+        t_fb: n.beam.t_f,
+        a_p,
+        t_fc: column.t_f,
+        s: n.r_c,
+        t_p: n.t_p,
+        room: (-n.plate_bottom - 2.0_f64.sqrt() * a_p).max(Length::ZERO),
+        t_wc: column.t_w,
+        d_wc,
+        f_y_wc: strength.f_y_web,
+        A_vc: column.a_v_z,
+        beta,
+        k_wc: rulebook.settings.k_wc,
+    };
+    let (plain, crushing) = column_web::compression(&web, gamma_M0, gamma_M1);
+    let (mut title, mut compression) = ("column web in compression", plain);
+    if let Some(pair) = compression_pair {
+        let plates = Pair { b_s: pair.b_s, t_s: pair.t_s, cope: n.r_c, f_y_s: pair.f_y };
+        if plates.stocky() {
+            title = "stiffened column web in compression";
+            let web = Web {
+                F_web: compression.value,
+                F_crushing: crushing.value,
+                t_wc: column.t_w,
+                h_clear,
+                f_y_wc: strength.f_y_web,
+            };
+            let stiffened = stiffeners::compression(&plates, &web, gamma_M0, gamma_M1);
+            compression.working.absorb(stiffened.working);
+            compression.value = stiffened.value;
+            notes.push("stiffeners are taken as cut back by the column's root radius at the web".into());
+        } else {
+            notes.push("the compression stiffeners' outstand is above 14εt: not credited".into());
+        }
+    }
+
+    let flange = beam::flange_compression(
+        &beam::FlangeCompression {
+            W_y: n.W_beam,
+            h: n.beam.h,
+            b_fb: n.beam.b,
+            t_fb: n.beam.t_f,
+            f_y: n.beam_strength.f_y_flange,
+        },
+        gamma_M0,
+    );
+
+    let frame = match (compression_pair, tension_pair) {
+        (Some(lower), Some(upper)) => Some(FrameAction {
+            d_s: upper.height - lower.height,
+            b_fc: column.b,
+            t_fc: column.t_f,
+            f_y_fc: strength.f_y_flange,
+            b_st: 2.0 * lower.b_s.min(upper.b_s) + column.t_w,
+            t_st: lower.t_s.min(upper.t_s),
+            f_y_st: lower.f_y.min(upper.f_y),
+        }),
+        _ => None,
+    };
+    let panel = web_panel::shear(column.a_v_z, column.t_w, d_wc, strength.f_y_web, frame, gamma_M0)?;
+
+    Ok(vec![
+        Total {
+            id: "column-web-panel-in-shear",
+            title: "column web panel in shear",
+            clause: "EN 1993-1-8:2005 6.2.6.1",
+            resistance: panel,
+            share: beta,
+        },
+        Total {
+            id: "column-web-in-compression",
+            title,
+            clause: "EN 1993-1-8:2005 6.2.6.2",
+            resistance: compression,
+            share: 1.0,
+        },
+        Total {
+            id: "beam-flange-in-compression",
+            title: "beam flange and web in compression",
+            clause: "EN 1993-1-8:2005 6.2.6.7",
+            resistance: flange,
+            share: 1.0,
+        },
+    ])
+}

@@ -1,0 +1,283 @@
+//! One joint's review: resistance, required actions, checks, findings, outcome.
+
+use super::{Computed, Sources, brief};
+use crate::assess::{About, Assessment, Component, Gap, Sense, State, Verdict};
+use crate::intent::ScheduledJoint;
+use crate::joints::Joint;
+use crate::origin::Missing;
+use crate::review::{CheckResult, Finding, JointReview, Outcome, Required, Resistance, RowResult};
+
+/// A joint of the steel.
+pub fn review(
+    sources: &Sources<'_>,
+    joint: &Joint,
+    scheduled: Option<&ScheduledJoint>,
+    computed: &Computed,
+    mut findings: Vec<Finding>,
+) -> JointReview {
+    let steel = sources.steelwork;
+    let assessment = computed.detailed.as_ref();
+    let member = |index: Option<usize>| index.and_then(|i| steel.members.get(i)).map(brief::member);
+    let missing = missing(sources, joint, scheduled, computed);
+    findings.sort_by_key(|finding| finding.severity);
+    let outcome = outcome(assessment, &findings, &missing);
+    let intended = computed.intended.as_ref().and_then(|i| i.as_ref().ok());
+    let leading = assessment.map(|a| leading(a, scheduled));
+    JointReview {
+        mark: scheduled.and_then(|s| s.mark.clone()).unwrap_or_else(|| joint.mark.clone()),
+        kind: joint.kind.word().into(),
+        detail: scheduled.and_then(|s| s.detail.clone()),
+        outcome,
+        reasons: reasons(&findings, &missing),
+        supporting: member(joint.supporting),
+        supported: member(joint.supported),
+        bolts: brief::bolts(steel, joint),
+        plates: brief::plates(steel, joint),
+        welds: brief::welds(steel, joint),
+        resistance: assessment.map(resistance).unwrap_or_default(),
+        intended_resistance: intended.map(|(_, a)| resistance(a)),
+        required: required(assessment, scheduled),
+        rows: leading.as_ref().map(|l| l.rows.clone()).unwrap_or_default(),
+        checks: leading.map(|l| l.checks).unwrap_or_default(),
+        findings,
+        missing,
+        assumptions: assessment.map(|a| a.assumptions.clone()).unwrap_or_default(),
+        inputs: (assessment.iter())
+            .flat_map(|a| &a.inputs)
+            .map(|i| (i.name.clone(), i.value.clone(), i.origin.to_string()))
+            .collect(),
+        difference: intended
+            .and_then(|(meant, _)| Some((brief::lines(meant), brief::lines(joint.layout.as_ref().ok()?)))),
+        at: joint.place.clone(),
+    }
+}
+
+/// A scheduled joint without steel.
+pub fn not_found(scheduled: &ScheduledJoint, findings: Vec<Finding>) -> JointReview {
+    let named = || {
+        let ends = [scheduled.supported.as_deref(), scheduled.supporting.as_deref()];
+        ends.into_iter().flatten().collect::<Vec<_>>().join(" / ")
+    };
+    JointReview {
+        mark: scheduled.mark.clone().unwrap_or_else(named),
+        kind: "not-found".into(),
+        detail: scheduled.detail.clone(),
+        outcome: outcome(None, &findings, &[]),
+        reasons: reasons(&findings, &[]),
+        supporting: None,
+        supported: None,
+        bolts: None,
+        plates: Vec::new(),
+        welds: Vec::new(),
+        resistance: Resistance::default(),
+        intended_resistance: None,
+        required: required(None, Some(scheduled)),
+        rows: Vec::new(),
+        checks: Vec::new(),
+        findings,
+        missing: Vec::new(),
+        assumptions: Vec::new(),
+        inputs: Vec::new(),
+        difference: None,
+        at: Some(scheduled.at.clone()),
+    }
+}
+
+/// Clear must be earned: everything required is proven to be carried, and nothing was found.
+fn outcome(assessment: Option<&Assessment>, findings: &[Finding], missing: &[Missing]) -> Outcome {
+    let worst = findings.iter().map(|finding| finding.severity).min();
+    if worst == Some(Outcome::Hold) {
+        return Outcome::Hold;
+    }
+    match assessment.map(Assessment::carries) {
+        // A rule for each of these stands in the findings; should one be silent, the joint is still held.
+        Some(State::NotMet) => Outcome::Hold,
+        Some(State::Met) if worst != Some(Outcome::Unproven) && missing.is_empty() => {
+            if worst.is_some() {
+                Outcome::Comment
+            } else {
+                Outcome::Clear
+            }
+        }
+        _ => Outcome::Unproven,
+    }
+}
+
+fn reasons(findings: &[Finding], missing: &[Missing]) -> Vec<String> {
+    let mut reasons: Vec<String> = Vec::new();
+    let said = findings.iter().map(|finding| finding.message.clone());
+    for reason in said.chain(missing.iter().map(Missing::to_string)) {
+        if !reasons.contains(&reason) {
+            reasons.push(reason);
+        }
+    }
+    reasons
+}
+
+/// Everything that keeps the joint from being proven.
+fn missing(
+    sources: &Sources<'_>,
+    joint: &Joint,
+    scheduled: Option<&ScheduledJoint>,
+    computed: &Computed,
+) -> Vec<Missing> {
+    let said = |what: &str, reason: String| Missing { what: what.into(), reason, at: joint.place.clone() };
+    let mut missing = Vec::new();
+    if let Err(reason) = &joint.layout {
+        missing.push(said("assessment of this kind", reason.clone()));
+    }
+    match scheduled {
+        None if sources.schedules.is_empty() => {
+            missing.push(said("required actions", "no schedule was given".into()));
+        }
+        None => missing.push(said("required actions", "the schedule has no line for this joint".into())),
+        Some(scheduled) if scheduled.cases.is_empty() => missing.push(Missing {
+            at: Some(scheduled.at.clone()),
+            ..said("required actions", "the schedule states no load case for this joint".into())
+        }),
+        Some(_) => {}
+    }
+    let carries = computed.detailed.as_ref().map(Assessment::carries);
+    for gap in computed.detailed.iter().flat_map(|a| &a.gaps) {
+        match gap {
+            Gap::NotChecked(gap) => missing.push(gap.clone()),
+            // A lower bound that carries proves it all the same.
+            Gap::LowerBound(gap) if carries != Some(State::Met) => missing.push(gap.clone()),
+            Gap::LowerBound(_) => {}
+        }
+    }
+    let cases = computed.detailed.iter().flat_map(|a| &a.cases);
+    for verdict in cases.flat_map(|case| &case.verdicts).filter(|v| v.state == State::Unproven) {
+        if let Some(reason) = verdict.reason.as_ref().filter(|reason| *reason != "an input is missing") {
+            let what = match verdict.about {
+                About::Moment => "proof of the moment",
+                About::Shear => "proof of the shear",
+                About::Weld => "proof of the welds",
+                About::Axial => "proof of the axial force",
+            };
+            missing.push(said(what, reason.clone()));
+        }
+    }
+    if let Some(Err(gap)) = &computed.intended {
+        missing.push(gap.clone());
+    }
+    let mut seen: Vec<Missing> = Vec::new();
+    for gap in missing {
+        if !seen.iter().any(|other| other.what == gap.what && other.reason == gap.reason) {
+            seen.push(Missing { at: gap.at.or_else(|| joint.place.clone()), ..gap });
+        }
+    }
+    seen
+}
+
+fn resistance(assessment: &Assessment) -> Resistance {
+    let (hogging, sagging) = (assessment.hogging.as_ref(), assessment.sagging.as_ref());
+    let shear = assessment.shear.as_ref();
+    let governs = hogging.or(sagging).map(|m| m.governed_by.clone()).or(shear.map(|s| s.governed_by.clone()));
+    Resistance {
+        moment_knm: hogging.map(|m| m.moment.knm()),
+        moment_reversed_knm: sagging.map(|m| m.moment.knm()),
+        shear_kn: shear.map(|s| s.shear.kn()),
+        axial_kn: None,
+        governed_by: governs,
+    }
+}
+
+fn required(assessment: Option<&Assessment>, scheduled: Option<&ScheduledJoint>) -> Vec<Required> {
+    let cases = scheduled.map_or(&[][..], |s| &s.cases);
+    let one = |(index, case): (usize, &crate::intent::LoadCase)| {
+        let result = assessment.and_then(|a| a.cases.iter().find(|result| result.case == index));
+        let worst: Option<&Verdict> = result
+            .iter()
+            .flat_map(|result| &result.verdicts)
+            .filter(|v| v.utilisation.is_some())
+            .max_by(|a, b| a.utilisation.unwrap_or(0.0).total_cmp(&b.utilisation.unwrap_or(0.0)));
+        Required {
+            case: case.name.clone(),
+            moment_knm: case.moment.map(|m| m.knm()),
+            shear_kn: case.shear.map(|v| v.kn()),
+            axial_kn: case.axial.map(|n| n.kn()),
+            utilisation: worst.and_then(|v| v.utilisation),
+            governed_by: worst.map(|v| v.governed_by.clone()),
+            moment_resistance_knm: result.and_then(|r| r.moment.as_ref()).map(|m| m.moment.knm()),
+            at: Some(case.at.clone()),
+        }
+    };
+    cases.iter().enumerate().map(one).collect()
+}
+
+/// Row forces and checks of the load case that uses the joint most, or at its own full resistance without one.
+struct Leading {
+    rows: Vec<RowResult>,
+    checks: Vec<CheckResult>,
+}
+
+fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leading {
+    let use_of = |verdicts: &[Verdict], about: About| {
+        verdicts.iter().find(|v| v.about == about).and_then(|v| v.utilisation).unwrap_or(0.0)
+    };
+    let by_moment = (assessment.cases.iter())
+        .filter(|case| case.moment.is_some())
+        .max_by(|a, b| use_of(&a.verdicts, About::Moment).total_cmp(&use_of(&b.verdicts, About::Moment)));
+    let moment =
+        by_moment.and_then(|c| c.moment.as_ref()).or(assessment.hogging.as_ref()).or(assessment.sagging.as_ref());
+    let rows = moment.iter().flat_map(|m| &m.rows);
+    let rows = rows
+        .map(|row| RowResult {
+            row: row.row,
+            lever_arm_mm: row.lever_arm.get(),
+            potential_kn: row.potential.kn(),
+            force_kn: row.force.kn(),
+            governed_by: row.governed_by.clone(),
+        })
+        .collect();
+
+    let mut checks = Vec::new();
+    let share = by_moment.map(|case| use_of(&case.verdicts, About::Moment));
+    if let Some(moment) = moment {
+        let required = by_moment.and_then(|case| scheduled?.cases.get(case.case)?.moment).map(|m| m.knm().abs());
+        let title = match moment.sense {
+            Sense::Hogging => "moment, tension at the top",
+            Sense::Sagging => "moment, tension at the bottom",
+        };
+        checks.push(check("moment", title, "EN 1993-1-8:2005 6.2.7", moment.moment.knm(), required, "kNm"));
+        // At a smaller moment each component carries its share of what it carries at the full one.
+        checks.extend(moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()))));
+    }
+    let shear_case = assessment
+        .cases
+        .iter()
+        .max_by(|a, b| use_of(&a.verdicts, About::Shear).total_cmp(&use_of(&b.verdicts, About::Shear)));
+    if let Some(shear) = shear_case.and_then(|case| case.shear.as_ref()).or(assessment.shear.as_ref()) {
+        let verdict = shear_case.and_then(|case| case.verdicts.iter().find(|v| v.about == About::Shear));
+        let required = verdict.and_then(|v| v.required);
+        checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", shear.shear.kn(), required, "kN"));
+        checks.extend(shear.components.iter().map(|c| component(c, required)));
+    }
+    Leading { rows, checks }
+}
+
+fn component(component: &Component, action: Option<f64>) -> CheckResult {
+    let mut result = check(&component.id, &component.title, component.clause, component.resistance.kn(), action, "kN");
+    result.working = component.working.clone();
+    result
+}
+
+fn check(id: &str, title: &str, clause: &str, resistance: f64, action: Option<f64>, unit: &'static str) -> CheckResult {
+    let utilisation = action.map(|a| a / resistance).filter(|u| u.is_finite());
+    CheckResult {
+        id: id.into(),
+        title: title.into(),
+        clause: clause.into(),
+        resistance: Some(resistance).filter(|r| r.is_finite()),
+        action,
+        unit,
+        utilisation,
+        outcome: match utilisation {
+            Some(u) if u <= 1.0 => "met",
+            Some(_) => "not met",
+            None => "unproven",
+        },
+        working: Default::default(),
+    }
+}

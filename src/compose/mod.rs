@@ -1,0 +1,238 @@
+//! Puts the review together: each joint's assessment, findings and outcome, the counts, the problems.
+
+mod brief;
+mod joint;
+
+use sha2::{Digest, Sha256};
+
+use crate::assess::Assessment;
+use crate::assess::end_plate::{self, Demand, Opposite};
+use crate::exchange::Exchange;
+use crate::findings::{self, Context};
+use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
+use crate::joints::{EndPlateLayout, Joint, Joints};
+use crate::origin::{Missing, Problem};
+use crate::review::{Basis, Counts, JointReview, Outcome, Review, Survey};
+use crate::rulebook::{ModeOne, RowForces, Rulebook};
+use crate::shop::Steelwork;
+
+/// Everything that was read and recognised.
+pub struct Sources<'a> {
+    /// Rules and tables.
+    pub rulebook: &'a Rulebook,
+    /// The exchange.
+    pub exchange: &'a Exchange,
+    /// The steel.
+    pub steelwork: &'a Steelwork,
+    /// The joints.
+    pub joints: &'a Joints,
+    /// The schedule.
+    pub intent: &'a Intent,
+    /// Which line means which joint.
+    pub pairing: &'a Pairing,
+    /// The schedules' names; empty if none was given.
+    pub schedules: Vec<&'a str>,
+}
+
+/// The review of everything.
+pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
+    let mut joints: Vec<JointReview> = (0..sources.joints.joints.len()).map(|index| sources.found(index)).collect();
+    joints.extend(sources.pairing.not_found.iter().filter_map(|&index| sources.not_found(index)));
+    joints.sort_by(|a, b| natural(&a.mark).cmp(&natural(&b.mark)));
+
+    let ends = |outcome| joints.iter().filter(|joint| joint.outcome == outcome).count();
+    let resistance = |joint: &&JointReview| {
+        let r = &joint.resistance;
+        r.moment_knm.is_some() || r.moment_reversed_knm.is_some() || r.shear_kn.is_some()
+    };
+    let counts = Counts {
+        found: sources.joints.joints.len(),
+        scheduled: sources.intent.joints.len(),
+        paired: sources.pairing.scheduled.iter().flatten().count(),
+        assessed: joints.iter().filter(resistance).count(),
+        clear: ends(Outcome::Clear),
+        comment: ends(Outcome::Comment),
+        hold: ends(Outcome::Hold),
+        unproven: ends(Outcome::Unproven),
+    };
+    let mut problems: Vec<Problem> = Vec::new();
+    problems.extend(sources.intent.problems.iter().cloned());
+    problems.extend(sources.pairing.problems.iter().cloned());
+    problems.extend(sources.exchange.problems.iter().cloned());
+    problems.extend(sources.steelwork.problems.iter().cloned());
+    Review {
+        file: file.to_owned(),
+        exchange: sources.exchange.form.clone(),
+        sha256: Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect(),
+        schedule: (!sources.schedules.is_empty()).then(|| sources.schedules.join(", ")),
+        basis: basis(sources.rulebook),
+        counts,
+        joints,
+        problems,
+        survey: survey(sources),
+    }
+}
+
+/// Marks in the order a person expects: T2 before T10.
+fn natural(mark: &str) -> Vec<(u64, String)> {
+    let mut parts: Vec<(u64, String)> = Vec::new();
+    let mut rest = mark;
+    while !rest.is_empty() {
+        let words = rest.find(|c: char| c.is_ascii_digit()).unwrap_or(rest.len());
+        let (word, tail) = rest.split_at(words);
+        let digits = tail.find(|c: char| !c.is_ascii_digit()).unwrap_or(tail.len());
+        let (number, tail) = tail.split_at(digits);
+        // A number too long for u64 sorts last among numbers, then by its text.
+        parts.push((0, word.to_owned()));
+        parts.push((number.parse().unwrap_or(u64::MAX), number.to_owned()));
+        rest = tail;
+    }
+    parts
+}
+
+fn basis(rulebook: &Rulebook) -> Basis {
+    let settings = &rulebook.settings;
+    let said = |name: &str, value: String| (name.to_owned(), value);
+    Basis {
+        standard: "EN 1993-1-8:2005",
+        annex: rulebook.annex.name.clone(),
+        annex_source: rulebook.annex.source.clone(),
+        gamma_m0: rulebook.annex.gamma_m0,
+        gamma_m1: rulebook.annex.gamma_m1,
+        gamma_m2: rulebook.annex.gamma_m2,
+        settings: vec![
+            said(
+                "row forces",
+                match settings.row_forces {
+                    RowForces::LinearBeyond19 => "in proportion beyond 1.9 Ft,Rd (6.2.7.2(9))",
+                    RowForces::ThinPlateOrLinear => {
+                        "plastic if plate or flange is thin, else in proportion (UK practice)"
+                    }
+                }
+                .into(),
+            ),
+            said(
+                "T-stub mode 1",
+                match settings.mode_one {
+                    ModeOne::Method1 => "method 1",
+                    ModeOne::Method2 => "method 2",
+                }
+                .into(),
+            ),
+            said(
+                "strength of rolled sections",
+                if settings.strength_by_flange { "by flange thickness" } else { "by each element's thickness" }.into(),
+            ),
+            said("α of Figure 6.11, at most", format!("{}", settings.alpha_max)),
+            said("rows carry shear only below", format!("{} of the beam's depth", settings.shear_only_below)),
+            said(
+                "bolt tension beside shear",
+                if settings.shear_with_full_tension { "as if fully used" } else { "by the row's share" }.into(),
+            ),
+            said(
+                "shear plane",
+                if settings.thread_in_shear_plane { "through the thread" } else { "through the shank" }.into(),
+            ),
+            said("axial force neglected up to", format!("{} of N_pl,Rd (6.2.7.1(2))", settings.axial_limit)),
+        ],
+    }
+}
+
+fn survey(sources: &Sources<'_>) -> Survey {
+    let steel = sources.steelwork;
+    Survey {
+        members: steel.members.len(),
+        plates: steel.plates.len(),
+        bolts: steel.bolts.len(),
+        welds: steel.welds.len(),
+        pieces: steel.pieces.len(),
+        loose_bolts: (sources.joints.loose_bolts.iter())
+            .filter_map(|&i| steel.bolts.get(i))
+            .map(|bolt| (bolt.identity.guid.clone(), bolt.identity.place.clone()))
+            .collect(),
+        rejected: (steel.rejected.iter())
+            .map(|r| {
+                let name = if r.identity.name.is_empty() { &r.identity.class } else { &r.identity.name };
+                (name.clone(), r.reason.clone(), r.identity.place.clone())
+            })
+            .collect(),
+    }
+}
+
+/// What was computed for one joint.
+struct Computed {
+    detailed: Option<Assessment>,
+    intended: Option<Result<(EndPlateLayout, Assessment), Missing>>,
+}
+
+impl<'a> Sources<'a> {
+    fn scheduled(&self, joint: usize) -> Option<&'a ScheduledJoint> {
+        self.intent.joints.get((*self.pairing.scheduled.get(joint)?)?)
+    }
+
+    fn detail(&self, scheduled: Option<&ScheduledJoint>) -> Option<&'a IntendedDetail> {
+        let name = scheduled?.detail.as_ref()?;
+        self.intent.details.iter().find(|detail| detail.name == *name)
+    }
+
+    /// The load cases with what the joint on the other flange does in the case of the same name.
+    fn demands<'b>(&self, joint: &Joint, cases: &'b [LoadCase]) -> Vec<Demand<'b>> {
+        let opposite = |case: &LoadCase| match joint.opposite {
+            None => Opposite::None,
+            Some(other) => (self.scheduled(other))
+                .and_then(|other| other.cases.iter().find(|its| its.name == case.name))
+                .and_then(|its| its.moment)
+                .map_or(Opposite::NotStated, Opposite::Moment),
+        };
+        cases.iter().map(|case| Demand { case, opposite: opposite(case) }).collect()
+    }
+
+    fn compute(&self, joint: &Joint, scheduled: Option<&ScheduledJoint>) -> Computed {
+        let Ok(layout) = &joint.layout else { return Computed { detailed: None, intended: None } };
+        let cases = scheduled.map_or(&[][..], |s| &s.cases);
+        let demands = self.demands(joint, cases);
+        let two_sided = joint.opposite.is_some();
+        let assess = |layout: &EndPlateLayout| end_plate::assess(layout, &demands, two_sided, self.rulebook);
+        let intended = self.detail(scheduled).map(|detail| {
+            let meant = end_plate::intended(layout, detail, self.rulebook)?;
+            let assessment = assess(&meant);
+            Ok((meant, assessment))
+        });
+        Computed { detailed: Some(assess(layout)), intended }
+    }
+
+    fn found(&self, index: usize) -> JointReview {
+        let joint = &self.joints.joints[index];
+        let scheduled = self.scheduled(index);
+        let computed = self.compute(joint, scheduled);
+        let context = Context {
+            rulebook: self.rulebook,
+            steelwork: self.steelwork,
+            schedule_given: !self.schedules.is_empty(),
+            joint: Some(joint),
+            layout: joint.layout.as_ref().ok(),
+            scheduled,
+            intended: self.detail(scheduled),
+            assessment: computed.detailed.as_ref(),
+            intended_assessment: computed.intended.as_ref().and_then(|i| i.as_ref().ok()).map(|(_, a)| a),
+        };
+        let findings = findings::look(&context);
+        joint::review(self, joint, scheduled, &computed, findings)
+    }
+
+    fn not_found(&self, index: usize) -> Option<JointReview> {
+        let scheduled = self.intent.joints.get(index)?;
+        let context = Context {
+            rulebook: self.rulebook,
+            steelwork: self.steelwork,
+            schedule_given: true,
+            joint: None,
+            layout: None,
+            scheduled: Some(scheduled),
+            intended: self.detail(Some(scheduled)),
+            assessment: None,
+            intended_assessment: None,
+        };
+        Some(joint::not_found(scheduled, findings::look(&context)))
+    }
+}

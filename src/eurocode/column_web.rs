@@ -1,0 +1,88 @@
+//! Column web in transverse tension and compression: EN 1993-1-8:2005 6.2.6.2, 6.2.6.3, Table 6.3.
+
+use super::{E, Resistance};
+use crate::units::{Area, Length, Stress};
+use crate::working::Working;
+use crate::{given, step};
+
+/// ω of Table 6.3 for a transformation parameter β, with its steps noted.
+pub fn omega(w: &mut Working, beta: f64, b_eff: Length, t_wc: Length, A_vc: Area) -> f64 {
+    given!(w, "interaction with shear in the web"; beta, b_eff, t_wc, A_vc);
+    step!(w, "Table 6.3", omega_1 = 1.0 / (1.0 + 1.3 * (b_eff * t_wc / A_vc).powi(2)).sqrt());
+    step!(w, "Table 6.3", omega_2 = 1.0 / (1.0 + 5.2 * (b_eff * t_wc / A_vc).powi(2)).sqrt());
+    if beta <= 0.5 {
+        step!(w, "Table 6.3", omega = 1.0);
+        omega
+    } else if beta <= 1.0 {
+        step!(w, "Table 6.3", omega = omega_1 + 2.0 * (1.0 - beta) * (1.0 - omega_1));
+        omega
+    } else {
+        // NaN and anything beyond 2 end here too: β is at most 2 (5.3(9)), and NaN stays NaN.
+        step!(w, "Table 6.3", omega = omega_1 + (beta.min(2.0) - 1.0) * (omega_2 - omega_1) + 0.0 * beta);
+        omega
+    }
+}
+
+/// F_t,wc,Rd: an unstiffened web in transverse tension over b_eff = l_eff of the column flange, 6.2.6.3.
+pub fn tension(b_eff: Length, t_wc: Length, f_y_wc: Stress, A_vc: Area, beta: f64, gamma_M0: f64) -> Resistance {
+    let mut w = Working::default();
+    let omega = omega(&mut w, beta, b_eff, t_wc, A_vc);
+    given!(w, "column web"; f_y_wc);
+    step!(w, "6.2.6.3, (6.15)", F_t_wc_Rd = omega * b_eff * t_wc * f_y_wc / gamma_M0);
+    Resistance { value: F_t_wc_Rd, working: w }
+}
+
+/// An unstiffened column web in transverse compression.
+#[derive(Clone, Copy, Debug)]
+pub struct Compression {
+    /// t_fb: the beam's compression flange.
+    pub t_fb: Length,
+    /// a_p: throat of its fillets on the end plate.
+    pub a_p: Length,
+    /// t_fc.
+    pub t_fc: Length,
+    /// s: root radius of a rolled column.
+    pub s: Length,
+    /// t_p.
+    pub t_p: Length,
+    /// How far the end plate runs past the fillet below the compression flange, ≥ 0.
+    pub room: Length,
+    /// t_wc.
+    pub t_wc: Length,
+    /// d_wc = h_c − 2(t_fc + s).
+    pub d_wc: Length,
+    /// f_y of the web.
+    pub f_y_wc: Stress,
+    /// A_vc.
+    pub A_vc: Area,
+    /// β.
+    pub beta: f64,
+    /// k_wc.
+    pub k_wc: f64,
+}
+
+/// F_c,wc,Rd: crushing and buckling of the unstiffened web, 6.2.6.2 (6.9); the first value is the smaller, the second is
+/// crushing alone (for a stiffened web).
+pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance, Resistance) {
+    let mut w = Working::default();
+    let Compression { t_fb, a_p, t_fc, s, t_p, room, t_wc, d_wc, f_y_wc, A_vc, beta, k_wc } = *c;
+    given!(w, "column web at the compression flange"; t_fb, a_p, t_fc, s, t_p, room);
+    // 45° through the end plate, both ways; below the flange no further than the plate reaches.
+    step!(w, "6.2.6.2(1)", s_p = t_p + t_p.min(room));
+    step!(w, "6.2.6.2, (6.11)", b_eff = t_fb + 2.0 * 2.0_f64.sqrt() * a_p + 5.0 * (t_fc + s) + s_p);
+    let omega = omega(&mut w, beta, b_eff, t_wc, A_vc);
+    given!(w, "column web"; t_wc, d_wc, f_y_wc, k_wc);
+    step!(w, "6.2.6.2, (6.13c)", lambda_p = 0.932 * ((b_eff / t_wc) * (d_wc / t_wc) * (f_y_wc / E)).sqrt());
+    let rho = if lambda_p <= 0.72 {
+        step!(w, "6.2.6.2, (6.13a)", rho = 1.0);
+        rho
+    } else {
+        step!(w, "6.2.6.2, (6.13b)", rho = (lambda_p - 0.2) / (lambda_p * lambda_p));
+        rho
+    };
+    step!(w, "6.2.6.2, (6.9)", F_crushing = omega * k_wc * b_eff * t_wc * f_y_wc / gamma_M0);
+    let crushing = Resistance { value: F_crushing, working: w.clone() };
+    step!(w, "6.2.6.2, (6.9)", F_buckling = omega * k_wc * rho * b_eff * t_wc * f_y_wc / gamma_M1);
+    step!(w, "6.2.6.2, (6.9)", F_c_wc_Rd = F_crushing.min(F_buckling));
+    (Resistance { value: F_c_wc_Rd, working: w }, crushing)
+}

@@ -1,0 +1,90 @@
+//! Transverse stiffeners of a column web: EN 1993-1-8:2005 6.2.6.2, 6.2.6.3 with EN 1993-1-5 9.1 and 9.4.
+
+use super::{E, Resistance, epsilon};
+use crate::units::{Area, Force, Length, Stress};
+use crate::working::Working;
+use crate::{given, step};
+
+/// A pair of full-depth transverse stiffeners, one plate on each side of the web.
+#[derive(Clone, Copy, Debug)]
+pub struct Pair {
+    /// b_s: outstand of one plate.
+    pub b_s: Length,
+    /// t_s.
+    pub t_s: Length,
+    /// Width of one plate that is cut away beside the column's root fillet.
+    pub cope: Length,
+    /// f_y of the stiffeners.
+    pub f_y_s: Stress,
+}
+
+/// The web that a pair strengthens in compression.
+#[derive(Clone, Copy, Debug)]
+pub struct Web {
+    /// The unstiffened web's resistance.
+    pub F_web: Force,
+    /// Its crushing part.
+    pub F_crushing: Force,
+    /// t_wc.
+    pub t_wc: Length,
+    /// Clear depth between the flanges.
+    pub h_clear: Length,
+    /// f_y of the web.
+    pub f_y_wc: Stress,
+}
+
+impl Pair {
+    /// A_s,net: what bears on the flange.
+    pub fn net_area(&self) -> Area {
+        2.0 * (self.b_s - self.cope).max(Length::ZERO) * self.t_s
+    }
+
+    /// Whether the outstand keeps b_s/t_s ≤ 14 ε, so that it may be counted in full (EN 1993-1-1 Table 5.2, class 3).
+    pub fn stocky(&self) -> bool {
+        self.b_s / self.t_s <= 14.0 * epsilon(self.f_y_s)
+    }
+}
+
+/// A column web stiffened by a pair, in compression: the smaller of web crushing with the net stiffener area and of
+/// flexural buckling of the cross of stiffeners and 15 ε t_w of web each way (EN 1993-1-5 9.1, curve c, buckling length
+/// 0.75 of the clear depth), never less than the web alone.
+///
+pub fn compression(pair: &Pair, web: &Web, gamma_M0: f64, gamma_M1: f64) -> Resistance {
+    let mut w = Working::default();
+    let Web { F_web, F_crushing, t_wc, h_clear, f_y_wc } = *web;
+    let Pair { b_s, t_s, cope, f_y_s } = *pair;
+    given!(w, "pair of stiffeners and column web"; b_s, t_s, cope, f_y_s, F_web, F_crushing, t_wc, h_clear, f_y_wc);
+    step!(w, "EN 1993-1-5 9.4", A_s_net = pair.net_area());
+    step!(w, "EN 1993-1-8 6.2.6.2(4)", F_crushing_stiffened = F_crushing + A_s_net * f_y_s / gamma_M0);
+    step!(w, "EN 1993-1-1 Table 5.2", eps = epsilon(f_y_wc));
+    step!(w, "EN 1993-1-5 9.1(2)", A_eff = 2.0 * b_s * t_s + (30.0 * eps * t_wc + t_s) * t_wc);
+    step!(w, "EN 1993-1-5 9.1(2)", width = 2.0 * b_s + t_wc);
+    step!(
+        w,
+        "second moment of area of the cross / A_eff",
+        i_squared =
+            (t_s * width / A_eff) * (width * width) / 12.0 + (30.0 * eps * t_wc * t_wc / A_eff) * (t_wc * t_wc) / 12.0
+    );
+    step!(w, "EN 1993-1-5 9.4(2)", l_cr = 0.75 * h_clear);
+    step!(w, "EN 1993-1-1 6.3.1.2", f_y_least = f_y_s.min(f_y_wc));
+    step!(
+        w,
+        "EN 1993-1-1 6.3.1.3",
+        lambda = (l_cr * l_cr / i_squared).sqrt() / (std::f64::consts::PI * (E / f_y_least).sqrt())
+    );
+    step!(w, "EN 1993-1-1 6.3.1.2, curve c", Phi = 0.5 * (1.0 + 0.49 * (lambda - 0.2) + lambda * lambda));
+    step!(w, "EN 1993-1-1 6.3.1.2", chi = (1.0 / (Phi + (Phi * Phi - lambda * lambda).sqrt())).min(1.0));
+    step!(w, "EN 1993-1-1 6.3.1.1", N_b_Rd = chi * A_eff * f_y_least / gamma_M1);
+    step!(w, "EN 1993-1-8 6.2.6.2(4)", F_c_stiffened = F_crushing_stiffened.min(N_b_Rd).max(F_web));
+    Resistance { value: F_c_stiffened, working: w }
+}
+
+/// A column web with a pair of stiffeners in tension: the web over the row's b_eff and the pair's net area.
+pub fn tension(pair: &Pair, F_t_wc_Rd: Force, gamma_M0: f64) -> Resistance {
+    let mut w = Working::default();
+    let f_y_s = pair.f_y_s;
+    given!(w, "column web, stiffener"; F_t_wc_Rd, f_y_s);
+    step!(w, "EN 1993-1-5 9.4", A_s_net = pair.net_area());
+    step!(w, "EN 1993-1-8 6.2.6.3(5)", F_t_stiffened = F_t_wc_Rd + A_s_net * f_y_s / gamma_M0);
+    Resistance { value: F_t_stiffened, working: w }
+}

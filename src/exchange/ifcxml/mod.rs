@@ -1,0 +1,109 @@
+//! ifcXML of IFC4: a stream of elements into the entity graph.
+//!
+//! Elements alternate between an entity and its attributes. An attribute's element either *is* the entity
+//! (`<Location Coordinates="0 0 0"/>`) or holds entities and wrapped values (`<Items><IfcExtrudedAreaSolid/></Items>`);
+//! which of the two is told by its XML attributes or, failing those, by its first child.
+
+mod head;
+mod parser;
+mod resolve;
+mod slot;
+
+use quick_xml::Reader;
+use quick_xml::errors::Error;
+use quick_xml::events::Event;
+
+use self::head::Head;
+use self::parser::Parser;
+use super::problems::{Problems, Ruler, Spot};
+use super::{Entities, Exchange};
+
+/// How deep elements may nest; what lies deeper is not read, and a problem says so. Shop models stay below 200.
+const DEEPEST: usize = 1000;
+
+/// Reads a document.
+///
+/// # Errors
+/// Why it is no ifcXML at all, in one sentence.
+pub(super) fn read(bytes: &[u8], problems: Problems, entities: Entities) -> Result<Exchange, String> {
+    let mut xml = Reader::from_reader(bytes);
+    xml.config_mut().allow_dangling_amp = true; // one badly written name must not lose the file
+    let mut ruler = Ruler::new(bytes);
+    let mut parser = Parser::new(entities, problems);
+    let mut form = None;
+    loop {
+        let offset = xml.buffer_position() as usize;
+        let event = match xml.read_event() {
+            Ok(event) => event,
+            Err(error) => {
+                let spot = Ruler::new(bytes).spot(xml.error_position() as usize);
+                return Err(not_well_formed(&error, spot));
+            }
+        };
+        if let Event::Eof = event {
+            let spot = ruler.spot(bytes.len());
+            return match form {
+                Some(_) if !parser.is_done() => Err(format!(
+                    "breaks off at line {}, column {}: an element is not closed, the file is truncated",
+                    spot.line, spot.column
+                )),
+                Some(form) => Ok(resolve::resolve(parser, form)),
+                None => Err("holds no XML element".into()),
+            };
+        }
+        let spot = if parser.is_skipping() { Spot::default() } else { ruler.spot(offset) };
+        let done = form.is_some() && parser.is_done();
+        match event {
+            Event::Start(_) | Event::Empty(_) if done => {
+                let spot = ruler.spot(offset);
+                return Err(format!("has a second document element at line {}, column {}", spot.line, spot.column));
+            }
+            Event::Start(_) if parser.is_skipping() => parser.skip(),
+            Event::Empty(_) if parser.is_skipping() => {}
+            Event::Start(ref start) | Event::Empty(ref start) => {
+                if form.is_none() {
+                    form = Some(super::sniff::ifcxml_form(start, spot, &mut parser.problems)?);
+                    parser.start_document();
+                } else {
+                    let head = Head::read(start, spot, &mut parser.problems).map_err(|error| {
+                        format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)
+                    })?;
+                    parser.start(head);
+                }
+                if let Event::Empty(_) = event {
+                    parser.end();
+                }
+            }
+            Event::End(_) => parser.end(),
+            _ if parser.is_skipping() && !matches!(event, Event::End(_) | Event::DocType(_)) => {}
+            Event::Text(text) => {
+                let text = head::text(text.into_inner(), spot, &mut parser.problems);
+                parser.text(text, spot);
+            }
+            Event::CData(data) => {
+                let data = String::from_utf8_lossy(&data).into_owned();
+                parser.text(data.into(), spot);
+            }
+            Event::GeneralRef(reference) => {
+                let escape = [b"&", &reference[..], b";"].concat();
+                let text = head::text(escape.into(), spot, &mut parser.problems);
+                parser.text(text, spot);
+            }
+            Event::DocType(_) => {
+                return Err(format!(
+                    "holds a document type declaration (DTD) at line {}, column {}, which is not allowed in an exchange",
+                    spot.line, spot.column
+                ));
+            }
+            Event::Comment(_) | Event::PI(_) | Event::Decl(_) | Event::Eof => {}
+        }
+    }
+}
+
+fn not_well_formed(error: &Error, spot: Spot) -> String {
+    let Spot { line, column } = spot;
+    match error {
+        Error::Syntax(error) => format!("breaks off inside the markup at line {line}, column {column}: {error}"),
+        error => format!("is not well-formed XML at line {line}, column {column}: {error}"),
+    }
+}

@@ -1,0 +1,190 @@
+//! The schema's entities, supertypes and attributes: data, so that every exchange form is read by one table.
+
+use std::collections::HashMap;
+use std::sync::LazyLock;
+
+/// An entity of the schema, by its index in the table.
+pub(super) type ClassId = u16;
+
+/// What an attribute holds at the innermost level of its lists.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Base {
+    Text,
+    Real,
+    Integer,
+    Boolean,
+    Logical,
+    Token,
+    Binary,
+    Select,
+    Entity(ClassId),
+    /// The schema does not say: kept as it is written.
+    Any,
+}
+
+/// The kind of an attribute or defined type.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) struct Kind {
+    pub base: Base,
+    /// 0 a single value, 1 a list, 2 a list of lists.
+    pub depth: u8,
+    /// Length of the rows of a list of lists; 0 where the schema leaves it open.
+    pub row: u8,
+}
+
+impl Kind {
+    pub const ANY: Self = Self::one(Base::Any);
+
+    pub const fn one(base: Base) -> Self {
+        Self { base, depth: 0, row: 0 }
+    }
+}
+
+/// An explicit attribute.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Attribute {
+    pub name: &'static str,
+    pub kind: Kind,
+    /// Derived in this entity: keeps its position in STEP, never has a value.
+    pub derived: bool,
+}
+
+/// An inverse attribute: entities of `class` point here by their `attribute`.
+#[derive(Clone, Copy, Debug)]
+pub(super) struct Inverse {
+    pub name: &'static str,
+    pub class: ClassId,
+    pub attribute: &'static str,
+}
+
+/// An entity of the schema, with what it inherits.
+#[derive(Debug)]
+pub(super) struct Class {
+    pub name: &'static str,
+    pub parent: Option<ClassId>,
+    pub is_abstract: bool,
+    /// Explicit attributes, inherited ones first: the positions of STEP.
+    pub attributes: Vec<Attribute>,
+    pub inverses: Vec<Inverse>,
+}
+
+/// One version of the schema.
+#[derive(Debug)]
+pub(super) struct Schema {
+    classes: Vec<Class>,
+    by_name: HashMap<String, ClassId>,
+    types: HashMap<String, (&'static str, Kind)>,
+}
+
+impl Schema {
+    /// IFC4 ADD2 TC1.
+    pub fn ifc4() -> &'static Self {
+        static IFC4: LazyLock<Schema> = LazyLock::new(|| Schema::parse(include_str!("schema/ifc4.txt")));
+        &IFC4
+    }
+
+    /// The entity of that name, in whatever case.
+    pub fn find(&self, name: &str) -> Option<ClassId> {
+        self.by_name.get(&name.to_ascii_uppercase()).copied()
+    }
+
+    /// The defined type of that name, in whatever case: its name as the schema spells it, and its kind.
+    pub fn find_type(&self, name: &str) -> Option<(&'static str, Kind)> {
+        self.types.get(&name.to_ascii_uppercase()).copied()
+    }
+
+    /// The entity; `None` for the number of an entity that the schema does not know.
+    pub fn class(&self, class: ClassId) -> Option<&Class> {
+        self.classes.get(usize::from(class))
+    }
+
+    /// The inverse of that name. An entity that the schema does not know is asked for an element's and a spatial
+    /// element's, so that what a later version of the schema adds keeps its relations.
+    pub fn inverse(&self, class: ClassId, name: &str) -> Option<&Inverse> {
+        let known = self.class(class);
+        let stand_ins = ["IfcElement", "IfcSpatialElement"].iter().filter_map(|name| self.class(self.find(name)?));
+        let asked: Vec<&Class> = if let Some(known) = known { vec![known] } else { stand_ins.collect() };
+        asked.into_iter().flat_map(|class| &class.inverses).find(|inverse| inverse.name == name)
+    }
+
+    /// How many entities the schema has; numbers from here on are free for unknown ones.
+    pub fn len(&self) -> usize {
+        self.classes.len()
+    }
+
+    /// Whether `class` is `ancestor` or a subtype of it.
+    pub fn is_subtype(&self, class: ClassId, ancestor: ClassId) -> bool {
+        let mut at = Some(class);
+        while let Some(here) = at {
+            if here == ancestor {
+                return true;
+            }
+            at = self.class(here).and_then(|c| c.parent);
+        }
+        false
+    }
+
+    /// Reads the table; its own head says how it is written. The table is part of the program, so a line that
+    /// breaks the format is an error of the program and panics.
+    fn parse(text: &'static str) -> Self {
+        let mut schema = Self { classes: Vec::new(), by_name: HashMap::new(), types: HashMap::new() };
+        let lines = || text.lines().filter(|line| !line.starts_with('#') && !line.is_empty());
+        let entities = || lines().filter(|line| !line.starts_with('='));
+        for (number, line) in entities().enumerate() {
+            let name = line.trim_start_matches('*').split([' ', '<']).next().unwrap_or_default();
+            schema.by_name.insert(name.to_ascii_uppercase(), number as ClassId);
+        }
+        for line in lines().filter_map(|line| line.strip_prefix('=')) {
+            let (name, kind) = line.split_once(':').expect("a defined type and its kind");
+            schema.types.insert(name.to_ascii_uppercase(), (name, schema.kind(kind)));
+        }
+        for line in entities() {
+            let class = schema.entity(line);
+            schema.classes.push(class);
+        }
+        schema
+    }
+
+    fn entity(&self, line: &'static str) -> Class {
+        let (head, items) = line.split_once(' ').unwrap_or((line, ""));
+        let (name, parent) = head.split_once('<').map_or((head, None), |(name, parent)| (name, Some(parent)));
+        let parent = parent.map(|parent| self.find(parent).expect("a supertype that the table has"));
+        let (mut attributes, mut inverses) = match parent.and_then(|id| self.class(id)) {
+            Some(parent) => (parent.attributes.clone(), parent.inverses.clone()),
+            None => Default::default(),
+        };
+        for item in items.split_ascii_whitespace() {
+            if let Some(name) = item.strip_prefix('-') {
+                attributes.iter_mut().filter(|a| a.name == name).for_each(|a| a.derived = true);
+            } else if let Some(inverse) = item.strip_prefix('^') {
+                let (name, by) = inverse.split_once('=').expect("an inverse and who points");
+                let (class, attribute) = by.split_once('.').expect("who points and by which attribute");
+                let class = self.find(class).expect("an entity that the table has");
+                inverses.push(Inverse { name, class, attribute });
+            } else {
+                let (name, kind) = item.split_once(':').expect("an attribute and its kind");
+                attributes.push(Attribute { name, kind: self.kind(kind), derived: false });
+            }
+        }
+        Class { name: name.trim_start_matches('*'), parent, is_abstract: name.starts_with('*'), attributes, inverses }
+    }
+
+    fn kind(&self, code: &str) -> Kind {
+        let inner = code.trim_start_matches('[');
+        let depth = (code.len() - inner.len()) as u8;
+        let letters = inner.trim_start_matches(|c: char| c.is_ascii_digit());
+        let row = inner[..inner.len() - letters.len()].parse().unwrap_or(0);
+        let base = match letters {
+            "s" => Base::Text,
+            "r" => Base::Real,
+            "i" => Base::Integer,
+            "b" => Base::Boolean,
+            "l" => Base::Logical,
+            "t" => Base::Token,
+            "x" => Base::Binary,
+            "c" => Base::Select,
+            entity => Base::Entity(self.find(entity).expect("an entity that the table has")),
+        };
+        Kind { base, depth, row }
+    }
+}

@@ -1,0 +1,135 @@
+//! Like with like: what is missing by the missing thing, like faults by their fault.
+
+use std::collections::BTreeMap;
+
+use crate::origin::Place;
+use crate::review::{Finding, JointReview, Outcome, REQUIRED_ACTIONS, Review};
+
+/// One missing thing and the joints that lack it.
+pub(super) struct Lack<'a> {
+    /// The thing: "bolt class".
+    pub what: &'a str,
+    /// Where it was looked for, the joints concerned, and the first place, most joints first.
+    pub reasons: Vec<(&'a str, Vec<&'a JointReview>, Option<&'a Place>)>,
+    /// All joints that lack it, in the review's order.
+    pub joints: Vec<&'a JointReview>,
+}
+
+/// What is missing at these joints, the thing that most joints lack first.
+pub(super) fn lacks<'a>(
+    joints: impl IntoIterator<Item = &'a JointReview>,
+    counts: impl Fn(&JointReview, &str) -> bool,
+) -> Vec<Lack<'a>> {
+    type Reasons<'a> = BTreeMap<&'a str, (Vec<&'a JointReview>, Option<&'a Place>)>;
+    let mut by_what: BTreeMap<&str, (Reasons<'_>, Vec<&JointReview>)> = BTreeMap::new();
+    for joint in joints {
+        for missing in joint.missing.iter().filter(|m| counts(joint, &m.what)) {
+            let (reasons, all) = by_what.entry(&missing.what).or_default();
+            let (some, place) = reasons.entry(&missing.reason).or_default();
+            add(some, joint);
+            add(all, joint);
+            *place = place.or(missing.at.as_ref());
+        }
+    }
+    let mut lacks: Vec<Lack<'_>> = by_what
+        .into_iter()
+        .map(|(what, (reasons, joints))| {
+            let mut reasons: Vec<_> = reasons.into_iter().map(|(why, (some, at))| (why, some, at)).collect();
+            reasons.sort_by_key(|(_, some, _)| std::cmp::Reverse(some.len()));
+            Lack { what, reasons, joints }
+        })
+        .collect();
+    lacks.sort_by_key(|lack| std::cmp::Reverse(lack.joints.len()));
+    lacks
+}
+
+/// Joints come in order, so that the same joint can only have been the last one.
+fn add<'a>(joints: &mut Vec<&'a JointReview>, joint: &'a JointReview) {
+    if !joints.last().is_some_and(|last| std::ptr::eq(*last, joint)) {
+        joints.push(joint);
+    }
+}
+
+/// Texts with the joints that share them, most joints first, then in the order of the text.
+pub(super) fn by_text<'a, T: Ord>(
+    said: impl IntoIterator<Item = (T, &'a JointReview)>,
+) -> Vec<(T, Vec<&'a JointReview>)> {
+    let mut groups: BTreeMap<T, Vec<&JointReview>> = BTreeMap::new();
+    for (text, joint) in said {
+        add(groups.entry(text).or_default(), joint);
+    }
+    let mut groups: Vec<_> = groups.into_iter().collect();
+    groups.sort_by_key(|(_, joints)| std::cmp::Reverse(joints.len()));
+    groups
+}
+
+/// The marks of joints.
+pub(super) fn marks<'a>(joints: &[&'a JointReview]) -> Vec<&'a str> {
+    joints.iter().map(|joint| joint.mark.as_str()).collect()
+}
+
+/// A finding in one sentence: "plate-thinner: the end plate is thinner (intended 25 mm, detailed 20 mm)".
+pub(super) fn sentence(finding: &Finding) -> String {
+    let values = [("intended", &finding.intended), ("detailed", &finding.detailed)]
+        .iter()
+        .filter_map(|(word, value)| value.as_ref().map(|v| format!("{word} {v}")))
+        .collect::<Vec<_>>()
+        .join(", ");
+    let message = finding.message.trim_end_matches('.');
+    if values.is_empty() {
+        format!("{}: {message}", finding.rule)
+    } else {
+        format!("{}: {message} ({values})", finding.rule)
+    }
+}
+
+/// What makes two held joints alike: the same kind and intended detail with the same faults.
+///
+/// A rule whose id ends in "-short" lays an action on a resistance: its numbers belong to the joint, not to the fault.
+pub(super) fn likeness(joint: &JointReview) -> (String, Option<String>, Vec<String>) {
+    let faults = joint
+        .findings
+        .iter()
+        .map(|f| if f.rule.ends_with("-short") { f.rule.to_owned() } else { sentence(f) })
+        .collect();
+    (joint.kind.clone(), joint.detail.clone(), faults)
+}
+
+/// Reasons of a joint that neither its findings nor its missing things say.
+pub(super) fn reasons_left(joint: &JointReview) -> impl Iterator<Item = &str> {
+    joint.reasons.iter().map(String::as_str).filter(|reason| {
+        !joint.findings.iter().any(|f| reason.contains(f.message.trim_end_matches('.')))
+            && !joint.missing.iter().any(|m| reason.contains(m.reason.trim_end_matches('.')))
+    })
+}
+
+/// Whether a schedule was given that states no actions for this joint.
+pub(super) fn unscheduled(review: &Review, joint: &JointReview) -> bool {
+    review.schedule.is_some() && joint.found() && joint.required.is_empty()
+}
+
+/// Whether a missing thing is a matter of the schedule alone, said in its own section.
+pub(super) fn said_as_unscheduled(review: &Review, joint: &JointReview, what: &str) -> bool {
+    what == REQUIRED_ACTIONS && unscheduled(review, joint)
+}
+
+/// Whether anything of the joint's resistance was computed.
+pub(super) fn assessed(joint: &JointReview) -> bool {
+    let r = &joint.resistance;
+    [r.moment_knm, r.moment_reversed_knm, r.shear_kn, r.axial_kn].iter().any(Option::is_some)
+}
+
+/// The joints that end so.
+pub(super) fn ended(review: &Review, outcome: Outcome) -> Vec<&JointReview> {
+    review.joints.iter().filter(|joint| joint.outcome == outcome).collect()
+}
+
+/// Worst first: holds before unproven before comments, the more used before the less; then the review's order.
+pub(super) fn worst_first<'a>(joints: impl IntoIterator<Item = &'a JointReview>) -> Vec<&'a JointReview> {
+    let mut joints: Vec<_> = joints.into_iter().collect();
+    joints.sort_by(|a, b| {
+        let used = |joint: &JointReview| joint.utilisation().unwrap_or(f64::NEG_INFINITY);
+        a.outcome.cmp(&b.outcome).then_with(|| used(b).total_cmp(&used(a)))
+    });
+    joints
+}

@@ -1,0 +1,221 @@
+//! One held joint in a few lines: how much it lacks, what governs, what was intended, on which part, and where.
+
+use similar::{Algorithm, DiffOp, capture_diff_slices};
+
+use super::group::{reasons_left, sentence};
+use super::number::{action, count, utilisation};
+use super::page::{Page, Tone};
+use super::table::worst_case;
+use super::window::Source;
+use crate::origin::Place;
+use crate::review::{Finding, JointReview, MemberBrief, Outcome, Required, Resistance};
+
+/// Findings and reasons a joint that are not written out.
+const FINDINGS: usize = 8;
+
+/// Changed lines of a difference that are not written out.
+const CHANGES: usize = 12;
+
+/// Draws one held joint; `alike` are others with the same faults, that are only named.
+pub(super) fn draw(
+    page: &mut Page,
+    joint: &JointReview,
+    alike: &[&JointReview],
+    model: &str,
+    source: Option<&Source<'_>>,
+) {
+    let at = look_at(joint, model);
+    let worst = worst_case(joint);
+    page.toned(0, Tone::Hold, &lead(joint, worst));
+    page.line(3, &who(joint));
+    if let Some(case) = worst {
+        page.line(3, &format!("required ({}): {}", case.case, required(case)));
+        page.line(3, &format!("resistance: {}", against(joint, case)));
+    } else {
+        page.line(3, &format!("resistance: {}; no required actions are stated", resistance(&joint.resistance)));
+    }
+    if let Some(intended) = &joint.intended_resistance {
+        page.line(3, &format!("as intended it would resist {}", resistance(intended)));
+    }
+    findings(page, joint, at);
+    for missing in &joint.missing {
+        page.line(3, &format!("not known either: {missing}"));
+    }
+    difference(page, joint);
+    if let Some(at) = at {
+        page.line(3, &format!("look at {at}"));
+        if let Some(source) = source {
+            window(page, at, source);
+        }
+    }
+    if !alike.is_empty() {
+        let others = alike.iter().map(|other| match other.utilisation() {
+            Some(ratio) => format!("{} ({})", other.mark, utilisation(ratio)),
+            None => other.mark.clone(),
+        });
+        let list = page.listed(others);
+        page.line(3, &format!("the same faults at {}: {list}", count(alike.len(), "more joint", "more joints")));
+    }
+}
+
+fn lead(joint: &JointReview, worst: Option<&Required>) -> String {
+    let used = match worst.and_then(|case| case.utilisation) {
+        Some(ratio) => format!("utilisation {}", utilisation(ratio)),
+        None => "utilisation not known".into(),
+    };
+    let governed = worst.and_then(|case| case.governed_by.as_ref()).or(joint.resistance.governed_by.as_ref());
+    match governed {
+        Some(governed) => format!("{}: {used}, governed by {governed}", joint.mark),
+        None => format!("{}: {used}", joint.mark),
+    }
+}
+
+/// "B1 (UKB 457x191x67, S355) on C1 (UKC 254x254x89, grade not known); end-plate-moment, intended detail M3".
+pub(super) fn who(joint: &JointReview) -> String {
+    let members = match (&joint.supported, &joint.supporting) {
+        (Some(on), Some(by)) => format!("{} on {}; ", member(on), member(by)),
+        (Some(one), None) | (None, Some(one)) => format!("{}; ", member(one)),
+        (None, None) => String::new(),
+    };
+    let detail = joint.detail.as_ref().map_or(String::new(), |detail| format!(", intended detail {detail}"));
+    format!("{members}{}{detail}", joint.kind)
+}
+
+fn member(member: &MemberBrief) -> String {
+    let mark = member.mark.as_deref().unwrap_or("no mark");
+    let section = member.section.as_deref().unwrap_or("section not known");
+    let grade = member.grade.as_deref().unwrap_or("grade not known");
+    format!("{mark} ({section}, {grade})")
+}
+
+/// "M 262.0 kNm, V 120.0 kN, N not stated".
+pub(super) fn required(case: &Required) -> String {
+    format!(
+        "M {}, V {}, N {}",
+        action(case.moment_knm, "kNm", "not stated"),
+        action(case.shear_kn, "kN", "not stated"),
+        action(case.axial_kn, "kN", "not stated"),
+    )
+}
+
+fn against(joint: &JointReview, case: &Required) -> String {
+    let over = joint.required.iter().filter(|c| c.utilisation.is_some_and(|ratio| ratio > 1.0)).count();
+    let cases = match joint.required.len() {
+        0 | 1 => String::new(),
+        all => format!("; {over} of {all} load cases above 1.00"),
+    };
+    let moment = case.moment_resistance_knm.or(match case.moment_knm {
+        Some(m) if m < 0.0 => joint.resistance.moment_reversed_knm,
+        _ => joint.resistance.moment_knm,
+    });
+    let shear = action(joint.resistance.shear_kn, "kN", "not known");
+    format!("M {}, V {shear}{cases}", action(moment, "kNm", "not known"))
+}
+
+/// "M 270.1 kNm (-180.0 kNm reversed), V 400.0 kN".
+pub(super) fn resistance(resistance: &Resistance) -> String {
+    let reversed = match resistance.moment_reversed_knm {
+        Some(_) => format!(" ({} reversed)", action(resistance.moment_reversed_knm, "kNm", "")),
+        None => String::new(),
+    };
+    let axial = match resistance.axial_kn {
+        Some(_) => format!(", N {}", action(resistance.axial_kn, "kN", "")),
+        None => String::new(),
+    };
+    format!(
+        "M {}{reversed}, V {}{axial}",
+        action(resistance.moment_knm, "kNm", "not known"),
+        action(resistance.shear_kn, "kN", "not known"),
+    )
+}
+
+fn findings(page: &mut Page, joint: &JointReview, said: Option<&Place>) {
+    let bound = page.bound(FINDINGS);
+    for finding in joint.findings.iter().take(bound) {
+        let also = if finding.severity == Outcome::Hold { "" } else { "also " };
+        page.line(3, &format!("{also}{}", sentence(finding)));
+        if let Some(parts) = parts(page, joint, finding, said) {
+            page.line(5, &parts);
+        }
+    }
+    page.more(3, joint.findings.len().saturating_sub(bound), "findings at this joint");
+    let left: Vec<&str> = reasons_left(joint).collect();
+    for reason in left.iter().take(bound) {
+        page.line(3, reason);
+    }
+    page.more(3, left.len().saturating_sub(bound), "reasons");
+}
+
+/// "part EP12 (GlobalId 2oxS…), hall.ifcxml:120:44".
+fn parts(page: &Page, joint: &JointReview, finding: &Finding, said: Option<&Place>) -> Option<String> {
+    let named = finding.elements.iter().map(|guid| match mark_of(joint, guid) {
+        Some(mark) => format!("{mark} (GlobalId {guid})"),
+        None => format!("GlobalId {guid}"),
+    });
+    let named = page.listed(named);
+    match (finding.at.as_ref().filter(|at| Some(*at) != said), named.is_empty()) {
+        (Some(at), false) => Some(format!("part {named}, {at}")),
+        (None, false) => Some(format!("part {named}")),
+        (Some(at), true) => Some(format!("at {at}")),
+        (None, true) => None,
+    }
+}
+
+fn mark_of<'a>(joint: &'a JointReview, guid: &str) -> Option<&'a str> {
+    let plates = joint.plates.iter().map(|plate| (&plate.guid, &plate.mark));
+    let members = joint.supporting.iter().chain(&joint.supported).map(|member| (&member.guid, &member.mark));
+    plates.chain(members).find(|(own, _)| *own == guid).and_then(|(_, mark)| mark.as_deref())
+}
+
+/// Only the lines that changed, intended left and detailed right.
+fn difference(page: &mut Page, joint: &JointReview) {
+    let Some((intended, detailed)) = &joint.difference else { return };
+    let mut changes: Vec<(&str, &str, &str)> = Vec::new();
+    for op in capture_diff_slices(Algorithm::Myers, intended, detailed) {
+        let (left, right) = match op {
+            DiffOp::Equal { .. } => continue,
+            op => (&intended[op.old_range()], &detailed[op.new_range()]),
+        };
+        for row in 0..left.len().max(right.len()) {
+            changes.push(match (left.get(row), right.get(row)) {
+                (Some(a), Some(b)) => (a, "≠", b),
+                (Some(a), None) => (a, "−", ""),
+                (None, Some(b)) => ("", "+", b),
+                (None, None) => continue,
+            });
+        }
+    }
+    if changes.is_empty() {
+        return;
+    }
+    let bound = page.bound(CHANGES);
+    let shown = &changes[..changes.len().min(bound)];
+    let half = page.options().width.saturating_sub(5 + 3) / 2;
+    let wide = shown.iter().map(|(a, ..)| a.chars().count()).chain(["intended".len()]).max().unwrap_or(0).min(half);
+    page.raw(5, Tone::Quiet, &format!("{:wide$}   detailed", "intended"));
+    for (left, sign, right) in shown {
+        page.raw(5, Tone::Plain, &format!("{:wide$} {sign} {}", cut(left, wide), cut(right, half)));
+    }
+    page.more(5, changes.len() - shown.len(), "changed lines");
+}
+
+fn cut(text: &str, wide: usize) -> String {
+    if text.chars().count() <= wide {
+        return text.to_owned();
+    }
+    text.chars().take(wide.saturating_sub(1)).chain(['…']).collect()
+}
+
+/// The place to look at first, with the model's text round it.
+fn look_at<'a>(joint: &'a JointReview, model: &str) -> Option<&'a Place> {
+    let places = joint.findings.iter().filter_map(|finding| finding.at.as_ref());
+    places.chain(&joint.at).find(|at| &*at.file == model)
+}
+
+fn window(page: &mut Page, at: &Place, source: &Source<'_>) {
+    let width = page.options().width.saturating_sub(5 + 2);
+    if let Some((text, pointer)) = source.window(at, width) {
+        page.raw(5, Tone::Quiet, &text);
+        page.raw(5, Tone::Quiet, &pointer);
+    }
+}

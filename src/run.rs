@@ -1,0 +1,63 @@
+//! The trip of the data, from bytes to [`Review`].
+
+use miette::Diagnostic;
+
+use crate::compose::{self, Sources};
+use crate::review::Review;
+use crate::rulebook::Rulebook;
+use crate::{exchange, intent, joints, shop};
+
+/// Everything that a review is made from: names as the caller gave them, and what they hold.
+#[derive(Clone, Debug)]
+pub struct Inputs<'a> {
+    /// The shop model.
+    pub model: (&'a str, &'a [u8]),
+    /// The schedules, in the order in which they are read.
+    pub schedules: Vec<(&'a str, &'a [u8])>,
+    /// Rule files that stand in for the built-in ones, named by their path inside the rule folder.
+    pub rules: Vec<(&'a str, &'a str)>,
+}
+
+/// Why there is no review at all.
+#[derive(Debug, thiserror::Error, Diagnostic)]
+pub enum Failed {
+    /// The model is no exchange.
+    #[error(transparent)]
+    Exchange(#[from] exchange::Unreadable),
+    /// A schedule can't be read.
+    #[error("{0}")]
+    #[diagnostic(transparent)]
+    Schedule(Box<dyn Diagnostic + Send + Sync>),
+    /// A rule file can't be read.
+    #[error("{0}")]
+    #[diagnostic(transparent)]
+    Rules(Box<dyn Diagnostic + Send + Sync>),
+}
+
+/// Reviews a model.
+///
+/// # Errors
+/// [`Failed`] where an input can't be read at all; whatever else is odd is a problem in the review.
+pub fn run(inputs: &Inputs<'_>) -> Result<Review, Failed> {
+    let rulebook = Rulebook::with_overrides(&inputs.rules).map_err(|e| Failed::Rules(Box::new(e)))?;
+    let mut intents = Vec::new();
+    for (file, text) in &inputs.schedules {
+        intents.push(intent::read(text, file).map_err(|e| Failed::Schedule(Box::new(e)))?);
+    }
+    let intent = intent::merge(intents).map_err(|e| Failed::Schedule(Box::new(e)))?;
+    let (file, bytes) = inputs.model;
+    let exchange = exchange::read(bytes, file)?;
+    let steelwork = shop::take_up(&exchange, &rulebook);
+    let joints = joints::recognise(&steelwork, &rulebook);
+    let pairing = intent::pair(&intent, &joints, &steelwork);
+    let sources = Sources {
+        rulebook: &rulebook,
+        exchange: &exchange,
+        steelwork: &steelwork,
+        joints: &joints,
+        intent: &intent,
+        pairing: &pairing,
+        schedules: inputs.schedules.iter().map(|(file, _)| *file).collect(),
+    };
+    Ok(compose::review(&sources, file, bytes))
+}

@@ -1,0 +1,3 @@
+//! Published worked examples, one file a publication.
+
+mod p398;

@@ -1,0 +1,200 @@
+//! How entities are written as ifcXML of IFC4 ADD2 TC1.
+
+use std::io::{self, Write};
+
+use quick_xml::Writer;
+use quick_xml::events::{BytesDecl, BytesEnd, BytesStart, BytesText, Event};
+
+use super::entity::{Declared, Entity, Field, Link, Simple, Sink};
+
+const NAMESPACE: &str = "http://www.buildingsmart-tech.org/ifc/IFC4/Add2TC1";
+const INSTANCE: &str = "http://www.w3.org/2001/XMLSchema-instance";
+
+/// Ways in which programs differ that mean the same.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct Style {
+    /// Every entity at the top, all links by reference; otherwise what is owned is nested.
+    pub flat: bool,
+    /// Elements and types carry the prefix `ifc:`; otherwise the namespace is the default one.
+    pub prefixed: bool,
+}
+
+/// An ifcXML document being written.
+pub struct IfcXml<W: Write> {
+    out: Writer<W>,
+    style: Style,
+    last_id: u64,
+}
+
+impl<W: Write> IfcXml<W> {
+    /// Opens the document and writes its header.
+    pub fn begin(to: W, style: Style, name: &str) -> io::Result<Self> {
+        let mut document = Self { out: Writer::new_with_indent(to, b' ', 1), style, last_id: 0 };
+        document.out.write_event(Event::Decl(BytesDecl::new("1.0", Some("UTF-8"), None)))?;
+        let namespace = if style.prefixed { "xmlns:ifc" } else { "xmlns" };
+        document.open("ifcXML", &[(namespace, NAMESPACE), ("xmlns:xsi", INSTANCE)])?;
+        document.open("header", &[])?;
+        for (element, text) in [
+            ("name", name),
+            ("time_stamp", "2024-05-02T09:00:00"),
+            ("preprocessor_version", "an invented writer 1.0"),
+            ("originating_system", "an invented authoring program"),
+        ] {
+            document.open(element, &[])?;
+            document.out.write_event(Event::Text(BytesText::new(text)))?;
+            document.close(element)?;
+        }
+        document.close("header")?;
+        Ok(document)
+    }
+
+    /// Closes the document.
+    pub fn finish(mut self) -> io::Result<()> {
+        self.close("ifcXML")?;
+        self.out.get_mut().write_all(b"\n")?;
+        self.out.get_mut().flush()
+    }
+
+    fn tag(&self, name: &str) -> String {
+        if self.style.prefixed { format!("ifc:{name}") } else { name.to_owned() }
+    }
+
+    fn start(&self, name: &str, attributes: &[(&str, &str)]) -> BytesStart<'static> {
+        let mut start = BytesStart::new(self.tag(name));
+        for attribute in attributes {
+            start.push_attribute(*attribute);
+        }
+        start
+    }
+
+    fn open(&mut self, name: &str, attributes: &[(&str, &str)]) -> io::Result<()> {
+        let start = self.start(name, attributes);
+        self.out.write_event(Event::Start(start))
+    }
+
+    fn close(&mut self, name: &str) -> io::Result<()> {
+        let end = BytesEnd::new(self.tag(name));
+        self.out.write_event(Event::End(end))
+    }
+
+    /// Puts owned entities to the top, deepest first, and leaves links to them.
+    fn hoist(&mut self, entity: &mut Entity) -> io::Result<()> {
+        for field in &mut entity.fields {
+            let links = match field {
+                Field::One(_, _, link) => std::slice::from_mut(link),
+                Field::Many(_, links) => links.as_mut_slice(),
+                Field::Inverse { relations, .. } => relations.as_mut_slice(),
+                Field::Simple(..) | Field::Typed(..) => &mut [],
+            };
+            for link in links {
+                if let Link::Own(owned) = link {
+                    self.hoist(owned)?;
+                    let id = owned.id.unwrap_or_else(|| self.new_id());
+                    let to = Link::To(owned.class, id);
+                    if let Link::Own(owned) = std::mem::replace(link, to) {
+                        self.entity(owned.class, false, &owned.id(id))?;
+                    }
+                }
+            }
+        }
+        Ok(())
+    }
+
+    /// An entity under a name of its own, or of the attribute that holds it.
+    fn entity(&mut self, name: &str, say_type: bool, entity: &Entity) -> io::Result<()> {
+        let mut start = BytesStart::new(self.tag(name));
+        if say_type {
+            start.push_attribute(("xsi:type", self.tag(entity.class).as_str()));
+        }
+        if let Some(id) = entity.id {
+            start.push_attribute(("id", format!("i{id}").as_str()));
+        }
+        for field in &entity.fields {
+            if let Field::Simple(name, value) = field {
+                start.push_attribute((*name, printed(value).as_str()));
+            }
+        }
+        let children = || entity.fields.iter().filter(|field| !matches!(field, Field::Simple(..)));
+        if children().next().is_none() {
+            return self.out.write_event(Event::Empty(start));
+        }
+        self.out.write_event(Event::Start(start))?;
+        for field in children() {
+            self.child(field)?;
+        }
+        self.close(name)
+    }
+
+    fn child(&mut self, field: &Field) -> io::Result<()> {
+        match field {
+            Field::Simple(..) => Ok(()),
+            Field::Typed(name, of, value) => {
+                let wrapper = format!("{of}-wrapper");
+                self.open(name, &[])?;
+                self.open(&wrapper, &[])?;
+                self.out.write_event(Event::Text(BytesText::new(&printed(value))))?;
+                self.close(&wrapper)?;
+                self.close(name)
+            }
+            Field::One(name, Declared::Select, link) => self.wrapped(name, std::slice::from_ref(link)),
+            Field::One(name, declared, link) => self.link(name, *declared == Declared::Wider, link),
+            Field::Inverse { name, single: true, relations, .. } => {
+                relations.iter().try_for_each(|relation| self.link(name, false, relation))
+            }
+            Field::Many(name, links) | Field::Inverse { name, relations: links, .. } => self.wrapped(name, links),
+        }
+    }
+
+    fn wrapped(&mut self, name: &str, links: &[Link]) -> io::Result<()> {
+        self.open(name, &[])?;
+        for link in links {
+            let (Link::Own(Entity { class, .. }) | Link::To(class, _)) = link;
+            self.link(class, false, link)?;
+        }
+        self.close(name)
+    }
+
+    fn link(&mut self, name: &str, say_type: bool, link: &Link) -> io::Result<()> {
+        match link {
+            Link::Own(entity) => self.entity(name, say_type, entity),
+            Link::To(class, id) => {
+                let (class, id) = (self.tag(class), format!("i{id}"));
+                let typed: &[(&str, &str)] = if say_type { &[("xsi:type", &class)] } else { &[] };
+                let start = self.start(name, &[typed, &[("ref", id.as_str()), ("xsi:nil", "true")]].concat());
+                self.out.write_event(Event::Empty(start))
+            }
+        }
+    }
+}
+
+impl<W: Write> Sink for IfcXml<W> {
+    fn new_id(&mut self) -> u64 {
+        self.last_id += 1;
+        self.last_id
+    }
+
+    fn put(&mut self, mut entity: Entity) -> io::Result<()> {
+        if self.style.flat {
+            self.hoist(&mut entity)?;
+        }
+        self.entity(entity.class, false, &entity)
+    }
+}
+
+fn printed(value: &Simple) -> String {
+    match value {
+        Simple::Text(text) => text.clone(),
+        Simple::Real(real) => number(*real),
+        Simple::Integer(integer) => integer.to_string(),
+        Simple::Truth(truth) => truth.to_string(),
+        Simple::Token(token) => token.to_lowercase(),
+        Simple::Reals(reals) => reals.iter().map(|real| number(*real)).collect::<Vec<_>>().join(" "),
+    }
+}
+
+/// A real to a millionth, so that the noise of additions is not written.
+fn number(real: f64) -> String {
+    let rounded = (real * 1e6).round() / 1e6;
+    // Adding zero turns a negative zero into a plain one.
+    format!("{}", rounded + 0.0)
+}

@@ -1,0 +1,128 @@
+//! Placements, profiles and solids as entities.
+
+use glam::DVec3;
+
+use super::building::Section;
+use super::entity::{Declared::*, Entity, Link};
+use super::space::Frame;
+
+fn point(coordinates: &[f64]) -> Entity {
+    Entity::new("IfcCartesianPoint").reals("Coordinates", coordinates)
+}
+
+fn direction(of: DVec3) -> Entity {
+    Entity::new("IfcDirection").reals("DirectionRatios", &of.to_array())
+}
+
+/// An axis placement; axes that are those of the parent are left out, as most programs do.
+pub fn axes(frame: Frame) -> Entity {
+    let placement = Entity::new("IfcAxis2Placement3D").one("Location", Exactly, point(&frame.origin.to_array()));
+    if frame.z == DVec3::Z && frame.x == DVec3::X {
+        return placement;
+    }
+    placement.one("Axis", Exactly, direction(frame.z)).one("RefDirection", Exactly, direction(frame.x))
+}
+
+/// A frame with the parent's axes.
+pub fn moved(origin: DVec3) -> Frame {
+    Frame { origin, z: DVec3::Z, x: DVec3::X }
+}
+
+/// A local placement, relative to another one if given.
+pub fn placement(relative_to: Option<u64>, frame: Frame) -> Entity {
+    let placement = Entity::new("IfcLocalPlacement");
+    let placement = match relative_to {
+        Some(id) => placement.one("PlacementRelTo", Wider, Link::To("IfcLocalPlacement", id)),
+        None => placement,
+    };
+    placement.one("RelativePlacement", Select, axes(frame))
+}
+
+/// A prism along z of its position.
+pub fn extrusion(profile: impl Into<Link>, position: Option<Frame>, depth: f64) -> Entity {
+    let solid = Entity::new("IfcExtrudedAreaSolid").one("SweptArea", Wider, profile);
+    let solid = match position {
+        Some(frame) => solid.one("Position", Exactly, axes(frame)),
+        None => solid,
+    };
+    solid.one("ExtrudedDirection", Exactly, direction(DVec3::Z)).real("Depth", depth)
+}
+
+/// A representation of the kind.
+pub fn representation(context: u64, identifier: &str, kind: &str, items: Vec<Link>) -> Entity {
+    Entity::new("IfcShapeRepresentation")
+        .text("RepresentationIdentifier", identifier)
+        .text("RepresentationType", kind)
+        .one("ContextOfItems", Wider, Link::To("IfcGeometricRepresentationSubContext", context))
+        .many("Items", items)
+}
+
+/// The shape of a product.
+pub fn shape(representation: Entity) -> Entity {
+    Entity::new("IfcProductDefinitionShape").many("Representations", vec![representation.into()])
+}
+
+/// The profile of a rolled I section, standing: width along x, depth along y.
+pub fn i_profile(section: &Section) -> Entity {
+    Entity::new("IfcIShapeProfileDef")
+        .token("ProfileType", "AREA")
+        .text("ProfileName", &section.name)
+        .real("OverallWidth", section.b)
+        .real("OverallDepth", section.h)
+        .real("WebThickness", section.t_w)
+        .real("FlangeThickness", section.t_f)
+        .real("FilletRadius", section.r)
+}
+
+/// A line through points of two or three coordinates.
+pub fn polyline<const N: usize>(points: &[[f64; N]]) -> Entity {
+    Entity::new("IfcPolyline").many("Points", points.iter().map(|xyz| point(xyz).into()).collect())
+}
+
+fn closed(corners: &[[f64; 2]]) -> Entity {
+    let mut points = corners.to_vec();
+    points.extend(corners.first());
+    polyline(&points)
+}
+
+/// A closed outline.
+pub fn outline(corners: &[[f64; 2]]) -> Entity {
+    Entity::new("IfcArbitraryClosedProfileDef").token("ProfileType", "AREA").one("OuterCurve", Wider, closed(corners))
+}
+
+/// A closed outline with round holes: centre and diameter.
+pub fn outline_with_holes(corners: &[[f64; 2]], holes: &[([f64; 2], f64)]) -> Entity {
+    let hole = |(centre, diameter): &([f64; 2], f64)| {
+        let place = Entity::new("IfcAxis2Placement2D").one("Location", Exactly, point(centre));
+        Entity::new("IfcCircle").one("Position", Select, place).real("Radius", diameter / 2.0).into()
+    };
+    Entity::new("IfcArbitraryProfileDefWithVoids")
+        .token("ProfileType", "AREA")
+        .one("OuterCurve", Wider, closed(corners))
+        .many("InnerCurves", holes.iter().map(hole).collect())
+}
+
+/// A full circle.
+pub fn circle(diameter: f64) -> Entity {
+    Entity::new("IfcCircleProfileDef").token("ProfileType", "AREA").real("Radius", diameter / 2.0)
+}
+
+/// A regular hexagon by its width across flats.
+pub fn hexagon(across_flats: f64) -> Entity {
+    let radius = across_flats / 3f64.sqrt();
+    let corners = [0.0, 60.0, 120.0, 180.0, 240.0, 300.0_f64].map(|degrees| {
+        let (sine, cosine) = degrees.to_radians().sin_cos();
+        [radius * cosine, radius * sine]
+    });
+    outline(&corners)
+}
+
+/// An item that repeats a map where it stands.
+pub fn mapped(map: u64) -> Entity {
+    let target = Entity::new("IfcCartesianTransformationOperator3D").one("LocalOrigin", Exactly, point(&[0.0; 3]));
+    Entity::new("IfcMappedItem").one("MappingSource", Exactly, Link::To("IfcRepresentationMap", map)).one(
+        "MappingTarget",
+        Wider,
+        target,
+    )
+}
