@@ -11,7 +11,8 @@ pub(super) fn check(entities: &Entities, problems: &mut Problems) {
         for (attribute, value) in entity.known_values() {
             let name = attribute.name;
             check_value(entity, name, attribute.kind, value, problems);
-            if name.starts_with("Relat") && *value == Value::Absent && entity.is_a("IfcRelationship") {
+            let end = name.starts_with("Relat") && matches!(attribute.kind.base, Base::Entity(_) | Base::Select);
+            if end && *value == Value::Absent && entity.is_a("IfcRelationship") {
                 problems.add("relation without an end", entity.spot(), || {
                     format!("{} has no {name} and relates nothing", named(entity))
                 });

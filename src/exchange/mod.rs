@@ -45,5 +45,5 @@ pub fn read(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
     let entities = Entities::new(schema::Schema::ifc4(), name);
     sniff::decode(bytes, &mut problems)
         .and_then(|text| ifcxml::read(&text, problems, entities))
-        .map_err(|reason| Unreadable { file: file.to_owned(), reason })
+        .map_err(|reason| Unreadable { file: file.to_owned(), reason: format!("the file {reason}") })
 }

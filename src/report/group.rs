@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 
 use crate::origin::Place;
-use crate::review::{Finding, JointReview, Outcome, REQUIRED_ACTIONS, Review};
+use crate::review::{Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Review};
 
 /// One missing thing and the joints that lack it.
 pub(super) struct Lack<'a> {
@@ -83,24 +83,48 @@ pub(super) fn sentence(finding: &Finding) -> String {
     }
 }
 
-/// What makes two held joints alike: the same kind and intended detail with the same faults.
+/// What makes two held joints alike: the same kind, intended detail and governing component, the same faults and the
+/// same missing things.
 ///
 /// A rule whose id ends in "-short" lays an action on a resistance: its numbers belong to the joint, not to the fault.
-pub(super) fn likeness(joint: &JointReview) -> (String, Option<String>, Vec<String>) {
-    let faults = joint
-        .findings
-        .iter()
-        .map(|f| if f.rule.ends_with("-short") { f.rule.to_owned() } else { sentence(f) })
-        .collect();
-    (joint.kind.clone(), joint.detail.clone(), faults)
+pub(super) fn likeness(joint: &JointReview) -> impl Ord {
+    let fault = |f: &Finding| if f.rule.ends_with("-short") { f.rule.to_owned() } else { sentence(f) };
+    let faults: Vec<String> = joint.findings.iter().map(fault).collect();
+    let missing: Vec<&str> = joint.missing.iter().map(|missing| missing.what.as_str()).collect();
+    (&joint.kind, &joint.detail, governing(joint), faults, missing)
+}
+
+/// What governs the worst case; the joint's own resistance where no case says so.
+pub(super) fn governing(joint: &JointReview) -> Option<&String> {
+    worst_case(joint).and_then(|case| case.governed_by.as_ref()).or(joint.resistance.governed_by.as_ref())
+}
+
+/// The case that uses the joint most; the first one where nothing was computed.
+pub(super) fn worst_case(joint: &JointReview) -> Option<&Required> {
+    let used = |case: &Required| case.utilisation.unwrap_or(f64::NEG_INFINITY);
+    joint.required.iter().reduce(|worst, case| if used(case).total_cmp(&used(worst)).is_gt() { case } else { worst })
 }
 
 /// Reasons of a joint that neither its findings nor its missing things say.
 pub(super) fn reasons_left(joint: &JointReview) -> impl Iterator<Item = &str> {
     joint.reasons.iter().map(String::as_str).filter(|reason| {
-        !joint.findings.iter().any(|f| reason.contains(f.message.trim_end_matches('.')))
-            && !joint.missing.iter().any(|m| reason.contains(m.reason.trim_end_matches('.')))
+        !joint.findings.iter().any(|finding| says(reason, &finding.message))
+            && !joint.missing.iter().any(|missing| says(reason, &missing.reason))
     })
+}
+
+/// Findings of a joint that are no comments and that its missing things do not say.
+pub(super) fn findings_left(joint: &JointReview) -> impl Iterator<Item = &Finding> {
+    joint.findings.iter().filter(|finding| {
+        finding.severity != Outcome::Comment
+            && !joint.missing.iter().any(|missing| says(&finding.message, &missing.reason))
+    })
+}
+
+/// Whether a text holds what another one says.
+fn says(text: &str, other: &str) -> bool {
+    let other = other.trim_end_matches('.');
+    !other.is_empty() && text.contains(other)
 }
 
 /// Whether a schedule was given that states no actions for this joint.

@@ -85,7 +85,7 @@ fn the_plate_covers_the_beam() {
 }
 
 #[test]
-fn only_the_told_joints_deviate() {
+fn only_the_listed_joints_deviate() {
     // The list of README.md, by mark.
     let deviating = ["J02", "J04", "J06", "J08", "J10", "J11", "J12", "J14", "J16", "J18", "J20"];
     let sizes = |detail: &Detail| {
