@@ -57,8 +57,7 @@ fn the_resistance_of_the_very_case_comes_first() {
     let case = CaseResult { case: 0, verdicts: Vec::new(), moment, shear: None };
     bench.intended_assessment.as_mut().unwrap().cases.push(case);
     assert_eq!(lost_capacity(&bench.context()), Some(0.25), "1 - 360 / 480");
-    bench.intended_assessment.as_mut().unwrap().cases[0].moment =
-        Some(super::bench::moment(Sense::Hogging, 720.0));
+    bench.intended_assessment.as_mut().unwrap().cases[0].moment = Some(super::bench::moment(Sense::Hogging, 720.0));
     assert_eq!(lost_capacity(&bench.context()), Some(0.5), "1 - 360 / 720");
 }
 
