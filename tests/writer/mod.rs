@@ -6,6 +6,7 @@
 
 pub mod building;
 pub mod entity;
+pub mod frames;
 pub mod guid;
 pub mod hardware;
 pub mod ifcxml;
