@@ -1,1 +1,7 @@
-fn main() {}
+//! The command line: arguments → [`faying::run`] → exit code.
+
+mod cli;
+
+fn main() -> std::process::ExitCode {
+    cli::main()
+}

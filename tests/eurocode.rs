@@ -48,12 +48,16 @@ fn bolts_in_tension_and_shear() {
 fn bearing() {
     // Steel Buildings in Europe, Multi-Storey Part 5, 2.4: M20 8.8, plate 12 mm S275 with fu 430, e1 40, e2 30, p1 70:
     // k1 2.12, end 107 kN, inner 142 kN. The guide's shear acts along p1; k1 from the edge alone (p2 is wide).
-    let at = |e_1, p_1| {
+    // k1 2.12 and αb 0.61 (end), 0.81 (inner) are printed, and the forces from these rounded factors.
+    for (e_1, p_1, alpha_b, force) in [(Some(mm(40.0)), None, 0.61, 107.0), (None, Some(mm(70.0)), 0.81, 142.0)] {
         let place = BearingPlace { e_1, p_1, e_2: mm(30.0), p_2: None };
-        bolts::bearing(place, mm(20.0), mm(22.0), mm(12.0), mpa(430.0), mpa(800.0), 1.25).value.kn()
-    };
-    close(at(Some(mm(40.0)), None), 107.0, 1.0); // the guide multiplies rounded factors
-    close(at(None, Some(mm(70.0))), 142.0, 1.0);
+        let bolt = bolts::bearing(place, mm(20.0), mm(22.0), mm(12.0), mpa(430.0), mpa(800.0), 1.25);
+        let step = |symbol: &str| bolt.working.steps.iter().find(|s| s.symbol == symbol).unwrap().value.value;
+        close(step("k_1"), 2.12, 0.005);
+        close(step("alpha_b"), alpha_b, 0.005);
+        close(2.12 * alpha_b * 430.0 * 20.0 * 12.0 / 1.25 / 1e3, force, 0.5);
+        close(bolt.value.kn(), step("k_1") * step("alpha_b") * 430.0 * 20.0 * 12.0 / 1.25 / 1e3, 1e-9);
+    }
 }
 
 #[test]
@@ -88,13 +92,16 @@ fn alpha_on_the_chart() {
 #[test]
 fn omega_between_its_cornerstones() {
     // Table 6.3 at β = 0.5, 1 and 2, own arithmetic: b t/A = 0.5 → ω1 = 1/√1.325, ω2 = 1/√2.3.
-    let omega = |beta: f64| {
-        column_web::omega(&mut Default::default(), beta, mm(100.0), mm(10.0), Area(2000.0))
-    };
+    let omega = |beta: f64| column_web::omega(&mut Default::default(), beta, mm(100.0), mm(10.0), Area(2000.0));
     let (omega_1, omega_2) = (1.0 / 1.325_f64.sqrt(), 1.0 / 2.3_f64.sqrt());
-    for (beta, expected) in
-        [(0.0, 1.0), (0.5, 1.0), (0.75, 0.5 * (1.0 + omega_1)), (1.0, omega_1), (1.5, 0.5 * (omega_1 + omega_2)), (2.0, omega_2)]
-    {
+    for (beta, expected) in [
+        (0.0, 1.0),
+        (0.5, 1.0),
+        (0.75, 0.5 * (1.0 + omega_1)),
+        (1.0, omega_1),
+        (1.5, 0.5 * (omega_1 + omega_2)),
+        (2.0, omega_2),
+    ] {
         close(omega(beta), expected, 1e-12);
     }
     assert!(omega(f64::NAN).is_nan());
@@ -139,16 +146,18 @@ proptest! {
         let slack = Force(1e-6);
         prop_assert!(of(&stub(t * more, m, l)) + slack >= of(&base));
         prop_assert!(of(&stub(t, m, l * more)) + slack >= of(&base));
-        prop_assert!(of(&TStub { f_y: base.f_y * more, ..base }) + slack >= of(&base));
-        prop_assert!(of(&TStub { sum_F_t_Rd: base.sum_F_t_Rd * more, ..base }) + slack >= of(&base));
+        let (stronger, more_bolts) =
+            (TStub { f_y: base.f_y * more, ..base }, TStub { sum_F_t_Rd: base.sum_F_t_Rd * more, ..base });
+        prop_assert!(of(&stronger) + slack >= of(&base));
+        prop_assert!(of(&more_bolts) + slack >= of(&base));
         prop_assert!(of(&base) <= base.sum_F_t_Rd);
     }
 
     #[test]
-    fn lengths_by_k_are_forces_by_k_squared(t in 5.0..50.0, m in 15.0..90.0, l in 50.0..500.0, k in 0.2..5.0) {
+    fn lengths_by_k_are_forces_by_k_squared(t in 5.0..50.0, m in 15.0..90.0, l in 50.0..500.0, k in 0.2..5.0f64) {
         let base = stub(t, m, l);
         let scaled = TStub { sum_F_t_Rd: base.sum_F_t_Rd * (k * k), ..stub(k * t, k * m, k * l) };
-        let ratio = t_stub(&scaled, 1.0).resistance.value / t_stub(&base, 1.0).resistance.value;
+        let ratio: f64 = t_stub(&scaled, 1.0).resistance.value / t_stub(&base, 1.0).resistance.value;
         prop_assert!((ratio / (k * k) - 1.0).abs() < 1e-12);
     }
 

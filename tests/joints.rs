@@ -1,1 +1,8 @@
+//! Joints found in hand-built steel. Expected values are the parameters with which the steel was built.
 
+mod build;
+mod kinds;
+mod laws;
+mod layouts;
+mod marks;
+mod refusals;

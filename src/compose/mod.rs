@@ -38,7 +38,7 @@ pub struct Sources<'a> {
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
     let mut joints: Vec<JointReview> = (0..sources.joints.joints.len()).map(|index| sources.found(index)).collect();
     joints.extend(sources.pairing.not_found.iter().filter_map(|&index| sources.not_found(index)));
-    joints.sort_by(|a, b| natural(&a.mark).cmp(&natural(&b.mark)));
+    joints.sort_by_cached_key(|joint| natural(&joint.mark));
 
     let ends = |outcome| joints.iter().filter(|joint| joint.outcome == outcome).count();
     let resistance = |joint: &&JointReview| {

@@ -1,13 +1,16 @@
 //! Reads an exchange, of whatever form, into one entity graph. The only room that knows IFC syntax.
 
-mod entities;
+mod conform;
+mod entity;
+mod graph;
 mod ifcxml;
 mod problems;
 mod scalar;
 mod schema;
 mod sniff;
 
-pub use entities::{Entities, Entity, Id, Value};
+pub use entity::{Entity, Id, Value};
+pub use graph::Entities;
 
 use crate::origin::Problem;
 
@@ -42,5 +45,5 @@ pub fn read(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
     let entities = Entities::new(schema::Schema::ifc4(), name);
     sniff::decode(bytes, &mut problems)
         .and_then(|text| ifcxml::read(&text, problems, entities))
-        .map_err(|reason| Unreadable { file: file.to_owned(), reason })
+        .map_err(|reason| Unreadable { file: file.to_owned(), reason: format!("the file {reason}") })
 }

@@ -23,7 +23,7 @@ pub(super) fn rows(items: Vec<Value>, row: usize) -> Result<Value, String> {
     if row == 0 {
         return Ok(Value::List(items));
     }
-    if items.len() % row != 0 {
+    if !items.len().is_multiple_of(row) {
         return Err(format!("has {} values, but rows of {row} are required", items.len()));
     }
     let mut rows = Vec::with_capacity(items.len() / row);

@@ -98,6 +98,15 @@ impl Schema {
         self.classes.get(usize::from(class))
     }
 
+    /// The inverse of that name. An entity that the schema does not know is asked for an element's and a spatial
+    /// element's, so that what a later version of the schema adds keeps its relations.
+    pub fn inverse(&self, class: ClassId, name: &str) -> Option<&Inverse> {
+        let known = self.class(class);
+        let stand_ins = ["IfcElement", "IfcSpatialElement"].iter().filter_map(|name| self.class(self.find(name)?));
+        let asked: Vec<&Class> = if let Some(known) = known { vec![known] } else { stand_ins.collect() };
+        asked.into_iter().flat_map(|class| &class.inverses).find(|inverse| inverse.name == name)
+    }
+
     /// How many entities the schema has; numbers from here on are free for unknown ones.
     pub fn len(&self) -> usize {
         self.classes.len()

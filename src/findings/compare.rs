@@ -86,18 +86,16 @@ pub(super) fn classes(rulebook: &Rulebook, detailed: &str, intended: &str) -> St
     }
 }
 
-/// Sections: by catalogue name, by the text where no catalogue knows it, by sizes where only one has a name.
+/// Sections: by catalogue name, by sizes where the names differ, by the text where no catalogue knows the intended one.
+///
+/// A part that has the name and not the sizes is the business of `witnesses-disagree`.
 pub(super) fn sections(rulebook: &Rulebook, detailed: &Section, intended: &str) -> Strength {
-    let own = rulebook.section(&detailed.designation);
-    let named = rulebook.section(intended);
-    if let (Some(own), Some(named)) = (own, named)
-        && own.designation == named.designation
-    {
-        return Strength::Same;
-    }
-    let Some(named) = named else {
+    let Some(named) = rulebook.section(intended) else {
         return if plain(&detailed.designation) == plain(intended) { Strength::Same } else { Strength::Unranked };
     };
+    if rulebook.section(&detailed.designation).is_some_and(|own| own.designation == named.designation) {
+        return Strength::Same;
+    }
     let tolerance = rulebook.tolerances.size;
     let order = |a: Length, b: Length| if differs(a, b, tolerance) { a.partial_cmp(&b) } else { Some(Ordering::Equal) };
     let orders = [
@@ -107,8 +105,6 @@ pub(super) fn sections(rulebook: &Rulebook, detailed: &Section, intended: &str) 
         order(detailed.t_w, named.t_w),
     ];
     match Strength::of(&orders) {
-        // Two names of the catalogue are two sections, however near their sizes.
-        Strength::Same if own.is_some() => Strength::Unranked,
         Strength::Lower if orders.contains(&Some(Ordering::Greater)) => Strength::Unranked,
         strength => strength,
     }

@@ -21,7 +21,7 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some(layout) = context.layout else { return Vec::new() };
     let Ok(hole) = &layout.bolts.hole else { return Vec::new() };
     let findings = distances(layout).into_iter().filter_map(|(what, factor, all)| {
-        let shortest = all.into_iter().min_by(|a, b| a.get().total_cmp(&b.get()))?;
+        let shortest = all.into_iter().reduce(Length::min)?;
         let least = factor * hole.value;
         if !less(shortest, least, context.rulebook.tolerances.size) {
             return None;

@@ -38,7 +38,7 @@ pub fn match_rows(intended: &[Length], detailed: &[Length], tolerance: Length) -
     }
     let pairing = |i: usize, j: usize| match differs(intended[i], detailed[j], tolerance) {
         false => 0.0,
-        true => MOVED + 1e-6 * (intended[i] - detailed[j]).abs().get().clamp(0.0, 1e4),
+        true => MOVED + 1e-6 * (intended[i] - detailed[j]).abs().get().min(1e4),
     };
     // cost[i][j]: of laying intended[i..] on detailed[j..].
     let mut cost = vec![vec![0.0_f64; n + 1]; m + 1];
@@ -89,7 +89,7 @@ pub(super) fn rows_of(context: &Context<'_>) -> Option<(Vec<Length>, Vec<Length>
 ///
 /// The rows decide, where they are stated: more of them beyond the other flange than intended, or all of them where the
 /// mirror image of the intended ones is. Only without rows does the plate decide: it reaches further past the other
-/// flange, and the mirror image fits better.
+/// flange, and the mirror image fits better (a plate that merely lost its extension fits neither way better).
 pub(super) fn upside_down(context: &Context<'_>) -> bool {
     let Some((layout, intended)) = context.both() else { return false };
     let Ok(section) = &layout.beam.section else { return false };
@@ -110,7 +110,6 @@ pub(super) fn upside_down(context: &Context<'_>) -> bool {
     let apart = |upper: Length, lower: Length| (top - upper).abs() + (bottom - lower).abs();
     lean_intended.abs() > tolerance
         && lean_detailed.abs() > tolerance
-        && lean_intended.get() * lean_detailed.get() < 0.0
         && apart(h - plate.bottom, h - plate.top) < apart(plate.top, plate.bottom)
 }
 

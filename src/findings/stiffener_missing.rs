@@ -17,7 +17,7 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
         let level = format!("level with the beam's {} flange", at.flange);
         let Some(detailed) = at.detailed else {
             let message = format!("the intended column stiffeners {level} are missing");
-            return Some(deviation(context, ID, message).against(printed(intended), "none").on(context.column()));
+            return Some(deviation(context, ID, message).against(printed(intended, true), "none").on(context.column()));
         };
         let faults = faults(context, intended, detailed);
         if faults.is_empty() {
@@ -27,7 +27,11 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
         let detailed_grade = detailed.grade.as_ref().ok().map(|grade| grade.value.0.clone());
         let stand = IntendedStiffener { thickness: Some(detailed.thickness), grade: detailed_grade };
         let on = context.parts(detailed.guids.iter().map(String::as_str));
-        Some(deviation(context, ID, message).against(printed(intended), printed(&stand)).on(on))
+        Some(
+            deviation(context, ID, message)
+                .against(printed(intended, true), printed(&stand, detailed.both_sides))
+                .on(on),
+        )
     });
     short.collect()
 }
@@ -55,7 +59,8 @@ fn faults(context: &Context<'_>, intended: &IntendedStiffener, detailed: &Stiffe
 }
 
 /// "a pair, 12 mm, S275", as far as it is known.
-fn printed(stiffener: &IntendedStiffener) -> String {
-    let words = ["a pair".into()].into_iter().chain(stiffener.thickness.map(mm)).chain(stiffener.grade.clone());
-    words.collect::<Vec<String>>().join(", ")
+fn printed(stiffener: &IntendedStiffener, pair: bool) -> String {
+    let count = if pair { "a pair" } else { "one plate" };
+    let sizes = stiffener.thickness.map(mm).into_iter().chain(stiffener.grade.clone());
+    [count.into()].into_iter().chain(sizes).collect::<Vec<String>>().join(", ")
 }

@@ -51,7 +51,10 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) -> Result<B
     for row in &rows {
         let height = row.iter().map(|bolt| bolt.height).sum::<f64>() / row.len() as f64;
         let [a, b] = row[..] else {
-            return Err(format!("{} bolts in the row at {height:.0} mm: only rows of two are assessed yet", row.len()));
+            return Err(format!(
+                "the row at {height:.0} mm has {} in it: only rows of two bolts are assessed yet",
+                row.len()
+            ));
         };
         let off = (a.across + b.across).abs();
         if !(off <= position && a.across * b.across < 0.0) {

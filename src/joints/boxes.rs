@@ -88,7 +88,8 @@ impl Slab {
             .chain(&other.axes)
             .copied()
             .chain(crosses)
-            .filter_map(|axis| (axis.length_squared() > 1e-6).then(|| axis.normalize()))
+            .filter(|axis| axis.length_squared() > 1e-6)
+            .map(|axis| axis.normalize())
             .map(|axis| between.dot(axis).abs() - self.reach(axis) - other.reach(axis))
             .fold(f64::NEG_INFINITY, f64::max)
     }

@@ -106,7 +106,7 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
     });
     if let Some(packing) = packed {
         let (thickness, label) = (scene.steel.plates[packing].thickness, scene.label(Part::Plate(packing)));
-        return Err(format!("{thickness} of packing ({label}) under the end plate: not assessed yet"));
+        return Err(format!("{:.1} mm of packing ({label}) under the end plate: not assessed yet", thickness.get()));
     }
     if !(gap.abs() <= touch) {
         let how = if gap > 0.0 { "stands off" } else { "runs into" };
@@ -145,7 +145,8 @@ fn every_bolt_passes_flange(scene: &Scene, draft: &Draft, case: &Case) -> Result
     let flange = Pass::Member(case.column, case.ply);
     let count = draft.joint.bolts.iter().filter(|bolt| !scene.touches.passes[**bolt].contains(&flange)).count();
     if count > 0 {
-        return Err(format!("{count} bolts of the end plate do not pass through the column's flange: not assessed"));
+        let all = draft.joint.bolts.len();
+        return Err(format!("{count} of {all} bolts do not pass through the column's flange: not assessed"));
     }
     Ok(())
 }

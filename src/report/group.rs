@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 
 use crate::origin::Place;
-use crate::review::{Finding, JointReview, Outcome, REQUIRED_ACTIONS, Review};
+use crate::review::{Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Review};
 
 /// One missing thing and the joints that lack it.
 pub(super) struct Lack<'a> {
@@ -68,14 +68,17 @@ pub(super) fn marks<'a>(joints: &[&'a JointReview]) -> Vec<&'a str> {
     joints.iter().map(|joint| joint.mark.as_str()).collect()
 }
 
-/// A finding in one sentence: "plate-thinner: the end plate is thinner (intended 25 mm, detailed 20 mm)".
+/// A finding in one sentence: "stiffener-missing: the stiffeners are missing (intended a pair, detailed none)"; values
+/// that the message itself gives are not said twice.
 pub(super) fn sentence(finding: &Finding) -> String {
+    let message = finding.message.trim_end_matches('.');
     let values = [("intended", &finding.intended), ("detailed", &finding.detailed)]
         .iter()
-        .filter_map(|(word, value)| value.as_ref().map(|v| format!("{word} {v}")))
+        .filter_map(|(word, value)| value.as_ref().map(|v| (word, v)))
+        .filter(|(_, value)| !names(message, value))
+        .map(|(word, value)| format!("{word} {value}"))
         .collect::<Vec<_>>()
         .join(", ");
-    let message = finding.message.trim_end_matches('.');
     if values.is_empty() {
         format!("{}: {message}", finding.rule)
     } else {
@@ -83,24 +86,69 @@ pub(super) fn sentence(finding: &Finding) -> String {
     }
 }
 
-/// What makes two held joints alike: the same kind and intended detail with the same faults.
-///
-/// A rule whose id ends in "-short" lays an action on a resistance: its numbers belong to the joint, not to the fault.
-pub(super) fn likeness(joint: &JointReview) -> (String, Option<String>, Vec<String>) {
-    let faults = joint
-        .findings
-        .iter()
-        .map(|f| if f.rule.ends_with("-short") { f.rule.to_owned() } else { sentence(f) })
-        .collect();
-    (joint.kind.clone(), joint.detail.clone(), faults)
+/// Whether a text gives a value as such: "125 mm" does not give "25 mm".
+fn names(text: &str, value: &str) -> bool {
+    let goes_on = |c: char| c.is_alphanumeric() || c == '.';
+    text.match_indices(value)
+        .any(|(at, _)| !text[..at].ends_with(goes_on) && !text[at + value.len()..].starts_with(char::is_alphanumeric))
+}
+
+/// Rules that lay an action on a resistance: their numbers belong to the joint, not to the fault.
+const OF_ACTIONS: [&str; 4] = ["moment-short", "shear-short", "weld-short", "axial-force-beyond-limit"];
+
+/// Whether a finding says no more than the required actions, resistances and governing component of the worst case.
+pub(super) fn said_by_worst_case(joint: &JointReview, finding: &Finding) -> bool {
+    let worst = worst_case(joint);
+    let governed = worst.and_then(|case| case.governed_by.as_ref());
+    let used = worst.and_then(|case| case.utilisation).map(|ratio| format!("{ratio:.2}"));
+    OF_ACTIONS.contains(&finding.rule)
+        && governed.zip(used).is_some_and(|(by, used)| says(&finding.message, by) && says(&finding.message, &used))
+}
+
+/// What makes two held joints alike: the same kind, intended detail and governing component, the same faults and the
+/// same missing things.
+pub(super) fn likeness(joint: &JointReview) -> impl Ord {
+    let fault = |f: &Finding| if OF_ACTIONS.contains(&f.rule) { f.rule.to_owned() } else { sentence(f) };
+    let faults: Vec<String> = joint.findings.iter().map(fault).collect();
+    let missing: Vec<&str> = joint.missing.iter().map(|missing| missing.what.as_str()).collect();
+    (&joint.kind, &joint.detail, governing(joint), faults, missing)
+}
+
+/// What governs the worst case; the joint's own resistance where no case says so.
+pub(super) fn governing(joint: &JointReview) -> Option<&String> {
+    worst_case(joint).and_then(|case| case.governed_by.as_ref()).or(joint.resistance.governed_by.as_ref())
+}
+
+/// The case that uses the joint most; the first one where nothing was computed.
+pub(super) fn worst_case(joint: &JointReview) -> Option<&Required> {
+    let used = |case: &Required| case.utilisation.unwrap_or(f64::NEG_INFINITY);
+    joint.required.iter().reduce(|worst, case| if used(case).total_cmp(&used(worst)).is_gt() { case } else { worst })
 }
 
 /// Reasons of a joint that neither its findings nor its missing things say.
 pub(super) fn reasons_left(joint: &JointReview) -> impl Iterator<Item = &str> {
     joint.reasons.iter().map(String::as_str).filter(|reason| {
-        !joint.findings.iter().any(|f| reason.contains(f.message.trim_end_matches('.')))
-            && !joint.missing.iter().any(|m| reason.contains(m.reason.trim_end_matches('.')))
+        !joint.findings.iter().any(|finding| says(reason, &finding.message))
+            && !joint.missing.iter().any(|missing| says(reason, &missing.reason))
     })
+}
+
+/// Rules of what has a section of its own: steel without a schedule line, and the other way round.
+const PAIRING: [&str; 2] = ["joint-not-scheduled", "joint-not-found"];
+
+/// Findings of a joint that are no comments and that neither its missing things nor a section of its own say.
+pub(super) fn findings_left(joint: &JointReview) -> impl Iterator<Item = &Finding> {
+    joint.findings.iter().filter(|finding| {
+        finding.severity != Outcome::Comment
+            && !PAIRING.contains(&finding.rule)
+            && !joint.missing.iter().any(|missing| says(&finding.message, &missing.reason))
+    })
+}
+
+/// Whether a text holds what another one says.
+fn says(text: &str, other: &str) -> bool {
+    let other = other.trim_end_matches('.');
+    !other.is_empty() && text.contains(other)
 }
 
 /// Whether a schedule was given that states no actions for this joint.

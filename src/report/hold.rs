@@ -2,16 +2,19 @@
 
 use similar::{Algorithm, DiffOp, capture_diff_slices};
 
-use super::group::{reasons_left, sentence};
+use super::group::{self, reasons_left, sentence, worst_case};
 use super::number::{action, count, utilisation};
 use super::page::{Page, Tone};
-use super::table::worst_case;
+
 use super::window::Source;
 use crate::origin::Place;
 use crate::review::{Finding, JointReview, MemberBrief, Outcome, Required, Resistance};
 
 /// Findings and reasons a joint that are not written out.
 const FINDINGS: usize = 8;
+
+/// Parts of a finding that are named.
+const PARTS: usize = 3;
 
 /// Changed lines of a difference that are not written out.
 const CHANGES: usize = 12;
@@ -49,13 +52,17 @@ pub(super) fn draw(
         }
     }
     if !alike.is_empty() {
-        let others = alike.iter().map(|other| match other.utilisation() {
-            Some(ratio) => format!("{} ({})", other.mark, utilisation(ratio)),
-            None => other.mark.clone(),
-        });
-        let list = page.listed(others);
+        let list = page.listed(alike.iter().map(|other| brief(other)));
         page.line(3, &format!("the same faults at {}: {list}", count(alike.len(), "more joint", "more joints")));
     }
+}
+
+/// "B2 (1.02, part P2)".
+fn brief(joint: &JointReview) -> String {
+    let used = joint.utilisation().map(utilisation);
+    let part = joint.findings.iter().flat_map(|f| &f.elements).find_map(|guid| mark_of(joint, guid));
+    let about: Vec<String> = used.into_iter().chain(part.map(|mark| format!("part {mark}"))).collect();
+    if about.is_empty() { joint.mark.clone() } else { format!("{} ({})", joint.mark, about.join(", ")) }
 }
 
 fn lead(joint: &JointReview, worst: Option<&Required>) -> String {
@@ -63,15 +70,14 @@ fn lead(joint: &JointReview, worst: Option<&Required>) -> String {
         Some(ratio) => format!("utilisation {}", utilisation(ratio)),
         None => "utilisation not known".into(),
     };
-    let governed = worst.and_then(|case| case.governed_by.as_ref()).or(joint.resistance.governed_by.as_ref());
-    match governed {
+    match group::governing(joint) {
         Some(governed) => format!("{}: {used}, governed by {governed}", joint.mark),
         None => format!("{}: {used}", joint.mark),
     }
 }
 
 /// "B1 (UKB 457x191x67, S355) on C1 (UKC 254x254x89, grade not known); end-plate-moment, intended detail M3".
-pub(super) fn who(joint: &JointReview) -> String {
+fn who(joint: &JointReview) -> String {
     let members = match (&joint.supported, &joint.supporting) {
         (Some(on), Some(by)) => format!("{} on {}; ", member(on), member(by)),
         (Some(one), None) | (None, Some(one)) => format!("{}; ", member(one)),
@@ -81,8 +87,18 @@ pub(super) fn who(joint: &JointReview) -> String {
     format!("{members}{}{detail}", joint.kind)
 }
 
+/// "end-plate-moment, IPE 400 on HEB 260": what joints of one sort share.
+pub(super) fn what(joint: &JointReview) -> String {
+    let section = |member: &Option<MemberBrief>| member.as_ref().and_then(|m| m.section.clone());
+    match (section(&joint.supported), section(&joint.supporting)) {
+        (Some(on), Some(by)) => format!("{}, {on} on {by}", joint.kind),
+        (Some(one), None) | (None, Some(one)) => format!("{}, {one}", joint.kind),
+        (None, None) => joint.kind.clone(),
+    }
+}
+
 fn member(member: &MemberBrief) -> String {
-    let mark = member.mark.as_deref().unwrap_or("no mark");
+    let mark = member.mark.as_deref().unwrap_or("a member without mark");
     let section = member.section.as_deref().unwrap_or("section not known");
     let grade = member.grade.as_deref().unwrap_or("grade not known");
     format!("{mark} ({section}, {grade})")
@@ -131,14 +147,26 @@ pub(super) fn resistance(resistance: &Resistance) -> String {
 
 fn findings(page: &mut Page, joint: &JointReview, said: Option<&Place>) {
     let bound = page.bound(FINDINGS);
+    let mut named: &[String] = &[];
     for finding in joint.findings.iter().take(bound) {
         let also = if finding.severity == Outcome::Hold { "" } else { "also " };
-        page.line(3, &format!("{also}{}", sentence(finding)));
+        let text = match group::said_by_worst_case(joint, finding) {
+            true => format!("{}: as said above", finding.rule),
+            false => sentence(finding),
+        };
+        page.line(3, &format!("{also}{text}"));
+        if finding.elements == named && !named.is_empty() {
+            continue;
+        }
+        named = &finding.elements;
         if let Some(parts) = parts(page, joint, finding, said) {
             page.line(5, &parts);
         }
     }
     page.more(3, joint.findings.len().saturating_sub(bound), "findings at this joint");
+    if joint.findings.iter().all(|finding| finding.elements.is_empty()) {
+        all_parts(page, joint);
+    }
     let left: Vec<&str> = reasons_left(joint).collect();
     for reason in left.iter().take(bound) {
         page.line(3, reason);
@@ -152,12 +180,27 @@ fn parts(page: &Page, joint: &JointReview, finding: &Finding, said: Option<&Plac
         Some(mark) => format!("{mark} (GlobalId {guid})"),
         None => format!("GlobalId {guid}"),
     });
-    let named = page.listed(named);
+    let named = page.listed_to(PARTS, named);
+    let noun = if finding.elements.len() == 1 { "part" } else { "parts" };
     match (finding.at.as_ref().filter(|at| Some(*at) != said), named.is_empty()) {
-        (Some(at), false) => Some(format!("part {named}, {at}")),
-        (None, false) => Some(format!("part {named}")),
+        (Some(at), false) => Some(format!("{noun} {named}, {at}")),
+        (None, false) => Some(format!("{noun} {named}")),
         (Some(at), true) => Some(format!("at {at}")),
         (None, true) => None,
+    }
+}
+
+/// Plates and members with their GlobalIds, where no finding says which part is meant.
+fn all_parts(page: &mut Page, joint: &JointReview) {
+    let plates = joint.plates.iter().map(|plate| (plate.role.as_str(), &plate.mark, &plate.guid));
+    let members = joint.supported.iter().chain(&joint.supporting).map(|member| ("member", &member.mark, &member.guid));
+    let named = plates.chain(members).map(|(role, mark, guid)| match mark {
+        Some(mark) => format!("{role} {mark} (GlobalId {guid})"),
+        None => format!("{role} (GlobalId {guid})"),
+    });
+    let list = page.listed(named);
+    if !list.is_empty() {
+        page.line(3, &format!("parts: {list}"));
     }
 }
 

@@ -8,10 +8,13 @@ mod hold;
 pub mod json;
 mod number;
 mod page;
+mod standing;
 pub mod survey;
 mod table;
 pub mod text;
 mod window;
+
+use std::ffi::OsStr;
 
 /// How a text is drawn.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -29,4 +32,10 @@ impl Default for Options {
     fn default() -> Self {
         Self { width: 100, colour: false, all: false }
     }
+}
+
+/// Whether a text is coloured: as the caller asked; where nobody asked, on a terminal unless `NO_COLOR` is set to
+/// anything but nothing (no-color.org).
+pub fn in_colour(asked: Option<bool>, terminal: bool, no_color: Option<&OsStr>) -> bool {
+    asked.unwrap_or(terminal && no_color.is_none_or(OsStr::is_empty))
 }

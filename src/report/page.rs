@@ -1,9 +1,12 @@
 //! The page a text is written on: wrapping, indents, colour, and no control characters from files.
 
+use std::cell::Cell;
+
 use anstyle::{AnsiColor, Style};
 use textwrap::{WordSeparator, WordSplitter};
 
 use super::Options;
+use crate::review::CAUTION;
 
 /// How a line is meant.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -39,14 +42,26 @@ const NARROWEST: usize = 40;
 pub(super) struct Page {
     out: String,
     options: Options,
+    /// Whether anything was left out.
+    cut: Cell<bool>,
 }
 
 impl Page {
     pub(super) fn new(options: &Options) -> Self {
-        Self { out: String::new(), options: Options { width: options.width.max(NARROWEST), ..*options } }
+        Self {
+            out: String::new(),
+            options: Options { width: options.width.max(NARROWEST), ..*options },
+            cut: Cell::new(false),
+        }
     }
 
-    pub(super) fn finish(self) -> String {
+    /// Ends the page with the caution, and says so where lists were cut short.
+    pub(super) fn finish(mut self) -> String {
+        self.blank();
+        if self.cut.get() {
+            self.toned(0, Tone::Quiet, "Long lists are cut short; --all shows them in full.");
+        }
+        self.line(0, CAUTION);
         self.out
     }
 
@@ -110,20 +125,29 @@ impl Page {
 
     /// "B1, B2 and 7 more".
     pub(super) fn listed<S: AsRef<str>>(&self, items: impl IntoIterator<Item = S>) -> String {
+        self.listed_to(LISTED, items)
+    }
+
+    /// The same with another bound.
+    pub(super) fn listed_to<S: AsRef<str>>(&self, bound: usize, items: impl IntoIterator<Item = S>) -> String {
         let items: Vec<S> = items.into_iter().collect();
-        // A remainder of one is no shorter than the mark itself.
-        let bound = self.bound(if items.len() == LISTED + 1 { LISTED + 1 } else { LISTED });
+        // A remainder of one is no shorter than the item itself.
+        let bound = self.bound(if items.len() == bound + 1 { bound + 1 } else { bound });
         let shown = items.iter().take(bound).map(AsRef::as_ref).collect::<Vec<&str>>().join(", ");
         match items.len().saturating_sub(bound) {
             0 => shown,
-            more => format!("{shown} and {more} more"),
+            more => {
+                self.cut.set(true);
+                format!("{shown} and {more} more")
+            }
         }
     }
 
     /// The line that stands for what a bounded list left out.
     pub(super) fn more(&mut self, indent: usize, left_out: usize, what: &str) {
         if left_out > 0 {
-            self.toned(indent, Tone::Quiet, &format!("and {left_out} more {what}; --all shows them"));
+            self.cut.set(true);
+            self.toned(indent, Tone::Quiet, &format!("and {left_out} more {what}"));
         }
     }
 }

@@ -5,9 +5,9 @@ use std::collections::BTreeMap;
 use super::group::{self, marks};
 use super::number::count;
 use super::page::{Page, Tone};
-use super::{Options, text};
+use super::{Options, standing, text};
 use crate::origin::Place;
-use crate::review::{CAUTION, JointReview, REQUIRED_ACTIONS, Review};
+use crate::review::{JointReview, REQUIRED_ACTIONS, Review};
 
 /// Groups and lines a section that are not written out.
 const GROUPS: usize = 20;
@@ -22,11 +22,9 @@ pub fn render(review: &Review, options: &Options) -> String {
     lacking(&mut page, review);
     if !review.problems.is_empty() {
         page.heading(&format!("PROBLEMS in the model: {}", review.problems.len()));
-        text::list_problems(&mut page, review);
+        standing::list_problems(&mut page, review);
     }
     ask(&mut page, review);
-    page.blank();
-    page.line(0, CAUTION);
     page.finish()
 }
 

@@ -4,7 +4,7 @@ use comfy_table::{CellAlignment, ColumnConstraint, ContentArrangement, Table, Ta
 
 use super::page::clean;
 use super::{group, number};
-use crate::review::{JointReview, Required};
+use crate::review::JointReview;
 
 /// Rows of a table that is not written out.
 pub(super) const ROWS: usize = 30;
@@ -17,22 +17,16 @@ pub(super) fn draw(joints: &[&JointReview], width: usize) -> Vec<String> {
     table.set_style(TableComponent::MiddleHeaderIntersections, ' ');
     table.set_content_arrangement(ContentArrangement::Dynamic);
     table.set_width(u16::try_from(width).unwrap_or(u16::MAX));
-    table.set_header([
-        "joint",
-        "outcome",
-        "util.",
-        "governed by",
-        "M_Ed\nkNm",
-        "M_Rd\nkNm",
-        "V_Ed\nkN",
-        "V_Rd\nkN",
-        "detail",
-    ]);
+    // Nothing is said by a column of dashes.
+    let columns = if joints.iter().any(|joint| joint.detail.is_some()) { 9 } else { 8 };
+    let header =
+        ["joint", "outcome", "util.", "governed by", "M_Ed\nkNm", "M_Rd\nkNm", "V_Ed\nkN", "V_Rd\nkN", "detail"];
+    table.set_header(header.iter().take(columns));
     for joint in joints {
-        table.add_row(row(joint).map(|cell| clean(&cell)));
+        table.add_row(row(joint).iter().take(columns).map(|cell| clean(cell)));
     }
     for (index, column) in table.column_iter_mut().enumerate() {
-        column.set_padding((0, 2));
+        column.set_padding((0, 1));
         if !matches!(index, 0 | 3 | 8) {
             column.set_constraint(ColumnConstraint::ContentWidth);
         }
@@ -44,14 +38,13 @@ pub(super) fn draw(joints: &[&JointReview], width: usize) -> Vec<String> {
 }
 
 fn row(joint: &JointReview) -> [String; 9] {
-    let worst = worst_case(joint);
+    let worst = group::worst_case(joint);
     let moment = worst.and_then(|case| case.moment_knm);
     let against = worst.and_then(|case| case.moment_resistance_knm).or(match moment {
         Some(m) if m < 0.0 => joint.resistance.moment_reversed_knm,
         _ => joint.resistance.moment_knm,
     });
-    let governed = worst.and_then(|case| case.governed_by.as_ref()).or(joint.resistance.governed_by.as_ref());
-    let governed = match governed {
+    let governed = match group::governing(joint) {
         _ if !joint.found() => "no steel found",
         Some(governed) => governed,
         None if group::assessed(joint) => "",
@@ -69,10 +62,4 @@ fn row(joint: &JointReview) -> [String; 9] {
         plain(joint.resistance.shear_kn),
         joint.detail.clone().unwrap_or_else(|| "-".into()),
     ]
-}
-
-/// The case that uses the joint most; the first one where nothing was computed.
-pub(super) fn worst_case(joint: &JointReview) -> Option<&Required> {
-    let used = |case: &Required| case.utilisation.unwrap_or(f64::NEG_INFINITY);
-    joint.required.iter().reduce(|worst, case| if used(case).total_cmp(&used(worst)).is_gt() { case } else { worst })
 }

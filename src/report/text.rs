@@ -4,11 +4,11 @@
 use std::collections::BTreeMap;
 
 use super::group::{self, marks};
-use super::number::{count, factor, utilisation};
+use super::number::{count, utilisation};
 use super::page::{Page, Tone};
 use super::window::Source;
-use super::{Options, hold, table};
-use crate::review::{CAUTION, JointReview, Outcome, Review};
+use super::{Options, hold, standing, table};
+use crate::review::{JointReview, Outcome, Review};
 
 /// Held joints (alike ones count once) that are drawn in full.
 const HOLDS: usize = 10;
@@ -17,10 +17,7 @@ const HOLDS: usize = 10;
 const WINDOWS: usize = 40;
 
 /// Groups a section.
-const GROUPS: usize = 20;
-
-/// Problems of model and schedule.
-const PROBLEMS: usize = 20;
+pub(super) const GROUPS: usize = 20;
 
 /// Draws the review; `model` are the bytes of the model, for a short window of its text beside a place.
 pub fn render(review: &Review, options: &Options, model: Option<&[u8]>) -> String {
@@ -32,12 +29,10 @@ pub fn render(review: &Review, options: &Options, model: Option<&[u8]>) -> Strin
     deviates(&mut page, review);
     clear(&mut page, review);
     all_joints(&mut page, review);
-    counts(&mut page, review);
-    basis(&mut page, review);
-    assumed(&mut page, review);
-    problems(&mut page, review);
-    page.blank();
-    page.line(0, CAUTION);
+    standing::counts(&mut page, review);
+    standing::basis(&mut page, review);
+    standing::assumed(&mut page, review);
+    standing::problems(&mut page, review);
     page.finish()
 }
 
@@ -95,10 +90,14 @@ fn holds(page: &mut Page, review: &Review, model: Option<&[u8]>) {
     if !left.is_empty() {
         page.blank();
         let list = page.listed(left.iter().map(|joint| named(joint)));
-        page.toned(0, Tone::Hold, &format!("and {} more on hold: {list}; --all shows them", left.len()));
+        page.toned(0, Tone::Hold, &format!("and {} more on hold: {list}", left.len()));
     }
     if !bare.is_empty() {
-        page.line(0, &format!("{} of them without steel, below.", bare.len()));
+        let list = page.listed(marks(&bare));
+        if !alike.is_empty() {
+            page.blank();
+        }
+        page.line(0, &format!("Scheduled, but without steel (see MISSING): {list}"));
     }
 }
 
@@ -133,11 +132,7 @@ fn unproven(page: &mut Page, review: &Review) {
     page.more(3, lacks.len().saturating_sub(bound), "missing things");
 
     let mut said_else = group::by_text(joints.iter().flat_map(|&joint| {
-        let findings = joint.findings.iter().filter(|f| f.severity == Outcome::Unproven).filter(|f| {
-            let message = f.message.trim_end_matches('.');
-            !joint.missing.iter().any(|m| message.contains(&m.reason) || message.contains(&m.to_string()))
-        });
-        let findings: Vec<String> = findings.map(group::sentence).collect();
+        let findings: Vec<String> = group::findings_left(joint).map(group::sentence).collect();
         let reasons = group::reasons_left(joint).map(str::to_owned);
         findings.into_iter().chain(reasons).map(move |text| (text, joint)).collect::<Vec<_>>()
     }));
@@ -145,12 +140,18 @@ fn unproven(page: &mut Page, review: &Review) {
         .iter()
         .copied()
         .filter(|joint| joint.missing.is_empty() && joint.reasons.is_empty())
-        .filter(|joint| !joint.findings.iter().any(|f| f.severity == Outcome::Unproven))
+        .filter(|joint| joint.findings.iter().all(|f| f.severity == Outcome::Comment))
         .collect();
     if !silent.is_empty() {
         said_else.push(("no reason is recorded".into(), silent));
     }
     texts(page, &said_else, Tone::Unproven);
+    let unscheduled: Vec<&JointReview> =
+        joints.iter().copied().filter(|joint| group::unscheduled(review, joint)).collect();
+    if !unscheduled.is_empty() {
+        let list = page.listed(marks(&unscheduled));
+        page.line(3, &format!("Without required actions (see MISSING): {list}"));
+    }
 
     let deviating = group::by_text(comments(&joints));
     if !deviating.is_empty() {
@@ -183,8 +184,11 @@ fn comments<'a>(joints: &[&'a JointReview]) -> Vec<(String, &'a JointReview)> {
 fn texts(page: &mut Page, groups: &[(String, Vec<&JointReview>)], tone: Tone) {
     let bound = page.bound(GROUPS);
     for (text, joints) in groups.iter().take(bound) {
+        page.toned(3, tone, text);
         let list = page.listed(marks(joints));
-        page.toned(3, tone, &format!("{text} ({}): {list}", count(joints.len(), "joint", "joints")));
+        let at =
+            joints.iter().find_map(|joint| joint.at.as_ref()).map_or(String::new(), |at| format!("; first at {at}"));
+        page.line(5, &format!("{}: {list}{at}", count(joints.len(), "joint", "joints")));
     }
     page.more(3, groups.len().saturating_sub(bound), "of this kind");
 }
@@ -207,25 +211,22 @@ fn missing(page: &mut Page, review: &Review) {
     ));
     let bound = page.bound(GROUPS);
     for joint in bare.iter().take(bound) {
-        let case = table::worst_case(joint);
+        let case = group::worst_case(joint);
         let asked = case.map_or(String::new(), |case| format!("; required {}", hold::required(case)));
         let at = joint.at.as_ref().or(case.and_then(|case| case.at.as_ref()));
         let at = at.map_or(String::new(), |at| format!(", {at}"));
         page.toned(3, Tone::Hold, &format!("{}: scheduled, no steel found{asked}{at}", joint.mark));
-        for reason in &joint.reasons {
-            page.line(5, reason);
+        for said in
+            group::findings_left(joint).map(group::sentence).chain(group::reasons_left(joint).map(str::to_owned))
+        {
+            page.line(5, &said);
         }
     }
     page.more(3, bare.len().saturating_sub(bound), "scheduled joints without steel");
-    for joint in unscheduled.iter().take(bound) {
-        let at = joint.at.as_ref().map_or(String::new(), |at| format!(", {at}"));
-        let text = format!("{}: no schedule line states actions; {}{at}", joint.mark, hold::who(joint));
-        page.toned(3, Tone::Unproven, &text);
-        if group::assessed(joint) {
-            page.line(5, &format!("resistance: {}", hold::resistance(&joint.resistance)));
-        }
+    if !unscheduled.is_empty() {
+        page.line(3, "No schedule line states actions for these:");
+        texts(page, &group::by_text(unscheduled.iter().map(|&joint| (hold::what(joint), joint))), Tone::Unproven);
     }
-    page.more(3, unscheduled.len().saturating_sub(bound), "joints without required actions");
 }
 
 fn deviates(page: &mut Page, review: &Review) {
@@ -257,7 +258,11 @@ fn clear(page: &mut Page, review: &Review) {
         return;
     }
     let list = page.listed(group::worst_first(joints.iter().copied()).iter().map(|joint| &joint.mark));
-    page.heading(&format!("CLEAR: {}{}: {list}", count(joints.len(), "joint", "joints"), up_to(&joints)));
+    page.heading(&format!(
+        "CLEAR: {}{}, the most used first: {list}",
+        count(joints.len(), "joint", "joints"),
+        up_to(&joints)
+    ));
 }
 
 fn all_joints(page: &mut Page, review: &Review) {
@@ -271,90 +276,4 @@ fn all_joints(page: &mut Page, review: &Review) {
         page.raw(0, Tone::Plain, &line);
     }
     page.more(0, joints.len() - shown, "joints");
-}
-
-fn counts(page: &mut Page, review: &Review) {
-    let n = &review.counts;
-    page.heading("COUNTS");
-    page.line(
-        3,
-        &format!(
-            "joints found {}, scheduled {}, paired {}, assessed {}; clear {}, comment {}, hold {}, unproven {}",
-            n.found, n.scheduled, n.paired, n.assessed, n.clear, n.comment, n.hold, n.unproven
-        ),
-    );
-}
-
-fn basis(page: &mut Page, review: &Review) {
-    let basis = &review.basis;
-    page.heading("BASIS");
-    page.line(
-        3,
-        &format!(
-            "{}; {}: γM0 = {}, γM1 = {}, γM2 = {} ({})",
-            basis.standard,
-            basis.annex,
-            factor(basis.gamma_m0),
-            factor(basis.gamma_m1),
-            factor(basis.gamma_m2),
-            basis.annex_source
-        ),
-    );
-    for (name, value) in &basis.settings {
-        page.line(3, &format!("{name}: {value}"));
-    }
-    page.line(3, "M is positive with tension at the top of the joint, N in tension; V by magnitude.");
-    page.line(3, &format!("model {}, SHA-256 {}", review.file, review.sha256));
-}
-
-fn assumed(page: &mut Page, review: &Review) {
-    let said = |joint: &'_ JointReview| joint.assumptions.clone();
-    let groups =
-        group::by_text(review.joints.iter().flat_map(|joint| said(joint).into_iter().map(move |text| (text, joint))));
-    let carried = |joint: &&JointReview| matches!(joint.outcome, Outcome::Clear | Outcome::Comment);
-    let bounds = group::lacks(review.joints.iter().filter(carried), |_, _| true);
-    if groups.is_empty() && bounds.is_empty() {
-        page.heading("ASSUMED: nothing");
-        return;
-    }
-    page.heading("ASSUMED");
-    let bound = page.bound(GROUPS);
-    let everywhere = review.joints.iter().filter(|joint| joint.found()).count();
-    let at = |page: &Page, joints: &[&JointReview]| match joints.len() {
-        n if n == everywhere && n > 1 => "at every joint".to_owned(),
-        _ => format!("at {}", page.listed(marks(joints))),
-    };
-    for (text, joints) in groups.iter().take(bound) {
-        let at = at(page, joints);
-        page.line(3, &format!("{}: {at}", text.trim_end_matches('.')));
-    }
-    page.more(3, groups.len().saturating_sub(bound), "assumptions");
-    for lack in bounds.iter().take(bound) {
-        let at = at(page, &lack.joints);
-        page.line(3, &format!("on the safe side without the {} {at}", lack.what));
-        reasons(page, lack);
-    }
-    page.more(3, bounds.len().saturating_sub(bound), "things that were done without");
-}
-
-fn problems(page: &mut Page, review: &Review) {
-    let all = &review.problems;
-    if all.is_empty() {
-        page.heading("PROBLEMS in model and schedule: none");
-        return;
-    }
-    page.heading(&format!("PROBLEMS in model and schedule: {}", all.len()));
-    list_problems(page, review);
-}
-
-/// The problems, each with its place.
-pub(super) fn list_problems(page: &mut Page, review: &Review) {
-    let bound = page.bound(PROBLEMS);
-    for problem in review.problems.iter().take(bound) {
-        match &problem.at {
-            Some(at) => page.line(3, &format!("{at} {}", problem.message)),
-            None => page.line(3, &problem.message),
-        }
-    }
-    page.more(3, review.problems.len().saturating_sub(bound), "problems");
 }

@@ -1,161 +1,34 @@
 //! Loads `rules/` (embedded, a folder may override single files); nothing else reads it.
 
-use crate::origin::{Known, Missing};
-use crate::units::{Area, Length, Modulus, Stress};
+mod bolts;
+mod catalogue;
+mod error;
+mod load;
+mod names;
+mod section;
+mod steel;
+mod tables;
+mod vocabulary;
 
-/// A steel grade of a product standard: "S355". Sub-grades do not change its strength and are dropped.
-#[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
-pub struct Grade(pub String);
+use std::collections::BTreeMap;
+use std::sync::OnceLock;
 
-/// f_y and f_u of a part.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub struct Strength {
-    /// f_y.
-    pub f_y: Stress,
-    /// f_u.
-    pub f_u: Stress,
-}
+pub use error::RuleError;
+pub use tables::{
+    Annex, BoltClass, BoltSize, Clearance, Grade, ModeOne, RowForces, Section, Settings, Strength, Tolerances,
+    WeldRules,
+};
 
-/// A doubly symmetric I or H section: sizes and what follows from them.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Section {
-    /// The designation in the catalogue's spelling, or the model's own name.
-    pub designation: String,
-    /// Overall depth.
-    pub h: Length,
-    /// Flange width.
-    pub b: Length,
-    /// Web thickness.
-    pub t_w: Length,
-    /// Flange thickness.
-    pub t_f: Length,
-    /// Root radius; `None` if nobody states it (then resistances are a lower bound with r = 0).
-    pub r: Option<Length>,
-    /// A.
-    pub area: Area,
-    /// W_pl,y.
-    pub w_pl_y: Modulus,
-    /// W_el,y.
-    pub w_el_y: Modulus,
-    /// A_v,z of EN 1993-1-1 6.2.6(3)a: A − 2 b t_f + (t_w + 2 r) t_f, at least h_w t_w (η = 1).
-    pub a_v_z: Area,
-    /// Rolled (strength by flange thickness, if the setting says so) or welded.
-    pub rolled: bool,
-}
-
-/// A bolt size of the coarse metric series.
-#[derive(Clone, Debug, PartialEq)]
-pub struct BoltSize {
-    /// d.
-    pub d: Length,
-    /// A: gross area of the shank.
-    pub a: Area,
-    /// A_s: tensile stress area.
-    pub a_s: Area,
-    /// d_0: normal round hole of EN 1090-2.
-    pub d_0: Length,
-    /// Across flats of head and nut, ISO 4014/4032.
-    pub across_flats: Length,
-    /// Across corners that goes with it (the least that the product standard allows).
-    pub across_corners: Length,
-    /// Across flats of EN 14399 assemblies.
-    pub across_flats_preloaded: Length,
-    /// Washer: outer diameter.
-    pub washer: Length,
-    /// Washer: thickness.
-    pub washer_thickness: Length,
-    /// k: head height.
-    pub head: Length,
-    /// m: nut height.
-    pub nut: Length,
-}
-
-/// A bolt strength class.
-#[derive(Clone, Debug, PartialEq)]
-pub struct BoltClass {
-    /// "8.8".
-    pub name: String,
-    /// f_yb.
-    pub f_yb: Stress,
-    /// f_ub.
-    pub f_ub: Stress,
-    /// α_v with the thread in the shear plane.
-    pub alpha_v: f64,
-}
-
-/// Partial factors with their source.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Annex {
-    /// Its name: "recommended values".
-    pub name: String,
-    /// γ_M0.
-    pub gamma_m0: f64,
-    /// γ_M1.
-    pub gamma_m1: f64,
-    /// γ_M2.
-    pub gamma_m2: f64,
-    /// Where the values come from.
-    pub source: String,
-}
-
-/// How row forces may be distributed.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum RowForces {
-    /// EN 1993-1-8 6.2.7.2(9): beyond 1.9 F_t,Rd in a row the lower rows are limited in proportion to their lever arm.
-    LinearBeyond19,
-    /// UK practice: plastic if the plate or the flange is thin enough, else linear.
-    ThinPlateOrLinear,
-}
-
-/// Which formula of Table 6.2 is used for mode 1.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum ModeOne {
-    /// Method 1.
-    Method1,
-    /// Method 2: the bolt force spread under the washer.
-    Method2,
-}
-
-/// Readings of the standard that practice is split on, and assumptions that are printed as such.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Settings {
-    /// See [`RowForces`].
-    pub row_forces: RowForces,
-    /// See [`ModeOne`].
-    pub mode_one: ModeOne,
-    /// A rolled section's strength by its flange thickness (true) or each element by its own (false).
-    pub strength_by_flange: bool,
-    /// The upper clamp of α in Figure 6.11.
-    pub alpha_max: f64,
-    /// Rows nearer to the centre of compression than this share of the supported member's depth carry shear only.
-    pub shear_only_below: f64,
-    /// Bolt tension that goes with shear: from the row's share (false) or as if fully used (true).
-    pub shear_with_full_tension: bool,
-    /// Thread in the shear plane.
-    pub thread_in_shear_plane: bool,
-    /// Limit of |N_Ed| / N_pl,Rd of the beam below which N is neglected, 6.2.7.1(2).
-    pub axial_limit: f64,
-    /// k_wc where the column's axial stress is not given.
-    pub k_wc: f64,
-}
-
-/// What counts as the same place or as touching, mm.
-#[derive(Clone, Debug, PartialEq)]
-pub struct Tolerances {
-    /// Positions nearer than this are the same position.
-    pub position: Length,
-    /// Faces nearer than this touch.
-    pub touch: Length,
-    /// Sizes nearer than this are equal (float noise, rounding of an export).
-    pub size: Length,
-    /// Directions within this angle are parallel, degrees.
-    pub angle: f64,
-    /// Utilisation above 1 by less than this is still met (rounding of inputs); 0 unless edited.
-    pub utilisation: f64,
-}
+use crate::origin::Known;
+use crate::units::Length;
+use bolts::Bolts;
+use catalogue::Catalogue;
+use load::{EMBEDDED, RuleFile};
+use steel::Steel;
+use vocabulary::Vocabulary;
 
 /// Everything under `rules/`.
-#[derive(Debug)]
+#[derive(Clone, Debug)]
 pub struct Rulebook {
     /// Partial factors.
     pub annex: Annex,
@@ -167,37 +40,155 @@ pub struct Rulebook {
     pub bolt_sizes: Vec<BoltSize>,
     /// Bolt classes.
     pub bolt_classes: Vec<BoltClass>,
+    /// α_v with the shank in the shear plane, whatever the class; EN 1993-1-8:2005 Table 3.4.
+    pub alpha_v_shank: f64,
+    /// Hole clearances by bolt diameter.
+    pub clearances: Vec<Clearance>,
+    /// Rules for fillet welds.
+    pub welds: WeldRules,
+    annexes: Vec<(String, Annex)>,
+    steel: Steel,
+    catalogue: Catalogue,
+    vocabulary: Vocabulary,
 }
 
 impl Rulebook {
-    /// The catalogue section of that name in any of its usual spellings.
-    pub fn section(&self, name: &str) -> Option<&Section> {
-        let _ = name;
-        None
+    /// The rules as the program carries them.
+    ///
+    /// # Panics
+    /// If the embedded files are not valid; they are part of the program, and a test loads them.
+    pub fn embedded() -> Self {
+        static RULES: OnceLock<Rulebook> = OnceLock::new();
+        let load = || Self::with_overrides::<&str, &str>(&[]).expect("the embedded rule files are valid");
+        RULES.get_or_init(load).clone()
     }
 
-    /// The grade that a material string names: `S355JR`, `STEEL/S235JR`, `S 235 JR`, `S355JO`.
+    /// The embedded rules, with the given files (name inside the rule folder with `/`, text) in place of those of the
+    /// same name. New files may come under `annexes/` and `sections/`.
+    ///
+    /// # Errors
+    /// [`RuleError`] with the file and the place: unknown file, unknown or missing key, value out of its range.
+    pub fn with_overrides<N: AsRef<str>, T: AsRef<str>>(files: &[(N, T)]) -> Result<Self, RuleError> {
+        let mut all: BTreeMap<&str, &str> = EMBEDDED.iter().copied().collect();
+        for (name, text) in files {
+            let (name, text) = (name.as_ref(), text.as_ref().trim_start_matches('\u{feff}'));
+            let new = [("annexes/", ".toml"), ("sections/", ".csv")];
+            let allowed = |(folder, ending): &(&str, &str)| {
+                let stem = name.strip_prefix(folder).and_then(|rest| rest.strip_suffix(ending));
+                stem.is_some_and(|stem| !stem.is_empty() && !stem.contains('/'))
+            };
+            if !all.contains_key(name) && !new.iter().any(allowed) {
+                let names: Vec<_> = EMBEDDED.iter().map(|(name, _)| *name).filter(|name| !name.contains('/')).collect();
+                let message =
+                    format!("no such rule file; allowed is {}, annexes/*.toml, sections/*.csv", names.join(", "));
+                return Err(RuleError::new(name, text, None, message));
+            }
+            all.insert(name, text);
+        }
+        Self::load(&all)
+    }
+
+    fn load(files: &BTreeMap<&str, &str>) -> Result<Self, RuleError> {
+        // Every name asked for is in EMBEDDED, so an empty text never comes to be read.
+        let file = |name: &'static str| RuleFile { name, text: files.get(name).copied().unwrap_or_default() };
+        let of = |folder: &'static str| {
+            files.iter().filter(move |(name, _)| name.starts_with(folder)).map(|(name, text)| RuleFile { name, text })
+        };
+        let (settings, chosen) = file("detailing.toml").settings()?;
+        let mut annexes = Vec::new();
+        for annex in of("annexes/") {
+            let id = annex.name.trim_start_matches("annexes/").trim_end_matches(".toml").to_owned();
+            annexes.push((id, annex.annex()?));
+        }
+        let Some((_, annex)) = annexes.iter().find(|(id, _)| id == chosen.get_ref()) else {
+            let ids: Vec<_> = annexes.iter().map(|(id, _)| format!("\"{id}\"")).collect();
+            let message = format!("annex = \"{}\"; allowed is {}", chosen.get_ref(), ids.join(", "));
+            return Err(file("detailing.toml").error(&chosen, message));
+        };
+        let mut catalogue = Catalogue::default();
+        for sections in of("sections/") {
+            catalogue.add(sections)?;
+        }
+        let bolts = Bolts::load(file("bolts.toml"))?;
+        Ok(Self {
+            annex: annex.clone(),
+            settings,
+            tolerances: file("tolerances.toml").tolerances()?,
+            bolt_sizes: bolts.sizes,
+            bolt_classes: bolts.classes,
+            alpha_v_shank: bolts.alpha_v_shank,
+            clearances: bolts.clearances,
+            welds: file("welds.toml").welds()?,
+            annexes,
+            steel: Steel::load(file("steel.toml"))?,
+            catalogue,
+            vocabulary: Vocabulary::load(file("vocabulary.toml"))?,
+        })
+    }
+
+    /// The annexes there are: the names by which [`Rulebook::use_annex`] and `detailing.toml` choose.
+    pub fn annexes(&self) -> impl Iterator<Item = &str> {
+        self.annexes.iter().map(|(id, _)| id.as_str())
+    }
+
+    /// Takes the partial factors of another annex.
+    ///
+    /// # Errors
+    /// A sentence with the annexes there are.
+    pub fn use_annex(&mut self, id: &str) -> Result<(), String> {
+        let Some((_, annex)) = self.annexes.iter().find(|(known, _)| known == id) else {
+            let known: Vec<_> = self.annexes().collect();
+            return Err(format!("annex \"{id}\"; allowed is {}", known.join(", ")));
+        };
+        self.annex = annex.clone();
+        Ok(())
+    }
+
+    /// The catalogue section of that name in any of its usual spellings, also inside a longer name that holds just
+    /// this one designation; `None` where the name holds none, two, or one of another family or series.
+    ///
+    /// Its properties are computed from its sizes ([`Section::from_sizes`]), not taken from the printed table.
+    pub fn section(&self, name: &str) -> Option<&Section> {
+        self.catalogue.find(name).map(|(section, _)| section)
+    }
+
+    /// The table and edition that a catalogue section's sizes come from: "EN 10365:2017".
+    pub fn section_source(&self, name: &str) -> Option<&str> {
+        self.catalogue.find(name).map(|(_, source)| source.as_str())
+    }
+
+    /// Every catalogue section, in a fixed order.
+    pub fn sections(&self) -> impl Iterator<Item = &Section> {
+        self.catalogue.all().map(|(section, _)| section)
+    }
+
+    /// The grade that a material string names: `S355JR`, `STEEL/S235JR`, `S 235 JR`, `S355JO`, `1.0577`, `St 52-3`;
+    /// `None` where it names none, or two that differ.
     pub fn grade(&self, text: &str) -> Option<Grade> {
-        let _ = text;
-        None
+        self.steel.grade(text).map(|(grade, _)| grade)
+    }
+
+    /// Where [`Rulebook::grade`] reads an old or other name: which one, as what, and on whose word.
+    pub fn grade_note(&self, text: &str) -> Option<String> {
+        self.steel.grade(text).and_then(|(_, note)| note)
     }
 
     /// f_y and f_u of a grade at a thickness (the table's edition in the origin).
     ///
     /// # Errors
-    /// [`Missing`] if the grade or the thickness is outside the table.
+    /// [`Missing`](crate::origin::Missing) if the grade or the thickness is outside the table.
     pub fn strength(&self, grade: &Grade, thickness: Length) -> Known<Strength> {
-        Err(Missing {
-            what: "steel strength".into(),
-            reason: format!("{} at {thickness} is in no table", grade.0),
-            at: None,
-        })
+        self.steel.strength(grade, thickness)
+    }
+
+    /// The name of the strength table in use.
+    pub fn steel_table(&self) -> &str {
+        &self.steel.table
     }
 
     /// β_w of a grade, EN 1993-1-8 Table 4.1.
     pub fn beta_w(&self, grade: &Grade) -> Option<f64> {
-        let _ = grade;
-        None
+        self.welds.beta_w.get(&grade.0).copied()
     }
 
     /// The bolt size of a nominal diameter.
@@ -205,14 +196,33 @@ impl Rulebook {
         self.bolt_sizes.iter().find(|size| (size.d - d).abs().get() < 0.05)
     }
 
+    /// The hole clearances of a bolt diameter.
+    pub fn clearance(&self, d: Length) -> Option<&Clearance> {
+        self.clearances.iter().find(|clearance| d <= clearance.up_to)
+    }
+
     /// The bolt class of that name.
     pub fn bolt_class(&self, name: &str) -> Option<&BoltClass> {
         self.bolt_classes.iter().find(|class| class.name == name)
     }
 
-    /// The bolt class that a text names: `M20 x 60 8.8`, `10.9 HV`; `None` where it names none or two.
+    /// The bolt class that a text names: `M20 x 60 8.8`, `10.9 HV`, `8,8`; `None` where it names none or two.
     pub fn class_in(&self, text: &str) -> Option<String> {
-        let _ = text;
-        None
+        let mut named = names::bare_numbers(text);
+        named.retain(|number| self.bolt_class(number).is_some());
+        named.dedup();
+        if named.len() == 1 { named.pop() } else { None }
+    }
+
+    /// Whether a word (a property's name, a column's heading) stands for a concept, without regard to case, spaces,
+    /// punctuation and diacritics. Concepts: "mark", "bolt-diameter", "bolt-length", "bolt-class", "hole-diameter",
+    /// "weld-throat", "weld-leg", "weld-length", "grade", "section", "thickness"; any other has no words.
+    pub fn means(&self, concept: &str, word: &str) -> bool {
+        self.vocabulary.means(concept, word)
+    }
+
+    /// The words of a concept, normalised and sorted.
+    pub fn vocabulary(&self, concept: &str) -> impl Iterator<Item = &str> {
+        self.vocabulary.words(concept)
     }
 }

@@ -3,11 +3,33 @@
 //! All lengths are mm, in one right-handed world frame with z up; [`Steelwork::origin`] has been taken off, so that
 //! coordinates of a map grid lose no digits.
 
+mod bolt;
+mod bolt_name;
+mod curve;
+mod material;
+mod member;
+mod outline;
+mod placement;
+mod plate;
+mod profile;
+mod properties;
+mod reading;
+mod relation;
+mod section;
+mod shank;
+mod solid;
+mod statement;
+mod take_up;
+mod units;
+mod weld;
+mod words;
+
+pub use take_up::take_up;
+
 use glam::{DVec2, DVec3};
 
-use crate::exchange::Exchange;
 use crate::origin::{Known, Place, Problem};
-use crate::rulebook::{Grade, Rulebook, Section};
+use crate::rulebook::{Grade, Section};
 use crate::units::Length;
 
 /// Everything of the exchange that can bear on a joint.
@@ -223,10 +245,4 @@ impl Steelwork {
             Part::Weld(i) => &self.welds[i].identity,
         }
     }
-}
-
-/// Takes up the steelwork of an exchange.
-pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
-    let _ = (exchange, rulebook);
-    Steelwork::default()
 }

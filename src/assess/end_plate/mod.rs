@@ -70,8 +70,8 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
             .push(format!("k_wc = {}: the column's axial stress is not stated (6.2.6.2(2))", rulebook.settings.k_wc));
         noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
-        if two_sided && demands.is_empty() {
-            noted.assumptions.push("β = 2, its upper bound: the moments of both sides are not stated".into());
+        if two_sided {
+            noted.assumptions.push("β = 2, its upper bound, where the moments of both sides are not stated".into());
         }
         let turned = n.upside_down();
         let solve = |sense: Sense, beta: f64| match sense {
@@ -93,7 +93,6 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
         };
         assessment.hogging = at_rest(Sense::Hogging, &mut noted);
         assessment.sagging = at_rest(Sense::Sagging, &mut noted);
-        assessment.shear = Some(shear::resistance(n, assessment.hogging.as_ref(), 1.0, rulebook));
         let n_pl = n.beam.area * n.beam_strength.f_y_flange / rulebook.annex.gamma_m0;
         let lower_bound = noted.gaps.iter().any(|gap| matches!(gap, Gap::LowerBound(_)));
         let context = Cases { n, rulebook, n_pl, lower_bound, solve: &solve };
@@ -101,6 +100,8 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
             assessment.cases.push(context.result(case, demand));
         }
         govern(&mut assessment, demands);
+        let tension = assessment.hogging.as_ref().or(assessment.sagging.as_ref());
+        assessment.shear = Some(shear::resistance(n, tension, 1.0, rulebook));
     } else {
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None, shear: None });
@@ -214,7 +215,7 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
                 about: About::Axial,
                 state: State::Met,
                 required: Some(n.kn()),
-                resistance: None,
+                resistance: Some(limit),
                 unit: "kN",
                 utilisation: None,
                 governed_by: format!("within {:.0} % of N_pl,Rd, neglected by 6.2.7.1(2)", 100.0 * self.rulebook.settings.axial_limit),
@@ -224,7 +225,7 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
                 about: About::Axial,
                 state: State::Unproven,
                 required: stated.map(|n| n.kn()),
-                resistance: None,
+                resistance: Some(limit),
                 unit: "kN",
                 utilisation: None,
                 governed_by: String::new(),

@@ -63,6 +63,11 @@ impl<'a> Head<'a> {
         Ok(head)
     }
 
+    /// Whether it stands for an entity that is defined elsewhere.
+    pub fn is_reference(&self) -> bool {
+        self.reference.is_some() || self.elsewhere.is_some()
+    }
+
     fn position(&self, text: &str, problems: &mut Problems) -> Option<Pos> {
         let mut numbers = text.split_whitespace().map(str::parse::<u32>);
         let pos = match (numbers.next(), numbers.next(), numbers.next()) {

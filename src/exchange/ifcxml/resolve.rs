@@ -2,8 +2,8 @@
 
 use std::collections::HashSet;
 
-use super::super::{Exchange, Id, Value};
-use super::{Link, Parser, WAITING};
+use super::super::{Exchange, Id, Value, conform};
+use super::parser::{Link, Parser, WAITING};
 
 pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
     let targets: Vec<Option<Id>> = parser.waiting.iter().map(|w| parser.labels.get(&w.label).copied()).collect();
@@ -26,6 +26,7 @@ pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
     for group in links.chunk_by(|a, b| (a.relation, a.attribute) == (b.relation, b.attribute)) {
         fill_in(&mut parser, group);
     }
+    conform::check(&parser.entities, &mut parser.problems);
     Exchange { form, entities: parser.entities, problems: parser.problems.finish() }
 }
 

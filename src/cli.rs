@@ -1,0 +1,175 @@
+//! Commands and their arguments; the only place that touches files, environment and terminal.
+
+mod failure;
+mod inputs;
+mod output;
+mod rules;
+
+use std::path::PathBuf;
+use std::process::ExitCode;
+
+use clap::{Args, CommandFactory, Parser, Subcommand, ValueEnum};
+use faying::report::{json, survey, text};
+use faying::review::Review;
+use faying::run;
+
+use failure::Failure;
+use inputs::Given;
+use output::{Colour, Output};
+
+const EXIT_CODES: &str = "\
+Exit codes:
+  0  every joint is clear, or deviates and carries (a comment)
+  1  at least one joint is on hold: it does not carry what is required, or it is not there
+  2  wrong use, or an input that can't be read
+  3  nothing is on hold, but something could not be proven (or no joint was found at all)
+
+An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
+
+const SURVEY_EXIT_CODES: &str = "\
+Exit codes:
+  0  the model was read, whatever was found in it
+  2  wrong use, or an input that can't be read
+
+An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
+
+/// Lays a steel shop model on the engineer's joint schedule and says which joints do not carry what is required.
+///
+/// Reads the fabricator's shop model, finds the bolted joints, computes their resistance to EN 1993-1-8 from what was
+/// detailed, and compares it with the actions that the schedule requires. What could not be checked is said, never
+/// passed over.
+#[derive(Debug, Parser)]
+#[command(name = "faying", version, after_help = EXIT_CODES, max_term_width = 100)]
+struct Cli {
+    #[command(subcommand)]
+    command: Command,
+}
+
+#[derive(Debug, Subcommand)]
+enum Command {
+    /// Review the joints of a shop model against the schedule.
+    ///
+    /// Lists what is on hold first, then what could not be proven, what is missing and what deviates but carries.
+    #[command(after_help = EXIT_CODES)]
+    Review(ReviewArgs),
+    /// Say what was recognised in a shop model and what is missing for a full assessment.
+    ///
+    /// Needs no schedule; ends with what to ask the fabricator for.
+    #[command(after_help = SURVEY_EXIT_CODES)]
+    Survey(SurveyArgs),
+    /// List the rules, or print the page of one: what it finds, why it matters, what to do.
+    Rules {
+        /// The rule's id, as it stands before a finding: plate-thinner.
+        id: Option<String>,
+    },
+    /// Print the completions of a shell, to be put where that shell looks for them.
+    Completions {
+        /// The shell.
+        shell: clap_complete::Shell,
+    },
+}
+
+#[derive(Debug, Args)]
+struct ReviewArgs {
+    /// The shop model (.ifcxml, .ifc, .ifczip), or a folder that holds one model and its schedule.
+    ///
+    /// In a folder the schedule is called schedule.csv or schedule.toml, or both. Subfolders are not looked at.
+    path: PathBuf,
+    /// The engineer's schedule (.csv or .toml); may be given more than once. The folder's own is then not used.
+    #[arg(long, value_name = "FILE")]
+    schedule: Vec<PathBuf>,
+    /// Let the exit code be 0 where something is unproven and nothing is on hold.
+    #[arg(long)]
+    allow_unproven: bool,
+    #[command(flatten)]
+    common: Common,
+}
+
+#[derive(Debug, Args)]
+struct SurveyArgs {
+    /// The shop model (.ifcxml, .ifc, .ifczip), or a folder that holds one.
+    #[arg(value_name = "MODEL")]
+    path: PathBuf,
+    #[command(flatten)]
+    common: Common,
+}
+
+#[derive(Debug, Args)]
+struct Common {
+    /// A folder of rule files that stand in for the built-in ones of the same name.
+    #[arg(long, value_name = "FOLDER")]
+    rules: Option<PathBuf>,
+    /// How to write the report.
+    #[arg(long, value_enum, default_value_t = Format::Text)]
+    format: Format,
+    /// Write the report to a file, whole or not at all.
+    #[arg(short, long, value_name = "FILE")]
+    output: Option<PathBuf>,
+    /// Whether to colour the text; auto colours on a terminal unless NO_COLOR is set.
+    #[arg(long, value_enum, default_value_t = Colour::Auto, value_name = "WHEN")]
+    color: Colour,
+    /// Write long lists out in full.
+    #[arg(long)]
+    all: bool,
+}
+
+#[derive(Clone, Copy, Debug, PartialEq, Eq, ValueEnum)]
+enum Format {
+    /// For people.
+    Text,
+    /// For programs: one document with a schema and a version.
+    Json,
+}
+
+/// Runs the command line and gives the exit code.
+pub fn main() -> ExitCode {
+    let done = match Cli::parse().command {
+        Command::Review(args) => review(&args),
+        Command::Survey(args) => survey(&args),
+        Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::to_stdout(&text)).map(|()| 0),
+        Command::Completions { shell } => completions(shell).map(|()| 0),
+    };
+    ExitCode::from(done.unwrap_or_else(|failure| failure.tell()))
+}
+
+fn review(args: &ReviewArgs) -> Result<u8, Failure> {
+    let draw = |review: &Review, output: &Output, model: &[u8]| match args.common.format {
+        Format::Text => Ok(text::render(review, &output.options(args.common.all), Some(model))),
+        Format::Json => json::review(review),
+    };
+    let review = report(&args.path, Some(&args.schedule), &args.common, draw)?;
+    Ok(match review.exit_code() {
+        3 if args.allow_unproven => 0,
+        code => code,
+    })
+}
+
+fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
+    let draw = |review: &Review, output: &Output, _: &[u8]| match args.common.format {
+        Format::Text => Ok(survey::render(review, &output.options(args.common.all))),
+        Format::Json => json::survey(review),
+    };
+    report(&args.path, None, &args.common, draw).map(|_| 0)
+}
+
+/// Reads, runs, draws and writes; `schedules` is `None` where none is wanted, not even the folder's own.
+fn report(
+    path: &std::path::Path,
+    schedules: Option<&[PathBuf]>,
+    common: &Common,
+    draw: impl FnOnce(&Review, &Output, &[u8]) -> serde_json::Result<String>,
+) -> Result<Review, Failure> {
+    let given = Given::gather(path, schedules, common.rules.as_deref())?;
+    // Before the work is done, so that nobody waits for a report that can't be written.
+    let output = Output::open(common.output.as_deref(), common.color, &given.paths)?;
+    let review = run::run(&given.inputs())?;
+    let drawn = draw(&review, &output, &given.model.bytes).map_err(|why| Failure::because("can't write JSON", why))?;
+    output.write(&drawn)?;
+    Ok(review)
+}
+
+fn completions(shell: clap_complete::Shell) -> Result<(), Failure> {
+    let mut script = Vec::new();
+    clap_complete::generate(shell, &mut Cli::command(), "faying", &mut script);
+    output::to_stdout(&String::from_utf8_lossy(&script))
+}

@@ -1,0 +1,393 @@
+//! What each element means: an entity, an attribute of one, an item of a list, or nothing known.
+
+use std::borrow::Cow;
+use std::collections::HashMap;
+
+use super::super::problems::{Problems, Spot};
+use super::super::scalar;
+use super::super::schema::{Attribute, Base, ClassId, Kind, Schema};
+use super::super::{Entities, Id, Value};
+use super::DEEPEST;
+use super::head::{Head, Pos};
+use super::slot::{Slot, Target, stray_text, untyped};
+
+/// Ids from here on stand for references whose target had not been read yet.
+pub(super) const WAITING: u32 = 1 << 31;
+
+/// What an open element is.
+enum Frame {
+    Document,
+    Entity(Open),
+    Slot(Slot),
+}
+
+/// An entity whose element is open.
+struct Open {
+    id: Id,
+    class: ClassId,
+    values: Vec<Value>,
+    extras: Vec<(Box<str>, Value)>,
+}
+
+/// A reference whose target had not been read yet.
+pub(super) struct Waiting {
+    pub label: Box<str>,
+    pub spot: Spot,
+}
+
+/// A relation that stands inside `parent` by its inverse name, or is referred to there.
+pub(super) struct Link {
+    pub relation: Id,
+    pub attribute: &'static str,
+    pub parent: Id,
+    pub spot: Spot,
+}
+
+pub(super) struct Parser {
+    schema: &'static Schema,
+    pub entities: Entities,
+    pub labels: HashMap<Box<str>, Id>,
+    pub waiting: Vec<Waiting>,
+    pub links: Vec<Link>,
+    pub problems: Problems,
+    stack: Vec<Frame>,
+    /// How many open elements are passed over.
+    skipping: usize,
+}
+
+impl Parser {
+    pub fn new(entities: Entities, problems: Problems) -> Self {
+        Self {
+            schema: Schema::ifc4(),
+            entities,
+            labels: HashMap::new(),
+            waiting: Vec::new(),
+            links: Vec::new(),
+            problems,
+            stack: Vec::new(),
+            skipping: 0,
+        }
+    }
+
+    /// Whether the open element is passed over with all that it holds.
+    pub fn is_skipping(&self) -> bool {
+        self.skipping > 0
+    }
+
+    /// Passes over one more element.
+    pub fn skip(&mut self) {
+        self.skipping += 1;
+    }
+
+    /// Whether no element is open.
+    pub fn is_done(&self) -> bool {
+        self.stack.is_empty() && self.skipping == 0
+    }
+
+    /// The document element starts.
+    pub fn start_document(&mut self) {
+        self.stack.push(Frame::Document);
+    }
+
+    /// An element starts; exactly one [`Parser::end`] follows it.
+    pub fn start(&mut self, head: Head) {
+        if self.stack.len() >= DEEPEST {
+            self.problems.add("element nested too deep", head.spot, || {
+                format!("{} is nested deeper than {DEEPEST} elements and is not read", head.name)
+            });
+            self.skip();
+        } else if head.name == "include" {
+            self.problems
+                .add("XInclude", head.spot, || "an XInclude is not followed: only this one document is read".into());
+            self.skip();
+        } else {
+            match self.stack.last() {
+                Some(Frame::Entity(open)) => {
+                    let class = open.class;
+                    self.start_attribute(head, class);
+                }
+                Some(Frame::Slot(_)) => self.start_in_slot(head),
+                Some(Frame::Document) | None => self.start_in_document(head),
+            }
+        }
+    }
+
+    fn start_in_document(&mut self, head: Head) {
+        if is_entity_name(&head.name) {
+            return self.start_item(head, Kind::ANY);
+        }
+        if head.name != "header" {
+            self.problems.add("element that is not understood", head.spot, || {
+                format!("{} is not read: entities and one header are allowed here", head.name)
+            });
+        }
+        self.skip();
+    }
+
+    /// An attribute's element inside an entity.
+    fn start_attribute(&mut self, head: Head, class: ClassId) {
+        let attributes = self.attributes(class);
+        let (target, kind) = if let Some(index) = attributes.iter().position(|a| a.name == head.name) {
+            (Target::Attribute(index), attributes[index].kind)
+        } else if let Some(inverse) = self.schema.inverse(class, &head.name) {
+            (Target::Inverse(inverse.attribute), Kind { depth: 1, ..Kind::one(Base::Entity(inverse.class)) })
+        } else {
+            self.unknown_attribute(class, &head.name, head.spot);
+            (Target::Extra(head.name.as_ref().into()), Kind::ANY)
+        };
+        if head.is_reference() {
+            self.deliver_reference(&head, target, kind);
+        } else if head.nil {
+            self.skip();
+        } else {
+            let typed = head.class.as_deref().and_then(|name| self.schema.find_type(name));
+            let slot = Slot::new(&head, target, kind);
+            if let Some((name, kind)) = typed {
+                self.stack.push(Frame::Slot(slot.typed(name, kind)));
+            } else if head.class.is_some() || head.id.is_some() || !head.rest.is_empty() {
+                self.start_direct(slot, head);
+            } else {
+                self.stack.push(Frame::Slot(slot));
+            }
+        }
+    }
+
+    /// An attribute's element that is itself the entity.
+    fn start_direct(&mut self, slot: Slot, head: Head) {
+        let class = match (slot.kind.base, &head.class) {
+            (Base::Entity(_) | Base::Select | Base::Any, Some(name)) => self.class(name, &head),
+            (Base::Entity(class), None) if !self.schema.class(class).is_some_and(|c| c.is_abstract) => class,
+            (Base::Entity(_) | Base::Select | Base::Any, None) => {
+                let class = if let Base::Entity(class) = slot.kind.base { class } else { self.entities.class_id("") };
+                self.problems.add("missing xsi:type", head.spot, || {
+                    format!("{} does not say by xsi:type which entity it is", head.name)
+                });
+                class
+            }
+            _ => {
+                for (name, _) in &head.rest {
+                    self.problems.add("unknown attribute", head.spot, || {
+                        format!("{} holds a plain value and has no attribute {name}", head.name)
+                    });
+                }
+                return self.stack.push(Frame::Slot(slot));
+            }
+        };
+        let open = self.open(class, &head);
+        self.deliver(slot.target, slot.kind, slot.pos, Value::Entity(open.id), slot.spot);
+        self.stack.push(Frame::Entity(open));
+    }
+
+    /// A child of an attribute's element: an item of it, or the sign that the element is itself the entity.
+    fn start_in_slot(&mut self, head: Head) {
+        let Some(Frame::Slot(slot)) = self.stack.last() else { return };
+        let kind = slot.kind;
+        if is_entity_name(&head.name) || head.name.ends_with("-wrapper") {
+            return self.start_item(head, kind);
+        }
+        let may_be_entity = matches!(kind.base, Base::Entity(_) | Base::Select | Base::Any)
+            && slot.items.is_empty()
+            && slot.target != Target::Item
+            && slot.typed.is_none();
+        if !may_be_entity {
+            self.problems.add("element that is not understood", head.spot, || {
+                format!("{} is not read: an entity or a wrapped value is required here", head.name)
+            });
+            return self.skip();
+        }
+        if let Some(Frame::Slot(slot)) = self.stack.pop() {
+            stray_text(&slot.text, &slot.name, slot.spot, &mut self.problems);
+            let outer = Head { name: slot.name.to_string().into(), spot: slot.spot, ..Head::default() };
+            self.start_direct(slot, outer);
+        }
+        if let Some(Frame::Entity(open)) = self.stack.last() {
+            let class = open.class;
+            self.start_attribute(head, class);
+        }
+    }
+
+    /// An entity, a reference to one, or a wrapped value, at the top of the document or in a slot of that kind.
+    fn start_item(&mut self, head: Head, kind: Kind) {
+        let (name, wrapped) = match head.name.strip_suffix("-wrapper") {
+            Some(name) => (name, true),
+            None => (head.class.as_deref().unwrap_or(&head.name), false),
+        };
+        let item = Kind { depth: 0, row: 0, ..kind };
+        if head.is_reference() {
+            self.deliver_reference(&head, Target::Item, kind);
+        } else if head.nil {
+            self.skip();
+        } else if let Some((name, typed)) = self.schema.find_type(name) {
+            let slot = Slot::new(&head, Target::Item, item);
+            self.stack.push(Frame::Slot(slot.typed(name, typed)));
+        } else if wrapped {
+            let row = name.starts_with("Seq-"); // one row of a list of lists
+            let mut slot = Slot::new(&head, Target::Item, Kind { depth: u8::from(row), ..item });
+            if !row && matches!(kind.base, Base::Select | Base::Any) {
+                self.problems.add("unknown type", head.spot, || format!("{name} is no type of the schema"));
+                slot = slot.typed(name, Kind::ANY);
+            }
+            self.stack.push(Frame::Slot(slot));
+        } else {
+            let class = self.class(name, &head);
+            let open = self.open(class, &head);
+            self.deliver(Target::Item, kind, head.pos, Value::Entity(open.id), head.spot);
+            self.stack.push(Frame::Entity(open));
+        }
+    }
+
+    /// The class of that name.
+    fn class(&mut self, name: &str, head: &Head) -> ClassId {
+        let class = self.entities.class_id(name);
+        match self.schema.class(class) {
+            None => self.problems.add("unknown entity", head.spot, || {
+                format!("{name} is no entity of the schema; it is kept, but nothing of it is understood")
+            }),
+            Some(known) if known.is_abstract => self
+                .problems
+                .add("abstract entity", head.spot, || format!("{name} is abstract: one of its subtypes is required")),
+            Some(_) => {}
+        }
+        class
+    }
+
+    /// Starts an entity with what its start tag tells.
+    fn open(&mut self, class: ClassId, head: &Head) -> Open {
+        let label = head.id.as_deref().unwrap_or_default();
+        let id = self.entities.open(class, label, head.spot);
+        if head.id.is_some() {
+            let first = *self.labels.entry(label.into()).or_insert(id);
+            if first != id {
+                let at = self.entities.get(first).place();
+                self.problems.add("id given twice", head.spot, || {
+                    format!("the id {label} is given a second time; references to it mean the one at {at}")
+                });
+            }
+        }
+        let attributes = self.attributes(class);
+        let mut open = Open { id, class, values: vec![Value::Absent; attributes.len()], extras: Vec::new() };
+        for (name, text) in &head.rest {
+            let Some(index) = attributes.iter().position(|a| a.name == name) else {
+                self.unknown_attribute(class, name, head.spot);
+                open.extras.push((name.as_ref().into(), Value::Text(text.as_ref().into())));
+                continue;
+            };
+            let kind = attributes[index].kind;
+            match scalar::parse(kind, text) {
+                Ok(value) if open.values[index] == Value::Absent => {
+                    if kind.base == Base::Select {
+                        untyped(name, head.spot, &mut self.problems);
+                    }
+                    open.values[index] = value;
+                }
+                Ok(_) => self.given_twice(class, name, head.spot),
+                Err(wrong) => {
+                    let class = self.entities.class_name(class);
+                    self.problems
+                        .add("value that is not understood", head.spot, || format!("{name} of {class} {wrong}"));
+                }
+            }
+        }
+        open
+    }
+
+    fn deliver_reference(&mut self, head: &Head, target: Target, kind: Kind) {
+        self.skip(); // content beside a reference would define the entity a second time
+        if let Some(elsewhere) = &head.elsewhere {
+            self.problems.add("reference to another document", head.spot, || {
+                format!("{} refers to {}: other documents are not read", head.name, scalar::quoted(elsewhere))
+            });
+        } else if let Some(label) = head.reference.as_deref() {
+            let id = self.labels.get(label).copied().unwrap_or_else(|| {
+                self.waiting.push(Waiting { label: label.into(), spot: head.spot });
+                Id(WAITING + (self.waiting.len() - 1) as u32)
+            });
+            self.deliver(target, kind, head.pos, Value::Entity(id), head.spot);
+        }
+    }
+
+    /// Brings a value to its target in the innermost open element.
+    fn deliver(&mut self, target: Target, kind: Kind, pos: Option<Pos>, value: Value, spot: Spot) {
+        match (self.stack.last_mut(), target) {
+            (_, _) if value == Value::Absent => {}
+            (Some(Frame::Slot(slot)), Target::Item) => slot.items.push((pos, value)),
+            (Some(Frame::Entity(open)), Target::Extra(name)) => open.extras.push((name, value)),
+            (Some(Frame::Entity(open)), Target::Inverse(attribute)) => {
+                let relations = if let Value::List(items) = value { items } else { vec![value] };
+                for relation in relations {
+                    if let Value::Entity(relation) = relation {
+                        self.links.push(Link { relation, attribute, parent: open.id, spot });
+                    }
+                }
+            }
+            (Some(Frame::Entity(open)), Target::Attribute(index)) => {
+                let held = &mut open.values[index];
+                // the element of an attribute that takes several entities may be one of them, and be repeated
+                let several = kind.depth > 0 && matches!(kind.base, Base::Entity(_) | Base::Select);
+                match (held, value) {
+                    (Value::List(items), Value::List(more)) if several => items.extend(more),
+                    (Value::List(items), value) if several => items.push(value),
+                    (held @ Value::Absent, value @ Value::Entity(_)) if several => *held = Value::List(vec![value]),
+                    (held @ Value::Absent, value) => *held = value,
+                    _ => {
+                        let class = open.class;
+                        let name = self.attributes(class)[index].name;
+                        self.given_twice(class, name, spot);
+                    }
+                }
+            }
+            _ => {}
+        }
+    }
+
+    /// Text inside the innermost open element.
+    pub fn text(&mut self, text: Cow<str>, spot: Spot) {
+        match self.stack.last_mut() {
+            Some(Frame::Slot(slot)) if slot.text.is_empty() && text.trim().is_empty() => {}
+            Some(Frame::Slot(slot)) => slot.text.push_str(&text),
+            Some(Frame::Entity(open)) => {
+                stray_text(&text, self.entities.class_name(open.class), spot, &mut self.problems);
+            }
+            Some(Frame::Document) | None => stray_text(&text, "the document", spot, &mut self.problems),
+        }
+    }
+
+    /// The innermost open element ends.
+    pub fn end(&mut self) {
+        if self.is_skipping() {
+            self.skipping -= 1;
+            return;
+        }
+        match self.stack.pop() {
+            Some(Frame::Entity(open)) => self.entities.close(open.id, open.values, open.extras),
+            Some(Frame::Slot(mut slot)) => {
+                let value = slot.value(&mut self.problems);
+                self.deliver(slot.target, slot.kind, slot.pos, value, slot.spot);
+            }
+            Some(Frame::Document) | None => {}
+        }
+    }
+
+    fn attributes(&self, class: ClassId) -> &'static [Attribute] {
+        self.schema.class(class).map_or(&[], |c| &c.attributes)
+    }
+
+    fn unknown_attribute(&mut self, class: ClassId, name: &str, spot: Spot) {
+        if self.schema.class(class).is_some() {
+            let class = self.entities.class_name(class);
+            self.problems.add("unknown attribute", spot, || format!("{class} has no attribute {name}"));
+        }
+    }
+
+    fn given_twice(&mut self, class: ClassId, name: &str, spot: Spot) {
+        let class = self.entities.class_name(class);
+        self.problems.add("attribute given twice", spot, || {
+            format!("{name} of {class} is given more than once; the first is kept")
+        });
+    }
+}
+
+/// Entities and types begin with Ifc, attributes never do.
+fn is_entity_name(name: &str) -> bool {
+    name.get(..3).is_some_and(|start| start.eq_ignore_ascii_case("ifc"))
+}

@@ -1,0 +1,232 @@
+//! Bolts: one for each shank, however the exchange grouped them, and what is no bolt although it is a fastener.
+
+use super::Bolt;
+use super::bolt_name::size_in;
+use super::material::said_by;
+use super::properties::{Plausible, Property};
+use super::reading::Reading;
+use super::section::see;
+use super::shank::{Cluster, round, small_part};
+use super::solid::Prism;
+use super::statement::{Statement, first_text};
+use super::words::{Word, says};
+use crate::exchange::Entity;
+use crate::origin::{Datum, Known, Missing, Origin};
+use crate::units::{Length, mm};
+
+/// Nominal diameters that a bolt may have, mm (M8 to M72).
+const DIAMETERS: (f64, f64) = (8.0, 72.0);
+/// A "bolt" drawn this much thicker than it is said to be is a hole pattern.
+const HOLE_PATTERN: f64 = 1.5;
+impl<'a> Reading<'a> {
+    /// Whether a part is to be looked at as a fastener: by class, or by name and a round shank.
+    pub fn may_be_bolt(&self, element: Entity<'a>, prisms: &[&Prism]) -> bool {
+        element.is_a("IfcMechanicalFastener")
+            || (matches!(self.called(element), Some(Word::Bolt | Word::Anchor)) && prisms.iter().any(|p| round(p)))
+    }
+
+    /// What the first of its names that says anything calls a fastener; bolt wins within one name.
+    pub fn called(&self, element: Entity<'a>) -> Option<Word> {
+        let words = [Word::Anchor, Word::Bolt, Word::Nut, Word::Washer, Word::Stud, Word::Screw];
+        self.names_of(element).into_iter().find_map(|(_, text)| words.into_iter().find(|word| says(text, *word)))
+    }
+
+    /// Why a fastener is none of the bolts that hold a joint, by its type or name.
+    pub fn no_bolt(&self, element: Entity<'a>) -> Option<String> {
+        match self.predefined(element).filter(|_| element.is_a("IfcMechanicalFastener")) {
+            None | Some("BOLT" | "USERDEFINED" | "NOTDEFINED") => {}
+            Some("ANCHORBOLT") => return Some("anchor bolt: not assessed".into()),
+            Some(other) => return Some(format!("a fastener of the type {other} is no bolt")),
+        }
+        match self.called(element)? {
+            Word::Nut => Some("nut".into()),
+            Word::Washer => Some("washer".into()),
+            Word::Anchor => Some("anchor bolt: not assessed".into()),
+            Word::Stud => Some("called a stud: no bolt".into()),
+            Word::Screw => Some("called a screw, nail, rivet or dowel: no bolt".into()),
+            _ => None,
+        }
+    }
+
+    /// The bolts of a fastener.
+    ///
+    /// # Errors
+    /// Why it holds none, readable.
+    pub fn bolts(&self, element: Entity<'a>, prisms: &[&Prism]) -> Result<Vec<Bolt>, String> {
+        if let Some(reason) = self.no_bolt(element).or_else(|| small_part(prisms)) {
+            return Err(reason);
+        }
+        let clusters = self.clusters(prisms);
+        let shanks: Vec<&Prism> = clusters.iter().filter_map(Cluster::shank).collect();
+        if shanks.is_empty() {
+            return Err("its body has no round shank longer than its diameter".into());
+        }
+        if shanks.len() < clusters.len() {
+            let left = clusters.len() - shanks.len();
+            self.problem(
+                element,
+                format!("{left} of its {} solids apart have no round shank and are no bolts", clusters.len()),
+            );
+        }
+        let properties = self.properties_of(element);
+        let stated = self.diameters(element, &properties);
+        let length = self.length(element, &properties);
+        let class = self.class(element, &properties);
+        let hole = self.hole(element, &properties);
+        let mut bolts = Vec::new();
+        for shank in shanks {
+            let drawn = 2.0 * shank.profile.outer.circle.map_or(f64::NAN, |(_, r)| r);
+            let diameter = self.diameter(element, &stated, drawn)?;
+            let d = diameter.value.get();
+            if !(d >= DIAMETERS.0 && d <= DIAMETERS.1) {
+                return Err(format!("{d:.1} mm is no bolt diameter ({} to {} mm)", DIAMETERS.0, DIAMETERS.1));
+            }
+            let longest = length.as_ref().map_or(shank.depth, |l| l.value.get().max(shank.depth));
+            if !(longest >= d) {
+                return Err(format!("it is {longest:.1} mm long, shorter than its diameter of {d:.1} mm: no bolt"));
+            }
+            let middle = see(&shank.profile).bounds.centre;
+            bolts.push(Bolt {
+                identity: self.identity(element),
+                start: shank.at(middle, 0.0),
+                end: shank.at(middle, shank.depth),
+                diameter: Ok(diameter),
+                length: length.clone(),
+                class: class.clone(),
+                hole,
+            });
+        }
+        Ok(bolts)
+    }
+
+    /// All that is said of the diameter: attributes, properties, names.
+    fn diameters(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Vec<Statement<f64>> {
+        let mut all = self.attribute_lengths(element, "NominalDiameter");
+        all.extend(self.property_lengths(element, properties, Plausible(5.0, 100.0), |p| {
+            p.name == "NominalDiameter" || p.name == "ThreadDiameter" || self.rulebook.means("bolt-diameter", p.name)
+        }));
+        for (by, text) in self.names_of(element) {
+            all.extend(size_in(text).map(|(d, _)| Statement {
+                value: d,
+                by: format!("{by} \"{text}\""),
+                at: element.place(),
+            }));
+        }
+        all
+    }
+
+    /// The diameter by statements and geometry. Where they disagree the smaller one is taken, which carries less.
+    fn diameter(&self, element: Entity<'a>, stated: &[Statement<f64>], drawn: f64) -> Result<Datum<Length>, String> {
+        let Some(least) = stated.iter().min_by(|a, b| a.value.total_cmp(&b.value)) else {
+            let how = format!("diameter of the modelled shank of the fastener at {}", element.place());
+            return Ok(Datum::new(mm(drawn), Origin::Derived(how)));
+        };
+        if drawn > HOLE_PATTERN * least.value {
+            return Err(format!(
+                "it is drawn {drawn:.1} mm thick but {} says {:.1} mm: a hole pattern, no bolt",
+                least.by, least.value
+            ));
+        }
+        let tolerance = self.rulebook.tolerances.size.get().max(0.02 * least.value);
+        let differs = |value: f64| !((value - least.value).abs() <= tolerance);
+        let mut others: Vec<String> =
+            stated.iter().filter(|s| differs(s.value)).map(|s| format!("{} says {:.1} mm", s.by, s.value)).collect();
+        if differs(drawn) {
+            others.push(format!("its shank is drawn {drawn:.1} mm thick"));
+        }
+        if others.is_empty() {
+            let first = stated.first().unwrap_or(least);
+            return Ok(Datum::new(mm(first.value), first.origin(&self.fastener(element))));
+        }
+        if drawn < least.value - tolerance {
+            self.problem(
+                element,
+                format!(
+                    "Bolt diameter: {} says {:.1} mm, but {}; the smaller, {drawn:.1} mm, is taken.",
+                    least.by,
+                    least.value,
+                    others.join(", ")
+                ),
+            );
+            return Ok(Datum::new(
+                mm(drawn),
+                Origin::Derived("diameter of the modelled shank, the smaller of two that disagree".into()),
+            ));
+        }
+        self.problem(
+            element,
+            format!(
+                "Bolt diameter: {} says {:.1} mm, but {}; the smaller, {:.1} mm, is taken.",
+                least.by,
+                least.value,
+                others.join(", "),
+                least.value
+            ),
+        );
+        Ok(Datum::new(mm(least.value), least.origin(&self.fastener(element))))
+    }
+
+    fn fastener(&self, element: Entity<'a>) -> String {
+        format!("fastener \"{}\"", element.text("Name").unwrap_or_else(|| element.label()))
+    }
+
+    fn length(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Known<Length> {
+        let mut all = self.attribute_lengths(element, "NominalLength");
+        all.extend(self.property_lengths(element, properties, Plausible(10.0, 3000.0), |p| {
+            p.name == "NominalLength" || self.rulebook.means("bolt-length", p.name)
+        }));
+        for (by, text) in self.names_of(element) {
+            let length = size_in(text).and_then(|(_, length)| length);
+            all.extend(length.map(|value| Statement { value, by: format!("{by} \"{text}\""), at: element.place() }));
+        }
+        let missing = |reason: String| Missing { what: "bolt length".into(), reason, at: Some(element.place()) };
+        let Some(first) = all.first() else {
+            return Err(missing("no attribute, property or name of the fastener states one".into()));
+        };
+        match all.iter().find(|s| !((s.value - first.value).abs() <= 1.0)) {
+            Some(other) => Err(missing(format!(
+                "{} says {:.1} mm, {} says {:.1} mm",
+                first.by, first.value, other.by, other.value
+            ))),
+            None => Ok(Datum::new(mm(first.value), first.origin(&self.fastener(element)))),
+        }
+    }
+
+    /// The strength class: materials, names and properties are all asked; two that disagree are none.
+    fn class(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Known<String> {
+        let mut texts = self.material_texts(element);
+        texts.extend(first_text(self.names_of(element), element));
+        texts.extend(properties.iter().filter(|p| self.rulebook.means("bolt-class", p.name)).filter_map(said_by));
+        let mut found = texts.iter().filter_map(|said| Some((said, self.rulebook.class_in(&said.text)?)));
+        let missing = |reason: String| Missing { what: "bolt class".into(), reason, at: Some(element.place()) };
+        let Some((witness, class)) = found.next() else {
+            return Err(missing("no material, name or property of the bolts states one".into()));
+        };
+        if let Some((other, named)) = found.find(|(_, named)| *named != class) {
+            return Err(missing(format!(
+                "{} \"{}\" says {class}, {} \"{}\" says {named}",
+                witness.by, witness.text, other.by, other.text
+            )));
+        }
+        let by = format!("{} \"{}\" of the {}", witness.by, witness.text, self.fastener(element));
+        Ok(Datum::new(class, Origin::Modelled { by, at: Some(witness.at.clone()) }))
+    }
+
+    fn hole(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Option<Length> {
+        let all = self.property_lengths(element, properties, Plausible(5.0, 130.0), |p| {
+            self.rulebook.means("hole-diameter", p.name)
+        });
+        let first = all.first()?;
+        if let Some(other) = all.iter().find(|s| !((s.value - first.value).abs() <= 0.1)) {
+            self.problem(
+                element,
+                format!(
+                    "Hole diameter: {} says {:.1} mm, {} says {:.1} mm; neither is taken.",
+                    first.by, first.value, other.by, other.value
+                ),
+            );
+            return None;
+        }
+        Some(mm(first.value))
+    }
+}

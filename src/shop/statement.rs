@@ -1,0 +1,60 @@
+//! What attributes and properties state of a length, with the words that held it.
+
+use super::material::Said;
+use super::properties::{Plausible, Property};
+use super::reading::Reading;
+use crate::exchange::Entity;
+use crate::origin::{Origin, Place};
+
+/// A stated value.
+#[derive(Clone, Debug)]
+pub(super) struct Statement<T> {
+    pub value: T,
+    /// Which attribute or property.
+    pub by: String,
+    pub at: Place,
+}
+
+impl<T> Statement<T> {
+    /// Its origin, for a statement of `what`.
+    pub fn origin(&self, what: &str) -> Origin {
+        Origin::Modelled { by: format!("{} of the {what}", self.by), at: Some(self.at.clone()) }
+    }
+}
+
+impl<'a> Reading<'a> {
+    /// A length attribute of the type, then of the part; zero is "nothing stated".
+    pub fn attribute_lengths(&self, element: Entity<'a>, attribute: &str) -> Vec<Statement<f64>> {
+        let of = |entity: Entity<'a>, of_type: &str| {
+            let value = entity.number(attribute)? * self.units.length;
+            let by = format!("{attribute}{of_type}");
+            (value > 0.0 && value.is_finite()).then(|| Statement { value, by, at: entity.place() })
+        };
+        let of_type = self.type_of(element).and_then(|t| of(t, " of the type"));
+        of_type.into_iter().chain(of(element, "")).collect()
+    }
+
+    /// The lengths that some properties state; zero is "nothing stated", what can't be read becomes a problem.
+    pub fn property_lengths(
+        &self,
+        element: Entity<'a>,
+        properties: &[Property<'_>],
+        plausible: Plausible,
+        wanted: impl Fn(&Property<'_>) -> bool,
+    ) -> Vec<Statement<f64>> {
+        let mut all = Vec::new();
+        for property in properties.iter().filter(|p| wanted(p)) {
+            match self.length_of(property, plausible) {
+                Some(Ok((value, by))) if value > 0.0 => all.push(Statement { value, by, at: property.place.clone() }),
+                Some(Err(reason)) => self.problem(element, format!("{reason}; it is not taken.")),
+                _ => {}
+            }
+        }
+        all
+    }
+}
+
+/// Names as texts about a part.
+pub(super) fn first_text(names: Vec<(String, &str)>, element: Entity<'_>) -> Vec<Said> {
+    names.into_iter().map(|(by, text)| Said { by, text: text.to_owned(), at: element.place() }).collect()
+}

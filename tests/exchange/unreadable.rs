@@ -1,0 +1,51 @@
+//! The few reasons for which a file is not read at all.
+
+use super::*;
+
+#[test]
+fn a_file_that_is_no_exchange_says_why_in_one_sentence() {
+    for (text, reason) in [
+        ("", "the file is empty"),
+        (" \r\n\t ", "the file is empty"),
+        ("PK\u{3}\u{4}…", "the file is a zip archive; this form is not read yet, take the model out of it"),
+        (
+            "\u{feff}\nISO-10303-21;\nHEADER;",
+            "the file is a STEP file (ISO 10303-21); this form is not read yet, ifcXML of IFC4 is",
+        ),
+        ("Mark,Moment\n", "the file is no exchange: it starts with \"Mark,Moment\\n\", XML is required"),
+        (
+            "<ex:iso_10303_28 xmlns:ex='urn:iso.org:standard:10303:part(28):version(2):xmlschema:common'/>",
+            "the file is ifcXML by ISO 10303-28 (IFC2X3); this form is not read yet, ifcXML of IFC4 is",
+        ),
+        (
+            "<?xml version='1.0'?>\n <html><p>x</p></html>",
+            "the file is no exchange: its document element at line 2, column 2 is \"html\", ifcXML is required",
+        ),
+        ("<!-- nothing -->", "the file holds no XML element"),
+        (
+            "<ifcXML>\n<IfcBeam>",
+            "the file breaks off at line 2, column 10: an element is not closed, the file is truncated",
+        ),
+        (
+            "<ifcXML>\n<IfcBeam Name='x",
+            "the file breaks off inside the markup at line 2, column 1: tag not closed: `>` not found before end of input",
+        ),
+        (
+            "<ifcXML><IfcBeam></IfcPlate></ifcXML>",
+            "the file is not well-formed XML at line 1, column 18: ill-formed document: expected `</IfcBeam>`, but `</IfcPlate>` was found",
+        ),
+        (
+            "<ifcXML>\n<IfcBeam Name=x/></ifcXML>",
+            "the file is not well-formed XML at line 2, column 1: position 13: attribute value must be enclosed in `\"` or `'`",
+        ),
+        ("<ifcXML/>\n<ifcXML/>", "the file has a second document element at line 2, column 1"),
+        (
+            "<?xml version='1.0'?>\n<!DOCTYPE ifcXML [<!ENTITY x SYSTEM 'file:///etc/hostname'>]><ifcXML/>",
+            "the file holds a document type declaration (DTD) at line 2, column 1, which is not allowed in an exchange",
+        ),
+    ] {
+        let error = read(text.as_bytes(), "model.ifcxml").unwrap_err();
+        assert_eq!(error.reason, reason, "{text}");
+        assert_eq!(error.to_string(), format!("model.ifcxml: {reason}"));
+    }
+}

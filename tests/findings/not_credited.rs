@@ -1,0 +1,18 @@
+use faying::assess::State;
+
+use super::bench::{Bench, check};
+
+const ID: &str = "not-credited";
+
+#[test]
+fn each_part_is_a_comment_whatever_the_joint_carries() {
+    for state in [State::Met, State::NotMet, State::Unproven] {
+        let spoil = |b: &mut Bench| b.layout().not_credited = vec!["a web plate".into(), "a diagonal".into()];
+        check(
+            ID,
+            |b| (spoil(b), b.carries(state)).1,
+            &["comment | a web plate | - | -", "comment | a diagonal | - | -"],
+        );
+    }
+    check(ID, |_| (), &[]);
+}

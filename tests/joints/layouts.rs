@@ -1,0 +1,241 @@
+//! What is laid out of an end-plate joint.
+
+use faying::joints::{EndPlateLayout, Joint, Joints, Kind, recognise};
+use faying::origin::Origin;
+use faying::rulebook::Grade;
+use faying::shop::{Steelwork, WeldSort};
+use faying::units::mm;
+use glam::DVec3;
+
+use super::build::*;
+
+pub fn find(steel: &Steelwork) -> Joints {
+    recognise(steel, &rulebook())
+}
+
+pub fn only(steel: &Steelwork) -> Joint {
+    let joints = find(steel).joints;
+    assert_eq!(joints.len(), 1, "{:?}", joints.iter().map(|j| (&j.mark, j.kind)).collect::<Vec<_>>());
+    joints.into_iter().next().unwrap()
+}
+
+pub fn layout(steel: &Steelwork) -> EndPlateLayout {
+    only(steel).layout.unwrap()
+}
+
+#[track_caller]
+pub fn close(a: f64, b: f64) {
+    assert!((a - b).abs() < 1e-6, "{a} is not {b}");
+}
+
+#[test]
+fn rows_edges_plate_and_bolts_are_those_built() {
+    let detail = Detail::default();
+    let joint = only(&frame(std::slice::from_ref(&detail)));
+    assert_eq!((joint.kind, joint.mark.as_str()), (Kind::EndPlateMoment, "B1 / C1"));
+    assert_eq!((joint.supporting, joint.supported, joint.at_end), (Some(0), Some(1), Some(false)));
+    assert_eq!(joint.disagreements, Vec::<String>::new());
+    let layout = joint.layout.unwrap();
+    for (row, height) in layout.bolts.rows.iter().zip(&detail.rows) {
+        close(row.height.get(), *height);
+        close(row.gauge.get(), 90.0);
+        close(row.edge_plate.get(), (200.0 - 90.0) / 2.0);
+        close(row.edge_column.get(), (309.2 - 90.0) / 2.0);
+    }
+    assert_eq!(layout.bolts.rows.len(), 4);
+    close(layout.plate.bottom.get(), -15.0);
+    close(layout.plate.top.get(), 486.4);
+    close(layout.plate.width.get(), 200.0);
+    close(layout.plate.thickness.get(), 15.0);
+    assert_eq!(length(&layout.bolts.diameter), Some(20.0));
+    assert_eq!(layout.bolts.class.unwrap().value, "8.8");
+    close(layout.column_above.unwrap().get(), 8000.0 - 4000.0 - 450.4);
+    close(layout.column_below.unwrap().get(), 4000.0 + 73.0);
+    assert_eq!((layout.column.guid.as_str(), layout.beam.guid.as_str()), ("-C1", "-B1"));
+}
+
+#[test]
+fn welds_have_their_roles_by_place() {
+    let layout = layout(&frame(&[Detail::default()]));
+    assert_eq!(length(&layout.welds.flange_top), Some(7.0));
+    assert_eq!(length(&layout.welds.flange_bottom), Some(7.0));
+    assert_eq!(length(&layout.welds.web), Some(4.0));
+}
+
+#[test]
+fn of_several_welds_the_thinnest_counts_and_an_unknown_one_spoils_it() {
+    let mut steel = frame(&[Detail::default()]);
+    let mut second = steel.welds[0].clone();
+    second.throat = known(mm(5.0));
+    steel.welds.push(second);
+    assert_eq!(length(&layout(&steel).welds.flange_top), Some(5.0));
+    steel.welds[3].throat = missing("throat");
+    assert!(layout(&steel).welds.flange_top.is_err());
+}
+
+#[test]
+fn what_no_weld_states_is_missing() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.welds[0].sort = WeldSort::Butt;
+    let reason = layout(&steel).welds.flange_top.unwrap_err().reason;
+    assert_eq!(reason, "butt weld: not assessed yet");
+    steel.welds.remove(0);
+    let top = layout(&steel).welds.flange_top.unwrap_err();
+    assert_eq!((top.what.as_str(), top.reason.as_str()), ("weld at the upper flange", "no weld is modelled there"));
+}
+
+#[test]
+fn a_weld_over_a_short_part_of_the_flange_is_no_flange_weld() {
+    let mut steel = frame(&[Detail::default()]);
+    for point in &mut steel.welds[0].points {
+        point.y *= 0.3;
+    }
+    assert!(layout(&steel).welds.flange_top.is_err());
+}
+
+#[test]
+fn the_hole_is_modelled_stated_or_assumed() {
+    let mut steel = frame(&[Detail::default()]);
+    let hole_of = |steel: &Steelwork| layout(steel).bolts.hole.unwrap();
+    let assumed = hole_of(&steel);
+    assert_eq!(assumed.value, mm(22.0));
+    assert!(matches!(assumed.origin, Origin::Assumed(_)));
+    steel.bolts.iter_mut().for_each(|bolt| bolt.hole = Some(mm(21.0)));
+    let stated = hole_of(&steel);
+    assert_eq!(stated.value, mm(21.0));
+    assert!(matches!(stated.origin, Origin::Modelled { .. }));
+    // Heights from the plate's middle: its own is (486.4 - 15) / 2 = 235.7 above the soffit.
+    for row in [450.4, 345.0, 265.0, 73.0] {
+        steel.plates[0].holes.extend([-45.0, 45.0].map(|x| hole(x, row - 235.7, 24.0, 24.0)));
+    }
+    let modelled = hole_of(&steel);
+    assert_eq!(modelled.value, mm(24.0));
+    assert!(matches!(modelled.origin, Origin::Derived(_)));
+}
+
+#[test]
+fn bolts_that_differ_are_missing_with_both_values() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.bolts[5].diameter = known(mm(24.0));
+    steel.bolts[2].class = known("10.9".into());
+    let bolts = layout(&steel).bolts;
+    assert_eq!(bolts.diameter.unwrap_err().reason, "the bolts of the joint differ: 20 mm and 24 mm");
+    assert_eq!(bolts.class.unwrap_err().reason, "the bolts of the joint differ: 10.9 and 8.8");
+    assert!(bolts.hole.is_err());
+}
+
+#[test]
+fn a_bolt_without_a_class_leaves_the_class_missing() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.bolts[0].class = missing("bolt class");
+    let class = layout(&steel).bolts.class.unwrap_err();
+    assert_eq!(class.reason, "1 of 8 bolts: the test leaves it out");
+}
+
+#[test]
+fn shanks_may_be_drawn_as_the_plates_thickness_or_long() {
+    for (back, ahead) in [(0.0, 15.0), (21.7, 15.0), (60.0, 40.0), (21.7, 0.0)] {
+        let mut steel = frame(&[Detail::default()]);
+        for bolt in &mut steel.bolts {
+            bolt.start.x = 160.25 - back;
+            bolt.end.x = 160.25 + ahead;
+        }
+        assert_eq!(layout(&steel).bolts.rows.len(), 4, "{back} {ahead}");
+    }
+}
+
+fn ribbed(rib: Rib) -> Steelwork {
+    frame(&[Detail { ribs: vec![rib], ..Detail::default() }])
+}
+
+const RIB: Rib =
+    Rib { height: 400.0, thickness: 12.0, outstand: 113.0, reach: 277.1, both_sides: true, weld: Some(6.0) };
+
+#[test]
+fn a_pair_of_stiffeners_is_one() {
+    let steel = ribbed(RIB);
+    let joint = only(&steel);
+    assert_eq!(joint.plates.iter().filter(|(_, role)| *role == "stiffener").count(), 2);
+    let layout = joint.layout.unwrap();
+    let [stiffener] = &layout.stiffeners[..] else { panic!("{:?}", layout.stiffeners) };
+    close(stiffener.height.get(), 400.0);
+    close(stiffener.outstand.get(), 113.0);
+    close(stiffener.reach.get(), 277.1);
+    close(stiffener.thickness.get(), 12.0);
+    assert!(stiffener.both_sides && stiffener.full_depth);
+    assert_eq!(stiffener.grade.as_ref().unwrap().value, Grade("S275".into()));
+    assert_eq!(length(&stiffener.weld), Some(6.0));
+    assert_eq!(layout.not_credited, Vec::<String>::new());
+    // The stiffener's weld at the flange's level is none of the beam's.
+    assert_eq!(length(&layout.welds.flange_top), Some(7.0));
+}
+
+#[test]
+fn a_stiffener_on_one_side_or_of_part_depth_says_so() {
+    let one_sided = layout(&ribbed(Rib { both_sides: false, ..RIB }));
+    assert!(!one_sided.stiffeners[0].both_sides && one_sided.stiffeners[0].full_depth);
+    let partial = layout(&ribbed(Rib { reach: 185.0, weld: None, ..RIB }));
+    assert!(partial.stiffeners[0].both_sides && !partial.stiffeners[0].full_depth);
+    assert_eq!(partial.stiffeners[0].weld.as_ref().unwrap_err().reason, "no weld is modelled there");
+}
+
+#[test]
+fn an_uneven_pair_counts_as_its_lesser_half() {
+    let mut steel = ribbed(RIB);
+    steel.plates[1].thickness = mm(10.0);
+    steel.plates[2].grade = known(Grade("S355".into()));
+    let layout = layout(&steel);
+    close(layout.stiffeners[0].thickness.get(), 10.0);
+    assert_eq!(layout.stiffeners[0].grade.as_ref().unwrap_err().reason, "its two plates differ: S275 and S355");
+}
+
+#[test]
+fn stiffeners_far_from_the_joint_are_none_of_its() {
+    assert!(layout(&ribbed(Rib { height: 800.0, ..RIB })).stiffeners.is_empty());
+}
+
+#[test]
+fn web_plates_and_diagonals_are_named_as_not_credited() {
+    let mut steel = frame(&[Detail::default()]);
+    let on_web = DVec3::new(0.0, 13.8 / 2.0 + 5.0, 4200.0);
+    steel.plates.push(plate("WP", on_web, DVec3::X, DVec3::Z, (240.0, 800.0), 10.0));
+    let (along, middle) = (DVec3::new(1.0, 0.0, 1.0).normalize(), DVec3::new(0.0, -70.0, 4200.0));
+    steel.plates.push(plate("DI", middle, along, DVec3::Y, (360.0, 126.0), 12.0));
+    let layout = layout(&steel);
+    assert_eq!(layout.not_credited, ["diagonal DI is not credited", "web plate WP is not credited"]);
+    assert!(layout.stiffeners.is_empty());
+}
+
+#[test]
+fn a_backing_plate_is_named_and_the_joint_is_laid_out() {
+    let mut steel = frame(&[Detail::default()]);
+    let inside = DVec3::new(160.25 - 21.7 - 5.0, 0.0, 4397.7);
+    steel.plates.push(plate("BP", inside, DVec3::Y, DVec3::Z, (150.0, 200.0), 10.0));
+    steel.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 10.0);
+    assert_eq!(layout(&steel).not_credited, ["backing plate BP is not credited"]);
+}
+
+#[test]
+fn beams_on_both_flanges_are_each_others_opposite() {
+    let left = Detail { beam_mark: "B2", beam: DEEP, top: 600.0, turned: true, soffit: 3900.0, ..Detail::default() };
+    let apart = Detail { beam_mark: "B3", turned: true, soffit: 6000.0, ..Detail::default() };
+    let joints = find(&frame(&[Detail::default(), left, apart])).joints;
+    let marks: Vec<_> = joints.iter().map(|j| (j.mark.as_str(), j.opposite)).collect();
+    assert_eq!(marks, [("B1 / C1", Some(1)), ("B2 / C1", Some(0)), ("B3 / C1", None)]);
+}
+
+#[test]
+fn a_beam_may_end_here_with_either_end() {
+    let joint = only(&frame(&[Detail { at_end: true, ..Detail::default() }]));
+    assert_eq!(joint.at_end, Some(true));
+    close(joint.layout.unwrap().bolts.rows[0].height.get(), 450.4);
+}
+
+#[test]
+fn a_column_without_a_known_section_is_laid_out_by_its_extents() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.members.iter_mut().for_each(|m| m.section = missing("section"));
+    let layout = layout(&steel);
+    close(layout.bolts.rows[0].height.get(), 450.4);
+    assert!(layout.column.section.is_err());
+}
