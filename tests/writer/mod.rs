@@ -6,6 +6,7 @@
 
 pub mod building;
 pub mod entity;
+mod fastening;
 pub mod frames;
 pub mod guid;
 pub mod hardware;
