@@ -82,7 +82,6 @@ pub(super) fn small_part(prisms: &[&Prism]) -> Option<String> {
     if hexagon && prism.depth <= size {
         return Some("nut or bolt head by its shape".into());
     }
-    let ring = outer.circle.is_some()
-        && (prism.profile.voids.len() == 1 || prism.profile.kind == Kind::Hollow);
+    let ring = outer.circle.is_some() && (prism.profile.voids.len() == 1 || prism.profile.kind == Kind::Hollow);
     (ring && prism.depth <= 0.5 * size).then(|| "washer by its shape".into())
 }
