@@ -133,8 +133,13 @@ pub(super) fn reasons_left(joint: &JointReview) -> impl Iterator<Item = &str> {
     })
 }
 
+/// Why a scheduled joint has no steel beside it.
+pub(super) fn without_steel(joint: &JointReview) -> &'static str {
+    if joint.kind == "not-paired" { "fits no single joint" } else { "no steel found" }
+}
+
 /// Rules of what has a section of its own: steel without a schedule line, and the other way round.
-const PAIRING: [&str; 2] = ["joint-not-scheduled", "joint-not-found"];
+const PAIRING: [&str; 3] = ["joint-not-scheduled", "joint-not-found", "joint-not-paired"];
 
 /// Findings of a joint that are no comments and that neither its missing things nor a section of its own say.
 pub(super) fn findings_left(joint: &JointReview) -> impl Iterator<Item = &Finding> {

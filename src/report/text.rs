@@ -215,7 +215,9 @@ fn missing(page: &mut Page, review: &Review) {
         let asked = case.map_or(String::new(), |case| format!("; required {}", hold::required(case)));
         let at = joint.at.as_ref().or(case.and_then(|case| case.at.as_ref()));
         let at = at.map_or(String::new(), |at| format!(", {at}"));
-        page.toned(3, Tone::Hold, &format!("{}: scheduled, no steel found{asked}{at}", joint.mark));
+        let (tone, why) =
+            (if joint.outcome == Outcome::Hold { Tone::Hold } else { Tone::Unproven }, group::without_steel(joint));
+        page.toned(3, tone, &format!("{}: scheduled, {why}{asked}{at}", joint.mark));
         for said in
             group::findings_left(joint).map(group::sentence).chain(group::reasons_left(joint).map(str::to_owned))
         {
