@@ -30,7 +30,7 @@ fn the_embedded_settings() {
     let settings = Rulebook::embedded().settings;
     assert_eq!(settings.row_forces, RowForces::LinearBeyond19);
     assert_eq!(settings.mode_one, ModeOne::Method1);
-    assert!(settings.strength_by_flange && settings.shear_with_full_tension && settings.thread_in_shear_plane);
+    assert!(settings.strength_by_flange && !settings.shear_with_full_tension && settings.thread_in_shear_plane);
     assert_eq!((settings.alpha_max, settings.shear_only_below), (8.0, 0.5));
     assert_eq!((settings.axial_limit, settings.k_wc), (0.05, 1.0));
 }
