@@ -114,7 +114,7 @@ fn a_name_and_its_geometry_that_disagree_give_no_section() {
         let member = only(&steelwork);
         let missing = member.section.as_ref().unwrap_err();
         assert!(missing.reason.contains("453.4 x 189.9") && missing.reason.contains(word), "{missing}");
-        assert_eq!(member.disagreements, [missing.reason.clone()]);
+        assert_eq!(member.disagreements, std::slice::from_ref(&missing.reason));
     }
     // A solid box of the right outer sizes is no section of that name either.
     let steelwork = taken(&beam("HEB 300", &extruded(&rectangle(300.0, 300.0), 6000.0, "0 0 1")));
