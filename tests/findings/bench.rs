@@ -53,7 +53,7 @@ impl Bench {
             verdict(About::Weld, State::Met, 300.0, "kNm"),
             verdict(About::Axial, State::Met, 0.0, "kN"),
         ];
-        let cases = vec![CaseResult { case: 0, verdicts, moment: None }];
+        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None }];
         self.assessment = Some(Assessment { cases, ..Assessment::default() });
     }
 
@@ -153,6 +153,8 @@ pub fn moment(sense: Sense, resistance: f64) -> MomentResistance {
         sense,
         beta: 1.0,
         moment: knm(resistance),
+        without_welds: knm(resistance),
+        web_in_tension: Length::ZERO,
         governed_by: "column web in compression".into(),
         rows: Vec::new(),
         components: Vec::new(),
