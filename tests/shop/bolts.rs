@@ -57,6 +57,27 @@ fn shank_head_and_nut_are_one_bolt_and_a_group_is_several() {
     assert_eq!(steelwork.bolts.len(), 2);
 }
 
+#[test]
+fn a_thread_drawn_thinner_is_still_the_shank() {
+    // 50 mm of shank and 30 mm of thread at the core diameter of about 17 mm.
+    let solids = cylinder("0 0 0", 10.0, 50.0) + &cylinder("0 0 50", 8.5, 30.0);
+    let steelwork = taken(&fastener(r#"Name="M20""#, &solids, ""));
+    assert_eq!((steelwork.bolts.len(), steelwork.problems.len()), (1, 0));
+    near(steelwork.bolts[0].end, [0.0, 0.0, 80.0], 1e-9);
+}
+
+#[test]
+fn a_type_states_what_its_bolts_leave_out() {
+    let typed = r#"<IsTypedBy GlobalId="0Rel000000000000000003"><RelatingType xsi:type="IfcMechanicalFastenerType" id="t1" GlobalId="0Typ000000000000000001" Name="M20 x 80 8.8" NominalDiameter="20" NominalLength="80" PredefinedType="bolt"/></IsTypedBy>"#;
+    let steelwork = taken(&fastener("", &cylinder("0 0 0", 10.0, 80.0), typed));
+    let bolt = &steelwork.bolts[0];
+    let origin = bolt.diameter.as_ref().unwrap().origin.to_string();
+    assert!(origin.contains("NominalDiameter of the type"), "{origin}");
+    assert_eq!(bolt.class.as_ref().unwrap().value, "8.8");
+    // The name of a type is no mark.
+    assert_eq!(bolt.identity.mark, None);
+}
+
 /// A mapped item of a shank of radius 1 and length 8, moved and scaled.
 fn mapped(at: &str, scale: f64, first: bool) -> String {
     let source = if first {

@@ -114,7 +114,7 @@ fn a_name_and_its_geometry_that_disagree_give_no_section() {
         let member = only(&steelwork);
         let missing = member.section.as_ref().unwrap_err();
         assert!(missing.reason.contains("453.4 x 189.9") && missing.reason.contains(word), "{missing}");
-        assert_eq!(member.disagreements, [missing.reason.clone()]);
+        assert_eq!(member.disagreements, std::slice::from_ref(&missing.reason));
     }
     // A solid box of the right outer sizes is no section of that name either.
     let steelwork = taken(&beam("HEB 300", &extruded(&rectangle(300.0, 300.0), 6000.0, "0 0 1")));
@@ -178,6 +178,66 @@ fn other_shapes_are_members_without_a_section() {
         assert_eq!(only(&steelwork).shape, shape);
         assert!(only(&steelwork).section.is_err());
     }
+}
+
+/// A quarter of an I with arcs at its roots, mirrored to a whole one, as an `IfcIndexedPolyCurve`.
+fn arced_i(h: f64, b: f64, t_w: f64, t_f: f64, r: f64) -> String {
+    let (x, y, w, f, k) = (b / 2.0, h / 2.0, t_w / 2.0, h / 2.0 - t_f, r * (1.0 - FRAC_1_SQRT_2));
+    // From the tip of the lower right flange up the right side, then down the left one.
+    let right = [
+        (x, -y),
+        (x, -f),
+        (w + r, -f),
+        (w + k, -f + k),
+        (w, -f + r),
+        (w, f - r),
+        (w + k, f - k),
+        (w + r, f),
+        (x, f),
+        (x, y),
+    ];
+    let left = right.map(|(x, y)| (-x, -y));
+    let points: Vec<String> = right.iter().chain(&left).map(|(x, y)| format!("{x} {y}")).collect();
+    let half = |first: usize| {
+        let at = |i: usize| first + i;
+        format!(
+            r#"<IfcLineIndex-wrapper>{} {} {}</IfcLineIndex-wrapper><IfcArcIndex-wrapper>{} {} {}</IfcArcIndex-wrapper><IfcLineIndex-wrapper>{} {}</IfcLineIndex-wrapper><IfcArcIndex-wrapper>{} {} {}</IfcArcIndex-wrapper><IfcLineIndex-wrapper>{} {} {}</IfcLineIndex-wrapper>"#,
+            at(0),
+            at(1),
+            at(2),
+            at(2),
+            at(3),
+            at(4),
+            at(4),
+            at(5),
+            at(5),
+            at(6),
+            at(7),
+            at(7),
+            at(8),
+            at(9)
+        )
+    };
+    let closing = [(10, 11), (20, 1)].map(|(a, b)| format!("<IfcLineIndex-wrapper>{a} {b}</IfcLineIndex-wrapper>"));
+    let curve = format!(
+        r#"<OuterCurve xsi:type="IfcIndexedPolyCurve"><Points xsi:type="IfcCartesianPointList2D" CoordList="{}"/><Segments>{}{}{}{}</Segments></OuterCurve>"#,
+        points.join(" "),
+        half(1),
+        closing[0],
+        half(11),
+        closing[1]
+    );
+    profile("IfcArbitraryClosedProfileDef", r#"ProfileName="PG2""#, &curve)
+}
+
+#[test]
+fn an_outline_with_rounded_roots_is_an_i_whose_radius_nobody_states() {
+    let steelwork = taken(&beam("B", &extruded(&arced_i(453.4, 189.9, 8.5, 12.7, 10.2), 3000.0, "0 0 1")));
+    let member = only(&steelwork);
+    let section = &member.section.as_ref().unwrap().value;
+    close(section.t_w.get(), 8.5, 1e-6);
+    close(section.t_f.get(), 12.7, 1e-6);
+    assert_eq!((member.shape, section.r), (Shape::I, None));
 }
 
 fn cut(first: &str, location: &str, axis: &str, agreement: bool) -> String {
@@ -244,7 +304,8 @@ fn no_element_vanishes() {
         ("IfcBeam", "", "no body"),
         ("IfcBuildingElementProxy", revolved, "IfcSphere"),
         ("IfcColumn", &*extruded(&rectangle(100.0, 100.0), 100.0, "0 0 1"), "block"),
-        ("IfcSlab", &*extruded(&rectangle(5000.0, 5000.0), 200.0, "0 0 1"), "200 mm thick"),
+        ("IfcPlate", &*extruded(&rectangle(5000.0, 5000.0), 200.0, "0 0 1"), "200 mm thick"),
+        ("IfcWall", &*extruded(&rectangle(5000.0, 100.0), 3000.0, "0 0 1"), "no steelwork"),
     ] {
         let steelwork = taken(&element(class, r#"id="i1" Name="X""#, "", solids, ""));
         assert_eq!(steelwork.rejected.len(), 1, "{class}");

@@ -81,3 +81,15 @@ fn glue_is_no_weld() {
     let steelwork = taken(&element("IfcFastener", r#"id="i1" Name="Joint" PredefinedType="glue""#, "", "", ""));
     assert_eq!((steelwork.welds.len(), steelwork.rejected.len()), (0, 1));
 }
+
+#[test]
+fn a_weld_plate_is_a_plate_and_a_proxy_called_weld_a_weld() {
+    let solid = extruded(&rectangle(180.0, 80.0), 6.0, "0 0 1");
+    let proxy = |name: &str| {
+        let attributes = format!(r#"id="i1" Name="{name}""#);
+        let steelwork = taken(&element("IfcBuildingElementProxy", &attributes, "", &solid, ""));
+        (steelwork.welds.len(), steelwork.plates.len())
+    };
+    assert_eq!(proxy("Weld plate"), (0, 1));
+    assert_eq!(proxy("Fillet weld 12"), (1, 0));
+}
