@@ -4,7 +4,7 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use glam::DVec3;
 
-use super::boxes::{Ply, thicknesses};
+use super::boxes::{Ply, Slab, thicknesses};
 use super::cut::{self, Cluster};
 use super::end_plate::{self, Case};
 use super::frame::{Frame, Span, are_parallel, are_square};
@@ -12,7 +12,7 @@ use super::scene::Scene;
 use super::touch::EndOn;
 use super::welds::{self, Role};
 use super::{Joint, Kind};
-use crate::shop::{Part, Shape};
+use crate::shop::{Member, Part, Shape};
 
 /// A member whose axis is within 60° of the vertical can stand on a base plate.
 const STANDS: f64 = 0.5;
@@ -86,7 +86,45 @@ pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
             Cluster::Other { bolts } => drafts.push(other(scene, bolts)),
         }
     }
+    drafts.extend((0..scene.steel.plates.len()).filter_map(|plate| base_without_bolts(scene, plate)));
     drafts
+}
+
+/// A column's foot on a plate through which no bolt passes: its anchors may have been left out of the exchange.
+fn base_without_bolts(scene: &Scene, plate: usize) -> Option<Draft> {
+    if scene.is_bolted(plate) || scene.touches.members[plate].len() > 1 {
+        return None;
+    }
+    let end = *cut::ends_on(scene, plate).first()?;
+    let column = &scene.steel.members[end.member];
+    let spread = Slab::of_plate(&scene.steel.plates[plate])?.half;
+    let wider = spread.x.min(spread.y) >= column.extents.min_element() / 2.0;
+    if !wider || !stands_on_end(column, &end) {
+        return None;
+    }
+    let mut draft = Draft::new(scene, Kind::ColumnBase, Vec::new(), vec![end.member]);
+    draft.centre = scene.steel.plates[plate].centre;
+    draft.support(scene, None, Some(end.member));
+    draft.joint.at_end = Some(end.at_end);
+    draft.joint.place = Some(scene.place(Part::Plate(plate)));
+    draft.joint.plates.push((plate, "end-plate"));
+    draft.joint.welds = others_at(scene, [plate]);
+    draft.joint.layout =
+        Err(format!("kind not assessed yet: {}: no bolts or anchors were found", Kind::ColumnBase.word()));
+    Some(draft)
+}
+
+/// Whether a member stands up from that end.
+fn stands_on_end(member: &Member, end: &EndOn) -> bool {
+    let (foot, top) = if end.at_end { (member.end, member.start) } else { (member.start, member.end) };
+    (top - foot).normalize_or_zero().z >= STANDS
+}
+
+/// Welds at plates, without a role.
+fn others_at(scene: &Scene, plates: impl IntoIterator<Item = usize>) -> Vec<(usize, &'static str)> {
+    let welds: BTreeSet<usize> =
+        plates.into_iter().flat_map(|plate| scene.welds_at(Part::Plate(plate))).copied().collect();
+    welds.into_iter().map(|weld| (weld, Role::Other.word())).collect()
 }
 
 fn splice(scene: &Scene, plates: &[usize], bolts: Vec<usize>) -> Draft {
@@ -96,6 +134,7 @@ fn splice(scene: &Scene, plates: &[usize], bolts: Vec<usize>) -> Draft {
     let mut draft = Draft::new(scene, Kind::EndPlateSplice, bolts, members);
     draft.joint.plates = plates.iter().map(|plate| (*plate, "end-plate")).collect();
     draft.joint.place = plates.iter().map(|plate| scene.place(Part::Plate(*plate))).min();
+    draft.joint.welds = others_at(scene, plates.iter().copied());
     let (first, second) = of_equal_rank(scene, &draft.members);
     draft.support(scene, first, second);
     draft
@@ -152,10 +191,8 @@ fn end_plate(scene: &Scene, plate: usize, bolts: Vec<usize>) -> Option<Draft> {
     let strong = frame.is_some_and(|frame| covers_both_flanges(scene, &frame, &end, plate)) && reaches_a_flange(&welds);
 
     let (kind, why) = if passed.is_empty() {
-        let (foot, top) = if end.at_end { (beam.end, beam.start) } else { (beam.start, beam.end) };
-        let stands = (top - foot).normalize_or_zero().z >= STANDS;
         let why = "the bolts pass through nothing but the end plate";
-        if stands { (Kind::ColumnBase, None) } else { (Kind::OtherBolted, Some(why)) }
+        if stands_on_end(beam, &end) { (Kind::ColumnBase, None) } else { (Kind::OtherBolted, Some(why)) }
     } else if beam.shape != Shape::I {
         (Kind::OtherBolted, Some("the member with the end plate is no I section"))
     } else if !strong && (flange.is_some() || on_web) {
@@ -243,7 +280,12 @@ fn other(scene: &Scene, bolts: Vec<usize>) -> Draft {
             } else {
                 Kind::OtherBolted
             };
-            (kind, stands_on, Some(beam))
+            // A plate bolted to a flange belongs to the other member, whose end is further off than it should be.
+            let on_flange = passed.get(&beam).and_then(only).is_some_and(|ply| ply.sign() != 0.0);
+            match stands_on.filter(|_| on_flange) {
+                Some(other) => (kind, Some(beam), Some(other)),
+                None => (kind, stands_on, Some(beam)),
+            }
         }
         [a, b] if !plates.is_empty() && are_in_line(scene, a, b) => {
             let (first, second) = of_equal_rank(scene, &members);
@@ -258,17 +300,18 @@ fn other(scene: &Scene, bolts: Vec<usize>) -> Draft {
         _ => (Kind::OtherBolted, None, members.first().copied().filter(|_| members.len() == 1)),
     };
     let mut all = members;
-    all.extend(supporting.filter(|member| !all.contains(member)));
+    for member in [supporting, supported].into_iter().flatten() {
+        if !all.contains(&member) {
+            all.push(member);
+        }
+    }
     all.sort_unstable();
     let mut draft = Draft::new(scene, kind, bolts, all);
     draft.support(scene, supporting, supported);
     draft.joint.plates = plates.iter().map(|plate| (*plate, "plate")).collect();
     let first_plate = plates.iter().map(|plate| scene.place(Part::Plate(*plate))).min();
     draft.joint.place = first_plate.or(draft.joint.place);
-    let mut welds: Vec<usize> = plates.iter().flat_map(|plate| scene.welds_at(Part::Plate(*plate))).copied().collect();
-    welds.sort_unstable();
-    welds.dedup();
-    draft.joint.welds = welds.into_iter().map(|weld| (weld, Role::Other.word())).collect();
+    draft.joint.welds = others_at(scene, plates);
     draft
 }
 

@@ -4,7 +4,7 @@ use std::collections::BTreeMap;
 use std::sync::Arc;
 
 use faying::origin::{Datum, Known, Missing, Origin, Place};
-use faying::rulebook::{Annex, BoltSize, Grade, ModeOne, RowForces, Rulebook, Section, Settings, Tolerances};
+use faying::rulebook::{Grade, Rulebook, Section};
 use faying::shop::{Bolt, Hole, Identity, Member, Part, Piece, Plate, Shape, Steelwork, Told, Weld, WeldSort};
 use faying::units::{Area, Length, Modulus, mm};
 use glam::{DQuat, DVec2, DVec3};
@@ -20,39 +20,7 @@ pub const BEAM: Sizes = ("UKB 406x178x60", 406.4, 177.9, 7.9, 12.8);
 pub const DEEP: Sizes = ("UKB 533x210x92", 533.1, 209.3, 10.1, 15.6);
 
 pub fn rulebook() -> Rulebook {
-    let tolerances = Tolerances { position: mm(2.0), touch: mm(2.0), size: mm(0.15), angle: 1.0, utilisation: 0.0 };
-    let settings = Settings {
-        row_forces: RowForces::LinearBeyond19,
-        mode_one: ModeOne::Method1,
-        strength_by_flange: true,
-        alpha_max: 8.0,
-        shear_only_below: 0.5,
-        shear_with_full_tension: false,
-        thread_in_shear_plane: true,
-        axial_limit: 0.05,
-        k_wc: 0.7,
-    };
-    // Of these only d and d_0 are read here: EN 1090-2:2018 Table 11, normal round hole of M20 and M24.
-    let size = |d: f64, d_0: f64| BoltSize {
-        d: mm(d),
-        a: Area(0.0),
-        a_s: Area(0.0),
-        d_0: mm(d_0),
-        across_flats: mm(0.0),
-        across_corners: mm(0.0),
-        across_flats_preloaded: mm(0.0),
-        washer: mm(0.0),
-        washer_thickness: mm(0.0),
-        head: mm(0.0),
-        nut: mm(0.0),
-    };
-    Rulebook {
-        annex: Annex { name: String::new(), gamma_m0: 1.0, gamma_m1: 1.0, gamma_m2: 1.25, source: String::new() },
-        settings,
-        tolerances,
-        bolt_sizes: vec![size(20.0, 22.0), size(24.0, 26.0)],
-        bolt_classes: Vec::new(),
-    }
+    Rulebook::embedded()
 }
 
 pub fn known<T>(value: T) -> Known<T> {
