@@ -2,77 +2,20 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
-use glam::DVec3;
-
+use super::Kind;
 use super::boxes::{Ply, Slab, thicknesses};
 use super::cut::{self, Cluster};
+use super::draft::Draft;
 use super::end_plate::{self, Case};
 use super::frame::{Frame, Span, are_parallel, are_square};
+use super::rank::{are_in_line, of_equal_rank, ranked};
 use super::scene::Scene;
 use super::touch::EndOn;
 use super::welds::{self, Role};
-use super::{Joint, Kind};
 use crate::shop::{Member, Part, Shape};
 
 /// A member whose axis is within 60° of the vertical can stand on a base plate.
 const STANDS: f64 = 0.5;
-
-/// A joint before it has its mark.
-pub(super) struct Draft {
-    pub(super) joint: Joint,
-    /// All members in it, ascending.
-    pub(super) members: Vec<usize>,
-    /// The middle of its bolts.
-    pub(super) centre: DVec3,
-    /// Where it sits on its column.
-    pub(super) seat: Option<Seat>,
-    /// What relations call it.
-    pub(super) names: BTreeSet<String>,
-}
-
-/// Where an end-plate joint sits on its column.
-#[derive(Clone, Copy, Debug)]
-pub(super) struct Seat {
-    pub(super) column: usize,
-    /// Which flange: its sign along the column's depth.
-    pub(super) flange: f64,
-    /// The soffit along the column's axis, mm from its start.
-    pub(super) level: f64,
-    /// Depth of the supported member, mm.
-    pub(super) depth: f64,
-}
-
-impl Draft {
-    pub(super) fn new(scene: &Scene, kind: Kind, bolts: Vec<usize>, members: Vec<usize>) -> Self {
-        let centre = cut::centre(scene, &bolts);
-        let place = bolts.iter().map(|bolt| scene.place(Part::Bolt(*bolt))).min();
-        let joint = Joint {
-            mark: String::new(),
-            kind,
-            supporting: None,
-            supported: None,
-            at_end: None,
-            bolts,
-            plates: Vec::new(),
-            welds: Vec::new(),
-            layout: Err(format!("kind not assessed yet: {}", kind.word())),
-            opposite: None,
-            disagreements: Vec::new(),
-            place,
-        };
-        Self { joint, members, centre, seat: None, names: BTreeSet::new() }
-    }
-
-    /// Names the supported member and its end nearest to the joint.
-    fn support(&mut self, scene: &Scene, supporting: Option<usize>, supported: Option<usize>) {
-        self.joint.supporting = supporting;
-        self.joint.supported = supported;
-        self.joint.at_end = supported.map(|i| {
-            let member = &scene.steel.members[i];
-            member.end.distance(self.centre) < member.start.distance(self.centre)
-        });
-    }
-}
 
 /// All clusters as joints, without marks.
 pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
@@ -138,38 +81,6 @@ fn splice(scene: &Scene, plates: &[usize], bolts: Vec<usize>) -> Draft {
     let (first, second) = of_equal_rank(scene, &draft.members);
     draft.support(scene, first, second);
     draft
-}
-
-/// For each joint the one on the column's other flange whose soffit is nearest, if it is within the deeper beam's depth.
-pub(super) fn opposites(drafts: &[Draft]) -> Vec<Option<usize>> {
-    let mut on_column: BTreeMap<usize, Vec<(usize, Seat)>> = BTreeMap::new();
-    for (index, draft) in drafts.iter().enumerate() {
-        if let Some(seat) = draft.seat {
-            on_column.entry(seat.column).or_default().push((index, seat));
-        }
-    }
-    let across = |draft: &Draft| {
-        let seat = draft.seat?;
-        let others = on_column.get(&seat.column)?.iter().filter(|(_, other)| {
-            other.flange * seat.flange < 0.0 && (other.level - seat.level).abs() < other.depth.max(seat.depth)
-        });
-        others
-            .min_by(|(_, a), (_, b)| (a.level - seat.level).abs().total_cmp(&(b.level - seat.level).abs()))
-            .map(|(i, _)| *i)
-    };
-    drafts.iter().map(across).collect()
-}
-
-/// Two members neither of which supports the other: the first by mark stands as supporting, so that the file's order
-/// does not matter.
-fn of_equal_rank(scene: &Scene, members: &[usize]) -> (Option<usize>, Option<usize>) {
-    let mut by_label = members.to_vec();
-    let key = |i: &usize| {
-        let member = &scene.steel.members[*i];
-        (scene.label(Part::Member(*i)), scene.spot(member.start), member.identity.guid.clone())
-    };
-    by_label.sort_by_cached_key(key);
-    (by_label.first().copied(), by_label.get(1).copied())
 }
 
 fn end_plate(scene: &Scene, plate: usize, bolts: Vec<usize>) -> Option<Draft> {
@@ -332,48 +243,4 @@ fn is_on_web(scene: &Scene, beam: usize, passed: &BTreeMap<usize, BTreeSet<Ply>>
     let across = scene.steel.members[beam].across;
     let along_web = |plate: &usize| are_parallel(scene.steel.plates[*plate].normal, across, scene.tolerances().angle);
     passed.get(&beam).is_some_and(|plies| only(plies) == Some(Ply::Web)) && plates.iter().all(along_web)
-}
-
-fn are_in_line(scene: &Scene, a: usize, b: usize) -> bool {
-    let (a, b) = (&scene.steel.members[a], &scene.steel.members[b]);
-    let aside = |point: DVec3| (point - a.start).reject_from_normalized(a.along).length();
-    let deep = a.extents.max_element().max(b.extents.max_element());
-    are_parallel(a.along, b.along, scene.tolerances().angle) && aside(b.start) <= deep / 2.0
-}
-
-/// (supporting, supported): the one whose end is nearer to the joint is supported; of two alike, the second by mark.
-fn ranked(scene: &Scene, a: usize, b: usize, centre: DVec3) -> (usize, usize) {
-    let to_end = |i: usize| {
-        let member = &scene.steel.members[i];
-        member.start.distance(centre).min(member.end.distance(centre))
-    };
-    let (to_a, to_b) = (to_end(a), to_end(b));
-    if (to_a - to_b).abs() > scene.tolerances().position.get() {
-        return if to_a < to_b { (b, a) } else { (a, b) };
-    }
-    match of_equal_rank(scene, &[a, b]) {
-        (Some(first), Some(second)) => (first, second),
-        _ => (a, b),
-    }
-}
-
-/// (supporting, supported) of two members that no bolts of ours join.
-pub(super) fn ranked_by_axes(scene: &Scene, a: usize, b: usize) -> (usize, usize) {
-    let (one, two) = (&scene.steel.members[a], &scene.steel.members[b]);
-    let ends = [one.start, one.end, two.start, two.end];
-    let nearest = [(0, 2), (0, 3), (1, 2), (1, 3)]
-        .into_iter()
-        .min_by(|x, y| ends[x.0].distance(ends[x.1]).total_cmp(&ends[y.0].distance(ends[y.1])));
-    let Some((i, j)) = nearest else { return (a, b) };
-    // A running member's axis passes nearer to the other's end than its own end does.
-    let beside = |point: DVec3, from: DVec3, to: DVec3| {
-        let t = ((point - from).dot(to - from) / (to - from).length_squared()).clamp(0.0, 1.0);
-        point.distance(from.lerp(to, if t.is_finite() { t } else { 0.0 }))
-    };
-    let (a_to_b, b_to_a) = (beside(ends[i], two.start, two.end), beside(ends[j], one.start, one.end));
-    if (a_to_b - b_to_a).abs() <= scene.tolerances().position.get() {
-        let (first, second) = of_equal_rank(scene, &[a, b]);
-        return first.zip(second).unwrap_or((a, b));
-    }
-    if a_to_b < b_to_a { (b, a) } else { (a, b) }
 }

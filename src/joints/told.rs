@@ -3,7 +3,8 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use super::Kind;
-use super::recognise::{Draft, ranked_by_axes};
+use super::draft::Draft;
+use super::rank::ranked_by_axes;
 use super::scene::Scene;
 use super::touch::members_meet;
 use crate::shop::{Part, Told};
