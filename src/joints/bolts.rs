@@ -2,9 +2,9 @@
 
 use glam::{DVec2, DVec3};
 
+use super::draft::Draft;
 use super::end_plate::Case;
 use super::layout::{BoltRow, Bolts};
-use super::recognise::Draft;
 use super::scene::Scene;
 use crate::origin::{Datum, Known, Missing, Origin, Place};
 use crate::shop::{Bolt, Part};

@@ -4,9 +4,9 @@ use glam::DVec2;
 
 use super::bolts;
 use super::boxes::{Ply, Slab};
+use super::draft::{Draft, Seat};
 use super::frame::{Frame, Span, are_parallel, corners};
 use super::layout::{EndPlate, EndPlateLayout, MemberAt, Welds};
-use super::recognise::{Draft, Seat};
 use super::scene::Scene;
 use super::stiffeners::{self, OnColumn};
 use super::touch::{EndOn, Pass};

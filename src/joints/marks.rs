@@ -3,7 +3,7 @@
 use std::cmp::Ordering;
 use std::collections::BTreeMap;
 
-use super::recognise::Draft;
+use super::draft::Draft;
 use super::scene::Scene;
 use crate::shop::Part;
 

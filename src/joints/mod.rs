@@ -5,12 +5,14 @@
 mod bolts;
 mod boxes;
 mod cut;
+mod draft;
 mod end_plate;
 mod frame;
 mod graph;
 mod layout;
 mod marks;
 mod near;
+mod rank;
 mod recognise;
 mod scene;
 mod stiffeners;
@@ -134,7 +136,7 @@ pub fn recognise(steelwork: &Steelwork, rulebook: &Rulebook) -> Joints {
     let mut drafts = recognise::name_kinds(&scene, cut::cut(&scene));
     told::hear(&scene, &mut drafts);
     marks::mark(&scene, &mut drafts);
-    let opposites: Vec<_> = recognise::opposites(&drafts);
+    let opposites: Vec<_> = draft::opposites(&drafts);
     let mut loose = vec![true; steelwork.bolts.len()];
     for bolt in drafts.iter().flat_map(|draft| &draft.joint.bolts) {
         loose[*bolt] = false;

@@ -2,77 +2,20 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
-use glam::DVec3;
-
-use super::boxes::{Ply, thicknesses};
+use super::Kind;
+use super::boxes::{Ply, Slab, thicknesses};
 use super::cut::{self, Cluster};
+use super::draft::Draft;
 use super::end_plate::{self, Case};
 use super::frame::{Frame, Span, are_parallel, are_square};
+use super::rank::{are_in_line, of_equal_rank, ranked};
 use super::scene::Scene;
 use super::touch::EndOn;
 use super::welds::{self, Role};
-use super::{Joint, Kind};
-use crate::shop::{Part, Shape};
+use crate::shop::{Member, Part, Shape};
 
 /// A member whose axis is within 60° of the vertical can stand on a base plate.
 const STANDS: f64 = 0.5;
-
-/// A joint before it has its mark.
-pub(super) struct Draft {
-    pub(super) joint: Joint,
-    /// All members in it, ascending.
-    pub(super) members: Vec<usize>,
-    /// The middle of its bolts.
-    pub(super) centre: DVec3,
-    /// Where it sits on its column.
-    pub(super) seat: Option<Seat>,
-    /// What relations call it.
-    pub(super) names: BTreeSet<String>,
-}
-
-/// Where an end-plate joint sits on its column.
-#[derive(Clone, Copy, Debug)]
-pub(super) struct Seat {
-    pub(super) column: usize,
-    /// Which flange: its sign along the column's depth.
-    pub(super) flange: f64,
-    /// The soffit along the column's axis, mm from its start.
-    pub(super) level: f64,
-    /// Depth of the supported member, mm.
-    pub(super) depth: f64,
-}
-
-impl Draft {
-    pub(super) fn new(scene: &Scene, kind: Kind, bolts: Vec<usize>, members: Vec<usize>) -> Self {
-        let centre = cut::centre(scene, &bolts);
-        let place = bolts.iter().map(|bolt| scene.place(Part::Bolt(*bolt))).min();
-        let joint = Joint {
-            mark: String::new(),
-            kind,
-            supporting: None,
-            supported: None,
-            at_end: None,
-            bolts,
-            plates: Vec::new(),
-            welds: Vec::new(),
-            layout: Err(format!("kind not assessed yet: {}", kind.word())),
-            opposite: None,
-            disagreements: Vec::new(),
-            place,
-        };
-        Self { joint, members, centre, seat: None, names: BTreeSet::new() }
-    }
-
-    /// Names the supported member and its end nearest to the joint.
-    fn support(&mut self, scene: &Scene, supporting: Option<usize>, supported: Option<usize>) {
-        self.joint.supporting = supporting;
-        self.joint.supported = supported;
-        self.joint.at_end = supported.map(|i| {
-            let member = &scene.steel.members[i];
-            member.end.distance(self.centre) < member.start.distance(self.centre)
-        });
-    }
-}
 
 /// All clusters as joints, without marks.
 pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
@@ -86,7 +29,45 @@ pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
             Cluster::Other { bolts } => drafts.push(other(scene, bolts)),
         }
     }
+    drafts.extend((0..scene.steel.plates.len()).filter_map(|plate| base_without_bolts(scene, plate)));
     drafts
+}
+
+/// A column's foot on a plate through which no bolt passes: its anchors may have been left out of the exchange.
+fn base_without_bolts(scene: &Scene, plate: usize) -> Option<Draft> {
+    if scene.is_bolted(plate) || scene.touches.members[plate].len() > 1 {
+        return None;
+    }
+    let end = *cut::ends_on(scene, plate).first()?;
+    let column = &scene.steel.members[end.member];
+    let spread = Slab::of_plate(&scene.steel.plates[plate])?.half;
+    let wider = spread.x.min(spread.y) >= column.extents.min_element() / 2.0;
+    if !wider || !stands_on_end(column, &end) {
+        return None;
+    }
+    let mut draft = Draft::new(scene, Kind::ColumnBase, Vec::new(), vec![end.member]);
+    draft.centre = scene.steel.plates[plate].centre;
+    draft.support(scene, None, Some(end.member));
+    draft.joint.at_end = Some(end.at_end);
+    draft.joint.place = Some(scene.place(Part::Plate(plate)));
+    draft.joint.plates.push((plate, "end-plate"));
+    draft.joint.welds = others_at(scene, [plate]);
+    draft.joint.layout =
+        Err(format!("kind not assessed yet: {}: no bolts or anchors were found", Kind::ColumnBase.word()));
+    Some(draft)
+}
+
+/// Whether a member stands up from that end.
+fn stands_on_end(member: &Member, end: &EndOn) -> bool {
+    let (foot, top) = if end.at_end { (member.end, member.start) } else { (member.start, member.end) };
+    (top - foot).normalize_or_zero().z >= STANDS
+}
+
+/// Welds at plates, without a role.
+fn others_at(scene: &Scene, plates: impl IntoIterator<Item = usize>) -> Vec<(usize, &'static str)> {
+    let welds: BTreeSet<usize> =
+        plates.into_iter().flat_map(|plate| scene.welds_at(Part::Plate(plate))).copied().collect();
+    welds.into_iter().map(|weld| (weld, Role::Other.word())).collect()
 }
 
 fn splice(scene: &Scene, plates: &[usize], bolts: Vec<usize>) -> Draft {
@@ -96,41 +77,10 @@ fn splice(scene: &Scene, plates: &[usize], bolts: Vec<usize>) -> Draft {
     let mut draft = Draft::new(scene, Kind::EndPlateSplice, bolts, members);
     draft.joint.plates = plates.iter().map(|plate| (*plate, "end-plate")).collect();
     draft.joint.place = plates.iter().map(|plate| scene.place(Part::Plate(*plate))).min();
+    draft.joint.welds = others_at(scene, plates.iter().copied());
     let (first, second) = of_equal_rank(scene, &draft.members);
     draft.support(scene, first, second);
     draft
-}
-
-/// For each joint the one on the column's other flange whose soffit is nearest, if it is within the deeper beam's depth.
-pub(super) fn opposites(drafts: &[Draft]) -> Vec<Option<usize>> {
-    let mut on_column: BTreeMap<usize, Vec<(usize, Seat)>> = BTreeMap::new();
-    for (index, draft) in drafts.iter().enumerate() {
-        if let Some(seat) = draft.seat {
-            on_column.entry(seat.column).or_default().push((index, seat));
-        }
-    }
-    let across = |draft: &Draft| {
-        let seat = draft.seat?;
-        let others = on_column.get(&seat.column)?.iter().filter(|(_, other)| {
-            other.flange * seat.flange < 0.0 && (other.level - seat.level).abs() < other.depth.max(seat.depth)
-        });
-        others
-            .min_by(|(_, a), (_, b)| (a.level - seat.level).abs().total_cmp(&(b.level - seat.level).abs()))
-            .map(|(i, _)| *i)
-    };
-    drafts.iter().map(across).collect()
-}
-
-/// Two members neither of which supports the other: the first by mark stands as supporting, so that the file's order
-/// does not matter.
-fn of_equal_rank(scene: &Scene, members: &[usize]) -> (Option<usize>, Option<usize>) {
-    let mut by_label = members.to_vec();
-    let key = |i: &usize| {
-        let member = &scene.steel.members[*i];
-        (scene.label(Part::Member(*i)), scene.spot(member.start), member.identity.guid.clone())
-    };
-    by_label.sort_by_cached_key(key);
-    (by_label.first().copied(), by_label.get(1).copied())
 }
 
 fn end_plate(scene: &Scene, plate: usize, bolts: Vec<usize>) -> Option<Draft> {
@@ -152,10 +102,8 @@ fn end_plate(scene: &Scene, plate: usize, bolts: Vec<usize>) -> Option<Draft> {
     let strong = frame.is_some_and(|frame| covers_both_flanges(scene, &frame, &end, plate)) && reaches_a_flange(&welds);
 
     let (kind, why) = if passed.is_empty() {
-        let (foot, top) = if end.at_end { (beam.end, beam.start) } else { (beam.start, beam.end) };
-        let stands = (top - foot).normalize_or_zero().z >= STANDS;
         let why = "the bolts pass through nothing but the end plate";
-        if stands { (Kind::ColumnBase, None) } else { (Kind::OtherBolted, Some(why)) }
+        if stands_on_end(beam, &end) { (Kind::ColumnBase, None) } else { (Kind::OtherBolted, Some(why)) }
     } else if beam.shape != Shape::I {
         (Kind::OtherBolted, Some("the member with the end plate is no I section"))
     } else if !strong && (flange.is_some() || on_web) {
@@ -243,7 +191,12 @@ fn other(scene: &Scene, bolts: Vec<usize>) -> Draft {
             } else {
                 Kind::OtherBolted
             };
-            (kind, stands_on, Some(beam))
+            // A plate bolted to a flange belongs to the other member, whose end is further off than it should be.
+            let on_flange = passed.get(&beam).and_then(only).is_some_and(|ply| ply.sign() != 0.0);
+            match stands_on.filter(|_| on_flange) {
+                Some(other) => (kind, Some(beam), Some(other)),
+                None => (kind, stands_on, Some(beam)),
+            }
         }
         [a, b] if !plates.is_empty() && are_in_line(scene, a, b) => {
             let (first, second) = of_equal_rank(scene, &members);
@@ -258,17 +211,18 @@ fn other(scene: &Scene, bolts: Vec<usize>) -> Draft {
         _ => (Kind::OtherBolted, None, members.first().copied().filter(|_| members.len() == 1)),
     };
     let mut all = members;
-    all.extend(supporting.filter(|member| !all.contains(member)));
+    for member in [supporting, supported].into_iter().flatten() {
+        if !all.contains(&member) {
+            all.push(member);
+        }
+    }
     all.sort_unstable();
     let mut draft = Draft::new(scene, kind, bolts, all);
     draft.support(scene, supporting, supported);
     draft.joint.plates = plates.iter().map(|plate| (*plate, "plate")).collect();
     let first_plate = plates.iter().map(|plate| scene.place(Part::Plate(*plate))).min();
     draft.joint.place = first_plate.or(draft.joint.place);
-    let mut welds: Vec<usize> = plates.iter().flat_map(|plate| scene.welds_at(Part::Plate(*plate))).copied().collect();
-    welds.sort_unstable();
-    welds.dedup();
-    draft.joint.welds = welds.into_iter().map(|weld| (weld, Role::Other.word())).collect();
+    draft.joint.welds = others_at(scene, plates);
     draft
 }
 
@@ -289,48 +243,4 @@ fn is_on_web(scene: &Scene, beam: usize, passed: &BTreeMap<usize, BTreeSet<Ply>>
     let across = scene.steel.members[beam].across;
     let along_web = |plate: &usize| are_parallel(scene.steel.plates[*plate].normal, across, scene.tolerances().angle);
     passed.get(&beam).is_some_and(|plies| only(plies) == Some(Ply::Web)) && plates.iter().all(along_web)
-}
-
-fn are_in_line(scene: &Scene, a: usize, b: usize) -> bool {
-    let (a, b) = (&scene.steel.members[a], &scene.steel.members[b]);
-    let aside = |point: DVec3| (point - a.start).reject_from_normalized(a.along).length();
-    let deep = a.extents.max_element().max(b.extents.max_element());
-    are_parallel(a.along, b.along, scene.tolerances().angle) && aside(b.start) <= deep / 2.0
-}
-
-/// (supporting, supported): the one whose end is nearer to the joint is supported; of two alike, the second by mark.
-fn ranked(scene: &Scene, a: usize, b: usize, centre: DVec3) -> (usize, usize) {
-    let to_end = |i: usize| {
-        let member = &scene.steel.members[i];
-        member.start.distance(centre).min(member.end.distance(centre))
-    };
-    let (to_a, to_b) = (to_end(a), to_end(b));
-    if (to_a - to_b).abs() > scene.tolerances().position.get() {
-        return if to_a < to_b { (b, a) } else { (a, b) };
-    }
-    match of_equal_rank(scene, &[a, b]) {
-        (Some(first), Some(second)) => (first, second),
-        _ => (a, b),
-    }
-}
-
-/// (supporting, supported) of two members that no bolts of ours join.
-pub(super) fn ranked_by_axes(scene: &Scene, a: usize, b: usize) -> (usize, usize) {
-    let (one, two) = (&scene.steel.members[a], &scene.steel.members[b]);
-    let ends = [one.start, one.end, two.start, two.end];
-    let nearest = [(0, 2), (0, 3), (1, 2), (1, 3)]
-        .into_iter()
-        .min_by(|x, y| ends[x.0].distance(ends[x.1]).total_cmp(&ends[y.0].distance(ends[y.1])));
-    let Some((i, j)) = nearest else { return (a, b) };
-    // A running member's axis passes nearer to the other's end than its own end does.
-    let beside = |point: DVec3, from: DVec3, to: DVec3| {
-        let t = ((point - from).dot(to - from) / (to - from).length_squared()).clamp(0.0, 1.0);
-        point.distance(from.lerp(to, if t.is_finite() { t } else { 0.0 }))
-    };
-    let (a_to_b, b_to_a) = (beside(ends[i], two.start, two.end), beside(ends[j], one.start, one.end));
-    if (a_to_b - b_to_a).abs() <= scene.tolerances().position.get() {
-        let (first, second) = of_equal_rank(scene, &[a, b]);
-        return first.zip(second).unwrap_or((a, b));
-    }
-    if a_to_b < b_to_a { (b, a) } else { (a, b) }
 }

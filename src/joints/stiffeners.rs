@@ -1,6 +1,9 @@
 //! Plates between the column's flanges near an end-plate joint: transverse stiffeners, and what nobody credits.
 
+use std::collections::BTreeMap;
+
 use super::boxes::thicknesses;
+use super::cut;
 use super::end_plate::Case;
 use super::frame::{Span, are_parallel, are_square, corners};
 use super::layout::Stiffener;
@@ -38,12 +41,13 @@ pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) 
     let column = &scene.steel.members[case.column];
     let mut found = OnColumn::default();
     let mut halves = Vec::new();
+    let mut others: BTreeMap<String, usize> = BTreeMap::new();
     for index in scene.touches.plates_of[case.column].iter().copied() {
         let plate = &scene.steel.plates[index];
         let near = Span::of(corners(plate).map(|p| case.frame.height(p)))
             .is_some_and(|own| own.hi >= heights.lo - BEYOND && own.lo <= heights.hi + BEYOND);
         let end_plate =
-            index == case.plate || !scene.touches.ends[index].is_empty() && !is_transverse(scene, column, plate);
+            index == case.plate || !is_transverse(scene, column, plate) && !cut::ends_on(scene, index).is_empty();
         if !near || end_plate {
             continue;
         }
@@ -52,12 +56,16 @@ pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) 
             None if is_bolted_elsewhere(scene, index, bolted) => {}
             None => {
                 let what = not_a_stiffener(scene, column, plate);
-                found.not_credited.push(format!("{what} {} is not credited", scene.label(Part::Plate(index))));
+                *others.entry(format!("{what} {}", scene.label(Part::Plate(index)))).or_default() += 1;
                 found.others.push(index);
             }
         }
     }
-    found.not_credited.sort();
+    let sentence = |(what, count): (String, usize)| match count {
+        1 => format!("{what} is not credited"),
+        _ => format!("{what} ({count} plates) is not credited"),
+    };
+    found.not_credited = others.into_iter().map(sentence).collect();
     found.stiffeners = pairs(scene, column, halves);
     found
 }
@@ -80,8 +88,10 @@ fn half(scene: &Scene, case: &Case, index: usize) -> Option<Half> {
     let depth = Span::of(corners(plate).map(|p| (p - column.start).dot(column.depth)))?;
     let clear = column.extents.y / 2.0 - t_f + touch;
     let inside = depth.lo >= -clear && depth.hi <= clear;
+    // One that stops short of the flange with the joint does nothing for it.
+    let at_joint = if case.ply.sign() > 0.0 { depth.hi } else { -depth.lo } >= clear - 2.0 * touch;
     let on_web = (across.lo - t_w / 2.0).abs() <= touch || (across.hi + t_w / 2.0).abs() <= touch;
-    (is_transverse(scene, column, plate) && inside && on_web).then(|| Half {
+    (is_transverse(scene, column, plate) && inside && at_joint && on_web).then(|| Half {
         plate: index,
         height: case.frame.height(plate.centre),
         across,

@@ -3,7 +3,8 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use super::Kind;
-use super::recognise::{Draft, ranked_by_axes};
+use super::draft::Draft;
+use super::rank::ranked_by_axes;
 use super::scene::Scene;
 use super::touch::members_meet;
 use crate::shop::{Part, Told};
@@ -12,9 +13,13 @@ use crate::shop::{Part, Told};
 pub(super) fn hear(scene: &Scene, drafts: &mut Vec<Draft>) {
     let mut by_bolt: BTreeMap<usize, BTreeSet<usize>> = BTreeMap::new();
     let mut by_pair: BTreeMap<(usize, usize), BTreeSet<usize>> = BTreeMap::new();
+    let mut base_of: BTreeMap<Part, usize> = BTreeMap::new();
     for (index, draft) in drafts.iter().enumerate() {
         for bolt in &draft.joint.bolts {
             by_bolt.entry(*bolt).or_default().insert(index);
+        }
+        if draft.joint.bolts.is_empty() {
+            base_of.extend(draft.joint.plates.iter().map(|(plate, _)| (Part::Plate(*plate), index)));
         }
         // All pairs: a joint has few members, and one with many is searched by its bolts.
         for (i, a) in draft.members.iter().take(8).enumerate() {
@@ -42,6 +47,7 @@ pub(super) fn hear(scene: &Scene, drafts: &mut Vec<Draft>) {
         }
         if meant.is_empty() {
             meant.extend(pair.and_then(|pair| by_pair.get(&pair)).into_iter().flatten());
+            meant.extend(told.between.iter().chain(&told.by).filter_map(|part| base_of.get(part)));
         }
         for index in &meant {
             compare(scene, told, &bolts, &between, &mut drafts[*index]);
@@ -110,7 +116,8 @@ fn alone(scene: &Scene, told: &Told, bolts: Vec<usize>, members: Vec<usize>, pai
     draft.joint.welds = welds.into_iter().map(|weld| (weld, "other")).collect();
     draft.joint.place = Some(told.place.clone());
     draft.names.extend(told.name.as_deref().map(str::trim).filter(|name| !name.is_empty()).map(str::to_owned));
-    let why = format!("only an explicit relation says so: {} joins parts that meet nowhere in geometry", called(told));
+    let what = if draft.joint.bolts.is_empty() { "its members meet nowhere" } else { "no bolt of it joins two parts" };
+    let why = format!("only an explicit relation says so ({}): in geometry {what}", called(told));
     draft.joint.disagreements.push(why.clone());
     draft.joint.layout = Err(why);
     draft

@@ -177,12 +177,33 @@ fn a_base_plate() {
 }
 
 #[test]
+fn a_base_plate_whose_anchors_are_not_modelled() {
+    let mut steel = Steelwork::default();
+    steel.members.push(member("C1", COLUMN, DVec3::Z * 6000.0, DVec3::ZERO, DVec3::X));
+    steel.plates.push(plate("BP", -DVec3::Z * 15.0, DVec3::X, DVec3::Y, (500.0, 400.0), 30.0));
+    let joint = is(&steel, Kind::ColumnBase, 0, None, Some(0));
+    assert!(joint.layout.unwrap_err().ends_with("no bolts or anchors were found"));
+    steel.told.push(told("F1", &[Part::Member(0)], &[Part::Plate(0)]));
+    assert_eq!(only(&steel).mark, "F1");
+    // A cap on the column's head is no base.
+    steel.plates[0].centre.z = 6015.0;
+    assert!(find(&steel).joints.is_empty());
+}
+
+#[test]
 fn an_end_plate_without_a_support_is_not_lost() {
     let mut steel = frame(&[Detail::default()]);
     steel.members[0].start.x -= 1000.0;
     steel.members[0].end.x -= 1000.0;
     let joint = is(&steel, Kind::OtherBolted, 8, None, Some(1));
     assert!(joint.layout.unwrap_err().contains("nothing but the end plate"));
+}
+
+#[test]
+fn a_plate_of_a_beam_that_runs_through_it_still_tells_who_supports() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.members[1].start.x = 0.0;
+    is(&steel, Kind::OtherBolted, 8, Some(0), Some(1));
 }
 
 #[test]

@@ -207,6 +207,24 @@ fn web_plates_and_diagonals_are_named_as_not_credited() {
 }
 
 #[test]
+fn a_diagonal_behind_the_end_plate_is_no_other_beams_end_plate() {
+    let mut steel = frame(&[Detail::default()]);
+    // Its normal is 37° from the beam's axis, and the beam's end is near.
+    let (along, middle) = (DVec3::new(-0.606, 0.0, 0.795), DVec3::new(0.0, 78.0, 4203.2));
+    steel.plates.push(plate("DI", middle, along, DVec3::Y, (438.0, 142.0), 15.0));
+    assert_eq!(layout(&steel).not_credited, ["diagonal DI is not credited"]);
+}
+
+#[test]
+fn a_stiffener_on_the_far_flange_only_is_not_credited() {
+    let mut steel = ribbed(Rib { reach: 120.0, both_sides: false, ..RIB });
+    steel.plates[1].centre.x *= -1.0;
+    let layout = layout(&steel);
+    assert!(layout.stiffeners.is_empty());
+    assert_eq!(layout.not_credited, ["transverse plate B1-S0b is not credited"]);
+}
+
+#[test]
 fn a_backing_plate_is_named_and_the_joint_is_laid_out() {
     let mut steel = frame(&[Detail::default()]);
     let inside = DVec3::new(160.25 - 21.7 - 5.0, 0.0, 4397.7);
