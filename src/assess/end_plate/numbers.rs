@@ -320,7 +320,8 @@ fn unsound(
         reasons.push(("end plate size", format!("thickness {}, width {}", plate.thickness, plate.width)));
     }
     let position = rulebook.tolerances.position;
-    if !(plate.bottom <= position && plate.top >= beam_h - position) {
+    let finite = plate.bottom.get().is_finite() && plate.top.get().is_finite();
+    if !(finite && plate.bottom <= position && plate.top >= beam_h - position) {
         reasons.push((
             "end plate shorter than the beam",
             format!("it reaches from {} to {} above the soffit, the beam from 0 to {beam_h}", plate.bottom, plate.top),
