@@ -44,7 +44,7 @@ fn maximise(c: &[f64], a: &[Vec<f64>], b: &[f64]) -> f64 {
 }
 
 /// The rows that a component's title names: "…, rows 2-3 (mode 2)".
-fn rows_of(title: &str) -> Option<(usize, usize)> {
+pub fn rows_of(title: &str) -> Option<(usize, usize)> {
     let tail = title.rsplit_once("rows ").or_else(|| title.rsplit_once("row "))?.1;
     let mut numbers = tail.split(|c: char| !c.is_ascii_digit()).filter_map(|n| n.parse().ok());
     let first = numbers.next()?;
