@@ -7,7 +7,9 @@ use faying::rulebook::{Clearance, Rulebook, Section};
 use faying::units::{Area, Force, Length, knm, mm};
 use proptest::prelude::*;
 
-use super::joint::{Sketch, asked, case, known, mirrored, resistance, sketches};
+use super::joint::{Sketch, asked, case, known, mirrored, resistance, sketches, unknown};
+use faying::joints::Welds;
+use faying::origin::Known;
 
 const SENSES: [Sense; 2] = [Sense::Hogging, Sense::Sagging];
 
@@ -165,6 +167,39 @@ proptest! {
             let of = |beta: f64| resistance(&layout, sense, beta, &rulebook);
             let (Ok(a), Ok(b)) = (of(beta), of((beta + more).min(2.0))) else { continue };
             prop_assert!(b.without_welds <= a.without_welds * (1.0 + 1e-9) || a.notes.iter().any(|n| n.contains("1.9 Ft,Rd")));
+        }
+    }
+
+    /// A bound on what nobody states is one, across the cliff of 6.2.7.2(9) too: whatever β is, whatever the radius and the
+    /// fillets (up to the thickness of the thinnest web here).
+    #[test]
+    fn an_unknown_is_never_worth_more_than_what_it_may_be(sketch in sketches(), beta in 0.0..2.0f64, r in 0.0..30.0f64, a in 3.0..7.0f64) {
+        let rulebook = Rulebook::embedded();
+        let layout = sketch.layout(&rulebook);
+        let moment = |layout: &EndPlateLayout, opposite| {
+            let assessment = asked(layout, &case(Some(1.0), Some(0.0), Some(0.0)), opposite, &rulebook);
+            assessment.cases[0].moment.as_ref().map(|m| m.without_welds.get())
+        };
+        let of_beta = moment(&layout, Opposite::Moment(knm(1.0 - beta)));
+        if let (Some(unknown), Some(of_beta)) = (moment(&layout, Opposite::NotStated), of_beta) {
+            prop_assert!(unknown <= of_beta * (1.0 + 1e-9), "β {unknown} {of_beta}");
+        }
+        let with_radius = |r: Option<f64>| {
+            let mut layout = layout.clone();
+            let Section { designation, h, b, t_w, t_f, rolled, .. } = layout.column.section.clone().unwrap().value;
+            layout.column.section = known(Section::from_sizes(&designation, h, b, t_w, t_f, r.map(mm), rolled).unwrap());
+            moment(&layout, Opposite::None)
+        };
+        if let (Some(unknown), Some(of_r)) = (with_radius(None), with_radius(Some(r))) {
+            prop_assert!(unknown <= of_r * (1.0 + 1e-9), "r {unknown} {of_r}");
+        }
+        let with_welds = |weld: Known<Length>| {
+            let mut layout = layout.clone();
+            layout.welds = Welds { flange_top: weld.clone(), flange_bottom: weld.clone(), web: weld };
+            moment(&layout, Opposite::None)
+        };
+        if let (Some(unknown), Some(of_a)) = (with_welds(unknown("weld")), with_welds(known(mm(a)))) {
+            prop_assert!(unknown <= of_a * (1.0 + 1e-9), "a {unknown} {of_a}");
         }
     }
 
