@@ -123,12 +123,9 @@ fn pairs(scene: &Scene, column: &Member, mut halves: Vec<Half>) -> Vec<(Stiffene
     let mut stiffeners = Vec::new();
     while !halves.is_empty() {
         let one = halves.remove(0);
-        let partner = halves.iter().position(|two| {
-            let common = one.depth.hi.min(two.depth.hi) - one.depth.lo.max(two.depth.lo);
-            one.height - two.height <= position
-                && one.across.mid() * two.across.mid() < 0.0
-                && common >= 0.5 * one.depth.size().min(two.depth.size())
-        });
+        let partner = halves
+            .iter()
+            .position(|two| one.height - two.height <= position && one.across.mid() * two.across.mid() < 0.0);
         let two = partner.map(|i| halves.remove(i));
         stiffeners.push(stiffener(scene, column, &one, two.as_ref()));
     }
