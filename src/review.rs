@@ -182,7 +182,7 @@ pub struct CheckResult {
 pub struct JointReview {
     /// The mark (of the schedule, if paired, else of the steel).
     pub mark: String,
-    /// The kind's word; "not-found" for a scheduled joint without steel.
+    /// The kind's word; "not-found" for a scheduled joint without steel, "not-paired" for one that fits no single joint.
     pub kind: String,
     /// The intended type of detail, if the schedule names one.
     pub detail: Option<String>,
@@ -232,7 +232,7 @@ impl JointReview {
 
     /// Whether there is steel for it.
     pub fn found(&self) -> bool {
-        self.kind != "not-found"
+        !matches!(self.kind.as_str(), "not-found" | "not-paired")
     }
 }
 

@@ -40,11 +40,7 @@ pub enum Failed {
 /// [`Failed`] where an input can't be read at all; whatever else is odd is a problem in the review.
 pub fn run(inputs: &Inputs<'_>) -> Result<Review, Failed> {
     let rulebook = Rulebook::with_overrides(&inputs.rules).map_err(|e| Failed::Rules(Box::new(e)))?;
-    let mut intents = Vec::new();
-    for (file, text) in &inputs.schedules {
-        intents.push(intent::read(text, file).map_err(|e| Failed::Schedule(Box::new(e)))?);
-    }
-    let intent = intent::merge(intents).map_err(|e| Failed::Schedule(Box::new(e)))?;
+    let intent = intent::read_all(&inputs.schedules).map_err(|e| Failed::Schedule(Box::new(e)))?;
     let (file, bytes) = inputs.model;
     let exchange = exchange::read(bytes, file)?;
     let steelwork = shop::take_up(&exchange, &rulebook);

@@ -11,9 +11,6 @@ use proptest::prelude::*;
 
 use crate::close;
 
-/// Tolerance of half the last printed digit.
-const HALF_KN: f64 = 0.5;
-
 #[test]
 fn bolts_in_tension_and_shear() {
     // SCI/BCSA P363-type bolt tables, read in published pages: Ft,Rd and Fv,Rd (thread in the shear plane), γM2 1.25;

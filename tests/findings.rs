@@ -15,6 +15,7 @@ mod gauge_differs;
 mod grade_unknown;
 mod joint_handed_wrong;
 mod joint_not_found;
+mod joint_not_paired;
 mod joint_not_scheduled;
 mod kind_not_assessed;
 mod lost_capacity;

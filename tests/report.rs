@@ -63,7 +63,7 @@ DEVIATES BUT CARRIES: 1 joint, utilisation up to 0.75
    plate-thicker: the end plate is thicker than intended (intended 20 mm, detailed 25 mm)
      1 joint: B6/C6; first at hall.ifcxml:106:3
 
-CLEAR: 1 joint, utilisation up to 0.97: B7/C7
+CLEAR: 1 joint, utilisation up to 0.97, the most used first: B7/C7
 
 JOINTS, worst first; M and V of the case that governs
 joint  outcome   util.  governed by                               M_Ed   M_Rd   V_Ed   V_Rd  detail
@@ -112,7 +112,7 @@ fn one_clear_joint_is_told_as_one() {
     let text = drawn(&review(vec![used(joint(1, Outcome::Clear), 200.0, 100.0)]));
     assert!(text.contains("\n1 joint: 0 on hold, 0 unproven, 0 with a comment, 1 clear.\n"), "{text}");
     assert!(text.contains("\nON HOLD: none\n\nUNPROVEN: none\n\nMISSING: none\n"), "{text}");
-    assert!(text.contains("\nCLEAR: 1 joint, utilisation up to 0.50: B1/C1\n"), "{text}");
+    assert!(text.contains("\nCLEAR: 1 joint, utilisation up to 0.50, the most used first: B1/C1\n"), "{text}");
 }
 
 #[test]
@@ -175,6 +175,45 @@ fn like_faults_are_told_once_and_unlike_ones_apart() {
     // Worst first.
     let order: Vec<usize> = ["B1/C1: ", "B4/C4: ", "B3/C3: "].iter().map(|mark| holds.find(mark).unwrap()).collect();
     assert!(order.is_sorted(), "{holds}");
+}
+
+#[test]
+fn a_value_that_the_message_gives_is_not_said_twice() {
+    for (message, said) in [
+        ("the plate is thinner: 20 mm instead of 25 mm", "the plate is thinner: 20 mm instead of 25 mm\n"),
+        ("the plate of 125 mm is thinner: 20 mm", "the plate of 125 mm is thinner: 20 mm (intended 25 mm)\n"),
+        ("the plate is thinner", "the plate is thinner (intended 25 mm, detailed 20 mm)\n"),
+    ] {
+        let mut held = used(joint(1, Outcome::Hold), 200.0, 250.0);
+        held.findings = vec![finding("plate-thinner", Outcome::Hold, message, Some(("25 mm", "20 mm")))];
+        let text = drawn(&review(vec![held]));
+        assert!(text.contains(&format!("plate-thinner: {said}")), "{text}");
+    }
+}
+
+#[test]
+fn an_edge_distance_is_a_fault_of_its_own_and_a_moment_is_not() {
+    let short = |n, rule, message: &str| {
+        let mut held = used(joint(n, Outcome::Hold), 200.0, 250.0);
+        held.findings = vec![finding(rule, Outcome::Hold, message, None)];
+        held
+    };
+    for (rule, groups) in [("edge-distance-short", 2), ("moment-short", 1)] {
+        let text = drawn(&review(vec![short(1, rule, "20 instead of 24"), short(2, rule, "22 instead of 24")]));
+        assert_eq!(section(&text, "ON HOLD").matches(&format!("{rule}: ")).count(), groups, "{text}");
+    }
+}
+
+#[test]
+fn what_the_lines_above_say_is_not_said_again() {
+    let mut held = used(joint(1, Outcome::Hold), 200.0, 250.0);
+    let message =
+        "the joint does not carry the moment: utilisation 1.25, governed by end plate in bending, rows 1-2 (mode 1)";
+    held.findings = vec![finding("moment-short", Outcome::Hold, message, Some(("250.0 kNm", "200.0 kNm")))];
+    assert!(drawn(&review(vec![held.clone()])).contains("\n   moment-short: as said above\n"));
+    // Another component governs the moment than the case: both are said.
+    held.required[0].governed_by = Some("weld at the tension flange".into());
+    assert!(drawn(&review(vec![held])).contains("\n   moment-short: the joint does not carry the moment"));
 }
 
 #[test]
@@ -419,7 +458,7 @@ fn the_json_has_the_keys_of_version_one() {
 
 #[test]
 fn the_json_comes_back_as_it_went() {
-    for review in [small(), many(), review(Vec::new())] {
+    for review in [small(), surveyed(), review(Vec::new())] {
         let text = json::review(&review).unwrap();
         let document: document::Review = serde_json::from_str(&text).unwrap();
         assert_eq!(serde_json::to_string_pretty(&document).unwrap() + "\n", text);

@@ -41,7 +41,7 @@ pub fn review(
         checks: leading.map(|l| l.checks).unwrap_or_default(),
         findings,
         missing,
-        assumptions: assessment.map(|a| a.assumptions.clone()).unwrap_or_default(),
+        assumptions: assessment.map(assumptions).unwrap_or_default(),
         inputs: (assessment.iter())
             .flat_map(|a| &a.inputs)
             .map(|i| (i.name.clone(), i.value.clone(), i.origin.to_string()))
@@ -52,15 +52,24 @@ pub fn review(
     }
 }
 
-/// A scheduled joint without steel.
-pub fn not_found(scheduled: &ScheduledJoint, findings: Vec<Finding>) -> JointReview {
+/// What was assumed, and where a resistance was computed on the safe side for want of a number.
+fn assumptions(assessment: &Assessment) -> Vec<String> {
+    let bounds = assessment.gaps.iter().filter_map(|gap| match gap {
+        Gap::LowerBound(missing) => Some(format!("{} not known: {}", missing.what, missing.reason)),
+        Gap::NotChecked(_) => None,
+    });
+    assessment.assumptions.iter().cloned().chain(bounds).collect()
+}
+
+/// A scheduled joint without steel (`kind` "not-found"), or one that fits no single joint of the steel ("not-paired").
+pub fn without_steel(scheduled: &ScheduledJoint, kind: &str, findings: Vec<Finding>) -> JointReview {
     let named = || {
         let ends = [scheduled.supported.as_deref(), scheduled.supporting.as_deref()];
         ends.into_iter().flatten().collect::<Vec<_>>().join(" / ")
     };
     JointReview {
         mark: scheduled.mark.clone().unwrap_or_else(named),
-        kind: "not-found".into(),
+        kind: kind.into(),
         detail: scheduled.detail.clone(),
         outcome: outcome(None, &findings, &[]),
         reasons: reasons(&findings, &[]),
@@ -138,11 +147,13 @@ fn missing(
         Some(_) => {}
     }
     let carries = computed.detailed.as_ref().map(Assessment::carries);
-    for gap in computed.detailed.iter().flat_map(|a| &a.gaps) {
+    let gaps = || computed.detailed.iter().flat_map(|a| &a.gaps);
+    let not_checked = |what: &str| gaps().any(|gap| matches!(gap, Gap::NotChecked(other) if other.what == what));
+    for gap in gaps() {
         match gap {
             Gap::NotChecked(gap) => missing.push(gap.clone()),
-            // A lower bound that carries proves it all the same.
-            Gap::LowerBound(gap) if carries != Some(State::Met) => missing.push(gap.clone()),
+            // What can't be checked stands in the list once; a lower bound that carries proves it all the same.
+            Gap::LowerBound(gap) if carries != Some(State::Met) && !not_checked(&gap.what) => missing.push(gap.clone()),
             Gap::LowerBound(_) => {}
         }
     }

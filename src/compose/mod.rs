@@ -37,7 +37,9 @@ pub struct Sources<'a> {
 /// The review of everything.
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
     let mut joints: Vec<JointReview> = (0..sources.joints.joints.len()).map(|index| sources.found(index)).collect();
-    joints.extend(sources.pairing.not_found.iter().filter_map(|&index| sources.not_found(index)));
+    let pairing = sources.pairing;
+    joints.extend(pairing.not_found.iter().filter_map(|&index| sources.without_steel(index, false)));
+    joints.extend(pairing.unclear.iter().filter_map(|&index| sources.without_steel(index, true)));
     joints.sort_by_cached_key(|joint| natural(&joint.mark));
 
     let ends = |outcome| joints.iter().filter(|joint| joint.outcome == outcome).count();
@@ -215,12 +217,13 @@ impl<'a> Sources<'a> {
             intended: self.detail(scheduled),
             assessment: computed.detailed.as_ref(),
             intended_assessment: computed.intended.as_ref().and_then(|i| i.as_ref().ok()).map(|(_, a)| a),
+            unclear: false,
         };
         let findings = findings::look(&context);
         joint::review(self, joint, scheduled, &computed, findings)
     }
 
-    fn not_found(&self, index: usize) -> Option<JointReview> {
+    fn without_steel(&self, index: usize, unclear: bool) -> Option<JointReview> {
         let scheduled = self.intent.joints.get(index)?;
         let context = Context {
             rulebook: self.rulebook,
@@ -232,7 +235,9 @@ impl<'a> Sources<'a> {
             intended: self.detail(Some(scheduled)),
             assessment: None,
             intended_assessment: None,
+            unclear,
         };
-        Some(joint::not_found(scheduled, findings::look(&context)))
+        let kind = if unclear { "not-paired" } else { "not-found" };
+        Some(joint::without_steel(scheduled, kind, findings::look(&context)))
     }
 }

@@ -1,5 +1,7 @@
 //! One entity of the graph and its values.
 
+use std::sync::Arc;
+
 use super::graph::Entities;
 use super::problems::Spot;
 use super::schema::Attribute;
@@ -30,7 +32,31 @@ pub enum Value {
     /// A list, set or array; lists of lists nest.
     List(Vec<Value>),
     /// A defined type chosen in a SELECT: `IfcLabel`, with its value.
-    Typed(Box<str>, Box<Value>),
+    Typed(TypeName, Box<Value>),
+}
+
+/// The name of a defined type, such as `IfcLabel`; thin and shared, because exchanges hold very many values.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct TypeName(Arc<Box<str>>);
+
+impl From<&str> for TypeName {
+    fn from(name: &str) -> Self {
+        Self(Arc::new(name.into()))
+    }
+}
+
+impl std::ops::Deref for TypeName {
+    type Target = str;
+
+    fn deref(&self) -> &str {
+        &self.0
+    }
+}
+
+impl std::fmt::Display for TypeName {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        f.write_str(self)
+    }
 }
 
 /// One entity of the graph.

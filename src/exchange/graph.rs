@@ -29,7 +29,7 @@ pub struct Entities {
 #[derive(Debug)]
 struct Node {
     class: ClassId,
-    label_len: u16,
+    /// Where its label starts; it ends where the next one's starts.
     label: u32,
     values: u32,
     line: u32,
@@ -129,17 +129,8 @@ impl Entities {
         self.pointers.take(); // whoever asked before did not see this entity
         let id = Id(self.nodes.len() as u32);
         let start = self.labels.len() as u32;
-        let label_len = label.len().min(usize::from(u16::MAX));
-        let label = label.get(..label_len).unwrap_or_default();
         self.labels.push_str(label);
-        self.nodes.push(Node {
-            class,
-            label_len: label.len() as u16,
-            label: start,
-            values: 0,
-            line: spot.line,
-            column: spot.column,
-        });
+        self.nodes.push(Node { class, label: start, values: 0, line: spot.line, column: spot.column });
         id
     }
 
@@ -176,9 +167,9 @@ impl Entities {
     }
 
     pub(super) fn label(&self, id: Id) -> &str {
-        let node = self.node(id);
-        let start = node.label as usize;
-        self.labels.get(start..start + usize::from(node.label_len)).unwrap_or_default()
+        let start = self.node(id).label as usize;
+        let end = self.nodes.get(id.0 as usize + 1).map_or(self.labels.len(), |next| next.label as usize);
+        self.labels.get(start..end).unwrap_or_default()
     }
 
     pub(super) fn spot(&self, id: Id) -> Spot {

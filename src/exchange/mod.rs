@@ -4,12 +4,13 @@ mod conform;
 mod entity;
 mod graph;
 mod ifcxml;
+mod labels;
 mod problems;
 mod scalar;
 mod schema;
 mod sniff;
 
-pub use entity::{Entity, Id, Value};
+pub use entity::{Entity, Id, TypeName, Value};
 pub use graph::Entities;
 
 use crate::origin::Problem;

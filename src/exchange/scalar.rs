@@ -11,7 +11,8 @@ pub(super) fn parse(kind: Kind, text: &str) -> Result<Value, String> {
     if kind.depth == 0 {
         return one(kind.base, text);
     }
-    let items: Vec<Value> = text.split_whitespace().map(|item| one(kind.base, item)).collect::<Result<_, _>>()?;
+    let mut items: Vec<Value> = text.split_whitespace().map(|item| one(kind.base, item)).collect::<Result<_, _>>()?;
+    items.shrink_to_fit(); // most memory goes into short lists
     if kind.depth == 2 { rows(items, usize::from(kind.row)) } else { Ok(Value::List(items)) }
 }
 

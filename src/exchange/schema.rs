@@ -3,6 +3,8 @@
 use std::collections::HashMap;
 use std::sync::LazyLock;
 
+use super::TypeName;
+
 /// An entity of the schema, by its index in the table.
 pub(super) type ClassId = u16;
 
@@ -73,7 +75,7 @@ pub(super) struct Class {
 pub(super) struct Schema {
     classes: Vec<Class>,
     by_name: HashMap<String, ClassId>,
-    types: HashMap<String, (&'static str, Kind)>,
+    types: HashMap<String, (TypeName, Kind)>,
 }
 
 impl Schema {
@@ -89,8 +91,8 @@ impl Schema {
     }
 
     /// The defined type of that name, in whatever case: its name as the schema spells it, and its kind.
-    pub fn find_type(&self, name: &str) -> Option<(&'static str, Kind)> {
-        self.types.get(&name.to_ascii_uppercase()).copied()
+    pub fn find_type(&self, name: &str) -> Option<(TypeName, Kind)> {
+        self.types.get(&name.to_ascii_uppercase()).cloned()
     }
 
     /// The entity; `None` for the number of an entity that the schema does not know.
@@ -136,7 +138,7 @@ impl Schema {
         }
         for line in lines().filter_map(|line| line.strip_prefix('=')) {
             let (name, kind) = line.split_once(':').expect("a defined type and its kind");
-            schema.types.insert(name.to_ascii_uppercase(), (name, schema.kind(kind)));
+            schema.types.insert(name.to_ascii_uppercase(), (name.into(), schema.kind(kind)));
         }
         for line in entities() {
             let class = schema.entity(line);

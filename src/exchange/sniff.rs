@@ -15,6 +15,9 @@ pub(super) fn decode<'a>(bytes: &'a [u8], problems: &mut Problems) -> Result<Cow
     if bytes.iter().all(u8::is_ascii_whitespace) {
         return Err("is empty".into());
     }
+    if u32::try_from(bytes.len()).is_err() {
+        return Err("is larger than 4 GiB, which is not read".into()); // the graph counts in 32 bits
+    }
     if bytes.starts_with(b"PK\x03\x04") {
         return Err("is a zip archive; this form is not read yet, take the model out of it".into());
     }

@@ -15,7 +15,7 @@ pub struct Context<'a> {
     pub steelwork: &'a Steelwork,
     /// Whether a schedule was given at all.
     pub schedule_given: bool,
-    /// The joint; `None` if the scheduled joint has no steel.
+    /// The joint; `None` if the scheduled joint has no steel, or fits no single joint.
     pub joint: Option<&'a Joint>,
     /// Its layout, where it could be laid out.
     pub layout: Option<&'a EndPlateLayout>,
@@ -27,6 +27,8 @@ pub struct Context<'a> {
     pub assessment: Option<&'a Assessment>,
     /// The assessment of what was intended.
     pub intended_assessment: Option<&'a Assessment>,
+    /// Whether the scheduled joint may have steel, but nobody can say which.
+    pub unclear: bool,
 }
 
 /// GlobalIds of parts, and where to look in the model.

@@ -8,7 +8,7 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
     match (context.scheduled, context.joint) {
-        (Some(scheduled), None) => {
+        (Some(scheduled), None) if !context.unclear => {
             let message = "the schedule names a joint for which the shop model holds no steel";
             vec![Finding::new(ID, Outcome::Hold, message).on((Vec::new(), Some(scheduled.at.clone())))]
         }

@@ -16,6 +16,7 @@ mod gauge_differs;
 mod grade_unknown;
 mod joint_handed_wrong;
 mod joint_not_found;
+mod joint_not_paired;
 mod joint_not_scheduled;
 mod kind_not_assessed;
 mod moment_short;
@@ -79,6 +80,7 @@ pub const RULES: &[Rule] = &[
     axial_force_beyond_limit::RULE,
     kind_not_assessed::RULE,
     joint_not_scheduled::RULE,
+    joint_not_paired::RULE,
     action_not_stated::RULE,
     section_unknown::RULE,
     weld_not_found::RULE,

@@ -1,10 +1,7 @@
 //! A schedule as CSV: one line a joint and load case.
 
-use std::ops::Range;
-
-use csv_core::{ReadFieldResult, Reader, ReaderBuilder};
-
 use super::actions::{Action, action, decimal};
+use super::csv_cells::{Cell, Records};
 use super::fault::Faults;
 use super::gather::{Line, Stated};
 use super::source::{Source, given, tidy};
@@ -46,13 +43,6 @@ const HEADINGS: &[(Column, &[&str])] = &[
 /// What the reader is told when a heading is not known.
 const KNOWN: &str = "joint, supporting, supported, end, case, M_Ed, V_Ed and N_Ed with their units (M_Ed_kNm, V_Ed_kN, \
                      N_Ed_kN), detail, and remarks (a heading that starts with note, remark or comment)";
-
-/// A cell: its value and where it is written.
-#[derive(Debug)]
-struct Cell {
-    value: String,
-    range: Range<usize>,
-}
 
 /// Reads the lines of a schedule.
 pub(super) fn lines(source: &Source, faults: &mut Faults) -> Vec<Line> {
@@ -247,65 +237,4 @@ impl Table<'_> {
         }
         Some(value)
     }
-}
-
-/// The records of a file, one at a time, each cell with its place.
-struct Records<'a> {
-    source: &'a Source,
-    reader: Reader,
-    separator: u8,
-    offset: usize,
-    /// Holds one cell, which may be as long as the rest of the file.
-    buffer: Vec<u8>,
-}
-
-impl<'a> Records<'a> {
-    fn new(source: &'a Source, separator: u8) -> Self {
-        let reader = ReaderBuilder::new().delimiter(separator).build();
-        Self { source, reader, separator, offset: 0, buffer: vec![0; source.text.len() + 1] }
-    }
-
-    /// The next record; blank lines are passed over.
-    fn next(&mut self, faults: &mut Faults) -> Option<Vec<Cell>> {
-        let text = &self.source.text;
-        let mut cells: Vec<Cell> = Vec::new();
-        loop {
-            if cells.is_empty() {
-                self.offset += text.get(self.offset..)?.bytes().take_while(|b| *b == b'\n').count();
-            }
-            let start = self.offset;
-            let mut written = 0;
-            let result = loop {
-                let rest = text.as_bytes().get(self.offset..)?;
-                let (result, read, wrote) = self.reader.read_field(rest, self.buffer.get_mut(written..)?);
-                self.offset += read;
-                written += wrote;
-                if result != ReadFieldResult::InputEmpty {
-                    break result;
-                }
-            };
-            let ReadFieldResult::Field { record_end } = result else { return None };
-            let raw = text.get(start..self.offset)?;
-            let raw = raw.strip_suffix(['\n', char::from(self.separator)]).unwrap_or(raw);
-            let range = start..start + raw.len();
-            // The reader takes anything; a quote left open would swallow the lines below it.
-            let quoted = raw.strip_prefix('"');
-            let sound = quoted.is_none_or(|rest| rest.strip_suffix('"').is_some_and(|s| !unpaired(s)));
-            if !sound {
-                let message =
-                    format!("given {}; allowed is a closing quote at the cell's end, \"\" within", given(raw));
-                faults.push(self.source.place(start), self.source.width(range.clone()), message);
-            }
-            let value = String::from_utf8_lossy(self.buffer.get(..written)?).into_owned();
-            cells.push(Cell { value, range });
-            if record_end {
-                return Some(cells);
-            }
-        }
-    }
-}
-
-/// Whether a quote stands alone.
-fn unpaired(inner: &str) -> bool {
-    inner.replace("\"\"", "").contains('"')
 }

@@ -58,15 +58,15 @@ pub fn read(text: &[u8], file: &str) -> Result<Intent, ScheduleError> {
     Ok(Intent { joints, details, problems: Vec::new() })
 }
 
-/// Reads the files of one schedule (bytes and name of each) into one: actions in one, details in the other, for
+/// Reads the files of one schedule (name and bytes of each) into one: actions in one, details in the other, for
 /// instance. The same as [`read`] and [`merge`], with excerpts of the files in every error.
 ///
 /// # Errors
 /// [`ScheduleError`] with everything that is wrong in a file, else between the files.
-pub fn read_all(files: &[(&[u8], &str)]) -> Result<Intent, ScheduleError> {
+pub fn read_all(files: &[(&str, &[u8])]) -> Result<Intent, ScheduleError> {
     let mut faults = Faults::default();
     let (mut sources, mut lines, mut details) = (Vec::new(), Vec::new(), Vec::new());
-    for (text, file) in files {
+    for (file, text) in files {
         let (source, more_lines, more_details) = parse(text, file, &mut faults);
         sources.push(source);
         lines.extend(more_lines);

@@ -3,11 +3,13 @@
 //! `rules/schedule.md` says how a schedule is written; this room is its reader.
 
 mod actions;
+mod csv_cells;
 mod csv_form;
 mod fault;
 mod gather;
 mod pairing;
 mod source;
+mod toml_detail;
 mod toml_form;
 
 pub use fault::{Fault, ScheduleError};

@@ -101,6 +101,7 @@ struct Steel<'a> {
     guids: BTreeSet<&'a str>,
     by_mark: BTreeMap<String, BTreeSet<usize>>,
     by_supported: BTreeMap<String, BTreeSet<usize>>,
+    by_supporting: BTreeMap<String, BTreeSet<usize>>,
 }
 
 impl<'a> Steel<'a> {
@@ -108,13 +109,24 @@ impl<'a> Steel<'a> {
         let members = steelwork.members.as_slice();
         let guids = members.iter().map(|m| m.identity.guid.as_str()).filter(|guid| !guid.is_empty()).collect();
         let joints = joints.joints.as_slice();
-        let mut steel = Self { joints, members, guids, by_mark: BTreeMap::new(), by_supported: BTreeMap::new() };
+        let mut steel = Self {
+            joints,
+            members,
+            guids,
+            by_mark: BTreeMap::new(),
+            by_supported: BTreeMap::new(),
+            by_supporting: BTreeMap::new(),
+        };
         for (index, joint) in joints.iter().enumerate() {
             steel.by_mark.entry(fold(&joint.mark)).or_default().insert(index);
-            let Some(member) = joint.supported.and_then(|i| members.get(i)) else { continue };
-            let mark = member.identity.mark.as_deref().map(fold);
-            for key in [Some(member.identity.guid.clone()), mark].into_iter().flatten() {
-                steel.by_supported.entry(key).or_default().insert(index);
+            let of = |member: Option<usize>| member.and_then(|i| members.get(i)).map(|member| &member.identity);
+            for (role, identity) in
+                [(&mut steel.by_supported, of(joint.supported)), (&mut steel.by_supporting, of(joint.supporting))]
+            {
+                let keys = identity.map(|who| [Some(who.guid.clone()), who.mark.as_deref().map(fold)]);
+                for key in keys.into_iter().flatten().flatten() {
+                    role.entry(key).or_default().insert(index);
+                }
             }
         }
         steel
@@ -182,6 +194,17 @@ impl<'a> Steel<'a> {
             Some(text) => of_beam.iter().filter(|i| self.is(text, supporting(i)) == Some(true)).copied().collect(),
             None => of_beam.clone(),
         };
+        if let Some(text) = line.supporting.as_ref().filter(|_| fits.is_empty()) {
+            let of_support = self.by_supporting.get(&key).unwrap_or(&none);
+            let supported = |index: &usize| self.joints.get(*index).and_then(|joint| joint.supported);
+            let exchanged: BTreeSet<usize> =
+                of_support.iter().filter(|i| self.is(text, supported(i)) == Some(true)).copied().collect();
+            if !exchanged.is_empty() {
+                let names = self.names(&exchanged);
+                let why = format!("its members fit {names} with supporting and supported exchanged");
+                return Some(Meant::Unclear(why));
+            }
+        }
         let Some(stated) = line.end.as_deref().and_then(end) else {
             // A member has two ends. If one of its joints is not in the steel, the other must not stand in for it.
             return match line.supporting {

@@ -87,9 +87,11 @@ fn to_u32(count: usize) -> u32 {
 /// What was given, quoted and cut, with control characters escaped.
 pub(super) fn given(text: &str) -> String {
     let mut chars = text.chars();
-    let start: String = chars.by_ref().take(40).collect();
-    let more = if chars.next().is_some() { "…" } else { "" };
-    format!("\"{}{more}\"", start.escape_debug())
+    let mut quoted = String::from("\"");
+    for c in chars.by_ref().take(40) {
+        if c.is_control() { quoted.extend(c.escape_debug()) } else { quoted.push(c) }
+    }
+    quoted + if chars.next().is_some() { "…\"" } else { "\"" }
 }
 
 /// A mark, case or detail name without surplus white space; `Err` says what is wrong with it.

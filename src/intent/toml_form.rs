@@ -1,6 +1,5 @@
 //! A schedule as TOML: joints with their load cases, and intended details.
 
-use std::borrow::Cow;
 use std::ops::Range;
 
 use toml::Spanned;
@@ -10,7 +9,7 @@ use super::actions::{action, decimal};
 use super::fault::Faults;
 use super::gather::{Line, Stated};
 use super::source::{Source, given, tidy};
-use super::{IntendedDetail, IntendedStiffener, LoadCase, MAX_JOINTS, UNNAMED_CASE};
+use super::{IntendedDetail, LoadCase, MAX_JOINTS, UNNAMED_CASE};
 use crate::units::{Length, mm};
 
 /// Reads the lines and the details of a schedule, both in the order of the file.
@@ -42,36 +41,39 @@ pub(super) fn lines(source: &Source, faults: &mut Faults) -> (Vec<Line>, Vec<Int
 }
 
 /// A table of the file: its entries, its place and what it is called in messages.
-struct Table<'t> {
-    table: &'t DeTable<'t>,
-    span: Range<usize>,
-    name: String,
+pub(super) struct Table<'t> {
+    pub table: &'t DeTable<'t>,
+    pub span: Range<usize>,
+    pub name: String,
 }
 
 /// Whether a size may be zero or negative.
 #[derive(Clone, Copy, PartialEq)]
-enum Sign {
+pub(super) enum Sign {
     Positive,
     Any,
 }
 
-struct Reader<'a> {
-    source: &'a Source,
-    faults: &'a mut Faults,
+/// Reads values out of tables and notes what is wrong with them.
+pub(super) struct Reader<'a> {
+    pub source: &'a Source,
+    pub faults: &'a mut Faults,
 }
 
 impl<'a> Reader<'a> {
-    fn fault(&mut self, span: Range<usize>, message: String) {
+    /// Notes a fault at a byte range.
+    pub fn fault(&mut self, span: Range<usize>, message: String) {
         self.faults.push(self.source.place(span.start), self.source.width(span), message);
     }
 
-    fn wrong(&mut self, value: &Spanned<DeValue<'_>>, name: &str, allowed: &str) {
+    /// Notes that a value is not what is allowed.
+    pub fn wrong(&mut self, value: &Spanned<DeValue<'_>>, name: &str, allowed: &str) {
         let written = self.source.text.get(value.span()).unwrap_or(value.get_ref().type_str()).to_owned();
         self.fault(value.span(), format!("{name}: given {}; allowed is {allowed}", given(&written)));
     }
 
     /// Faults every key that is not allowed: a misspelt key would be an action or size that silently is not there.
-    fn known(&mut self, table: &Table<'_>, allowed: &[&str]) {
+    pub fn known(&mut self, table: &Table<'_>, allowed: &[&str]) {
         for key in table.table.keys().filter(|key| !allowed.contains(&key.get_ref().as_ref())) {
             let message = format!(
                 "no known key of {}: given {}; allowed are {}",
@@ -84,7 +86,7 @@ impl<'a> Reader<'a> {
     }
 
     /// A table in a table.
-    fn inner<'t>(&mut self, table: &Table<'t>, key: &str) -> Option<Table<'t>> {
+    pub fn inner<'t>(&mut self, table: &Table<'t>, key: &str) -> Option<Table<'t>> {
         let value = table.table.get(key)?;
         let DeValue::Table(inner) = value.get_ref() else {
             self.wrong(value, key, "a table");
@@ -130,12 +132,13 @@ impl<'a> Reader<'a> {
         self.words(table.table.get(key)?, key)
     }
 
-    fn text(&mut self, table: &Table<'_>, key: &str) -> Option<String> {
+    /// Text, if stated.
+    pub fn text(&mut self, table: &Table<'_>, key: &str) -> Option<String> {
         self.stated(table, key).map(|stated| stated.text)
     }
 
     /// A finite number times `size`.
-    fn number(&mut self, value: &Spanned<DeValue<'_>>, key: &str, size: f64, sign: Sign) -> Option<f64> {
+    pub fn number(&mut self, value: &Spanned<DeValue<'_>>, key: &str, size: f64, sign: Sign) -> Option<f64> {
         let number = match value.get_ref() {
             DeValue::Integer(integer) if integer.radix() == 10 => decimal(integer.as_str(), false),
             DeValue::Float(float) => decimal(float.as_str(), false),
@@ -150,7 +153,8 @@ impl<'a> Reader<'a> {
         number
     }
 
-    fn length(&mut self, table: &Table<'_>, key: &str, sign: Sign) -> Option<Length> {
+    /// A length in mm, if stated.
+    pub fn length(&mut self, table: &Table<'_>, key: &str, sign: Sign) -> Option<Length> {
         self.number(table.table.get(key)?, key, 1.0, sign).map(mm)
     }
 
@@ -212,104 +216,5 @@ impl<'a> Reader<'a> {
             }
         }
         case
-    }
-
-    fn detail(&mut self, name: &Spanned<Cow<'_, str>>, value: &Spanned<DeValue<'_>>) -> Option<IntendedDetail> {
-        let DeValue::Table(table) = value.get_ref() else {
-            self.wrong(value, name.get_ref(), "a table [detail.NAME]");
-            return None;
-        };
-        let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
-        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members"]);
-        let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
-        match tidy(name.get_ref()) {
-            Ok(name) if !name.is_empty() => detail.name = name,
-            Ok(_) => self.fault(name.span(), "a detail has no name; allowed is [detail.NAME]".into()),
-            Err(message) => self.fault(name.span(), format!("detail: {message}")),
-        }
-        if let Some(bolts) = self.inner(&table, "bolts") {
-            self.known(&bolts, &["size", "class", "rows_mm", "gauge_mm"]);
-            detail.bolt_diameter = self.bolt_size(&bolts);
-            detail.bolt_class = self.text(&bolts, "class");
-            detail.rows = self.rows(&bolts);
-            detail.gauge = self.length(&bolts, "gauge_mm", Sign::Positive);
-        }
-        if let Some(plate) = self.inner(&table, "plate") {
-            self.known(&plate, &["thickness_mm", "width_mm", "top_mm", "bottom_mm", "grade"]);
-            detail.plate_thickness = self.length(&plate, "thickness_mm", Sign::Positive);
-            detail.plate_width = self.length(&plate, "width_mm", Sign::Positive);
-            detail.plate_top = self.length(&plate, "top_mm", Sign::Any);
-            detail.plate_bottom = self.length(&plate, "bottom_mm", Sign::Any);
-            detail.plate_grade = self.text(&plate, "grade");
-            let edges = detail.plate_top.zip(detail.plate_bottom);
-            if let Some((top, bottom)) = edges.filter(|(top, bottom)| top <= bottom) {
-                let message = format!("plate: top_mm {top} is not above bottom_mm {bottom}; allowed is a higher top");
-                self.fault(plate.span, message);
-            }
-        }
-        if let Some(welds) = self.inner(&table, "welds") {
-            self.known(&welds, &["flange_throat_mm", "web_throat_mm"]);
-            detail.flange_weld = self.length(&welds, "flange_throat_mm", Sign::Positive);
-            detail.web_weld = self.length(&welds, "web_throat_mm", Sign::Positive);
-        }
-        if let Some(stiffeners) = self.inner(&table, "stiffeners") {
-            self.known(&stiffeners, &["top", "bottom"]);
-            detail.stiffener_top = self.stiffener(&stiffeners, "top");
-            detail.stiffener_bottom = self.stiffener(&stiffeners, "bottom");
-        }
-        if let Some(members) = self.inner(&table, "members") {
-            self.known(&members, &["supporting_section", "supported_section", "supporting_grade", "supported_grade"]);
-            detail.supporting_section = self.text(&members, "supporting_section");
-            detail.supported_section = self.text(&members, "supported_section");
-            detail.supporting_grade = self.text(&members, "supporting_grade");
-            detail.supported_grade = self.text(&members, "supported_grade");
-        }
-        Some(detail)
-    }
-
-    fn bolt_size(&mut self, bolts: &Table<'_>) -> Option<Length> {
-        let value = bolts.table.get("size")?;
-        let size = value.get_ref().as_str().and_then(|text| text.trim().strip_prefix(['M', 'm']));
-        let diameter = size.and_then(|size| decimal(size.trim(), false)).filter(|d| *d > 0.0 && *d <= 200.0);
-        if diameter.is_none() {
-            self.wrong(value, "size", "M and the nominal diameter in mm, such as \"M24\"");
-        }
-        diameter.map(mm)
-    }
-
-    fn rows(&mut self, bolts: &Table<'_>) -> Option<Vec<Length>> {
-        let value = bolts.table.get("rows_mm")?;
-        let allowed = "a list of heights above the soffit in mm, from the top row down";
-        let Some(items) = value.get_ref().as_array().filter(|items| !items.is_empty()) else {
-            self.wrong(value, "rows_mm", allowed);
-            return None;
-        };
-        let mut rows = Vec::new();
-        for item in items.iter() {
-            rows.push(mm(self.number(item, "rows_mm", 1.0, Sign::Any)?));
-        }
-        // Rows measured from the plate's top edge would rise: they are not put in order, but given back.
-        if !rows.iter().zip(rows.iter().skip(1)).all(|(upper, lower)| upper > lower) {
-            self.wrong(value, "rows_mm", allowed);
-            return None;
-        }
-        Some(rows)
-    }
-
-    fn stiffener(&mut self, stiffeners: &Table<'_>, key: &str) -> Option<Option<IntendedStiffener>> {
-        let value = stiffeners.table.get(key)?;
-        match value.get_ref() {
-            DeValue::String(text) if text == "none" => Some(None),
-            DeValue::Table(_) => {
-                let table = self.inner(stiffeners, key)?;
-                self.known(&table, &["thickness_mm", "grade"]);
-                let thickness = self.length(&table, "thickness_mm", Sign::Positive);
-                Some(Some(IntendedStiffener { thickness, grade: self.text(&table, "grade") }))
-            }
-            _ => {
-                self.wrong(value, key, "\"none\" or a table such as { thickness_mm = 15, grade = \"S275\" }");
-                None
-            }
-        }
     }
 }

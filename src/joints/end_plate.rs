@@ -197,8 +197,8 @@ fn laid_out(
         },
         bolts,
         welds: Welds {
-            flange_top: throat(Role::FlangeTop, "weld at the upper flange"),
-            flange_bottom: throat(Role::FlangeBottom, "weld at the lower flange"),
+            flange_top: throat(Role::FlangeTop, "weld at the top flange"),
+            flange_bottom: throat(Role::FlangeBottom, "weld at the bottom flange"),
             web: throat(Role::Web, "weld at the web"),
         },
         stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),

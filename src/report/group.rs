@@ -68,14 +68,17 @@ pub(super) fn marks<'a>(joints: &[&'a JointReview]) -> Vec<&'a str> {
     joints.iter().map(|joint| joint.mark.as_str()).collect()
 }
 
-/// A finding in one sentence: "plate-thinner: the end plate is thinner (intended 25 mm, detailed 20 mm)".
+/// A finding in one sentence: "stiffener-missing: the stiffeners are missing (intended a pair, detailed none)"; values
+/// that the message itself gives are not said twice.
 pub(super) fn sentence(finding: &Finding) -> String {
+    let message = finding.message.trim_end_matches('.');
     let values = [("intended", &finding.intended), ("detailed", &finding.detailed)]
         .iter()
-        .filter_map(|(word, value)| value.as_ref().map(|v| format!("{word} {v}")))
+        .filter_map(|(word, value)| value.as_ref().map(|v| (word, v)))
+        .filter(|(_, value)| !names(message, value))
+        .map(|(word, value)| format!("{word} {value}"))
         .collect::<Vec<_>>()
         .join(", ");
-    let message = finding.message.trim_end_matches('.');
     if values.is_empty() {
         format!("{}: {message}", finding.rule)
     } else {
@@ -83,12 +86,29 @@ pub(super) fn sentence(finding: &Finding) -> String {
     }
 }
 
+/// Whether a text gives a value as such: "125 mm" does not give "25 mm".
+fn names(text: &str, value: &str) -> bool {
+    let goes_on = |c: char| c.is_alphanumeric() || c == '.';
+    text.match_indices(value)
+        .any(|(at, _)| !text[..at].ends_with(goes_on) && !text[at + value.len()..].starts_with(char::is_alphanumeric))
+}
+
+/// Rules that lay an action on a resistance: their numbers belong to the joint, not to the fault.
+const OF_ACTIONS: [&str; 4] = ["moment-short", "shear-short", "weld-short", "axial-force-beyond-limit"];
+
+/// Whether a finding says no more than the required actions, resistances and governing component of the worst case.
+pub(super) fn said_by_worst_case(joint: &JointReview, finding: &Finding) -> bool {
+    let worst = worst_case(joint);
+    let governed = worst.and_then(|case| case.governed_by.as_ref());
+    let used = worst.and_then(|case| case.utilisation).map(|ratio| format!("{ratio:.2}"));
+    OF_ACTIONS.contains(&finding.rule)
+        && governed.zip(used).is_some_and(|(by, used)| says(&finding.message, by) && says(&finding.message, &used))
+}
+
 /// What makes two held joints alike: the same kind, intended detail and governing component, the same faults and the
 /// same missing things.
-///
-/// A rule whose id ends in "-short" lays an action on a resistance: its numbers belong to the joint, not to the fault.
 pub(super) fn likeness(joint: &JointReview) -> impl Ord {
-    let fault = |f: &Finding| if f.rule.ends_with("-short") { f.rule.to_owned() } else { sentence(f) };
+    let fault = |f: &Finding| if OF_ACTIONS.contains(&f.rule) { f.rule.to_owned() } else { sentence(f) };
     let faults: Vec<String> = joint.findings.iter().map(fault).collect();
     let missing: Vec<&str> = joint.missing.iter().map(|missing| missing.what.as_str()).collect();
     (&joint.kind, &joint.detail, governing(joint), faults, missing)
@@ -113,10 +133,19 @@ pub(super) fn reasons_left(joint: &JointReview) -> impl Iterator<Item = &str> {
     })
 }
 
-/// Findings of a joint that are no comments and that its missing things do not say.
+/// Why a scheduled joint has no steel beside it.
+pub(super) fn without_steel(joint: &JointReview) -> &'static str {
+    if joint.kind == "not-paired" { "fits no single joint" } else { "no steel found" }
+}
+
+/// Rules of what has a section of its own: steel without a schedule line, and the other way round.
+const PAIRING: [&str; 3] = ["joint-not-scheduled", "joint-not-found", "joint-not-paired"];
+
+/// Findings of a joint that are no comments and that neither its missing things nor a section of its own say.
 pub(super) fn findings_left(joint: &JointReview) -> impl Iterator<Item = &Finding> {
     joint.findings.iter().filter(|finding| {
         finding.severity != Outcome::Comment
+            && !PAIRING.contains(&finding.rule)
             && !joint.missing.iter().any(|missing| says(&finding.message, &missing.reason))
     })
 }

@@ -13,6 +13,9 @@ use crate::review::{Finding, JointReview, MemberBrief, Outcome, Required, Resist
 /// Findings and reasons a joint that are not written out.
 const FINDINGS: usize = 8;
 
+/// Parts of a finding that are named.
+const PARTS: usize = 3;
+
 /// Changed lines of a difference that are not written out.
 const CHANGES: usize = 12;
 
@@ -144,9 +147,18 @@ pub(super) fn resistance(resistance: &Resistance) -> String {
 
 fn findings(page: &mut Page, joint: &JointReview, said: Option<&Place>) {
     let bound = page.bound(FINDINGS);
+    let mut named: &[String] = &[];
     for finding in joint.findings.iter().take(bound) {
         let also = if finding.severity == Outcome::Hold { "" } else { "also " };
-        page.line(3, &format!("{also}{}", sentence(finding)));
+        let text = match group::said_by_worst_case(joint, finding) {
+            true => format!("{}: as said above", finding.rule),
+            false => sentence(finding),
+        };
+        page.line(3, &format!("{also}{text}"));
+        if finding.elements == named && !named.is_empty() {
+            continue;
+        }
+        named = &finding.elements;
         if let Some(parts) = parts(page, joint, finding, said) {
             page.line(5, &parts);
         }
@@ -168,10 +180,11 @@ fn parts(page: &Page, joint: &JointReview, finding: &Finding, said: Option<&Plac
         Some(mark) => format!("{mark} (GlobalId {guid})"),
         None => format!("GlobalId {guid}"),
     });
-    let named = page.listed(named);
+    let named = page.listed_to(PARTS, named);
+    let noun = if finding.elements.len() == 1 { "part" } else { "parts" };
     match (finding.at.as_ref().filter(|at| Some(*at) != said), named.is_empty()) {
-        (Some(at), false) => Some(format!("part {named}, {at}")),
-        (None, false) => Some(format!("part {named}")),
+        (Some(at), false) => Some(format!("{noun} {named}, {at}")),
+        (None, false) => Some(format!("{noun} {named}")),
         (Some(at), true) => Some(format!("at {at}")),
         (None, true) => None,
     }

@@ -125,9 +125,14 @@ impl Page {
 
     /// "B1, B2 and 7 more".
     pub(super) fn listed<S: AsRef<str>>(&self, items: impl IntoIterator<Item = S>) -> String {
+        self.listed_to(LISTED, items)
+    }
+
+    /// The same with another bound.
+    pub(super) fn listed_to<S: AsRef<str>>(&self, bound: usize, items: impl IntoIterator<Item = S>) -> String {
         let items: Vec<S> = items.into_iter().collect();
-        // A remainder of one is no shorter than the mark itself.
-        let bound = self.bound(if items.len() == LISTED + 1 { LISTED + 1 } else { LISTED });
+        // A remainder of one is no shorter than the item itself.
+        let bound = self.bound(if items.len() == bound + 1 { bound + 1 } else { bound });
         let shown = items.iter().take(bound).map(AsRef::as_ref).collect::<Vec<&str>>().join(", ");
         match items.len().saturating_sub(bound) {
             0 => shown,

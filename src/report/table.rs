@@ -45,7 +45,7 @@ fn row(joint: &JointReview) -> [String; 9] {
         _ => joint.resistance.moment_knm,
     });
     let governed = match group::governing(joint) {
-        _ if !joint.found() => "no steel found",
+        _ if !joint.found() => group::without_steel(joint),
         Some(governed) => governed,
         None if group::assessed(joint) => "",
         None => "not assessed",

@@ -215,8 +215,12 @@ fn missing(page: &mut Page, review: &Review) {
         let asked = case.map_or(String::new(), |case| format!("; required {}", hold::required(case)));
         let at = joint.at.as_ref().or(case.and_then(|case| case.at.as_ref()));
         let at = at.map_or(String::new(), |at| format!(", {at}"));
-        page.toned(3, Tone::Hold, &format!("{}: scheduled, no steel found{asked}{at}", joint.mark));
-        for said in joint.findings.iter().map(group::sentence).chain(group::reasons_left(joint).map(str::to_owned)) {
+        let (tone, why) =
+            (if joint.outcome == Outcome::Hold { Tone::Hold } else { Tone::Unproven }, group::without_steel(joint));
+        page.toned(3, tone, &format!("{}: scheduled, {why}{asked}{at}", joint.mark));
+        for said in
+            group::findings_left(joint).map(group::sentence).chain(group::reasons_left(joint).map(str::to_owned))
+        {
             page.line(5, &said);
         }
     }
@@ -256,7 +260,11 @@ fn clear(page: &mut Page, review: &Review) {
         return;
     }
     let list = page.listed(group::worst_first(joints.iter().copied()).iter().map(|joint| &joint.mark));
-    page.heading(&format!("CLEAR: {}{}: {list}", count(joints.len(), "joint", "joints"), up_to(&joints)));
+    page.heading(&format!(
+        "CLEAR: {}{}, the most used first: {list}",
+        count(joints.len(), "joint", "joints"),
+        up_to(&joints)
+    ));
 }
 
 fn all_joints(page: &mut Page, review: &Review) {

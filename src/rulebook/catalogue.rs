@@ -56,10 +56,10 @@ impl Catalogue {
             match reader.read_record(&mut record) {
                 Ok(true) => {}
                 Ok(false) => return Ok(()),
-                Err(e) => return Err(wrong(e.position().map(csv::Position::byte), e.to_string())),
+                Err(e) => return Err(wrong(e.position().map(csv::Position::byte), said(&e, &headers))),
             }
             let at = record.position().map(|position| position.byte());
-            let row: Row = record.deserialize(Some(&headers)).map_err(|e| wrong(at, e.to_string()))?;
+            let row: Row = record.deserialize(Some(&headers)).map_err(|e| wrong(at, said(&e, &headers)))?;
             let section = row.section().map_err(|message| wrong(at, message))?;
             if row.source.is_empty() || row.designation.is_empty() {
                 return Err(wrong(at, "a row needs a designation and a source".into()));
@@ -85,12 +85,12 @@ impl Catalogue {
                 Some(bare) => vec![format!("UB {bare}"), format!("UC {bare}")],
                 None => vec![designation],
             };
-            for one in candidates.iter().filter_map(|candidate| self.sections.get(&compact(candidate))) {
-                match found {
-                    Some(other) if other.0.designation != one.0.designation => return None,
-                    _ => found = Some(one),
-                }
+            // A designation that is not in the catalogue counts too: the name then holds two, or another one.
+            let one = candidates.iter().find_map(|candidate| self.sections.get(&compact(candidate)))?;
+            if found.is_some_and(|other| other.0.designation != one.0.designation) {
+                return None;
             }
+            found = Some(one);
         }
         found
     }
@@ -106,8 +106,9 @@ impl Row {
             ("W_pl_y", self.W_pl_y, section.w_pl_y.get() / 1e3),
             ("A_v_z", self.A_v_z, section.a_v_z.get() / 1e2),
         ] {
-            if printed.is_some_and(|printed| !((printed / computed - 1.0).abs() <= SLIP)) {
-                let printed = printed.unwrap_or(f64::NAN);
+            let Some(printed) = printed else { continue };
+            let near = (printed / computed - 1.0).abs() <= SLIP;
+            if !near {
                 return Err(format!(
                     "{}: {what} = {printed}, but the sizes give {computed:.4}; at most {} % apart is allowed",
                     self.designation,
@@ -116,6 +117,21 @@ impl Row {
             }
         }
         Ok(section)
+    }
+}
+
+/// What is wrong with a row, by the heading of the cell where it can be told.
+fn said(error: &csv::Error, headers: &csv::StringRecord) -> String {
+    match error.kind() {
+        csv::ErrorKind::UnequalLengths { expected_len, len, .. } => {
+            format!("the row has {len} cells; {expected_len} are needed")
+        }
+        csv::ErrorKind::Deserialize { err, .. } => {
+            let field = err.field().and_then(|field| usize::try_from(field).ok());
+            let heading = field.and_then(|field| headers.get(field));
+            heading.map_or_else(|| err.kind().to_string(), |heading| format!("{heading}: {}", err.kind()))
+        }
+        _ => error.to_string(),
     }
 }
 

@@ -8,8 +8,8 @@ use serde::de::DeserializeOwned;
 use toml::Spanned;
 
 use super::error::RuleError;
-use super::{Annex, BoltClass, BoltSize, Clearance, ModeOne, RowForces, Settings, Tolerances, WeldRules};
-use crate::units::{Area, Length, Stress};
+use super::{Annex, ModeOne, RowForces, Settings, Tolerances, WeldRules};
+use crate::units::{Length, Stress};
 
 /// Every rule file that the program carries.
 pub(super) const EMBEDDED: &[(&str, &str)] = &[
@@ -48,7 +48,7 @@ impl RuleFile<'_> {
         toml::from_str(self.text).map_err(|e| RuleError::new(self.name, self.text, e.span(), e.message().trim()))
     }
 
-    fn within(&self, what: &str, value: &Number, allowed: RangeInclusive<f64>) -> Parsed<f64> {
+    pub(super) fn within(&self, what: &str, value: &Number, allowed: RangeInclusive<f64>) -> Parsed<f64> {
         let given = *value.get_ref();
         if allowed.contains(&given) {
             return Ok(given);
@@ -58,7 +58,7 @@ impl RuleFile<'_> {
     }
 
     /// A size: more than nothing, at most `most`.
-    fn positive(&self, what: &str, value: &Number, most: f64) -> Parsed<f64> {
+    pub(super) fn positive(&self, what: &str, value: &Number, most: f64) -> Parsed<f64> {
         let given = *value.get_ref();
         if given > 0.0 && given <= most {
             return Ok(given);
@@ -112,113 +112,6 @@ impl RuleFile<'_> {
             name: self.text("name", &file.name)?,
             source: sources.join("; "),
         })
-    }
-
-    pub fn bolts(&self) -> Parsed<Bolts> {
-        #[derive(Deserialize)]
-        #[serde(deny_unknown_fields)]
-        struct Class {
-            name: Spanned<String>,
-            f_yb: Number,
-            f_ub: Number,
-            alpha_v: Number,
-        }
-        #[derive(Deserialize)]
-        #[serde(deny_unknown_fields)]
-        struct Gap {
-            up_to: Number,
-            round: Number,
-            oversize: Number,
-            short_slot: Number,
-            long_slot: Number,
-        }
-        #[derive(Deserialize)]
-        #[serde(deny_unknown_fields)]
-        struct Size {
-            d: Number,
-            a_s: Number,
-            across_flats: Number,
-            across_corners: Number,
-            across_flats_preloaded: Number,
-            washer: Number,
-            washer_thickness: Number,
-            head: Number,
-            nut: Number,
-        }
-        #[derive(Deserialize)]
-        #[serde(deny_unknown_fields)]
-        struct File {
-            alpha_v_shank: Number,
-            class: Vec<Class>,
-            clearance: Vec<Gap>,
-            size: Vec<Size>,
-        }
-        let file: File = self.parse()?;
-        let mut bolts =
-            Bolts { alpha_v_shank: self.within("alpha_v_shank", &file.alpha_v_shank, 0.1..=0.7)?, ..Bolts::default() };
-        for class in &file.class {
-            let name = self.text("name", &class.name)?;
-            if bolts.classes.iter().any(|other| other.name == name) {
-                return Err(self.error(&class.name, format!("class {name} stands twice; once is allowed")));
-            }
-            let (f_yb, f_ub) = (self.stress("f_yb", &class.f_yb)?, self.stress("f_ub", &class.f_ub)?);
-            if f_yb > f_ub {
-                return Err(
-                    self.error(&class.f_yb, format!("f_yb = {f_yb} is above f_ub = {f_ub}; at most f_ub is allowed"))
-                );
-            }
-            let alpha_v = self.within("alpha_v", &class.alpha_v, 0.1..=0.7)?;
-            bolts.classes.push(BoltClass { name, f_yb, f_ub, alpha_v });
-        }
-        for gap in &file.clearance {
-            let up_to = self.length("up_to", &gap.up_to)?;
-            if bolts.clearances.last().is_some_and(|last| last.up_to >= up_to) {
-                return Err(self.error(
-                    &gap.up_to,
-                    format!("up_to = {up_to} does not rise; each entry goes further than the last"),
-                ));
-            }
-            let size = |what, value| self.within(what, value, 0.0..=20.0).map(Length);
-            bolts.clearances.push(Clearance {
-                up_to,
-                round: size("round", &gap.round)?,
-                oversize: size("oversize", &gap.oversize)?,
-                short_slot: size("short_slot", &gap.short_slot)?,
-                long_slot: self.within("long_slot", &gap.long_slot, 1.0..=3.0)?,
-            });
-        }
-        for size in &file.size {
-            let d = self.length("d", &size.d)?;
-            if bolts.sizes.last().is_some_and(|last| last.d >= d) {
-                return Err(
-                    self.error(&size.d, format!("d = {d} does not rise; sizes stand from small to large, each once"))
-                );
-            }
-            let Some(clearance) = bolts.clearances.iter().find(|c| c.up_to >= d) else {
-                return Err(self.error(&size.d, format!("no clearance goes up to d = {d}; one is needed")));
-            };
-            let a = Area(std::f64::consts::PI * d.get() * d.get() / 4.0);
-            let a_s = Area(self.positive("a_s", &size.a_s, a.get())?);
-            let across_flats = self.length("across_flats", &size.across_flats)?;
-            bolts.sizes.push(BoltSize {
-                d,
-                a,
-                a_s,
-                d_0: d + clearance.round,
-                across_flats,
-                across_corners: Length(self.within(
-                    "across_corners",
-                    &size.across_corners,
-                    across_flats.get()..=1000.0,
-                )?),
-                across_flats_preloaded: self.length("across_flats_preloaded", &size.across_flats_preloaded)?,
-                washer: self.length("washer", &size.washer)?,
-                washer_thickness: self.length("washer_thickness", &size.washer_thickness)?,
-                head: self.length("head", &size.head)?,
-                nut: self.length("nut", &size.nut)?,
-            });
-        }
-        Ok(bolts)
     }
 
     /// The settings, and the annex they choose.
@@ -328,13 +221,4 @@ impl RuleFile<'_> {
             beta_w,
         })
     }
-}
-
-/// What `bolts.toml` holds.
-#[derive(Debug, Default)]
-pub(super) struct Bolts {
-    pub alpha_v_shank: f64,
-    pub classes: Vec<BoltClass>,
-    pub clearances: Vec<Clearance>,
-    pub sizes: Vec<BoltSize>,
 }

@@ -1,5 +1,6 @@
 //! Loads `rules/` (embedded, a folder may override single files); nothing else reads it.
 
+mod bolts;
 mod catalogue;
 mod error;
 mod load;
@@ -20,6 +21,7 @@ pub use tables::{
 
 use crate::origin::Known;
 use crate::units::Length;
+use bolts::Bolts;
 use catalogue::Catalogue;
 use load::{EMBEDDED, RuleFile};
 use steel::Steel;
@@ -69,7 +71,7 @@ impl Rulebook {
     pub fn with_overrides<N: AsRef<str>, T: AsRef<str>>(files: &[(N, T)]) -> Result<Self, RuleError> {
         let mut all: BTreeMap<&str, &str> = EMBEDDED.iter().copied().collect();
         for (name, text) in files {
-            let (name, text) = (name.as_ref(), text.as_ref());
+            let (name, text) = (name.as_ref(), text.as_ref().trim_start_matches('\u{feff}'));
             let new = [("annexes/", ".toml"), ("sections/", ".csv")];
             let allowed = |(folder, ending): &(&str, &str)| {
                 let stem = name.strip_prefix(folder).and_then(|rest| rest.strip_suffix(ending));
@@ -107,7 +109,7 @@ impl Rulebook {
         for sections in of("sections/") {
             catalogue.add(sections)?;
         }
-        let bolts = file("bolts.toml").bolts()?;
+        let bolts = Bolts::load(file("bolts.toml"))?;
         Ok(Self {
             annex: annex.clone(),
             settings,

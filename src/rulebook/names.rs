@@ -146,7 +146,8 @@ fn family(token: &Token) -> Option<&'static str> {
     }
 }
 
-/// `IPE 300`, `HE 220 B`, `HEB 220`, `HE-B 220` starting at a token; also where it ends.
+/// `IPE 300`, `HE 220 B`, `HEB 220`, `HE-B 220` starting at a token; also where it ends. Of another series the mark
+/// is kept (`IPE 300 A`), so that it is not taken for the normal one.
 fn european(tokens: &[Token], at: usize) -> Option<(String, usize)> {
     const SERIES: [&str; 3] = ["A", "B", "M"];
     /// Series beside the normal one: another section, whatever stands before.
@@ -175,7 +176,10 @@ fn european(tokens: &[Token], at: usize) -> Option<(String, usize)> {
         _ => return None,
     };
     let other_section = |t: &Token| t.gap == Gap::Glued || t.is_word(&["X"]) && open || t.is_word(&OTHER) && open;
-    if near(end).is_some_and(other_section) { None } else { Some((name, end)) }
+    match near(end).filter(|t| other_section(t)) {
+        Some(mark) => Some((format!("{name} {}", mark.text), end + 1)),
+        None => Some((name, end)),
+    }
 }
 
 /// The grades that a text names by their own name (`S355` and a sub-grade), in the order of the text.

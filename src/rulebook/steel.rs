@@ -29,6 +29,8 @@ struct Alias {
     name: String,
     tokens: Vec<Token>,
     grade: String,
+    /// The name of today, which may stand beside this one in a text.
+    today: String,
     source: String,
 }
 
@@ -70,6 +72,7 @@ impl Steel {
         #[serde(deny_unknown_fields)]
         struct RawAlias {
             grade: Spanned<String>,
+            today: Option<Spanned<String>>,
             names: Vec<Spanned<String>>,
             source: Spanned<String>,
         }
@@ -133,42 +136,44 @@ impl Steel {
         let mut aliases = Vec::new();
         for alias in &raw.alias {
             let (grade, source) = (file.text("grade", &alias.grade)?, file.text("source", &alias.source)?);
-            if !known.contains(&grade) {
-                return Err(
-                    file.error(&alias.grade, format!("{grade} is in no table; allowed is {}", known.join(", ")))
-                );
+            let today = alias.today.as_ref().map_or(Ok(grade.clone()), |name| file.text("today", name))?;
+            for (name, place) in [(&grade, &alias.grade), (&today, alias.today.as_ref().unwrap_or(&alias.grade))] {
+                if !known.contains(name) {
+                    return Err(file.error(place, format!("{name} is in no table; allowed is {}", known.join(", "))));
+                }
             }
             for name in &alias.names {
                 let name = file.text("name", name)?;
                 let tokens = names::tokens(&name);
-                aliases.push(Alias { tokens, name, grade: grade.clone(), source: source.clone() });
+                aliases.push(Alias {
+                    tokens,
+                    name,
+                    grade: grade.clone(),
+                    today: today.clone(),
+                    source: source.clone(),
+                });
             }
         }
         Ok(Self { table: raw.table.into_inner(), thinnest, rows, known, aliases })
     }
 
-    /// The one grade that a text names, and a note where it does so by another name.
+    /// The one grade that a text names, and a note where it does so by another name only.
     pub fn grade(&self, text: &str) -> Option<(Grade, Option<String>)> {
         let tokens = names::tokens(text);
-        let own = names::grades(&tokens).into_iter().map(|name| (name, None));
-        let other = self.aliases.iter().filter(|alias| names::holds(&tokens, &alias.tokens)).map(|alias| {
-            let note = format!("{} read as {}: {}", alias.name, alias.grade, alias.source);
-            (alias.grade.clone(), Some(note))
-        });
-        let mut all = own.chain(other);
-        let (grade, mut note) = all.next()?;
-        for (another, its_note) in all {
-            if another != grade {
-                return None;
-            }
-            // The longest name is the one that was written: `St52-3`, not `St52`.
-            if note.is_some() {
-                note = its_note.or(note)
-            }
+        let mut own = names::grades(&tokens);
+        // A number that is no steel's (`S123`) is no grade; a mark we have never heard of (`S355XY`) is in no table.
+        own.retain(|name| self.known.iter().any(|known| known.get(..4) == name.get(..4)));
+        let others: Vec<_> = self.aliases.iter().filter(|alias| names::holds(&tokens, &alias.tokens)).collect();
+        if let Some(grade) = own.first() {
+            let one = own.iter().all(|name| name == grade)
+                && others.iter().all(|alias| alias.today.get(..4) == grade.get(..4));
+            return one.then(|| (Grade(grade.clone()), None));
         }
-        // A family we have never heard of (`S355XY`) is kept if its number is a steel's: it is then in no table.
-        let number: String = grade.chars().take(4).collect();
-        self.known.iter().any(|name| name.starts_with(&number)).then_some((Grade(grade), note))
+        // The longest name is the one that was written: `St52-3`, not `St52`.
+        let alias = others.iter().max_by_key(|alias| alias.name.len())?;
+        let one = others.iter().all(|other| other.grade == alias.grade);
+        let note = format!("{} read as {}: {}", alias.name, alias.grade, alias.source);
+        one.then(|| (Grade(alias.grade.clone()), Some(note)))
     }
 
     pub fn strength(&self, grade: &Grade, thickness: Length) -> Known<Strength> {

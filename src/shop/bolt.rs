@@ -5,8 +5,7 @@ use super::bolt_name::size_in;
 use super::material::said_by;
 use super::properties::{Plausible, Property};
 use super::reading::Reading;
-use super::section::see;
-use super::shank::{Cluster, round, small_part};
+use super::shank::{Cluster, Shank, round, small_part};
 use super::solid::Prism;
 use super::statement::{Statement, first_text};
 use super::words::{Word, says};
@@ -57,7 +56,7 @@ impl<'a> Reading<'a> {
             return Err(reason);
         }
         let clusters = self.clusters(prisms);
-        let shanks: Vec<&Prism> = clusters.iter().filter_map(Cluster::shank).collect();
+        let shanks: Vec<Shank> = clusters.iter().filter_map(Cluster::shank).collect();
         if shanks.is_empty() {
             return Err("its body has no round shank longer than its diameter".into());
         }
@@ -75,21 +74,20 @@ impl<'a> Reading<'a> {
         let hole = self.hole(element, &properties);
         let mut bolts = Vec::new();
         for shank in shanks {
-            let drawn = 2.0 * shank.profile.outer.circle.map_or(f64::NAN, |(_, r)| r);
-            let diameter = self.diameter(element, &stated, drawn)?;
+            let diameter = self.diameter(element, &stated, shank.diameter)?;
             let d = diameter.value.get();
             if !(d >= DIAMETERS.0 && d <= DIAMETERS.1) {
                 return Err(format!("{d:.1} mm is no bolt diameter ({} to {} mm)", DIAMETERS.0, DIAMETERS.1));
             }
-            let longest = length.as_ref().map_or(shank.depth, |l| l.value.get().max(shank.depth));
+            let drawn = shank.start.distance(shank.end);
+            let longest = length.as_ref().map_or(drawn, |l| l.value.get().max(drawn));
             if !(longest >= d) {
                 return Err(format!("it is {longest:.1} mm long, shorter than its diameter of {d:.1} mm: no bolt"));
             }
-            let middle = see(&shank.profile).bounds.centre;
             bolts.push(Bolt {
                 identity: self.identity(element),
-                start: shank.at(middle, 0.0),
-                end: shank.at(middle, shank.depth),
+                start: shank.start,
+                end: shank.end,
                 diameter: Ok(diameter),
                 length: length.clone(),
                 class: class.clone(),

@@ -9,7 +9,7 @@ use super::reading::Reading;
 use crate::exchange::{Entity, Value};
 
 /// Composite curves nest; deeper than this is no outline.
-const DEPTH: usize = 4;
+const DEPTH: usize = 2;
 
 impl Reading<'_> {
     /// Reads a closed curve of the plane.

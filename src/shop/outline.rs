@@ -6,6 +6,8 @@ use glam::{DAffine2, DVec2};
 
 /// Points of a full circle; arcs take their share.
 pub(super) const FACETS: f64 = 32.0;
+/// Only so many of the longest edges are tried for the least box: an outline of very many points has no straight side.
+const EDGES: usize = 64;
 /// Points nearer than this are one, mm.
 const SAME: f64 = 1e-6;
 
@@ -111,8 +113,10 @@ impl Loop {
     pub fn least_box(&self, x: DVec2) -> Box2 {
         let area = |b: &Box2| b.size.x * b.size.y;
         let own = self.box_along(x);
-        let edges = neighbours(&self.points).filter_map(|(before, at, _)| (at - before).try_normalize());
-        let least = edges.map(|edge| self.box_along(edge)).min_by(|a, b| area(a).total_cmp(&area(b)));
+        let mut edges: Vec<DVec2> = neighbours(&self.points).map(|(before, at, _)| at - before).collect();
+        edges.sort_by(|a, b| b.length_squared().total_cmp(&a.length_squared()));
+        let directions = edges.into_iter().take(EDGES).filter_map(DVec2::try_normalize);
+        let least = directions.map(|edge| self.box_along(edge)).min_by(|a, b| area(a).total_cmp(&area(b)));
         match least {
             Some(least) if self.circle.is_none() && area(&least) < 0.999 * area(&own) => least,
             _ => own,

@@ -2,8 +2,8 @@
 
 use glam::{DVec2, DVec3};
 
-use super::outline::Loop;
 use super::member::{contains, untaken};
+use super::outline::Loop;
 use super::profile::Kind;
 use super::reading::Reading;
 use super::solid::{Cut, Prism, Solid};

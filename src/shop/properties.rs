@@ -7,6 +7,8 @@ use crate::origin::Place;
 
 /// Complex properties nest; deeper than this nobody looks.
 const DEPTH: usize = 4;
+/// A set of more properties than this is a mistake (or an attack: nested sets can multiply).
+const PROPERTIES: usize = 10_000;
 
 /// One property of a part or a material.
 pub(super) struct Property<'a> {
@@ -55,29 +57,30 @@ impl<'a> Reading<'a> {
     }
 
     /// What a property means as a length in mm, and a word on how it was read; an error if it is a number that can
-    /// be read in two ways or in none. `None` if it is not a number at all, or zero as exports write for "nothing".
+    /// be read in two ways or in none, `None` if it is not a number at all. Zero stays zero.
     pub fn length_of(&self, property: &Property<'_>, plausible: Plausible) -> Option<Result<(f64, String), String>> {
         let by = property.by();
         let (number, is_length) = property.number()?;
         if !number.is_finite() {
             return Some(Err(format!("{by} is no finite number")));
         }
-        if let Some(unit) = property.unit {
-            return Some(Ok((number * unit, by)));
-        }
-        if is_length {
-            return Some(Ok((number * self.units.length, by)));
-        }
+        let (low, high) = (plausible.0, plausible.1);
+        let sane = |mm: f64| mm == 0.0 || (mm >= low && mm <= high);
+        let strange = |mm: f64| Err(format!("{by} is {mm:.3} mm; plausible is {low} to {high} mm"));
+        let as_project = number * property.unit.unwrap_or(self.units.length);
         // A plain number has no unit. Where the project counts in mm both readings are one.
-        let sane = |mm: f64| mm >= plausible.0 && mm <= plausible.1;
-        let as_project = number * self.units.length;
-        if (self.units.length - 1.0).abs() < 1e-9 || number == 0.0 || (sane(as_project) && !sane(number)) {
-            Some(Ok((as_project, by)))
-        } else if sane(number) && !sane(as_project) {
-            Some(Ok((number, format!("{by}, a number without unit read as mm"))))
-        } else {
-            Some(Err(format!("{by} is {number} without a unit: it could be mm or the project's length unit")))
+        if property.unit.is_some() || is_length || (self.units.length - 1.0).abs() < 1e-9 {
+            return Some(if sane(as_project) { Ok((as_project, by)) } else { strange(as_project) });
         }
+        Some(match (sane(as_project), sane(number)) {
+            (true, false) => Ok((as_project, by)),
+            (false, true) => Ok((number, format!("{by}, a number without unit read as mm"))),
+            (true, true) if number == 0.0 => Ok((0.0, by)),
+            (true, true) => {
+                Err(format!("{by} is {number} without a unit: it could be mm or the project's length unit"))
+            }
+            (false, false) => strange(as_project),
+        })
     }
 }
 
@@ -129,17 +132,27 @@ fn number_in(text: &str) -> Option<f64> {
 
 fn collect<'a>(set: Entity<'a>, of_type: bool, into: &mut Vec<Property<'a>>) {
     let name = set.text("Name").unwrap_or_default();
+    let mut budget = PROPERTIES;
     for list in ["HasProperties", "Properties", "Quantities"] {
         for property in set.entities(list) {
-            flatten(name, property, of_type, 0, into);
+            flatten(name, property, of_type, 0, &mut budget, into);
         }
     }
 }
 
-fn flatten<'a>(set: &'a str, property: Entity<'a>, of_type: bool, depth: usize, into: &mut Vec<Property<'a>>) {
+fn flatten<'a>(
+    set: &'a str,
+    property: Entity<'a>,
+    of_type: bool,
+    depth: usize,
+    budget: &mut usize,
+    into: &mut Vec<Property<'a>>,
+) {
+    let Some(left) = budget.checked_sub(1) else { return };
+    *budget = left;
     for inner in property.entities("HasProperties") {
         if depth < DEPTH {
-            flatten(set, inner, of_type, depth + 1, into);
+            flatten(set, inner, of_type, depth + 1, budget, into);
         }
     }
     let value = ["NominalValue", "EnumerationValues", "SetPointValue", "LengthValue", "CountValue"]

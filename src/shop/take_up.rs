@@ -22,6 +22,30 @@ const LONG: f64 = 2.0;
 /// An outline that fills less of its box than this is a section (angle, channel), not a block.
 const OPEN: f64 = 0.6;
 
+/// Classes that are steelwork only if a steel grade says so.
+const NO_STEELWORK: [&str; 20] = [
+    "IfcChimney",
+    "IfcCivilElement",
+    "IfcCovering",
+    "IfcCurtainWall",
+    "IfcDistributionElement",
+    "IfcDoor",
+    "IfcFooting",
+    "IfcFurnishingElement",
+    "IfcGeographicElement",
+    "IfcPile",
+    "IfcRamp",
+    "IfcReinforcingElement",
+    "IfcRoof",
+    "IfcShadingDevice",
+    "IfcSlab",
+    "IfcStair",
+    "IfcTransportElement",
+    "IfcVirtualElement",
+    "IfcWall",
+    "IfcWindow",
+];
+
 /// Takes up the steelwork of an exchange. Every element ends as a part, a piece, an opening or a rejection.
 pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
     let reading = Reading::new(exchange, rulebook);
@@ -103,6 +127,9 @@ impl<'a> Reading<'a> {
         }
         if let Some(material) = self.not_of_steel(element) {
             return Err(format!("its material \"{material}\" is no steel"));
+        }
+        if NO_STEELWORK.iter().any(|class| element.is_a(class)) && self.grade(element).is_err() {
+            return Err(format!("{} without a steel grade: no steelwork", element.class()));
         }
         if let Some(reason) = self.small(element, &prisms) {
             return Err(reason);

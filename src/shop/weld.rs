@@ -8,7 +8,7 @@ use super::properties::{Plausible, Property};
 use super::reading::Reading;
 use super::solid::Prism;
 use super::statement::Statement;
-use super::words::{Word, says};
+use super::words::{Word, only_weld, says};
 use super::{Weld, WeldSort};
 use crate::exchange::Entity;
 use crate::origin::{Datum, Known, Missing, Origin};
@@ -24,15 +24,20 @@ const SIZE: Plausible = Plausible(1.0, 60.0);
 const LENGTH: Plausible = Plausible(5.0, 50_000.0);
 
 impl<'a> Reading<'a> {
-    /// Whether a part is a weld: by type, by the standard's property set, or by name.
+    /// Whether a part is a weld: by type, by the standard's property set, or by name. Of other classes than a
+    /// fastener only what is called a weld and nothing else: a "weld plate" is a plate.
     pub fn is_weld(&self, element: Entity<'a>) -> bool {
-        let fastener = element.is_a("IfcFastener") && !element.is_a("IfcMechanicalFastener");
-        if fastener && self.predefined(element) == Some("WELD") {
-            return true;
+        let has_set = || self.properties_of(element).iter().any(|p| p.set == SET);
+        let names = self.names_of(element);
+        if element.is_a("IfcFastener") && !element.is_a("IfcMechanicalFastener") {
+            return match self.predefined(element) {
+                Some("WELD") => true,
+                Some("GLUE" | "MORTAR") => false,
+                _ => has_set() || names.iter().any(|(_, text)| says(text, Word::Weld)),
+            };
         }
-        let may_be = fastener || element.is_a("IfcBuildingElementProxy") || element.is_a("IfcDiscreteAccessory");
-        let named = self.names_of(element).into_iter().any(|(_, text)| says(text, Word::Weld));
-        may_be && (named || self.properties_of(element).iter().any(|p| p.set == SET))
+        let may_be = element.is_a("IfcBuildingElementProxy") || element.is_a("IfcDiscreteAccessory");
+        may_be && (has_set() || names.iter().any(|(_, text)| only_weld(text)))
     }
 
     /// A weld.

@@ -70,7 +70,6 @@ const fn spellings(word: Word) -> &'static [&'static str] {
             "soudure",
             "saldatura",
             "soldadura",
-            "las",
             "svets",
             "hitsi",
         ],
@@ -98,6 +97,16 @@ const fn spellings(word: Word) -> &'static [&'static str] {
             "rubber",
         ],
     }
+}
+
+/// Whether a text consists of nothing but words for a weld and numbers: "Fillet weld 12".
+pub(super) fn only_weld(text: &str) -> bool {
+    let lower = text.to_lowercase();
+    let mut words = lower.split(|c: char| !c.is_alphabetic()).filter(|word| !word.is_empty());
+    says(text, Word::Weld)
+        && words.all(|word| {
+            [Word::Weld, Word::Fillet, Word::Butt].into_iter().any(|known| spellings(known).contains(&word))
+        })
 }
 
 /// Whether a text says the word.

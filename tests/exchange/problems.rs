@@ -191,13 +191,15 @@ fn unknown_entities_and_attributes_are_kept_as_they_are_written() {
 
 #[test]
 fn bytes_that_are_not_utf8_cost_one_character_only() {
-    let text = document("<IfcMaterial id='m' Name='Tr?ger'><Category>st?hlern</Category></IfcMaterial>");
+    let text = document(
+        "<IfcMaterial id='m' Name='Tr?ger'><Category>st?hlern</Category><Description><![CDATA[?]]></Description></IfcMaterial>",
+    );
     let bytes: Vec<u8> = text.bytes().map(|b| if b == b'?' { 0xE4 } else { b }).collect();
     let exchange = read(&bytes, "t.ifcxml").unwrap();
     assert_eq!(labelled(&exchange, "m").text("Name"), Some("Tr\u{fffd}ger"));
     assert_eq!(labelled(&exchange, "m").text("Category"), Some("st\u{fffd}hlern"));
     let said = "a text holds bytes that are not UTF-8; they are read as the replacement character";
-    assert_eq!(problems_of(&exchange), [format!("2:1 {said}"), format!("2:45 {said}")]);
+    assert_eq!(problems_of(&exchange), [format!("2:1 {said}"), format!("2:45 {said}"), format!("2:77 {said}")]);
 }
 
 #[test]

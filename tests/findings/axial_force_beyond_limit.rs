@@ -1,28 +1,40 @@
-use faying::assess::{About, State};
+use faying::assess::{About, CaseResult, State};
 
-use super::bench::check;
+use super::bench::{Bench, check, load_case, verdict};
 
 const ID: &str = "axial-force-beyond-limit";
+const LINE: &str = "unproven | the axial force of load case W1 is -260.0 kN and passes the limit of 200.0 kN below which \
+                    moment and shear may be checked without it | at most 200.0 kN | -260.0 kN";
 
-#[test]
-fn beyond_the_limit_is_unproven() {
-    check(
-        ID,
-        |b| {
-            let verdict = b.verdict(About::Axial);
-            verdict.state = State::NotMet;
-            (verdict.required, verdict.resistance, verdict.utilisation) = (Some(-260.0), Some(200.0), Some(1.3));
-        },
-        &[
-            "unproven | the axial force of load case W1 is -260.0 kN and passes the limit of 200.0 kN below which moment \
-           and shear may be checked without it (1.30 times) | -260.0 kN | 200.0 kN",
-        ],
-    );
+fn axial(bench: &mut Bench, state: State, required: Option<f64>, limit: Option<f64>) {
+    let verdict = bench.verdict(About::Axial);
+    (verdict.state, verdict.required, verdict.resistance, verdict.utilisation) = (state, required, limit, None);
 }
 
 #[test]
-fn within_the_limit_or_not_stated_is_not_told_here() {
+fn beyond_the_limit_is_unproven_whichever_way_the_assessment_says_it() {
+    check(ID, |b| axial(b, State::NotMet, Some(-260.0), Some(200.0)), &[LINE]);
+    check(ID, |b| axial(b, State::Unproven, Some(-260.0), Some(200.0)), &[LINE]);
+}
+
+#[test]
+fn the_largest_force_is_told() {
+    let mut bench = Bench::good();
+    bench.cases().push(load_case("W2", Some(300.0), Some(100.0), Some(900.0), 3));
+    axial(&mut bench, State::Unproven, Some(-260.0), Some(200.0));
+    let mut beyond = verdict(About::Axial, State::Unproven, 900.0, "kN");
+    beyond.resistance = Some(200.0);
+    let case = CaseResult { case: 1, verdicts: vec![beyond], moment: None, shear: None };
+    bench.assessment.as_mut().unwrap().cases.push(case);
+    let found = bench.find(ID);
+    assert_eq!(found.len(), 1);
+    assert_eq!(found[0].detailed.as_deref(), Some("900.0 kN"));
+}
+
+#[test]
+fn within_the_limit_or_not_known_is_not_told_here() {
     check(ID, |_| (), &[]);
-    check(ID, |b| b.verdict(About::Axial).state = State::Unproven, &[]);
+    check(ID, |b| axial(b, State::Unproven, None, Some(200.0)), &[]);
+    check(ID, |b| axial(b, State::Unproven, Some(-260.0), None), &[]);
     check(ID, |b| b.verdict(About::Moment).state = State::NotMet, &[]);
 }

@@ -20,6 +20,7 @@ pub struct Bench {
     pub rulebook: Rulebook,
     pub steelwork: Steelwork,
     pub schedule_given: bool,
+    pub unclear: bool,
     pub joint: Option<Joint>,
     pub scheduled: Option<ScheduledJoint>,
     pub intended: Option<IntendedDetail>,
@@ -36,6 +37,7 @@ impl Bench {
             joint: Some(joint(&rulebook)),
             rulebook,
             schedule_given: true,
+            unclear: false,
             scheduled: Some(scheduled()),
             intended: Some(intended()),
             assessment: None,
@@ -53,7 +55,7 @@ impl Bench {
             verdict(About::Weld, State::Met, 300.0, "kNm"),
             verdict(About::Axial, State::Met, 0.0, "kN"),
         ];
-        let cases = vec![CaseResult { case: 0, verdicts, moment: None }];
+        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None }];
         self.assessment = Some(Assessment { cases, ..Assessment::default() });
     }
 
@@ -62,6 +64,7 @@ impl Bench {
             rulebook: &self.rulebook,
             steelwork: &self.steelwork,
             schedule_given: self.schedule_given,
+            unclear: self.unclear,
             joint: self.joint.as_ref(),
             layout: self.joint.as_ref().and_then(|joint| joint.layout.as_ref().ok()),
             scheduled: self.scheduled.as_ref(),
@@ -153,6 +156,8 @@ pub fn moment(sense: Sense, resistance: f64) -> MomentResistance {
         sense,
         beta: 1.0,
         moment: knm(resistance),
+        without_welds: knm(resistance),
+        web_in_tension: Length::ZERO,
         governed_by: "column web in compression".into(),
         rows: Vec::new(),
         components: Vec::new(),

@@ -53,10 +53,11 @@ fn the_resistance_of_the_very_case_comes_first() {
     assess(&mut bench, (300.0, 300.0), (400.0, 400.0));
     bench.assessment.as_mut().unwrap().cases[0].moment = Some(moment(Sense::Hogging, 360.0));
     assert_eq!(lost_capacity(&bench.context()), Some(0.25), "only one of the two has it");
-    let case = CaseResult { case: 0, verdicts: Vec::new(), moment: Some(moment(Sense::Hogging, 480.0)) };
+    let moment = Some(moment(Sense::Hogging, 480.0));
+    let case = CaseResult { case: 0, verdicts: Vec::new(), moment, shear: None };
     bench.intended_assessment.as_mut().unwrap().cases.push(case);
     assert_eq!(lost_capacity(&bench.context()), Some(0.25), "1 - 360 / 480");
-    bench.intended_assessment.as_mut().unwrap().cases[0].moment = Some(moment(Sense::Hogging, 720.0));
+    bench.intended_assessment.as_mut().unwrap().cases[0].moment = Some(super::bench::moment(Sense::Hogging, 720.0));
     assert_eq!(lost_capacity(&bench.context()), Some(0.5), "1 - 360 / 720");
 }
 

@@ -81,7 +81,7 @@ fn what_no_weld_states_is_missing() {
     assert_eq!(reason, "butt weld: not assessed yet");
     steel.welds.remove(0);
     let top = layout(&steel).welds.flange_top.unwrap_err();
-    assert_eq!((top.what.as_str(), top.reason.as_str()), ("weld at the upper flange", "no weld is modelled there"));
+    assert_eq!((top.what.as_str(), top.reason.as_str()), ("weld at the top flange", "no weld is modelled there"));
 }
 
 #[test]

@@ -10,8 +10,8 @@ use crate::writer::building::{
 /// A joint's mark, the name of its intended detail, and the column it stands at.
 type Place = (&'static str, &'static str, &'static str);
 
-/// The joint that no line of the schedule names has no mark of its own.
-pub const NOT_SCHEDULED: &str = "W5/K1";
+/// The joint that no line of the schedule names; it has no mark of its own, only those of beam and column.
+pub const NOT_SCHEDULED: &str = "W5 / K1";
 
 // Sizes: BS 4-1 and EN 10365, from memory; the rule book's section tables hold the same.
 fn section(name: &str) -> Section {
@@ -66,7 +66,7 @@ pub fn intended(detail: &str) -> Detail {
         "M4" => Detail {
             plate: plate(20.0, 180.0, -15.0, 415.0),
             bolts: bolts(20.0, &[370.0, 265.0, 65.0]),
-            welds: welds(6.0, 5.0),
+            welds: welds(7.0, 5.0),
             stiffeners: vec![],
         },
         other => panic!("{other} is no detail of the boathouse"),
@@ -125,7 +125,7 @@ pub fn boathouse() -> Building {
     };
     let end = |(mark, detail, column): Place| End::Joint {
         column: at(column),
-        joint: Joint { mark: mark.into(), told: told(mark), detail: detailed(mark, detail) },
+        joint: Box::new(Joint { mark: mark.into(), told: told(mark), detail: detailed(mark, detail) }),
     };
     let hall: [(&str, &str, f64, Place, Place); 9] = [
         ("B1", "UKB 457x191x74", 3600.0, ("J01", "M1", "C1"), ("J02", "M1", "C2")),
@@ -161,6 +161,9 @@ pub fn boathouse() -> Building {
     }
 }
 
+/// Section, grade, upper end and direction of four columns, each with its mark and place.
+type Row = (&'static str, &'static str, f64, Along, [(&'static str, f64, f64); 4]);
+
 fn columns() -> Vec<Column> {
     let hall = [("C1", 0.0, 0.0), ("C2", 6500.0, 0.0), ("C3", 13000.0, 0.0), ("C4", 19500.0, 0.0)];
     let store = [("C5", 0.0, 7000.0), ("C6", 6500.0, 7000.0), ("C7", 13000.0, 7000.0), ("C8", 19500.0, 7000.0)];
@@ -170,7 +173,7 @@ fn columns() -> Vec<Column> {
         ("UKC 254x254x89", "S355JR", 3800.0, Along::X, store),
         ("HE 240 B", "S275JR", 6150.0, Along::Y, wing),
     ];
-    let column = |(of, grade, top, depth, places): (&str, &str, f64, Along, [(&str, f64, f64); 4])| {
+    let column = |(of, grade, top, depth, places): Row| {
         places.map(|(mark, x, y)| Column {
             mark: mark.into(),
             section: section(of),

@@ -6,6 +6,7 @@ use quick_xml::Reader;
 use quick_xml::events::Event;
 
 use super::boathouse::boathouse;
+use crate::writer::frames::frames;
 use crate::writer::guid::{ALPHABET, compress, global_id};
 use crate::writer::ifcxml::Style;
 use crate::writer::ifcxml_bytes;
@@ -120,4 +121,18 @@ fn names_are_written_digit_by_digit() {
     assert_eq!(compress(0), "0000000000000000000000");
     assert_eq!(compress(u128::MAX), "3$$$$$$$$$$$$$$$$$$$$$");
     assert_ne!(global_id("Boathouse/beam B1"), global_id("Boathouse/beam B2"));
+}
+
+#[test]
+fn a_building_of_any_size_has_as_many_joints_as_asked() {
+    for (asked, told) in [(1, true), (39, false), (100, true)] {
+        let xml = ifcxml_bytes(&frames(asked, told), STYLES[0]);
+        let elements = elements(&xml);
+        let count = |class| values(&elements, "GlobalId").filter(|(of, _)| *of == class).count();
+        let joints = asked + asked % 2;
+        assert_eq!(count("IfcMechanicalFastener"), 8 * joints, "{asked}");
+        assert_eq!(count("IfcRelConnectsWithRealizingElements"), if told { joints } else { 0 }, "{asked}");
+        let ids: BTreeSet<_> = values(&elements, "GlobalId").map(|(_, id)| id).collect();
+        assert_eq!(ids.len(), values(&elements, "GlobalId").count(), "{asked}");
+    }
 }

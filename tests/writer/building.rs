@@ -92,7 +92,7 @@ pub enum End {
         /// Index of the column.
         column: usize,
         /// The joint.
-        joint: Joint,
+        joint: Box<Joint>,
     },
     /// Nothing: the end lies here.
     Free([f64; 2]),
@@ -212,7 +212,7 @@ impl Beam {
     /// The joints at its ends.
     pub fn joints(&self) -> impl Iterator<Item = (usize, &Joint)> {
         self.ends.iter().filter_map(|end| match end {
-            End::Joint { column, joint } => Some((*column, joint)),
+            End::Joint { column, joint } => Some((*column, joint.as_ref())),
             End::Free(_) => None,
         })
     }

@@ -6,6 +6,8 @@
 
 pub mod building;
 pub mod entity;
+mod fastening;
+pub mod frames;
 pub mod guid;
 pub mod hardware;
 pub mod ifcxml;

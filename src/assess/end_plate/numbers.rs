@@ -286,12 +286,12 @@ impl Numbers {
     }
 }
 
-/// The throat, or the safe geometry (no fillet) with both gaps said: the weld itself can't be checked, and the T-stubs are
-/// a lower bound.
+/// The throat, or the safe geometry (no fillet), said twice: the weld itself can't be checked, and the T-stubs beside it
+/// are a lower bound.
 fn weld(noted: &mut Noted, name: &str, known: &Known<Length>) -> Option<Length> {
     let throat = noted.take(name, known, |a| format!("throat {a}"));
     if throat.is_none() {
-        noted.lower_bound(name, "no throat known: T-stubs are computed with no fillet, the safe geometry".into());
+        noted.lower_bound(name, "T-stubs beside it are computed with no fillet, the safe geometry".into());
     }
     throat
 }

@@ -58,7 +58,7 @@ pub fn forces(
         if let Some(Linear { force: of_row, lever_arm: its_arm, row }) = &linear {
             let allowed = *of_row * (lever_arm / *its_arm);
             if !(allowed >= force) {
-                (force, governed_by) = (allowed, format!("in proportion to row {row}, 6.2.7.2(9)"));
+                (force, governed_by) = (allowed, format!("row forces in proportion to row {row}, 6.2.7.2(9)"));
             }
         }
         force = force.max(Force::ZERO);

@@ -98,13 +98,7 @@ fn local<'a>(name: &[u8], spot: Spot, problems: &mut Problems) -> Cow<'a, str> {
 
 /// The text of a piece of XML: decoded, escapes resolved.
 pub(super) fn text<'a>(raw: Cow<'a, [u8]>, spot: Spot, problems: &mut Problems) -> Cow<'a, str> {
-    let decoded = match raw {
-        Cow::Borrowed(bytes) => String::from_utf8_lossy(bytes),
-        Cow::Owned(bytes) => String::from_utf8_lossy(&bytes).into_owned().into(),
-    };
-    if decoded.contains(char::REPLACEMENT_CHARACTER) {
-        not_utf8(spot, problems);
-    }
+    let decoded = decode(raw, spot, problems);
     match quick_xml::escape::unescape(&decoded) {
         Ok(Cow::Borrowed(_)) => decoded,
         Ok(Cow::Owned(text)) => text.into(),
@@ -113,6 +107,18 @@ pub(super) fn text<'a>(raw: Cow<'a, [u8]>, spot: Spot, problems: &mut Problems) 
             decoded
         }
     }
+}
+
+/// The text of a piece of XML that has no escapes.
+pub(super) fn decode<'a>(raw: Cow<'a, [u8]>, spot: Spot, problems: &mut Problems) -> Cow<'a, str> {
+    let decoded = match raw {
+        Cow::Borrowed(bytes) => String::from_utf8_lossy(bytes),
+        Cow::Owned(bytes) => String::from_utf8_lossy(&bytes).into_owned().into(),
+    };
+    if decoded.contains(char::REPLACEMENT_CHARACTER) {
+        not_utf8(spot, problems);
+    }
+    decoded
 }
 
 fn not_utf8(spot: Spot, problems: &mut Problems) {

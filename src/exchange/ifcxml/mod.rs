@@ -81,8 +81,8 @@ pub(super) fn read(bytes: &[u8], problems: Problems, entities: Entities) -> Resu
                 parser.text(text, spot);
             }
             Event::CData(data) => {
-                let data = String::from_utf8_lossy(&data).into_owned();
-                parser.text(data.into(), spot);
+                let text = head::decode(data.into_inner(), spot, &mut parser.problems);
+                parser.text(text, spot);
             }
             Event::GeneralRef(reference) => {
                 let escape = [b"&", &reference[..], b";"].concat();

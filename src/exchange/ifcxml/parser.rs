@@ -1,8 +1,8 @@
 //! What each element means: an entity, an attribute of one, an item of a list, or nothing known.
 
 use std::borrow::Cow;
-use std::collections::HashMap;
 
+use super::super::labels::Labels;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Attribute, Base, ClassId, Kind, Schema};
@@ -46,7 +46,7 @@ pub(super) struct Link {
 pub(super) struct Parser {
     schema: &'static Schema,
     pub entities: Entities,
-    pub labels: HashMap<Box<str>, Id>,
+    pub labels: Labels,
     pub waiting: Vec<Waiting>,
     pub links: Vec<Link>,
     pub problems: Problems,
@@ -60,7 +60,7 @@ impl Parser {
         Self {
             schema: Schema::ifc4(),
             entities,
-            labels: HashMap::new(),
+            labels: Labels::default(),
             waiting: Vec::new(),
             links: Vec::new(),
             problems,
@@ -225,7 +225,7 @@ impl Parser {
             let mut slot = Slot::new(&head, Target::Item, Kind { depth: u8::from(row), ..item });
             if !row && matches!(kind.base, Base::Select | Base::Any) {
                 self.problems.add("unknown type", head.spot, || format!("{name} is no type of the schema"));
-                slot = slot.typed(name, Kind::ANY);
+                slot = slot.typed(name.into(), Kind::ANY);
             }
             self.stack.push(Frame::Slot(slot));
         } else {
@@ -256,7 +256,7 @@ impl Parser {
         let label = head.id.as_deref().unwrap_or_default();
         let id = self.entities.open(class, label, head.spot);
         if head.id.is_some() {
-            let first = *self.labels.entry(label.into()).or_insert(id);
+            let first = self.labels.enter(id, &self.entities);
             if first != id {
                 let at = self.entities.get(first).place();
                 self.problems.add("id given twice", head.spot, || {
@@ -298,7 +298,7 @@ impl Parser {
                 format!("{} refers to {}: other documents are not read", head.name, scalar::quoted(elsewhere))
             });
         } else if let Some(label) = head.reference.as_deref() {
-            let id = self.labels.get(label).copied().unwrap_or_else(|| {
+            let id = self.labels.find(label, &self.entities).unwrap_or_else(|| {
                 self.waiting.push(Waiting { label: label.into(), spot: head.spot });
                 Id(WAITING + (self.waiting.len() - 1) as u32)
             });

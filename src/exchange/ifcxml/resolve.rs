@@ -6,7 +6,8 @@ use super::super::{Exchange, Id, Value, conform};
 use super::parser::{Link, Parser, WAITING};
 
 pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
-    let targets: Vec<Option<Id>> = parser.waiting.iter().map(|w| parser.labels.get(&w.label).copied()).collect();
+    let targets: Vec<Option<Id>> =
+        parser.waiting.iter().map(|w| parser.labels.find(&w.label, &parser.entities)).collect();
     for (waiting, _) in parser.waiting.iter().zip(&targets).filter(|(_, target)| target.is_none()) {
         let label = &waiting.label;
         parser

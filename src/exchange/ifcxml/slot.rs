@@ -1,9 +1,9 @@
 //! An element that holds the value of an attribute, or one value of a list or SELECT.
 
-use super::super::Value;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Base, Kind};
+use super::super::{TypeName, Value};
 use super::head::{Head, Pos};
 
 /// Where a value goes.
@@ -25,7 +25,7 @@ pub(super) struct Slot {
     pub target: Target,
     pub kind: Kind,
     /// The defined type that was chosen in a SELECT.
-    pub typed: Option<Box<str>>,
+    pub typed: Option<TypeName>,
     pub pos: Option<Pos>,
     pub items: Vec<(Option<Pos>, Value)>,
     pub text: String,
@@ -46,9 +46,9 @@ impl Slot {
     }
 
     /// Makes it hold a value of a defined type; the type is kept only where the schema leaves a choice.
-    pub fn typed(mut self, name: &str, kind: Kind) -> Self {
+    pub fn typed(mut self, name: TypeName, kind: Kind) -> Self {
         if matches!(self.kind.base, Base::Select | Base::Any) {
-            self.typed = Some(name.into());
+            self.typed = Some(name);
         }
         self.kind = kind;
         self
@@ -109,7 +109,9 @@ impl Slot {
 }
 
 fn list(items: Vec<(Option<Pos>, Value)>) -> Value {
-    Value::List(items.into_iter().map(|(_, value)| value).collect())
+    let mut items: Vec<Value> = items.into_iter().map(|(_, value)| value).collect();
+    items.shrink_to_fit(); // most memory goes into short lists
+    Value::List(items)
 }
 
 /// A SELECT's value without the type that tells what it is.

@@ -1,0 +1,114 @@
+//! An intended detail as TOML.
+
+use std::borrow::Cow;
+
+use toml::Spanned;
+use toml::de::DeValue;
+
+use super::actions::decimal;
+use super::source::tidy;
+use super::toml_form::{Reader, Sign, Table};
+use super::{IntendedDetail, IntendedStiffener};
+use crate::units::{Length, mm};
+
+impl Reader<'_> {
+    /// One `[detail.NAME]`.
+    pub fn detail(&mut self, name: &Spanned<Cow<'_, str>>, value: &Spanned<DeValue<'_>>) -> Option<IntendedDetail> {
+        let DeValue::Table(table) = value.get_ref() else {
+            self.wrong(value, name.get_ref(), "a table [detail.NAME]");
+            return None;
+        };
+        let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
+        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members"]);
+        let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
+        match tidy(name.get_ref()) {
+            Ok(name) if !name.is_empty() => detail.name = name,
+            Ok(_) => self.fault(name.span(), "a detail has no name; allowed is [detail.NAME]".into()),
+            Err(message) => self.fault(name.span(), format!("detail: {message}")),
+        }
+        if let Some(bolts) = self.inner(&table, "bolts") {
+            self.known(&bolts, &["size", "class", "rows_mm", "gauge_mm"]);
+            detail.bolt_diameter = self.bolt_size(&bolts);
+            detail.bolt_class = self.text(&bolts, "class");
+            detail.rows = self.rows(&bolts);
+            detail.gauge = self.length(&bolts, "gauge_mm", Sign::Positive);
+        }
+        if let Some(plate) = self.inner(&table, "plate") {
+            self.known(&plate, &["thickness_mm", "width_mm", "top_mm", "bottom_mm", "grade"]);
+            detail.plate_thickness = self.length(&plate, "thickness_mm", Sign::Positive);
+            detail.plate_width = self.length(&plate, "width_mm", Sign::Positive);
+            detail.plate_top = self.length(&plate, "top_mm", Sign::Any);
+            detail.plate_bottom = self.length(&plate, "bottom_mm", Sign::Any);
+            detail.plate_grade = self.text(&plate, "grade");
+            let edges = detail.plate_top.zip(detail.plate_bottom);
+            if let Some((top, bottom)) = edges.filter(|(top, bottom)| top <= bottom) {
+                let message = format!("plate: top_mm {top} is not above bottom_mm {bottom}; allowed is a higher top");
+                self.fault(plate.span, message);
+            }
+        }
+        if let Some(welds) = self.inner(&table, "welds") {
+            self.known(&welds, &["flange_throat_mm", "web_throat_mm"]);
+            detail.flange_weld = self.length(&welds, "flange_throat_mm", Sign::Positive);
+            detail.web_weld = self.length(&welds, "web_throat_mm", Sign::Positive);
+        }
+        if let Some(stiffeners) = self.inner(&table, "stiffeners") {
+            self.known(&stiffeners, &["top", "bottom"]);
+            detail.stiffener_top = self.stiffener(&stiffeners, "top");
+            detail.stiffener_bottom = self.stiffener(&stiffeners, "bottom");
+        }
+        if let Some(members) = self.inner(&table, "members") {
+            self.known(&members, &["supporting_section", "supported_section", "supporting_grade", "supported_grade"]);
+            detail.supporting_section = self.text(&members, "supporting_section");
+            detail.supported_section = self.text(&members, "supported_section");
+            detail.supporting_grade = self.text(&members, "supporting_grade");
+            detail.supported_grade = self.text(&members, "supported_grade");
+        }
+        Some(detail)
+    }
+
+    fn bolt_size(&mut self, bolts: &Table<'_>) -> Option<Length> {
+        let value = bolts.table.get("size")?;
+        let size = value.get_ref().as_str().and_then(|text| text.trim().strip_prefix(['M', 'm']));
+        let diameter = size.and_then(|size| decimal(size.trim(), false)).filter(|d| *d > 0.0 && *d <= 200.0);
+        if diameter.is_none() {
+            self.wrong(value, "size", "M and the nominal diameter in mm, such as \"M24\"");
+        }
+        diameter.map(mm)
+    }
+
+    fn rows(&mut self, bolts: &Table<'_>) -> Option<Vec<Length>> {
+        let value = bolts.table.get("rows_mm")?;
+        let allowed = "a list of heights above the soffit in mm, from the top row down";
+        let Some(items) = value.get_ref().as_array().filter(|items| !items.is_empty()) else {
+            self.wrong(value, "rows_mm", allowed);
+            return None;
+        };
+        let mut rows = Vec::new();
+        for item in items.iter() {
+            rows.push(mm(self.number(item, "rows_mm", 1.0, Sign::Any)?));
+        }
+        // Rows measured from the plate's top edge would rise: they are not put in order, but given back.
+        if !rows.iter().zip(rows.iter().skip(1)).all(|(upper, lower)| upper > lower) {
+            self.wrong(value, "rows_mm", allowed);
+            return None;
+        }
+        Some(rows)
+    }
+
+    fn stiffener(&mut self, stiffeners: &Table<'_>, key: &str) -> Option<Option<IntendedStiffener>> {
+        let value = stiffeners.table.get(key)?;
+        match value.get_ref() {
+            DeValue::String(text) if text == "none" => Some(None),
+            DeValue::Table(_) => {
+                let table = self.inner(stiffeners, key)?;
+                self.known(&table, &["thickness_mm", "grade"]);
+                let thickness = self.length(&table, "thickness_mm", Sign::Positive);
+                Some(Some(IntendedStiffener { thickness, grade: self.text(&table, "grade") }))
+            }
+            _ => {
+                self.wrong(value, key, "\"none\" or a table such as { thickness_mm = 15, grade = \"S275\" }");
+                None
+            }
+        }
+    }
+}

@@ -1,0 +1,51 @@
+//! Intended details.
+
+use super::sound;
+use faying::intent::IntendedStiffener;
+use faying::units::mm;
+
+const JOINT: &str = "[[joint]]\nmark = 'J1'\ndetail = 'M3'\n";
+
+#[test]
+fn every_field_is_read() {
+    let text = format!(
+        "{JOINT}[detail.M3]\n\
+         bolts = {{ size = 'M24', class = '8.8', rows_mm = [573.1, 483, -60], gauge_mm = 100 }}\n\
+         plate = {{ thickness_mm = 25, width_mm = 250, top_mm = 620, bottom_mm = -50.5, grade = 'S275' }}\n\
+         welds = {{ flange_throat_mm = 8.4, web_throat_mm = 5 }}\n\
+         stiffeners = {{ top = {{ thickness_mm = 15, grade = 'S275' }}, bottom = 'none' }}\n\
+         members = {{ supporting_section = 'UC 1', supported_section = 'UB 1', supporting_grade = 'S355', \
+         supported_grade = 'S235' }}\n"
+    );
+    let intent = sound("s.toml", &text);
+    let d = &intent.details[0];
+    assert_eq!(d.name, "M3");
+    assert_eq!(d.at.as_ref().map(ToString::to_string).as_deref(), Some("s.toml:4:9"));
+    assert_eq!((d.bolt_diameter, d.bolt_class.as_deref()), (Some(mm(24.0)), Some("8.8")));
+    assert_eq!(d.rows, Some(vec![mm(573.1), mm(483.0), mm(-60.0)]));
+    assert_eq!((d.gauge, d.plate_thickness, d.plate_width), (Some(mm(100.0)), Some(mm(25.0)), Some(mm(250.0))));
+    assert_eq!((d.plate_top, d.plate_bottom), (Some(mm(620.0)), Some(mm(-50.5))));
+    assert_eq!(d.plate_grade.as_deref(), Some("S275"));
+    assert_eq!((d.flange_weld, d.web_weld), (Some(mm(8.4)), Some(mm(5.0))));
+    let stiffener = IntendedStiffener { thickness: Some(mm(15.0)), grade: Some("S275".into()) };
+    assert_eq!((&d.stiffener_top, &d.stiffener_bottom), (&Some(Some(stiffener)), &Some(None)));
+    assert_eq!((d.supporting_section.as_deref(), d.supported_section.as_deref()), (Some("UC 1"), Some("UB 1")));
+    assert_eq!((d.supporting_grade.as_deref(), d.supported_grade.as_deref()), (Some("S355"), Some("S235")));
+}
+
+#[test]
+fn what_is_not_stated_is_none() {
+    let intent = sound("s.toml", &format!("{JOINT}[detail.M3.stiffeners]\ntop = {{}}\n"));
+    let d = &intent.details[0];
+    assert_eq!(d.stiffener_top, Some(Some(IntendedStiffener { thickness: None, grade: None })));
+    assert_eq!(d.stiffener_bottom, None);
+    assert!(d.bolt_diameter.is_none() && d.rows.is_none() && d.plate_thickness.is_none() && d.flange_weld.is_none());
+}
+
+#[test]
+fn details_stand_in_the_order_of_the_file() {
+    let intent = sound("s.toml", &format!("[detail.Z]\n[detail.A]\n[detail.M3]\n{JOINT}"));
+    let names: Vec<&str> = intent.details.iter().map(|d| d.name.as_str()).collect();
+    assert_eq!(names, ["Z", "A", "M3"]);
+    assert_eq!(intent.problems.len(), 2);
+}
