@@ -1,1 +1,4 @@
+//! The whole trip, as a user and as a hostile file see it.
 
+mod bench;
+mod never_clear;
