@@ -75,7 +75,10 @@ pub fn shed() -> Building {
     Building {
         name: NAME.into(),
         site: [1200.0, -300.0, 4000.0],
-        storeys: vec![Storey { name: "Ground".into(), elevation: 0.0 }, Storey { name: "Loft".into(), elevation: 3300.0 }],
+        storeys: vec![
+            Storey { name: "Ground".into(), elevation: 0.0 },
+            Storey { name: "Loft".into(), elevation: 3300.0 },
+        ],
         columns: vec![column("C1", 0.0), column("C2", 6500.0)],
         beams: vec![Beam {
             mark: "B1".into(),
@@ -85,6 +88,32 @@ pub fn shed() -> Building {
             ends: [end(0, "J1"), end(1, "J2")],
         }],
     }
+}
+
+/// The shed with a third column and a second beam B2 between C2 and C3, level with B1: joints J3 and J4.
+pub fn long_shed() -> Building {
+    let mut building = shed();
+    building.columns.push(column("C3", 13000.0));
+    let mut second = building.beams[0].clone();
+    second.mark = "B2".into();
+    for (end, at, name) in [(0, 1, "J3"), (1, 2, "J4")] {
+        if let End::Joint { column, joint } = &mut second.ends[end] {
+            (*column, joint.mark) = (at, name.into());
+        }
+    }
+    building.beams.push(second);
+    building
+}
+
+/// A schedule of joints with one load case LC1: mark, column, beam, end, M in kNm.
+pub fn one_case(lines: &[(&str, &str, &str, &str, f64)]) -> String {
+    let line = |(mark, column, beam, end, moment): &(&str, &str, &str, &str, f64)| {
+        format!(
+            "[[joint]]\nmark = \"{mark}\"\nsupporting = \"{column}\"\nsupported = \"{beam}\"\nend = \"{end}\"\n\
+             case = [{{ name = \"LC1\", M_Ed_kNm = {moment}, V_Ed_kN = 120, N_Ed_kN = 0 }}]\n\n"
+        )
+    };
+    lines.iter().map(line).collect()
 }
 
 /// The detail of joint J1.
@@ -179,6 +208,26 @@ pub fn owned<'a>(entity: &'a mut Entity, name: &str) -> Option<&'a mut Entity> {
 /// Whether an entity is the part of that path.
 pub fn is(entity: &mut Entity, path: &str) -> bool {
     matches!(simple(entity, "GlobalId"), Some(Simple::Text(own)) if *own == guid(path))
+}
+
+/// A list of entities by the attribute that holds it.
+pub fn many<'a>(entity: &'a mut Entity, name: &str) -> Option<&'a mut Vec<Link>> {
+    entity.fields.iter_mut().find_map(|field| match field {
+        Field::Many(own, links) if *own == name => Some(links),
+        _ => None,
+    })
+}
+
+/// The profile of a product's first solid.
+pub fn profile(product: &mut Entity) -> &mut Entity {
+    let mut at = owned(product, "Representation").expect("a product with a shape");
+    for list in ["Representations", "Items"] {
+        at = match many(at, list).and_then(|links| links.first_mut()) {
+            Some(Link::Own(inner)) => inner,
+            _ => unreachable!("a shape has {list}"),
+        };
+    }
+    owned(at, "SweptArea").expect("a solid with a profile of its own")
 }
 
 /// The axis placement of a product.
