@@ -2,3 +2,4 @@
 
 mod bench;
 mod never_clear;
+mod same_building;

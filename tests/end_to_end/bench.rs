@@ -176,8 +176,13 @@ impl<S> Edited<'_, S> {
 
 /// The exchange of a building, edited on its way.
 pub fn written(building: &Building, edit: Edit<'_>) -> String {
+    written_as(Style::default(), building, edit)
+}
+
+/// The same in a style.
+pub fn written_as(style: Style, building: &Building, edit: Edit<'_>) -> String {
     let mut bytes = Vec::new();
-    let document = IfcXml::begin(&mut bytes, Style::default(), &building.name).expect("memory takes it");
+    let document = IfcXml::begin(&mut bytes, style, &building.name).expect("memory takes it");
     let mut sink = Edited { to: document, edit, left_out: BTreeSet::new() };
     model::write(building, &mut sink).expect("memory takes it");
     sink.to.finish().expect("memory takes it");
