@@ -3,3 +3,4 @@
 mod bench;
 mod never_clear;
 mod same_building;
+mod sample;

@@ -158,15 +158,18 @@ fn at_upper_bound(assessment: &Assessment, demands: &[Demand<'_>], two_sided: bo
         return sentences;
     }
     let asked = |sense| assessment.cases.iter().any(|c| c.moment.as_ref().is_some_and(|m| m.sense == sense));
-    for (sense, computed, side) in
-        [(Sense::Hogging, &assessment.hogging, "top"), (Sense::Sagging, &assessment.sagging, "bottom")]
-    {
-        if computed.is_some() && !asked(sense) {
-            sentences.push(format!(
-                "{BOUND} for the resistance with tension at the {side}: no load case asks for it, and beams meet both flanges"
-            ));
-        }
-    }
+    let which = match (
+        assessment.hogging.is_some() && !asked(Sense::Hogging),
+        assessment.sagging.is_some() && !asked(Sense::Sagging),
+    ) {
+        (true, true) => "in both senses",
+        (true, false) => "with tension at the top",
+        (false, true) => "with tension at the bottom",
+        (false, false) => return sentences,
+    };
+    sentences.push(format!(
+        "{BOUND} for the moment resistance {which}: no load case asks for it, and beams meet both column flanges"
+    ));
     sentences
 }
 
