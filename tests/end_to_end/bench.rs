@@ -135,6 +135,8 @@ pub type Edit<'a> = &'a dyn Fn(&mut Entity) -> bool;
 /// Writes what an [`Edit`] leaves of each entity.
 struct Edited<'a, S> {
     to: S,
+    /// Sees each entity that stands by itself, before its own are edited.
+    before: &'a dyn Fn(&mut Entity),
     edit: Edit<'a>,
     left_out: BTreeSet<u64>,
 }
@@ -145,32 +147,35 @@ impl<S: Sink> Sink for Edited<'_, S> {
     }
 
     fn put(&mut self, mut entity: Entity) -> io::Result<()> {
+        (self.before)(&mut entity);
         if self.keep(&mut entity) { self.to.put(entity) } else { Ok(()) }
     }
 }
 
 impl<S> Edited<'_, S> {
     fn keep(&mut self, entity: &mut Entity) -> bool {
-        for field in &mut entity.fields {
+        entity.fields.retain_mut(|field| {
             let links = match field {
-                Field::One(_, _, Link::Own(owned)) => {
-                    self.keep(owned);
-                    continue;
-                }
+                Field::One(_, _, link) => return self.keep_link(link),
                 Field::Many(_, links) => links,
                 Field::Inverse { relations, .. } => relations,
-                Field::One(..) | Field::Simple(..) | Field::Typed(..) => continue,
+                Field::Simple(..) | Field::Typed(..) => return true,
             };
-            links.retain_mut(|link| match link {
-                Link::Own(owned) => self.keep(owned),
-                Link::To(_, id) => !self.left_out.contains(id),
-            });
-        }
+            links.retain_mut(|link| self.keep_link(link));
+            true
+        });
         let keep = (self.edit)(entity);
         if !keep {
             self.left_out.extend(entity.id);
         }
         keep
+    }
+
+    fn keep_link(&mut self, link: &mut Link) -> bool {
+        match link {
+            Link::Own(owned) => self.keep(owned),
+            Link::To(_, id) => !self.left_out.contains(id),
+        }
     }
 }
 
@@ -181,9 +186,18 @@ pub fn written(building: &Building, edit: Edit<'_>) -> String {
 
 /// The same in a style.
 pub fn written_as(style: Style, building: &Building, edit: Edit<'_>) -> String {
+    write(style, building, &|_| {}, edit)
+}
+
+/// The same; `before` sees each entity that stands by itself before its own are edited.
+pub fn written_within(building: &Building, before: &dyn Fn(&mut Entity), edit: Edit<'_>) -> String {
+    write(Style::default(), building, before, edit)
+}
+
+fn write(style: Style, building: &Building, before: &dyn Fn(&mut Entity), edit: Edit<'_>) -> String {
     let mut bytes = Vec::new();
     let document = IfcXml::begin(&mut bytes, style, &building.name).expect("memory takes it");
-    let mut sink = Edited { to: document, edit, left_out: BTreeSet::new() };
+    let mut sink = Edited { to: document, before, edit, left_out: BTreeSet::new() };
     model::write(building, &mut sink).expect("memory takes it");
     sink.to.finish().expect("memory takes it");
     String::from_utf8(bytes).expect("the writer writes UTF-8")

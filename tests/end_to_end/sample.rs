@@ -40,7 +40,8 @@ fn word<'a>(value: &'a Value, key: &str) -> &'a str {
 
 #[test]
 fn each_joint_ends_as_expected_with_the_rules_that_are_expected() {
-    let expected: toml::Table = fs::read_to_string(folder().join("expected.toml")).expect("it is there").parse().expect("TOML");
+    let expected: toml::Table =
+        fs::read_to_string(folder().join("expected.toml")).expect("it is there").parse().expect("TOML");
     let review = json(&["review", "sample-exchange"], 1);
     for (count, key) in [("found", "joints_found"), ("scheduled", "joints_scheduled"), ("paired", "joints_paired")] {
         assert_eq!(review["counts"][count].as_i64(), expected[key].as_integer(), "{count}");
@@ -51,7 +52,12 @@ fn each_joint_ends_as_expected_with_the_rules_that_are_expected() {
         let mark = word(joint, "mark");
         let says = left.remove(mark).unwrap_or_else(|| panic!("{mark} is not expected, or stands twice"));
         let ids = |key: &str| -> BTreeSet<&str> {
-            says.get(key).and_then(toml::Value::as_array).into_iter().flatten().filter_map(toml::Value::as_str).collect()
+            says.get(key)
+                .and_then(toml::Value::as_array)
+                .into_iter()
+                .flatten()
+                .filter_map(toml::Value::as_str)
+                .collect()
         };
         let found: BTreeSet<&str> = list(joint, "findings").iter().map(|finding| word(finding, "rule")).collect();
         let allowed: BTreeSet<&str> = ids("rules").union(&ids("may")).copied().collect();
@@ -123,7 +129,14 @@ fn the_same_input_gives_the_same_bytes() {
         }
         let mut command = Command::new(env!("CARGO_BIN_EXE_faying"));
         command.args(args).current_dir(elsewhere.path()).env_clear();
-        let environment = [("NO_COLOR", "1"), ("CLICOLOR_FORCE", "1"), ("COLUMNS", "40"), ("LANG", "de_DE"), ("TZ", "Asia/Tokyo"), ("TERM", "xterm")];
+        let environment = [
+            ("NO_COLOR", "1"),
+            ("CLICOLOR_FORCE", "1"),
+            ("COLUMNS", "40"),
+            ("LANG", "de_DE"),
+            ("TZ", "Asia/Tokyo"),
+            ("TERM", "xterm"),
+        ];
         let out = command.envs(environment).output().expect("the program runs");
         assert_eq!(first.1.as_bytes(), out.stdout, "{args:?}");
     }
@@ -299,7 +312,8 @@ fn the_document_has_every_key_of_version_1() {
     has(&review, REVIEW, "review");
     assert_eq!(review["schema"], "faying-review/1");
     assert_eq!(review["tool"]["name"], "faying");
-    let words = |key: &str| -> BTreeSet<&str> { list(&review, "joints").iter().map(|joint| word(joint, key)).collect() };
+    let words =
+        |key: &str| -> BTreeSet<&str> { list(&review, "joints").iter().map(|joint| word(joint, key)).collect() };
     assert_eq!(words("outcome"), BTreeSet::from(["clear", "comment", "hold", "unproven"]));
     assert_eq!(words("kind"), BTreeSet::from(["end-plate-moment", "not-found"]));
     let sum = review["model"]["sha256"].as_str().expect("a sum");
