@@ -135,7 +135,9 @@ fn pairs(scene: &Scene, column: &Member, mut halves: Vec<Half>) -> Vec<(Stiffene
 fn stiffener(scene: &Scene, column: &Member, one: &Half, two: Option<&Half>) -> (Stiffener, Vec<usize>, Vec<usize>) {
     let touch = scene.tolerances().touch.get();
     let (t_f, t_w) = thicknesses(column);
-    let halves: Vec<&Half> = [Some(one), two].into_iter().flatten().collect();
+    let mut halves: Vec<&Half> = [Some(one), two].into_iter().flatten().collect();
+    // Which of two level halves is a hair higher is noise: they are named in the order of the file.
+    halves.sort_by_key(|half| half.plate);
     let least = |of: &dyn Fn(&Half) -> f64| halves.iter().map(|half| of(half)).fold(f64::INFINITY, f64::min);
     let plate = |half: &Half| &scene.steel.plates[half.plate];
     let clear = column.extents.y / 2.0 - t_f - touch;
