@@ -1,1 +1,7 @@
+//! The whole trip, as a user and as a hostile file see it.
 
+mod bench;
+mod deletions;
+mod never_clear;
+mod same_building;
+mod sample;

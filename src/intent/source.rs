@@ -108,7 +108,7 @@ pub(super) fn tidy(text: &str) -> Result<String, String> {
 }
 
 /// The form in which marks are compared: white space and case do not count.
-pub(super) fn fold(mark: &str) -> String {
+pub(crate) fn fold(mark: &str) -> String {
     mark.split_whitespace().collect::<String>().to_uppercase()
 }
 

@@ -123,12 +123,9 @@ fn pairs(scene: &Scene, column: &Member, mut halves: Vec<Half>) -> Vec<(Stiffene
     let mut stiffeners = Vec::new();
     while !halves.is_empty() {
         let one = halves.remove(0);
-        let partner = halves.iter().position(|two| {
-            let common = one.depth.hi.min(two.depth.hi) - one.depth.lo.max(two.depth.lo);
-            one.height - two.height <= position
-                && one.across.mid() * two.across.mid() < 0.0
-                && common >= 0.5 * one.depth.size().min(two.depth.size())
-        });
+        let partner = halves
+            .iter()
+            .position(|two| one.height - two.height <= position && one.across.mid() * two.across.mid() < 0.0);
         let two = partner.map(|i| halves.remove(i));
         stiffeners.push(stiffener(scene, column, &one, two.as_ref()));
     }
@@ -138,7 +135,9 @@ fn pairs(scene: &Scene, column: &Member, mut halves: Vec<Half>) -> Vec<(Stiffene
 fn stiffener(scene: &Scene, column: &Member, one: &Half, two: Option<&Half>) -> (Stiffener, Vec<usize>, Vec<usize>) {
     let touch = scene.tolerances().touch.get();
     let (t_f, t_w) = thicknesses(column);
-    let halves: Vec<&Half> = [Some(one), two].into_iter().flatten().collect();
+    let mut halves: Vec<&Half> = [Some(one), two].into_iter().flatten().collect();
+    // Which of two level halves is a hair higher is noise: they are named in the order of the file.
+    halves.sort_by_key(|half| half.plate);
     let least = |of: &dyn Fn(&Half) -> f64| halves.iter().map(|half| of(half)).fold(f64::INFINITY, f64::min);
     let plate = |half: &Half| &scene.steel.plates[half.plate];
     let clear = column.extents.y / 2.0 - t_f - touch;

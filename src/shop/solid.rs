@@ -189,7 +189,8 @@ impl<'a> Reading<'a> {
         let depth = solid.number("Depth").map(|d| d * self.units.length).filter(|d| *d > 0.0 && d.is_finite());
         let depth = depth
             .ok_or_else(|| format!("its body has an extrusion whose Depth is not more than 0 ({})", solid.place()))?;
-        let direction = direction(solid, "ExtrudedDirection")?.unwrap_or(DVec3::Z);
+        let direction = direction(solid, "ExtrudedDirection")?
+            .ok_or_else(|| format!("its body has an extrusion without an ExtrudedDirection ({})", solid.place()))?;
         prism(profile, map * position, direction * depth, self.rulebook.tolerances.angle)
     }
 }

@@ -259,6 +259,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
         welds: vec![(0, "flange-top"), (1, "web")],
         layout: Ok(layout),
         opposite: None,
+        opposite_unclear: None,
         disagreements: Vec::new(),
         place: Some(place(1)),
     }

@@ -48,6 +48,7 @@ pub fn steel(members: &[(&str, Option<&str>)], joints: &[Met<'_>]) -> (Joints, S
         welds: Vec::new(),
         layout: Err("this test needs none".into()),
         opposite: None,
+        opposite_unclear: None,
         disagreements: Vec::new(),
         place: None,
     };

@@ -144,6 +144,22 @@ fn shanks_may_be_drawn_as_the_plates_thickness_or_long() {
     }
 }
 
+#[test]
+fn a_shank_drawn_as_the_plates_thickness_reaches_over_a_gap_that_counts_as_touching() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.bolts.iter_mut().for_each(|bolt| bolt.start.x = 160.25);
+    (steel.members[0].start.x, steel.members[0].end.x) = (-1.5, -1.5);
+    assert_eq!(layout(&steel).bolts.rows.len(), 4);
+}
+
+#[test]
+fn a_weld_on_the_plates_other_side_is_none_of_the_beams() {
+    let mut steel = frame(&[Detail::default()]);
+    let at = |x: f64, y: f64, z: f64| DVec3::new(160.25 + x, y, 4406.4 + z);
+    steel.welds.push(weld("seal", at(-3.0, -88.0, -3.0), at(0.0, 88.0, 3.0), 3.0));
+    assert_eq!(length(&layout(&steel).welds.flange_top), Some(7.0));
+}
+
 fn ribbed(rib: Rib) -> Steelwork {
     frame(&[Detail { ribs: vec![rib], ..Detail::default() }])
 }
@@ -177,6 +193,16 @@ fn a_stiffener_on_one_side_or_of_part_depth_says_so() {
     let partial = layout(&ribbed(Rib { reach: 185.0, weld: None, ..RIB }));
     assert!(partial.stiffeners[0].both_sides && !partial.stiffeners[0].full_depth);
     assert_eq!(partial.stiffeners[0].weld.as_ref().unwrap_err().reason, "no weld is modelled there");
+}
+
+#[test]
+fn two_plates_on_one_side_are_no_pair() {
+    let mut steel = ribbed(Rib { both_sides: false, ..RIB });
+    let mut twin = steel.plates[1].clone();
+    twin.centre.z += 1.0;
+    steel.plates.push(twin);
+    let stiffeners = layout(&steel).stiffeners;
+    assert!(stiffeners.len() == 2 && stiffeners.iter().all(|s| !s.both_sides));
 }
 
 #[test]

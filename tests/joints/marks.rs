@@ -102,6 +102,17 @@ fn what_only_a_relation_says_is_a_joint_that_is_not_laid_out() {
     assert!(joints.loose_bolts.is_empty());
 }
 
+#[test]
+fn a_relation_between_members_that_meet_nowhere_is_a_joint_too() {
+    let mut steel = frame(&[]);
+    let start = DVec3::new(900.0, 0.0, 4000.0);
+    steel.members.push(member("B1", BEAM, start, start + DVec3::X * 3000.0, DVec3::Z));
+    steel.told.push(told("", &[Part::Member(0), Part::Member(1)], &[]));
+    let joint = only(&steel);
+    assert_eq!((joint.mark.as_str(), joint.supporting, joint.supported), ("B1 / C1", Some(0), Some(1)));
+    assert!(joint.layout.unwrap_err().ends_with("its members meet nowhere"));
+}
+
 /// Beam, plate and bolts stand 500 mm off the column, and the bolts beside the plate.
 fn move_beam_away(steel: &mut Steelwork) {
     let column = steel.members[0].clone();

@@ -29,6 +29,8 @@ pub enum Opposite {
     Moment(Moment),
     /// A joint whose moment nobody states: β at its upper bound.
     NotStated,
+    /// Something whose moment does not tell the panel's shear, and why, in one clause: β at its upper bound.
+    Unclear(&'static str),
 }
 
 /// One load case with what happens on the other side.
@@ -47,7 +49,7 @@ const BETA_MAX: f64 = 2.0;
 fn beta(own: Moment, opposite: Opposite) -> f64 {
     match opposite {
         Opposite::None => 1.0,
-        Opposite::NotStated => BETA_MAX,
+        Opposite::NotStated | Opposite::Unclear(_) => BETA_MAX,
         Opposite::Moment(other) if own == Moment::ZERO => {
             if other == Moment::ZERO {
                 1.0
@@ -57,6 +59,11 @@ fn beta(own: Moment, opposite: Opposite) -> f64 {
         }
         Opposite::Moment(other) => (1.0 - other / own).abs().min(BETA_MAX),
     }
+}
+
+/// Whether β is only bounded.
+fn at_bound(opposite: Opposite) -> bool {
+    matches!(opposite, Opposite::NotStated | Opposite::Unclear(_))
 }
 
 /// Assesses a joint as laid out, against load cases if there are any. `two_sided`: whether a joint stands on the column's
@@ -71,9 +78,6 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
             .push(format!("k_wc = {}: the column's axial stress is not stated (6.2.6.2(2))", rulebook.settings.k_wc));
         noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
-        if two_sided {
-            noted.assumptions.push("β = 2, its upper bound, where the moments of both sides are not stated".into());
-        }
         let turned = n.upside_down();
         let solve = |sense: Sense, beta: f64, shear: Force, rule: Option<RowForces>| {
             moment::resistance(if sense == Sense::Hogging { n } else { &turned }, sense, beta, shear, rule, rulebook)
@@ -111,6 +115,7 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
             assessment.cases.push(context.result(case, demand));
         }
         govern(&mut assessment, demands);
+        noted.assumptions.extend(at_upper_bound(&assessment, demands, two_sided));
         let tension = assessment.hogging.as_ref().or(assessment.sagging.as_ref());
         let tension = tension.map_or(unknown, |moment| Tension::Rows(moment, 1.0));
         assessment.shear = Some(shear::resistance(n, tension, rulebook));
@@ -146,6 +151,43 @@ fn govern(assessment: &mut Assessment, demands: &[Demand<'_>]) {
             }
         }
     }
+}
+
+/// Where β was put at its upper bound for want of the moment on the other side: load cases, and resistances of a sense
+/// that no load case asks for. One sentence each.
+fn at_upper_bound(assessment: &Assessment, demands: &[Demand<'_>], two_sided: bool) -> Vec<String> {
+    const BOUND: &str = "β = 2, its upper bound (5.3(9)),";
+    let mut whys: Vec<&str> = Vec::new();
+    let mut sentences = Vec::new();
+    let why = |opposite| match opposite {
+        Opposite::NotStated => Some("the moment on the column's other flange is not stated"),
+        Opposite::Unclear(why) => Some(why),
+        Opposite::None | Opposite::Moment(_) => None,
+    };
+    whys.extend(demands.iter().filter(|demand| demand.case.moment.is_some()).filter_map(|demand| why(demand.opposite)));
+    whys.dedup();
+    for reason in whys {
+        let cases = demands.iter().filter(|d| d.case.moment.is_some() && why(d.opposite) == Some(reason));
+        let names: Vec<&str> = cases.map(|demand| demand.case.name.as_str()).collect();
+        sentences.push(format!("{BOUND} in {}: {reason}", names.join(", ")));
+    }
+    if !two_sided {
+        return sentences;
+    }
+    let asked = |sense| assessment.cases.iter().any(|c| c.moment.as_ref().is_some_and(|m| m.sense == sense));
+    let which = match (
+        assessment.hogging.is_some() && !asked(Sense::Hogging),
+        assessment.sagging.is_some() && !asked(Sense::Sagging),
+    ) {
+        (true, true) => "in both senses",
+        (true, false) => "with tension at the top",
+        (false, true) => "with tension at the bottom",
+        (false, false) => return sentences,
+    };
+    sentences.push(format!(
+        "{BOUND} for the moment resistance {which}: no load case asks for it, and beams meet both column flanges"
+    ));
+    sentences
 }
 
 fn not_computed(case: &LoadCase) -> Vec<Verdict> {
@@ -188,8 +230,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.F_t_Rd);
         let unknown = rule == RowForces::LinearBeyond19
             && (self.lower_bound
-                || opposite == Opposite::NotStated
-                    && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
+                || at_bound(opposite) && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
         if !unknown || solved.rows.first().is_some_and(steep) {
             return Ok(solved);
         }
@@ -202,7 +243,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         let mut verdicts = Vec::new();
         let beside = shear.map_or(Force::ZERO, Force::abs);
         let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
-        let bound = demand.opposite == Opposite::NotStated;
+        let bound = at_bound(demand.opposite);
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {
                 let governed = if resistance.moment < resistance.without_welds {
@@ -237,7 +278,13 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         verdicts.push(match (shear, &shear_resistance) {
             (Some(v), Some(resistance)) => {
                 let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
-                self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, solved.is_none())
+                let mut verdict = self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, solved.is_none());
+                // More than the bolts carry without any tension is proven not to be carried, whatever is not known.
+                let most = || shear::resistance(self.n, Tension::None, self.rulebook).shear;
+                if verdict.state == State::Unproven && v.get().is_finite() && v.abs() > most() {
+                    (verdict.state, verdict.reason) = (State::NotMet, None);
+                }
+                verdict
             }
             _ => unproven_shear(),
         });

@@ -23,6 +23,8 @@ pub enum Tension<'a> {
         /// See [`MomentResistance::web_in_tension`].
         web_in_tension: Length,
     },
+    /// None at all: no shear resistance can be above this one.
+    None,
     /// This share (0 to 1) of what the moment resistance puts into its rows.
     Rows(&'a MomentResistance, f64),
 }
@@ -41,6 +43,7 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
     for row in &n.rows {
         let used = match tension {
             Tension::Unknown { .. } => 1.0,
+            Tension::None => 0.0,
             Tension::Rows(moment, share) => {
                 let row = moment.rows.iter().find(|f| f.row == row.number).filter(|f| f.force > Force::ZERO);
                 match row {
@@ -89,6 +92,7 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
     }
     let reach = match tension {
         Tension::Unknown { web_in_tension } => web_in_tension,
+        Tension::None => Length::ZERO,
         Tension::Rows(moment, _) => moment.web_in_tension,
     };
     if let Some(weld) = weld_checks::in_shear(n, rulebook, reach) {
