@@ -407,7 +407,6 @@ proptest! {
                     gauge: mm(gauge),
                     edge_plate: mm(edge),
                     edge_column: mm(flange_edge),
-                    ..row.clone()
                 })
                 .collect();
             layout.plate.thickness = mm(t_p);
