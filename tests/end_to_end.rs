@@ -1,5 +1,6 @@
 //! The whole trip, as a user and as a hostile file see it.
 
+mod bad_input;
 mod bench;
 mod deletions;
 mod never_clear;
