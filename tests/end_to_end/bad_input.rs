@@ -110,6 +110,9 @@ fn a_wrong_call_is_refused_in_one_sentence() {
     }
 }
 
+/// What is wrong, the file and what it holds, the call, what must be said, and the place.
+type Fault<'a> = (&'a str, &'static str, Vec<u8>, &'a [&'a str], &'a str, &'a str);
+
 /// A fault in a paper that people write: its place, its line, what is wrong and what is allowed.
 #[test]
 #[rustfmt::skip]
@@ -118,7 +121,7 @@ fn a_fault_in_schedule_or_rules_is_shown_with_its_line() {
     let toml = |line: &str| text(&SCHEDULE.replacen("{ name = \"LC1\", M_Ed_kNm = 150, V_Ed_kN = 120, N_Ed_kN = -10 }", line, 1));
     let review = &["review", "."][..];
     let with_rules = &["review", ".", "--rules", "rules"][..];
-    let cases: Vec<(&str, &'static str, Vec<u8>, &[&str], &str, &str)> = vec![
+    let cases: Vec<Fault> = vec![
         ("a wrong unit", "schedule.csv", text("joint,M_Ed [kN],V_Ed [kN],N_Ed [kN]\nJ1,1,2,3\n"), review, "kN", "schedule.csv:1:"),
         ("no unit", "schedule.csv", text("joint,M_Ed,V_Ed [kN],N_Ed [kN]\nJ1,1,2,3\n"), review, "unit", "schedule.csv:1:"),
         ("a bad cell", "schedule.csv", text(&format!("{csv}J1,C1,B1,start,LC1,abc,120,0\n")), review, "abc", "schedule.csv:2:"),

@@ -15,7 +15,7 @@ use numbers::{Noted, Numbers};
 use super::{About, Assessment, CaseResult, Gap, MomentResistance, Sense, State, Verdict};
 use crate::intent::LoadCase;
 use crate::joints::EndPlateLayout;
-use crate::origin::Missing;
+use crate::origin::{Ask, Missing};
 use crate::rulebook::Rulebook;
 use crate::units::Moment;
 
@@ -43,6 +43,27 @@ pub struct Demand<'a> {
 
 /// The upper bound of β, 5.3(9).
 const BETA_MAX: f64 = 2.0;
+
+/// Why a resistance is only a lower bound where β was put at its upper bound.
+pub const BOUND_BY_OPPOSITE: &str =
+    "the resistance is only a lower bound: the moment on the column's other flange is not known";
+
+/// Why a shear resistance is only a lower bound in a load case that leaves M blank.
+pub const BOUND_BY_TENSION: &str =
+    "the resistance is only a lower bound: M is not stated, and the bolts are taken as fully in tension";
+
+/// The same where something that would raise it is not known.
+fn lower_bound(gaps: &[Gap]) -> Option<String> {
+    let mut unknown: Vec<&str> = Vec::new();
+    for gap in gaps {
+        if let Gap::LowerBound(missing) = gap
+            && !unknown.contains(&missing.what.as_str())
+        {
+            unknown.push(&missing.what);
+        }
+    }
+    (!unknown.is_empty()).then(|| format!("the resistance is only a lower bound: not known: {}", unknown.join(", ")))
+}
 
 /// β = |1 − M_2/M_1| ≤ 2, 5.3(9) (5.4), moments positive with tension at the top on either side.
 fn beta(own: Moment, opposite: Opposite) -> f64 {
@@ -85,7 +106,12 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
                 let needed = demands.is_empty() && sense == Sense::Hogging
                     || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense));
                 if needed {
-                    noted.gaps.push(Gap::NotChecked(Missing { what: format!("moment with {what}"), reason, at: None }));
+                    noted.gaps.push(Gap::NotChecked(Missing {
+                        what: format!("moment with {what}"),
+                        reason,
+                        at: None,
+                        ask: Ask::Method,
+                    }));
                 }
                 None
             }
@@ -93,7 +119,7 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
         assessment.hogging = at_rest(Sense::Hogging, &mut noted);
         assessment.sagging = at_rest(Sense::Sagging, &mut noted);
         let n_pl = n.beam.area * n.beam_strength.f_y_flange / rulebook.annex.gamma_m0;
-        let lower_bound = noted.gaps.iter().any(|gap| matches!(gap, Gap::LowerBound(_)));
+        let lower_bound = lower_bound(&noted.gaps);
         let context = Cases { n, rulebook, n_pl, lower_bound, solve: &solve };
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(context.result(case, demand));
@@ -196,8 +222,8 @@ struct Cases<'a, F> {
     n: &'a Numbers,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,
-    /// Whether the resistances are a lower bound: then "not met" is not proven.
-    lower_bound: bool,
+    /// Why the resistances are a lower bound, if they are: then "not met" is not proven.
+    lower_bound: Option<String>,
     solve: &'a F,
 }
 
@@ -206,7 +232,10 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
         let LoadCase { moment, shear, axial, .. } = demand.case;
         let mut verdicts = Vec::new();
         let solved = moment.map(|m| (self.solve)(sense_of(m), beta(m, demand.opposite)));
-        let bound = matches!(demand.opposite, Opposite::NotStated | Opposite::Unclear(_));
+        let bound = match demand.opposite {
+            Opposite::NotStated | Opposite::Unclear(_) => Some(BOUND_BY_OPPOSITE),
+            Opposite::None | Opposite::Moment(_) => None,
+        };
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {
                 let governed = if resistance.moment < resistance.without_welds {
@@ -242,7 +271,14 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
         verdicts.push(match (shear, &shear_resistance) {
             (Some(v), Some(resistance)) => {
                 let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
-                self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, moment.is_none())
+                self.verdict(
+                    About::Shear,
+                    v.kn().abs(),
+                    kn,
+                    "kN",
+                    governed,
+                    moment.is_none().then_some(BOUND_BY_TENSION),
+                )
             }
             _ => unproven_shear(),
         });
@@ -286,16 +322,16 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
         resistance: f64,
         unit: &'static str,
         governed_by: String,
-        bound: bool,
+        bound: Option<&str>,
     ) -> Verdict {
         let utilisation = required / resistance;
         let met = required <= resistance * (1.0 + self.rulebook.tolerances.utilisation);
-        let bound = bound || self.lower_bound;
+        let bound = bound.or(self.lower_bound.as_deref());
         Verdict {
             about,
             state: match met {
                 true => State::Met,
-                false if bound => State::Unproven,
+                false if bound.is_some() => State::Unproven,
                 false => State::NotMet,
             },
             required: Some(required),
@@ -303,11 +339,11 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
             unit,
             utilisation: Some(utilisation).filter(|u| u.is_finite()),
             governed_by,
-            reason: (!met && bound).then(|| "the resistance is only a lower bound".into()),
+            reason: bound.filter(|_| !met).map(str::to_owned),
         }
     }
 
-    fn weld_verdict(&self, required: Moment, resistance: &MomentResistance, bound: bool) -> Verdict {
+    fn weld_verdict(&self, required: Moment, resistance: &MomentResistance, bound: Option<&str>) -> Verdict {
         // The welds' share of the moment: they limit it at moment/without_welds, or carry more than the rest can bring.
         let worst = (resistance.components.iter())
             .filter(|c| matches!(c.id.as_str(), "flange-weld" | "web-weld"))

@@ -3,7 +3,7 @@
 use crate::assess::{Gap, Input};
 use crate::eurocode::{beam, bolts};
 use crate::joints::{EndPlateLayout, MemberAt, Stiffener};
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook, Section, Strength};
 use crate::units::{Area, Force, Length, Modulus, Stress, mm};
 use crate::working::Working;
@@ -104,12 +104,12 @@ impl Noted {
         }
     }
 
-    fn not_checked(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None }));
+    fn not_checked(&mut self, what: &str, reason: String, ask: Ask) {
+        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None, ask }));
     }
 
     fn lower_bound(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None }));
+        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None, ask: Ask::Fabricator }));
     }
 
     fn member(&mut self, role: &str, at: &MemberAt, rulebook: &Rulebook) -> Option<(Section, MemberStrength, Length)> {
@@ -171,14 +171,18 @@ impl Numbers {
         let size = d.and_then(|d| {
             let size = rulebook.bolt_size(d);
             if size.is_none() {
-                noted.not_checked("bolt size", format!("no table has a bolt of {d}"));
+                noted.not_checked("bolt size", format!("no table has a bolt of {d}"), Ask::Method);
             }
             size
         });
         let class = class.and_then(|name| {
             let class = rulebook.bolt_class(&name);
             if class.is_none() {
-                noted.not_checked("bolt class", format!("{name} is no class of EN 1993-1-8 Table 3.1"));
+                noted.not_checked(
+                    "bolt class",
+                    format!("{name} is no class of EN 1993-1-8 Table 3.1"),
+                    Ask::Fabricator,
+                );
             }
             class
         });
@@ -203,7 +207,7 @@ impl Numbers {
         let beam_class =
             beam::class_in_bending(c_f, beam.t_f, c_w, beam.t_w, beam_strength.f_y_flange.min(beam_strength.f_y_web));
         if beam_class == 4 {
-            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation));
+            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation), Ask::Method);
             return None;
         }
         noted.assumptions.push(format!(
