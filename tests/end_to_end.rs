@@ -3,6 +3,7 @@
 mod bad_input;
 mod bench;
 mod deletions;
+mod mutations;
 mod never_clear;
 mod same_building;
 mod sample;

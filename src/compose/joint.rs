@@ -116,7 +116,9 @@ fn outcome(assessment: Option<&Assessment>, findings: &[Finding], missing: &[Mis
 fn reasons(findings: &[Finding], missing: &[Missing]) -> Vec<String> {
     let mut reasons: Vec<String> = Vec::new();
     let said = findings.iter().map(|finding| finding.message.clone());
-    for reason in said.chain(missing.iter().map(Missing::to_string)) {
+    // What a finding says word for word is not said again as missing.
+    let missing = missing.iter().filter(|gap| !findings.iter().any(|finding| finding.message.contains(&gap.reason)));
+    for reason in said.chain(missing.map(Missing::to_string)) {
         if !reasons.contains(&reason) {
             reasons.push(reason);
         }

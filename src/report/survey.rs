@@ -169,6 +169,9 @@ fn ask(page: &mut Page, review: &Review) {
         );
     } else if questions.is_empty() {
         page.line(3, "Nothing: whatever was looked for is stated.");
+        if lacks(review).iter().any(|lack| lack.ask == Ask::Method) {
+            page.line(3, "Little was looked for at the joints that are beyond what is assessed.");
+        }
     }
     for (number, (what, joints)) in (1..).zip(&questions) {
         let of = match joints.len() {
