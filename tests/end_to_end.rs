@@ -7,3 +7,4 @@ mod mutations;
 mod never_clear;
 mod same_building;
 mod sample;
+mod texts;

@@ -142,7 +142,12 @@ pub(super) fn reasons_left(joint: &JointReview) -> impl Iterator<Item = &str> {
 
 /// Why a scheduled joint has no steel beside it.
 pub(super) fn without_steel(joint: &JointReview) -> &'static str {
-    if joint.kind == "not-paired" { "fits no single joint" } else { "no steel found" }
+    let members = joint.findings.iter().any(|f| f.rule == "joint-not-found" && f.message.contains("no bolted joint"));
+    match joint.kind.as_str() {
+        "not-paired" => "fits no single joint",
+        _ if members => "its members have no bolted joint",
+        _ => "no steel found",
+    }
 }
 
 /// Rules of what has a section of its own: steel without a schedule line, and the other way round.

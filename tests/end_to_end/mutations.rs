@@ -15,9 +15,12 @@ static WEAK: LazyLock<String> = LazyLock::new(|| {
     plain(&building)
 });
 
+/// Byte ranges: from, to.
+type Pieces = Vec<(usize, usize)>;
+
 /// Byte ranges of all elements of the exchange, from their start tags to the ends of their end tags, and of all
 /// attributes; the writer puts each tag on a line of its own, or a whole element.
-static PIECES: LazyLock<(Vec<(usize, usize)>, Vec<(usize, usize)>)> = LazyLock::new(|| {
+static PIECES: LazyLock<(Pieces, Pieces)> = LazyLock::new(|| {
     let text = WEAK.as_str();
     let mut elements = Vec::new();
     let mut attributes = Vec::new();
