@@ -17,6 +17,9 @@ use crate::units::{Length, mm};
 const DIAMETERS: (f64, f64) = (8.0, 72.0);
 /// A "bolt" drawn this much thicker than it is said to be is a hole pattern.
 const HOLE_PATTERN: f64 = 1.5;
+/// [`Missing::what`] of bolts whose heads are countersunk: whatever their class, they carry less in tension.
+pub const COUNTERSUNK: &str = "countersunk bolts";
+
 impl<'a> Reading<'a> {
     /// Whether a part is to be looked at as a fastener: by class, or by name and a round shank.
     pub fn may_be_bolt(&self, element: Entity<'a>, prisms: &[&Prism]) -> bool {
@@ -200,6 +203,17 @@ impl<'a> Reading<'a> {
         let mut texts = self.material_texts(element);
         texts.extend(first_text(self.names_of(element), element));
         texts.extend(properties.iter().filter(|p| self.rulebook.means("bolt-class", p.name)).filter_map(said_by));
+        if let Some(said) = texts.iter().find(|said| says(&said.text, Word::Countersunk)) {
+            return Err(Missing {
+                what: COUNTERSUNK.into(),
+                reason: format!(
+                    "{} \"{}\" calls them so; their tension resistance (k2 = 0.63, Table 3.4) is not assessed yet",
+                    said.by, said.text
+                ),
+                at: Some(said.at.clone()),
+                ask: Ask::Method,
+            });
+        }
         let mut found = texts.iter().filter_map(|said| Some((said, self.rulebook.class_in(&said.text)?)));
         let missing = |reason: String| Missing {
             what: "bolt class".into(),

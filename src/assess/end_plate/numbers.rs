@@ -175,6 +175,18 @@ impl Numbers {
             }
             size
         });
+        let d_0 = d_0.filter(|d_0| {
+            let Some(size) = size else { return true };
+            let normal = *d_0 <= size.d_0 + rulebook.tolerances.size;
+            if !normal {
+                let reason = format!(
+                    "{d_0} for bolts of {}; above the normal round hole of {} (EN 1090-2) bearing is reduced (Table 3.4), which is not assessed yet",
+                    size.d, size.d_0
+                );
+                noted.not_checked("bolt hole", reason, Ask::Method);
+            }
+            normal
+        });
         let class = class.and_then(|name| {
             let class = rulebook.bolt_class(&name);
             if class.is_none() {
