@@ -45,6 +45,14 @@ impl Pair {
     pub fn stocky(&self) -> bool {
         self.b_s / self.t_s <= 14.0 * epsilon(self.f_y_s)
     }
+
+    /// Whether the pair holds the web against buckling: I_st ≥ 0.75 h_w t_w³, EN 1993-1-5 9.3.3(3), its rule for long panels,
+    /// with h_w the clear depth between the flanges.
+    pub fn rigid(&self, t_w: Length, h_w: Length) -> bool {
+        let width = 2.0 * self.b_s + t_w;
+        let slenderness = (width / t_w).powi(3) * (self.t_s / h_w);
+        slenderness / 12.0 >= 0.75
+    }
 }
 
 /// A column web stiffened by a pair, in compression: the smaller of web crushing with the net stiffener area and of

@@ -111,7 +111,12 @@ impl<'a> TensionSide<'a> {
     // ---- column side ------------------------------------------------------------------------------------------
 
     fn m_column(&self, row: &Row) -> Length {
-        0.5 * (row.gauge - self.n.column.t_w - 2.0 * (0.8 * self.n.r_c))
+        self.m_beside(row, self.n.r_c)
+    }
+
+    /// m of the column's flange with this root radius.
+    fn m_beside(&self, row: &Row, r: Length) -> Length {
+        0.5 * (row.gauge - self.n.column.t_w - 2.0 * (0.8 * r))
     }
 
     /// The stiffener right above (`up`) or below a tension row, with no other bolt row between, that the row's yield line
@@ -177,13 +182,14 @@ impl<'a> TensionSide<'a> {
         (self.rows[last].height..self.rows[first].height).contains(&pair.height)
     }
 
-    /// The column flange's T-stub of a range of rows, with the stiffeners beside them or as if there were none.
-    fn column_stub(&self, first: usize, last: usize, stiffened: bool, w: &mut Working) -> TStub {
+    /// The column flange's T-stub of a range of rows with a root radius, with the stiffeners beside them or as if there were
+    /// none.
+    fn column_stub(&self, first: usize, last: usize, stiffened: bool, r: Length, w: &mut Working) -> TStub {
         let n = self.n;
         let mut lengths = Vec::new();
         for i in first..=last {
             let row = &self.rows[i];
-            let (m, e) = (self.m_column(row), row.e_column);
+            let (m, e) = (self.m_beside(row, r), row.e_column);
             let place = |beside: Option<(Length, &StiffenerPair)>, w: &mut Working| {
                 self.column_place(i, beside.filter(|_| stiffened), w)
             };
@@ -203,7 +209,7 @@ impl<'a> TensionSide<'a> {
             });
         }
         // A group of rows with unequal gauge takes the largest m and the smallest n.
-        let m = self.over(first, last, |row| self.m_column(row), Length::max);
+        let m = self.over(first, last, |row| self.m_beside(row, r), Length::max);
         let n_e = self.over(first, last, |row| row.e_column.min(row.e_plate), Length::min);
         let (l_eff_1, l_eff_2) = sum(&lengths, w);
         TStub {
@@ -223,17 +229,20 @@ impl<'a> TensionSide<'a> {
         let pairs = self.pairs_at(first, last);
         if !pairs.iter().any(|pair| first != last && self.parts(first, last, pair)) {
             let mut w = Working::default();
-            let stub = self.column_stub(first, last, true, &mut w);
+            let stub = self.column_stub(first, last, true, n.r_c, &mut w);
             let (title, clause) = ("column flange in bending", "EN 1993-1-8:2005 6.2.6.4");
             self.bending("column-flange-in-bending", title, clause, stub, w, (first, last), limits);
         }
         let mut w = Working::default();
-        let plain = self.column_stub(first, last, false, &mut w);
+        let plain = self.column_stub(first, last, false, n.r_c, &mut w);
         if !pairs.is_empty() {
-            limits.push(self.stiffener_limit(first, last, &pairs, &plain, w.clone()));
+            limits.push(self.stiffener_limit(first, last, &pairs, &plain, w));
         }
+        // A large radius brings the yield lines nearer and leaves less of the web.
+        let mut w = Working::default();
+        let length = self.column_stub(first, last, false, n.r_c_most, &mut w).l_eff_1.max(Length::ZERO);
         let mut web = column_web::tension(
-            plain.l_eff_1,
+            length,
             n.column.t_w,
             n.column_strength.f_y_web,
             n.column.a_v_z,
@@ -254,7 +263,7 @@ impl<'a> TensionSide<'a> {
             first,
             last,
             resistance: Resistance { value: web.value, working: w },
-            length: plain.l_eff_1,
+            length,
             bolts_used: false,
         });
     }
@@ -309,7 +318,12 @@ impl<'a> TensionSide<'a> {
     // ---- end plate side ---------------------------------------------------------------------------------------
 
     fn m_plate(&self, row: &Row) -> Length {
-        0.5 * (row.gauge - self.n.beam.t_w - 2.0 * Numbers::fillet(self.n.a_web))
+        self.m_web(row, self.n.a_web)
+    }
+
+    /// m of the end plate beside the beam's web with fillets of throat `a`.
+    fn m_web(&self, row: &Row, a: Option<Length>) -> Length {
+        0.5 * (row.gauge - self.n.beam.t_w - 2.0 * Numbers::fillet(a))
     }
 
     fn m_x(&self, row: &Row) -> Length {
@@ -337,13 +351,40 @@ impl<'a> TensionSide<'a> {
             self.bending(title.0, title.1, title.2, stub, w, (first, last), limits);
             return;
         }
+        let (l_1, l_2) = self.plate_lengths(first, last, n.a_web, &mut w);
+        let m = self.over(first, last, |row| self.m_plate(row), Length::max);
+        let n_e = self.over(first, last, |row| row.e_plate.min(row.e_column), Length::min);
+        let stub = TStub { m, n: n_e.min(1.25 * m), ..self.plate_stub(l_1, l_2, first, last) };
+        let (title, clause) = ("end plate in bending", "EN 1993-1-8:2005 6.2.6.5");
+        self.bending("end-plate-in-bending", title, clause, stub, w, (first, last), limits);
+
+        // A large fillet brings the yield lines nearer and leaves less of the web; none is thicker than the web.
+        let mut w = Working::default();
+        let (length, _) = self.plate_lengths(first, last, n.a_web.or(Some(n.beam.t_w)), &mut w);
+        let length = length.max(Length::ZERO);
+        let web = beam::web_tension(length, n.beam.t_w, n.beam_strength.f_y_web, self.gamma_M0());
+        w.absorb(web.working);
+        limits.push(Limit {
+            id: "beam-web-in-tension",
+            title: format!("beam web in tension, {}", self.named(first, last)),
+            clause: "EN 1993-1-8:2005 6.2.6.8",
+            first,
+            last,
+            resistance: Resistance { value: web.value, working: w },
+            length,
+            bolts_used: false,
+        });
+    }
+
+    /// Σ l_eff,1 and Σ l_eff,2 of rows beside the beam's web, with a fillet of throat `a` there.
+    fn plate_lengths(&self, first: usize, last: usize, a: Option<Length>, w: &mut Working) -> (Length, Length) {
         let mut lengths = Vec::new();
         for i in first..=last {
             let row = &self.rows[i];
-            let (m, e) = (self.m_plate(row), row.e_plate);
+            let (m, e) = (self.m_web(row, a), row.e_plate);
             w.heading(format!("row {}", row.number));
             let mut place = || match self.places[i] {
-                OnPlate::BelowFlange => RowPlace::Stiffened { alpha: self.alpha(m, e, self.m_2_plate(row), &mut w) },
+                OnPlate::BelowFlange => RowPlace::Stiffened { alpha: self.alpha(m, e, self.m_2_plate(row), w) },
                 _ => RowPlace::Plain,
             };
             lengths.push(if first == last {
@@ -356,31 +397,7 @@ impl<'a> TensionSide<'a> {
                 el::inner_in_group(0.5 * (self.pitch_below(i - 1) + self.pitch_below(i)))
             });
         }
-        let (l_1, l_2) = sum(&lengths, &mut w);
-        let m = self.over(first, last, |row| self.m_plate(row), Length::max);
-        let n_e = self.over(first, last, |row| row.e_plate.min(row.e_column), Length::min);
-        let stub = TStub { m, n: n_e.min(1.25 * m), ..self.plate_stub(l_1, l_2, first, last) };
-        self.bending(
-            "end-plate-in-bending",
-            "end plate in bending",
-            "EN 1993-1-8:2005 6.2.6.5",
-            stub,
-            w.clone(),
-            (first, last),
-            limits,
-        );
-        let web = beam::web_tension(l_1, n.beam.t_w, n.beam_strength.f_y_web, self.gamma_M0());
-        w.absorb(web.working);
-        limits.push(Limit {
-            id: "beam-web-in-tension",
-            title: format!("beam web in tension, {}", self.named(first, last)),
-            clause: "EN 1993-1-8:2005 6.2.6.8",
-            first,
-            last,
-            resistance: Resistance { value: web.value, working: w },
-            length: l_1,
-            bolts_used: false,
-        });
+        sum(&lengths, w)
     }
 
     fn plate_stub(&self, l_eff_1: Length, l_eff_2: Length, first: usize, last: usize) -> TStub {

@@ -13,11 +13,11 @@ pub use intended::intended;
 use numbers::{Noted, Numbers};
 use shear::Tension;
 
-use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, Sense, State, Verdict};
+use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict};
 use crate::intent::LoadCase;
 use crate::joints::EndPlateLayout;
 use crate::origin::Missing;
-use crate::rulebook::Rulebook;
+use crate::rulebook::{RowForces, Rulebook};
 use crate::units::{Force, Length, Moment};
 
 /// What stands on the column's other flange in a load case.
@@ -74,11 +74,15 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
         noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
         let turned = n.upside_down();
-        let solve = |sense: Sense, beta: f64, shear: Force| match sense {
-            Sense::Hogging => moment::resistance(n, sense, beta, shear, rulebook),
-            Sense::Sagging => moment::resistance(&turned, sense, beta, shear, rulebook),
+        let solve = |sense: Sense, beta: f64, shear: Force, rule: Option<RowForces>| {
+            moment::resistance(if sense == Sense::Hogging { n } else { &turned }, sense, beta, shear, rule, rulebook)
         };
-        let at_rest = |sense, noted: &mut Noted| match solve(sense, plain_beta, Force::ZERO) {
+        let at_rest = |sense, noted: &mut Noted| match solve(
+            sense,
+            plain_beta,
+            Force::ZERO,
+            Some(rulebook.settings.row_forces),
+        ) {
             Ok(resistance) => Some(resistance),
             Err(reason) => {
                 let what = if sense == Sense::Hogging { "tension at the top" } else { "tension at the bottom" };
@@ -211,12 +215,30 @@ struct Cases<'a, F> {
     solve: &'a F,
 }
 
-impl<F: Fn(Sense, f64, Force) -> Result<MomentResistance, String>> Cases<'_, F> {
+impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, String>> Cases<'_, F> {
+    /// The moment resistance of a case. Where an unknown makes it a lower bound, it must be one beyond the cliff of
+    /// 6.2.7.2(9) too: what is unknown may raise a row above 1.9 F_t,Rd and so lower the rows below it.
+    fn moment(&self, m: Moment, opposite: Opposite, shear: Force) -> Result<MomentResistance, String> {
+        let sense = sense_of(m);
+        let rule = self.rulebook.settings.row_forces;
+        let solved = (self.solve)(sense, beta(m, opposite), shear, Some(rule))?;
+        let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.F_t_Rd);
+        let unknown = rule == RowForces::LinearBeyond19
+            && (self.lower_bound
+                || opposite == Opposite::NotStated
+                    && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
+        if !unknown || solved.rows.first().is_some_and(steep) {
+            return Ok(solved);
+        }
+        let linear = (self.solve)(sense, solved.beta, shear, None)?;
+        Ok(if linear.without_welds < solved.without_welds { linear } else { solved })
+    }
+
     fn result(&self, case: usize, demand: &Demand<'_>) -> CaseResult {
         let LoadCase { moment, shear, axial, .. } = demand.case;
         let mut verdicts = Vec::new();
         let beside = shear.map_or(Force::ZERO, Force::abs);
-        let solved = moment.map(|m| (self.solve)(sense_of(m), beta(m, demand.opposite), beside));
+        let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
         let bound = matches!(demand.opposite, Opposite::NotStated | Opposite::Unclear(_));
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {

@@ -9,6 +9,9 @@ use crate::rulebook::{Grade, Rulebook, Section, Strength};
 use crate::units::{Area, Force, Length, Modulus, Stress, mm};
 use crate::working::Working;
 
+/// No rolled I section of the tables has a larger root radius.
+const R_MOST: Length = mm(30.0);
+
 /// Strengths of a rolled section's flange and web, and the smaller f_u.
 #[derive(Clone, Copy, Debug)]
 pub struct MemberStrength {
@@ -32,7 +35,7 @@ impl StiffenerPair {
     /// As the formulas take it: no wider than the column's flange, cut back by the column's root radius.
     pub fn plates(&self, n: &Numbers) -> Pair {
         let free = 0.5 * (n.column.b - n.column.t_w);
-        Pair { b_s: self.b_s.min(free), t_s: self.t_s, cope: n.r_c, f_y_s: self.f_y }
+        Pair { b_s: self.b_s.min(free), t_s: self.t_s, cope: n.r_c_most, f_y_s: self.f_y }
     }
 }
 
@@ -54,9 +57,13 @@ pub struct Numbers {
     pub column: Section,
     pub column_strength: MemberStrength,
     pub r_c: Length,
+    /// r_c, or the most that it may be: what shortens the web in tension and the stiffeners' bearing.
+    pub r_c_most: Length,
     pub beam: Section,
     pub beam_strength: MemberStrength,
     pub r_b: Length,
+    /// r_b, or the most that it may be: what shortens the welds.
+    pub r_b_most: Length,
     /// W_pl,y or W_el,y by the beam's class.
     pub W_beam: Modulus,
     pub beam_class: u8,
@@ -134,7 +141,7 @@ impl Noted {
         let r = section.r.unwrap_or_else(|| {
             self.lower_bound(
                 &format!("{role} root radius"),
-                "the model gives none and the section is in no table; taken as 0, the safe side".into(),
+                format!("the model gives none and the section is in no table; taken as 0, or as {R_MOST} where a large one is the worse"),
             );
             Length::ZERO
         });
@@ -204,6 +211,7 @@ impl Numbers {
         let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, rulebook)).collect();
 
         let ((column, column_strength, r_c), (beam, beam_strength, r_b)) = (column?, beam?);
+        let (r_c_most, r_b_most) = (column.r.unwrap_or(R_MOST), beam.r.unwrap_or(R_MOST));
         let (plate_strength, size, class, d_0) = (plate_strength?, size?, class?, d_0?);
 
         let beam_h = beam.h;
@@ -245,9 +253,11 @@ impl Numbers {
             column,
             column_strength,
             r_c,
+            r_c_most,
             beam,
             beam_strength,
             r_b,
+            r_b_most,
             t_p: plate.thickness,
             b_p: plate.width,
             plate_top: plate.top,
@@ -320,7 +330,8 @@ fn unsound(
         reasons.push(("end plate size", format!("thickness {}, width {}", plate.thickness, plate.width)));
     }
     let position = rulebook.tolerances.position;
-    if !(plate.bottom <= position && plate.top >= beam_h - position) {
+    let finite = plate.bottom.get().is_finite() && plate.top.get().is_finite();
+    if !(finite && plate.bottom <= position && plate.top >= beam_h - position) {
         reasons.push((
             "end plate shorter than the beam",
             format!("it reaches from {} to {} above the soffit, the beam from 0 to {beam_h}", plate.bottom, plate.top),

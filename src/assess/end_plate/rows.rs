@@ -23,17 +23,18 @@ fn thin_enough(n: &Numbers) -> bool {
     n.t_p <= limit(n.plate_strength.f_y) || n.column.t_f <= limit(n.column_strength.f_y_flange)
 }
 
-/// Works down the rows. `lever_arms` and `numbers` are of the tension rows, from the tension side.
+/// Works down the rows. `lever_arms` and `numbers` are of the tension rows, from the tension side. No `rule`: in proportion
+/// from the first row on, whatever it carries.
 pub fn forces(
     n: &Numbers,
     lever_arms: &[Length],
     numbers: &[usize],
     limits: &[Limit],
     totals: &[Total],
-    rule: RowForces,
+    rule: Option<RowForces>,
     notes: &mut Vec<String>,
 ) -> Vec<RowForce> {
-    let plastic = rule == RowForces::ThinPlateOrLinear && thin_enough(n);
+    let plastic = rule == Some(RowForces::ThinPlateOrLinear) && thin_enough(n);
     let mut forces: Vec<RowForce> = Vec::new();
     let mut linear: Option<Linear> = None;
     for (r, (&lever_arm, &number)) in lever_arms.iter().zip(numbers).enumerate() {
@@ -64,17 +65,21 @@ pub fn forces(
         force = force.max(Force::ZERO);
         if linear.is_none() && !plastic {
             let triggers = match rule {
-                RowForces::LinearBeyond19 => !(force <= 1.9 * n.F_t_Rd),
-                RowForces::ThinPlateOrLinear => true,
+                Some(RowForces::LinearBeyond19) => !(force <= 1.9 * n.F_t_Rd),
+                Some(RowForces::ThinPlateOrLinear) | None => true,
             };
             if triggers && r + 1 < lever_arms.len() {
                 notes.push(match rule {
-                    RowForces::LinearBeyond19 => format!(
+                    Some(RowForces::LinearBeyond19) => format!(
                         "row {number} carries {force}, more than 1.9 Ft,Rd = {}: the rows beyond it are limited in proportion to their lever arms (6.2.7.2(9))",
                         1.9 * n.F_t_Rd
                     ),
-                    RowForces::ThinPlateOrLinear => format!(
+                    Some(RowForces::ThinPlateOrLinear) => format!(
                         "neither end plate nor column flange is thin enough for a plastic distribution: the rows beyond row {number} are limited in proportion to their lever arms"
+                    ),
+                    None => format!(
+                        "row {number} might pass 1.9 Ft,Rd = {} if all were known: the rows beyond it are limited in proportion to their lever arms (6.2.7.2(9))",
+                        1.9 * n.F_t_Rd
                     ),
                 });
                 linear = Some(Linear { force, lever_arm, row: number });

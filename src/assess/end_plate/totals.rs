@@ -77,7 +77,11 @@ pub fn totals(
     let (mut title, mut compression) = ("column web in compression", plain);
     if let Some(pair) = compression_pair {
         let plates = pair.plates(n);
-        if plates.stocky() {
+        if !plates.rigid(column.t_w, h_clear) {
+            notes.push(
+                "the compression stiffeners are too slight to hold the web (EN 1993-1-5 9.3.3(3)): not credited".into(),
+            );
+        } else if plates.stocky() {
             title = "stiffened column web in compression";
             let web = Web {
                 F_web: compression.value,

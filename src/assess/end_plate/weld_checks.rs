@@ -29,7 +29,7 @@ pub fn at_flange_and_web(
     let first_below = (0..rows.len()).find(|&i| heights[i] < n.beam.h);
     let F_rows: Force =
         rows.iter().zip(0..).filter(|(_, i)| first_below.is_none_or(|b| *i <= b)).map(|(r, _)| r.force).sum();
-    let (b_fb, t_fb, t_wb, r) = (n.beam.b, n.beam.t_f, n.beam.t_w, n.r_b);
+    let (b_fb, t_fb, t_wb, r) = (n.beam.b, n.beam.t_f, n.beam.t_w, n.r_b_most);
     let F_flange = b_fb * t_fb * n.beam_strength.f_y_flange;
 
     let flange = n.a_tension.map(|a| {
@@ -101,7 +101,7 @@ pub fn in_shear(n: &Numbers, rulebook: &Rulebook, tension_reach: Length) -> Opti
     let (beta_w, f_u) = parts(n)?;
     let fillet = welds::along(n.a_web?, f_u, beta_w, rulebook.annex.gamma_m2);
     let mut w = fillet.working;
-    let (F_w_Rd, h, t_f, r) = (fillet.per_length, n.beam.h, n.beam.t_f, n.r_b);
+    let (F_w_Rd, h, t_f, r) = (fillet.per_length, n.beam.h, n.beam.t_f, n.r_b_most);
     given!(w, "beam web"; h, t_f, r, tension_reach);
     step!(w, "the web below the rows in tension", l_w = (h - 2.0 * (t_f + r) - tension_reach).max(Length::ZERO));
     step!(w, "both sides of the web, 4.5.3.2", V_w_Rd = 2.0 * F_w_Rd * l_w);
