@@ -162,7 +162,8 @@ fn missing(
         }
     }
     let cases = computed.detailed.iter().flat_map(|a| &a.cases);
-    for verdict in cases.flat_map(|case| &case.verdicts).filter(|v| v.state == State::Unproven) {
+    let verdicts = cases.flat_map(|case| case.verdicts.iter().map(move |verdict| (case.case, verdict)));
+    for (case, verdict) in verdicts.filter(|(_, verdict)| verdict.state == State::Unproven) {
         if let Some(reason) = verdict.reason.as_ref().filter(|reason| *reason != "an input is missing") {
             let what = match verdict.about {
                 About::Moment => "proof of the moment",
@@ -171,7 +172,9 @@ fn missing(
                 About::Axial => "proof of the axial force",
             };
             let engineers = verdict.required.is_none() || reason == BOUND_BY_OPPOSITE || reason == BOUND_BY_TENSION;
-            missing.push(said(what, reason.clone(), if engineers { Ask::Engineer } else { Ask::Method }));
+            let gap = said(what, reason.clone(), if engineers { Ask::Engineer } else { Ask::Method });
+            let line = scheduled.and_then(|scheduled| scheduled.cases.get(case)).map(|case| case.at.clone());
+            missing.push(Missing { at: line.filter(|_| engineers).or(gap.at), ..gap });
         }
     }
     if let Some(Err(gap)) = &computed.intended {

@@ -6,6 +6,7 @@ use faying::review::Review;
 
 use super::bench::{SCHEDULE, is, j1, joint, long_shed, one_case, origin, plain, review, shed, told, written};
 use crate::writer::entity::Entity;
+use crate::writer::frames::frames;
 
 /// The text on one line, so that wrapping does not matter.
 fn flat(text: &str) -> String {
@@ -63,6 +64,11 @@ fn each_gap_says_who_can_close_it() {
     let ask = |what: &str| missing.iter().find(|gap| gap.what == what).map(|gap| gap.ask);
     assert_eq!(ask("proof of the shear"), Some(Ask::Engineer), "{missing:?}");
     assert_eq!(ask("weld at the top flange"), Some(Ask::Fabricator), "{missing:?}");
+    // A blank cell is looked for in the schedule, a weld in the model.
+    let files: Vec<_> = missing.iter().map(|gap| (gap.ask, gap.at.as_ref().map(|at| &*at.file))).collect();
+    for (ask, file) in files {
+        assert_eq!(file, Some(if ask == Ask::Engineer { "schedule.toml" } else { "model.ifcxml" }));
+    }
 }
 
 #[test]
@@ -123,6 +129,19 @@ fn a_joint_without_bolts_is_not_called_missing_steel() {
     let review = review(&written(&shed(), &edit), Some(SCHEDULE)).expect("a review");
     let text = printed(&review);
     assert!(text.contains("J1: scheduled, its members have no bolted joint; required M 150.0 kNm"), "{text}");
+}
+
+/// A report that nobody can read to its end is none.
+#[test]
+fn a_large_building_prints_a_bounded_report() {
+    let lines = |joints: usize| {
+        let review = review(&plain(&frames(joints, false)), None).expect("a review");
+        assert_eq!(review.counts.found, joints);
+        (text::render(&review, &Options::default(), None).lines().count(), surveyed(&review).len())
+    };
+    let (few, many) = (lines(40), lines(120));
+    assert!(many.0 <= few.0 + 2 && many.0 < 100, "{few:?} {many:?}");
+    assert!(many.1 <= few.1 + 100, "{few:?} {many:?}");
 }
 
 #[test]
