@@ -300,7 +300,7 @@ fn shear_beside_a_moment_that_nobody_knows() {
     let two_outside = plain(|l| {
         let row = l.bolts.rows[0].clone();
         l.bolts.rows.insert(0, faying::joints::BoltRow { height: row.height + mm(60.0), ..row });
-        l.plate.top = l.plate.top + mm(60.0);
+        l.plate.top += mm(60.0);
     });
     let (resistance, state) = shear(Some(20.0), &two_outside, 400.0);
     assert!(resistance <= (bolts + 2.0) * one * 0.4 / 1.4 + 1e-9);

@@ -39,11 +39,11 @@ const BOLT: &str = "beam B1/start/bolt 1L";
 fn cases() -> Vec<Case> {
     vec![
         // ---- bolts
-        ("no bolt class", Drawn(|b| j1(b).bolts.class = None), Unproven, "bolt class"),
-        ("bolts of an odd material", Drawn(|b| j1(b).bolts.class = Some(("galvanised".into(), ClassIn::Material))), Unproven, "bolt class"),
-        ("bolts of a class that is none", Drawn(|b| j1(b).bolts.class = Some(("8.9".into(), ClassIn::Material))), Unproven, "bolt class"),
-        ("bolts of a class between two", Drawn(|b| j1(b).bolts.class = Some(("8.8 or 10.9".into(), ClassIn::Name))), Unproven, "bolt class"),
-        ("one bolt of another class", Written(|e| { if is(e, BOLT) { name(e, "M24 x 80 - 4.6") } true }), Unproven, "bolt class"),
+        ("no bolt class", Drawn(|b| j1(b).bolts.class = None), Unproven, "strength class of the bolts is not known"),
+        ("bolts of an odd material", Drawn(|b| j1(b).bolts.class = Some(("galvanised".into(), ClassIn::Material))), Unproven, "strength class of the bolts is not known"),
+        ("bolts of a class that is none", Drawn(|b| j1(b).bolts.class = Some(("8.9".into(), ClassIn::Material))), Unproven, "strength class of the bolts is not known"),
+        ("bolts of a class between two", Drawn(|b| j1(b).bolts.class = Some(("8.8 or 10.9".into(), ClassIn::Name))), Unproven, "strength class of the bolts is not known"),
+        ("one bolt of another class", Written(|e| { if is(e, BOLT) { name(e, "M24 x 80 - 4.6") } true }), Unproven, "strength class of the bolts is not known"),
         ("one bolt of another diameter", Written(|e| { if is(e, BOLT) { name(e, "M20 x 80"); real(e, "NominalDiameter", 20.0) } true }), Unproven, "bolt"),
         ("one bolt left out", Written(|e| !is(e, BOLT)), Unproven, "row"),
         ("one bolt of the bottom row left out", Written(|e| !is(e, "beam B1/start/bolt 4R")), Unproven, "row"),
@@ -70,9 +70,9 @@ fn cases() -> Vec<Case> {
         ("a flange weld of throat 0", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 0.0), Unproven, "weld"),
         ("a flange weld of throat NaN", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = f64::NAN), Unproven, "weld"),
         ("a web weld of negative throat", Drawn(|b| j1(b).welds.as_mut().expect("welds").web = -6.0), Unproven, "weld"),
-        ("the weld of the top flange left out", Written(|e| !is(e, "beam B1/start/weld upper flange")), Unproven, "weld at the top flange"),
-        ("the weld of the bottom flange left out", Written(|e| !is(e, "beam B1/start/weld lower flange")), Unproven, "weld at the bottom flange"),
-        ("the weld of the web left out", Written(|e| !is(e, "beam B1/start/weld web")), Unproven, "weld at the web"),
+        ("the weld of the top flange left out", Written(|e| !is(e, "beam B1/start/weld upper flange")), Unproven, "no weld is modelled there"),
+        ("the weld of the bottom flange left out", Written(|e| !is(e, "beam B1/start/weld lower flange")), Unproven, "no weld is modelled there"),
+        ("the weld of the web left out", Written(|e| !is(e, "beam B1/start/weld web")), Unproven, "no weld is modelled there"),
         ("a weld below the least throat", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 2.0), Unproven, "3.000 mm is the least"),
         ("a weld thinner than needed", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 3.0), Hold, "weld"),
         // ---- plate

@@ -4,7 +4,7 @@ use crate::assess::{Gap, Input};
 use crate::eurocode::stiffeners::Pair;
 use crate::eurocode::{beam, bolts};
 use crate::joints::{EndPlateLayout, MemberAt, Stiffener};
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook, Section, Strength};
 use crate::units::{Area, Force, Length, Modulus, Stress, mm};
 use crate::working::Working;
@@ -120,12 +120,12 @@ impl Noted {
         }
     }
 
-    fn not_checked(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None }));
+    fn not_checked(&mut self, what: &str, reason: String, ask: Ask) {
+        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None, ask }));
     }
 
     fn lower_bound(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None }));
+        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None, ask: Ask::Fabricator }));
     }
 
     fn member(&mut self, role: &str, at: &MemberAt, rulebook: &Rulebook) -> Option<(Section, MemberStrength, Length)> {
@@ -187,14 +187,18 @@ impl Numbers {
         let size = d.and_then(|d| {
             let size = rulebook.bolt_size(d);
             if size.is_none() {
-                noted.not_checked("bolt size", format!("no table has a bolt of {d}"));
+                noted.not_checked("bolt size", format!("no table has a bolt of {d}"), Ask::Method);
             }
             size
         });
         let class = class.and_then(|name| {
             let class = rulebook.bolt_class(&name);
             if class.is_none() {
-                noted.not_checked("bolt class", format!("{name} is no class of EN 1993-1-8 Table 3.1"));
+                noted.not_checked(
+                    "bolt class",
+                    format!("{name} is no class of EN 1993-1-8 Table 3.1"),
+                    Ask::Fabricator,
+                );
             }
             class
         });
@@ -218,7 +222,7 @@ impl Numbers {
         let reasons = unsound(layout, beam_h, size.d, d_0, rulebook);
         if !reasons.is_empty() {
             for (what, reason) in reasons {
-                noted.not_checked(what, reason);
+                noted.not_checked(what, reason, Ask::Fabricator);
             }
             return None;
         }
@@ -230,7 +234,7 @@ impl Numbers {
         let beam_class =
             beam::class_in_bending((c_f, beam.t_f, beam_strength.f_y_flange), (c_w, beam.t_w, beam_strength.f_y_web));
         if beam_class == 4 {
-            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation));
+            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation), Ask::Method);
             return None;
         }
         noted.assumptions.push(format!(
@@ -386,7 +390,11 @@ fn weld(noted: &mut Noted, name: &str, known: &Known<Length>, least: Length) -> 
     let throat = throat.filter(|a| {
         let counts = *a >= least && a.get().is_finite();
         if !counts {
-            noted.not_checked(name, format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"));
+            noted.not_checked(
+                name,
+                format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"),
+                Ask::Fabricator,
+            );
         }
         counts
     });
