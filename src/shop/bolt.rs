@@ -10,13 +10,16 @@ use super::solid::Prism;
 use super::statement::{Statement, first_text};
 use super::words::{Word, says};
 use crate::exchange::Entity;
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::units::{Length, mm};
 
 /// Nominal diameters that a bolt may have, mm (M8 to M72).
 const DIAMETERS: (f64, f64) = (8.0, 72.0);
 /// A "bolt" drawn this much thicker than it is said to be is a hole pattern.
 const HOLE_PATTERN: f64 = 1.5;
+/// [`Missing::what`] of bolts whose heads are countersunk: whatever their class, they carry less in tension.
+pub const COUNTERSUNK: &str = "countersunk bolts";
+
 impl<'a> Reading<'a> {
     /// Whether a part is to be looked at as a fastener: by class, or by name and a round shank.
     pub fn may_be_bolt(&self, element: Entity<'a>, prisms: &[&Prism]) -> bool {
@@ -177,7 +180,12 @@ impl<'a> Reading<'a> {
             let length = size_in(text).and_then(|(_, length)| length);
             all.extend(length.map(|value| Statement { value, by: format!("{by} \"{text}\""), at: element.place() }));
         }
-        let missing = |reason: String| Missing { what: "bolt length".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "bolt length".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let Some(first) = all.first() else {
             return Err(missing("no attribute, property or name of the fastener states one".into()));
         };
@@ -195,8 +203,24 @@ impl<'a> Reading<'a> {
         let mut texts = self.material_texts(element);
         texts.extend(first_text(self.names_of(element), element));
         texts.extend(properties.iter().filter(|p| self.rulebook.means("bolt-class", p.name)).filter_map(said_by));
+        if let Some(said) = texts.iter().find(|said| says(&said.text, Word::Countersunk)) {
+            return Err(Missing {
+                what: COUNTERSUNK.into(),
+                reason: format!(
+                    "{} \"{}\" calls them so; their tension resistance (k2 = 0.63, Table 3.4) is not assessed yet",
+                    said.by, said.text
+                ),
+                at: Some(said.at.clone()),
+                ask: Ask::Method,
+            });
+        }
         let mut found = texts.iter().filter_map(|said| Some((said, self.rulebook.class_in(&said.text)?)));
-        let missing = |reason: String| Missing { what: "bolt class".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "bolt class".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let Some((witness, class)) = found.next() else {
             return Err(missing("no material, name or property of the bolts states one".into()));
         };

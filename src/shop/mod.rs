@@ -24,6 +24,7 @@ mod units;
 mod weld;
 mod words;
 
+pub use bolt::COUNTERSUNK;
 pub use take_up::take_up;
 
 use glam::{DVec2, DVec3};

@@ -6,7 +6,7 @@ use faying::assess::end_plate::{Demand, Opposite, assess};
 use faying::assess::{About, Assessment, MomentResistance, Sense, State, Verdict};
 use faying::intent::LoadCase;
 use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, MemberAt, Stiffener, Welds};
-use faying::origin::{Datum, Known, Missing, Origin, Place};
+use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::rulebook::{Rulebook, Section};
 use faying::units::{Length, kn, knm, mm};
 use proptest::prelude::*;
@@ -22,7 +22,7 @@ pub fn known<T>(value: T) -> Known<T> {
 }
 
 pub fn unknown<T>(what: &str) -> Known<T> {
-    Err(Missing { what: what.into(), reason: "nobody states it".into(), at: None })
+    Err(Missing { what: what.into(), reason: "nobody states it".into(), at: None, ask: Ask::Fabricator })
 }
 
 /// What a joint is made of, before heights and edge distances are worked out.

@@ -201,7 +201,7 @@ fn a_base_plate_whose_anchors_are_not_modelled() {
     steel.members.push(member("C1", COLUMN, DVec3::Z * 6000.0, DVec3::ZERO, DVec3::X));
     steel.plates.push(plate("BP", -DVec3::Z * 15.0, DVec3::X, DVec3::Y, (500.0, 400.0), 30.0));
     let joint = is(&steel, Kind::ColumnBase, 0, None, Some(0));
-    assert!(joint.layout.unwrap_err().ends_with("no bolts or anchors were found"));
+    assert!(joint.layout.unwrap_err().ends_with("no bolt that was taken up holds its plate"));
     steel.told.push(told("F1", &[Part::Member(0)], &[Part::Plate(0)]));
     assert_eq!(only(&steel).mark, "F1");
     // A cap on the column's head is no base.

@@ -6,6 +6,7 @@ mod moment;
 mod numbers;
 mod rows;
 mod shear;
+mod sound;
 mod totals;
 mod weld_checks;
 
@@ -16,7 +17,7 @@ use shear::Tension;
 use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict};
 use crate::intent::LoadCase;
 use crate::joints::EndPlateLayout;
-use crate::origin::Missing;
+use crate::origin::{Ask, Missing};
 use crate::rulebook::{RowForces, Rulebook};
 use crate::units::{Force, Length, Moment};
 
@@ -44,6 +45,27 @@ pub struct Demand<'a> {
 
 /// The upper bound of β, 5.3(9).
 const BETA_MAX: f64 = 2.0;
+
+/// Why a resistance is only a lower bound where β was put at its upper bound.
+pub const BOUND_BY_OPPOSITE: &str =
+    "the resistance is only a lower bound: the moment on the column's other flange is not known";
+
+/// Why a shear resistance is only a lower bound in a load case that leaves M blank.
+pub const BOUND_BY_TENSION: &str =
+    "the resistance is only a lower bound: M is not stated, and the bolts are taken as fully in tension";
+
+/// The same where something that would raise it is not known.
+fn lower_bound(gaps: &[Gap]) -> Option<String> {
+    let mut unknown: Vec<&str> = Vec::new();
+    for gap in gaps {
+        if let Gap::LowerBound(missing) = gap
+            && !unknown.contains(&missing.what.as_str())
+        {
+            unknown.push(&missing.what);
+        }
+    }
+    (!unknown.is_empty()).then(|| format!("the resistance is only a lower bound: not known: {}", unknown.join(", ")))
+}
 
 /// β = |1 − M_2/M_1| ≤ 2, 5.3(9) (5.4), moments positive with tension at the top on either side.
 fn beta(own: Moment, opposite: Opposite) -> f64 {
@@ -95,7 +117,12 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
                 let needed = demands.is_empty() && sense == Sense::Hogging
                     || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense));
                 if needed {
-                    noted.gaps.push(Gap::NotChecked(Missing { what: format!("moment with {what}"), reason, at: None }));
+                    noted.gaps.push(Gap::NotChecked(Missing {
+                        what: format!("moment with {what}"),
+                        reason,
+                        at: None,
+                        ask: Ask::Method,
+                    }));
                 }
                 None
             }
@@ -103,7 +130,7 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
         assessment.hogging = at_rest(Sense::Hogging, &mut noted);
         assessment.sagging = at_rest(Sense::Sagging, &mut noted);
         let n_pl = n.beam.area * n.beam_strength.f_y_flange / rulebook.annex.gamma_m0;
-        let lower_bound = noted.gaps.iter().any(|gap| matches!(gap, Gap::LowerBound(_)));
+        let lower_bound = lower_bound(&noted.gaps);
         let at_rest = [&assessment.hogging, &assessment.sagging];
         let reach = at_rest.map(|m| m.as_ref().map(|m| m.web_in_tension));
         let unknown = Tension::Unknown {
@@ -213,8 +240,8 @@ struct Cases<'a, F> {
     n: &'a Numbers,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,
-    /// Whether the resistances are a lower bound: then "not met" is not proven.
-    lower_bound: bool,
+    /// Why the resistances are a lower bound, if they are: then "not met" is not proven.
+    lower_bound: Option<String>,
     /// The bolts' tension where the moment is not known.
     unknown: Tension<'a>,
     solve: &'a F,
@@ -229,7 +256,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         let solved = (self.solve)(sense, beta(m, opposite), shear, Some(rule))?;
         let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.F_t_Rd);
         let unknown = rule == RowForces::LinearBeyond19
-            && (self.lower_bound
+            && (self.lower_bound.is_some()
                 || at_bound(opposite) && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
         if !unknown || solved.rows.first().is_some_and(steep) {
             return Ok(solved);
@@ -243,7 +270,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         let mut verdicts = Vec::new();
         let beside = shear.map_or(Force::ZERO, Force::abs);
         let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
-        let bound = at_bound(demand.opposite);
+        let bound = at_bound(demand.opposite).then_some(BOUND_BY_OPPOSITE);
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {
                 let governed = if resistance.moment < resistance.without_welds {
@@ -278,7 +305,8 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         verdicts.push(match (shear, &shear_resistance) {
             (Some(v), Some(resistance)) => {
                 let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
-                let mut verdict = self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, solved.is_none());
+                let bound = solved.is_none().then_some(BOUND_BY_TENSION);
+                let mut verdict = self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, bound);
                 // More than the bolts carry without any tension is proven not to be carried, whatever is not known.
                 let most = || shear::resistance(self.n, Tension::None, self.rulebook).shear;
                 if verdict.state == State::Unproven && v.get().is_finite() && v.abs() > most() {
@@ -328,18 +356,17 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         resistance: f64,
         unit: &'static str,
         governed_by: String,
-        bound: bool,
+        bound: Option<&str>,
     ) -> Verdict {
         let utilisation = required / resistance;
         let met = required <= resistance * (1.0 + self.rulebook.tolerances.utilisation);
         let number = required.is_finite() && resistance.is_finite();
-        let bound = bound || self.lower_bound || !number;
-        let reason = if number { "the resistance is only a lower bound" } else { "it comes to no number" };
+        let bound = if number { bound.or(self.lower_bound.as_deref()) } else { Some("it comes to no number") };
         Verdict {
             about,
             state: match met && number {
                 true => State::Met,
-                false if bound => State::Unproven,
+                false if bound.is_some() => State::Unproven,
                 false => State::NotMet,
             },
             required: Some(required),
@@ -347,11 +374,11 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
             unit,
             utilisation: Some(utilisation).filter(|u| u.is_finite()),
             governed_by,
-            reason: (!(met && number) && bound).then(|| reason.into()),
+            reason: bound.filter(|_| !(met && number)).map(str::to_owned),
         }
     }
 
-    fn weld_verdict(&self, required: Moment, resistance: &MomentResistance, bound: bool) -> Verdict {
+    fn weld_verdict(&self, required: Moment, resistance: &MomentResistance, bound: Option<&str>) -> Verdict {
         // The welds' share of the moment: they limit it at moment/without_welds, or carry more than the rest can bring.
         let used = |c: &Component| if c.at_full == Force::ZERO { 0.0 } else { (c.at_full / c.resistance).abs() };
         let worst = (resistance.components.iter())

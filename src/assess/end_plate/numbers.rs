@@ -1,10 +1,11 @@
 //! The numbers of an end-plate joint: what the layout states and the rulebook adds, or what is missing.
 
+use super::sound;
 use crate::assess::{Gap, Input};
 use crate::eurocode::stiffeners::Pair;
 use crate::eurocode::{beam, bolts};
 use crate::joints::{EndPlateLayout, MemberAt, Stiffener};
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook, Section, Strength};
 use crate::units::{Area, Force, Length, Modulus, Stress, mm};
 use crate::working::Working;
@@ -120,12 +121,12 @@ impl Noted {
         }
     }
 
-    fn not_checked(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None }));
+    fn not_checked(&mut self, what: &str, reason: String, ask: Ask) {
+        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None, ask }));
     }
 
     fn lower_bound(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None }));
+        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None, ask: Ask::Fabricator }));
     }
 
     fn member(&mut self, role: &str, at: &MemberAt, rulebook: &Rulebook) -> Option<(Section, MemberStrength, Length)> {
@@ -187,14 +188,18 @@ impl Numbers {
         let size = d.and_then(|d| {
             let size = rulebook.bolt_size(d);
             if size.is_none() {
-                noted.not_checked("bolt size", format!("no table has a bolt of {d}"));
+                noted.not_checked("bolt size", format!("no table has a bolt of {d}"), Ask::Method);
             }
             size
         });
         let class = class.and_then(|name| {
             let class = rulebook.bolt_class(&name);
             if class.is_none() {
-                noted.not_checked("bolt class", format!("{name} is no class of EN 1993-1-8 Table 3.1"));
+                noted.not_checked(
+                    "bolt class",
+                    format!("{name} is no class of EN 1993-1-8 Table 3.1"),
+                    Ask::Fabricator,
+                );
             }
             class
         });
@@ -215,10 +220,10 @@ impl Numbers {
         let (plate_strength, size, class, d_0) = (plate_strength?, size?, class?, d_0?);
 
         let beam_h = beam.h;
-        let reasons = unsound(layout, beam_h, size.d, d_0, rulebook);
+        let reasons = sound::reasons(layout, beam_h, size.d, d_0, rulebook);
         if !reasons.is_empty() {
             for (what, reason) in reasons {
-                noted.not_checked(what, reason);
+                noted.not_checked(what, reason, Ask::Method);
             }
             return None;
         }
@@ -230,7 +235,7 @@ impl Numbers {
         let beam_class =
             beam::class_in_bending((c_f, beam.t_f, beam_strength.f_y_flange), (c_w, beam.t_w, beam_strength.f_y_web));
         if beam_class == 4 {
-            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation));
+            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation), Ask::Method);
             return None;
         }
         noted.assumptions.push(format!(
@@ -315,70 +320,6 @@ impl Numbers {
     }
 }
 
-/// What of the layout no formula may be asked about: the thing and why. Written so that NaN is refused.
-fn unsound(
-    layout: &EndPlateLayout,
-    beam_h: Length,
-    d: Length,
-    d_0: Length,
-    rulebook: &Rulebook,
-) -> Vec<(&'static str, String)> {
-    let mut reasons = Vec::new();
-    let positive = |value: Length| value.get().is_finite() && value > Length::ZERO;
-    let (plate, rows) = (&layout.plate, &layout.bolts.rows);
-    if !(positive(plate.thickness) && positive(plate.width)) {
-        reasons.push(("end plate size", format!("thickness {}, width {}", plate.thickness, plate.width)));
-    }
-    let position = rulebook.tolerances.position;
-    let finite = plate.bottom.get().is_finite() && plate.top.get().is_finite();
-    if !(finite && plate.bottom <= position && plate.top >= beam_h - position) {
-        reasons.push((
-            "end plate shorter than the beam",
-            format!("it reaches from {} to {} above the soffit, the beam from 0 to {beam_h}", plate.bottom, plate.top),
-        ));
-    }
-    for (i, row) in rows.iter().enumerate() {
-        if !(row.height.get().is_finite() && [row.gauge, row.edge_plate, row.edge_column].into_iter().all(positive)) {
-            reasons.push((
-                "bolt row",
-                format!(
-                    "row {}: height {}, gauge {}, edge distances {} and {}",
-                    i + 1,
-                    row.height,
-                    row.gauge,
-                    row.edge_plate,
-                    row.edge_column
-                ),
-            ));
-        }
-    }
-    for (i, pair) in rows.windows(2).enumerate() {
-        if let [upper, lower] = pair
-            && !(upper.height - lower.height >= d)
-        {
-            let pitch = upper.height - lower.height;
-            reasons.push(("bolt pitch", format!("rows {} and {} lie {pitch} apart, bolts of {d}", i + 1, i + 2)));
-        }
-    }
-    let ends = [layout.column_above, layout.column_below];
-    if !ends.into_iter().flatten().all(|end| end.get().is_finite()) {
-        reasons.push(("column end", "its distance from the rows is no number".into()));
-    }
-    let size = rulebook.tolerances.size;
-    match rulebook.clearance(d) {
-        Some(normal) if d_0 >= d && d_0 <= d + normal.round + size => {}
-        Some(normal) => reasons.push((
-            "bolt hole",
-            format!(
-                "{d_0} for a bolt of {d}: Table 3.4 is for normal round holes, {} here (3.6.1(4)); larger ones are not assessed yet",
-                d + normal.round
-            ),
-        )),
-        None => reasons.push(("bolt hole", format!("no table has the clearance of a bolt of {d}"))),
-    }
-    reasons
-}
-
 /// The throat, or the safe geometry (no fillet), said twice: the weld itself can't be checked, and the T-stubs beside it
 /// are a lower bound.
 fn weld(noted: &mut Noted, name: &str, known: &Known<Length>, least: Length) -> Option<Length> {
@@ -386,7 +327,11 @@ fn weld(noted: &mut Noted, name: &str, known: &Known<Length>, least: Length) -> 
     let throat = throat.filter(|a| {
         let counts = *a >= least && a.get().is_finite();
         if !counts {
-            noted.not_checked(name, format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"));
+            noted.not_checked(
+                name,
+                format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"),
+                Ask::Fabricator,
+            );
         }
         counts
     });

@@ -1,0 +1,69 @@
+//! Whether a layout's sizes are such that the formulas have a meaning.
+
+use crate::joints::EndPlateLayout;
+use crate::rulebook::Rulebook;
+use crate::units::Length;
+
+/// What of the layout no formula may be asked about: the thing and why. Written so that NaN is refused.
+pub fn reasons(
+    layout: &EndPlateLayout,
+    beam_h: Length,
+    d: Length,
+    d_0: Length,
+    rulebook: &Rulebook,
+) -> Vec<(&'static str, String)> {
+    let mut reasons = Vec::new();
+    let positive = |value: Length| value.get().is_finite() && value > Length::ZERO;
+    let (plate, rows) = (&layout.plate, &layout.bolts.rows);
+    if !(positive(plate.thickness) && positive(plate.width)) {
+        reasons.push(("end plate size", format!("thickness {}, width {}", plate.thickness, plate.width)));
+    }
+    let position = rulebook.tolerances.position;
+    let finite = plate.bottom.get().is_finite() && plate.top.get().is_finite();
+    if !(finite && plate.bottom <= position && plate.top >= beam_h - position) {
+        reasons.push((
+            "end plate shorter than the beam",
+            format!("it reaches from {} to {} above the soffit, the beam from 0 to {beam_h}", plate.bottom, plate.top),
+        ));
+    }
+    for (i, row) in rows.iter().enumerate() {
+        if !(row.height.get().is_finite() && [row.gauge, row.edge_plate, row.edge_column].into_iter().all(positive)) {
+            reasons.push((
+                "bolt row",
+                format!(
+                    "row {}: height {}, gauge {}, edge distances {} and {}",
+                    i + 1,
+                    row.height,
+                    row.gauge,
+                    row.edge_plate,
+                    row.edge_column
+                ),
+            ));
+        }
+    }
+    for (i, pair) in rows.windows(2).enumerate() {
+        if let [upper, lower] = pair
+            && !(upper.height - lower.height >= d)
+        {
+            let pitch = upper.height - lower.height;
+            reasons.push(("bolt pitch", format!("rows {} and {} lie {pitch} apart, bolts of {d}", i + 1, i + 2)));
+        }
+    }
+    let ends = [layout.column_above, layout.column_below];
+    if !ends.into_iter().flatten().all(|end| end.get().is_finite()) {
+        reasons.push(("column end", "its distance from the rows is no number".into()));
+    }
+    let size = rulebook.tolerances.size;
+    match rulebook.clearance(d) {
+        Some(normal) if d_0 >= d && d_0 <= d + normal.round + size => {}
+        Some(normal) => reasons.push((
+            "bolt hole",
+            format!(
+                "{d_0} for a bolt of {d}: Table 3.4 is for normal round holes, {} here (3.6.1(4)); larger ones are not assessed yet",
+                d + normal.round
+            ),
+        )),
+        None => reasons.push(("bolt hole", format!("no table has the clearance of a bolt of {d}"))),
+    }
+    reasons
+}
