@@ -1,5 +1,7 @@
 //! Invented joints of sections from the tables, and how they are asked.
 
+use std::sync::LazyLock;
+
 use faying::assess::end_plate::{Demand, Opposite, assess};
 use faying::assess::{About, Assessment, MomentResistance, Sense, State, Verdict};
 use faying::intent::LoadCase;
@@ -11,6 +13,9 @@ use proptest::prelude::*;
 
 pub const COLUMNS: [&str; 5] = ["HEB 240", "HEA 300", "HEB 300", "UKC 254x254x107", "UKC 305x305x137"];
 pub const BEAMS: [&str; 5] = ["IPE 300", "IPE 400", "IPE 500", "UKB 457x191x67", "UKB 533x210x92"];
+
+/// The embedded rules, once for all cases.
+pub static RULES: LazyLock<Rulebook> = LazyLock::new(Rulebook::embedded);
 
 pub fn known<T>(value: T) -> Known<T> {
     Ok(Datum::new(value, Origin::Derived("invented".into())))

@@ -6,7 +6,7 @@ use faying::joints::EndPlateLayout;
 use faying::rulebook::{RowForces, Rulebook};
 use faying::units::mm;
 
-use super::joint::{PLAIN, Sketch, resistance, stiffener};
+use super::joint::{PLAIN, RULES, Sketch, resistance, stiffener};
 use crate::close;
 
 fn hogging(sketch: &Sketch, rulebook: &Rulebook) -> MomentResistance {
@@ -17,9 +17,9 @@ fn hogging(sketch: &Sketch, rulebook: &Rulebook) -> MomentResistance {
 /// lever arms, since the bolts fail first (6.2.7.2(9)).
 #[test]
 fn rigid_plates_leave_the_bolts() {
-    let rulebook = Rulebook::embedded();
+    let rulebook = &*RULES;
     let rigid = Sketch { column: "HEM 300", beam: "HEB 400", t_p: 60.0, d: 16.0, class: "4.6", ..PLAIN };
-    let joint = hogging(&rigid, &rulebook);
+    let joint = hogging(&rigid, rulebook);
     // Own arithmetic: M16 4.6, 0.9·400·157/1.25.
     let row = 2.0 * 0.9 * 400.0 * 157.0 / 1.25 / 1e3;
     close(joint.rows[0].force.kn(), row, 1e-9);
@@ -32,19 +32,17 @@ fn rigid_plates_leave_the_bolts() {
 /// A plate that is all but nothing carries nothing.
 #[test]
 fn the_thinnest_plate_carries_in_proportion_to_its_thickness_squared() {
-    let rulebook = Rulebook::embedded();
-    let [thin, double] = [3.0, 6.0].map(|t_p| hogging(&Sketch { t_p, ..PLAIN }, &rulebook).without_welds.knm());
+    let rulebook = &*RULES;
+    let [thin, double] = [3.0, 6.0].map(|t_p| hogging(&Sketch { t_p, ..PLAIN }, rulebook).without_welds.knm());
     close(double / thin, 4.0, 1e-9);
 }
 
 /// Compression that can carry no more leaves rows nearer to it without force, whatever they could bring.
 #[test]
 fn all_rows_together_bring_what_compression_carries() {
-    let rulebook = Rulebook::embedded();
-    let joint = hogging(
-        &Sketch { column: "HEA 300", inner: 3, beam: "UKB 533x210x92", d: 24.0, t_p: 30.0, ..PLAIN },
-        &rulebook,
-    );
+    let rulebook = &*RULES;
+    let joint =
+        hogging(&Sketch { column: "HEA 300", inner: 3, beam: "UKB 533x210x92", d: 24.0, t_p: 30.0, ..PLAIN }, rulebook);
     let compression = joint.components.iter().find(|c| c.id == "column-web-in-compression").unwrap();
     close(compression.at_full.kn(), compression.resistance.kn(), 1e-9);
 }
@@ -52,12 +50,12 @@ fn all_rows_together_bring_what_compression_carries() {
 /// A pair on one side of the web, or one short of the other flange, is none.
 #[test]
 fn a_stiffener_that_is_not_credited_is_none() {
-    let rulebook = Rulebook::embedded();
+    let rulebook = &*RULES;
     let moment = |layout: &EndPlateLayout| {
-        let joint = assess(layout, &[], false, &rulebook);
+        let joint = assess(layout, &[], false, rulebook);
         [joint.hogging.unwrap().moment, joint.sagging.unwrap().moment]
     };
-    let without = PLAIN.layout(&rulebook);
+    let without = PLAIN.layout(rulebook);
     for change in [
         (|s| s.both_sides = false) as fn(&mut faying::joints::Stiffener),
         |s| s.full_depth = false,
@@ -67,7 +65,7 @@ fn a_stiffener_that_is_not_credited_is_none() {
     ] {
         let mut with = without.clone();
         for height in [393.0, 7.0] {
-            let mut pair = stiffener(&rulebook, "S355", height, 12.0, 120.0, mm(262.0));
+            let mut pair = stiffener(rulebook, "S355", height, 12.0, 120.0, mm(262.0));
             change(&mut pair);
             with.stiffeners.push(pair);
         }

@@ -7,7 +7,7 @@ use faying::rulebook::{Clearance, Rulebook, Section};
 use faying::units::{Area, Force, Length, knm, mm};
 use proptest::prelude::*;
 
-use super::joint::{Sketch, asked, case, known, mirrored, resistance, sketches, unknown};
+use super::joint::{RULES, Sketch, asked, case, known, mirrored, resistance, sketches, unknown};
 use faying::joints::Welds;
 use faying::origin::Known;
 
@@ -84,13 +84,14 @@ fn scaled(layout: &EndPlateLayout, k: f64) -> EndPlateLayout {
 }
 
 proptest! {
+    #![proptest_config(ProptestConfig::with_cases(100))]
     #[test]
     fn upside_down_hogging_is_sagging(sketch in sketches(), beta in 0.0..2.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
         let turned = mirrored(&layout);
         for (sense, other) in [(Sense::Hogging, Sense::Sagging), (Sense::Sagging, Sense::Hogging)] {
-            match (resistance(&layout, sense, beta, &rulebook), resistance(&turned, other, beta, &rulebook)) {
+            match (resistance(&layout, sense, beta, rulebook), resistance(&turned, other, beta, rulebook)) {
                 (Ok(a), Ok(b)) => {
                     prop_assert!(same(a.moment.get(), b.moment.get()), "{} {}", a.moment, b.moment);
                     prop_assert!(same(a.without_welds.get(), b.without_welds.get()));
@@ -104,22 +105,22 @@ proptest! {
 
     #[test]
     fn the_order_of_the_stiffeners_does_not_matter(sketch in sketches(), beta in 0.0..2.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
         let mut reversed = layout.clone();
         reversed.stiffeners.reverse();
         for sense in SENSES {
-            let [a, b] = [&layout, &reversed].map(|layout| resistance(layout, sense, beta, &rulebook));
+            let [a, b] = [&layout, &reversed].map(|layout| resistance(layout, sense, beta, rulebook));
             prop_assert_eq!(a.map(|a| a.moment), b.map(|b| b.moment));
         }
     }
 
     #[test]
     fn nothing_carries_more_than_it_can(sketch in sketches(), beta in 0.0..2.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
         for sense in SENSES {
-            let Ok(moment) = resistance(&layout, sense, beta, &rulebook) else { continue };
+            let Ok(moment) = resistance(&layout, sense, beta, rulebook) else { continue };
             // With the welds the moment comes down until they carry too.
             let share = moment.moment / moment.without_welds;
             for c in &moment.components {
@@ -133,10 +134,10 @@ proptest! {
 
     #[test]
     fn tension_and_compression_balance(sketch in sketches(), beta in 0.0..2.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
         for sense in SENSES {
-            let Ok(moment) = resistance(&layout, sense, beta, &rulebook) else { continue };
+            let Ok(moment) = resistance(&layout, sense, beta, rulebook) else { continue };
             let at_full = |id: &str| moment.components.iter().find(|c| c.id == id).unwrap().at_full.get();
             prop_assert!(same(at_full("column-web-in-compression"), total(&moment)));
             prop_assert!(same(at_full("beam-flange-in-compression"), total(&moment)));
@@ -148,9 +149,9 @@ proptest! {
 
     #[test]
     fn equal_and_opposite_moments_leave_the_panel_alone(sketch in sketches(), m in 1.0..500.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
-        let assessment = asked(&layout, &case(Some(m), None, None), Opposite::Moment(knm(m)), &rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
+        let assessment = asked(&layout, &case(Some(m), None, None), Opposite::Moment(knm(m)), rulebook);
         if let Some(moment) = &assessment.cases[0].moment {
             prop_assert_eq!(moment.beta, 0.0);
             let panel = moment.components.iter().find(|c| c.id == "column-web-panel-in-shear").unwrap();
@@ -161,10 +162,10 @@ proptest! {
     /// Not across the cliff of 6.2.7.2(9): there the note names the row.
     #[test]
     fn a_larger_beta_never_carries_more(sketch in sketches(), beta in 0.0..2.0f64, more in 0.0..1.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
         for sense in SENSES {
-            let of = |beta: f64| resistance(&layout, sense, beta, &rulebook);
+            let of = |beta: f64| resistance(&layout, sense, beta, rulebook);
             let (Ok(a), Ok(b)) = (of(beta), of((beta + more).min(2.0))) else { continue };
             prop_assert!(b.without_welds <= a.without_welds * (1.0 + 1e-9) || a.notes.iter().any(|n| n.contains("1.9 Ft,Rd")));
         }
@@ -174,10 +175,10 @@ proptest! {
     /// fillets (up to the thickness of the thinnest web here).
     #[test]
     fn an_unknown_is_never_worth_more_than_what_it_may_be(sketch in sketches(), beta in 0.0..2.0f64, r in 0.0..30.0f64, a in 3.0..7.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
         let moment = |layout: &EndPlateLayout, opposite| {
-            let assessment = asked(layout, &case(Some(1.0), Some(0.0), Some(0.0)), opposite, &rulebook);
+            let assessment = asked(layout, &case(Some(1.0), Some(0.0), Some(0.0)), opposite, rulebook);
             assessment.cases[0].moment.as_ref().map(|m| m.without_welds.get())
         };
         let of_beta = moment(&layout, Opposite::Moment(knm(1.0 - beta)));
@@ -205,16 +206,16 @@ proptest! {
 
     #[test]
     fn shear_resistance_falls_as_the_moment_grows(sketch in sketches(), part in 0.0..1.0f64, more in 0.0..0.5f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
-        let Ok(full) = resistance(&layout, Sense::Hogging, 1.0, &rulebook) else { return Ok(()) };
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
+        let Ok(full) = resistance(&layout, Sense::Hogging, 1.0, rulebook) else { return Ok(()) };
         let shear = |share: f64| {
             let required = case(Some(share * full.without_welds.knm()), Some(10.0), Some(0.0));
-            asked(&layout, &required, Opposite::None, &rulebook).cases[0].shear.clone().unwrap().shear
+            asked(&layout, &required, Opposite::None, rulebook).cases[0].shear.clone().unwrap().shear
         };
         prop_assert!(shear(part + more) <= shear(part) * (1.0 + 1e-9));
         // Beyond its full resistance, or with the moment not stated, the bolts have no less than their 0.4/1.4.
-        let unknown = asked(&layout, &case(None, Some(10.0), Some(0.0)), Opposite::None, &rulebook);
+        let unknown = asked(&layout, &case(None, Some(10.0), Some(0.0)), Opposite::None, rulebook);
         prop_assert!(unknown.cases[0].shear.clone().unwrap().shear <= shear(1.0) * (1.0 + 1e-9));
     }
 
@@ -222,7 +223,7 @@ proptest! {
     /// 16 mm or falls below 3 mm), below h = 600 mm, bolts above M14 (3.6.1(5)); 69 ε and 14 ε are ratios and scale along.
     #[test]
     fn size_by_k(k in 0.75..1.1f64, t_p in 10.0..14.0f64, extended: bool, inner in 1..4usize, top: bool, bottom: bool, beta in 0.0..2.0f64) {
-        let rulebook = Rulebook::embedded();
+        let rulebook = &*RULES;
         let sketch = Sketch {
             column: "HEA 300",
             beam: "IPE 400",
@@ -234,16 +235,16 @@ proptest! {
             column_above: Some(200.0),
             ..super::joint::PLAIN
         };
-        let layout = sketch.layout(&rulebook);
-        let (larger, rules) = (scaled(&layout, k), scaled_rules(&rulebook, k));
+        let layout = sketch.layout(rulebook);
+        let (larger, rules) = (scaled(&layout, k), scaled_rules(rulebook, k));
         prop_assert!(same(Area(k * k * 245.0).get(), rules.bolt_size(mm(k * 20.0)).unwrap().a_s.get()));
         for sense in SENSES {
-            let a = resistance(&layout, sense, beta, &rulebook).unwrap();
+            let a = resistance(&layout, sense, beta, rulebook).unwrap();
             let b = resistance(&larger, sense, beta, &rules).unwrap();
             prop_assert!(same(k.powi(3) * a.without_welds.get(), b.without_welds.get()), "{} {}", a.without_welds, b.without_welds);
             prop_assert!(same(k.powi(3) * a.moment.get(), b.moment.get()));
         }
         let shear = |layout: &EndPlateLayout, rules: &Rulebook| assess(layout, &[], false, rules).shear.unwrap().shear.get();
-        prop_assert!(same(k * k * shear(&layout, &rulebook), shear(&larger, &rules)));
+        prop_assert!(same(k * k * shear(&layout, rulebook), shear(&larger, &rules)));
     }
 }

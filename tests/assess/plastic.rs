@@ -6,10 +6,9 @@
 //! less than nothing; then it may only be lower.
 
 use faying::assess::{MomentResistance, Sense};
-use faying::rulebook::Rulebook;
 use proptest::prelude::*;
 
-use super::joint::{resistance, sketches};
+use super::joint::{RULES, resistance, sketches};
 
 /// max c·x with A x ≤ b, x ≥ 0, b ≥ 0: the simplex method on the full tableau with Bland's rule.
 fn maximise(c: &[f64], a: &[Vec<f64>], b: &[f64]) -> f64 {
@@ -85,10 +84,10 @@ proptest! {
     #![proptest_config(ProptestConfig::with_cases(400))]
     #[test]
     fn row_by_row_is_the_plastic_solution(sketch in sketches(), beta in 0.0..2.0f64) {
-        let rulebook = Rulebook::embedded();
-        let layout = sketch.layout(&rulebook);
+        let rulebook = &*RULES;
+        let layout = sketch.layout(rulebook);
         for sense in [Sense::Hogging, Sense::Sagging] {
-            let Ok(moment) = resistance(&layout, sense, beta, &rulebook) else { continue };
+            let Ok(moment) = resistance(&layout, sense, beta, rulebook) else { continue };
             let (best, row_by_row) = (programme(&moment), moment.without_welds.knm());
             prop_assert!(row_by_row <= best * (1.0 + 1e-9) + 1e-9, "{row_by_row} above {best}: {:?}", moment.rows);
             if moment.notes.iter().all(|note| !note.contains("6.2.7.2(9)")) {

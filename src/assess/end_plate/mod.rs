@@ -82,6 +82,11 @@ fn beta(own: Moment, opposite: Opposite) -> f64 {
     }
 }
 
+/// Whether β is only bounded.
+fn at_bound(opposite: Opposite) -> bool {
+    matches!(opposite, Opposite::NotStated | Opposite::Unclear(_))
+}
+
 /// Assesses a joint as laid out, against load cases if there are any. `two_sided`: whether a joint stands on the column's
 /// other flange (then, without load cases, β is at its upper bound).
 pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, rulebook: &Rulebook) -> Assessment {
@@ -251,8 +256,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.F_t_Rd);
         let unknown = rule == RowForces::LinearBeyond19
             && (self.lower_bound.is_some()
-                || matches!(opposite, Opposite::NotStated | Opposite::Unclear(_))
-                    && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
+                || at_bound(opposite) && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
         if !unknown || solved.rows.first().is_some_and(steep) {
             return Ok(solved);
         }
@@ -265,10 +269,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, Str
         let mut verdicts = Vec::new();
         let beside = shear.map_or(Force::ZERO, Force::abs);
         let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
-        let bound = match demand.opposite {
-            Opposite::NotStated | Opposite::Unclear(_) => Some(BOUND_BY_OPPOSITE),
-            Opposite::None | Opposite::Moment(_) => None,
-        };
+        let bound = at_bound(demand.opposite).then_some(BOUND_BY_OPPOSITE);
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {
                 let governed = if resistance.moment < resistance.without_welds {
