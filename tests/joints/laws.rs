@@ -151,22 +151,3 @@ proptest! {
         assert_same(&building(90.0, 15.0), &steel)?;
     }
 }
-
-#[test]
-fn a_building_of_many_joints_is_near_linear() {
-    let time = |columns: usize| {
-        let mut steel = Steelwork::default();
-        for i in 0..columns {
-            let base = DVec3::new(12_000.0 * (i % 20) as f64, 12_000.0 * (i / 20) as f64, 0.0);
-            steel.members.push(member("C1", COLUMN, base, base + DVec3::Z * 8000.0, DVec3::X));
-            let column = steel.members.len() - 1;
-            add(&mut steel, column, &Detail::default());
-        }
-        let start = std::time::Instant::now();
-        assert_eq!(recognise(&steel, &rulebook()).joints.len(), columns);
-        start.elapsed().as_secs_f64()
-    };
-    let (small, large) = (time(100), time(1000));
-    // Ten times as many joints: all pairs would take a hundred times as long.
-    assert!(large < 40.0 * small.max(1e-3), "{small} s for 100 joints, {large} s for 1000");
-}

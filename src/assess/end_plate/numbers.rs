@@ -214,6 +214,15 @@ impl Numbers {
         let a_web = weld(noted, "weld at the web", &layout.welds.web, least);
 
         let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, rulebook)).collect();
+        // What strengthens and is not credited makes the joint no weaker, so a joint that fails without it is not proven to.
+        for part in &layout.not_credited {
+            noted.gaps.push(Gap::LowerBound(Missing {
+                what: "credit for a strengthening part".into(),
+                reason: part.clone(),
+                at: None,
+                ask: Ask::Method,
+            }));
+        }
 
         let ((column, column_strength, r_c), (beam, beam_strength, r_b)) = (column?, beam?);
         let (r_c_most, r_b_most) = (column.r.unwrap_or(R_MOST), beam.r.unwrap_or(R_MOST));
