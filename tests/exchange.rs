@@ -3,6 +3,7 @@
 mod forms;
 mod hostile;
 mod problems;
+mod step;
 mod unreadable;
 mod values;
 

@@ -2,7 +2,7 @@
 
 use super::problems::Problems;
 use super::scalar::quoted;
-use super::schema::{Base, Kind, Schema};
+use super::schema::{Base, Kind};
 use super::{Entities, Entity, Value};
 
 /// Notes what contradicts the schema and would mislead whoever follows the graph; the graph stays as it is.
@@ -23,7 +23,7 @@ pub(super) fn check(entities: &Entities, problems: &mut Problems) {
 }
 
 fn check_value(entity: Entity, name: &str, kind: Kind, value: &Value, problems: &mut Problems) {
-    let schema = Schema::ifc4();
+    let schema = entity.graph().schema();
     let wrong = match (kind.base, value) {
         (_, Value::Absent) | (Base::Any, _) => None,
         (_, Value::List(items)) => {

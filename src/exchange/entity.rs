@@ -81,9 +81,15 @@ impl<'a> Entity<'a> {
         self.graph.class_name(self.graph.class(self.id))
     }
 
-    /// Whether it is of that class or of a subtype.
+    /// Whether it is of that class or of a subtype, by the schema of its exchange. What IFC4X3 renamed answers to
+    /// the older name too.
     pub fn is_a(self, class: &str) -> bool {
-        self.graph.lineage(self.id).any(|name| name == class)
+        let renamed = match class {
+            "IfcBuildingElement" => "IfcBuiltElement",
+            "IfcBuildingElementType" => "IfcBuiltElementType",
+            same => same,
+        };
+        self.graph.lineage(self.id).any(|name| name == class || name == renamed)
     }
 
     /// The file's own name for it: `i110`, `#110`; empty where it has none.

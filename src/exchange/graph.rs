@@ -57,6 +57,10 @@ impl Entities {
         }
     }
 
+    pub(super) fn schema(&self) -> &'static Schema {
+        self.schema
+    }
+
     /// How many there are.
     pub fn len(&self) -> usize {
         self.nodes.len()

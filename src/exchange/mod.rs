@@ -9,6 +9,8 @@ mod problems;
 mod scalar;
 mod schema;
 mod sniff;
+mod step;
+mod waiting;
 
 pub use entity::{Entity, Id, TypeName, Value};
 pub use graph::Entities;
@@ -18,7 +20,7 @@ use crate::origin::Problem;
 /// An exchange as read: the entity graph, what form it had, and what could not be understood.
 #[derive(Debug)]
 pub struct Exchange {
-    /// Schema and form, for people: "IFC4 ifcXML".
+    /// Schema and form, for people: "IFC4 ifcXML", "IFC2X3 STEP".
     pub form: String,
     /// The graph.
     pub entities: Entities,
@@ -39,12 +41,14 @@ pub struct Unreadable {
 /// Reads an exchange from its bytes; `file` is only used to name places.
 ///
 /// # Errors
-/// [`Unreadable`] where the bytes are no exchange: empty, truncated, no ifcXML, a DTD inside.
+/// [`Unreadable`] where the bytes are no exchange: empty, truncated, neither ifcXML nor STEP, a DTD inside.
 pub fn read(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
     let name: std::sync::Arc<str> = file.into();
     let mut problems = problems::Problems::new(name.clone());
-    let entities = Entities::new(schema::Schema::ifc4(), name);
     sniff::decode(bytes, &mut problems)
-        .and_then(|text| ifcxml::read(&text, problems, entities))
+        .and_then(|text| match sniff::is_step(&text) {
+            true => step::read(&text, problems, name),
+            false => ifcxml::read(&text, problems, Entities::new(schema::Schema::ifc4(), name)),
+        })
         .map_err(|reason| Unreadable { file: file.to_owned(), reason: format!("the file {reason}") })
 }

@@ -1,5 +1,6 @@
 //! The schema's entities, supertypes and attributes: data, so that every exchange form is read by one table.
 
+use std::borrow::Cow;
 use std::collections::HashMap;
 use std::sync::LazyLock;
 
@@ -73,6 +74,8 @@ pub(super) struct Class {
 /// One version of the schema.
 #[derive(Debug)]
 pub(super) struct Schema {
+    /// Its name for people.
+    pub name: &'static str,
     classes: Vec<Class>,
     by_name: HashMap<String, ClassId>,
     types: HashMap<String, (TypeName, Kind)>,
@@ -81,18 +84,30 @@ pub(super) struct Schema {
 impl Schema {
     /// IFC4 ADD2 TC1.
     pub fn ifc4() -> &'static Self {
-        static IFC4: LazyLock<Schema> = LazyLock::new(|| Schema::parse(include_str!("schema/ifc4.txt")));
+        static IFC4: LazyLock<Schema> = LazyLock::new(|| Schema::parse("IFC4", include_str!("schema/ifc4.txt")));
         &IFC4
+    }
+
+    /// IFC2X3 TC1.
+    pub fn ifc2x3() -> &'static Self {
+        static IFC2X3: LazyLock<Schema> = LazyLock::new(|| Schema::parse("IFC2X3", include_str!("schema/ifc2x3.txt")));
+        &IFC2X3
+    }
+
+    /// IFC4X3.
+    pub fn ifc4x3() -> &'static Self {
+        static IFC4X3: LazyLock<Schema> = LazyLock::new(|| Schema::parse("IFC4X3", include_str!("schema/ifc4x3.txt")));
+        &IFC4X3
     }
 
     /// The entity of that name, in whatever case.
     pub fn find(&self, name: &str) -> Option<ClassId> {
-        self.by_name.get(&name.to_ascii_uppercase()).copied()
+        self.by_name.get(&*upper(name)).copied()
     }
 
     /// The defined type of that name, in whatever case: its name as the schema spells it, and its kind.
     pub fn find_type(&self, name: &str) -> Option<(TypeName, Kind)> {
-        self.types.get(&name.to_ascii_uppercase()).cloned()
+        self.types.get(&*upper(name)).cloned()
     }
 
     /// The entity; `None` for the number of an entity that the schema does not know.
@@ -128,8 +143,8 @@ impl Schema {
 
     /// Reads the table; its own head says how it is written. The table is part of the program, so a line that
     /// breaks the format is an error of the program and panics.
-    fn parse(text: &'static str) -> Self {
-        let mut schema = Self { classes: Vec::new(), by_name: HashMap::new(), types: HashMap::new() };
+    fn parse(name: &'static str, text: &'static str) -> Self {
+        let mut schema = Self { name, classes: Vec::new(), by_name: HashMap::new(), types: HashMap::new() };
         let lines = || text.lines().filter(|line| !line.starts_with('#') && !line.is_empty());
         let entities = || lines().filter(|line| !line.starts_with('='));
         for (number, line) in entities().enumerate() {
@@ -188,5 +203,13 @@ impl Schema {
             entity => Base::Entity(self.find(entity).expect("an entity that the table has")),
         };
         Kind { base, depth, row }
+    }
+}
+
+/// In upper case; without a copy where it is already, as in nearly every STEP file.
+fn upper(name: &str) -> Cow<'_, str> {
+    match name.bytes().any(|b| b.is_ascii_lowercase()) {
+        true => name.to_ascii_uppercase().into(),
+        false => name.into(),
     }
 }

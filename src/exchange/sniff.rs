@@ -28,14 +28,22 @@ pub(super) fn decode<'a>(bytes: &'a [u8], problems: &mut Problems) -> Result<Cow
         _ => declared(bytes, problems),
     };
     let start = text.trim_ascii_start();
-    if start.starts_with(b"ISO-10303-21") {
-        return Err("is a STEP file (ISO 10303-21); this form is not read yet, ifcXML of IFC4 is".into());
-    }
-    if !start.starts_with(b"<") {
+    if !start.starts_with(b"<") && !is_step(&text) {
         let shown = quoted(&String::from_utf8_lossy(&start[..start.len().min(32)]));
-        return Err(format!("is no exchange: it starts with {shown}, XML is required"));
+        return Err(format!("is no exchange: it starts with {shown}, ifcXML or STEP (ISO-10303-21) is required"));
     }
     Ok(text)
+}
+
+/// Whether a text is a STEP physical file: its first word after white space and comments says so.
+pub(super) fn is_step(text: &[u8]) -> bool {
+    const SIGN: &[u8] = b"ISO-10303-21";
+    let mut rest = text.trim_ascii_start();
+    while let Some(comment) = rest.strip_prefix(b"/*") {
+        let Some(end) = memchr::memmem::find(comment, b"*/") else { return false };
+        rest = comment[end + 2..].trim_ascii_start();
+    }
+    rest.get(..SIGN.len()).is_some_and(|start| start.eq_ignore_ascii_case(SIGN))
 }
 
 fn utf16(bytes: &[u8], unit: fn([u8; 2]) -> u16) -> Vec<u8> {

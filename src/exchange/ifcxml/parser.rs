@@ -6,13 +6,11 @@ use super::super::labels::Labels;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Attribute, Base, ClassId, Kind, Schema};
+use super::super::waiting::WAITING;
 use super::super::{Entities, Id, Value};
 use super::DEEPEST;
 use super::head::{Head, Pos};
 use super::slot::{Slot, Target, stray_text, untyped};
-
-/// Ids from here on stand for references whose target had not been read yet.
-pub(super) const WAITING: u32 = 1 << 31;
 
 /// What an open element is.
 enum Frame {

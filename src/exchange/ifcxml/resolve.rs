@@ -2,8 +2,9 @@
 
 use std::collections::HashSet;
 
+use super::super::waiting::{settle, target};
 use super::super::{Exchange, Id, Value, conform};
-use super::parser::{Link, Parser, WAITING};
+use super::parser::{Link, Parser};
 
 pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
     let targets: Vec<Option<Id>> =
@@ -29,31 +30,6 @@ pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
     }
     conform::check(&parser.entities, &mut parser.problems);
     Exchange { form, entities: parser.entities, problems: parser.problems.finish() }
-}
-
-fn target(id: Id, targets: &[Option<Id>]) -> Option<Id> {
-    match id.0.checked_sub(WAITING) {
-        Some(index) => targets.get(index as usize).copied().flatten(),
-        None => Some(id),
-    }
-}
-
-/// Replaces waiting references; those to nothing become absent, or leave the list they stood in.
-fn settle(value: &mut Value, targets: &[Option<Id>]) {
-    match value {
-        Value::Entity(id) => match target(*id, targets) {
-            Some(to) => *id = to,
-            None => *value = Value::Absent,
-        },
-        Value::List(items) => {
-            items.retain_mut(|item| {
-                settle(item, targets);
-                *item != Value::Absent
-            });
-        }
-        Value::Typed(_, inner) => settle(inner, targets),
-        _ => {}
-    }
 }
 
 /// Gives one relation the parents in which it stands, beside those it names itself.

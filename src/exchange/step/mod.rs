@@ -1,0 +1,192 @@
+//! STEP physical files (ISO 10303-21): records into the entity graph, by the positions of the schema's attributes.
+//!
+//! One pass over the bytes; references are resolved after it. What is broken costs its own record at most.
+
+mod cursor;
+mod header;
+mod record;
+mod text;
+mod value;
+
+use std::sync::Arc;
+
+use self::cursor::Cursor;
+use super::problems::{Problems, Ruler, Spot};
+use super::schema::Schema;
+use super::waiting;
+use super::{Entities, Exchange, Id, conform};
+
+/// Where in the file the reading stands.
+#[derive(Clone, Copy, PartialEq)]
+enum Section {
+    /// Before, between and after the others.
+    None,
+    Header,
+    Data,
+    /// One that is not read.
+    Other,
+}
+
+struct Reader<'a> {
+    cursor: Cursor<'a>,
+    ruler: Ruler<'a>,
+    schema: &'static Schema,
+    entities: Entities,
+    problems: Problems,
+    /// The records by the numbers that the file gives them.
+    numbers: Vec<(u64, Id)>,
+    /// References by number, and who refers.
+    references: Vec<(u64, Id)>,
+    /// Where the first text that is not UTF-8 stands, and how many there are.
+    latin1: Option<(Spot, usize)>,
+}
+
+/// Reads a file.
+///
+/// # Errors
+/// Why it is no exchange at all, in one sentence.
+pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<Exchange, String> {
+    let mut reader = Reader {
+        cursor: Cursor::new(bytes),
+        ruler: Ruler::new(bytes),
+        schema: Schema::ifc4(),
+        entities: Entities::new(Schema::ifc4(), file),
+        problems,
+        numbers: Vec::new(),
+        references: Vec::new(),
+        latin1: None,
+    };
+    reader.sections()?;
+    Ok(reader.finish())
+}
+
+impl Reader<'_> {
+    fn spot(&mut self) -> Spot {
+        self.ruler.spot(self.cursor.at)
+    }
+
+    fn sections(&mut self) -> Result<(), String> {
+        let mut section = Section::None;
+        let mut named = false; // whether a schema was
+        let mut data = false;
+        while let Some(next) = self.cursor.peek() {
+            if next == b'#' {
+                if section == Section::Other {
+                    self.cursor.at += 1;
+                    self.cursor.skip_record();
+                    continue;
+                }
+                if section != Section::Data {
+                    let spot = self.spot();
+                    self.problems.add("record outside a section", spot, || {
+                        "a record stands outside a DATA section; it is read all the same".into()
+                    });
+                }
+                data = true;
+                self.record();
+                continue;
+            }
+            let spot = self.spot();
+            let keyword = String::from_utf8_lossy(self.cursor.keyword()).to_ascii_uppercase();
+            match (section, keyword.as_str()) {
+                (_, "ISO-10303-21") => {}
+                (_, "HEADER") => section = Section::Header,
+                (Section::Header, "FILE_SCHEMA") => {
+                    self.file_schema(spot)?;
+                    named = true;
+                }
+                (Section::Header, "FILE_DESCRIPTION" | "FILE_NAME" | "FILE_POPULATION") => {}
+                (Section::Header, "SECTION_LANGUAGE" | "SECTION_CONTEXT" | "SCHEMA_POPULATION") => {}
+                (_, "DATA") => {
+                    data = true;
+                    section = Section::Data;
+                    if !named {
+                        named = true;
+                        self.problems.add("no schema", spot, || "FILE_SCHEMA is missing: read as IFC4".into());
+                    }
+                }
+                (_, "ANCHOR" | "REFERENCE" | "SIGNATURE") => {
+                    section = Section::Other;
+                    self.problems.add("section that is not read", spot, || {
+                        format!("the section {keyword} is not read: HEADER and DATA are")
+                    });
+                }
+                (_, "ENDSEC") => section = Section::None,
+                (_, "END-ISO-10303-21") => {
+                    self.cursor.skip_record();
+                    self.trailer();
+                    return if data { Ok(()) } else { Err("holds no DATA section".into()) };
+                }
+                (Section::Other, _) => {}
+                _ => {
+                    let shown = super::scalar::quoted(&keyword);
+                    self.problems.add("statement that is not understood", spot, || {
+                        format!("the statement {shown} is not read: records #1=… and sections are allowed here")
+                    });
+                }
+            }
+            self.cursor.skip_record();
+        }
+        if !data {
+            return Err("breaks off before its DATA section: the file is truncated".into());
+        }
+        let spot = self.spot();
+        self.problems.add("end that is missing", spot, || match section {
+            Section::None => "the file ends without END-ISO-10303-21; what may have followed is not read".into(),
+            _ => "the file breaks off: ENDSEC and END-ISO-10303-21 are missing, what followed is not read".into(),
+        });
+        Ok(())
+    }
+
+    fn trailer(&mut self) {
+        if self.cursor.peek().is_some() && !self.cursor.rest().starts_with(b"SIGNATURE") {
+            let spot = self.spot();
+            self.problems.add("text after the end", spot, || "what follows END-ISO-10303-21 is not read".into());
+        }
+    }
+
+    fn finish(mut self) -> Exchange {
+        if let Some((spot, count)) = self.latin1 {
+            self.problems.add("text that is not UTF-8", spot, || {
+                format!("texts with bytes that are not UTF-8, {count} from here on, are read as ISO 8859-1")
+            });
+        }
+        self.numbers.sort(); // of two with the same number the first comes first
+        for pair in self.numbers.chunk_by(|(a, _), (b, _)| a == b) {
+            for (number, id) in pair.iter().skip(1) {
+                let (at, spot) = (self.entities.get(pair[0].1).place(), self.entities.spot(*id));
+                self.problems.add("id given twice", spot, || {
+                    format!("the id #{number} is given a second time; references to it mean the one at {at}")
+                });
+            }
+        }
+        self.numbers.dedup_by_key(|(number, _)| *number);
+        let targets: Vec<Option<Id>> = self.references.iter().map(|(number, _)| self.target(*number)).collect();
+        for ((number, from), _) in self.references.iter().zip(&targets).filter(|(_, target)| target.is_none()) {
+            let entity = self.entities.get(*from);
+            self.problems.add("reference to nothing", entity.spot(), || {
+                format!("{} {} refers to #{number}, but no entity has that id", entity.class(), entity.label())
+            });
+        }
+        self.entities.values_mut().for_each(|value| waiting::settle(value, &targets));
+        conform::check(&self.entities, &mut self.problems);
+        Exchange {
+            form: format!("{} STEP", self.schema.name),
+            entities: self.entities,
+            problems: self.problems.finish(),
+        }
+    }
+
+    fn target(&self, number: u64) -> Option<Id> {
+        // numbers grow by one at least, so that none lies further on than its distance from the first
+        let first = self.numbers.first()?.0;
+        let last = usize::try_from(number.checked_sub(first)?).unwrap_or(usize::MAX);
+        match self.numbers.get(last) {
+            Some((same, id)) if *same == number => Some(*id),
+            _ => {
+                let among = &self.numbers[..last.min(self.numbers.len())];
+                among.binary_search_by_key(&number, |(number, _)| *number).ok().map(|index| among[index].1)
+            }
+        }
+    }
+}

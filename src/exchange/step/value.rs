@@ -1,0 +1,263 @@
+//! The values in a record, by the kinds that the schema asks for.
+
+use super::super::scalar::{self, quoted};
+use super::super::schema::{Base, Kind};
+use super::super::waiting::WAITING;
+use super::super::{Id, TypeName, Value};
+use super::Reader;
+use super::cursor::starts_record;
+use super::record::At;
+use super::text;
+
+/// How deep lists and typed values may nest; the schema asks for three at most.
+const DEEPEST: usize = 64;
+
+/// Why there is no value.
+enum Trouble {
+    /// The record cannot be followed any further.
+    Broken(String),
+    /// The value is not understood, but where it ends is.
+    Wrong(String),
+}
+
+type Read<T> = Result<T, Trouble>;
+
+impl Reader<'_> {
+    /// The value of an attribute; absent, with a problem, where it is not understood.
+    ///
+    /// # Errors
+    /// The record is broken here.
+    pub(super) fn attribute(&mut self, kind: Kind, at: At) -> Result<Value, String> {
+        match self.value(kind, at, 0) {
+            Ok(value) => Ok(value),
+            Err(Trouble::Broken(wrong)) => Err(wrong),
+            Err(Trouble::Wrong(wrong)) => {
+                self.note("value that is not understood", at, |named| format!("{named} {wrong}"));
+                Ok(Value::Absent)
+            }
+        }
+    }
+
+    fn value(&mut self, kind: Kind, at: At, level: usize) -> Read<Value> {
+        if level > DEEPEST {
+            return Err(Trouble::Broken(format!("nests values deeper than {DEEPEST}")));
+        }
+        let next = self.cursor.peek();
+        match next {
+            Some(b'(') => self.list(kind, at, level),
+            Some(b'$' | b'*') => {
+                self.cursor.at += 1;
+                Ok(Value::Absent)
+            }
+            None => Err(Trouble::Broken(self.unexpected("a value"))),
+            Some(_) if kind.depth > 0 => {
+                let value = self.value(Kind { depth: kind.depth - 1, ..kind }, at, level + 1)?;
+                if value == Value::Absent {
+                    return Ok(value);
+                }
+                self.note("single value for a list", at, |named| {
+                    format!("{named} is a single value, a list in ( ) is required; read as a list of one")
+                });
+                Ok(Value::List(vec![value]))
+            }
+            Some(b'#') => self.reference(at.id),
+            Some(b'\'') => self.text(kind.base, at),
+            Some(b'"') => self.binary(kind.base),
+            Some(b'a'..=b'z' | b'A'..=b'Z' | b'!') => self.typed(kind, at, level),
+            Some(_) => self.word(kind.base, at),
+        }
+    }
+
+    fn list(&mut self, kind: Kind, at: At, level: usize) -> Read<Value> {
+        self.cursor.at += 1;
+        let is_open = matches!(kind.base, Base::Any | Base::Select);
+        // a scalar's list is read to its end, so that the record can go on
+        let (inner, mut wrong) = match kind.depth {
+            0 if is_open => (kind, None),
+            0 => (Kind::ANY, Some("is a list, a single value is required".to_owned())),
+            depth => (Kind { depth: depth - 1, ..kind }, None),
+        };
+        let mut items = Vec::new();
+        let mut absent = false;
+        let mut is_first = true;
+        while !(is_first && self.cursor.eat(b')')) {
+            is_first = false;
+            match self.value(inner, at, level + 1) {
+                Ok(Value::Absent) => absent = true,
+                Ok(value) => items.push(value),
+                Err(Trouble::Wrong(what)) => wrong = wrong.or(Some(what)),
+                Err(broken) => return Err(broken),
+            }
+            if self.cursor.eat(b')') {
+                break;
+            }
+            if !self.cursor.eat(b',') {
+                return Err(Trouble::Broken(self.unexpected(", or )")));
+            }
+        }
+        if let Some(wrong) = wrong {
+            return Err(Trouble::Wrong(wrong));
+        }
+        if absent && matches!(kind.base, Base::Real | Base::Integer) {
+            return Err(Trouble::Wrong("has $ in a list of numbers".into())); // the others would change their places
+        }
+        if absent {
+            self.note("list with gaps", at, |named| format!("{named} has $ in its list; the others are read"));
+        }
+        let row = usize::from(kind.row);
+        if kind.depth == 1 && row > 0 && items.len() != row {
+            return Err(Trouble::Wrong(format!("has a row of {} values, but rows of {row} are required", items.len())));
+        }
+        items.shrink_to_fit(); // most memory goes into short lists
+        Ok(Value::List(items))
+    }
+
+    fn reference(&mut self, from: Id) -> Read<Value> {
+        if starts_record(self.cursor.rest()) {
+            return Err(Trouble::Broken(self.unexpected("a value")));
+        }
+        self.cursor.at += 1;
+        let digits = String::from_utf8_lossy(self.cursor.word());
+        let number = digits.parse().ok().filter(|_| digits.bytes().all(|b| b.is_ascii_digit()));
+        let Some(number) = number else {
+            let shown = quoted(&format!("#{digits}"));
+            return Err(Trouble::Wrong(format!("refers to {shown}, which is no id")));
+        };
+        self.references.push((number, from));
+        Ok(Value::Entity(Id(WAITING + (self.references.len() - 1) as u32)))
+    }
+
+    fn text(&mut self, base: Base, at: At) -> Read<Value> {
+        let raw = self.cursor.string().map_err(Trouble::Broken)?;
+        let decoded = text::decode(raw);
+        if decoded.is_latin1 {
+            self.latin1.get_or_insert((at.spot, 0)).1 += 1;
+        }
+        if let Some(wrong) = decoded.wrong {
+            self.note("escape that is not understood", at, |named| format!("{named} {wrong}"));
+        }
+        match base {
+            Base::Text | Base::Any => {}
+            Base::Select => self.untyped(at),
+            _ => return Err(Trouble::Wrong(format!("is the text {}, {}", quoted(&decoded.text), required(base)))),
+        }
+        Ok(Value::Text(decoded.text.into()))
+    }
+
+    /// A binary literal, kept as its digits.
+    fn binary(&mut self, base: Base) -> Read<Value> {
+        self.cursor.at += 1;
+        let digits = self.cursor.take_while(|b| b.is_ascii_hexdigit());
+        if !self.cursor.eat(b'"') {
+            return Err(Trouble::Broken(self.unexpected("the end of a binary")));
+        }
+        let digits = String::from_utf8_lossy(digits);
+        match base {
+            Base::Binary | Base::Any | Base::Select => Ok(Value::Text(digits.into())),
+            _ => Err(Trouble::Wrong(format!("is the binary {}, {}", quoted(&digits), required(base)))),
+        }
+    }
+
+    /// `IFCLABEL('x')`; the type is kept only where the schema leaves a choice.
+    fn typed(&mut self, kind: Kind, at: At, level: usize) -> Read<Value> {
+        let start = self.cursor.at;
+        let name = String::from_utf8_lossy(self.cursor.keyword());
+        if !self.cursor.eat(b'(') {
+            self.cursor.at = start;
+            return self.word(kind.base, at);
+        }
+        let found = self.schema.find_type(&name);
+        let inner = found.as_ref().map_or(Kind::ANY, |(_, kind)| *kind);
+        let value = self.value(inner, at, level + 1);
+        if let Err(Trouble::Broken(_)) = value {
+            return value;
+        }
+        if !self.cursor.eat(b')') {
+            return Err(Trouble::Broken(self.unexpected(") after a typed value")));
+        }
+        let value = value?;
+        // types that are enumerations are not in the tables; only they hold tokens
+        if found.is_none() && !matches!(value, Value::Token(_) | Value::Truth(_)) {
+            return Err(Trouble::Wrong(format!("holds {name}, which is no type of the schema")));
+        }
+        if value == Value::Absent || !matches!(kind.base, Base::Select | Base::Any) {
+            return self.unwrapped(kind.base, value);
+        }
+        let name = found.map_or_else(|| TypeName::from(&*name), |(name, _)| name);
+        Ok(Value::Typed(name, value.into()))
+    }
+
+    /// The value of a type where the schema leaves no choice of types.
+    fn unwrapped(&mut self, base: Base, value: Value) -> Read<Value> {
+        match (base, value) {
+            (Base::Real, Value::Integer(integer)) => Ok(Value::Number(integer as f64)),
+            (_, Value::Absent) => Ok(Value::Absent),
+            (Base::Text | Base::Binary, value @ Value::Text(_))
+            | (Base::Real, value @ Value::Number(_))
+            | (Base::Integer, value @ Value::Integer(_))
+            | (Base::Boolean | Base::Logical, value @ Value::Truth(_))
+            | (Base::Logical | Base::Token, value @ Value::Token(_)) => Ok(value),
+            _ => Err(Trouble::Wrong(format!("is a typed value of another kind, {}", required(base)))),
+        }
+    }
+
+    /// A number, or a token between dots.
+    fn word(&mut self, base: Base, at: At) -> Read<Value> {
+        let start = self.cursor.at;
+        let word = String::from_utf8_lossy(self.cursor.word());
+        if word.is_empty() && !matches!(self.cursor.peek(), Some(b',' | b')')) {
+            self.cursor.at = start;
+            return Err(Trouble::Broken(self.unexpected("a value")));
+        }
+        let is_token = word.len() > 2 && word.starts_with('.') && word.ends_with('.');
+        let plain = Kind::one(base);
+        let value = match base {
+            Base::Any | Base::Select => {
+                let value = open(&word);
+                if base == Base::Select && value.is_ok() {
+                    self.untyped(at);
+                }
+                value
+            }
+            Base::Real | Base::Integer => scalar::parse(plain, &word),
+            Base::Boolean | Base::Logical | Base::Token if is_token => scalar::parse(plain, &word),
+            _ => Err(format!("is {}, {}", quoted(&word), required(base))),
+        };
+        value.map_err(Trouble::Wrong)
+    }
+
+    fn untyped(&mut self, at: At) {
+        self.note("value without a type", at, |named| {
+            format!("{named} holds a bare value; a type such as IFCLABEL('…') is required around it")
+        });
+    }
+}
+
+/// The value of a word where the schema does not say of which kind it is.
+fn open(word: &str) -> Result<Value, String> {
+    match word {
+        ".T." | ".t." => return Ok(Value::Truth(true)),
+        ".F." | ".f." => return Ok(Value::Truth(false)),
+        _ if word.len() > 2 && word.starts_with('.') && word.ends_with('.') => {
+            return scalar::parse(Kind::one(Base::Token), word);
+        }
+        _ => {}
+    }
+    match word.parse() {
+        Ok(integer) => Ok(Value::Integer(integer)),
+        Err(_) => scalar::parse(Kind::one(Base::Real), word),
+    }
+}
+
+fn required(base: Base) -> &'static str {
+    match base {
+        Base::Text => "a text in quotes is required",
+        Base::Real => "a number is required",
+        Base::Integer => "an integer is required",
+        Base::Boolean | Base::Logical => ".T. or .F. is required",
+        Base::Token => "an enumeration item between dots is required",
+        Base::Binary => "a binary in double quotes is required",
+        Base::Entity(_) => "an entity #1 is required",
+        Base::Select | Base::Any => "a value is required",
+    }
+}
