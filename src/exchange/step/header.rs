@@ -1,9 +1,9 @@
 //! Which schema the header names.
 
+use super::super::Entities;
 use super::super::problems::Spot;
 use super::super::scalar::quoted;
 use super::super::schema::Schema;
-use super::super::Entities;
 use super::{Reader, text};
 
 impl Reader<'_> {
