@@ -1,7 +1,10 @@
 //! Reading an exchange: the same graph from every way of writing it, and a place for what is not understood.
 
+mod archive;
+mod dialects;
 mod forms;
 mod hostile;
+mod part28;
 mod problems;
 mod step;
 mod unreadable;

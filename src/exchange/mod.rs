@@ -1,5 +1,6 @@
 //! Reads an exchange, of whatever form, into one entity graph. The only room that knows IFC syntax.
 
+mod archive;
 mod conform;
 mod entity;
 mod graph;
@@ -14,6 +15,8 @@ mod waiting;
 
 pub use entity::{Entity, Id, TypeName, Value};
 pub use graph::Entities;
+
+use std::sync::Arc;
 
 use crate::origin::Problem;
 
@@ -38,17 +41,34 @@ pub struct Unreadable {
     pub reason: String,
 }
 
-/// Reads an exchange from its bytes; `file` is only used to name places.
+/// Reads an exchange from its bytes; `file` is only used to name places. What lies in an archive has places such as
+/// "archive.ifczip/model.ifc:3:1".
 ///
 /// # Errors
-/// [`Unreadable`] where the bytes are no exchange: empty, truncated, neither ifcXML nor STEP, a DTD inside.
+/// [`Unreadable`] where the bytes are no exchange: empty, truncated, neither ifcXML nor STEP, a DTD inside, an archive
+/// without exactly one model.
 pub fn read(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
-    let name: std::sync::Arc<str> = file.into();
+    if !archive::is_archive(bytes) {
+        return read_plain(bytes, file);
+    }
+    let mut problems = problems::Problems::new(file.into());
+    let (member, model) = archive::model(bytes, &mut problems).map_err(|reason| unreadable(file, &reason))?;
+    let mut exchange = read_plain(&model, &format!("{file}/{member}"))?;
+    exchange.problems.splice(..0, problems.finish());
+    Ok(exchange)
+}
+
+fn read_plain(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
+    let name: Arc<str> = file.into();
     let mut problems = problems::Problems::new(name.clone());
     sniff::decode(bytes, &mut problems)
         .and_then(|text| match sniff::is_step(&text) {
             true => step::read(&text, problems, name),
-            false => ifcxml::read(&text, problems, Entities::new(schema::Schema::ifc4(), name)),
+            false => ifcxml::read(&text, problems, name),
         })
-        .map_err(|reason| Unreadable { file: file.to_owned(), reason: format!("the file {reason}") })
+        .map_err(|reason| unreadable(file, &reason))
+}
+
+fn unreadable(file: &str, reason: &str) -> Unreadable {
+    Unreadable { file: file.to_owned(), reason: format!("the file {reason}") }
 }

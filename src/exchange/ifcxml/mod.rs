@@ -1,22 +1,27 @@
-//! ifcXML of IFC4: a stream of elements into the entity graph.
+//! ifcXML of every version: a stream of elements into the entity graph.
 //!
 //! Elements alternate between an entity and its attributes. An attribute's element either *is* the entity
 //! (`<Location Coordinates="0 0 0"/>`) or holds entities and wrapped values (`<Items><IfcExtrudedAreaSolid/></Items>`);
-//! which of the two is told by its XML attributes or, failing those, by its first child.
+//! which of the two is told by its XML attributes or, failing those, by its first child. ISO 10303-28 as IFC2X3 uses it
+//! has the second form only and plain values as elements too, so that it needs nothing but a document of its own.
 
+mod dialect;
 mod head;
 mod parser;
 mod resolve;
 mod slot;
 
+use std::sync::Arc;
+
 use quick_xml::Reader;
 use quick_xml::errors::Error;
 use quick_xml::events::Event;
 
+use self::dialect::{Around, Dialect};
 use self::head::Head;
 use self::parser::Parser;
+use super::Exchange;
 use super::problems::{Problems, Ruler, Spot};
-use super::{Entities, Exchange};
 
 /// How deep elements may nest; what lies deeper is not read, and a problem says so. Shop models stay below 200.
 const DEEPEST: usize = 1000;
@@ -25,12 +30,13 @@ const DEEPEST: usize = 1000;
 ///
 /// # Errors
 /// Why it is no ifcXML at all, in one sentence.
-pub(super) fn read(bytes: &[u8], problems: Problems, entities: Entities) -> Result<Exchange, String> {
+pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<Exchange, String> {
     let mut xml = Reader::from_reader(bytes);
     xml.config_mut().allow_dangling_amp = true; // one badly written name must not lose the file
     let mut ruler = Ruler::new(bytes);
-    let mut parser = Parser::new(entities, problems);
-    let mut form = None;
+    let mut parser = Parser::new(file, problems);
+    let mut dialect = Dialect::default();
+    let mut started = false;
     loop {
         let offset = xml.buffer_position() as usize;
         let event = match xml.read_event() {
@@ -42,17 +48,20 @@ pub(super) fn read(bytes: &[u8], problems: Problems, entities: Entities) -> Resu
         };
         if let Event::Eof = event {
             let spot = ruler.spot(bytes.len());
-            return match form {
-                Some(_) if !parser.is_done() => Err(format!(
+            if started && !parser.is_done() {
+                return Err(format!(
                     "breaks off at line {}, column {}: an element is not closed, the file is truncated",
                     spot.line, spot.column
-                )),
+                ));
+            }
+            return match dialect.form {
                 Some(form) => Ok(resolve::resolve(parser, form)),
+                None if started => Err("is ifcXML by ISO 10303-28 without a uos, which would hold the entities".into()),
                 None => Err("holds no XML element".into()),
             };
         }
         let spot = if parser.is_skipping() { Spot::default() } else { ruler.spot(offset) };
-        let done = form.is_some() && parser.is_done();
+        let done = started && parser.is_done();
         match event {
             Event::Start(_) | Event::Empty(_) if done => {
                 let spot = ruler.spot(offset);
@@ -61,9 +70,13 @@ pub(super) fn read(bytes: &[u8], problems: Problems, entities: Entities) -> Resu
             Event::Start(_) if parser.is_skipping() => parser.skip(),
             Event::Empty(_) if parser.is_skipping() => {}
             Event::Start(ref start) | Event::Empty(ref start) => {
-                if form.is_none() {
-                    form = Some(super::sniff::ifcxml_form(start, spot, &mut parser.problems)?);
-                    parser.start_document();
+                if !parser.is_in_document() {
+                    match dialect.start(start, !started, spot, &mut parser.problems)? {
+                        Around::Envelope => parser.start_envelope(),
+                        Around::Entities(schema) => parser.start_document(schema),
+                        Around::Other => parser.skip(),
+                    }
+                    started = true;
                 } else {
                     let head = Head::read(start, spot, &mut parser.problems).map_err(|error| {
                         format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)

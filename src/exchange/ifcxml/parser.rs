@@ -1,6 +1,7 @@
 //! What each element means: an entity, an attribute of one, an item of a list, or nothing known.
 
 use std::borrow::Cow;
+use std::sync::Arc;
 
 use super::super::labels::Labels;
 use super::super::problems::{Problems, Spot};
@@ -14,6 +15,8 @@ use super::slot::{Slot, Target, stray_text, untyped};
 
 /// What an open element is.
 enum Frame {
+    /// Around documents.
+    Envelope,
     Document,
     Entity(Open),
     Slot(Slot),
@@ -54,10 +57,11 @@ pub(super) struct Parser {
 }
 
 impl Parser {
-    pub fn new(entities: Entities, problems: Problems) -> Self {
+    pub fn new(file: Arc<str>, problems: Problems) -> Self {
+        let schema = Schema::ifc4(); // until the document says which
         Self {
-            schema: Schema::ifc4(),
-            entities,
+            schema,
+            entities: Entities::new(schema, file),
             labels: Labels::default(),
             waiting: Vec::new(),
             links: Vec::new(),
@@ -82,8 +86,22 @@ impl Parser {
         self.stack.is_empty() && self.skipping == 0
     }
 
-    /// The document element starts.
-    pub fn start_document(&mut self) {
+    /// Whether an element that holds the entities is open.
+    pub fn is_in_document(&self) -> bool {
+        !matches!(self.stack.last(), None | Some(Frame::Envelope))
+    }
+
+    /// An element starts that holds those that hold the entities.
+    pub fn start_envelope(&mut self) {
+        self.stack.push(Frame::Envelope);
+    }
+
+    /// An element starts that holds the entities; all that are started have one schema.
+    pub fn start_document(&mut self, schema: &'static Schema) {
+        if self.entities.is_empty() {
+            self.schema = schema;
+            self.entities = Entities::new(schema, self.entities.file());
+        }
         self.stack.push(Frame::Document);
     }
 
@@ -105,7 +123,7 @@ impl Parser {
                     self.start_attribute(head, class);
                 }
                 Some(Frame::Slot(_)) => self.start_in_slot(head),
-                Some(Frame::Document) | None => self.start_in_document(head),
+                Some(Frame::Document | Frame::Envelope) | None => self.start_in_document(head),
             }
         }
     }
@@ -346,7 +364,9 @@ impl Parser {
             Some(Frame::Entity(open)) => {
                 stray_text(&text, self.entities.class_name(open.class), spot, &mut self.problems);
             }
-            Some(Frame::Document) | None => stray_text(&text, "the document", spot, &mut self.problems),
+            Some(Frame::Document | Frame::Envelope) | None => {
+                stray_text(&text, "the document", spot, &mut self.problems)
+            }
         }
     }
 
@@ -362,7 +382,7 @@ impl Parser {
                 let value = slot.value(&mut self.problems);
                 self.deliver(slot.target, slot.kind, slot.pos, value, slot.spot);
             }
-            Some(Frame::Document) | None => {}
+            Some(Frame::Document | Frame::Envelope) | None => {}
         }
     }
 
