@@ -2,7 +2,6 @@
 
 use super::properties::Property;
 use super::reading::Reading;
-use super::words::{Word, says};
 use crate::exchange::Entity;
 use crate::origin::{Datum, Known, Missing, Origin, Place};
 use crate::rulebook::Grade;
@@ -73,7 +72,7 @@ impl<'a> Reading<'a> {
             })
         };
         let mut texts = self.material_texts(element).into_iter();
-        texts.find(|said| says(&said.text, Word::NoSteel) || concrete(&said.text)).map(|said| said.text)
+        texts.find(|said| self.rulebook.says("no-steel", &said.text) || concrete(&said.text)).map(|said| said.text)
     }
 
     /// The steel grade of a part, from its materials and its properties; never from other parts.

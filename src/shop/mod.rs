@@ -3,14 +3,19 @@
 //! All lengths are mm, in one right-handed world frame with z up; [`Steelwork::origin`] has been taken off, so that
 //! coordinates of a map grid lose no digits.
 
+mod body;
 mod bolt;
 mod bolt_name;
 mod curve;
+mod faces;
+mod hardware;
 mod material;
 mod member;
+mod mesh;
 mod outline;
 mod placement;
 mod plate;
+mod polyhedron;
 mod profile;
 mod properties;
 mod reading;
@@ -19,6 +24,7 @@ mod section;
 mod shank;
 mod solid;
 mod statement;
+mod sweep;
 mod take_up;
 mod units;
 mod weld;
@@ -176,6 +182,10 @@ pub struct Bolt {
     pub class: Known<String>,
     /// Hole diameter as stated by a property.
     pub hole: Option<Length>,
+    /// Overall length of a slotted hole as stated by a property.
+    pub slot: Option<Length>,
+    /// Whether it is an anchor: it ends in concrete, and holds no two parts of the steelwork together.
+    pub anchor: bool,
 }
 
 /// What sort of weld.

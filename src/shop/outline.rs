@@ -128,6 +128,14 @@ impl Loop {
         neighbours(&self.points).all(|(before, at, after)| (at - before).perp_dot(after - at) >= -1e-6)
     }
 
+    /// Whether it contains a point (even-odd rule).
+    pub fn holds(&self, point: DVec2) -> bool {
+        let crossed = |(a, b, _): &(DVec2, DVec2, DVec2)| {
+            (b.y > point.y) != (a.y > point.y) && point.x < (a.x - b.x) * (point.y - b.y) / (a.y - b.y) + b.x
+        };
+        neighbours(&self.points).filter(crossed).count() % 2 == 1
+    }
+
     /// The parts of the line `at + t·along` inside the loop, as intervals of t in rising order.
     pub fn chords(&self, at: DVec2, along: DVec2) -> Vec<(f64, f64)> {
         let side = |p: DVec2| along.perp_dot(p - at);

@@ -1,0 +1,343 @@
+//! Tells what a body bounded by faces is: a right prism, several on one axis (a bolt), a plate with worked edges, a
+//! member with cut ends, or something long that is no straight prism of one section.
+//!
+//! All is asked of levels and sections along a few likely axes, so that it does not matter how an export cut the
+//! faces up, or which way they look.
+
+use glam::{DAffine3, DMat3, DVec2, DVec3};
+
+use super::mesh::{Mesh, Slice};
+use super::outline::Loop;
+use super::profile::{Kind, Profile};
+use super::solid::{Cut, Prism, Solid};
+use crate::origin::Place;
+
+/// Points this near along an axis are at one level, mm.
+const LEVEL: f64 = 0.1;
+/// The largest turned part (a bolt's head, a nut), mm.
+const TURNED: f64 = 150.0;
+/// Only the longest lengths between levels are looked at.
+const LENGTHS: usize = 24;
+/// Only so many of the longest edges and largest faces are asked for a direction.
+const ASKED: usize = 4096;
+/// Directions within this are one (a sine).
+const PARALLEL: f64 = 1e-3;
+/// A plate is at most this share of its width thick, as for any prism.
+const FLAT: f64 = 0.5;
+/// A member shows its section over at least this share of its length.
+const CONSTANT: f64 = 0.5;
+/// What is longer than this times its other sides is long.
+const LONG: f64 = 2.0;
+/// A changed section no longer than this between the ends is a bolt hole, mm.
+const BOLT_HOLE: f64 = 100.0;
+
+/// Who asks, for the profiles that come out.
+pub(super) struct Asked<'a> {
+    pub class: &'a str,
+    pub place: Place,
+}
+
+/// The levels of a mesh along an axis.
+struct Levels<'m> {
+    mesh: &'m Mesh,
+    axis: DVec3,
+    x: DVec3,
+    y: DVec3,
+    /// Levels in rising order, mm.
+    at: Vec<f64>,
+}
+
+/// A length between two levels, with its section.
+struct Stretch {
+    from: f64,
+    to: f64,
+    slice: Option<Slice>,
+}
+
+impl Asked<'_> {
+    /// The solids that a mesh is.
+    pub fn solids(&self, mesh: Mesh) -> Vec<Solid> {
+        let bodies = mesh.bodies();
+        if bodies.is_empty() {
+            return vec![Err(format!("its body has no faces ({})", self.class))];
+        }
+        bodies.iter().flat_map(|body| self.body(body)).collect()
+    }
+
+    fn body(&self, mesh: &Mesh) -> Vec<Solid> {
+        let (faces, edges) = directions(mesh);
+        let mut axes: Vec<DVec3> = Vec::new();
+        for axis in faces.iter().take(3).chain(edges.iter().take(5)) {
+            if !axes.iter().any(|other| other.cross(*axis).length() <= PARALLEL) {
+                axes.push(*axis);
+            }
+        }
+        let all: Vec<Levels<'_>> = axes.iter().map(|axis| Levels::of(mesh, *axis)).collect();
+        let pure = all
+            .iter()
+            .filter_map(|levels| Some((levels.pure()?, levels)))
+            .max_by(|a, b| a.1.depth().total_cmp(&b.1.depth()));
+        if let Some((slice, levels)) = pure {
+            return vec![Ok(self.prism(levels, slice, levels.low(), levels.high()))];
+        }
+        let along = edges
+            .first()
+            .or(faces.first())
+            .and_then(|axis| all.iter().find(|l| l.axis.cross(*axis).length() <= PARALLEL));
+        if let Some(turned) = along.and_then(|levels| self.turned(levels)) {
+            return turned.into_iter().map(Ok).collect();
+        }
+        if let Some(plate) = all.iter().find_map(|levels| self.plate(levels)) {
+            return vec![Ok(plate)];
+        }
+        vec![along.and_then(|levels| self.member(levels)).map_or_else(|| self.stand_in(mesh, along), Ok)]
+    }
+
+    fn prism(&self, levels: &Levels<'_>, slice: Slice, from: f64, to: f64) -> Prism {
+        let frame = DMat3::from_cols(levels.x, levels.y, levels.axis);
+        let hollow = slice.voids.len() == 1 && slice.voids[0].area() > 0.5 * slice.outer.area();
+        Prism {
+            profile: Profile {
+                class: self.class.to_owned(),
+                name: None,
+                kind: if hollow { Kind::Hollow } else { Kind::Outline },
+                outer: slice.outer,
+                voids: slice.voids,
+                up: DVec2::Y,
+                several: 1,
+                place: self.place.clone(),
+            },
+            frame: DAffine3::from_mat3_translation(frame, levels.axis * from),
+            depth: to - from,
+            cuts: Vec::new(),
+            beyond: None,
+        }
+    }
+
+    /// Round and hexagonal prisms on one axis: a bolt with head and nut in one body, a nut with a collar.
+    fn turned(&self, levels: &Levels<'_>) -> Option<Vec<Prism>> {
+        let stretches = levels.stretches()?;
+        let slices: Vec<&Slice> = stretches.iter().filter_map(|s| s.slice.as_ref()).collect();
+        let first = slices.first()?.outer.box_along(DVec2::X).centre;
+        let small = |s: &&Slice| {
+            let bounds = s.outer.box_along(DVec2::X);
+            s.beside == 0 && bounds.size.max_element() <= TURNED && bounds.centre.distance(first) <= 1.0
+        };
+        let round = |s: &&Slice| s.outer.circle.is_some() || (s.outer.points.len() == 6 && s.outer.convex());
+        if slices.len() < stretches.len() || !slices.iter().all(small) || !slices.iter().any(round) {
+            return None;
+        }
+        let mut prisms: Vec<(f64, f64, Slice)> = Vec::new();
+        for Stretch { from, to, slice } in stretches {
+            let slice = slice?;
+            match prisms.last_mut() {
+                Some((_, end, last)) if last.same(&slice) => *end = to,
+                _ => prisms.push((from, to, slice)),
+            }
+        }
+        Some(prisms.into_iter().map(|(from, to, slice)| self.prism(levels, slice, from, to)).collect())
+    }
+
+    /// A plate whose edges are bevelled or whose holes are countersunk: nearly one section through a small thickness.
+    fn plate(&self, levels: &Levels<'_>) -> Option<Prism> {
+        let [low, middle, high] = [0.03, 0.5, 0.97].map(|share| levels.slice(levels.low() + share * levels.depth()));
+        let (low, middle, high) = (low?, middle?, high?);
+        let bounds = middle.outer.least_box(DVec2::X).size;
+        let alike = |s: &Slice| (s.area() - middle.area()).abs() <= 0.15 * middle.area() && s.beside == 0;
+        if !(levels.depth() <= FLAT * bounds.min_element() && middle.beside == 0 && alike(&low) && alike(&high)) {
+            return None;
+        }
+        let mut prism = self.prism(levels, middle, levels.low(), levels.high());
+        prism.cuts.push(Cut::Trim(
+            "its faces differ (bevelled edges, countersunk or blind holes): taken at mid-thickness".into(),
+        ));
+        Some(prism)
+    }
+
+    /// A prism that is cut at its ends or has holes: one section over most of its length.
+    fn member(&self, levels: &Levels<'_>) -> Option<Prism> {
+        let stretches = levels.stretches()?;
+        let longest = stretches.iter().max_by(|a, b| (a.to - a.from).total_cmp(&(b.to - b.from)))?;
+        let main = longest.slice.clone().filter(|s| s.beside == 0)?;
+        let ends = [0.05, 0.95].map(|share| levels.slice(longest.from + share * (longest.to - longest.from)));
+        if !ends.iter().all(|end| end.as_ref().is_some_and(|end| end.same(&main))) {
+            return None;
+        }
+        let same = |s: &&Stretch| s.slice.as_ref().is_some_and(|slice| slice.same(&main));
+        let constant: f64 = stretches.iter().filter(same).map(|s| s.to - s.from).sum();
+        if !(constant >= CONSTANT * levels.depth()
+            && levels.depth() >= main.outer.box_along(DVec2::X).size.max_element())
+        {
+            return None;
+        }
+        let first = stretches.iter().find(same).map_or(levels.low(), |s| s.from);
+        let last = stretches.iter().rev().find(same).map_or(levels.high(), |s| s.to);
+        let mut prism = self.prism(levels, main.clone(), levels.low(), levels.high());
+        for (length, end) in [(first - levels.low(), "one end"), (levels.high() - last, "the other end")] {
+            if length > LEVEL {
+                prism.cuts.push(Cut::Trim(format!(
+                    "its section is cut over {length:.1} mm at {end} (a mitre, cope or notch) that is not taken into account"
+                )));
+            }
+        }
+        let mut open: Option<f64> = None;
+        for stretch in stretches.iter().filter(|s| s.from >= first && s.to <= last) {
+            if same(&stretch) {
+                let length = open.take().map_or(0.0, |from| stretch.from - from);
+                if length > BOLT_HOLE {
+                    prism.cuts.push(Cut::Trim(format!(
+                        "its section changes over {length:.1} mm between its ends (an opening or a slot) that is not taken into account"
+                    )));
+                }
+            } else {
+                open = open.or(Some(stretch.from));
+            }
+        }
+        Some(prism)
+    }
+
+    /// Something long that is no straight prism of one section; an error if it is not even long.
+    fn stand_in(&self, mesh: &Mesh, along: Option<&Levels<'_>>) -> Solid {
+        let tapers = along.and_then(|levels| {
+            let [one, other] = [0.1, 0.9].map(|share| levels.slice(levels.low() + share * levels.depth()));
+            let (a, b) = (one?.outer.box_along(DVec2::X).size, other?.outer.box_along(DVec2::X).size);
+            let named =
+                format!("tapered: {:.0} x {:.0} mm near one end, {:.0} x {:.0} mm near the other", a.x, a.y, b.x, b.y);
+            (levels.at.len() == 2).then_some(named)
+        });
+        let first = mesh.points.first().copied().unwrap_or_default();
+        let far = |from: DVec3| {
+            let distance = |p: &&DVec3| p.distance_squared(from);
+            mesh.points.iter().max_by(|a, b| distance(a).total_cmp(&distance(b))).copied().unwrap_or_default()
+        };
+        let one = far(first);
+        let chord = along.filter(|_| tapers.is_some()).map_or_else(|| (far(one) - one).normalize_or_zero(), |l| l.axis);
+        let levels = Levels::of(mesh, chord);
+        let flat = |p: &DVec3| DVec2::new(p.dot(levels.x), p.dot(levels.y));
+        let (mut low, mut high) = (DVec2::INFINITY, DVec2::NEG_INFINITY);
+        for p in mesh.points.iter().map(flat) {
+            low = low.min(p);
+            high = high.max(p);
+        }
+        let size = high - low;
+        if !(levels.depth() >= LONG * size.max_element() && size.min_element() > 0.0) {
+            return Err(format!("its body is neither a prism nor long ({} of {} faces)", self.class, mesh.faces.len()));
+        }
+        let corners = vec![low, DVec2::new(high.x, low.y), high, DVec2::new(low.x, high.y)];
+        let slice = Slice { outer: Loop::new(corners)?, voids: Vec::new(), beside: 0 };
+        let mut prism = self.prism(&levels, slice, levels.low(), levels.high());
+        prism.profile.kind = Kind::Boxed;
+        prism.beyond = Some(
+            tapers.unwrap_or_else(|| "its faces show no straight prism of one section (curved or built up)".into()),
+        );
+        Ok(prism)
+    }
+}
+
+impl<'m> Levels<'m> {
+    fn of(mesh: &'m Mesh, axis: DVec3) -> Self {
+        // Towards the axis of the world that it is nearest to, so that the sign does not depend on the faces' order.
+        let most = axis.to_array().into_iter().max_by(|a, b| a.abs().total_cmp(&b.abs())).unwrap_or(1.0);
+        let axis = if most < 0.0 { -axis } else { axis };
+        let beside =
+            [DVec3::X, DVec3::Y, DVec3::Z].into_iter().min_by(|a, b| a.dot(axis).abs().total_cmp(&b.dot(axis).abs()));
+        let x = beside.unwrap_or(DVec3::X).reject_from(axis).normalize_or(DVec3::X);
+        let mut all: Vec<f64> = mesh.points.iter().map(|p| p.dot(axis)).collect();
+        all.sort_by(f64::total_cmp);
+        let mut at = Vec::new();
+        for one in all.chunk_by(|a, b| b - a <= LEVEL) {
+            let (Some(low), Some(high)) = (one.first(), one.last()) else { continue };
+            // Points that follow each other closely over a length are no level.
+            if high - low <= 2.0 * LEVEL { at.push((low + high) / 2.0) } else { at.extend([low, high]) }
+        }
+        Self { mesh, axis, x, y: axis.cross(x), at }
+    }
+
+    fn low(&self) -> f64 {
+        self.at.first().copied().unwrap_or_default()
+    }
+
+    fn high(&self) -> f64 {
+        self.at.last().copied().unwrap_or_default()
+    }
+
+    fn depth(&self) -> f64 {
+        self.high() - self.low()
+    }
+
+    fn slice(&self, level: f64) -> Option<Slice> {
+        self.mesh.slice(self.axis, level, self.x, self.y)
+    }
+
+    /// The section, if the mesh is a right prism along the axis and nothing else.
+    fn pure(&self) -> Option<Slice> {
+        let [low, high] = *self.at.as_slice() else { return None };
+        let [one, middle, other] = [0.1, 0.5, 0.9].map(|share| self.slice(low + share * (high - low)));
+        let (one, middle, other) = (one?, middle?, other?);
+        (middle.beside == 0 && one.same(&middle) && other.same(&middle)).then_some(middle)
+    }
+
+    /// The lengths between levels in rising order, the longest ones with their sections. `None` if there are very many.
+    fn stretches(&self) -> Option<Vec<Stretch>> {
+        let mut lengths: Vec<f64> = self.at.windows(2).map(|w| w[1] - w[0]).collect();
+        lengths.sort_by(|a, b| b.total_cmp(a));
+        let least = lengths.get(LENGTHS).copied().unwrap_or(f64::NEG_INFINITY);
+        let whole: f64 = lengths.iter().take(LENGTHS).sum();
+        if !(whole >= CONSTANT * self.depth()) {
+            return None;
+        }
+        let stretch = |w: &[f64]| Stretch {
+            from: w[0],
+            to: w[1],
+            slice: if w[1] - w[0] > least { self.slice((w[0] + w[1]) / 2.0) } else { None },
+        };
+        Some(self.at.windows(2).map(stretch).collect())
+    }
+}
+
+/// The directions of a mesh's faces by area and of its edges by length, the most first.
+fn directions(mesh: &Mesh) -> (Vec<DVec3>, Vec<DVec3>) {
+    use std::collections::HashMap;
+    let normals: Vec<DVec3> =
+        mesh.faces.iter().map(|face| face.loops.first().map_or(DVec3::ZERO, |l| area(mesh, l))).collect();
+    let mut first_face: HashMap<(u32, u32), usize> = HashMap::new();
+    let mut edges: Vec<DVec3> = Vec::new();
+    for (i, face) in mesh.faces.iter().enumerate() {
+        for corners in &face.loops {
+            for (a, b) in corners.iter().zip(corners.iter().cycle().skip(1)) {
+                let key = (*a.min(b), *a.max(b));
+                let Some(other) = first_face.insert(key, i) else { continue };
+                // Faces in one plane meet in no edge of the body: the diagonals of a triangulation.
+                let (m, n) = (normals[other].normalize_or_zero(), normals[i].normalize_or_zero());
+                if !(m.dot(n).abs() > 1.0 - 1e-6) {
+                    edges.push(mesh.points[*b as usize] - mesh.points[*a as usize]);
+                }
+            }
+        }
+    }
+    (most(normals), most(edges))
+}
+
+/// Unit directions of vectors that lie on one line, by the sum of their lengths.
+fn most(mut vectors: Vec<DVec3>) -> Vec<DVec3> {
+    vectors.sort_by(|a, b| b.length_squared().total_cmp(&a.length_squared()));
+    let mut sums: Vec<(DVec3, f64)> = Vec::new();
+    for vector in vectors.into_iter().take(ASKED) {
+        let Some(unit) = vector.try_normalize() else { continue };
+        match sums.iter().position(|(other, _)| other.cross(unit).length() <= PARALLEL) {
+            Some(known) => sums[known].1 += vector.length(),
+            None if sums.len() < 64 => sums.push((unit, vector.length())),
+            None => {}
+        }
+    }
+    sums.sort_by(|a, b| b.1.total_cmp(&a.1));
+    sums.into_iter().map(|(unit, _)| unit).collect()
+}
+
+/// Newell's vector of a loop: its normal, as long as its area.
+fn area(mesh: &Mesh, corners: &[u32]) -> DVec3 {
+    let Some(first) = corners.first().map(|i| mesh.points[*i as usize]) else { return DVec3::ZERO };
+    let after = corners.iter().cycle().skip(1);
+    let from = |i: &u32| mesh.points[*i as usize] - first;
+    corners.iter().zip(after).map(|(a, b)| from(a).cross(from(b))).sum::<DVec3>() / 2.0
+}
