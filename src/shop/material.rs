@@ -1,5 +1,6 @@
 //! Materials of a part and the steel grade that they name.
 
+use super::profile::Profile;
 use super::properties::Property;
 use super::reading::Reading;
 use crate::exchange::Entity;
@@ -45,6 +46,19 @@ impl<'a> Reading<'a> {
             });
         }
         names
+    }
+
+    /// The profiles that a material profile set gives to the section.
+    pub fn material_profiles(&self, element: Entity<'a>) -> Vec<Profile> {
+        let mut profiles = Vec::new();
+        for definition in self.materials_of(element) {
+            gather(definition, 0, &mut |e| {
+                if e.is_a("IfcMaterialProfile") {
+                    profiles.extend(e.entity("Profile").and_then(|p| self.profile(p).ok()));
+                }
+            });
+        }
+        profiles
     }
 
     /// What a part's materials are called.

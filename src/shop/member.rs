@@ -2,6 +2,7 @@
 
 use glam::{DVec2, DVec3};
 
+use super::profile::Kind;
 use super::reading::Reading;
 use super::section::{Seen, see};
 use super::solid::{Cut, Prism};
@@ -11,6 +12,8 @@ use crate::origin::Missing;
 
 /// A part is long if it is this much longer than wide.
 pub(super) const LONG: f64 = 2.0;
+/// An outline that fills less of its box than this may be a curved band.
+const BAND: f64 = 0.6;
 /// A plane nearer to the member's axis than this (as a sine) cuts along it, not off its end.
 const ALONG: f64 = 0.17;
 /// A round cut up to this size is a bolt hole, which no member's section loses at its end, mm.
@@ -74,7 +77,10 @@ impl<'a> Reading<'a> {
         }
         let centre = axes[0] * middle.x + axes[1] * middle.y + axes[2] * middle.z;
         let half = axes[along] * size[along] / 2.0;
-        let reason = format!("built up of {} solids", prisms.len());
+        let reason = match prisms {
+            [_] => "curved or cranked, drawn as a band".to_owned(),
+            several => format!("built up of {} solids", several.len()),
+        };
         Some(Member {
             identity: self.identity(element),
             start: centre - half,
@@ -89,6 +95,20 @@ impl<'a> Reading<'a> {
             not_assessed: Some(reason),
             disagreements: Vec::new(),
         })
+    }
+
+    /// A bar that is curved in one plane and drawn as the band that it shows there: about as thick as the band is wide,
+    /// which no plate is.
+    pub fn curved_bar(&self, element: Entity<'a>, prism: &Prism) -> Option<Member> {
+        let profile = &prism.profile;
+        if profile.kind != Kind::Outline || !profile.voids.is_empty() || profile.outer.circle.is_some() {
+            return None;
+        }
+        let (area, size) = (profile.outer.area(), profile.outer.least_box(profile.up).size);
+        let width = 2.0 * area / profile.outer.perimeter();
+        let band = area < BAND * size.x * size.y && size.max_element() >= 4.0 * LONG * width;
+        let thick = prism.depth > 0.5 * width && prism.depth <= 2.0 * LONG * width;
+        if band && thick { self.built_up(element, &[prism]) } else { None }
     }
 
     /// A sentence where a part with the shape of a member is called a plate and nothing else.

@@ -96,6 +96,11 @@ impl Loop {
         }
     }
 
+    /// Length of its edges, mm.
+    pub fn perimeter(&self) -> f64 {
+        neighbours(&self.points).map(|(before, at, _)| before.distance(at)).sum()
+    }
+
     /// The bounding box along a direction.
     pub fn box_along(&self, x: DVec2) -> Box2 {
         let y = x.perp();

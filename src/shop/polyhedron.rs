@@ -90,7 +90,7 @@ impl Asked<'_> {
         if let Some(plate) = all.iter().find_map(|levels| self.plate(levels)) {
             return vec![Ok(plate)];
         }
-        vec![along.and_then(|levels| self.member(levels)).map_or_else(|| self.stand_in(mesh, along), Ok)]
+        vec![along.and_then(|levels| self.member(levels)).map_or_else(|| self.stand_in(mesh, &faces), Ok)]
     }
 
     fn prism(&self, levels: &Levels<'_>, slice: Slice, from: f64, to: f64) -> Prism {
@@ -105,6 +105,7 @@ impl Asked<'_> {
                 voids: slice.voids,
                 up: DVec2::Y,
                 several: 1,
+                of_material: false,
                 place: self.place.clone(),
             },
             frame: DAffine3::from_mat3_translation(frame, levels.axis * from),
@@ -197,13 +198,14 @@ impl Asked<'_> {
     }
 
     /// Something long that is no straight prism of one section; an error if it is not even long.
-    fn stand_in(&self, mesh: &Mesh, along: Option<&Levels<'_>>) -> Solid {
-        let tapers = along.and_then(|levels| {
-            let [one, other] = [0.1, 0.9].map(|share| levels.slice(levels.low() + share * levels.depth()));
+    fn stand_in(&self, mesh: &Mesh, faces: &[DVec3]) -> Solid {
+        // A tapered part ends in two parallel faces.
+        let all = faces.iter().take(12).map(|axis| Levels::of(mesh, *axis)).filter(|levels| levels.at.len() == 2);
+        let along = all.max_by(|a, b| a.depth().total_cmp(&b.depth()));
+        let tapers = along.as_ref().and_then(|levels| {
+            let [one, other] = [0.01, 0.99].map(|share| levels.slice(levels.low() + share * levels.depth()));
             let (a, b) = (one?.outer.box_along(DVec2::X).size, other?.outer.box_along(DVec2::X).size);
-            let named =
-                format!("tapered: {:.0} x {:.0} mm near one end, {:.0} x {:.0} mm near the other", a.x, a.y, b.x, b.y);
-            (levels.at.len() == 2).then_some(named)
+            Some(format!("tapered: {:.0} x {:.0} mm near one end, {:.0} x {:.0} mm near the other", a.x, a.y, b.x, b.y))
         });
         let first = mesh.points.first().copied().unwrap_or_default();
         let far = |from: DVec3| {
@@ -211,7 +213,9 @@ impl Asked<'_> {
             mesh.points.iter().max_by(|a, b| distance(a).total_cmp(&distance(b))).copied().unwrap_or_default()
         };
         let one = far(first);
-        let chord = along.filter(|_| tapers.is_some()).map_or_else(|| (far(one) - one).normalize_or_zero(), |l| l.axis);
+        let chord = along
+            .filter(|_| tapers.is_some())
+            .map_or_else(|| (far(one) - one).normalize_or_zero(), |levels| levels.axis);
         let levels = Levels::of(mesh, chord);
         let flat = |p: &DVec3| DVec2::new(p.dot(levels.x), p.dot(levels.y));
         let (mut low, mut high) = (DVec2::INFINITY, DVec2::NEG_INFINITY);

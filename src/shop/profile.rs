@@ -43,11 +43,13 @@ pub(super) struct Profile {
     pub up: DVec2,
     /// How many profiles lie in it, side by side.
     pub several: usize,
+    /// Whether it is the profile of a material, and not of a body.
+    pub of_material: bool,
     pub place: Place,
 }
 
 /// Profiles of profiles nest; deeper than this is none.
-const DEPTH: usize = 4;
+const DEPTH: usize = 3;
 
 impl Profile {
     /// The profile under a similarity of the plane that scales by `scale`.
@@ -164,6 +166,7 @@ impl Reading<'_> {
                     voids: Vec::new(),
                     up: DVec2::Y,
                     several,
+                    of_material: false,
                     place: profile.place(),
                 })
             }
@@ -246,6 +249,7 @@ impl Reading<'_> {
             voids,
             up: DVec2::Y,
             several: 1,
+            of_material: false,
             place: profile.place(),
         };
         let position = profile.entity("Position").map_or(Ok(DAffine2::IDENTITY), |p| self.axes_2d(p))?;

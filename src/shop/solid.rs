@@ -51,7 +51,8 @@ impl Prism {
     pub fn swept(profile: Profile, map: DAffine3, sweep: DVec3, straight: f64) -> Solid {
         let (x, y) = (map.matrix3.x_axis, map.matrix3.y_axis);
         let (scale, other) = (x.length(), y.length());
-        if !(scale > 0.0 && other > 0.0 && x.dot(y).abs() <= 1e-6 * scale * other) || !map.translation.is_finite() {
+        let square = scale > 0.0 && other > 0.0 && x.dot(y).abs() <= 1e-6 * scale * other;
+        if !square || !map.translation.is_finite() {
             return Err("its body is mapped with a skew across its profile".into());
         }
         let sweep = map.transform_vector3(sweep);

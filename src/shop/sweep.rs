@@ -154,6 +154,7 @@ impl<'a> Reading<'a> {
             voids: inner.map(|r| Loop::circle(DVec2::ZERO, r)).into_iter().collect(),
             up: DVec2::Y,
             several: 1,
+            of_material: false,
             place: solid.place(),
         };
         self.along(solid, profile, DAffine3::IDENTITY)
@@ -285,6 +286,7 @@ impl<'a> Reading<'a> {
             voids: Vec::new(),
             up: DVec2::Y,
             several: 1,
+            of_material: false,
             place: item.place(),
         };
         Prism::swept(profile, self.position(item)?, DVec3::Z * depth, self.straight())

@@ -231,6 +231,10 @@ impl<'a> Reading<'a> {
         let Some(main) = prisms.iter().max_by(|a, b| a.bulk().total_cmp(&b.bulk())) else {
             return Err("it has no body".into());
         };
+        if let ([_], Some(member)) = (prisms, self.curved_bar(element, main)) {
+            steelwork.members.push(member);
+            return Ok(vec![Part::Member(steelwork.members.len() - 1)]);
+        }
         if let ([_], Some(flat)) = (prisms, flat(main)) {
             if let Some(reason) = too_thick(&flat) {
                 return Err(reason);
