@@ -91,7 +91,7 @@ impl<'a> Reading<'a> {
         } else {
             let straight = self.straight();
             let solids = self.own_solids(item, depth > 0);
-            if solids.len() > *budget || !self.spend(solids.len()) {
+            if solids.len() >= *budget || !self.spend(solids.len()) {
                 *budget = 0;
                 return into.push(Err(format!("its body has more than {ITEMS} solids")));
             }
