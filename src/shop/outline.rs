@@ -96,6 +96,12 @@ impl Loop {
         }
     }
 
+    /// Unit direction of its longest edge.
+    pub fn longest_edge(&self) -> Option<DVec2> {
+        let edges = neighbours(&self.points).map(|(before, at, _)| at - before);
+        edges.max_by(|a, b| a.length_squared().total_cmp(&b.length_squared()))?.try_normalize()
+    }
+
     /// Length of its edges, mm.
     pub fn perimeter(&self) -> f64 {
         neighbours(&self.points).map(|(before, at, _)| before.distance(at)).sum()

@@ -4,7 +4,7 @@
 //! All is asked of levels and sections along a few likely axes, so that it does not matter how an export cut the
 //! faces up, or which way they look.
 
-use glam::{DAffine3, DMat3, DVec2, DVec3};
+use glam::{DAffine2, DAffine3, DMat2, DMat3, DVec2, DVec3};
 
 use super::mesh::{Mesh, Slice};
 use super::outline::Loop;
@@ -94,15 +94,19 @@ impl Asked<'_> {
     }
 
     fn prism(&self, levels: &Levels<'_>, slice: Slice, from: f64, to: f64) -> Prism {
-        let frame = DMat3::from_cols(levels.x, levels.y, levels.axis);
+        // The levels' own x means nothing: the longest side of the section does.
+        let along = slice.outer.longest_edge().filter(|_| slice.outer.circle.is_none()).unwrap_or(DVec2::X);
+        let turn = DAffine2::from_mat2(DMat2::from_cols(along, along.perp()).transpose());
+        let x = levels.x * along.x + levels.y * along.y;
+        let frame = DMat3::from_cols(x, levels.axis.cross(x), levels.axis);
         let hollow = slice.voids.len() == 1 && slice.voids[0].area() > 0.5 * slice.outer.area();
         Prism {
             profile: Profile {
                 class: self.class.to_owned(),
                 name: None,
                 kind: if hollow { Kind::Hollow } else { Kind::Outline },
-                outer: slice.outer,
-                voids: slice.voids,
+                outer: slice.outer.mapped(turn, 1.0),
+                voids: slice.voids.into_iter().map(|l| l.mapped(turn, 1.0)).collect(),
                 up: DVec2::Y,
                 several: 1,
                 of_material: false,
