@@ -22,6 +22,9 @@ const HOLE_PATTERN: f64 = 1.5;
 /// A bolt is no longer than so many diameters, an anchor is (our own choice: through-bolts of steelwork are shorter).
 const LONGEST: f64 = 30.0;
 
+/// A round bar of no name is asked for a nut only up to so many diameters: beyond it is a rod.
+const SHORT: f64 = 10.0;
+
 /// What says that a part is a bolt.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub(super) enum Says {
@@ -52,7 +55,7 @@ impl<'a> Reading<'a> {
         let clusters = self.clusters(prisms);
         let shanks: Vec<_> = clusters.iter().filter_map(|cluster| Some((cluster, cluster.shank()?))).collect();
         let of_size = |d: f64| d >= DIAMETERS.0 - 0.5 && d <= DIAMETERS.1 + 0.5;
-        let bolt = |length: f64, d: f64| of_size(d) && length >= d && length <= LONGEST * d;
+        let bolt = |length: f64, d: f64| of_size(d) && length >= d && length <= SHORT * d;
         if shanks.len() < clusters.len() || !shanks.iter().all(|(_, s)| bolt(s.start.distance(s.end), s.diameter)) {
             return None;
         }
@@ -87,6 +90,9 @@ impl<'a> Reading<'a> {
         prisms: &[&Prism],
         nutted: impl Fn(DVec3, DVec3) -> bool,
     ) -> Result<Vec<Bolt>, String> {
+        if let Some(why) = prisms.iter().find_map(|p| p.beyond.as_ref()).filter(|_| says != Says::Anchor) {
+            return Err(format!("it is no straight bolt: {why}"));
+        }
         let clusters = self.clusters(prisms);
         let shanks: Vec<(&Cluster<'_>, Shank)> = clusters.iter().filter_map(|c| Some((c, c.shank()?))).collect();
         if shanks.is_empty() {

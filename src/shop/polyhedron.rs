@@ -4,6 +4,8 @@
 //! All is asked of levels and sections along a few likely axes, so that it does not matter how an export cut the
 //! faces up, or which way they look.
 
+use std::f64::consts::PI;
+
 use glam::{DAffine2, DAffine3, DMat2, DMat3, DVec2, DVec3};
 
 use super::mesh::{Mesh, Slice};
@@ -16,6 +18,8 @@ use crate::origin::Place;
 const LEVEL: f64 = 0.1;
 /// The largest turned part (a bolt's head, a nut), mm.
 const TURNED: f64 = 150.0;
+/// A round part of any outline is looked at in so many steps.
+const STEPS: usize = 32;
 /// Only the longest lengths between levels are looked at.
 const LENGTHS: usize = 24;
 /// Only so many of the longest edges and largest faces are asked for a direction.
@@ -87,6 +91,9 @@ impl Asked<'_> {
         if let Some(turned) = along.and_then(|levels| self.turned(levels)) {
             return turned.into_iter().map(Ok).collect();
         }
+        if let Some(rounds) = all.iter().find_map(|levels| self.rounds(levels)) {
+            return rounds.into_iter().map(Ok).collect();
+        }
         if let Some(plate) = all.iter().find_map(|levels| self.plate(levels)) {
             return vec![Ok(plate)];
         }
@@ -141,6 +148,45 @@ impl Asked<'_> {
             }
         }
         Some(prisms.into_iter().map(|(from, to, slice)| self.prism(levels, slice, from, to)).collect())
+    }
+
+    /// A small part that is round or hexagonal all along its length, with a thread, chamfers or fillets: rounds and
+    /// hexagons of its widths, their lengths to a share of the whole.
+    fn rounds(&self, levels: &Levels<'_>) -> Option<Vec<Prism>> {
+        let (low, depth) = (levels.low(), levels.depth());
+        let mut runs: Vec<(f64, f64, Slice)> = Vec::new();
+        let mut middle = None;
+        for i in 0..STEPS {
+            let (from, to) = (i as f64 / STEPS as f64, (i + 1) as f64 / STEPS as f64);
+            let slice = levels.slice(low + depth * (from + to) / 2.0)?;
+            let bounds = slice.outer.box_along(DVec2::X);
+            let (wide, centre) = (bounds.size.max_element(), bounds.centre);
+            let fills = slice.outer.area() / (PI * wide * wide / 4.0);
+            let on_axis = centre.distance(*middle.get_or_insert(centre)) <= 0.05 * wide;
+            let round = (0.75..=1.08).contains(&fills) && bounds.size.min_element() >= 0.8 * wide;
+            if !(slice.beside == 0 && wide <= TURNED && depth >= wide / 2.0 && round && on_axis) {
+                return None;
+            }
+            let width = |s: &Slice| s.outer.box_along(DVec2::X).size.max_element();
+            match runs.last_mut() {
+                Some((_, end, last)) if (width(last) - wide).abs() <= 0.08 * wide => {
+                    *end = to;
+                    if width(last) < wide {
+                        *last = slice;
+                    }
+                }
+                _ => runs.push((from, to, slice)),
+            }
+        }
+        let prism = |(from, to, mut slice): (f64, f64, Slice)| {
+            let bounds = slice.outer.box_along(DVec2::X);
+            let radius = bounds.size.max_element() / 2.0;
+            if slice.outer.area() >= 0.9 * PI * radius * radius {
+                slice.outer = Loop::circle(bounds.centre, radius);
+            }
+            self.prism(levels, slice, low + from * depth, low + to * depth)
+        };
+        Some(runs.into_iter().map(prism).collect())
     }
 
     /// A plate whose edges are bevelled or whose holes are countersunk: nearly one section through a small thickness.

@@ -220,6 +220,34 @@ fn a_bolt_by_its_faces_is_one_bolt_of_its_shank() {
 }
 
 #[test]
+fn a_thread_and_a_cone_do_not_hide_a_bolt() {
+    // Rings of 16 points along a shank of 70 mm: a thread of 2 mm pitch over the last 30 mm, a cone at its tip.
+    let mut points = Vec::new();
+    let mut levels: Vec<(f64, f64)> = vec![(-13.0, 16.0), (-1.0, 16.0), (0.0, 10.0), (40.0, 10.0)];
+    levels.extend((0..14).flat_map(|i| [(41.0 + 2.0 * f64::from(i), 8.8), (42.0 + 2.0 * f64::from(i), 10.0)]));
+    levels.push((70.0, 8.5));
+    for (z, radius) in &levels {
+        points.extend(ring((0.0, 0.0), *radius, 16).into_iter().map(|(x, y)| DVec3::new(x, y, *z)));
+    }
+    let n = levels.len();
+    let mut faces = vec![vec![(0..16).rev().collect()], vec![(16 * (n - 1)..16 * n).collect()]];
+    for level in 0..n - 1 {
+        for i in 0..16 {
+            let (a, b) = (16 * level + i, 16 * level + (i + 1) % 16);
+            faces.push(vec![vec![a, b, b + 16, a + 16]]);
+        }
+    }
+    let steelwork = part("Bolt M20 x 70", &Body { points, faces }.faceted());
+    assert_eq!(steelwork.bolts.len(), 1, "{:?}", steelwork.rejected);
+    let bolt = &steelwork.bolts[0];
+    close(bolt.diameter.as_ref().unwrap().value.get(), 20.0, 1e-9);
+    // Lengths to a thirty-second of the whole of 83 mm.
+    let (low, high) = (bolt.start.z.min(bolt.end.z), bolt.start.z.max(bolt.end.z));
+    assert!(low.abs() <= 2.6 && (high - 70.0).abs() <= 2.6, "{low} {high}");
+    assert_eq!(steelwork.problems, []);
+}
+
+#[test]
 fn bodies_of_one_face_list_are_told_apart() {
     let shank = |x: f64| Body::prism(&ring((x, 0.0), 10.0, 16), &[], 0.0, 70.0);
     let group = shank(0.0).and(shank(90.0)).and(shank(180.0));

@@ -182,6 +182,15 @@ fn anchors_are_bolts_that_say_so() {
 }
 
 #[test]
+fn a_bent_bolt_and_a_rod_are_no_bolts() {
+    let bent = r#"<IfcSweptDiskSolid Radius="10"><Directrix xsi:type="IfcPolyline"><Points><IfcCartesianPoint Coordinates="0 0 0"/><IfcCartesianPoint Coordinates="0 0 200"/><IfcCartesianPoint Coordinates="100 0 200"/></Points></Directrix></IfcSweptDiskSolid>"#;
+    let steelwork = taken(&proxy(0, "IfcMechanicalFastener", "Hook bolt M20", bent));
+    assert!(steelwork.rejected[0].reason.contains("no straight bolt"), "{}", steelwork.rejected[0].reason);
+    let steelwork = taken(&proxy(0, "IfcMember", "Post", &cylinder("0 0 0", 24.0, 1000.0)));
+    assert_eq!((steelwork.members.len(), steelwork.bolts.len()), (1, 0), "{:?}", steelwork.rejected);
+}
+
+#[test]
 fn plates_are_plates_whatever_their_class() {
     let body = Body::prism(&[(0.0, 0.0), (200.0, 0.0), (200.0, 480.0), (0.0, 480.0)], &[], 0.0, 15.0);
     for class in ["IfcBeam", "IfcColumn", "IfcMember", "IfcPlate", "IfcDiscreteAccessory", "IfcBuildingElementProxy"] {
