@@ -30,9 +30,11 @@ pub(super) struct Flat {
     pub thickness: f64,
 }
 
-/// The prism as a plate, if it is one: the thickness may be the sweep or either side of the profile.
+/// The prism as a plate, if it is one: the thickness may be the sweep or either side of the profile. Of hollow ones
+/// only what is no longer than its wall is thick: a ring, and no piece of pipe.
 pub(super) fn flat(prism: &Prism) -> Option<Flat> {
-    if prism.profile.kind != Kind::Outline || prism.beyond.is_some() {
+    let ring = prism.profile.kind == Kind::Hollow && prism.depth <= prism.profile.wall();
+    if (prism.profile.kind != Kind::Outline && !ring) || prism.beyond.is_some() {
         return None;
     }
     let outer = &prism.profile.outer;

@@ -8,28 +8,19 @@ use std::f64::consts::PI;
 
 use glam::{DAffine2, DAffine3, DMat2, DMat3, DVec2, DVec3};
 
+use super::levels::{CONSTANT, LEVEL, Levels, PARALLEL, Stretch, directions};
 use super::mesh::{Mesh, Slice};
 use super::outline::Loop;
 use super::profile::{Kind, Profile};
 use super::solid::{Cut, Prism, Solid};
 use crate::origin::Place;
 
-/// Points this near along an axis are at one level, mm.
-const LEVEL: f64 = 0.1;
 /// The largest turned part (a bolt's head, a nut), mm.
 const TURNED: f64 = 150.0;
 /// A round part of any outline is looked at in so many steps.
 const STEPS: usize = 32;
-/// Only the longest lengths between levels are looked at.
-const LENGTHS: usize = 24;
-/// Only so many of the longest edges and largest faces are asked for a direction.
-const ASKED: usize = 4096;
-/// Directions within this are one (a sine).
-const PARALLEL: f64 = 1e-3;
 /// A plate is at most this share of its width thick, as for any prism.
 const FLAT: f64 = 0.5;
-/// A member shows its section over at least this share of its length.
-const CONSTANT: f64 = 0.5;
 /// What is longer than this times its other sides is long.
 const LONG: f64 = 2.0;
 /// A changed section no longer than this between the ends is a bolt hole, mm.
@@ -39,23 +30,6 @@ const BOLT_HOLE: f64 = 100.0;
 pub(super) struct Asked<'a> {
     pub class: &'a str,
     pub place: Place,
-}
-
-/// The levels of a mesh along an axis.
-struct Levels<'m> {
-    mesh: &'m Mesh,
-    axis: DVec3,
-    x: DVec3,
-    y: DVec3,
-    /// Levels in rising order, mm.
-    at: Vec<f64>,
-}
-
-/// A length between two levels, with its section.
-struct Stretch {
-    from: f64,
-    to: f64,
-    slice: Option<Slice>,
 }
 
 impl Asked<'_> {
@@ -255,6 +229,9 @@ impl Asked<'_> {
         let tapers = along.as_ref().and_then(|levels| {
             let [one, other] = [0.01, 0.99].map(|share| levels.slice(levels.low() + share * levels.depth()));
             let (a, b) = (one?.outer.box_along(DVec2::X).size, other?.outer.box_along(DVec2::X).size);
+            if (a - b).abs().max_element() <= 2.0 * LEVEL {
+                return Some("cut at a slant to its length all along, or twisted".to_owned());
+            }
             Some(format!("tapered: {:.0} x {:.0} mm near one end, {:.0} x {:.0} mm near the other", a.x, a.y, b.x, b.y))
         });
         let first = mesh.points.first().copied().unwrap_or_default();
@@ -286,112 +263,4 @@ impl Asked<'_> {
         );
         Ok(prism)
     }
-}
-
-impl<'m> Levels<'m> {
-    fn of(mesh: &'m Mesh, axis: DVec3) -> Self {
-        // Towards the axis of the world that it is nearest to, so that the sign does not depend on the faces' order.
-        let most = axis.to_array().into_iter().max_by(|a, b| a.abs().total_cmp(&b.abs())).unwrap_or(1.0);
-        let axis = if most < 0.0 { -axis } else { axis };
-        let beside =
-            [DVec3::X, DVec3::Y, DVec3::Z].into_iter().min_by(|a, b| a.dot(axis).abs().total_cmp(&b.dot(axis).abs()));
-        let x = beside.unwrap_or(DVec3::X).reject_from(axis).normalize_or(DVec3::X);
-        let mut all: Vec<f64> = mesh.points.iter().map(|p| p.dot(axis)).collect();
-        all.sort_by(f64::total_cmp);
-        let mut at = Vec::new();
-        for one in all.chunk_by(|a, b| b - a <= LEVEL) {
-            let (Some(low), Some(high)) = (one.first(), one.last()) else { continue };
-            // Points that follow each other closely over a length are no level.
-            if high - low <= 2.0 * LEVEL { at.push((low + high) / 2.0) } else { at.extend([low, high]) }
-        }
-        Self { mesh, axis, x, y: axis.cross(x), at }
-    }
-
-    fn low(&self) -> f64 {
-        self.at.first().copied().unwrap_or_default()
-    }
-
-    fn high(&self) -> f64 {
-        self.at.last().copied().unwrap_or_default()
-    }
-
-    fn depth(&self) -> f64 {
-        self.high() - self.low()
-    }
-
-    fn slice(&self, level: f64) -> Option<Slice> {
-        self.mesh.slice(self.axis, level, self.x, self.y)
-    }
-
-    /// The section, if the mesh is a right prism along the axis and nothing else.
-    fn pure(&self) -> Option<Slice> {
-        let [low, high] = *self.at.as_slice() else { return None };
-        let [one, middle, other] = [0.1, 0.5, 0.9].map(|share| self.slice(low + share * (high - low)));
-        let (one, middle, other) = (one?, middle?, other?);
-        (middle.beside == 0 && one.same(&middle) && other.same(&middle)).then_some(middle)
-    }
-
-    /// The lengths between levels in rising order, the longest ones with their sections. `None` if there are very many.
-    fn stretches(&self) -> Option<Vec<Stretch>> {
-        let mut lengths: Vec<f64> = self.at.windows(2).map(|w| w[1] - w[0]).collect();
-        lengths.sort_by(|a, b| b.total_cmp(a));
-        let least = lengths.get(LENGTHS).copied().unwrap_or(f64::NEG_INFINITY);
-        let whole: f64 = lengths.iter().take(LENGTHS).sum();
-        if !(whole >= CONSTANT * self.depth()) {
-            return None;
-        }
-        let stretch = |w: &[f64]| Stretch {
-            from: w[0],
-            to: w[1],
-            slice: if w[1] - w[0] > least { self.slice((w[0] + w[1]) / 2.0) } else { None },
-        };
-        Some(self.at.windows(2).map(stretch).collect())
-    }
-}
-
-/// The directions of a mesh's faces by area and of its edges by length, the most first.
-fn directions(mesh: &Mesh) -> (Vec<DVec3>, Vec<DVec3>) {
-    use std::collections::HashMap;
-    let normals: Vec<DVec3> =
-        mesh.faces.iter().map(|face| face.loops.first().map_or(DVec3::ZERO, |l| area(mesh, l))).collect();
-    let mut first_face: HashMap<(u32, u32), usize> = HashMap::new();
-    let mut edges: Vec<DVec3> = Vec::new();
-    for (i, face) in mesh.faces.iter().enumerate() {
-        for corners in &face.loops {
-            for (a, b) in corners.iter().zip(corners.iter().cycle().skip(1)) {
-                let key = (*a.min(b), *a.max(b));
-                let Some(other) = first_face.insert(key, i) else { continue };
-                // Faces in one plane meet in no edge of the body: the diagonals of a triangulation.
-                let (m, n) = (normals[other].normalize_or_zero(), normals[i].normalize_or_zero());
-                if !(m.dot(n).abs() > 1.0 - 1e-6) {
-                    edges.push(mesh.points[*b as usize] - mesh.points[*a as usize]);
-                }
-            }
-        }
-    }
-    (most(normals), most(edges))
-}
-
-/// Unit directions of vectors that lie on one line, by the sum of their lengths.
-fn most(mut vectors: Vec<DVec3>) -> Vec<DVec3> {
-    vectors.sort_by(|a, b| b.length_squared().total_cmp(&a.length_squared()));
-    let mut sums: Vec<(DVec3, f64)> = Vec::new();
-    for vector in vectors.into_iter().take(ASKED) {
-        let Some(unit) = vector.try_normalize() else { continue };
-        match sums.iter().position(|(other, _)| other.cross(unit).length() <= PARALLEL) {
-            Some(known) => sums[known].1 += vector.length(),
-            None if sums.len() < 64 => sums.push((unit, vector.length())),
-            None => {}
-        }
-    }
-    sums.sort_by(|a, b| b.1.total_cmp(&a.1));
-    sums.into_iter().map(|(unit, _)| unit).collect()
-}
-
-/// Newell's vector of a loop: its normal, as long as its area.
-fn area(mesh: &Mesh, corners: &[u32]) -> DVec3 {
-    let Some(first) = corners.first().map(|i| mesh.points[*i as usize]) else { return DVec3::ZERO };
-    let after = corners.iter().cycle().skip(1);
-    let from = |i: &u32| mesh.points[*i as usize] - first;
-    corners.iter().zip(after).map(|(a, b)| from(a).cross(from(b))).sum::<DVec3>() / 2.0
 }

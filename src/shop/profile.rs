@@ -68,6 +68,15 @@ impl Profile {
 }
 
 impl Profile {
+    /// The mean thickness of what lies round its voids, mm; 0 where no voids are drawn.
+    pub fn wall(&self) -> f64 {
+        if self.voids.is_empty() {
+            return 0.0;
+        }
+        let voids = |of: fn(&Loop) -> f64| self.voids.iter().map(of).sum::<f64>();
+        2.0 * (self.outer.area() - voids(Loop::area)) / (self.outer.perimeter() + voids(Loop::perimeter))
+    }
+
     /// The profile with unequal scales along x and y.
     ///
     /// # Errors

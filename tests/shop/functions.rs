@@ -128,6 +128,90 @@ fn bolts_are_the_same_in_whatever_way_they_are_written() {
     assert_eq!(reasons.iter().filter(|r| **r == "nut or bolt head").count(), 8, "{reasons:?}");
 }
 
+/// A joint of an end plate: column HEB 300, beam IPE 500, plate, eight bolts; each body by `form`, the bolts by `bolts`.
+fn joint(form: impl Fn(&Body) -> String, bolts: &str) -> Steelwork {
+    let sharp = |h: f64, b: f64, w: f64, f: f64| {
+        let mut corners = sharp_i(h, b, w, f);
+        corners.pop();
+        corners
+    };
+    let along_x = |body: Body, x: f64| {
+        let turn = glam::DMat3::from_cols(glam::DVec3::Y, glam::DVec3::Z, glam::DVec3::X);
+        body.moved(glam::DAffine3::from_mat3_translation(turn, glam::DVec3::new(x, 0.0, 3000.0)))
+    };
+    // The column's depth lies along x: its flange at x = 150, the plate from 150 to 170, the beam from 170.
+    let column = Body::prism(&sharp(300.0, 300.0, 11.0, 19.0), &[], 0.0, 6000.0);
+    let column = column.moved(glam::DAffine3::from_rotation_z(std::f64::consts::FRAC_PI_2));
+    let beam = along_x(Body::prism(&sharp(500.0, 200.0, 10.2, 16.0), &[], 0.0, 4000.0), 170.0);
+    let plate = along_x(
+        Body::prism(&[(-110.0, -280.0), (110.0, -280.0), (110.0, 280.0), (-110.0, 280.0)], &[], 0.0, 20.0),
+        150.0,
+    );
+    taken(
+        &[
+            element("IfcColumn", r#"id="c" Name="HEB 300""#, "", &form(&column), ""),
+            element("IfcBuildingElementProxy", r#"id="b" Name="IPE 500""#, "", &form(&beam), ""),
+            element("IfcBeam", r#"id="e" Name="PL20*220""#, "", &form(&plate), ""),
+            bolts.to_owned(),
+        ]
+        .concat(),
+    )
+}
+
+#[test]
+fn a_joint_is_the_same_in_whatever_way_it_is_written() {
+    // Shanks along x through the flange and the plate, 19 + 20, with a nut on the far side.
+    let heights = [2790.0, 2880.0, 3120.0, 3210.0];
+    let at = |i: usize| (120.0, if i % 2 == 0 { -50.0 } else { 50.0 }, heights[i / 2]);
+    let round = |(x, y, z): (f64, f64, f64), solid: &str, depth: f64| {
+        format!(
+            r#"<IfcExtrudedAreaSolid Depth="{depth}">{solid}<Position><Location Coordinates="{x} {y} {z}"/><Axis DirectionRatios="1 0 0"/></Position><ExtrudedDirection DirectionRatios="0 0 1"/></IfcExtrudedAreaSolid>"#
+        )
+    };
+    let mut six = ring((0.0, 0.0), 17.3, 6);
+    six.push(six[0]);
+    let shank = |i: usize| round(at(i), &circle(10.0), 70.0);
+    let nut = |i: usize| round((at(i).0 - 4.0, at(i).1, at(i).2), &outline("", &six), 13.0);
+    let all = |one: &dyn Fn(usize) -> String| (0..8).map(one).collect::<String>();
+    let singly = all(&|i| proxy(i, "IfcMechanicalFastener", NAME, &(shank(i) + &nut(i))));
+    let grouped = proxy(0, "IfcMechanicalFastener", NAME, &all(&|i| shank(i) + &nut(i)));
+    let proxies = all(&|i| {
+        proxy(2 * i, "IfcBuildingElementProxy", NAME, &shank(i)) + &proxy(2 * i + 1, "IfcMember", "", &nut(i))
+    });
+    let rules = faying::rulebook::Rulebook::embedded();
+    let forms: [fn(&Body) -> String; 3] = [Body::faceted, Body::polygonal, Body::face_based];
+    let mut first: Option<String> = None;
+    for form in forms {
+        for bolts in [&singly, &grouped, &proxies] {
+            let steelwork = joint(form, bolts);
+            assert_eq!(
+                (steelwork.members.len(), steelwork.plates.len(), steelwork.bolts.len()),
+                (2, 1, 8),
+                "{:?}",
+                steelwork.rejected
+            );
+            let found = faying::joints::recognise(&steelwork, &rules);
+            assert_eq!(found.joints.len(), 1);
+            let layout = found.joints[0].layout.as_ref().unwrap_or_else(|why| panic!("{why}"));
+            // Places and identities differ with the way of writing; numbers must not.
+            let rows: Vec<i64> = layout.bolts.rows.iter().map(|row| (row.height.get() * 1e3).round() as i64).collect();
+            let numbers = format!(
+                "{:?} {:?} {:?} {:.3} {:.3} {:.3} {:.3} {rows:?}",
+                found.joints[0].kind,
+                layout.column.section.as_ref().map(|s| s.value.designation.clone()),
+                layout.beam.section.as_ref().map(|s| s.value.designation.clone()),
+                layout.plate.thickness.get(),
+                layout.plate.width.get(),
+                layout.plate.bottom.get(),
+                layout.plate.top.get(),
+            );
+            assert_eq!(first.get_or_insert_with(|| numbers.clone()), &numbers);
+        }
+    }
+    let expected = "EndPlateMoment Ok(\"HE 300 B\") Ok(\"IPE 500\") 20.000 220.000 -30.000 530.000 [460000, 370000, 130000, 40000]";
+    assert_eq!(first.as_deref(), Some(expected));
+}
+
 #[test]
 fn a_nut_proves_a_bolt_that_nothing_names() {
     let shank = || proxy(0, "IfcDiscreteAccessory", "Part 12", &cylinder("0 0 0", 10.0, 70.0));

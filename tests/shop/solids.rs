@@ -263,3 +263,26 @@ fn a_materials_profile_is_a_witness_of_the_section() {
     close(other.section.as_ref().unwrap().value.h.get(), 453.4, 1e-6);
     assert!(other.disagreements.iter().any(|d| d.contains("500.0")), "{:?}", other.disagreements);
 }
+
+#[test]
+fn a_part_that_is_read_in_part_is_not_assessed() {
+    let sphere = r#"<IfcSphere Radius="5"><Position><Location Coordinates="0 0 0"/></Position></IfcSphere>"#;
+    let steelwork = part("UKB 457x191x67", &(extruded(&profile(I, UB457, ""), 6000.0, "0 0 1") + sphere));
+    assert!(member(&steelwork).not_assessed.as_ref().unwrap().contains("IfcSphere"));
+    let steelwork = part("PL15*200", &(extruded(&rectangle(200.0, 400.0), 15.0, "0 0 1") + sphere));
+    assert!(steelwork.plates[0].disagreements[0].contains("IfcSphere"));
+}
+
+#[test]
+fn a_ring_is_a_plate_and_a_short_pipe_is_none() {
+    let inner = r#"<IfcCircle Radius="110"><Position xsi:type="IfcAxis2Placement2D"><Location Coordinates="0 0"/></Position></IfcCircle>"#;
+    let curve = format!(
+        r#"<OuterCurve xsi:type="IfcCircle" Radius="150"><Position xsi:type="IfcAxis2Placement2D"><Location Coordinates="0 0"/></Position></OuterCurve><InnerCurves>{inner}</InnerCurves>"#
+    );
+    let ring = profile("IfcArbitraryProfileDefWithVoids", "", &curve);
+    let steelwork = part("F1", &extruded(&ring, 20.0, "0 0 1"));
+    assert_eq!(steelwork.plates.len(), 1, "{:?}", steelwork.rejected);
+    close(steelwork.plates[0].holes[0].diameter, 220.0, 1e-9);
+    let steelwork = part("F1", &extruded(&ring, 100.0, "0 0 1"));
+    assert_eq!((steelwork.plates.len(), member(&steelwork).shape), (0, Shape::Hollow));
+}
