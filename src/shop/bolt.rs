@@ -41,7 +41,9 @@ impl<'a> Reading<'a> {
     pub fn bolt_by(&self, element: Entity<'a>, prisms: &[&Prism]) -> Option<Says> {
         let fastener = element.is_a("IfcMechanicalFastener");
         let called = self.called(element);
-        let rounds: Vec<&&Prism> = prisms.iter().filter(|p| round(p)).collect();
+        // A round plate is no shank, whatever it is called ("anchor plate").
+        let long = |p: &Prism| p.depth >= p.profile.outer.box_along(p.profile.up).size.min_element();
+        let rounds: Vec<&&Prism> = prisms.iter().filter(|p| round(p) && long(p)).collect();
         if self.predefined(element) == Some("ANCHORBOLT") || (called == Some(Word::Anchor) && !rounds.is_empty()) {
             return Some(Says::Anchor);
         }

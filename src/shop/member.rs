@@ -40,6 +40,12 @@ impl<'a> Reading<'a> {
                 Err(reason) => disagreements.push(format!("an opening in it can't be read: {reason}")),
             }
         }
+        if let Some([a, b]) = self.axis_line(element).as_deref()
+            && prism.beyond.is_none()
+            && (*b - *a).normalize_or_zero().cross(prism.axis()).length() > self.straight()
+        {
+            disagreements.push("its Axis runs in another direction than its body, which is followed".into());
+        }
         let (start, end) = (prism.at(seen.bounds.centre, from), prism.at(seen.bounds.centre, to));
         Member {
             identity: self.identity(element),

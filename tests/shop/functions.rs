@@ -162,7 +162,7 @@ fn joint(form: impl Fn(&Body) -> String, bolts: &str) -> Steelwork {
 fn a_joint_is_the_same_in_whatever_way_it_is_written() {
     // Shanks along x through the flange and the plate, 19 + 20, with a nut on the far side.
     let heights = [2790.0, 2880.0, 3120.0, 3210.0];
-    let at = |i: usize| (120.0, if i % 2 == 0 { -50.0 } else { 50.0 }, heights[i / 2]);
+    let at = |i: usize| (120.0, if i.is_multiple_of(2) { -50.0 } else { 50.0 }, heights[i / 2]);
     let round = |(x, y, z): (f64, f64, f64), solid: &str, depth: f64| {
         format!(
             r#"<IfcExtrudedAreaSolid Depth="{depth}">{solid}<Position><Location Coordinates="{x} {y} {z}"/><Axis DirectionRatios="1 0 0"/></Position><ExtrudedDirection DirectionRatios="0 0 1"/></IfcExtrudedAreaSolid>"#
@@ -282,6 +282,12 @@ fn plates_are_plates_whatever_their_class() {
         assert_eq!((steelwork.plates.len(), steelwork.members.len()), (1, 0), "{class}");
         assert!(steelwork.plates[0].disagreements.is_empty());
     }
+}
+
+#[test]
+fn a_round_plate_called_after_anchors_is_a_plate() {
+    let steelwork = taken(&proxy(0, "IfcPlate", "Anchor plate", &cylinder("0 0 0", 200.0, 25.0)));
+    assert_eq!((steelwork.plates.len(), steelwork.bolts.len()), (1, 0), "{:?}", steelwork.rejected);
 }
 
 #[test]
