@@ -71,7 +71,7 @@ enum Command {
 
 #[derive(Debug, Args)]
 struct ReviewArgs {
-    /// The shop model (.ifcxml, .ifc, .ifczip), or a folder that holds one model and its schedule.
+    /// The shop model (ifcXML of IFC4), or a folder that holds one model and its schedule.
     ///
     /// In a folder the schedule is called schedule.csv or schedule.toml, or both. Subfolders are not looked at.
     path: PathBuf,
@@ -87,7 +87,7 @@ struct ReviewArgs {
 
 #[derive(Debug, Args)]
 struct SurveyArgs {
-    /// The shop model (.ifcxml, .ifc, .ifczip), or a folder that holds one.
+    /// The shop model (ifcXML of IFC4), or a folder that holds one.
     #[arg(value_name = "MODEL")]
     path: PathBuf,
     #[command(flatten)]

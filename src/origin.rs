@@ -80,6 +80,28 @@ impl<T> Datum<T> {
     }
 }
 
+/// Who can close a gap.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
+pub enum Ask {
+    /// The fabricator: the shop model could state it.
+    Fabricator,
+    /// The engineer: the schedule could state it.
+    Engineer,
+    /// Nobody: the method, or a table of the rules, does not cover what stands there.
+    Method,
+}
+
+impl Ask {
+    /// The word in reports.
+    pub fn word(self) -> &'static str {
+        match self {
+            Self::Fabricator => "fabricator",
+            Self::Engineer => "engineer",
+            Self::Method => "method",
+        }
+    }
+}
+
 /// What a check needs and nobody stated.
 #[derive(Clone, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub struct Missing {
@@ -89,6 +111,8 @@ pub struct Missing {
     pub reason: String,
     /// The part that lacks it.
     pub at: Option<Place>,
+    /// Who can close the gap.
+    pub ask: Ask,
 }
 
 impl fmt::Display for Missing {

@@ -17,10 +17,11 @@ pub struct Shown {
 
 impl fmt::Display for Shown {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        // By the value as it is rounded: 99.9999 and 100 read alike.
         let digits = match self.value.abs() {
-            a if a >= 1000.0 => 0,
-            a if a >= 100.0 => 1,
-            a if a >= 10.0 => 2,
+            a if a >= 999.95 => 0,
+            a if a >= 99.995 => 1,
+            a if a >= 9.9995 => 2,
             _ => 3,
         };
         write!(f, "{:.digits$}", self.value)?;

@@ -1,5 +1,7 @@
 //! The one test harness; each module holds the tests of one room, through its public door.
 
+mod assess;
+mod coverage;
 mod end_to_end;
 mod eurocode;
 mod exchange;

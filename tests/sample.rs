@@ -1,6 +1,6 @@
 //! The sample building: that the committed files are what the writer writes, and that they are sound.
 
-mod boathouse;
+pub mod boathouse;
 mod detailing;
 mod exchange_file;
 mod papers;
@@ -11,7 +11,7 @@ use crate::writer::ifcxml::Style;
 use crate::writer::ifcxml_bytes;
 use boathouse::boathouse;
 
-fn folder() -> PathBuf {
+pub fn folder() -> PathBuf {
     PathBuf::from(env!("CARGO_MANIFEST_DIR")).join("sample-exchange")
 }
 

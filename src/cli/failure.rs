@@ -5,7 +5,7 @@ use std::io::{self, IsTerminal, Write};
 use std::path::Path;
 
 use faying::run::Failed;
-use miette::{Diagnostic, GraphicalReportHandler, GraphicalTheme};
+use miette::{Diagnostic, GraphicalReportHandler, GraphicalTheme, LabeledSpan, SourceCode};
 
 use super::output::coloured;
 
@@ -35,6 +35,7 @@ impl Failure {
             io::ErrorKind::NotFound => "there is no such file or folder".to_owned(),
             io::ErrorKind::PermissionDenied => "the permission is missing".to_owned(),
             io::ErrorKind::IsADirectory => "it is a folder".to_owned(),
+            io::ErrorKind::NotADirectory if path.is_file() => "it is no folder".to_owned(),
             io::ErrorKind::NotADirectory => "a part of its path is no folder".to_owned(),
             _ => error.to_string(),
         };
@@ -70,6 +71,31 @@ impl From<Failed> for Failure {
     }
 }
 
+/// Faults that are drawn; those beyond are only counted.
+const DRAWN: usize = 20;
+
+/// A fault by itself, without those that were found beside it.
+#[derive(Debug)]
+struct Alone<'a>(&'a dyn Diagnostic);
+
+impl Display for Alone<'_> {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        Display::fmt(self.0, f)
+    }
+}
+
+impl std::error::Error for Alone<'_> {}
+
+impl Diagnostic for Alone<'_> {
+    fn source_code(&self) -> Option<&dyn SourceCode> {
+        self.0.source_code()
+    }
+
+    fn labels(&self) -> Option<Box<dyn Iterator<Item = LabeledSpan> + '_>> {
+        self.0.labels()
+    }
+}
+
 fn excerpt(diagnostic: &dyn Diagnostic) -> String {
     let terminal = io::stderr().is_terminal();
     let theme = match terminal {
@@ -77,9 +103,17 @@ fn excerpt(diagnostic: &dyn Diagnostic) -> String {
         true => GraphicalTheme::unicode_nocolor(),
         false => GraphicalTheme::none(),
     };
+    let handler = GraphicalReportHandler::new_themed(theme).with_links(terminal);
+    let beside: Vec<&dyn Diagnostic> = diagnostic.related().into_iter().flatten().collect();
     let mut drawn = String::new();
-    match GraphicalReportHandler::new_themed(theme).with_links(terminal).render_report(&mut drawn, diagnostic) {
-        Ok(()) => drawn,
-        Err(_) => format!("faying: {diagnostic}\n"),
+    for one in std::iter::once(diagnostic).chain(beside.iter().copied()).take(DRAWN) {
+        if handler.render_report(&mut drawn, &Alone(one)).is_err() {
+            drawn.push_str(&format!("faying: {one}\n"));
+        }
     }
+    // How many there are in all, the first fault says.
+    if beside.len() + 1 > DRAWN {
+        drawn.push_str(&format!("faying: the first {DRAWN} are shown\n"));
+    }
+    drawn
 }

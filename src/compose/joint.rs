@@ -1,11 +1,12 @@
 //! One joint's review: resistance, required actions, checks, findings, outcome.
 
 use super::{Computed, Sources, brief};
+use crate::assess::end_plate::{BOUND_BY_OPPOSITE, BOUND_BY_TENSION};
 use crate::assess::{About, Assessment, Component, Gap, Sense, State, Verdict};
 use crate::intent::ScheduledJoint;
 use crate::joints::Joint;
-use crate::origin::Missing;
-use crate::review::{CheckResult, Finding, JointReview, Outcome, Required, Resistance, RowResult};
+use crate::origin::{Ask, Missing};
+use crate::review::{CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowResult};
 
 /// A joint of the steel.
 pub fn review(
@@ -115,7 +116,9 @@ fn outcome(assessment: Option<&Assessment>, findings: &[Finding], missing: &[Mis
 fn reasons(findings: &[Finding], missing: &[Missing]) -> Vec<String> {
     let mut reasons: Vec<String> = Vec::new();
     let said = findings.iter().map(|finding| finding.message.clone());
-    for reason in said.chain(missing.iter().map(Missing::to_string)) {
+    // What a finding says word for word is not said again as missing.
+    let missing = missing.iter().filter(|gap| !findings.iter().any(|finding| finding.message.contains(&gap.reason)));
+    for reason in said.chain(missing.map(Missing::to_string)) {
         if !reasons.contains(&reason) {
             reasons.push(reason);
         }
@@ -130,19 +133,20 @@ fn missing(
     scheduled: Option<&ScheduledJoint>,
     computed: &Computed,
 ) -> Vec<Missing> {
-    let said = |what: &str, reason: String| Missing { what: what.into(), reason, at: joint.place.clone() };
+    let said =
+        |what: &str, reason: String, ask: Ask| Missing { what: what.into(), reason, at: joint.place.clone(), ask };
     let mut missing = Vec::new();
     if let Err(reason) = &joint.layout {
-        missing.push(said("assessment of this kind", reason.clone()));
+        missing.push(said("assessment of this kind", reason.clone(), Ask::Method));
     }
     match scheduled {
         None if sources.schedules.is_empty() => {
-            missing.push(said("required actions", "no schedule was given".into()));
+            missing.push(said(REQUIRED_ACTIONS, "no schedule was given".into(), Ask::Engineer));
         }
-        None => missing.push(said("required actions", "the schedule has no line for this joint".into())),
+        None => missing.push(said(REQUIRED_ACTIONS, "the schedule has no line for this joint".into(), Ask::Engineer)),
         Some(scheduled) if scheduled.cases.is_empty() => missing.push(Missing {
             at: Some(scheduled.at.clone()),
-            ..said("required actions", "the schedule states no load case for this joint".into())
+            ..said(REQUIRED_ACTIONS, "the schedule states no load case for this joint".into(), Ask::Engineer)
         }),
         Some(_) => {}
     }
@@ -158,7 +162,8 @@ fn missing(
         }
     }
     let cases = computed.detailed.iter().flat_map(|a| &a.cases);
-    for verdict in cases.flat_map(|case| &case.verdicts).filter(|v| v.state == State::Unproven) {
+    let verdicts = cases.flat_map(|case| case.verdicts.iter().map(move |verdict| (case.case, verdict)));
+    for (case, verdict) in verdicts.filter(|(_, verdict)| verdict.state == State::Unproven) {
         if let Some(reason) = verdict.reason.as_ref().filter(|reason| *reason != "an input is missing") {
             let what = match verdict.about {
                 About::Moment => "proof of the moment",
@@ -166,7 +171,10 @@ fn missing(
                 About::Weld => "proof of the welds",
                 About::Axial => "proof of the axial force",
             };
-            missing.push(said(what, reason.clone()));
+            let engineers = verdict.required.is_none() || reason == BOUND_BY_OPPOSITE || reason == BOUND_BY_TENSION;
+            let gap = said(what, reason.clone(), if engineers { Ask::Engineer } else { Ask::Method });
+            let line = scheduled.and_then(|scheduled| scheduled.cases.get(case)).map(|case| case.at.clone());
+            missing.push(Missing { at: line.filter(|_| engineers).or(gap.at), ..gap });
         }
     }
     if let Some(Err(gap)) = &computed.intended {

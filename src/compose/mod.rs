@@ -179,9 +179,10 @@ impl<'a> Sources<'a> {
 
     /// The load cases with what the joint on the other flange does in the case of the same name.
     fn demands<'b>(&self, joint: &Joint, cases: &'b [LoadCase]) -> Vec<Demand<'b>> {
-        let opposite = |case: &LoadCase| match joint.opposite {
-            None => Opposite::None,
-            Some(other) => (self.scheduled(other))
+        let opposite = |case: &LoadCase| match (joint.opposite, joint.opposite_unclear) {
+            (_, Some(why)) => Opposite::Unclear(why),
+            (None, None) => Opposite::None,
+            (Some(other), None) => (self.scheduled(other))
                 .and_then(|other| other.cases.iter().find(|its| its.name == case.name))
                 .and_then(|its| its.moment)
                 .map_or(Opposite::NotStated, Opposite::Moment),
@@ -193,7 +194,7 @@ impl<'a> Sources<'a> {
         let Ok(layout) = &joint.layout else { return Computed { detailed: None, intended: None } };
         let cases = scheduled.map_or(&[][..], |s| &s.cases);
         let demands = self.demands(joint, cases);
-        let two_sided = joint.opposite.is_some();
+        let two_sided = joint.opposite.is_some() || joint.opposite_unclear.is_some();
         let assess = |layout: &EndPlateLayout| end_plate::assess(layout, &demands, two_sided, self.rulebook);
         let intended = self.detail(scheduled).map(|detail| {
             let meant = end_plate::intended(layout, detail, self.rulebook)?;

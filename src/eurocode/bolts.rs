@@ -62,29 +62,39 @@ pub fn bearing(
     let mut w = Working::default();
     let BearingPlace { e_1, p_1, e_2, p_2 } = place;
     given!(w, "bolt and ply"; d, d_0, t, f_u, f_ub, e_2);
-    let mut alpha_d = f64::INFINITY;
+    let mut alpha_d = 1.0;
     if let Some(e_1) = e_1 {
         given!(w, "end distance"; e_1);
         step!(w, "Table 3.4", alpha_d_end = e_1 / (3.0 * d_0));
-        alpha_d = alpha_d.min(alpha_d_end);
+        alpha_d = least(alpha_d, alpha_d_end);
     }
     if let Some(p_1) = p_1 {
         given!(w, "pitch"; p_1);
         step!(w, "Table 3.4", alpha_d_inner = p_1 / (3.0 * d_0) - 0.25);
-        alpha_d = alpha_d.min(alpha_d_inner);
+        alpha_d = least(alpha_d, alpha_d_inner);
     }
-    step!(w, "Table 3.4", alpha_b = alpha_d.min(f_ub / f_u).min(1.0));
-    let mut k_1_across = f64::INFINITY;
+    step!(w, "Table 3.4", alpha_b = least(alpha_d, f_ub / f_u));
+    let mut k_1_across = 2.5;
     if let Some(p_2) = p_2 {
         given!(w, "gauge"; p_2);
         step!(w, "Table 3.4", k_1_inner = 1.4 * (p_2 / d_0) - 1.7);
         k_1_across = k_1_inner;
     }
     step!(w, "Table 3.4", k_1_edge = 2.8 * (e_2 / d_0) - 1.7);
-    step!(w, "Table 3.4", k_1 = k_1_edge.min(k_1_across).min(2.5));
+    step!(w, "Table 3.4", k_1 = least(k_1_edge, least(k_1_across, 2.5)));
     // A distance below the minimum of Table 3.3 would make the factors negative: then nothing is left.
-    step!(w, "Table 3.4", F_b_Rd = (k_1.max(0.0) * alpha_b.max(0.0)) * f_u * (d * t) / gamma_M2);
+    step!(w, "Table 3.4", F_b_Rd = (not_negative(k_1) * not_negative(alpha_b)) * f_u * (d * t) / gamma_M2);
     Resistance { value: F_b_Rd, working: w }
+}
+
+/// The smaller; NaN if either is NaN (`f64::min` would hide it).
+fn least(a: f64, b: f64) -> f64 {
+    if a.is_nan() || b >= a { a } else { b }
+}
+
+/// At least 0; NaN stays NaN.
+fn not_negative(a: f64) -> f64 {
+    if a < 0.0 { 0.0 } else { a }
 }
 
 /// What is left of F_v,Rd beside a tension, from F_v,Ed/F_v,Rd + F_t,Ed/(1.4 F_t,Rd) ≤ 1 (Table 3.4), with F_t,Ed ≤ F_t,Rd.

@@ -45,8 +45,10 @@ pub struct Compression {
     pub s: Length,
     /// t_p.
     pub t_p: Length,
-    /// How far the end plate runs past the fillet below the compression flange, ≥ 0.
-    pub room: Length,
+    /// How far the end plate projects below the compression flange, ≥ 0: fillet and spread find no more room than that.
+    pub projection: Length,
+    /// From the middle of the compression flange to the column's end; `None` where the column runs on.
+    pub to_end: Option<Length>,
     /// t_wc.
     pub t_wc: Length,
     /// d_wc = h_c − 2(t_fc + s).
@@ -65,11 +67,14 @@ pub struct Compression {
 /// crushing alone (for a stiffened web).
 pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance, Resistance) {
     let mut w = Working::default();
-    let Compression { t_fb, a_p, t_fc, s, t_p, room, t_wc, d_wc, f_y_wc, A_vc, beta, k_wc } = *c;
-    given!(w, "column web at the compression flange"; t_fb, a_p, t_fc, s, t_p, room);
+    let Compression { t_fb, a_p, t_fc, s, t_p, projection, to_end, t_wc, d_wc, f_y_wc, A_vc, beta, k_wc } = *c;
+    given!(w, "column web at the compression flange"; t_fb, a_p, t_fc, s, t_p, projection);
     // 45° through the end plate, both ways; below the flange no further than the plate reaches.
-    step!(w, "6.2.6.2(1)", s_p = t_p + t_p.min(room));
-    step!(w, "6.2.6.2, (6.11)", b_eff = t_fb + 2.0 * 2.0_f64.sqrt() * a_p + 5.0 * (t_fc + s) + s_p);
+    step!(w, "leg of the fillets", leg = 2.0_f64.sqrt() * a_p);
+    step!(w, "6.2.6.2(1), fillet and s_p above and below", spread = (leg + t_p) + (leg + t_p).min(projection));
+    step!(w, "6.2.6.2, (6.11)", b_eff_full = t_fb + spread + 5.0 * (t_fc + s));
+    let past_end = to_end.map_or(Length::ZERO, |to_end| (0.5 * b_eff_full - to_end).max(Length::ZERO));
+    step!(w, "no web past the column's end", b_eff = (b_eff_full - past_end).max(0.5 * b_eff_full));
     let omega = omega(&mut w, beta, b_eff, t_wc, A_vc);
     given!(w, "column web"; t_wc, d_wc, f_y_wc, k_wc);
     step!(w, "6.2.6.2, (6.13c)", lambda_p = 0.932 * ((b_eff / t_wc) * (d_wc / t_wc) * (f_y_wc / E)).sqrt());

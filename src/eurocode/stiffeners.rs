@@ -31,6 +31,8 @@ pub struct Web {
     pub h_clear: Length,
     /// f_y of the web.
     pub f_y_wc: Stress,
+    /// How far the web runs on beyond the stiffeners on its shorter side, if the column ends there.
+    pub runs_on: Option<Length>,
 }
 
 impl Pair {
@@ -43,27 +45,36 @@ impl Pair {
     pub fn stocky(&self) -> bool {
         self.b_s / self.t_s <= 14.0 * epsilon(self.f_y_s)
     }
+
+    /// Whether the pair holds the web against buckling: I_st ≥ 0.75 h_w t_w³, EN 1993-1-5 9.3.3(3), its rule for long panels,
+    /// with h_w the clear depth between the flanges.
+    pub fn rigid(&self, t_w: Length, h_w: Length) -> bool {
+        let width = 2.0 * self.b_s + t_w;
+        let slenderness = (width / t_w).powi(3) * (self.t_s / h_w);
+        slenderness / 12.0 >= 0.75
+    }
 }
 
 /// A column web stiffened by a pair, in compression: the smaller of web crushing with the net stiffener area and of
 /// flexural buckling of the cross of stiffeners and 15 ε t_w of web each way (EN 1993-1-5 9.1, curve c, buckling length
 /// 0.75 of the clear depth), never less than the web alone.
-///
 pub fn compression(pair: &Pair, web: &Web, gamma_M0: f64, gamma_M1: f64) -> Resistance {
     let mut w = Working::default();
-    let Web { F_web, F_crushing, t_wc, h_clear, f_y_wc } = *web;
+    let Web { F_web, F_crushing, t_wc, h_clear, f_y_wc, runs_on } = *web;
     let Pair { b_s, t_s, cope, f_y_s } = *pair;
     given!(w, "pair of stiffeners and column web"; b_s, t_s, cope, f_y_s, F_web, F_crushing, t_wc, h_clear, f_y_wc);
     step!(w, "EN 1993-1-5 9.4", A_s_net = pair.net_area());
     step!(w, "EN 1993-1-8 6.2.6.2(4)", F_crushing_stiffened = F_crushing + A_s_net * f_y_s / gamma_M0);
     step!(w, "EN 1993-1-1 Table 5.2", eps = epsilon(f_y_wc));
-    step!(w, "EN 1993-1-5 9.1(2)", A_eff = 2.0 * b_s * t_s + (30.0 * eps * t_wc + t_s) * t_wc);
+    let full = 15.0 * eps * t_wc;
+    let shorter = runs_on.map_or(full, |runs_on| full.min((runs_on - 0.5 * t_s).max(Length::ZERO)));
+    step!(w, "EN 1993-1-5 9.1(2)", l_web = full + shorter);
+    step!(w, "EN 1993-1-5 9.1(2)", A_eff = 2.0 * b_s * t_s + (l_web + t_s) * t_wc);
     step!(w, "EN 1993-1-5 9.1(2)", width = 2.0 * b_s + t_wc);
     step!(
         w,
         "second moment of area of the cross / A_eff",
-        i_squared =
-            (t_s * width / A_eff) * (width * width) / 12.0 + (30.0 * eps * t_wc * t_wc / A_eff) * (t_wc * t_wc) / 12.0
+        i_squared = (t_s * width / A_eff) * (width * width) / 12.0 + (l_web * t_wc / A_eff) * (t_wc * t_wc) / 12.0
     );
     step!(w, "EN 1993-1-5 9.4(2)", l_cr = 0.75 * h_clear);
     step!(w, "EN 1993-1-1 6.3.1.2", f_y_least = f_y_s.min(f_y_wc));
@@ -73,10 +84,22 @@ pub fn compression(pair: &Pair, web: &Web, gamma_M0: f64, gamma_M1: f64) -> Resi
         lambda = (l_cr * l_cr / i_squared).sqrt() / (std::f64::consts::PI * (E / f_y_least).sqrt())
     );
     step!(w, "EN 1993-1-1 6.3.1.2, curve c", Phi = 0.5 * (1.0 + 0.49 * (lambda - 0.2) + lambda * lambda));
-    step!(w, "EN 1993-1-1 6.3.1.2", chi = (1.0 / (Phi + (Phi * Phi - lambda * lambda).sqrt())).min(1.0));
+    let slender = 1.0 / (Phi + (Phi * Phi - lambda * lambda).sqrt());
+    step!(w, "EN 1993-1-1 6.3.1.2", chi = if slender > 1.0 { 1.0 } else { slender });
     step!(w, "EN 1993-1-1 6.3.1.1", N_b_Rd = chi * A_eff * f_y_least / gamma_M1);
     step!(w, "EN 1993-1-8 6.2.6.2(4)", F_c_stiffened = F_crushing_stiffened.min(N_b_Rd).max(F_web));
     Resistance { value: F_c_stiffened, working: w }
+}
+
+/// What a pair can take of the bolt rows beside it while it holds the column's flange: a row puts m/(m + m_2) of its force
+/// into the stiffener (published handbook method for moment joints, from memory); `most` is the largest such share.
+pub fn support(pair: &Pair, most: f64, gamma_M0: f64) -> Resistance {
+    let mut w = Working::default();
+    let f_y_s = pair.f_y_s;
+    given!(w, "stiffener beside the rows, largest share m/(m + m_2)"; f_y_s, most);
+    step!(w, "EN 1993-1-5 9.4", A_s_net = pair.net_area());
+    step!(w, "6.2.6.4", F_support = A_s_net * f_y_s / gamma_M0 / most);
+    Resistance { value: F_support, working: w }
 }
 
 /// A column web with a pair of stiffeners in tension: the web over the row's b_eff and the pair's net area.

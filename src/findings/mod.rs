@@ -127,7 +127,7 @@ fn deviation(context: &Context<'_>, rule: &'static str, message: String) -> Find
         let change = match percent {
             p if p >= 1.0 => format!("{p} % less moment resistance than intended"),
             p if p <= -1.0 => format!("{} % more moment resistance than intended", -p),
-            _ => "the intended moment resistance".into(),
+            _ => "the intended moment resistance within 1 %".into(),
         };
         format!("; as detailed the joint has {change}")
     });

@@ -8,5 +8,9 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let parts = context.layout.into_iter().flat_map(|layout| &layout.not_credited);
-    parts.map(|what| Finding::new(ID, Outcome::Comment, what).on(context.column())).collect()
+    let plates = context.joint.into_iter().flat_map(|joint| &joint.plates).filter(|(_, role)| *role == "plate");
+    let plates = plates.filter_map(|(index, _)| context.steelwork.plates.get(*index));
+    let guids: Vec<&str> = plates.map(|plate| plate.identity.guid.as_str()).filter(|guid| !guid.is_empty()).collect();
+    let on = || if guids.is_empty() { context.column() } else { context.parts(guids.iter().copied()) };
+    parts.map(|what| Finding::new(ID, Outcome::Comment, what).on(on())).collect()
 }

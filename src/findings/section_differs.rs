@@ -34,6 +34,8 @@ fn of_section(context: &Context<'_>, which: &str, member: &MemberAt, intended: &
         Strength::Unranked => "another section than intended",
     };
     let name = &detailed.designation;
+    // Both as the tables spell them: "UKB 406x178x60" beside "UB 406x178x54" would read as another series.
+    let intended = context.rulebook.section(intended).map_or(intended, |section| section.designation.as_str());
     let message = format!("the {which} member is {how}: {name} instead of {intended}");
     let finding = match strength {
         Strength::Higher => Finding::new(ID, Outcome::Comment, message),

@@ -15,6 +15,7 @@ mod toml_form;
 pub use fault::{Fault, ScheduleError};
 pub use gather::{merge, read, read_all};
 pub use pairing::pair;
+pub(crate) use source::fold;
 pub use source::{MAX_BYTES, MAX_LINE_BYTES};
 
 use crate::origin::{Place, Problem};

@@ -31,6 +31,9 @@ impl Source {
             wrong = Some("the file is a zip archive, perhaps a workbook; allowed is CSV or TOML text".into());
         } else if bytes.starts_with(b"\xff\xfe") || bytes.starts_with(b"\xfe\xff") {
             wrong = Some("the file is UTF-16 text; allowed is UTF-8".into());
+        } else if bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes).trim_ascii_start().starts_with(b"<") {
+            // Each of its lines would be a fault.
+            wrong = Some("the file is XML, perhaps a model or a web page; allowed is CSV or TOML text".into());
         } else {
             let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);
             let valid = bytes.utf8_chunks().next().map_or("", |chunk| chunk.valid());
@@ -108,7 +111,7 @@ pub(super) fn tidy(text: &str) -> Result<String, String> {
 }
 
 /// The form in which marks are compared: white space and case do not count.
-pub(super) fn fold(mark: &str) -> String {
+pub(crate) fn fold(mark: &str) -> String {
     mark.split_whitespace().collect::<String>().to_uppercase()
 }
 

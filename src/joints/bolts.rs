@@ -6,7 +6,7 @@ use super::draft::Draft;
 use super::end_plate::Case;
 use super::layout::{BoltRow, Bolts};
 use super::scene::Scene;
-use crate::origin::{Datum, Known, Missing, Origin, Place};
+use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use crate::shop::{Bolt, Part};
 use crate::units::{Length, mm};
 
@@ -124,7 +124,7 @@ fn all_alike<'k, T: Clone + 'k>(
     }
     shown.sort_unstable();
     shown.dedup();
-    let missing = |reason| Missing { what: what.into(), reason, at: None };
+    let missing = |reason| Missing { what: what.into(), reason, at: None, ask: Ask::Fabricator };
     match first {
         Some(datum) if shown.len() == 1 => Ok(datum.clone()),
         Some(_) => Err(missing(format!("the bolts of the joint differ: {}", shown.join(" and ")))),
@@ -179,13 +179,14 @@ fn hole(
             what: "bolt hole".into(),
             reason: format!("a hole of {} is {words} for a bolt of {}", hole.value, d.value),
             at: None,
+            ask: Ask::Fabricator,
         }),
         (hole, _) => hole,
     })
 }
 
 fn assumed(scene: &Scene, diameter: &Known<Length>) -> Known<Length> {
-    let missing = |reason: String| Missing { what: "bolt hole".into(), reason, at: None };
+    let missing = |reason: String| Missing { what: "bolt hole".into(), reason, at: None, ask: Ask::Fabricator };
     let d = diameter.as_ref().map_err(|why| missing(format!("none is modelled, and {}: {}", why.what, why.reason)))?;
     let size = scene.rules.bolt_size(d.value);
     let size = size.ok_or_else(|| missing(format!("none is modelled, and a bolt of {} is in no table", d.value)))?;

@@ -1,6 +1,6 @@
 //! A joint while it is being recognised.
 
-use std::collections::{BTreeMap, BTreeSet};
+use std::collections::BTreeSet;
 
 use glam::DVec3;
 
@@ -48,6 +48,7 @@ impl Draft {
             welds: Vec::new(),
             layout: Err(format!("kind not assessed yet: {}", kind.word())),
             opposite: None,
+            opposite_unclear: None,
             disagreements: Vec::new(),
             place,
         };
@@ -63,24 +64,4 @@ impl Draft {
             member.end.distance(self.centre) < member.start.distance(self.centre)
         });
     }
-}
-
-/// For each joint the one on the column's other flange whose soffit is nearest, if it is within the deeper beam's depth.
-pub(super) fn opposites(drafts: &[Draft]) -> Vec<Option<usize>> {
-    let mut on_column: BTreeMap<usize, Vec<(usize, Seat)>> = BTreeMap::new();
-    for (index, draft) in drafts.iter().enumerate() {
-        if let Some(seat) = draft.seat {
-            on_column.entry(seat.column).or_default().push((index, seat));
-        }
-    }
-    let across = |draft: &Draft| {
-        let seat = draft.seat?;
-        let others = on_column.get(&seat.column)?.iter().filter(|(_, other)| {
-            other.flange * seat.flange < 0.0 && (other.level - seat.level).abs() < other.depth.max(seat.depth)
-        });
-        others
-            .min_by(|(_, a), (_, b)| (a.level - seat.level).abs().total_cmp(&(b.level - seat.level).abs()))
-            .map(|(i, _)| *i)
-    };
-    drafts.iter().map(across).collect()
 }

@@ -11,7 +11,6 @@ use super::scene::Scene;
 use super::stiffeners::{self, OnColumn};
 use super::touch::{EndOn, Pass};
 use super::welds::{self, Role};
-use crate::shop::Part;
 use crate::units::mm;
 
 /// A column's end further than this from the joint, mm, is no end for any check.
@@ -65,9 +64,9 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
     let plate = &scene.steel.plates[case.plate];
     let tolerances = scene.tolerances();
     let (touch, position, angle) = (tolerances.touch.get(), tolerances.position.get(), tolerances.angle);
-    for member in [case.end.member, case.column] {
+    for (role, member) in [("beam", case.end.member), ("column", case.column)] {
         if let Some(why) = &scene.steel.members[member].not_assessed {
-            return Err(format!("{}: {why}", scene.label(Part::Member(member))));
+            return Err(format!("{role}: {why}"));
         }
     }
     if !(case.frame.up.z >= UPRIGHT) {
@@ -90,9 +89,8 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
     if !(case.end.gap >= -touch) {
         return Err(format!("the beam runs {:.1} mm into the end plate: not assessed", -case.end.gap));
     }
-    if let Some(other) = case.others.first() {
-        let label = scene.label(Part::Member(other.member));
-        return Err(format!("{label} ends on the same end plate (a haunch?): not assessed yet"));
+    if !case.others.is_empty() {
+        return Err("another member ends on the same end plate (a haunch?): not assessed yet".into());
     }
     let eccentric = (case.frame.origin - column.start).dot(column.across).abs();
     if !(eccentric <= position) {
@@ -105,8 +103,8 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
         out < -plate.thickness.get() && out > case.frame.outward(face)
     });
     if let Some(packing) = packed {
-        let (thickness, label) = (scene.steel.plates[packing].thickness, scene.label(Part::Plate(packing)));
-        return Err(format!("{:.1} mm of packing ({label}) under the end plate: not assessed yet", thickness.get()));
+        let thickness = scene.steel.plates[packing].thickness;
+        return Err(format!("{:.1} mm of packing under the end plate: not assessed yet", thickness.get()));
     }
     if !(gap.abs() <= touch) {
         let how = if gap > 0.0 { "stands off" } else { "runs into" };
@@ -132,10 +130,7 @@ fn beside_beam(scene: &Scene, case: &Case, bolted: &[usize]) -> Result<(), Strin
             (0..3).all(|i| local[i].abs() <= beam.half[i])
         });
         if stands_out && !within {
-            let label = scene.label(Part::Plate(*other));
-            return Err(format!(
-                "{label} stands on the end plate beside the beam (a haunch or a rib): not assessed yet"
-            ));
+            return Err("a plate stands on the end plate beside the beam (a haunch or a rib): not assessed yet".into());
         }
     }
     Ok(())
@@ -183,9 +178,8 @@ fn laid_out(
     let throat = |role, what| welds::throat(scene, &case.frame, case.end.member, &case.welds, role, what);
     let mut not_credited = on_column.not_credited;
     let backing = draft.joint.plates.iter().filter(|(other, role)| *other != case.plate && *role == "plate");
-    for (other, _) in backing.filter(|(other, _)| !on_column.others.contains(other)) {
-        not_credited.push(format!("plate {} under the bolts is not credited", scene.label(Part::Plate(*other))));
-    }
+    let under = backing.filter(|(other, _)| !on_column.others.contains(other)).count();
+    not_credited.extend((under > 0).then(|| stiffeners::not_credited("plate under the bolts", under)));
     not_credited.sort();
     Ok(EndPlateLayout {
         column: member_at(scene, case.column),

@@ -12,6 +12,7 @@ mod graph;
 mod layout;
 mod marks;
 mod near;
+mod opposite;
 mod rank;
 mod recognise;
 mod scene;
@@ -112,6 +113,8 @@ pub struct Joint {
     pub layout: Result<EndPlateLayout, String>,
     /// Index of the joint on the opposite flange of the same column at the same level, if there is one.
     pub opposite: Option<usize>,
+    /// Why the moment on the column's other flange can't be told although something stands there; one clause.
+    pub opposite_unclear: Option<&'static str>,
     /// Where geometry, relations and names disagree; one sentence each.
     pub disagreements: Vec<String>,
     /// Where in the file a reader should look first.
@@ -136,11 +139,13 @@ pub fn recognise(steelwork: &Steelwork, rulebook: &Rulebook) -> Joints {
     let mut drafts = recognise::name_kinds(&scene, cut::cut(&scene));
     told::hear(&scene, &mut drafts);
     marks::mark(&scene, &mut drafts);
-    let opposites: Vec<_> = draft::opposites(&drafts);
+    let opposites: Vec<_> = opposite::opposites(&scene, &drafts);
     let mut loose = vec![true; steelwork.bolts.len()];
     for bolt in drafts.iter().flat_map(|draft| &draft.joint.bolts) {
         loose[*bolt] = false;
     }
-    let joints = drafts.into_iter().zip(opposites).map(|(draft, opposite)| Joint { opposite, ..draft.joint }).collect();
+    let joints = (drafts.into_iter().zip(opposites))
+        .map(|(draft, (opposite, opposite_unclear))| Joint { opposite, opposite_unclear, ..draft.joint })
+        .collect();
     Joints { graph, joints, loose_bolts: (0..loose.len()).filter(|bolt| loose[*bolt]).collect() }
 }

@@ -53,7 +53,7 @@ fn base_without_bolts(scene: &Scene, plate: usize) -> Option<Draft> {
     draft.joint.plates.push((plate, "end-plate"));
     draft.joint.welds = others_at(scene, [plate]);
     draft.joint.layout =
-        Err(format!("kind not assessed yet: {}: no bolts or anchors were found", Kind::ColumnBase.word()));
+        Err(format!("kind not assessed yet: {}: no bolt that was taken up holds its plate", Kind::ColumnBase.word()));
     Some(draft)
 }
 
@@ -168,11 +168,8 @@ fn reaches_a_flange(welds: &[(usize, Role)]) -> bool {
 fn say_how_joined(scene: &Scene, plate: usize, end: &EndOn, welds: &[(usize, Role)], sentences: &mut Vec<String>) {
     let (p, m) = (Part::Plate(plate), Part::Member(end.member));
     if welds.is_empty() && !scene.are_one_piece(p, m) && !scene.are_told(p, m) {
-        sentences.push(format!(
-            "end plate {} bears on {}, but no weld, piece or relation holds them together",
-            scene.label(p),
-            scene.label(m)
-        ));
+        let why = "the end plate bears on the member's end, but no weld, piece or relation holds them together";
+        sentences.push(why.into());
     }
 }
 

@@ -9,7 +9,7 @@ use super::frame::{Span, are_parallel, are_square, corners};
 use super::layout::Stiffener;
 use super::scene::Scene;
 use super::welds;
-use crate::origin::{Known, Missing};
+use crate::origin::{Ask, Known, Missing};
 use crate::rulebook::Grade;
 use crate::shop::{Member, Part, Plate};
 use crate::units::mm;
@@ -41,7 +41,7 @@ pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) 
     let column = &scene.steel.members[case.column];
     let mut found = OnColumn::default();
     let mut halves = Vec::new();
-    let mut others: BTreeMap<String, usize> = BTreeMap::new();
+    let mut others: BTreeMap<&str, usize> = BTreeMap::new();
     for index in scene.touches.plates_of[case.column].iter().copied() {
         let plate = &scene.steel.plates[index];
         let near = Span::of(corners(plate).map(|p| case.frame.height(p)))
@@ -56,18 +56,23 @@ pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) 
             None if is_bolted_elsewhere(scene, index, bolted) => {}
             None => {
                 let what = not_a_stiffener(scene, column, plate);
-                *others.entry(format!("{what} {}", scene.label(Part::Plate(index)))).or_default() += 1;
+                *others.entry(what).or_default() += 1;
                 found.others.push(index);
             }
         }
     }
-    let sentence = |(what, count): (String, usize)| match count {
-        1 => format!("{what} is not credited"),
-        _ => format!("{what} ({count} plates) is not credited"),
-    };
-    found.not_credited = others.into_iter().map(sentence).collect();
+    found.not_credited = others.into_iter().map(|(what, count)| not_credited(what, count)).collect();
     found.stiffeners = pairs(scene, column, halves);
     found
+}
+
+/// Without marks, so that like joints read alike; the finding names the parts.
+pub(super) fn not_credited(what: &str, count: usize) -> String {
+    match count {
+        1 => format!("a {what} is not credited"),
+        _ if what.contains("plate") => format!("{count} {} are not credited", what.replacen("plate", "plates", 1)),
+        _ => format!("{count} {what}s are not credited"),
+    }
 }
 
 fn is_transverse(scene: &Scene, column: &Member, plate: &Plate) -> bool {
@@ -123,12 +128,9 @@ fn pairs(scene: &Scene, column: &Member, mut halves: Vec<Half>) -> Vec<(Stiffene
     let mut stiffeners = Vec::new();
     while !halves.is_empty() {
         let one = halves.remove(0);
-        let partner = halves.iter().position(|two| {
-            let common = one.depth.hi.min(two.depth.hi) - one.depth.lo.max(two.depth.lo);
-            one.height - two.height <= position
-                && one.across.mid() * two.across.mid() < 0.0
-                && common >= 0.5 * one.depth.size().min(two.depth.size())
-        });
+        let partner = halves
+            .iter()
+            .position(|two| one.height - two.height <= position && one.across.mid() * two.across.mid() < 0.0);
         let two = partner.map(|i| halves.remove(i));
         stiffeners.push(stiffener(scene, column, &one, two.as_ref()));
     }
@@ -138,7 +140,9 @@ fn pairs(scene: &Scene, column: &Member, mut halves: Vec<Half>) -> Vec<(Stiffene
 fn stiffener(scene: &Scene, column: &Member, one: &Half, two: Option<&Half>) -> (Stiffener, Vec<usize>, Vec<usize>) {
     let touch = scene.tolerances().touch.get();
     let (t_f, t_w) = thicknesses(column);
-    let halves: Vec<&Half> = [Some(one), two].into_iter().flatten().collect();
+    let mut halves: Vec<&Half> = [Some(one), two].into_iter().flatten().collect();
+    // Which of two level halves is a hair higher is noise: they are named in the order of the file.
+    halves.sort_by_key(|half| half.plate);
     let least = |of: &dyn Fn(&Half) -> f64| halves.iter().map(|half| of(half)).fold(f64::INFINITY, f64::min);
     let plate = |half: &Half| &scene.steel.plates[half.plate];
     let clear = column.extents.y / 2.0 - t_f - touch;
@@ -153,7 +157,12 @@ fn stiffener(scene: &Scene, column: &Member, one: &Half, two: Option<&Half>) -> 
     let weld = if at_welds.iter().all(|welds| welds.is_empty()) || at_welds.iter().all(|welds| !welds.is_empty()) {
         welds::least_throat(scene, &welded, what)
     } else {
-        Err(Missing { what: what.into(), reason: "a weld is modelled on one side of the web only".into(), at: None })
+        Err(Missing {
+            what: what.into(),
+            reason: "a weld is modelled on one side of the web only".into(),
+            at: None,
+            ask: Ask::Fabricator,
+        })
     };
     let stiffener = Stiffener {
         guids: halves.iter().map(|half| plate(half).identity.guid.clone()).collect(),
@@ -170,7 +179,12 @@ fn stiffener(scene: &Scene, column: &Member, one: &Half, two: Option<&Half>) -> 
 }
 
 fn common_grade<'p>(mut plates: impl Iterator<Item = &'p Plate>) -> Known<Grade> {
-    let missing = |reason: String| Missing { what: "steel grade of the stiffener".into(), reason, at: None };
+    let missing = |reason: String| Missing {
+        what: "steel grade of the stiffener".into(),
+        reason,
+        at: None,
+        ask: Ask::Fabricator,
+    };
     let first = plates.next().ok_or_else(|| missing("it has no plate".into()))?.grade.clone()?;
     for plate in plates {
         let other = plate.grade.clone()?;

@@ -60,13 +60,6 @@ pub(super) fn hear(scene: &Scene, drafts: &mut Vec<Draft>) {
     drafts.extend(told_only);
 }
 
-fn called(told: &Told) -> String {
-    match told.name.as_deref().map(str::trim).filter(|name| !name.is_empty()) {
-        Some(name) => format!("relation \"{name}\""),
-        None => "a relation without a name".into(),
-    }
-}
-
 fn compare(scene: &Scene, told: &Told, bolts: &BTreeSet<usize>, between: &BTreeSet<usize>, draft: &mut Draft) {
     draft.names.extend(told.name.as_deref().map(str::trim).filter(|name| !name.is_empty()).map(str::to_owned));
     draft.joint.place = draft.joint.place.take().or_else(|| Some(told.place.clone()));
@@ -74,8 +67,7 @@ fn compare(scene: &Scene, told: &Told, bolts: &BTreeSet<usize>, between: &BTreeS
     if !bolts.is_empty() && *bolts != found {
         let both = bolts.intersection(&found).count();
         draft.joint.disagreements.push(format!(
-            "{} names {} bolts, geometry finds {}; {both} are the same",
-            called(told),
+            "its relation names {} bolts, geometry finds {}; {both} are the same",
             bolts.len(),
             found.len()
         ));
@@ -85,8 +77,7 @@ fn compare(scene: &Scene, told: &Told, bolts: &BTreeSet<usize>, between: &BTreeS
     strangers.sort();
     if !strangers.is_empty() {
         draft.joint.disagreements.push(format!(
-            "{} connects {}, which geometry does not find at this joint",
-            called(told),
+            "its relation connects {}, which geometry does not find at this joint",
             strangers.join(" and ")
         ));
     }
@@ -117,7 +108,7 @@ fn alone(scene: &Scene, told: &Told, bolts: Vec<usize>, members: Vec<usize>, pai
     draft.joint.place = Some(told.place.clone());
     draft.names.extend(told.name.as_deref().map(str::trim).filter(|name| !name.is_empty()).map(str::to_owned));
     let what = if draft.joint.bolts.is_empty() { "its members meet nowhere" } else { "no bolt of it joins two parts" };
-    let why = format!("only an explicit relation says so ({}): in geometry {what}", called(told));
+    let why = format!("only an explicit relation says so: in geometry {what}");
     draft.joint.disagreements.push(why.clone());
     draft.joint.layout = Err(why);
     draft

@@ -3,7 +3,7 @@
 use super::boxes::thicknesses;
 use super::frame::{Frame, Span};
 use super::scene::{Scene, shared};
-use crate::origin::{Known, Missing};
+use crate::origin::{Ask, Known, Missing};
 use crate::shop::{Part, WeldSort};
 use crate::units::Length;
 
@@ -94,12 +94,11 @@ fn by_name(name: &str) -> Option<Role> {
 pub(super) fn say_where_names_disagree(scene: &Scene, roles: &[(usize, Role)], sentences: &mut Vec<String>) {
     for (weld, role) in roles {
         let named = by_name(&scene.steel.welds[*weld].identity.name);
-        let label = scene.label(Part::Weld(*weld));
         let all_round = roles.iter().filter(|(other, _)| other == weld).count() > 1;
         if scene.steel.welds[*weld].points.is_empty() {
-            sentences.push(format!("weld {label} has no place: its name alone makes it \"{}\"", role.word()));
+            sentences.push(format!("a weld has no place: its name alone makes it \"{}\"", role.word()));
         } else if named.is_some_and(|named| named != *role) && !all_round {
-            sentences.push(format!("weld {label} lies at \"{}\", which its name does not say", role.word()));
+            sentences.push(format!("a weld lies at \"{}\", which its name does not say", role.word()));
         }
     }
 }
@@ -135,6 +134,7 @@ pub(super) fn throat(
             what: what.into(),
             reason: format!("the welds modelled there run over {covered:.0} mm of {full:.0} mm"),
             at: welds.first().map(|weld| scene.place(Part::Weld(*weld))),
+            ask: Ask::Fabricator,
         });
     }
     Ok(least)
@@ -146,12 +146,13 @@ pub(super) fn least_throat(scene: &Scene, welds: &[usize], what: &str) -> Known<
         what: what.into(),
         reason: reason.into(),
         at: weld.map(|weld| scene.place(Part::Weld(weld))),
+        ask: Ask::Fabricator,
     };
     let mut least: Known<Length> = Err(missing("no weld is modelled there", None));
     for weld in welds {
         let sort = scene.steel.welds[*weld].sort;
         if sort == WeldSort::Butt {
-            return Err(missing("butt weld: not assessed yet", Some(*weld)));
+            return Err(Missing { ask: Ask::Method, ..missing("butt weld: not assessed yet", Some(*weld)) });
         }
         let throat = match &scene.steel.welds[*weld].throat {
             Ok(throat) => throat.clone(),

@@ -2,13 +2,15 @@
 
 use std::collections::BTreeMap;
 
-use crate::origin::Place;
+use crate::origin::{Ask, Missing, Place};
 use crate::review::{Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Review};
 
 /// One missing thing and the joints that lack it.
 pub(super) struct Lack<'a> {
     /// The thing: "bolt class".
     pub what: &'a str,
+    /// Who can close the gap.
+    pub ask: Ask,
     /// Where it was looked for, the joints concerned, and the first place, most joints first.
     pub reasons: Vec<(&'a str, Vec<&'a JointReview>, Option<&'a Place>)>,
     /// All joints that lack it, in the review's order.
@@ -18,13 +20,13 @@ pub(super) struct Lack<'a> {
 /// What is missing at these joints, the thing that most joints lack first.
 pub(super) fn lacks<'a>(
     joints: impl IntoIterator<Item = &'a JointReview>,
-    counts: impl Fn(&JointReview, &str) -> bool,
+    counts: impl Fn(&JointReview, &Missing) -> bool,
 ) -> Vec<Lack<'a>> {
     type Reasons<'a> = BTreeMap<&'a str, (Vec<&'a JointReview>, Option<&'a Place>)>;
-    let mut by_what: BTreeMap<&str, (Reasons<'_>, Vec<&JointReview>)> = BTreeMap::new();
+    let mut by_what: BTreeMap<(&str, Ask), (Reasons<'_>, Vec<&JointReview>)> = BTreeMap::new();
     for joint in joints {
-        for missing in joint.missing.iter().filter(|m| counts(joint, &m.what)) {
-            let (reasons, all) = by_what.entry(&missing.what).or_default();
+        for missing in joint.missing.iter().filter(|missing| counts(joint, missing)) {
+            let (reasons, all) = by_what.entry((&missing.what, missing.ask)).or_default();
             let (some, place) = reasons.entry(&missing.reason).or_default();
             add(some, joint);
             add(all, joint);
@@ -33,10 +35,10 @@ pub(super) fn lacks<'a>(
     }
     let mut lacks: Vec<Lack<'_>> = by_what
         .into_iter()
-        .map(|(what, (reasons, joints))| {
+        .map(|((what, ask), (reasons, joints))| {
             let mut reasons: Vec<_> = reasons.into_iter().map(|(why, (some, at))| (why, some, at)).collect();
             reasons.sort_by_key(|(_, some, _)| std::cmp::Reverse(some.len()));
-            Lack { what, reasons, joints }
+            Lack { what, ask, reasons, joints }
         })
         .collect();
     lacks.sort_by_key(|lack| std::cmp::Reverse(lack.joints.len()));
@@ -96,6 +98,11 @@ fn names(text: &str, value: &str) -> bool {
 /// Rules that lay an action on a resistance: their numbers belong to the joint, not to the fault.
 const OF_ACTIONS: [&str; 4] = ["moment-short", "shear-short", "weld-short", "axial-force-beyond-limit"];
 
+/// Whether a finding lays an action on a resistance.
+pub(super) fn of_actions(finding: &Finding) -> bool {
+    OF_ACTIONS.contains(&finding.rule)
+}
+
 /// Whether a finding says no more than the required actions, resistances and governing component of the worst case.
 pub(super) fn said_by_worst_case(joint: &JointReview, finding: &Finding) -> bool {
     let worst = worst_case(joint);
@@ -135,7 +142,12 @@ pub(super) fn reasons_left(joint: &JointReview) -> impl Iterator<Item = &str> {
 
 /// Why a scheduled joint has no steel beside it.
 pub(super) fn without_steel(joint: &JointReview) -> &'static str {
-    if joint.kind == "not-paired" { "fits no single joint" } else { "no steel found" }
+    let members = joint.findings.iter().any(|f| f.rule == "joint-not-found" && f.message.contains("no bolted joint"));
+    match joint.kind.as_str() {
+        "not-paired" => "fits no single joint",
+        _ if members => "its members have no bolted joint",
+        _ => "no steel found",
+    }
 }
 
 /// Rules of what has a section of its own: steel without a schedule line, and the other way round.
@@ -162,8 +174,8 @@ pub(super) fn unscheduled(review: &Review, joint: &JointReview) -> bool {
 }
 
 /// Whether a missing thing is a matter of the schedule alone, said in its own section.
-pub(super) fn said_as_unscheduled(review: &Review, joint: &JointReview, what: &str) -> bool {
-    what == REQUIRED_ACTIONS && unscheduled(review, joint)
+pub(super) fn said_as_unscheduled(review: &Review, joint: &JointReview, missing: &Missing) -> bool {
+    missing.what == REQUIRED_ACTIONS && unscheduled(review, joint)
 }
 
 /// Whether anything of the joint's resistance was computed.

@@ -163,7 +163,7 @@ fn findings(page: &mut Page, joint: &JointReview, said: Option<&Place>) {
             page.line(5, &parts);
         }
     }
-    page.more(3, joint.findings.len().saturating_sub(bound), "findings at this joint");
+    page.more(3, joint.findings.len().saturating_sub(bound), ("finding at this joint", "findings at this joint"));
     if joint.findings.iter().all(|finding| finding.elements.is_empty()) {
         all_parts(page, joint);
     }
@@ -171,7 +171,7 @@ fn findings(page: &mut Page, joint: &JointReview, said: Option<&Place>) {
     for reason in left.iter().take(bound) {
         page.line(3, reason);
     }
-    page.more(3, left.len().saturating_sub(bound), "reasons");
+    page.more(3, left.len().saturating_sub(bound), ("reason", "reasons"));
 }
 
 /// "part EP12 (GlobalId 2oxS…), hall.ifcxml:120:44".
@@ -239,7 +239,7 @@ fn difference(page: &mut Page, joint: &JointReview) {
     for (left, sign, right) in shown {
         page.raw(5, Tone::Plain, &format!("{:wide$} {sign} {}", cut(left, wide), cut(right, half)));
     }
-    page.more(5, changes.len() - shown.len(), "changed lines");
+    page.more(5, changes.len() - shown.len(), ("changed line", "changed lines"));
 }
 
 fn cut(text: &str, wide: usize) -> String {
@@ -251,7 +251,9 @@ fn cut(text: &str, wide: usize) -> String {
 
 /// The place to look at first, with the model's text round it.
 fn look_at<'a>(joint: &'a JointReview, model: &str) -> Option<&'a Place> {
-    let places = joint.findings.iter().filter_map(|finding| finding.at.as_ref());
+    // The fault before what it leads to: the thin plate, not the whole joint that is short of moment.
+    let (of_actions, faults): (Vec<_>, Vec<_>) = joint.findings.iter().partition(|finding| group::of_actions(finding));
+    let places = faults.into_iter().chain(of_actions).filter_map(|finding| finding.at.as_ref());
     places.chain(&joint.at).find(|at| &*at.file == model)
 }
 

@@ -53,6 +53,7 @@ pub fn survey(review: &Review) -> serde_json::Result<String> {
     let part = |part: &str, at: &origin::Place| Part { part: part.to_owned(), at: place(at) };
     let lack = |lack: group::Lack<'_>| Lack {
         what: lack.what.to_owned(),
+        ask: lack.ask.word().to_owned(),
         joints: strings(group::marks(&lack.joints)),
         reasons: lack
             .reasons
@@ -264,7 +265,12 @@ fn finding(f: &review::Finding) -> Finding {
 }
 
 fn missing(m: &origin::Missing) -> Missing {
-    Missing { what: m.what.clone(), reason: m.reason.clone(), at: m.at.as_ref().map(place) }
+    Missing {
+        what: m.what.clone(),
+        reason: m.reason.clone(),
+        ask: m.ask.word().to_owned(),
+        at: m.at.as_ref().map(place),
+    }
 }
 
 fn problem(p: &origin::Problem) -> Problem {

@@ -144,9 +144,10 @@ impl Page {
     }
 
     /// The line that stands for what a bounded list left out.
-    pub(super) fn more(&mut self, indent: usize, left_out: usize, what: &str) {
+    pub(super) fn more(&mut self, indent: usize, left_out: usize, (one, many): (&str, &str)) {
         if left_out > 0 {
             self.cut.set(true);
+            let what = if left_out == 1 { one } else { many };
             self.toned(indent, Tone::Quiet, &format!("and {left_out} more {what}"));
         }
     }

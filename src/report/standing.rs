@@ -57,21 +57,25 @@ pub(super) fn assumed(page: &mut Page, review: &Review) {
     page.heading("ASSUMED");
     let bound = page.bound(GROUPS);
     let everywhere = review.joints.iter().filter(|joint| joint.found()).count();
+    let assessed = review.joints.iter().filter(|joint| group::assessed(joint)).count();
     let at = |page: &Page, joints: &[&JointReview]| match joints.len() {
         n if n == everywhere && n > 1 => "at every joint".to_owned(),
+        n if n == assessed && n > 1 && joints.iter().all(|joint| group::assessed(joint)) => {
+            format!("at all {n} joints that were assessed")
+        }
         _ => format!("at {}", page.listed(marks(joints))),
     };
     for (text, joints) in groups.iter().take(bound) {
         let at = at(page, joints);
         page.line(3, &format!("{}: {at}", text.trim_end_matches('.')));
     }
-    page.more(3, groups.len().saturating_sub(bound), "assumptions");
+    page.more(3, groups.len().saturating_sub(bound), ("assumption", "assumptions"));
     for lack in bounds.iter().take(bound) {
         let at = at(page, &lack.joints);
         page.line(3, &format!("on the safe side without the {} {at}", lack.what));
         text::reasons(page, lack);
     }
-    page.more(3, bounds.len().saturating_sub(bound), "things that were done without");
+    page.more(3, bounds.len().saturating_sub(bound), ("thing that was done without", "things that were done without"));
 }
 
 /// Whatever could not be understood in model and schedule.
@@ -94,5 +98,5 @@ pub(super) fn list_problems(page: &mut Page, review: &Review) {
             None => page.line(3, &problem.message),
         }
     }
-    page.more(3, review.problems.len().saturating_sub(bound), "problems");
+    page.more(3, review.problems.len().saturating_sub(bound), ("problem", "problems"));
 }

@@ -6,7 +6,7 @@ use super::group::{self, marks};
 use super::number::count;
 use super::page::{Page, Tone};
 use super::{Options, standing, text};
-use crate::origin::Place;
+use crate::origin::{Ask, Place};
 use crate::review::{JointReview, REQUIRED_ACTIONS, Review};
 
 /// Groups and lines a section that are not written out.
@@ -50,7 +50,7 @@ pub(super) fn rejected_by_reason(review: &Review) -> Vec<(&str, Vec<(&str, &Plac
 
 /// What is missing that the model could state: everything but the actions, that are the engineer's to state.
 pub(super) fn lacks(review: &Review) -> Vec<group::Lack<'_>> {
-    group::lacks(review.joints.iter().filter(|joint| joint.found()), |_, what| what != REQUIRED_ACTIONS)
+    group::lacks(review.joints.iter().filter(|joint| joint.found()), |_, m| m.what != REQUIRED_ACTIONS)
 }
 
 fn recognised(page: &mut Page, review: &Review) {
@@ -85,7 +85,7 @@ fn rejected(page: &mut Page, review: &Review) {
         let list = page.listed(parts.iter().map(|(who, at)| format!("{who} ({at})")));
         page.line(3, &format!("{why} ({}): {list}", count(parts.len(), "part", "parts")));
     }
-    page.more(3, groups.len().saturating_sub(bound), "reasons");
+    page.more(3, groups.len().saturating_sub(bound), ("reason", "reasons"));
 }
 
 fn loose(page: &mut Page, review: &Review) {
@@ -98,35 +98,46 @@ fn loose(page: &mut Page, review: &Review) {
     for (guid, at) in bolts.iter().take(bound) {
         page.line(3, &format!("GlobalId {guid}, {at}"));
     }
-    page.more(3, bolts.len().saturating_sub(bound), "bolts");
+    page.more(3, bolts.len().saturating_sub(bound), ("bolt", "bolts"));
 }
 
 fn lacking(page: &mut Page, review: &Review) {
-    let lacks = lacks(review);
+    let (limits, lacks): (Vec<_>, Vec<_>) = lacks(review).into_iter().partition(|lack| lack.ask == Ask::Method);
     if lacks.is_empty() {
         page.heading("MISSING FOR A FULL ASSESSMENT: nothing that was looked for");
-        return;
+    } else {
+        page.heading("MISSING FOR A FULL ASSESSMENT");
+        list(page, &lacks, ("missing thing", "missing things"));
     }
-    page.heading("MISSING FOR A FULL ASSESSMENT");
+    if !limits.is_empty() {
+        page.heading("BEYOND WHAT IS ASSESSED: check these by other means");
+        list(page, &limits, ("of this kind", "of this kind"));
+    }
+}
+
+fn list(page: &mut Page, lacks: &[group::Lack<'_>], more: (&str, &str)) {
     let bound = page.bound(GROUPS);
     for lack in lacks.iter().take(bound) {
         let joints = count(lack.joints.len(), "joint", "joints");
         page.toned(3, Tone::Unproven, &format!("{} ({joints}): {}", lack.what, page.listed(marks(&lack.joints))));
         text::reasons(page, lack);
     }
-    page.more(3, lacks.len().saturating_sub(bound), "missing things");
+    page.more(3, lacks.len().saturating_sub(bound), more);
 }
 
 /// The questions that settle most joints, in that order.
 pub(super) fn questions(review: &Review) -> Vec<(String, Vec<&str>)> {
-    let mut questions: Vec<(String, Vec<&str>)> =
-        lacks(review).iter().map(|lack| (lack.what.to_owned(), marks(&lack.joints))).collect();
+    let mut questions: Vec<(String, Vec<&str>)> = lacks(review)
+        .iter()
+        .filter(|l| l.ask == Ask::Fabricator)
+        .map(|l| (l.what.to_owned(), marks(&l.joints)))
+        .collect();
     let loose = review.survey.loose_bolts.len();
     if loose > 0 {
         let bolts = count(loose, "bolt that passes", "bolts that pass");
         questions.push((format!("what is held together by {bolts} through fewer than two plies"), Vec::new()));
     }
-    let rejected = review.survey.rejected.len();
+    let rejected = review.survey.rejected.iter().filter(|(_, why, _)| could_be_taken_up(why)).count();
     if rejected > 0 {
         let parts = count(rejected, "part that was", "parts that were");
         let what = format!("drawings of the {parts} not taken up, or an export that holds them as straight solids");
@@ -135,9 +146,22 @@ pub(super) fn questions(review: &Review) -> Vec<(String, Vec<&str>)> {
     questions
 }
 
+/// Whether another export could change it that a part was not taken up: not for what is no steel, nor for what is read
+/// and not assessed.
+fn could_be_taken_up(why: &str) -> bool {
+    !(why.ends_with("is no steel") || why.ends_with("not assessed"))
+}
+
 fn ask(page: &mut Page, review: &Review) {
     page.heading("WHAT TO ASK THE FABRICATOR FOR");
-    let questions = questions(review);
+    // What the same joints lack is one question.
+    let mut questions: Vec<(String, Vec<&str>)> = Vec::new();
+    for (what, joints) in self::questions(review) {
+        match questions.last_mut().filter(|(_, others)| !joints.is_empty() && *others == joints) {
+            Some((whats, _)) => *whats += &format!(", {what}"),
+            None => questions.push((what, joints)),
+        }
+    }
     if questions.is_empty() && review.counts.found == 0 {
         page.line(
             3,
@@ -145,6 +169,9 @@ fn ask(page: &mut Page, review: &Review) {
         );
     } else if questions.is_empty() {
         page.line(3, "Nothing: whatever was looked for is stated.");
+        if lacks(review).iter().any(|lack| lack.ask == Ask::Method) {
+            page.line(3, "Little was looked for at the joints that are beyond what is assessed.");
+        }
     }
     for (number, (what, joints)) in (1..).zip(&questions) {
         let of = match joints.len() {

@@ -8,6 +8,7 @@ use super::number::{count, utilisation};
 use super::page::{Page, Tone};
 use super::window::Source;
 use super::{Options, hold, standing, table};
+use crate::origin::Missing;
 use crate::review::{JointReview, Outcome, Review};
 
 /// Held joints (alike ones count once) that are drawn in full.
@@ -114,7 +115,7 @@ fn unproven(page: &mut Page, review: &Review) {
         return;
     }
     page.heading(&format!("UNPROVEN: {}, by what is missing", count(joints.len(), "joint", "joints")));
-    let said = |joint: &JointReview, what: &str| !group::said_as_unscheduled(review, joint, what);
+    let said = |joint: &JointReview, missing: &Missing| !group::said_as_unscheduled(review, joint, missing);
     let lacks = group::lacks(joints.iter().copied(), said);
     let bound = page.bound(GROUPS);
     for lack in lacks.iter().take(bound) {
@@ -129,7 +130,7 @@ fn unproven(page: &mut Page, review: &Review) {
         page.toned(3, Tone::Unproven, &format!("{} ({joints}): {list}{too}", lack.what));
         reasons(page, lack);
     }
-    page.more(3, lacks.len().saturating_sub(bound), "missing things");
+    page.more(3, lacks.len().saturating_sub(bound), ("missing thing", "missing things"));
 
     let mut said_else = group::by_text(joints.iter().flat_map(|&joint| {
         let findings: Vec<String> = group::findings_left(joint).map(group::sentence).collect();
@@ -169,7 +170,7 @@ pub(super) fn reasons(page: &mut Page, lack: &group::Lack<'_>) {
         let at = if alone { String::new() } else { format!(" ({})", page.listed(marks(joints))) };
         page.line(5, &format!("{reason}{at}{first}"));
     }
-    page.more(5, lack.reasons.len().saturating_sub(bound), "reasons");
+    page.more(5, lack.reasons.len().saturating_sub(bound), ("reason", "reasons"));
 }
 
 /// Comment findings of these joints as sentences.
@@ -190,7 +191,7 @@ fn texts(page: &mut Page, groups: &[(String, Vec<&JointReview>)], tone: Tone) {
             joints.iter().find_map(|joint| joint.at.as_ref()).map_or(String::new(), |at| format!("; first at {at}"));
         page.line(5, &format!("{}: {list}{at}", count(joints.len(), "joint", "joints")));
     }
-    page.more(3, groups.len().saturating_sub(bound), "of this kind");
+    page.more(3, groups.len().saturating_sub(bound), ("of this kind", "of this kind"));
 }
 
 fn missing(page: &mut Page, review: &Review) {
@@ -224,7 +225,7 @@ fn missing(page: &mut Page, review: &Review) {
             page.line(5, &said);
         }
     }
-    page.more(3, bare.len().saturating_sub(bound), "scheduled joints without steel");
+    page.more(3, bare.len().saturating_sub(bound), ("scheduled joint without steel", "scheduled joints without steel"));
     if !unscheduled.is_empty() {
         page.line(3, "No schedule line states actions for these:");
         texts(page, &group::by_text(unscheduled.iter().map(|&joint| (hold::what(joint), joint))), Tone::Unproven);
@@ -277,5 +278,5 @@ fn all_joints(page: &mut Page, review: &Review) {
     for line in table::draw(&joints[..shown], page.options().width) {
         page.raw(0, Tone::Plain, &line);
     }
-    page.more(0, joints.len() - shown, "joints");
+    page.more(0, joints.len() - shown, ("joint", "joints"));
 }

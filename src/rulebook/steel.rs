@@ -7,7 +7,7 @@ use super::error::RuleError;
 use super::load::RuleFile;
 use super::names::{self, Token};
 use super::{Grade, Strength};
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::units::Length;
 
 /// One thickness band; it starts where the one before ends.
@@ -177,7 +177,7 @@ impl Steel {
     }
 
     pub fn strength(&self, grade: &Grade, thickness: Length) -> Known<Strength> {
-        let missing = |reason: String| Missing { what: "steel strength".into(), reason, at: None };
+        let missing = |reason: String| Missing { what: "steel strength".into(), reason, at: None, ask: Ask::Method };
         let Some(row) = self.rows.iter().find(|row| row.grade == grade.0) else {
             return Err(missing(format!("{} is not in the table {}", grade.0, self.table)));
         };

@@ -12,7 +12,7 @@ use super::solid::Prism;
 use super::statement::{Statement, first_text};
 use super::words::Word;
 use crate::exchange::Entity;
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::units::{Length, mm};
 
 /// Nominal diameters that a bolt may have, mm (M8 to M72).
@@ -241,7 +241,12 @@ impl<'a> Reading<'a> {
             let length = size_in(text).and_then(|(_, length)| length);
             all.extend(length.map(|value| Statement { value, by: format!("{by} \"{text}\""), at: element.place() }));
         }
-        let missing = |reason: String| Missing { what: "bolt length".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "bolt length".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let Some(first) = all.first() else {
             return Err(missing("no attribute, property or name of the fastener states one".into()));
         };
@@ -260,7 +265,12 @@ impl<'a> Reading<'a> {
         texts.extend(first_text(self.names_of(element), element));
         texts.extend(properties.iter().filter(|p| self.rulebook.means("bolt-class", p.name)).filter_map(said_by));
         let mut found = texts.iter().filter_map(|said| Some((said, self.rulebook.class_in(&said.text)?)));
-        let missing = |reason: String| Missing { what: "bolt class".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "bolt class".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let Some((witness, class)) = found.next() else {
             return Err(missing("no material, name or property of the bolts states one".into()));
         };

@@ -4,7 +4,7 @@ use super::profile::Profile;
 use super::properties::Property;
 use super::reading::Reading;
 use crate::exchange::Entity;
-use crate::origin::{Datum, Known, Missing, Origin, Place};
+use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use crate::rulebook::Grade;
 
 /// Sets and usages of materials nest; deeper than this is none.
@@ -91,7 +91,12 @@ impl<'a> Reading<'a> {
 
     /// The steel grade of a part, from its materials and its properties; never from other parts.
     pub fn grade(&self, element: Entity<'a>) -> Known<Grade> {
-        let missing = |reason: String| Missing { what: "steel grade".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "steel grade".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let mut said = self.material_texts(element);
         let states = |p: &&Property<'_>| p.name == "StructuralGrade" || self.rulebook.means("grade", p.name);
         for material in self.materials(element) {

@@ -8,7 +8,7 @@ use super::section::{Seen, see};
 use super::solid::{Cut, Prism};
 use super::{Member, Shape};
 use crate::exchange::Entity;
-use crate::origin::Missing;
+use crate::origin::{Ask, Missing};
 
 /// A part is long if it is this much longer than wide.
 pub(super) const LONG: f64 = 2.0;
@@ -126,7 +126,12 @@ impl<'a> Reading<'a> {
 }
 
 fn no_section(element: Entity<'_>, reason: &str) -> Missing {
-    Missing { what: "section".into(), reason: format!("the member is {reason}"), at: Some(element.place()) }
+    Missing {
+        what: "section".into(),
+        reason: format!("the member is {reason}"),
+        at: Some(element.place()),
+        ask: Ask::Method,
+    }
 }
 
 /// Where along the sweep the member starts and ends: planes take off its ends as far as nothing of the section's

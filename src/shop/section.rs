@@ -8,7 +8,7 @@ use super::profile::{ISizes, Kind, Profile};
 use super::properties::Property;
 use super::reading::Reading;
 use crate::exchange::Entity;
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::Section;
 use crate::units::mm;
 
@@ -89,7 +89,12 @@ fn i_sizes(outline: &Loop, bounds: &Box2) -> Option<ISizes> {
 impl<'a> Reading<'a> {
     /// The section of a member, and sentences on where its witnesses disagree.
     pub fn section(&self, element: Entity<'a>, profile: &Profile, seen: &Seen) -> (Known<Section>, Vec<String>) {
-        let missing = |reason: String| Missing { what: "section".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "section".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let mut found: Vec<(String, &Section)> = Vec::new();
         for (by, text) in self.section_names(element, profile) {
             if let Some(section) = self.rulebook.section(&text) {

@@ -51,7 +51,8 @@ impl<'a> Reading<'a> {
         let depth = solid.number("Depth").map(|d| d * self.units.length).filter(|d| *d > 0.0 && d.is_finite());
         let depth = depth
             .ok_or_else(|| format!("its body has an extrusion whose Depth is not more than 0 ({})", solid.place()))?;
-        let direction = direction(solid, "ExtrudedDirection")?.unwrap_or(DVec3::Z);
+        let direction = direction(solid, "ExtrudedDirection")?
+            .ok_or_else(|| format!("its body has an extrusion without an ExtrudedDirection ({})", solid.place()))?;
         let several = (profile.several > 1).then(|| format!("built up of {} profiles", profile.several));
         let (profile, tapered) = match solid.entity("EndSweptArea") {
             Some(end) => larger(profile, self.profile(end)?),

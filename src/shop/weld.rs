@@ -10,7 +10,7 @@ use super::solid::Prism;
 use super::statement::Statement;
 use super::{Weld, WeldSort};
 use crate::exchange::Entity;
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::units::{Length, mm};
 
 /// The standard's property set.
@@ -94,7 +94,12 @@ impl<'a> Reading<'a> {
     }
 
     fn throat(&self, element: Entity<'a>, properties: &[Property<'_>], sort: WeldSort) -> Known<Length> {
-        let missing = |reason: String| Missing { what: "weld throat".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "weld throat".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let throats = self.sizes(element, properties, "a", "NominalThroatThickness", "weld-throat", SIZE);
         let legs = self.sizes(element, properties, "z", "WeldLegLength", "weld-leg", SIZE);
         for all in [&throats, &legs] {
@@ -128,7 +133,12 @@ impl<'a> Reading<'a> {
     }
 
     fn seam_length(&self, element: Entity<'a>, properties: &[Property<'_>], axis: Option<&[DVec3]>) -> Known<Length> {
-        let missing = |reason: String| Missing { what: "weld length".into(), reason, at: Some(element.place()) };
+        let missing = |reason: String| Missing {
+            what: "weld length".into(),
+            reason,
+            at: Some(element.place()),
+            ask: Ask::Fabricator,
+        };
         let stated = self.sizes(element, properties, "l", "WeldElementLength", "weld-length", LENGTH);
         if let [first, rest @ ..] = stated.as_slice() {
             return match rest.iter().find(|s| !((s.value - first.value).abs() <= 1.0)) {

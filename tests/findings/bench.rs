@@ -6,7 +6,7 @@ use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, Sta
 use faying::findings::{Context, rule};
 use faying::intent::{IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
 use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Joint, Kind, MemberAt, Stiffener, Welds};
-use faying::origin::{Datum, Known, Missing, Origin, Place};
+use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
 use faying::rulebook::{Grade, Rulebook, Section};
 use faying::shop::{Bolt, Identity, Member, Plate, Shape, Steelwork, Weld, WeldSort};
@@ -175,7 +175,7 @@ pub fn place(line: u32) -> Place {
 }
 
 pub fn missing(what: &str) -> Missing {
-    Missing { what: what.into(), reason: "no property states it".into(), at: None }
+    Missing { what: what.into(), reason: "no property states it".into(), at: None, ask: Ask::Fabricator }
 }
 
 pub fn known<T>(value: T) -> Known<T> {
@@ -259,6 +259,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
         welds: vec![(0, "flange-top"), (1, "web")],
         layout: Ok(layout),
         opposite: None,
+        opposite_unclear: None,
         disagreements: Vec::new(),
         place: Some(place(1)),
     }

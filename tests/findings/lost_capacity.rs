@@ -28,8 +28,8 @@ fn the_message_says_what_the_joint_has_lost_in_the_sense_that_is_asked_for() {
     let thinner = "the end plate is thinner than intended: 20 mm instead of 25 mm; as detailed the joint has ";
     for (detailed, words) in [
         (352.0, "12 % less moment resistance than intended"),
-        (399.0, "the intended moment resistance"),
-        (400.0, "the intended moment resistance"),
+        (399.0, "the intended moment resistance within 1 %"),
+        (400.0, "the intended moment resistance within 1 %"),
         (420.0, "5 % more moment resistance than intended"),
     ] {
         assert_eq!(message((detailed, 100.0), (400.0, 400.0)), format!("{thinner}{words}"));

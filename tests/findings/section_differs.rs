@@ -20,7 +20,7 @@ fn lighter_heavier_or_another() {
         let designation = section(&bench.rulebook, name).designation;
         column(&mut bench, name);
         let line = format!(
-            "comment | the supporting member is {how}: {designation} instead of HEB 300 | HEB 300 | {designation}"
+            "comment | the supporting member is {how}: {designation} instead of HE 300 B | HE 300 B | {designation}"
         );
         assert_eq!(bench.lines(ID), [line]);
     }
@@ -62,7 +62,7 @@ fn a_section_with_a_name_of_its_own_is_compared_by_its_sizes() {
         ID,
         |b| own(b, 2.0),
         &[
-            "comment | the supporting member is a lighter section than intended: COLUMN-A instead of HEB 300 | HEB 300 | \
+            "comment | the supporting member is a lighter section than intended: COLUMN-A instead of HE 300 B | HE 300 B | \
            COLUMN-A",
         ],
     );

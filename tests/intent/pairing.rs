@@ -2,14 +2,14 @@
 
 use faying::intent::{Intent, Pairing, pair};
 use faying::joints::{Joint, Joints, Kind};
-use faying::origin::{Missing, Place};
+use faying::origin::{Ask, Missing, Place};
 use faying::shop::{Identity, Member, Shape, Steelwork};
 use glam::{DVec2, DVec3};
 
 use super::sound;
 
 fn missing() -> Missing {
-    Missing { what: "section".into(), reason: "this test needs none".into(), at: None }
+    Missing { what: "section".into(), reason: "this test needs none".into(), at: None, ask: Ask::Fabricator }
 }
 
 fn member(guid: &str, mark: Option<&str>) -> Member {
@@ -48,6 +48,7 @@ pub fn steel(members: &[(&str, Option<&str>)], joints: &[Met<'_>]) -> (Joints, S
         welds: Vec::new(),
         layout: Err("this test needs none".into()),
         opposite: None,
+        opposite_unclear: None,
         disagreements: Vec::new(),
         place: None,
     };

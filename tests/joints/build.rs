@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 use std::sync::Arc;
 
-use faying::origin::{Datum, Known, Missing, Origin, Place};
+use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::rulebook::{Grade, Rulebook, Section};
 use faying::shop::{Bolt, Hole, Identity, Member, Part, Piece, Plate, Shape, Steelwork, Told, Weld, WeldSort};
 use faying::units::{Area, Length, Modulus, mm};
@@ -28,7 +28,7 @@ pub fn known<T>(value: T) -> Known<T> {
 }
 
 pub fn missing<T>(what: &str) -> Known<T> {
-    Err(Missing { what: what.into(), reason: "the test leaves it out".into(), at: None })
+    Err(Missing { what: what.into(), reason: "the test leaves it out".into(), at: None, ask: Ask::Fabricator })
 }
 
 /// Parts are named by their mark; the GlobalId is the mark with a hyphen in front.

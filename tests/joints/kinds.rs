@@ -28,6 +28,10 @@ fn an_end_plate_welded_on_the_web_only_is_flexible() {
 fn an_end_plate_shorter_than_the_beam_is_flexible() {
     let detail = Detail { bottom: 100.0, top: 330.0, rows: vec![290.0, 215.0, 140.0], ..Detail::default() };
     is(&frame(&[detail]), Kind::FlexibleEndPlate, 6, Some(0), Some(1));
+    let from_above = Detail { bottom: 20.0, ..Detail::default() };
+    is(&frame(&[from_above]), Kind::FlexibleEndPlate, 8, Some(0), Some(1));
+    let from_below = Detail { top: 390.0, rows: vec![345.0, 73.0], ..Detail::default() };
+    is(&frame(&[from_below]), Kind::FlexibleEndPlate, 4, Some(0), Some(1));
 }
 
 #[test]
@@ -59,8 +63,8 @@ fn an_end_plate_on_a_columns_web() {
     is(&on_web(short), Kind::FlexibleEndPlate, 4, Some(0), Some(1));
 }
 
-#[test]
-fn beams_on_both_sides_of_a_web_are_two_joints() {
+/// Beams B1 and B2 on both sides of a column's web, with the same bolts.
+fn both_sides() -> Steelwork {
     let mut steel = on_web(Detail::default());
     let other = on_web(Detail { beam_mark: "B2", turned: true, ..Detail::default() });
     // The second joint's own column is left out; its bolts are the first one's.
@@ -74,9 +78,24 @@ fn beams_on_both_sides_of_a_web_are_two_joints() {
         p
     }));
     steel.bolts.iter_mut().for_each(|bolt| bolt.start.x = -15.0 - 6.9);
+    steel
+}
+
+#[test]
+fn beams_on_both_sides_of_a_web_are_two_joints() {
+    let mut steel = both_sides();
     let joints = find(&steel).joints;
     let found: Vec<_> = joints.iter().map(|j| (j.mark.as_str(), j.kind, j.bolts.len())).collect();
     assert_eq!(found, [("B1 / C1", Kind::EndPlateToWeb, 8), ("B2 / C1", Kind::EndPlateToWeb, 8)]);
+    // A relation a beam, both with the same bolts: the members tell which is meant.
+    let bolts: Vec<Part> = (0..8).map(Part::Bolt).collect();
+    for (name, beam) in [("T1", 2), ("T2", 1)] {
+        let by: Vec<Part> = bolts.iter().copied().chain([Part::Plate(beam - 1)]).collect();
+        steel.told.push(told(name, &[Part::Member(beam), Part::Member(0)], &by));
+    }
+    let joints = find(&steel).joints;
+    let found: Vec<_> = joints.iter().map(|j| (j.mark.as_str(), j.supported, j.disagreements.len())).collect();
+    assert_eq!(found, [("T1", Some(2), 0), ("T2", Some(1), 0)]);
 }
 
 #[test]
@@ -182,7 +201,7 @@ fn a_base_plate_whose_anchors_are_not_modelled() {
     steel.members.push(member("C1", COLUMN, DVec3::Z * 6000.0, DVec3::ZERO, DVec3::X));
     steel.plates.push(plate("BP", -DVec3::Z * 15.0, DVec3::X, DVec3::Y, (500.0, 400.0), 30.0));
     let joint = is(&steel, Kind::ColumnBase, 0, None, Some(0));
-    assert!(joint.layout.unwrap_err().ends_with("no bolts or anchors were found"));
+    assert!(joint.layout.unwrap_err().ends_with("no bolt that was taken up holds its plate"));
     steel.told.push(told("F1", &[Part::Member(0)], &[Part::Plate(0)]));
     assert_eq!(only(&steel).mark, "F1");
     // A cap on the column's head is no base.
@@ -217,6 +236,44 @@ fn members_bolted_to_each_other() {
         steel.bolts.push(bolt("N", at(-15.0), at(15.0), 20.0));
     }
     is(&steel, Kind::OtherBolted, 2, Some(0), Some(1));
+}
+
+#[test]
+fn members_bolted_to_each_other_far_apart_are_two_joints() {
+    let mut steel = Steelwork::default();
+    for (mark, z) in [("R1", 0.0), ("R2", 406.4)] {
+        steel.members.push(member(mark, BEAM, DVec3::Z * z, DVec3::new(6000.0, 0.0, z), DVec3::Z));
+    }
+    for x in [1000.0, 1100.0, 5000.0] {
+        let at = |z: f64| DVec3::new(x, 40.0, 203.2 + z);
+        steel.bolts.push(bolt("N", at(-15.0), at(15.0), 20.0));
+    }
+    let mut found: Vec<usize> = find(&steel).joints.iter().map(|joint| joint.bolts.len()).collect();
+    found.sort_unstable();
+    assert_eq!(found, [1, 2]);
+}
+
+#[test]
+fn a_bolt_in_the_notch_of_a_plate_does_not_pass_through_it() {
+    let mut steel = Steelwork::default();
+    for z in [0.0, 12.0] {
+        let mut corner = plate("G", DVec3::Z * z, DVec3::X, DVec3::Y, (400.0, 400.0), 12.0);
+        let p = |x: f64, y: f64| glam::DVec2::new(x, y);
+        corner.outline = vec![
+            p(-200.0, -200.0),
+            p(200.0, -200.0),
+            p(200.0, -100.0),
+            p(-100.0, -100.0),
+            p(-100.0, 200.0),
+            p(-200.0, 200.0),
+        ];
+        steel.plates.push(corner);
+    }
+    for (x, y) in [(-150.0, -150.0), (100.0, 100.0)] {
+        steel.bolts.push(bolt("N", DVec3::new(x, y, -10.0), DVec3::new(x, y, 25.0), 20.0));
+    }
+    let joints = find(&steel);
+    assert_eq!((joints.joints[0].bolts.as_slice(), joints.loose_bolts.as_slice()), (&[0][..], &[1][..]));
 }
 
 #[test]

@@ -144,6 +144,22 @@ fn shanks_may_be_drawn_as_the_plates_thickness_or_long() {
     }
 }
 
+#[test]
+fn a_shank_drawn_as_the_plates_thickness_reaches_over_a_gap_that_counts_as_touching() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.bolts.iter_mut().for_each(|bolt| bolt.start.x = 160.25);
+    (steel.members[0].start.x, steel.members[0].end.x) = (-1.5, -1.5);
+    assert_eq!(layout(&steel).bolts.rows.len(), 4);
+}
+
+#[test]
+fn a_weld_on_the_plates_other_side_is_none_of_the_beams() {
+    let mut steel = frame(&[Detail::default()]);
+    let at = |x: f64, y: f64, z: f64| DVec3::new(160.25 + x, y, 4406.4 + z);
+    steel.welds.push(weld("seal", at(-3.0, -88.0, -3.0), at(0.0, 88.0, 3.0), 3.0));
+    assert_eq!(length(&layout(&steel).welds.flange_top), Some(7.0));
+}
+
 fn ribbed(rib: Rib) -> Steelwork {
     frame(&[Detail { ribs: vec![rib], ..Detail::default() }])
 }
@@ -180,6 +196,16 @@ fn a_stiffener_on_one_side_or_of_part_depth_says_so() {
 }
 
 #[test]
+fn two_plates_on_one_side_are_no_pair() {
+    let mut steel = ribbed(Rib { both_sides: false, ..RIB });
+    let mut twin = steel.plates[1].clone();
+    twin.centre.z += 1.0;
+    steel.plates.push(twin);
+    let stiffeners = layout(&steel).stiffeners;
+    assert!(stiffeners.len() == 2 && stiffeners.iter().all(|s| !s.both_sides));
+}
+
+#[test]
 fn an_uneven_pair_counts_as_its_lesser_half() {
     let mut steel = ribbed(RIB);
     steel.plates[1].thickness = mm(10.0);
@@ -202,7 +228,7 @@ fn web_plates_and_diagonals_are_named_as_not_credited() {
     let (along, middle) = (DVec3::new(1.0, 0.0, 1.0).normalize(), DVec3::new(0.0, -70.0, 4200.0));
     steel.plates.push(plate("DI", middle, along, DVec3::Y, (360.0, 126.0), 12.0));
     let layout = layout(&steel);
-    assert_eq!(layout.not_credited, ["diagonal DI is not credited", "web plate WP is not credited"]);
+    assert_eq!(layout.not_credited, ["a diagonal is not credited", "a web plate is not credited"]);
     assert!(layout.stiffeners.is_empty());
 }
 
@@ -212,7 +238,7 @@ fn a_diagonal_behind_the_end_plate_is_no_other_beams_end_plate() {
     // Its normal is 37° from the beam's axis, and the beam's end is near.
     let (along, middle) = (DVec3::new(-0.606, 0.0, 0.795), DVec3::new(0.0, 78.0, 4203.2));
     steel.plates.push(plate("DI", middle, along, DVec3::Y, (438.0, 142.0), 15.0));
-    assert_eq!(layout(&steel).not_credited, ["diagonal DI is not credited"]);
+    assert_eq!(layout(&steel).not_credited, ["a diagonal is not credited"]);
 }
 
 #[test]
@@ -221,7 +247,7 @@ fn a_stiffener_on_the_far_flange_only_is_not_credited() {
     steel.plates[1].centre.x *= -1.0;
     let layout = layout(&steel);
     assert!(layout.stiffeners.is_empty());
-    assert_eq!(layout.not_credited, ["transverse plate B1-S0b is not credited"]);
+    assert_eq!(layout.not_credited, ["a transverse plate is not credited"]);
 }
 
 #[test]
@@ -230,7 +256,7 @@ fn a_backing_plate_is_named_and_the_joint_is_laid_out() {
     let inside = DVec3::new(160.25 - 21.7 - 5.0, 0.0, 4397.7);
     steel.plates.push(plate("BP", inside, DVec3::Y, DVec3::Z, (150.0, 200.0), 10.0));
     steel.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 10.0);
-    assert_eq!(layout(&steel).not_credited, ["backing plate BP is not credited"]);
+    assert_eq!(layout(&steel).not_credited, ["a backing plate is not credited"]);
 }
 
 #[test]

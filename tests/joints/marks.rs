@@ -79,13 +79,13 @@ fn a_relation_with_other_bolts_or_members_is_a_disagreement() {
     let by = all_bolts(&steel)[..6].to_vec();
     steel.told.push(told("T1", &[Part::Member(1), Part::Member(0)], &by));
     let said = only(&steel).disagreements;
-    assert_eq!(said, ["relation \"T1\" names 6 bolts, geometry finds 8; 6 are the same"]);
+    assert_eq!(said, ["its relation names 6 bolts, geometry finds 8; 6 are the same"]);
     let far = DVec3::X * 20_000.0;
     steel.members.push(member("C9", COLUMN, far, far + DVec3::Z * 8000.0, DVec3::X));
     steel.told[0].between[1] = Part::Member(2);
     steel.told[0].by = all_bolts(&steel);
     let said = only(&steel).disagreements;
-    assert_eq!(said, ["relation \"T1\" connects C9, which geometry does not find at this joint"]);
+    assert_eq!(said, ["its relation connects C9, which geometry does not find at this joint"]);
 }
 
 #[test]
@@ -100,6 +100,17 @@ fn what_only_a_relation_says_is_a_joint_that_is_not_laid_out() {
     assert_eq!((joint.supporting, joint.supported, joint.at_end), (Some(0), Some(1), Some(false)));
     assert!(joint.layout.as_ref().unwrap_err().starts_with("only an explicit relation says so"));
     assert!(joints.loose_bolts.is_empty());
+}
+
+#[test]
+fn a_relation_between_members_that_meet_nowhere_is_a_joint_too() {
+    let mut steel = frame(&[]);
+    let start = DVec3::new(900.0, 0.0, 4000.0);
+    steel.members.push(member("B1", BEAM, start, start + DVec3::X * 3000.0, DVec3::Z));
+    steel.told.push(told("", &[Part::Member(0), Part::Member(1)], &[]));
+    let joint = only(&steel);
+    assert_eq!((joint.mark.as_str(), joint.supporting, joint.supported), ("B1 / C1", Some(0), Some(1)));
+    assert!(joint.layout.unwrap_err().ends_with("its members meet nowhere"));
 }
 
 /// Beam, plate and bolts stand 500 mm off the column, and the bolts beside the plate.
@@ -126,7 +137,7 @@ fn a_relation_between_parts_that_meet_without_bolts_is_no_joint() {
 fn a_weld_whose_name_speaks_of_another_place_says_so() {
     let mut steel = frame(&[Detail::default()]);
     steel.welds[0].identity.name = "fillet at bottom flange".into();
-    assert_eq!(only(&steel).disagreements, ["weld B1-W-top lies at \"flange-top\", which its name does not say"]);
+    assert_eq!(only(&steel).disagreements, ["a weld lies at \"flange-top\", which its name does not say"]);
 }
 
 #[test]
@@ -137,5 +148,5 @@ fn a_weld_without_a_place_is_placed_by_its_name_and_says_so() {
     steel.told.push(told("T1", &[Part::Member(0), Part::Member(1)], &[Part::Plate(0), Part::Weld(0)]));
     let joint = only(&steel);
     assert_eq!(length(&joint.layout.unwrap().welds.flange_top), Some(7.0));
-    assert_eq!(joint.disagreements, ["weld B1-W-top has no place: its name alone makes it \"flange-top\""]);
+    assert_eq!(joint.disagreements, ["a weld has no place: its name alone makes it \"flange-top\""]);
 }

@@ -1,6 +1,6 @@
 //! Invented reviews, built by hand.
 
-use faying::origin::{Missing, Place, Problem};
+use faying::origin::{Ask, Missing, Place, Problem};
 use faying::review::{
     Basis, BoltsBrief, CheckResult, Counts, Finding, JointReview, MemberBrief, Outcome, PlateBrief, Required,
     Resistance, Review, RowResult, Survey, WeldBrief,
@@ -80,7 +80,7 @@ pub fn finding(rule: &'static str, severity: Outcome, message: &str, values: Opt
 }
 
 pub fn missing(what: &str, reason: &str, at: Option<Place>) -> Missing {
-    Missing { what: what.into(), reason: reason.into(), at }
+    Missing { what: what.into(), reason: reason.into(), at, ask: Ask::Fabricator }
 }
 
 /// A review of these joints; the counts follow from them.

@@ -1,3 +1,3 @@
 //! Published worked examples, one file a publication.
 
-mod p398;
+pub mod p398;

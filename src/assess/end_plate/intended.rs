@@ -2,7 +2,7 @@
 
 use crate::intent::{IntendedDetail, IntendedStiffener};
 use crate::joints::{BoltRow, EndPlateLayout, MemberAt, Stiffener};
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook};
 use crate::units::Length;
 
@@ -173,5 +173,10 @@ fn stiffener(
 }
 
 fn missing(what: &str, reason: String, detail: &IntendedDetail) -> Missing {
-    Missing { what: what.into(), reason: format!("{reason} (detail {})", detail.name), at: detail.at.clone() }
+    Missing {
+        what: what.into(),
+        reason: format!("{reason} (detail {})", detail.name),
+        at: detail.at.clone(),
+        ask: Ask::Engineer,
+    }
 }

@@ -3,7 +3,7 @@
 
 use super::numbers::{Numbers, Row, StiffenerPair};
 use crate::eurocode::effective_length::{self as el, EffectiveLength, RowPlace};
-use crate::eurocode::stiffeners::{self, Pair};
+use crate::eurocode::stiffeners;
 use crate::eurocode::t_stub::{ModeOne, TStub, t_stub};
 use crate::eurocode::{Resistance, alpha, beam, column_web};
 use crate::rulebook::{self, Rulebook};
@@ -27,7 +27,7 @@ pub struct Limit {
     pub resistance: Resistance,
     /// Σ l_eff,1 of the rows, which is also b_eff of the web.
     pub length: Length,
-    /// Whether it is the T-stub of one row alone: then its share tells how far the bolts are used.
+    /// Whether it is a T-stub: then its share tells how far the bolts are used.
     pub bolts_used: bool,
 }
 
@@ -111,14 +111,20 @@ impl<'a> TensionSide<'a> {
     // ---- column side ------------------------------------------------------------------------------------------
 
     fn m_column(&self, row: &Row) -> Length {
-        0.5 * (row.gauge - self.n.column.t_w - 2.0 * (0.8 * self.n.r_c))
+        self.m_beside(row, self.n.r_c)
+    }
+
+    /// m of the column's flange with this root radius.
+    fn m_beside(&self, row: &Row, r: Length) -> Length {
+        0.5 * (row.gauge - self.n.column.t_w - 2.0 * (0.8 * r))
     }
 
     /// The stiffener right above (`up`) or below a tension row, with no other bolt row between, that the row's yield line
     /// reaches (m_2 below half of the plain pattern): m_2 and the pair. One further away helps nothing.
     fn stiffener_beside(&self, i: usize, up: bool) -> Option<(Length, &StiffenerPair)> {
         let row = self.rows[i].height;
-        let beyond = |height: Length| if up { height > row } else { height < row };
+        // A stiffener in a row's own plane counts as above it: m_2 is then below 0, and the row is refused.
+        let beyond = |height: Length| if up { height >= row } else { height < row };
         let distance = |height: Length| (height - row).abs();
         let pair = (self.n.stiffeners.iter().filter(|s| beyond(s.height)))
             .min_by(|a, b| distance(a.height).get().total_cmp(&distance(b.height).get()))?;
@@ -161,129 +167,163 @@ impl<'a> TensionSide<'a> {
         }
     }
 
-    fn column_limits(&self, first: usize, last: usize, limits: &mut Vec<Limit>) {
-        let n = self.n;
-        // A group never crosses a stiffener.
-        let parts = |i: usize| {
-            let between = self.rows[i + 1].height..self.rows[i].height;
-            n.stiffeners.iter().any(|s| between.contains(&s.height))
-        };
-        if (first..last).any(parts) {
-            if last == first + 1 {
-                self.around_stiffener(first, last, limits);
-            }
-            return;
+    /// The pairs of stiffeners that a range of rows leans on: those between its rows and those beside its ends.
+    fn pairs_at(&self, first: usize, last: usize) -> Vec<&StiffenerPair> {
+        if first == last {
+            return self.next_to_stiffener(first).map(|(_, pair)| pair).into_iter().collect();
         }
-        let mut w = Working::default();
+        let beside = [self.stiffener_beside(first, true), self.stiffener_beside(last, false)];
+        let outside = |s: &StiffenerPair| beside.iter().flatten().any(|(_, pair)| std::ptr::eq(*pair, s));
+        self.n.stiffeners.iter().filter(|s| outside(s) || self.parts(first, last, s)).collect()
+    }
+
+    /// Whether a pair stands between rows of the range: then they are no group.
+    fn parts(&self, first: usize, last: usize, pair: &StiffenerPair) -> bool {
+        (self.rows[last].height..self.rows[first].height).contains(&pair.height)
+    }
+
+    /// The column flange's T-stub of a range of rows with a root radius, with the stiffeners beside them or as if there were
+    /// none.
+    fn column_stub(&self, first: usize, last: usize, stiffened: bool, r: Length, w: &mut Working) -> TStub {
+        let n = self.n;
         let mut lengths = Vec::new();
         for i in first..=last {
             let row = &self.rows[i];
-            let (m, e) = (self.m_column(row), row.e_column);
+            let (m, e) = (self.m_beside(row, r), row.e_column);
+            let place = |beside: Option<(Length, &StiffenerPair)>, w: &mut Working| {
+                self.column_place(i, beside.filter(|_| stiffened), w)
+            };
             w.heading(format!("row {}", row.number));
             lengths.push(if first == last {
-                let place = self.column_place(i, self.next_to_stiffener(i), &mut w);
+                let place = place(self.next_to_stiffener(i), w);
                 let end = [self.column_end(i, true), self.column_end(i, false)].into_iter().flatten();
                 el::alone(place, m, e, end.min_by(|a, b| a.get().total_cmp(&b.get())))
             } else if i == first {
-                let place = self.column_place(i, self.stiffener_beside(i, true), &mut w);
+                let place = place(self.stiffener_beside(i, true), w);
                 el::end_of_group(place, m, e, self.pitch_below(i), self.column_end(i, true))
             } else if i == last {
-                let place = self.column_place(i, self.stiffener_beside(i, false), &mut w);
+                let place = place(self.stiffener_beside(i, false), w);
                 el::end_of_group(place, m, e, self.pitch_below(i - 1), self.column_end(i, false))
             } else {
                 el::inner_in_group(0.5 * (self.pitch_below(i - 1) + self.pitch_below(i)))
             });
         }
         // A group of rows with unequal gauge takes the largest m and the smallest n.
-        let m = self.over(first, last, |row| self.m_column(row), Length::max);
+        let m = self.over(first, last, |row| self.m_beside(row, r), Length::max);
         let n_e = self.over(first, last, |row| row.e_column.min(row.e_plate), Length::min);
-        let (l_1, l_2) = sum(&lengths, &mut w);
-        self.bending(
-            "column-flange-in-bending",
-            "column flange in bending",
-            "EN 1993-1-8:2005 6.2.6.4",
-            TStub {
-                l_eff_1: l_1,
-                l_eff_2: l_2,
-                t_f: n.column.t_f,
-                f_y: n.column_strength.f_y_flange,
-                m,
-                n: n_e.min(1.25 * m),
-                sum_F_t_Rd: self.bolt_force(first, last, n.B_p_column),
-                mode_one: self.mode_one(),
-            },
-            w.clone(),
-            (first, last),
-            limits,
-        );
-        let web = column_web::tension(
-            l_1,
+        let (l_eff_1, l_eff_2) = sum(&lengths, w);
+        TStub {
+            l_eff_1,
+            l_eff_2,
+            t_f: n.column.t_f,
+            f_y: n.column_strength.f_y_flange,
+            m,
+            n: n_e.min(1.25 * m),
+            sum_F_t_Rd: self.bolt_force(first, last, n.B_p_column),
+            mode_one: self.mode_one(),
+        }
+    }
+
+    fn column_limits(&self, first: usize, last: usize, limits: &mut Vec<Limit>) {
+        let n = self.n;
+        let pairs = self.pairs_at(first, last);
+        if !pairs.iter().any(|pair| first != last && self.parts(first, last, pair)) {
+            let mut w = Working::default();
+            let stub = self.column_stub(first, last, true, n.r_c, &mut w);
+            let (title, clause) = ("column flange in bending", "EN 1993-1-8:2005 6.2.6.4");
+            self.bending("column-flange-in-bending", title, clause, stub, w, (first, last), limits);
+        }
+        let mut w = Working::default();
+        let plain = self.column_stub(first, last, false, n.r_c, &mut w);
+        if !pairs.is_empty() {
+            limits.push(self.stiffener_limit(first, last, &pairs, &plain, w));
+        }
+        // A large radius brings the yield lines nearer and leaves less of the web.
+        let mut w = Working::default();
+        let length = self.column_stub(first, last, false, n.r_c_most, &mut w).l_eff_1.max(Length::ZERO);
+        let mut web = column_web::tension(
+            length,
             n.column.t_w,
             n.column_strength.f_y_web,
             n.column.a_v_z,
             self.beta,
             self.gamma_M0(),
         );
-        let pair = if first == last {
-            self.next_to_stiffener(first)
-        } else {
-            self.stiffener_beside(first, true).or(self.stiffener_beside(last, false))
-        };
         w.absorb(web.working);
-        let resistance = match pair {
-            Some((_, pair)) => stiffened(pair, n, web.value, w, self.gamma_M0()),
-            None => Resistance { value: web.value, working: w },
-        };
+        for pair in &pairs {
+            let stiffened = stiffeners::tension(&pair.plates(n), web.value, self.gamma_M0());
+            w.absorb(stiffened.working);
+            web.value = stiffened.value;
+        }
+        let what = if pairs.is_empty() { "column web" } else { "column web and stiffener" };
         limits.push(Limit {
             id: "column-web-in-tension",
-            title: format!("column web in tension, {}", self.named(first, last)),
+            title: format!("{what} in tension, {}", self.named(first, last)),
             clause: "EN 1993-1-8:2005 6.2.6.3",
             first,
             last,
-            resistance,
-            length: l_1,
+            resistance: Resistance { value: web.value, working: w },
+            length,
             bolts_used: false,
         });
     }
 
-    /// The rows on both sides of one stiffener share its net area with the web beside each.
-    fn around_stiffener(&self, first: usize, last: usize, limits: &mut Vec<Limit>) {
-        let Some((_, pair)) = self.stiffener_beside(first, false) else { return };
-        let n = self.n;
-        let mut w = Working::default();
-        let mut lengths = Vec::new();
-        for i in [first, last] {
-            let row = &self.rows[i];
-            w.heading(format!("row {}", row.number));
-            let place = self.column_place(i, self.next_to_stiffener(i), &mut w);
-            lengths.push(el::alone(place, self.m_column(row), row.e_column, self.column_end(i, i == first)));
-        }
-        let (l_1, _) = sum(&lengths, &mut w);
-        let web = column_web::tension(
-            l_1,
-            n.column.t_w,
-            n.column_strength.f_y_web,
-            n.column.a_v_z,
-            self.beta,
-            self.gamma_M0(),
-        );
-        w.absorb(web.working);
-        limits.push(Limit {
-            id: "column-web-in-tension",
-            title: format!("column web and stiffener in tension, {}", self.named(first, last)),
-            clause: "EN 1993-1-8:2005 6.2.6.3",
+    /// What the stiffeners bear that the rows lean on, and the flange without them where that is more. Rows beside one
+    /// pair: what the pair can take of them. A longer range: the flange without stiffeners and the pairs' own resistance,
+    /// the pattern in which the stiffeners yield with it.
+    fn stiffener_limit(
+        &self,
+        first: usize,
+        last: usize,
+        pairs: &[&StiffenerPair],
+        plain: &TStub,
+        mut w: Working,
+    ) -> Limit {
+        let gamma_M0 = self.gamma_M0();
+        let flange = t_stub(plain, gamma_M0).resistance;
+        w.absorb(flange.working);
+        let share = |i: usize| {
+            let m = self.m_column(&self.rows[i]);
+            self.next_to_stiffener(i).map(|(m_2, _)| m / (m + m_2))
+        };
+        let beside_one = match (pairs, last - first) {
+            ([pair], 0) => Some(pair),
+            ([pair], 1) if self.parts(first, last, pair) => Some(pair),
+            _ => None,
+        };
+        let value = match (beside_one, [share(first), share(last)].into_iter().flatten().reduce(f64::max)) {
+            (Some(pair), Some(most)) => {
+                let support = stiffeners::support(&pair.plates(self.n), most, gamma_M0);
+                w.absorb(support.working);
+                support.value.max(flange.value)
+            }
+            _ => pairs.iter().fold(flange.value, |value, pair| {
+                let with = stiffeners::tension(&pair.plates(self.n), value, gamma_M0);
+                w.absorb(with.working);
+                with.value
+            }),
+        };
+        Limit {
+            id: "column-stiffener-in-tension",
+            title: format!("column stiffener beside {}", self.named(first, last)),
+            clause: "EN 1993-1-8:2005 6.2.6.4",
             first,
             last,
-            resistance: stiffened(pair, n, web.value, w, self.gamma_M0()),
-            length: l_1,
+            resistance: Resistance { value, working: w },
+            length: plain.l_eff_1,
             bolts_used: false,
-        });
+        }
     }
 
     // ---- end plate side ---------------------------------------------------------------------------------------
 
     fn m_plate(&self, row: &Row) -> Length {
-        0.5 * (row.gauge - self.n.beam.t_w - 2.0 * Numbers::fillet(self.n.a_web))
+        self.m_web(row, self.n.a_web)
+    }
+
+    /// m of the end plate beside the beam's web with fillets of throat `a`.
+    fn m_web(&self, row: &Row, a: Option<Length>) -> Length {
+        0.5 * (row.gauge - self.n.beam.t_w - 2.0 * Numbers::fillet(a))
     }
 
     fn m_x(&self, row: &Row) -> Length {
@@ -311,13 +351,40 @@ impl<'a> TensionSide<'a> {
             self.bending(title.0, title.1, title.2, stub, w, (first, last), limits);
             return;
         }
+        let (l_1, l_2) = self.plate_lengths(first, last, n.a_web, &mut w);
+        let m = self.over(first, last, |row| self.m_plate(row), Length::max);
+        let n_e = self.over(first, last, |row| row.e_plate.min(row.e_column), Length::min);
+        let stub = TStub { m, n: n_e.min(1.25 * m), ..self.plate_stub(l_1, l_2, first, last) };
+        let (title, clause) = ("end plate in bending", "EN 1993-1-8:2005 6.2.6.5");
+        self.bending("end-plate-in-bending", title, clause, stub, w, (first, last), limits);
+
+        // A large fillet brings the yield lines nearer and leaves less of the web; none is thicker than the web.
+        let mut w = Working::default();
+        let (length, _) = self.plate_lengths(first, last, n.a_web.or(Some(n.beam.t_w)), &mut w);
+        let length = length.max(Length::ZERO);
+        let web = beam::web_tension(length, n.beam.t_w, n.beam_strength.f_y_web, self.gamma_M0());
+        w.absorb(web.working);
+        limits.push(Limit {
+            id: "beam-web-in-tension",
+            title: format!("beam web in tension, {}", self.named(first, last)),
+            clause: "EN 1993-1-8:2005 6.2.6.8",
+            first,
+            last,
+            resistance: Resistance { value: web.value, working: w },
+            length,
+            bolts_used: false,
+        });
+    }
+
+    /// Σ l_eff,1 and Σ l_eff,2 of rows beside the beam's web, with a fillet of throat `a` there.
+    fn plate_lengths(&self, first: usize, last: usize, a: Option<Length>, w: &mut Working) -> (Length, Length) {
         let mut lengths = Vec::new();
         for i in first..=last {
             let row = &self.rows[i];
-            let (m, e) = (self.m_plate(row), row.e_plate);
+            let (m, e) = (self.m_web(row, a), row.e_plate);
             w.heading(format!("row {}", row.number));
             let mut place = || match self.places[i] {
-                OnPlate::BelowFlange => RowPlace::Stiffened { alpha: self.alpha(m, e, self.m_2_plate(row), &mut w) },
+                OnPlate::BelowFlange => RowPlace::Stiffened { alpha: self.alpha(m, e, self.m_2_plate(row), w) },
                 _ => RowPlace::Plain,
             };
             lengths.push(if first == last {
@@ -330,31 +397,7 @@ impl<'a> TensionSide<'a> {
                 el::inner_in_group(0.5 * (self.pitch_below(i - 1) + self.pitch_below(i)))
             });
         }
-        let (l_1, l_2) = sum(&lengths, &mut w);
-        let m = self.over(first, last, |row| self.m_plate(row), Length::max);
-        let n_e = self.over(first, last, |row| row.e_plate.min(row.e_column), Length::min);
-        let stub = TStub { m, n: n_e.min(1.25 * m), ..self.plate_stub(l_1, l_2, first, last) };
-        self.bending(
-            "end-plate-in-bending",
-            "end plate in bending",
-            "EN 1993-1-8:2005 6.2.6.5",
-            stub,
-            w.clone(),
-            (first, last),
-            limits,
-        );
-        let web = beam::web_tension(l_1, n.beam.t_w, n.beam_strength.f_y_web, self.gamma_M0());
-        w.absorb(web.working);
-        limits.push(Limit {
-            id: "beam-web-in-tension",
-            title: format!("beam web in tension, {}", self.named(first, last)),
-            clause: "EN 1993-1-8:2005 6.2.6.8",
-            first,
-            last,
-            resistance: Resistance { value: web.value, working: w },
-            length: l_1,
-            bolts_used: false,
-        });
+        sum(&lengths, w)
     }
 
     fn plate_stub(&self, l_eff_1: Length, l_eff_2: Length, first: usize, last: usize) -> TStub {
@@ -393,7 +436,7 @@ impl<'a> TensionSide<'a> {
             last,
             resistance: Resistance { value: result.resistance.value, working },
             length: stub.l_eff_1,
-            bolts_used: first == last,
+            bolts_used: true,
         });
     }
 
@@ -432,7 +475,7 @@ impl<'a> TensionSide<'a> {
 }
 
 /// "row 2", "rows 2-3", always counted from the top.
-fn named(a: usize, b: usize) -> String {
+pub fn named(a: usize, b: usize) -> String {
     if a == b { format!("row {a}") } else { format!("rows {}-{}", a.min(b), a.max(b)) }
 }
 
@@ -449,11 +492,4 @@ fn sum(lengths: &[EffectiveLength], w: &mut Working) -> (Length, Length) {
     let sum_l_nc: Length = lengths.iter().map(|l| l.nc).sum();
     crate::given!(w, "sum over the rows"; sum_l_cp, sum_l_nc);
     (sum_l_cp.min(sum_l_nc), sum_l_nc)
-}
-
-fn stiffened(pair: &StiffenerPair, n: &Numbers, web: Force, mut working: Working, gamma_M0: f64) -> Resistance {
-    let pair = Pair { b_s: pair.b_s, t_s: pair.t_s, cope: n.r_c, f_y_s: pair.f_y };
-    let resistance = stiffeners::tension(&pair, web, gamma_M0);
-    working.absorb(resistance.working);
-    Resistance { value: resistance.value, working }
 }

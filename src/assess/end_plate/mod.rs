@@ -11,13 +11,14 @@ mod weld_checks;
 
 pub use intended::intended;
 use numbers::{Noted, Numbers};
+use shear::Tension;
 
-use super::{About, Assessment, CaseResult, Gap, MomentResistance, Sense, State, Verdict};
+use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict};
 use crate::intent::LoadCase;
 use crate::joints::EndPlateLayout;
-use crate::origin::Missing;
-use crate::rulebook::Rulebook;
-use crate::units::Moment;
+use crate::origin::{Ask, Missing};
+use crate::rulebook::{RowForces, Rulebook};
+use crate::units::{Force, Length, Moment};
 
 /// What stands on the column's other flange in a load case.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -28,6 +29,8 @@ pub enum Opposite {
     Moment(Moment),
     /// A joint whose moment nobody states: β at its upper bound.
     NotStated,
+    /// Something whose moment does not tell the panel's shear, and why, in one clause: β at its upper bound.
+    Unclear(&'static str),
 }
 
 /// One load case with what happens on the other side.
@@ -42,11 +45,32 @@ pub struct Demand<'a> {
 /// The upper bound of β, 5.3(9).
 const BETA_MAX: f64 = 2.0;
 
+/// Why a resistance is only a lower bound where β was put at its upper bound.
+pub const BOUND_BY_OPPOSITE: &str =
+    "the resistance is only a lower bound: the moment on the column's other flange is not known";
+
+/// Why a shear resistance is only a lower bound in a load case that leaves M blank.
+pub const BOUND_BY_TENSION: &str =
+    "the resistance is only a lower bound: M is not stated, and the bolts are taken as fully in tension";
+
+/// The same where something that would raise it is not known.
+fn lower_bound(gaps: &[Gap]) -> Option<String> {
+    let mut unknown: Vec<&str> = Vec::new();
+    for gap in gaps {
+        if let Gap::LowerBound(missing) = gap
+            && !unknown.contains(&missing.what.as_str())
+        {
+            unknown.push(&missing.what);
+        }
+    }
+    (!unknown.is_empty()).then(|| format!("the resistance is only a lower bound: not known: {}", unknown.join(", ")))
+}
+
 /// β = |1 − M_2/M_1| ≤ 2, 5.3(9) (5.4), moments positive with tension at the top on either side.
 fn beta(own: Moment, opposite: Opposite) -> f64 {
     match opposite {
         Opposite::None => 1.0,
-        Opposite::NotStated => BETA_MAX,
+        Opposite::NotStated | Opposite::Unclear(_) => BETA_MAX,
         Opposite::Moment(other) if own == Moment::ZERO => {
             if other == Moment::ZERO {
                 1.0
@@ -70,15 +94,16 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
             .push(format!("k_wc = {}: the column's axial stress is not stated (6.2.6.2(2))", rulebook.settings.k_wc));
         noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
-        if two_sided {
-            noted.assumptions.push("β = 2, its upper bound, where the moments of both sides are not stated".into());
-        }
         let turned = n.upside_down();
-        let solve = |sense: Sense, beta: f64| match sense {
-            Sense::Hogging => moment::resistance(n, sense, beta, rulebook),
-            Sense::Sagging => moment::resistance(&turned, sense, beta, rulebook),
+        let solve = |sense: Sense, beta: f64, shear: Force, rule: Option<RowForces>| {
+            moment::resistance(if sense == Sense::Hogging { n } else { &turned }, sense, beta, shear, rule, rulebook)
         };
-        let at_rest = |sense, noted: &mut Noted| match solve(sense, plain_beta) {
+        let at_rest = |sense, noted: &mut Noted| match solve(
+            sense,
+            plain_beta,
+            Force::ZERO,
+            Some(rulebook.settings.row_forces),
+        ) {
             Ok(resistance) => Some(resistance),
             Err(reason) => {
                 let what = if sense == Sense::Hogging { "tension at the top" } else { "tension at the bottom" };
@@ -86,7 +111,12 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
                 let needed = demands.is_empty() && sense == Sense::Hogging
                     || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense));
                 if needed {
-                    noted.gaps.push(Gap::NotChecked(Missing { what: format!("moment with {what}"), reason, at: None }));
+                    noted.gaps.push(Gap::NotChecked(Missing {
+                        what: format!("moment with {what}"),
+                        reason,
+                        at: None,
+                        ask: Ask::Method,
+                    }));
                 }
                 None
             }
@@ -94,14 +124,22 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
         assessment.hogging = at_rest(Sense::Hogging, &mut noted);
         assessment.sagging = at_rest(Sense::Sagging, &mut noted);
         let n_pl = n.beam.area * n.beam_strength.f_y_flange / rulebook.annex.gamma_m0;
-        let lower_bound = noted.gaps.iter().any(|gap| matches!(gap, Gap::LowerBound(_)));
-        let context = Cases { n, rulebook, n_pl, lower_bound, solve: &solve };
+        let lower_bound = lower_bound(&noted.gaps);
+        let at_rest = [&assessment.hogging, &assessment.sagging];
+        let reach = at_rest.map(|m| m.as_ref().map(|m| m.web_in_tension));
+        let unknown = Tension::Unknown {
+            // A sense that can't be solved may take all of the web.
+            web_in_tension: reach.into_iter().map(|reach| reach.unwrap_or(n.beam.h)).fold(Length::ZERO, Length::max),
+        };
+        let context = Cases { n, rulebook, n_pl, lower_bound, unknown, solve: &solve };
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(context.result(case, demand));
         }
         govern(&mut assessment, demands);
+        noted.assumptions.extend(at_upper_bound(&assessment, demands, two_sided));
         let tension = assessment.hogging.as_ref().or(assessment.sagging.as_ref());
-        assessment.shear = Some(shear::resistance(n, tension, 1.0, rulebook));
+        let tension = tension.map_or(unknown, |moment| Tension::Rows(moment, 1.0));
+        assessment.shear = Some(shear::resistance(n, tension, rulebook));
     } else {
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None, shear: None });
@@ -136,6 +174,43 @@ fn govern(assessment: &mut Assessment, demands: &[Demand<'_>]) {
     }
 }
 
+/// Where β was put at its upper bound for want of the moment on the other side: load cases, and resistances of a sense
+/// that no load case asks for. One sentence each.
+fn at_upper_bound(assessment: &Assessment, demands: &[Demand<'_>], two_sided: bool) -> Vec<String> {
+    const BOUND: &str = "β = 2, its upper bound (5.3(9)),";
+    let mut whys: Vec<&str> = Vec::new();
+    let mut sentences = Vec::new();
+    let why = |opposite| match opposite {
+        Opposite::NotStated => Some("the moment on the column's other flange is not stated"),
+        Opposite::Unclear(why) => Some(why),
+        Opposite::None | Opposite::Moment(_) => None,
+    };
+    whys.extend(demands.iter().filter(|demand| demand.case.moment.is_some()).filter_map(|demand| why(demand.opposite)));
+    whys.dedup();
+    for reason in whys {
+        let cases = demands.iter().filter(|d| d.case.moment.is_some() && why(d.opposite) == Some(reason));
+        let names: Vec<&str> = cases.map(|demand| demand.case.name.as_str()).collect();
+        sentences.push(format!("{BOUND} in {}: {reason}", names.join(", ")));
+    }
+    if !two_sided {
+        return sentences;
+    }
+    let asked = |sense| assessment.cases.iter().any(|c| c.moment.as_ref().is_some_and(|m| m.sense == sense));
+    let which = match (
+        assessment.hogging.is_some() && !asked(Sense::Hogging),
+        assessment.sagging.is_some() && !asked(Sense::Sagging),
+    ) {
+        (true, true) => "in both senses",
+        (true, false) => "with tension at the top",
+        (false, true) => "with tension at the bottom",
+        (false, false) => return sentences,
+    };
+    sentences.push(format!(
+        "{BOUND} for the moment resistance {which}: no load case asks for it, and beams meet both column flanges"
+    ));
+    sentences
+}
+
 fn not_computed(case: &LoadCase) -> Vec<Verdict> {
     let reason = "an input is missing";
     let unproven = |about, required: Option<f64>, unit| Verdict {
@@ -159,17 +234,41 @@ struct Cases<'a, F> {
     n: &'a Numbers,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,
-    /// Whether the resistances are a lower bound: then "not met" is not proven.
-    lower_bound: bool,
+    /// Why the resistances are a lower bound, if they are: then "not met" is not proven.
+    lower_bound: Option<String>,
+    /// The bolts' tension where the moment is not known.
+    unknown: Tension<'a>,
     solve: &'a F,
 }
 
-impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
+impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, String>> Cases<'_, F> {
+    /// The moment resistance of a case. Where an unknown makes it a lower bound, it must be one beyond the cliff of
+    /// 6.2.7.2(9) too: what is unknown may raise a row above 1.9 F_t,Rd and so lower the rows below it.
+    fn moment(&self, m: Moment, opposite: Opposite, shear: Force) -> Result<MomentResistance, String> {
+        let sense = sense_of(m);
+        let rule = self.rulebook.settings.row_forces;
+        let solved = (self.solve)(sense, beta(m, opposite), shear, Some(rule))?;
+        let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.F_t_Rd);
+        let unknown = rule == RowForces::LinearBeyond19
+            && (self.lower_bound.is_some()
+                || matches!(opposite, Opposite::NotStated | Opposite::Unclear(_))
+                    && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
+        if !unknown || solved.rows.first().is_some_and(steep) {
+            return Ok(solved);
+        }
+        let linear = (self.solve)(sense, solved.beta, shear, None)?;
+        Ok(if linear.without_welds < solved.without_welds { linear } else { solved })
+    }
+
     fn result(&self, case: usize, demand: &Demand<'_>) -> CaseResult {
         let LoadCase { moment, shear, axial, .. } = demand.case;
         let mut verdicts = Vec::new();
-        let solved = moment.map(|m| (self.solve)(sense_of(m), beta(m, demand.opposite)));
-        let bound = demand.opposite == Opposite::NotStated;
+        let beside = shear.map_or(Force::ZERO, Force::abs);
+        let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
+        let bound = match demand.opposite {
+            Opposite::NotStated | Opposite::Unclear(_) => Some(BOUND_BY_OPPOSITE),
+            Opposite::None | Opposite::Moment(_) => None,
+        };
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {
                 let governed = if resistance.moment < resistance.without_welds {
@@ -193,19 +292,25 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
             _ => verdicts.push(unproven(About::Moment, None, "M is not stated".into())),
         }
         let solved = solved.and_then(Result::ok);
-        // Without a stated moment the bolts might be fully in tension.
-        let (tension, share) = match (&solved, moment) {
-            (Some(resistance), Some(m)) => (Some(resistance.clone()), m.abs() / resistance.without_welds),
-            _ => ((self.solve)(Sense::Hogging, BETA_MAX).ok(), 1.0),
+        let tension = match (&solved, moment) {
+            (Some(resistance), Some(m)) => {
+                let share = m.abs() / resistance.without_welds;
+                Tension::Rows(resistance, if share.is_finite() { share.min(1.0) } else { 1.0 })
+            }
+            _ => self.unknown,
         };
-        let shear_resistance = shear.map(|_| {
-            let share = if share.is_finite() { share.min(1.0) } else { 1.0 };
-            shear::resistance(self.n, tension.as_ref(), share, self.rulebook)
-        });
+        let shear_resistance = shear.map(|_| shear::resistance(self.n, tension, self.rulebook));
         verdicts.push(match (shear, &shear_resistance) {
             (Some(v), Some(resistance)) => {
                 let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
-                self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, moment.is_none())
+                let bound = solved.is_none().then_some(BOUND_BY_TENSION);
+                let mut verdict = self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, bound);
+                // More than the bolts carry without any tension is proven not to be carried, whatever is not known.
+                let most = || shear::resistance(self.n, Tension::None, self.rulebook).shear;
+                if verdict.state == State::Unproven && v.get().is_finite() && v.abs() > most() {
+                    (verdict.state, verdict.reason) = (State::NotMet, None);
+                }
+                verdict
             }
             _ => unproven_shear(),
         });
@@ -249,16 +354,17 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
         resistance: f64,
         unit: &'static str,
         governed_by: String,
-        bound: bool,
+        bound: Option<&str>,
     ) -> Verdict {
         let utilisation = required / resistance;
         let met = required <= resistance * (1.0 + self.rulebook.tolerances.utilisation);
-        let bound = bound || self.lower_bound;
+        let number = required.is_finite() && resistance.is_finite();
+        let bound = if number { bound.or(self.lower_bound.as_deref()) } else { Some("it comes to no number") };
         Verdict {
             about,
-            state: match met {
+            state: match met && number {
                 true => State::Met,
-                false if bound => State::Unproven,
+                false if bound.is_some() => State::Unproven,
                 false => State::NotMet,
             },
             required: Some(required),
@@ -266,19 +372,24 @@ impl<F: Fn(Sense, f64) -> Result<MomentResistance, String>> Cases<'_, F> {
             unit,
             utilisation: Some(utilisation).filter(|u| u.is_finite()),
             governed_by,
-            reason: (!met && bound).then(|| "the resistance is only a lower bound".into()),
+            reason: bound.filter(|_| !(met && number)).map(str::to_owned),
         }
     }
 
-    fn weld_verdict(&self, required: Moment, resistance: &MomentResistance, bound: bool) -> Verdict {
+    fn weld_verdict(&self, required: Moment, resistance: &MomentResistance, bound: Option<&str>) -> Verdict {
         // The welds' share of the moment: they limit it at moment/without_welds, or carry more than the rest can bring.
+        let used = |c: &Component| if c.at_full == Force::ZERO { 0.0 } else { (c.at_full / c.resistance).abs() };
         let worst = (resistance.components.iter())
             .filter(|c| matches!(c.id.as_str(), "flange-weld" | "web-weld"))
-            .max_by(|a, b| (a.at_full / a.resistance).total_cmp(&(b.at_full / b.resistance)));
+            .max_by(|a, b| used(a).total_cmp(&used(b)));
         let Some(worst) = worst else {
             return unproven(About::Weld, Some(required), "no weld could be computed".into());
         };
-        let limit = resistance.without_welds * (worst.resistance / worst.at_full);
+        // Without a row in tension nothing pulls at the welds: they carry as much as the rest does.
+        let limit = match used(worst) {
+            0.0 => resistance.without_welds,
+            used => resistance.without_welds / used,
+        };
         self.verdict(About::Weld, required.knm().abs(), limit.knm(), "kNm", worst.title.clone(), bound)
     }
 }

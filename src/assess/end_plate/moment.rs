@@ -4,22 +4,31 @@ use super::limits::{TensionSide, lever_arm};
 use super::numbers::Numbers;
 use super::{rows, totals, weld_checks};
 use crate::assess::{Component, MomentResistance, Sense};
-use crate::rulebook::Rulebook;
+use crate::rulebook::{RowForces, Rulebook};
 use crate::units::{Force, Length, Moment};
 
-/// M_j,Rd with `n` turned so that the tension side is up.
+/// M_j,Rd with `n` turned so that the tension side is up, beside a shear `V_Ed` (0 where none is stated), the row forces by
+/// `rule` (see [`rows::forces`]).
 ///
 /// # Errors
 /// Why it can't be assessed: one sentence.
-pub fn resistance(n: &Numbers, sense: Sense, beta: f64, rulebook: &Rulebook) -> Result<MomentResistance, String> {
+#[allow(non_snake_case, reason = "the standard's symbol")]
+pub fn resistance(
+    n: &Numbers,
+    sense: Sense,
+    beta: f64,
+    V_Ed: Force,
+    rule: Option<RowForces>,
+    rulebook: &Rulebook,
+) -> Result<MomentResistance, String> {
     let mut notes = Vec::new();
     let side = TensionSide::new(n, rulebook, beta)?;
     let limits = side.limits();
-    let totals = totals::totals(n, rulebook, beta, &mut notes)?;
+    let totals = totals::totals(n, rulebook, beta, V_Ed, &mut notes)?;
     let arms: Vec<Length> = side.rows.iter().map(|row| lever_arm(n, row)).collect();
     let heights: Vec<Length> = side.rows.iter().map(|row| row.height).collect();
     let numbers: Vec<usize> = side.rows.iter().map(|row| row.number).collect();
-    let forces = rows::forces(n, &arms, &numbers, &limits, &totals, rulebook.settings.row_forces, &mut notes);
+    let forces = rows::forces(n, &arms, &numbers, &limits, &totals, rule, &mut notes);
     let without_welds: Moment = forces.iter().map(|row| row.force * row.lever_arm).sum();
     let total: Force = forces.iter().map(|row| row.force).sum();
 

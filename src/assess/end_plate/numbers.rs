@@ -1,12 +1,16 @@
 //! The numbers of an end-plate joint: what the layout states and the rulebook adds, or what is missing.
 
 use crate::assess::{Gap, Input};
+use crate::eurocode::stiffeners::Pair;
 use crate::eurocode::{beam, bolts};
 use crate::joints::{EndPlateLayout, MemberAt, Stiffener};
-use crate::origin::{Datum, Known, Missing, Origin};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook, Section, Strength};
 use crate::units::{Area, Force, Length, Modulus, Stress, mm};
 use crate::working::Working;
+
+/// No rolled I section of the tables has a larger root radius.
+const R_MOST: Length = mm(30.0);
 
 /// Strengths of a rolled section's flange and web, and the smaller f_u.
 #[derive(Clone, Copy, Debug)]
@@ -27,6 +31,14 @@ pub struct StiffenerPair {
     pub throat: Length,
 }
 
+impl StiffenerPair {
+    /// As the formulas take it: no wider than the column's flange, cut back by the column's root radius.
+    pub fn plates(&self, n: &Numbers) -> Pair {
+        let free = 0.5 * (n.column.b - n.column.t_w);
+        Pair { b_s: self.b_s.min(free), t_s: self.t_s, cope: n.r_c_most, f_y_s: self.f_y }
+    }
+}
+
 /// One row, seen from the tension side.
 #[derive(Clone, Copy, Debug)]
 pub struct Row {
@@ -45,9 +57,13 @@ pub struct Numbers {
     pub column: Section,
     pub column_strength: MemberStrength,
     pub r_c: Length,
+    /// r_c, or the most that it may be: what shortens the web in tension and the stiffeners' bearing.
+    pub r_c_most: Length,
     pub beam: Section,
     pub beam_strength: MemberStrength,
     pub r_b: Length,
+    /// r_b, or the most that it may be: what shortens the welds.
+    pub r_b_most: Length,
     /// W_pl,y or W_el,y by the beam's class.
     pub W_beam: Modulus,
     pub beam_class: u8,
@@ -104,12 +120,12 @@ impl Noted {
         }
     }
 
-    fn not_checked(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None }));
+    fn not_checked(&mut self, what: &str, reason: String, ask: Ask) {
+        self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None, ask }));
     }
 
     fn lower_bound(&mut self, what: &str, reason: String) {
-        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None }));
+        self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None, ask: Ask::Fabricator }));
     }
 
     fn member(&mut self, role: &str, at: &MemberAt, rulebook: &Rulebook) -> Option<(Section, MemberStrength, Length)> {
@@ -125,7 +141,7 @@ impl Noted {
         let r = section.r.unwrap_or_else(|| {
             self.lower_bound(
                 &format!("{role} root radius"),
-                "the model gives none and the section is in no table; taken as 0, the safe side".into(),
+                format!("the model gives none and the section is in no table; taken as 0, or as {R_MOST} where a large one is the worse"),
             );
             Length::ZERO
         });
@@ -171,14 +187,18 @@ impl Numbers {
         let size = d.and_then(|d| {
             let size = rulebook.bolt_size(d);
             if size.is_none() {
-                noted.not_checked("bolt size", format!("no table has a bolt of {d}"));
+                noted.not_checked("bolt size", format!("no table has a bolt of {d}"), Ask::Method);
             }
             size
         });
         let class = class.and_then(|name| {
             let class = rulebook.bolt_class(&name);
             if class.is_none() {
-                noted.not_checked("bolt class", format!("{name} is no class of EN 1993-1-8 Table 3.1"));
+                noted.not_checked(
+                    "bolt class",
+                    format!("{name} is no class of EN 1993-1-8 Table 3.1"),
+                    Ask::Fabricator,
+                );
             }
             class
         });
@@ -187,23 +207,34 @@ impl Numbers {
             noted.inputs.push(given(&format!("row {} gauge", i + 1), row.gauge, "between the bolts' axes"));
         }
 
-        let a_top = weld(noted, "weld at the top flange", &layout.welds.flange_top);
-        let a_bottom = weld(noted, "weld at the bottom flange", &layout.welds.flange_bottom);
-        let a_web = weld(noted, "weld at the web", &layout.welds.web);
+        let least = rulebook.welds.min_throat;
+        let a_top = weld(noted, "weld at the top flange", &layout.welds.flange_top, least);
+        let a_bottom = weld(noted, "weld at the bottom flange", &layout.welds.flange_bottom, least);
+        let a_web = weld(noted, "weld at the web", &layout.welds.web, least);
 
         let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, rulebook)).collect();
 
         let ((column, column_strength, r_c), (beam, beam_strength, r_b)) = (column?, beam?);
+        let (r_c_most, r_b_most) = (column.r.unwrap_or(R_MOST), beam.r.unwrap_or(R_MOST));
         let (plate_strength, size, class, d_0) = (plate_strength?, size?, class?, d_0?);
+
+        let beam_h = beam.h;
+        let reasons = unsound(layout, beam_h, size.d, d_0, rulebook);
+        if !reasons.is_empty() {
+            for (what, reason) in reasons {
+                noted.not_checked(what, reason, Ask::Fabricator);
+            }
+            return None;
+        }
 
         let clear = |section: &Section, r: Length| {
             (0.5 * (section.b - section.t_w - 2.0 * r), section.h - 2.0 * (section.t_f + r))
         };
         let (c_f, c_w) = clear(&beam, r_b);
         let beam_class =
-            beam::class_in_bending(c_f, beam.t_f, c_w, beam.t_w, beam_strength.f_y_flange.min(beam_strength.f_y_web));
+            beam::class_in_bending((c_f, beam.t_f, beam_strength.f_y_flange), (c_w, beam.t_w, beam_strength.f_y_web));
         if beam_class == 4 {
-            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation));
+            noted.not_checked("beam of class 4", format!("{} is of class 4 in bending", beam.designation), Ask::Method);
             return None;
         }
         noted.assumptions.push(format!(
@@ -226,9 +257,11 @@ impl Numbers {
             column,
             column_strength,
             r_c,
+            r_c_most,
             beam,
             beam_strength,
             r_b,
+            r_b_most,
             t_p: plate.thickness,
             b_p: plate.width,
             plate_top: plate.top,
@@ -286,10 +319,85 @@ impl Numbers {
     }
 }
 
+/// What of the layout no formula may be asked about: the thing and why. Written so that NaN is refused.
+fn unsound(
+    layout: &EndPlateLayout,
+    beam_h: Length,
+    d: Length,
+    d_0: Length,
+    rulebook: &Rulebook,
+) -> Vec<(&'static str, String)> {
+    let mut reasons = Vec::new();
+    let positive = |value: Length| value.get().is_finite() && value > Length::ZERO;
+    let (plate, rows) = (&layout.plate, &layout.bolts.rows);
+    if !(positive(plate.thickness) && positive(plate.width)) {
+        reasons.push(("end plate size", format!("thickness {}, width {}", plate.thickness, plate.width)));
+    }
+    let position = rulebook.tolerances.position;
+    let finite = plate.bottom.get().is_finite() && plate.top.get().is_finite();
+    if !(finite && plate.bottom <= position && plate.top >= beam_h - position) {
+        reasons.push((
+            "end plate shorter than the beam",
+            format!("it reaches from {} to {} above the soffit, the beam from 0 to {beam_h}", plate.bottom, plate.top),
+        ));
+    }
+    for (i, row) in rows.iter().enumerate() {
+        if !(row.height.get().is_finite() && [row.gauge, row.edge_plate, row.edge_column].into_iter().all(positive)) {
+            reasons.push((
+                "bolt row",
+                format!(
+                    "row {}: height {}, gauge {}, edge distances {} and {}",
+                    i + 1,
+                    row.height,
+                    row.gauge,
+                    row.edge_plate,
+                    row.edge_column
+                ),
+            ));
+        }
+    }
+    for (i, pair) in rows.windows(2).enumerate() {
+        if let [upper, lower] = pair
+            && !(upper.height - lower.height >= d)
+        {
+            let pitch = upper.height - lower.height;
+            reasons.push(("bolt pitch", format!("rows {} and {} lie {pitch} apart, bolts of {d}", i + 1, i + 2)));
+        }
+    }
+    let ends = [layout.column_above, layout.column_below];
+    if !ends.into_iter().flatten().all(|end| end.get().is_finite()) {
+        reasons.push(("column end", "its distance from the rows is no number".into()));
+    }
+    let size = rulebook.tolerances.size;
+    match rulebook.clearance(d) {
+        Some(normal) if d_0 >= d && d_0 <= d + normal.round + size => {}
+        Some(normal) => reasons.push((
+            "bolt hole",
+            format!(
+                "{d_0} for a bolt of {d}: Table 3.4 is for normal round holes, {} here (3.6.1(4)); larger ones are not assessed yet",
+                d + normal.round
+            ),
+        )),
+        None => reasons.push(("bolt hole", format!("no table has the clearance of a bolt of {d}"))),
+    }
+    reasons
+}
+
 /// The throat, or the safe geometry (no fillet), said twice: the weld itself can't be checked, and the T-stubs beside it
 /// are a lower bound.
-fn weld(noted: &mut Noted, name: &str, known: &Known<Length>) -> Option<Length> {
+fn weld(noted: &mut Noted, name: &str, known: &Known<Length>, least: Length) -> Option<Length> {
     let throat = noted.take(name, known, |a| format!("throat {a}"));
+    let throat = throat.filter(|a| {
+        let counts = *a >= least && a.get().is_finite();
+        if !counts {
+            noted.not_checked(
+                name,
+                format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"),
+                Ask::Fabricator,
+            );
+        }
+        counts
+    });
     if throat.is_none() {
         noted.lower_bound(name, "T-stubs beside it are computed with no fillet, the safe geometry".into());
     }
@@ -302,6 +410,10 @@ fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Opti
         noted.assumptions.push(format!("{at} is not credited: {why}"));
         None
     };
+    let sizes = [stiffener.thickness, stiffener.outstand];
+    if !(stiffener.height.get().is_finite() && sizes.iter().all(|t| t.get().is_finite() && *t > mm(0.0))) {
+        return refuse(&format!("a thickness of {} and an outstand of {}", stiffener.thickness, stiffener.outstand));
+    }
     if !stiffener.both_sides {
         return refuse("it is on one side of the web only");
     }
@@ -323,7 +435,10 @@ fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Opti
     ));
     noted.inputs.push(Input::of(&format!("{at}: grade"), grade, |g| g.0.clone()));
     let throat = match &stiffener.weld {
-        Ok(weld) => weld.value,
+        Ok(weld) => {
+            noted.assumptions.push(format!("{at}: its own weld is not checked"));
+            weld.value
+        }
         Err(_) => {
             noted.assumptions.push(format!(
                 "{at}: no throat known, m2 is measured to its face (the safe geometry) and its weld is not checked"

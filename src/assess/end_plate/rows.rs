@@ -23,17 +23,18 @@ fn thin_enough(n: &Numbers) -> bool {
     n.t_p <= limit(n.plate_strength.f_y) || n.column.t_f <= limit(n.column_strength.f_y_flange)
 }
 
-/// Works down the rows. `lever_arms` and `numbers` are of the tension rows, from the tension side.
+/// Works down the rows. `lever_arms` and `numbers` are of the tension rows, from the tension side. No `rule`: in proportion
+/// from the first row on, whatever it carries.
 pub fn forces(
     n: &Numbers,
     lever_arms: &[Length],
     numbers: &[usize],
     limits: &[Limit],
     totals: &[Total],
-    rule: RowForces,
+    rule: Option<RowForces>,
     notes: &mut Vec<String>,
 ) -> Vec<RowForce> {
-    let plastic = rule == RowForces::ThinPlateOrLinear && thin_enough(n);
+    let plastic = rule == Some(RowForces::ThinPlateOrLinear) && thin_enough(n);
     let mut forces: Vec<RowForce> = Vec::new();
     let mut linear: Option<Linear> = None;
     for (r, (&lever_arm, &number)) in lever_arms.iter().zip(numbers).enumerate() {
@@ -41,7 +42,7 @@ pub fn forces(
         for limit in limits.iter().filter(|limit| limit.last == r) {
             let above: Force = forces[limit.first..r].iter().map(|f| f.force).sum();
             let left = limit.resistance.value - above;
-            if potential.is_none_or(|(least, _)| !(left >= least)) {
+            if potential.is_none_or(|(least, _)| tighter(left, least)) {
                 potential = Some((left, &limit.title));
             }
         }
@@ -50,40 +51,64 @@ pub fn forces(
         let above: Force = forces.iter().map(|f| f.force).sum();
         for total in totals {
             if let Some(allowed) = total.allows()
-                && !(allowed - above >= force)
+                && tighter(allowed - above, force)
             {
                 (force, governed_by) = (allowed - above, total.title.to_owned());
             }
         }
         if let Some(Linear { force: of_row, lever_arm: its_arm, row }) = &linear {
             let allowed = *of_row * (lever_arm / *its_arm);
-            if !(allowed >= force) {
+            if tighter(allowed, force) {
                 (force, governed_by) = (allowed, format!("row forces in proportion to row {row}, 6.2.7.2(9)"));
             }
         }
         force = force.max(Force::ZERO);
         if linear.is_none() && !plastic {
             let triggers = match rule {
-                RowForces::LinearBeyond19 => !(force <= 1.9 * n.F_t_Rd),
-                RowForces::ThinPlateOrLinear => true,
+                Some(RowForces::LinearBeyond19) => !(force <= 1.9 * n.F_t_Rd),
+                Some(RowForces::ThinPlateOrLinear) | None => true,
             };
             if triggers && r + 1 < lever_arms.len() {
                 notes.push(match rule {
-                    RowForces::LinearBeyond19 => format!(
+                    Some(RowForces::LinearBeyond19) => format!(
                         "row {number} carries {force}, more than 1.9 Ft,Rd = {}: the rows beyond it are limited in proportion to their lever arms (6.2.7.2(9))",
                         1.9 * n.F_t_Rd
                     ),
-                    RowForces::ThinPlateOrLinear => format!(
+                    Some(RowForces::ThinPlateOrLinear) => format!(
                         "neither end plate nor column flange is thin enough for a plastic distribution: the rows beyond row {number} are limited in proportion to their lever arms"
+                    ),
+                    None => format!(
+                        "row {number} might pass 1.9 Ft,Rd = {} if all were known: the rows beyond it are limited in proportion to their lever arms (6.2.7.2(9))",
+                        1.9 * n.F_t_Rd
                     ),
                 });
                 linear = Some(Linear { force, lever_arm, row: number });
             }
         }
-        let alone = limits.iter().filter(|l| l.bolts_used && l.first == r).map(|l| l.resistance.value);
-        let bolt_share = alone.reduce(Force::min).map_or(1.0, |least| force / least);
         let potential = potential.max(Force::ZERO);
-        forces.push(RowForce { row: number, lever_arm, potential, force, governed_by, bolt_share });
+        forces.push(RowForce { row: number, lever_arm, potential, force, governed_by, bolt_share: 0.0 });
+    }
+    for r in 0..forces.len() {
+        forces[r].bolt_share = bolt_share(r, &forces, limits);
     }
     forces
+}
+
+/// Whether a limit counts instead of the one that stood so far; a NaN counts, and nothing counts instead of it.
+fn tighter(limit: Force, standing: Force) -> bool {
+    !(limit >= standing) && !standing.get().is_nan()
+}
+
+/// How far a row's bolts are used, prying included: the most of all its T-stubs, alone and in groups, since a T-stub at its
+/// resistance may have every bolt at F_t,Rd.
+fn bolt_share(row: usize, forces: &[RowForce], limits: &[Limit]) -> f64 {
+    let mut most = 0.0;
+    for limit in limits.iter().filter(|l| l.bolts_used && (l.first..=l.last).contains(&row)) {
+        let force: Force = forces.iter().take(limit.last + 1).skip(limit.first).map(|f| f.force).sum();
+        let share = if force == Force::ZERO { 0.0 } else { force / limit.resistance.value };
+        if !(share <= most) {
+            most = share;
+        }
+    }
+    most
 }

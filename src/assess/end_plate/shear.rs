@@ -15,9 +15,23 @@ fn beta_hole(n: &Numbers) -> f64 {
     if n.d <= mm(14.0) && !(n.d_0 - n.d < mm(2.0)) { 0.85 } else { 1.0 }
 }
 
-/// V_Rd with `share` (0 to 1) of the tension that `moment` puts into its rows. The bolts' own minimum is added up row by
+/// The tension that acts in the bolts together with the shear.
+#[derive(Clone, Copy)]
+pub enum Tension<'a> {
+    /// Nobody can say: every bolt may be fully used; the web is taken by rows in tension over this length.
+    Unknown {
+        /// See [`MomentResistance::web_in_tension`].
+        web_in_tension: Length,
+    },
+    /// None at all: no shear resistance can be above this one.
+    None,
+    /// This share (0 to 1) of what the moment resistance puts into its rows.
+    Rows(&'a MomentResistance, f64),
+}
+
+/// V_Rd beside a tension. The bolts' own minimum is added up row by
 /// row (each bolt the smaller of its shear and bearing resistance); the shear may act up or down, the worse counts.
-pub fn resistance(n: &Numbers, moment: Option<&MomentResistance>, share: f64, rulebook: &Rulebook) -> ShearResistance {
+pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> ShearResistance {
     let gamma_M2 = rulebook.annex.gamma_m2;
     let (alpha_v, area) = if rulebook.settings.thread_in_shear_plane { (n.alpha_v, n.A_s) } else { (0.6, n.A) };
     let shear = bolts::shear(alpha_v, n.f_ub, area, beta_hole(n), gamma_M2);
@@ -27,12 +41,18 @@ pub fn resistance(n: &Numbers, moment: Option<&MomentResistance>, share: f64, ru
     w.absorb(shear.working);
     let mut per_row = Vec::new();
     for row in &n.rows {
-        let tension =
-            moment.and_then(|m| m.rows.iter().find(|f| f.row == row.number)).filter(|f| f.force > Force::ZERO);
         let used = match tension {
-            None => 0.0,
-            Some(_) if rulebook.settings.shear_with_full_tension => 1.0,
-            Some(row) => (row.bolt_share * share).min(1.0),
+            Tension::Unknown { .. } => 1.0,
+            Tension::None => 0.0,
+            Tension::Rows(moment, share) => {
+                let row = moment.rows.iter().find(|f| f.row == row.number).filter(|f| f.force > Force::ZERO);
+                match row {
+                    None => 0.0,
+                    Some(_) if rulebook.settings.shear_with_full_tension => 1.0,
+                    // A share that is no number counts as all.
+                    Some(row) => (row.bolt_share * share).min(1.0),
+                }
+            }
         };
         w.heading(format!("row {}", row.number));
         let left = bolts::shear_beside_tension(shear.value, used * n.F_t_Rd, n.F_t_Rd);
@@ -70,7 +90,11 @@ pub fn resistance(n: &Numbers, moment: Option<&MomentResistance>, share: f64, ru
             working: worst.2,
         });
     }
-    let reach = moment.map_or(Length::ZERO, |m| m.web_in_tension);
+    let reach = match tension {
+        Tension::Unknown { web_in_tension } => web_in_tension,
+        Tension::None => Length::ZERO,
+        Tension::Rows(moment, _) => moment.web_in_tension,
+    };
     if let Some(weld) = weld_checks::in_shear(n, rulebook, reach) {
         if !(weld.resistance >= least.0) {
             least = (weld.resistance, weld.title.clone());

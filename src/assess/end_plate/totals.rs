@@ -2,7 +2,7 @@
 #![allow(non_snake_case)]
 
 use super::numbers::{Numbers, StiffenerPair};
-use crate::eurocode::stiffeners::{self, Pair, Web};
+use crate::eurocode::stiffeners::{self, Web};
 use crate::eurocode::web_panel::{self, FrameAction};
 use crate::eurocode::{Resistance, beam, column_web};
 use crate::rulebook::Rulebook;
@@ -32,14 +32,22 @@ impl Total {
 
 /// The credited pair level with a flange whose middle is at `level`: within half the flange's thickness.
 fn pair_at(n: &Numbers, level: Length) -> Option<&StiffenerPair> {
-    n.stiffeners.iter().find(|s| (s.height - level).abs() <= 0.5 * n.beam.t_f)
+    let off = |s: &StiffenerPair| (s.height - level).abs();
+    let level = n.stiffeners.iter().filter(|s| off(s) <= 0.5 * n.beam.t_f);
+    level.min_by(|a, b| off(a).get().total_cmp(&off(b).get()).then(a.height.get().total_cmp(&b.height.get())))
 }
 
-/// All total limits for tension at the top and one β.
+/// All total limits for tension at the top and one β, beside a shear `V_Ed` in the beam.
 ///
 /// # Errors
-/// Why the web panel can't be assessed.
-pub fn totals(n: &Numbers, rulebook: &Rulebook, beta: f64, notes: &mut Vec<String>) -> Result<Vec<Total>, String> {
+/// Why the web panel or the beam can't be assessed.
+pub fn totals(
+    n: &Numbers,
+    rulebook: &Rulebook,
+    beta: f64,
+    V_Ed: Force,
+    notes: &mut Vec<String>,
+) -> Result<Vec<Total>, String> {
     let (gamma_M0, gamma_M1) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1);
     let (column, strength) = (&n.column, n.column_strength);
     let h_clear = column.h - 2.0 * column.t_f;
@@ -48,13 +56,16 @@ pub fn totals(n: &Numbers, rulebook: &Rulebook, beta: f64, notes: &mut Vec<Strin
     let tension_pair = pair_at(n, n.beam.h - 0.5 * n.beam.t_f);
 
     let a_p = n.a_compression.unwrap_or(Length::ZERO);
+    // The column's lower end lies this far below a level.
+    let to_end = |level: Length| Some(level - n.rows.last()?.height + n.column_below?);
     let web = column_web::Compression {
         t_fb: n.beam.t_f,
         a_p,
         t_fc: column.t_f,
         s: n.r_c,
         t_p: n.t_p,
-        room: (-n.plate_bottom - 2.0_f64.sqrt() * a_p).max(Length::ZERO),
+        projection: (-n.plate_bottom).max(Length::ZERO),
+        to_end: to_end(0.5 * n.beam.t_f),
         t_wc: column.t_w,
         d_wc,
         f_y_wc: strength.f_y_web,
@@ -65,8 +76,12 @@ pub fn totals(n: &Numbers, rulebook: &Rulebook, beta: f64, notes: &mut Vec<Strin
     let (plain, crushing) = column_web::compression(&web, gamma_M0, gamma_M1);
     let (mut title, mut compression) = ("column web in compression", plain);
     if let Some(pair) = compression_pair {
-        let plates = Pair { b_s: pair.b_s, t_s: pair.t_s, cope: n.r_c, f_y_s: pair.f_y };
-        if plates.stocky() {
+        let plates = pair.plates(n);
+        if !plates.rigid(column.t_w, h_clear) {
+            notes.push(
+                "the compression stiffeners are too slight to hold the web (EN 1993-1-5 9.3.3(3)): not credited".into(),
+            );
+        } else if plates.stocky() {
             title = "stiffened column web in compression";
             let web = Web {
                 F_web: compression.value,
@@ -74,6 +89,7 @@ pub fn totals(n: &Numbers, rulebook: &Rulebook, beta: f64, notes: &mut Vec<Strin
                 t_wc: column.t_w,
                 h_clear,
                 f_y_wc: strength.f_y_web,
+                runs_on: to_end(pair.height),
             };
             let stiffened = stiffeners::compression(&plates, &web, gamma_M0, gamma_M1);
             compression.working.absorb(stiffened.working);
@@ -90,10 +106,13 @@ pub fn totals(n: &Numbers, rulebook: &Rulebook, beta: f64, notes: &mut Vec<Strin
             h: n.beam.h,
             b_fb: n.beam.b,
             t_fb: n.beam.t_f,
+            t_wb: n.beam.t_w,
+            A_v: n.beam.a_v_z,
             f_y: n.beam_strength.f_y_flange,
+            V_Ed,
         },
         gamma_M0,
-    );
+    )?;
 
     let frame = match (compression_pair, tension_pair) {
         (Some(lower), Some(upper)) => Some(FrameAction {
@@ -101,7 +120,7 @@ pub fn totals(n: &Numbers, rulebook: &Rulebook, beta: f64, notes: &mut Vec<Strin
             b_fc: column.b,
             t_fc: column.t_f,
             f_y_fc: strength.f_y_flange,
-            b_st: 2.0 * lower.b_s.min(upper.b_s) + column.t_w,
+            b_st: 2.0 * lower.plates(n).b_s.min(upper.plates(n).b_s) + column.t_w,
             t_st: lower.t_s.min(upper.t_s),
             f_y_st: lower.f_y.min(upper.f_y),
         }),

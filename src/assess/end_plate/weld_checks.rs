@@ -7,7 +7,6 @@ use crate::assess::{Component, RowForce};
 use crate::eurocode::welds;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length};
-use crate::working::Working;
 use crate::{given, step};
 
 /// β_w and f_u of the weaker part joined.
@@ -16,8 +15,8 @@ fn parts(n: &Numbers) -> Option<(f64, crate::units::Stress)> {
     Some((n.beta_w_beam?.max(n.beta_w_plate?), n.beam_strength.f_u.min(n.plate_strength.f_u)))
 }
 
-/// The tension flange's fillets against the rows beside the flange, and the web's against the rows beside the web, at the
-/// joint's full moment resistance. `None` where a throat or a grade is not known.
+/// The tension flange's fillets against the rows beside the flange, and the web's against the rows beside the web, alone and
+/// in groups, at the joint's full moment resistance. `None` where a throat or a grade is not known.
 pub fn at_flange_and_web(
     n: &Numbers,
     rulebook: &Rulebook,
@@ -27,19 +26,28 @@ pub fn at_flange_and_web(
 ) -> (Option<Component>, Option<Vec<Component>>) {
     let gamma_M2 = rulebook.annex.gamma_m2;
     let Some((beta_w, f_u)) = parts(n) else { return (None, None) };
-    let below: Vec<usize> = (0..rows.len()).filter(|&i| heights[i] < n.beam.h).collect();
-    let beside_flange = |i: &usize| heights[*i] > n.beam.h || below.first() == Some(i);
+    let first_below = (0..rows.len()).find(|&i| heights[i] < n.beam.h);
+    let F_rows: Force =
+        rows.iter().zip(0..).filter(|(_, i)| first_below.is_none_or(|b| *i <= b)).map(|(r, _)| r.force).sum();
+    let (b_fb, t_fb, t_wb, r) = (n.beam.b, n.beam.t_f, n.beam.t_w, n.r_b_most);
+    let F_flange = b_fb * t_fb * n.beam_strength.f_y_flange;
 
     let flange = n.a_tension.map(|a| {
         let fillet = welds::across(a, f_u, beta_w, gamma_M2);
         let mut w = fillet.working;
-        let (F_w_Rd, b_fb, t_fb, t_wb, r) = (fillet.per_length, n.beam.b, n.beam.t_f, n.beam.t_w, n.r_b);
-        let f_y = n.beam_strength.f_y_flange;
-        let F_rows: Force = (0..rows.len()).filter(beside_flange).map(|i| rows[i].force).sum();
-        given!(w, "beam flange; rows beside it"; b_fb, t_fb, t_wb, r, f_y, F_rows);
-        step!(w, "both faces of the flange, 4.5.1", l_w = b_fb + (b_fb - t_wb - 2.0 * r));
+        let (F_w_Rd, f_y, b_p) = (fillet.per_length, n.beam_strength.f_y_flange, n.b_p);
+        let beyond_flange = n.plate_top - n.beam.h;
+        given!(w, "beam flange on the plate; rows beside it"; b_fb, t_fb, t_wb, r, f_y, b_p, beyond_flange, F_rows);
+        step!(w, "leg of the fillet", leg = 2.0_f64.sqrt() * a);
+        // A plate that ends at the flange has no room for the outer fillet.
+        let b_outer = if beyond_flange >= leg { b_fb.min(b_p) } else { Length::ZERO };
+        given!(w, "where the plate has room for it"; b_outer);
+        step!(w, "faces of the flange, 4.5.1", l_w = b_outer + (b_fb.min(b_p) - t_wb - 2.0 * r));
         step!(w, "4.5.3.2", F_flange_w_Rd = F_w_Rd * l_w);
-        step!(w, "6.2.3(4); no more than the flange can bring", F_flange_Ed = F_rows.min(b_fb * t_fb * f_y));
+        step!(w, "the most that the flange can bring", F_flange_most = F_flange);
+        // A weaker weld than the flange gives way as the rows' force reaches it, whatever the flange could bring.
+        let F_most = if F_flange_w_Rd >= F_flange_most { F_flange_most } else { F_rows };
+        step!(w, "6.2.3(4)", F_flange_Ed = F_rows.min(F_most));
         Component {
             id: "flange-weld".into(),
             title: "weld at the tension flange".into(),
@@ -52,25 +60,32 @@ pub fn at_flange_and_web(
 
     let web = n.a_web.map(|a| {
         let fillet = welds::across(a, f_u, beta_w, gamma_M2);
-        (below.iter().skip(1))
-            .map(|&i| {
-                let mut w = Working::default();
-                w.absorb(fillet.working.clone());
-                let F_w_Rd = fillet.per_length;
-                let F_row = rows[i].force;
-                let b_eff = web_length(limits, i);
-                given!(w, "row beside the web"; F_row, b_eff);
-                step!(w, "both sides of the web, 4.5.3.2", F_web_w_Rd = 2.0 * F_w_Rd * b_eff);
-                Component {
-                    id: "web-weld".into(),
-                    title: format!("weld at the web, row {}", rows[i].row),
-                    clause: "EN 1993-1-8:2005 4.5.3.2",
-                    resistance: F_web_w_Rd,
-                    at_full: F_row,
-                    working: w,
-                }
-            })
-            .collect()
+        let one = |limit: &Limit, first: usize, last: usize, force: Force| {
+            let mut w = fillet.working.clone();
+            let (F_w_Rd, F_row, b_eff) = (fillet.per_length, force, limit.length);
+            given!(w, "rows beside the web"; F_row, b_eff);
+            step!(w, "both sides of the web, 4.5.3.2", F_web_w_Rd = 2.0 * F_w_Rd * b_eff);
+            Component {
+                id: "web-weld".into(),
+                title: format!("weld at the web, {}", super::limits::named(rows[first].row, rows[last].row)),
+                clause: "EN 1993-1-8:2005 4.5.3.2",
+                resistance: F_web_w_Rd,
+                at_full: force,
+                working: w,
+            }
+        };
+        let mut components = Vec::new();
+        for limit in limits.iter().filter(|limit| limit.id == "beam-web-in-tension" && limit.last < rows.len()) {
+            let force: Force = rows[limit.first..=limit.last].iter().map(|row| row.force).sum();
+            let beside_flange = Some(limit.first) == first_below;
+            if !beside_flange {
+                components.push(one(limit, limit.first, limit.last, force));
+            } else if limit.first == limit.last && !(F_rows <= F_flange) {
+                // What the flange can't bring comes through the web.
+                components.push(one(limit, limit.first, limit.last, F_rows - F_flange));
+            }
+        }
+        components
     });
     (flange, web)
 }
@@ -86,7 +101,7 @@ pub fn in_shear(n: &Numbers, rulebook: &Rulebook, tension_reach: Length) -> Opti
     let (beta_w, f_u) = parts(n)?;
     let fillet = welds::along(n.a_web?, f_u, beta_w, rulebook.annex.gamma_m2);
     let mut w = fillet.working;
-    let (F_w_Rd, h, t_f, r) = (fillet.per_length, n.beam.h, n.beam.t_f, n.r_b);
+    let (F_w_Rd, h, t_f, r) = (fillet.per_length, n.beam.h, n.beam.t_f, n.r_b_most);
     given!(w, "beam web"; h, t_f, r, tension_reach);
     step!(w, "the web below the rows in tension", l_w = (h - 2.0 * (t_f + r) - tension_reach).max(Length::ZERO));
     step!(w, "both sides of the web, 4.5.3.2", V_w_Rd = 2.0 * F_w_Rd * l_w);

@@ -307,6 +307,8 @@ pub struct Missing {
     pub what: String,
     /// Where it was looked for.
     pub reason: String,
+    /// Who can close the gap: "fabricator", "engineer" or "method" (nobody: it is beyond what is assessed).
+    pub ask: String,
     /// The part that lacks it.
     pub at: Option<Place>,
 }
@@ -429,6 +431,8 @@ pub struct Part {
 pub struct Lack {
     /// The thing.
     pub what: String,
+    /// Who can close the gap: "fabricator", "engineer" or "method".
+    pub ask: String,
     /// Marks of all joints that lack it.
     pub joints: Vec<String>,
     /// Where it was looked for.

@@ -1,0 +1,9 @@
+//! The strength of end-plate joints: laws on invented joints, a second way of computing, limits known from theory, and what
+//! once slipped through.
+
+pub mod joint;
+mod known_limits;
+mod laws;
+mod plastic;
+mod safe;
+mod strengthening;
