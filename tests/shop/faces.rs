@@ -75,6 +75,15 @@ fn a_sharp_i_by_its_faces_is_the_section_of_its_name() {
     }
 }
 
+/// Turned about its own axis by so little that the box along the axes of the world is hardly larger.
+#[test]
+fn a_slight_turn_is_not_lost() {
+    for angle in [1e-4, 5e-4, 2e-3] {
+        let steelwork = part("UKB 457x191x67", &beam().moved(DAffine3::from_rotation_z(angle)).faceted());
+        close(member(&steelwork).depth.x.abs(), f64::sin(angle), 1e-9);
+    }
+}
+
 #[test]
 fn a_faceted_i_of_another_size_than_its_name_has_no_section() {
     // UKB 457x191x74: 457.0 x 190.4 x 9.0 x 14.5.
