@@ -2,6 +2,11 @@
 //!
 //! All lengths are mm, in one right-handed world frame with z up; [`Steelwork::origin`] has been taken off, so that
 //! coordinates of a map grid lose no digits.
+//!
+//! Every body comes to right prisms, whatever the exchange wrote: swept solids and primitives at once, bodies given by
+//! their faces through sections across a few likely axes. What is curved, tapered or built up comes to a prism that
+//! stands in for it and says so. Only then is a part told by its function: shape and size first, names second, class
+//! last. Nuts and washers of their own are evidence for the bolt on their axis.
 
 mod body;
 mod bolt;

@@ -223,27 +223,23 @@ impl Asked<'_> {
 
     /// Something long that is no straight prism of one section; an error if it is not even long.
     fn stand_in(&self, mesh: &Mesh, faces: &[DVec3]) -> Solid {
-        // A tapered part ends in two parallel faces.
+        // A tapered part ends in two parallel faces; the larger one stands for it.
         let all = faces.iter().take(12).map(|axis| Levels::of(mesh, *axis)).filter(|levels| levels.at.len() == 2);
         let along = all.max_by(|a, b| a.depth().total_cmp(&b.depth()));
-        let tapers = along.as_ref().and_then(|levels| {
-            let [one, other] = [0.01, 0.99].map(|share| levels.slice(levels.low() + share * levels.depth()));
-            let (a, b) = (one?.outer.box_along(DVec2::X).size, other?.outer.box_along(DVec2::X).size);
-            if (a - b).abs().max_element() <= 2.0 * LEVEL {
-                return Some("cut at a slant to its length all along, or twisted".to_owned());
+        if let Some(mut tapered) = along.and_then(|levels| self.tapered(&levels)) {
+            let size = tapered.profile.outer.least_box(DVec2::X).size;
+            if tapered.depth >= LONG * size.max_element() {
+                tapered.profile.kind = Kind::Outline;
+                return Ok(tapered);
             }
-            Some(format!("tapered: {:.0} x {:.0} mm near one end, {:.0} x {:.0} mm near the other", a.x, a.y, b.x, b.y))
-        });
+        }
         let first = mesh.points.first().copied().unwrap_or_default();
         let far = |from: DVec3| {
             let distance = |p: &&DVec3| p.distance_squared(from);
             mesh.points.iter().max_by(|a, b| distance(a).total_cmp(&distance(b))).copied().unwrap_or_default()
         };
         let one = far(first);
-        let chord = along
-            .filter(|_| tapers.is_some())
-            .map_or_else(|| (far(one) - one).normalize_or_zero(), |levels| levels.axis);
-        let levels = Levels::of(mesh, chord);
+        let levels = Levels::of(mesh, (far(one) - one).normalize_or_zero());
         let flat = |p: &DVec3| DVec2::new(p.dot(levels.x), p.dot(levels.y));
         let (mut low, mut high) = (DVec2::INFINITY, DVec2::NEG_INFINITY);
         for p in mesh.points.iter().map(flat) {
@@ -258,9 +254,23 @@ impl Asked<'_> {
         let slice = Slice { outer: Loop::new(corners)?, voids: Vec::new(), beside: 0 };
         let mut prism = self.prism(&levels, slice, levels.low(), levels.high());
         prism.profile.kind = Kind::Boxed;
-        prism.beyond = Some(
-            tapers.unwrap_or_else(|| "its faces show no straight prism of one section (curved or built up)".into()),
-        );
+        prism.beyond = Some("no straight prism of one section by its faces (curved or built up)".into());
         Ok(prism)
+    }
+
+    /// Two sections at the ends that are not one: the larger one over the whole length.
+    fn tapered(&self, levels: &Levels<'_>) -> Option<Prism> {
+        let [one, other] = [0.01, 0.99].map(|share| levels.slice(levels.low() + share * levels.depth()));
+        let (one, other) = (one?, other?);
+        let [a, b] = [&one, &other].map(|slice| slice.outer.box_along(DVec2::X).size);
+        let why = if (a - b).abs().max_element() <= 2.0 * LEVEL {
+            "cut at a slant to its length all along, or twisted".to_owned()
+        } else {
+            format!("tapered: {:.0} x {:.0} mm near one end, {:.0} x {:.0} mm near the other", a.x, a.y, b.x, b.y)
+        };
+        let larger = if other.outer.area() > one.outer.area() { other } else { one };
+        let mut prism = self.prism(levels, larger, levels.low(), levels.high());
+        prism.beyond = Some(why);
+        Some(prism)
     }
 }

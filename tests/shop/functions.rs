@@ -130,6 +130,11 @@ fn bolts_are_the_same_in_whatever_way_they_are_written() {
 
 /// A joint of an end plate: column HEB 300, beam IPE 500, plate, eight bolts; each body by `form`, the bolts by `bolts`.
 fn joint(form: impl Fn(&Body) -> String, bolts: &str) -> Steelwork {
+    joint_of(form, bolts, |_| {})
+}
+
+/// The same with the beam changed, which lies along z until it is turned.
+fn joint_of(form: impl Fn(&Body) -> String, bolts: &str, change: impl Fn(&mut Body)) -> Steelwork {
     let sharp = |h: f64, b: f64, w: f64, f: f64| {
         let mut corners = sharp_i(h, b, w, f);
         corners.pop();
@@ -142,7 +147,9 @@ fn joint(form: impl Fn(&Body) -> String, bolts: &str) -> Steelwork {
     // The column's depth lies along x: its flange at x = 150, the plate from 150 to 170, the beam from 170.
     let column = Body::prism(&sharp(300.0, 300.0, 11.0, 19.0), &[], 0.0, 6000.0);
     let column = column.moved(glam::DAffine3::from_rotation_z(std::f64::consts::FRAC_PI_2));
-    let beam = along_x(Body::prism(&sharp(500.0, 200.0, 10.2, 16.0), &[], 0.0, 4000.0), 170.0);
+    let mut beam = Body::prism(&sharp(500.0, 200.0, 10.2, 16.0), &[], 0.0, 4000.0);
+    change(&mut beam);
+    let beam = along_x(beam, 170.0);
     let plate = along_x(
         Body::prism(&[(-110.0, -280.0), (110.0, -280.0), (110.0, 280.0), (-110.0, 280.0)], &[], 0.0, 20.0),
         150.0,
@@ -210,6 +217,36 @@ fn a_joint_is_the_same_in_whatever_way_it_is_written() {
     }
     let expected = "EndPlateMoment Ok(\"HE 300 B\") Ok(\"IPE 500\") 20.000 220.000 -30.000 530.000 [460000, 370000, 130000, 40000]";
     assert_eq!(first.as_deref(), Some(expected));
+}
+
+#[test]
+fn a_joint_at_a_member_that_is_not_assessed_says_so() {
+    let bolts: String = (0..8)
+        .map(|i: usize| {
+            let (y, z) = (if i.is_multiple_of(2) { -50.0 } else { 50.0 }, 2790.0 + 120.0 * (i / 2) as f64);
+            let solid = format!(
+                r#"<IfcExtrudedAreaSolid Depth="70">{}<Position><Location Coordinates="120 {y} {z}"/><Axis DirectionRatios="1 0 0"/></Position><ExtrudedDirection DirectionRatios="0 0 1"/></IfcExtrudedAreaSolid>"#,
+                circle(10.0)
+            );
+            proxy(i, "IfcMechanicalFastener", NAME, &solid)
+        })
+        .collect();
+    let taper = |body: &mut Body| body.points.iter_mut().skip(12).for_each(|p| p.y *= 0.6);
+    // Cranked: the far half of the flanges is pushed aside, so that no section is the same as the next.
+    let bend = |body: &mut Body| {
+        body.points.iter_mut().skip(12).for_each(|p| p.z += 400.0 * (p.x / 100.0) * (p.y / 250.0));
+        body.points.iter_mut().skip(12).for_each(|p| p.y += 0.2 * p.x);
+    };
+    let rules = faying::rulebook::Rulebook::embedded();
+    for (change, word) in [(&taper as &dyn Fn(&mut Body), "tapered"), (&bend, "no straight prism")] {
+        let steelwork = joint_of(Body::faceted, &bolts, change);
+        assert_eq!(steelwork.members.len(), 2, "{:?}", steelwork.rejected);
+        let found = faying::joints::recognise(&steelwork, &rules);
+        assert_eq!(found.joints.len(), 1, "{word}");
+        assert_eq!(found.joints[0].bolts.len(), 8);
+        let why = found.joints[0].layout.as_ref().unwrap_err();
+        assert!(why.contains(word), "{why}");
+    }
 }
 
 #[test]
