@@ -8,6 +8,8 @@ use super::outline::Loop;
 
 /// Points within about this distance are one, mm: exports round, and repeat points under new numbers.
 const SAME: f64 = 2e-3;
+/// Exports round coordinates, to a tenth of a millimetre at worst: outlines may differ by so much, mm.
+const ROUNDED: f64 = 0.1;
 /// No coordinate of a body lies further out than this, mm (a map grid has up to 7e8).
 const REACH: f64 = 1e11;
 /// A body of more points than this is no part of a joint but a scan, or an attack.
@@ -228,9 +230,9 @@ impl Slice {
     /// Whether two sections are one: area, place and size.
     pub fn same(&self, other: &Self) -> bool {
         let (a, b) = (self.outer.box_along(DVec2::X), other.outer.box_along(DVec2::X));
-        let near = 0.1 + 1e-3 * a.size.max_element();
+        let near = ROUNDED + 1e-3 * a.size.max_element();
         self.beside == other.beside
-            && (self.area() - other.area()).abs() <= 2e-3 * self.area().max(other.area())
+            && (self.area() - other.area()).abs() <= ROUNDED * self.outer.perimeter()
             && a.centre.distance(b.centre) <= near
             && (a.size - b.size).abs().max_element() <= near
     }

@@ -352,6 +352,39 @@ fn an_advanced_brep_is_told_by_its_edges() {
     assert_eq!(steelwork.problems, []);
 }
 
+/// Exports in metres round to a tenth of a millimetre, after they have turned the building.
+#[test]
+fn rounded_coordinates_are_the_same_parts() {
+    let map = DAffine3::from_rotation_translation(
+        DQuat::from_axis_angle(DVec3::new(0.2, 0.3, 1.0).normalize(), 0.3),
+        DVec3::new(12_345.0, -6_789.0, 3_210.0),
+    );
+    let rounded = |body: Body| {
+        let mut body = body.moved(map);
+        body.points.iter_mut().for_each(|p| *p = (*p * 10.0).round() / 10.0);
+        body.faceted()
+    };
+    let steelwork = part("UKB 457x191x67", &rounded(beam()));
+    let member = member(&steelwork);
+    assert!(member.section.is_ok() && member.not_assessed.is_none(), "{:?} {:?}", member.section, member.not_assessed);
+    close(member.start.distance(member.end), 6000.0, 0.2);
+    assert!(member.disagreements.is_empty(), "{:?}", member.disagreements);
+
+    let holes = [ring((50.0, 60.0), 11.0, 24), ring((150.0, 340.0), 11.0, 24)];
+    let body = Body::prism(&[(0.0, 0.0), (200.0, 0.0), (200.0, 400.0), (0.0, 400.0)], &holes, 0.0, 15.0);
+    let steelwork = part("PL15*200", &rounded(body));
+    let plate = plate(&steelwork);
+    close(plate.thickness.get(), 15.0, 0.2);
+    assert_eq!(plate.holes.len(), 2);
+    plate.holes.iter().for_each(|hole| close(hole.diameter, 22.0, 0.2));
+    assert!(plate.disagreements.is_empty(), "{:?}", plate.disagreements);
+
+    let steelwork = part("Bolt M20 x 70", &rounded(bolt_body(24)));
+    assert_eq!(steelwork.bolts.len(), 1, "{:?}", steelwork.rejected);
+    close(steelwork.bolts[0].diameter.as_ref().unwrap().value.get(), 20.0, 1e-9);
+    assert_eq!(steelwork.problems, []);
+}
+
 proptest! {
     /// However a body lies in its own coordinates, and however its faces look, it is the same member.
     #[test]
