@@ -137,6 +137,9 @@ fn beside_beam(scene: &Scene, case: &Case, bolted: &[usize]) -> Result<(), Strin
 }
 
 fn every_bolt_passes_flange(scene: &Scene, draft: &Draft, case: &Case) -> Result<(), String> {
+    if draft.joint.bolts.iter().any(|bolt| scene.steel.bolts[*bolt].anchor) {
+        return Err("among its bolts are anchors: not assessed yet".into());
+    }
     let flange = Pass::Member(case.column, case.ply);
     let count = draft.joint.bolts.iter().filter(|bolt| !scene.touches.passes[**bolt].contains(&flange)).count();
     if count > 0 {

@@ -30,7 +30,18 @@ pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
         }
     }
     drafts.extend((0..scene.steel.plates.len()).filter_map(|plate| base_without_bolts(scene, plate)));
+    drafts.iter_mut().for_each(|draft| say_what_is_not_assessed(scene, draft));
     drafts
+}
+
+/// Whatever else stands against a joint, the reason why a member of it can't be assessed is told.
+fn say_what_is_not_assessed(scene: &Scene, draft: &mut Draft) {
+    let Err(reason) = &mut draft.joint.layout else { return };
+    for member in &draft.members {
+        if let Some(why) = scene.steel.members[*member].not_assessed.as_ref().filter(|why| !reason.contains(*why)) {
+            reason.push_str(&format!("; {}: {why}", scene.label(Part::Member(*member))));
+        }
+    }
 }
 
 /// A column's foot on a plate through which no bolt passes: its anchors may have been left out of the exchange.

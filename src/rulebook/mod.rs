@@ -64,7 +64,8 @@ impl Rulebook {
     }
 
     /// The embedded rules, with the given files (name inside the rule folder with `/`, text) in place of those of the
-    /// same name. New files may come under `annexes/` and `sections/`.
+    /// same name; the words of a `vocabulary.toml` come beside the embedded ones instead. New files may come under
+    /// `annexes/` and `sections/`.
     ///
     /// # Errors
     /// [`RuleError`] with the file and the place: unknown file, unknown or missing key, value out of its range.
@@ -110,6 +111,10 @@ impl Rulebook {
             catalogue.add(sections)?;
         }
         let bolts = Bolts::load(file("bolts.toml"))?;
+        let own =
+            EMBEDDED.iter().find(|(name, _)| *name == "vocabulary.toml").map(|(_, text)| *text).unwrap_or_default();
+        let mut vocabulary = Vocabulary::load(RuleFile { name: "vocabulary.toml", text: own })?;
+        vocabulary.add(file("vocabulary.toml"))?;
         Ok(Self {
             annex: annex.clone(),
             settings,
@@ -122,7 +127,7 @@ impl Rulebook {
             annexes,
             steel: Steel::load(file("steel.toml"))?,
             catalogue,
-            vocabulary: Vocabulary::load(file("vocabulary.toml"))?,
+            vocabulary,
         })
     }
 
@@ -215,10 +220,19 @@ impl Rulebook {
     }
 
     /// Whether a word (a property's name, a column's heading) stands for a concept, without regard to case, spaces,
-    /// punctuation and diacritics. Concepts: "mark", "bolt-diameter", "bolt-length", "bolt-class", "hole-diameter",
-    /// "weld-throat", "weld-leg", "weld-length", "grade", "section", "thickness"; any other has no words.
+    /// punctuation and diacritics. Concepts: the keys of `vocabulary.toml`; any other has no words.
     pub fn means(&self, concept: &str, word: &str) -> bool {
         self.vocabulary.means(concept, word)
+    }
+
+    /// Whether a text (a part's name) holds a word of a concept as a word of its own: "M20 anchor bolt" an "anchor".
+    pub fn says(&self, concept: &str, text: &str) -> bool {
+        self.vocabulary.says(concept, text)
+    }
+
+    /// Whether a text is nothing but words of some concepts, and numbers: "Fillet weld 12".
+    pub fn says_only(&self, concepts: &[&str], text: &str) -> bool {
+        self.vocabulary.says_only(concepts, text)
     }
 
     /// The words of a concept, normalised and sorted.

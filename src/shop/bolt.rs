@@ -1,14 +1,16 @@
 //! Bolts: one for each shank, however the exchange grouped them, and what is no bolt although it is a fastener.
 
+use glam::DVec3;
+
 use super::Bolt;
 use super::bolt_name::size_in;
 use super::material::said_by;
 use super::properties::{Plausible, Property};
 use super::reading::Reading;
-use super::shank::{Cluster, Shank, round, small_part};
+use super::shank::{Cluster, Shank, round};
 use super::solid::Prism;
 use super::statement::{Statement, first_text};
-use super::words::{Word, says};
+use super::words::Word;
 use crate::exchange::Entity;
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::units::{Length, mm};
@@ -20,46 +22,84 @@ const HOLE_PATTERN: f64 = 1.5;
 /// [`Missing::what`] of bolts whose heads are countersunk: whatever their class, they carry less in tension.
 pub const COUNTERSUNK: &str = "countersunk bolts";
 
-impl<'a> Reading<'a> {
-    /// Whether a part is to be looked at as a fastener: by class, or by name and a round shank.
-    pub fn may_be_bolt(&self, element: Entity<'a>, prisms: &[&Prism]) -> bool {
-        element.is_a("IfcMechanicalFastener")
-            || (matches!(self.called(element), Some(Word::Bolt | Word::Anchor)) && prisms.iter().any(|p| round(p)))
-    }
+/// A bolt is no longer than so many diameters, an anchor is (our own choice: through-bolts of steelwork are shorter).
+const LONGEST: f64 = 30.0;
 
-    /// What the first of its names that says anything calls a fastener; bolt wins within one name.
-    pub fn called(&self, element: Entity<'a>) -> Option<Word> {
-        let words = [Word::Anchor, Word::Bolt, Word::Nut, Word::Washer, Word::Stud, Word::Screw];
-        self.names_of(element).into_iter().find_map(|(_, text)| words.into_iter().find(|word| says(text, *word)))
+/// A round bar of no name is asked for a nut only up to so many diameters: beyond it is a rod.
+const SHORT: f64 = 10.0;
+
+/// What says that a part is a bolt.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(super) enum Says {
+    /// Its class, or a name.
+    Bolt,
+    /// A name, or the type of a fastener.
+    Anchor,
+    /// Only that it is round and of a bolt's size: a nut or a washer on it must say more.
+    Shape,
+}
+
+impl<'a> Reading<'a> {
+    /// What says that a part is to be looked at as a bolt, if anything does.
+    pub fn bolt_by(&self, element: Entity<'a>, prisms: &[&Prism]) -> Option<Says> {
+        let fastener = element.is_a("IfcMechanicalFastener");
+        let called = self.called(element);
+        // A round plate is no shank, whatever it is called ("anchor plate").
+        let long = |p: &Prism| p.depth >= p.profile.outer.box_along(p.profile.up).size.min_element();
+        let rounds: Vec<&&Prism> = prisms.iter().filter(|p| round(p) && long(p)).collect();
+        if self.predefined(element) == Some("ANCHORBOLT") || (called == Some(Word::Anchor) && !rounds.is_empty()) {
+            return Some(Says::Anchor);
+        }
+        if fastener || (called == Some(Word::Bolt) && !rounds.is_empty()) {
+            return Some(Says::Bolt);
+        }
+        let straight = rounds.iter().all(|p| p.beyond.is_none());
+        if called.is_some() || rounds.is_empty() || rounds.len() < prisms.len().div_ceil(4) || !straight {
+            return None;
+        }
+        let clusters = self.clusters(prisms);
+        let shanks: Vec<_> = clusters.iter().filter_map(|cluster| Some((cluster, cluster.shank()?))).collect();
+        let of_size = |d: f64| d >= DIAMETERS.0 - 0.5 && d <= DIAMETERS.1 + 0.5;
+        let bolt = |length: f64, d: f64| of_size(d) && length >= d && length <= SHORT * d;
+        if shanks.len() < clusters.len() || !shanks.iter().all(|(_, s)| bolt(s.start.distance(s.end), s.diameter)) {
+            return None;
+        }
+        let named = self.names_of(element).into_iter().filter_map(|(_, text)| size_in(text));
+        let drawn = shanks.first().map_or(0.0, |(_, shank)| shank.diameter);
+        let by_name = named.into_iter().any(|(d, _)| (d - drawn).abs() <= 0.1 * d);
+        let headed = shanks.iter().all(|(cluster, shank)| cluster.headed(shank));
+        Some(if by_name || headed { Says::Bolt } else { Says::Shape })
     }
 
     /// Why a fastener is none of the bolts that hold a joint, by its type or name.
     pub fn no_bolt(&self, element: Entity<'a>) -> Option<String> {
         match self.predefined(element).filter(|_| element.is_a("IfcMechanicalFastener")) {
-            None | Some("BOLT" | "USERDEFINED" | "NOTDEFINED") => {}
-            Some("ANCHORBOLT") => return Some("anchor bolt: not assessed".into()),
+            None | Some("BOLT" | "ANCHORBOLT" | "USERDEFINED" | "NOTDEFINED") => {}
             Some(other) => return Some(format!("a fastener of the type {other} is no bolt")),
         }
         match self.called(element)? {
-            Word::Nut => Some("nut".into()),
-            Word::Washer => Some("washer".into()),
-            Word::Anchor => Some("anchor bolt: not assessed".into()),
             Word::Stud => Some("called a stud: no bolt".into()),
             Word::Screw => Some("called a screw, nail, rivet or dowel: no bolt".into()),
             _ => None,
         }
     }
 
-    /// The bolts of a fastener.
+    /// The bolts of a fastener; `nutted` says whether a nut or washer of its own sits on a line.
     ///
     /// # Errors
     /// Why it holds none, readable.
-    pub fn bolts(&self, element: Entity<'a>, prisms: &[&Prism]) -> Result<Vec<Bolt>, String> {
-        if let Some(reason) = self.no_bolt(element).or_else(|| small_part(prisms)) {
-            return Err(reason);
+    pub fn bolts(
+        &self,
+        element: Entity<'a>,
+        says: Says,
+        prisms: &[&Prism],
+        nutted: impl Fn(DVec3, DVec3) -> bool,
+    ) -> Result<Vec<Bolt>, String> {
+        if let Some(why) = prisms.iter().find_map(|p| p.beyond.as_ref()).filter(|_| says != Says::Anchor) {
+            return Err(format!("it is no straight bolt: {why}"));
         }
         let clusters = self.clusters(prisms);
-        let shanks: Vec<Shank> = clusters.iter().filter_map(Cluster::shank).collect();
+        let shanks: Vec<(&Cluster<'_>, Shank)> = clusters.iter().filter_map(|c| Some((c, c.shank()?))).collect();
         if shanks.is_empty() {
             return Err("its body has no round shank longer than its diameter".into());
         }
@@ -75,8 +115,22 @@ impl<'a> Reading<'a> {
         let length = self.length(element, &properties);
         let class = self.class(element, &properties);
         let hole = self.hole(element, &properties);
+        let slot = self.slot(element, &properties);
+        self.count(element, &properties, shanks.len());
+        let counted = |concept: &str| {
+            properties.iter().any(|p| self.rulebook.means(concept, p.name) && p.count().is_some_and(|n| n > 0.0))
+        };
+        let said = counted("nut-count") || counted("washer-count");
         let mut bolts = Vec::new();
-        for shank in shanks {
+        for (cluster, shank) in shanks {
+            let held = said || cluster.headed(&shank) || nutted(shank.start, shank.end);
+            if says == Says::Shape && !held {
+                let length = shank.start.distance(shank.end);
+                return Err(format!(
+                    "a round bar of {:.1} x {length:.1} mm that nothing calls a bolt, without nut or washer",
+                    shank.diameter
+                ));
+            }
             let diameter = self.diameter(element, &stated, shank.diameter)?;
             let d = diameter.value.get();
             if !(d >= DIAMETERS.0 && d <= DIAMETERS.1) {
@@ -84,8 +138,16 @@ impl<'a> Reading<'a> {
             }
             let drawn = shank.start.distance(shank.end);
             let longest = length.as_ref().map_or(drawn, |l| l.value.get().max(drawn));
-            if !(longest >= d) {
-                return Err(format!("it is {longest:.1} mm long, shorter than its diameter of {d:.1} mm: no bolt"));
+            // A nut or a washer proves a bolt whose length is drawn or stated oddly.
+            if !(longest >= d) && !held {
+                return Err(format!(
+                    "it is {longest:.1} mm long, shorter than its diameter of {d:.1} mm, without nut or washer: no bolt"
+                ));
+            }
+            if !(longest <= LONGEST * d) && !held && says != Says::Anchor {
+                return Err(format!(
+                    "it is {longest:.1} mm long, more than {LONGEST} times its diameter of {d:.1} mm, without nut or washer: no bolt"
+                ));
             }
             bolts.push(Bolt {
                 identity: self.identity(element),
@@ -95,6 +157,8 @@ impl<'a> Reading<'a> {
                 length: length.clone(),
                 class: class.clone(),
                 hole,
+                slot,
+                anchor: says == Says::Anchor,
             });
         }
         Ok(bolts)
@@ -203,7 +267,7 @@ impl<'a> Reading<'a> {
         let mut texts = self.material_texts(element);
         texts.extend(first_text(self.names_of(element), element));
         texts.extend(properties.iter().filter(|p| self.rulebook.means("bolt-class", p.name)).filter_map(said_by));
-        if let Some(said) = texts.iter().find(|said| says(&said.text, Word::Countersunk)) {
+        if let Some(said) = texts.iter().find(|said| self.rulebook.says("countersunk", &said.text)) {
             return Err(Missing {
                 what: COUNTERSUNK.into(),
                 reason: format!(
@@ -250,5 +314,23 @@ impl<'a> Reading<'a> {
             return None;
         }
         Some(mm(first.value))
+    }
+    /// The length of slotted holes; of two that differ the longer one counts.
+    fn slot(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Option<Length> {
+        let all = self.property_lengths(element, properties, Plausible(1.0, 500.0), |p| {
+            self.rulebook.means("slot-length", p.name)
+        });
+        all.iter().map(|s| s.value).max_by(f64::total_cmp).map(mm)
+    }
+
+    /// Says where a property counts other bolts than are drawn.
+    fn count(&self, element: Entity<'a>, properties: &[Property<'_>], drawn: usize) {
+        for property in properties.iter().filter(|p| self.rulebook.means("bolt-count", p.name)) {
+            let Some(said) = property.count().filter(|n| *n > 0.0 && *n != drawn as f64) else { continue };
+            self.problem(
+                element,
+                format!("{} says {said} bolts, but {drawn} are drawn; the drawn ones are taken.", property.by()),
+            );
+        }
     }
 }

@@ -1,8 +1,8 @@
 //! Materials of a part and the steel grade that they name.
 
+use super::profile::Profile;
 use super::properties::Property;
 use super::reading::Reading;
-use super::words::{Word, says};
 use crate::exchange::Entity;
 use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use crate::rulebook::Grade;
@@ -48,6 +48,19 @@ impl<'a> Reading<'a> {
         names
     }
 
+    /// The profiles that a material profile set gives to the section.
+    pub fn material_profiles(&self, element: Entity<'a>) -> Vec<Profile> {
+        let mut profiles = Vec::new();
+        for definition in self.materials_of(element) {
+            gather(definition, 0, &mut |e| {
+                if e.is_a("IfcMaterialProfile") {
+                    profiles.extend(e.entity("Profile").and_then(|p| self.profile(p).ok()));
+                }
+            });
+        }
+        profiles
+    }
+
     /// What a part's materials are called.
     pub fn material_texts(&self, element: Entity<'a>) -> Vec<Said> {
         let mut texts = Vec::new();
@@ -73,7 +86,7 @@ impl<'a> Reading<'a> {
             })
         };
         let mut texts = self.material_texts(element).into_iter();
-        texts.find(|said| says(&said.text, Word::NoSteel) || concrete(&said.text)).map(|said| said.text)
+        texts.find(|said| self.rulebook.says("no-steel", &said.text) || concrete(&said.text)).map(|said| said.text)
     }
 
     /// The steel grade of a part, from its materials and its properties; never from other parts.

@@ -1,13 +1,19 @@
 //! Members: long prisms of one section.
 
-use glam::DVec2;
+use glam::{DVec2, DVec3};
 
+use super::profile::Kind;
 use super::reading::Reading;
 use super::section::{Seen, see};
 use super::solid::{Cut, Prism};
 use super::{Member, Shape};
 use crate::exchange::Entity;
+use crate::origin::{Ask, Missing};
 
+/// A part is long if it is this much longer than wide.
+pub(super) const LONG: f64 = 2.0;
+/// An outline that fills less of its box than this may be a curved band.
+const BAND: f64 = 0.6;
 /// A plane nearer to the member's axis than this (as a sine) cuts along it, not off its end.
 const ALONG: f64 = 0.17;
 /// A round cut up to this size is a bolt hole, which no member's section loses at its end, mm.
@@ -17,7 +23,11 @@ impl<'a> Reading<'a> {
     /// The member that a prism is.
     pub fn member(&self, element: Entity<'a>, prism: &Prism) -> Member {
         let mut seen = see(&prism.profile);
-        let (section, mut disagreements) = self.section(element, &prism.profile, &seen);
+        let (section, mut disagreements) = match &prism.beyond {
+            None => self.section(element, &prism.profile, &seen),
+            Some(reason) => (Err(no_section(element, reason)), Vec::new()),
+        };
+        disagreements.extend(self.called_a_plate(element));
         // An outline that is no I by itself may still be one by name, box and area.
         if section.is_ok() && seen.shape == Shape::Other {
             seen.shape = Shape::I;
@@ -29,6 +39,12 @@ impl<'a> Reading<'a> {
                 Ok(_) => disagreements.push(untaken("an opening element")),
                 Err(reason) => disagreements.push(format!("an opening in it can't be read: {reason}")),
             }
+        }
+        if let Some([a, b]) = self.axis_line(element).as_deref()
+            && prism.beyond.is_none()
+            && (*b - *a).normalize_or_zero().cross(prism.axis()).length() > self.straight()
+        {
+            disagreements.push("its Axis runs in another direction than its body, which is followed".into());
         }
         let (start, end) = (prism.at(seen.bounds.centre, from), prism.at(seen.bounds.centre, to));
         Member {
@@ -42,9 +58,79 @@ impl<'a> Reading<'a> {
             extents: seen.bounds.size,
             section,
             grade: self.grade(element),
-            not_assessed: None,
+            not_assessed: prism.beyond.clone(),
             disagreements,
         }
+    }
+
+    /// Several solids that are one long part: a member in the box round all of them, not assessed. `None` if they are
+    /// not long.
+    pub fn built_up(&self, element: Entity<'a>, prisms: &[&Prism]) -> Option<Member> {
+        let main = prisms.iter().max_by(|a, b| a.bulk().total_cmp(&b.bulk()))?;
+        let x = see(&main.profile).bounds.x;
+        let axes = [main.turned(x), main.turned(x.perp()), main.axis()];
+        let (mut low, mut high) = (DVec3::INFINITY, DVec3::NEG_INFINITY);
+        for corner in prisms.iter().flat_map(|prism| prism.corners()) {
+            let local = DVec3::from(axes.map(|axis| axis.dot(corner)));
+            low = low.min(local);
+            high = high.max(local);
+        }
+        let (size, middle) = (high - low, (low + high) / 2.0);
+        let along = (0..3).max_by(|a, b| size[*a].total_cmp(&size[*b]))?;
+        let (across, depth) = ((along + 1) % 3, (along + 2) % 3);
+        if !(size[along] >= LONG * size[across].max(size[depth])) {
+            return None;
+        }
+        let centre = axes[0] * middle.x + axes[1] * middle.y + axes[2] * middle.z;
+        let half = axes[along] * size[along] / 2.0;
+        let reason = match prisms {
+            [_] => "curved or cranked, drawn as a band".to_owned(),
+            several => format!("built up of {} solids", several.len()),
+        };
+        Some(Member {
+            identity: self.identity(element),
+            start: centre - half,
+            end: centre + half,
+            along: axes[along],
+            across: axes[across],
+            depth: axes[depth],
+            shape: Shape::Other,
+            extents: DVec2::new(size[across], size[depth]),
+            section: Err(no_section(element, &reason)),
+            grade: self.grade(element),
+            not_assessed: Some(reason),
+            disagreements: Vec::new(),
+        })
+    }
+
+    /// A bar that is curved in one plane and drawn as the band that it shows there: about as thick as the band is wide,
+    /// which no plate is.
+    pub fn curved_bar(&self, element: Entity<'a>, prism: &Prism) -> Option<Member> {
+        let profile = &prism.profile;
+        if profile.kind != Kind::Outline || !profile.voids.is_empty() || profile.outer.circle.is_some() {
+            return None;
+        }
+        let (area, size) = (profile.outer.area(), profile.outer.least_box(profile.up).size);
+        let width = 2.0 * area / profile.outer.perimeter();
+        let band = area < BAND * size.x * size.y && size.max_element() >= 4.0 * LONG * width;
+        let thick = prism.depth > 0.5 * width && prism.depth <= 2.0 * LONG * width;
+        if band && thick { self.built_up(element, &[prism]) } else { None }
+    }
+
+    /// A sentence where a part with the shape of a member is called a plate and nothing else.
+    fn called_a_plate(&self, element: Entity<'a>) -> Option<String> {
+        let plate = |text: &str| self.rulebook.says_only(&["plate", "stiffener"], text);
+        let (by, text) = self.names_of(element).into_iter().find(|(_, text)| plate(text))?;
+        Some(format!("{by} calls it \"{text}\" but it has the shape of a member"))
+    }
+}
+
+fn no_section(element: Entity<'_>, reason: &str) -> Missing {
+    Missing {
+        what: "section".into(),
+        reason: format!("the member is {reason}"),
+        at: Some(element.place()),
+        ask: Ask::Method,
     }
 }
 
@@ -63,6 +149,7 @@ fn ends(prism: &Prism, seen: &Seen, notes: &mut Vec<String>) -> (f64, f64) {
                 Cut::Prism(inner) if is_bolt_hole(inner) => {}
                 Cut::Prism(_) => notes.push(untaken("an extrusion")),
                 Cut::Other(class) => notes.push(untaken(class)),
+                Cut::Trim(sentence) => notes.push(sentence.clone()),
                 Cut::Plane { .. } => {}
             }
             continue;
@@ -72,7 +159,7 @@ fn ends(prism: &Prism, seen: &Seen, notes: &mut Vec<String>) -> (f64, f64) {
         let whole = bounds.as_ref().is_none_or(|(frame, polygon)| {
             let inside = |corner: DVec2| {
                 let point = frame.inverse().transform_point3(prism.at(corner, level(corner))).truncate();
-                contains(polygon, point)
+                polygon.holds(point)
             };
             corners.iter().all(|corner| inside(*corner))
         });
@@ -102,20 +189,4 @@ pub(super) fn untaken(cutter: &str) -> String {
 
 fn is_bolt_hole(prism: &Prism) -> bool {
     prism.profile.outer.circle.is_some_and(|(_, r)| 2.0 * r <= BOLT_HOLE)
-}
-
-/// Whether a polygon contains a point (even-odd rule).
-pub(super) fn contains(polygon: &[DVec2], point: DVec2) -> bool {
-    let mut inside = false;
-    let mut before = polygon.last();
-    for at in polygon {
-        if let Some(b) = before
-            && (at.y > point.y) != (b.y > point.y)
-            && point.x < (b.x - at.x) * (point.y - at.y) / (b.y - at.y) + at.x
-        {
-            inside = !inside;
-        }
-        before = Some(at);
-    }
-    inside
 }

@@ -2,23 +2,36 @@
 //!
 //! All lengths are mm, in one right-handed world frame with z up; [`Steelwork::origin`] has been taken off, so that
 //! coordinates of a map grid lose no digits.
+//!
+//! Every body comes to right prisms, whatever the exchange wrote: swept solids and primitives at once, bodies given by
+//! their faces through sections across a few likely axes. What is curved, tapered or built up comes to a prism that
+//! stands in for it and says so. Only then is a part told by its function: shape and size first, names second, class
+//! last. Nuts and washers of their own are evidence for the bolt on their axis.
 
+mod body;
 mod bolt;
 mod bolt_name;
 mod curve;
+mod faces;
+mod hardware;
+mod levels;
 mod material;
 mod member;
+mod mesh;
 mod outline;
 mod placement;
 mod plate;
+mod polyhedron;
 mod profile;
 mod properties;
 mod reading;
 mod relation;
 mod section;
+mod several;
 mod shank;
 mod solid;
 mod statement;
+mod sweep;
 mod take_up;
 mod units;
 mod weld;
@@ -177,6 +190,10 @@ pub struct Bolt {
     pub class: Known<String>,
     /// Hole diameter as stated by a property.
     pub hole: Option<Length>,
+    /// Overall length of a slotted hole as stated by a property.
+    pub slot: Option<Length>,
+    /// Whether it is an anchor: it ends in concrete, and holds no two parts of the steelwork together.
+    pub anchor: bool,
 }
 
 /// What sort of weld.

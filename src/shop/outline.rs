@@ -96,6 +96,17 @@ impl Loop {
         }
     }
 
+    /// Unit direction of its longest edge.
+    pub fn longest_edge(&self) -> Option<DVec2> {
+        let edges = neighbours(&self.points).map(|(before, at, _)| at - before);
+        edges.max_by(|a, b| a.length_squared().total_cmp(&b.length_squared()))?.try_normalize()
+    }
+
+    /// Length of its edges, mm.
+    pub fn perimeter(&self) -> f64 {
+        neighbours(&self.points).map(|(before, at, _)| before.distance(at)).sum()
+    }
+
     /// The bounding box along a direction.
     pub fn box_along(&self, x: DVec2) -> Box2 {
         let y = x.perp();
@@ -126,6 +137,14 @@ impl Loop {
     /// Whether it bulges outwards everywhere.
     pub fn convex(&self) -> bool {
         neighbours(&self.points).all(|(before, at, after)| (at - before).perp_dot(after - at) >= -1e-6)
+    }
+
+    /// Whether it contains a point (even-odd rule).
+    pub fn holds(&self, point: DVec2) -> bool {
+        let crossed = |(a, b, _): &(DVec2, DVec2, DVec2)| {
+            (b.y > point.y) != (a.y > point.y) && point.x < (a.x - b.x) * (point.y - b.y) / (a.y - b.y) + b.x
+        };
+        neighbours(&self.points).filter(crossed).count() % 2 == 1
     }
 
     /// The parts of the line `at + t·along` inside the loop, as intervals of t in rising order.

@@ -2,7 +2,7 @@
 
 use glam::{DVec2, DVec3};
 
-use super::member::{contains, untaken};
+use super::member::untaken;
 use super::outline::Loop;
 use super::profile::Kind;
 use super::reading::Reading;
@@ -30,9 +30,11 @@ pub(super) struct Flat {
     pub thickness: f64,
 }
 
-/// The prism as a plate, if it is one: the thickness may be the sweep or either side of the profile.
+/// The prism as a plate, if it is one: the thickness may be the sweep or either side of the profile. Of hollow ones
+/// only what is no longer than its wall is thick: a ring, and no piece of pipe.
 pub(super) fn flat(prism: &Prism) -> Option<Flat> {
-    if prism.profile.kind != Kind::Outline {
+    let ring = prism.profile.kind == Kind::Hollow && prism.depth <= prism.profile.wall();
+    if (prism.profile.kind != Kind::Outline && !ring) || prism.beyond.is_some() {
         return None;
     }
     let outer = &prism.profile.outer;
@@ -109,7 +111,7 @@ impl Flat {
         let level = hole.iter().map(|p| p.z).sum::<f64>() / hole.len().max(1) as f64;
         let (low, high) = if axis > 0.0 { (level, level + cutter.depth) } else { (level - cutter.depth, level) };
         let half = self.thickness / 2.0;
-        let inside = hole.iter().filter(|p| contains(&self.outline.points, p.truncate())).count();
+        let inside = hole.iter().filter(|p| self.outline.holds(p.truncate())).count();
         if !(low < half && high > -half) || inside == 0 {
             return Some("an opening said to be in it lies beside it".into());
         }
@@ -158,6 +160,7 @@ impl<'a> Reading<'a> {
                 Cut::Plane { bounds: Some(_), .. } => Some(untaken("a bounded half-space")),
                 Cut::Prism(cutter) => flat.pierce(cutter, straight, touch),
                 Cut::Other(class) => Some(untaken(class)),
+                Cut::Trim(sentence) => Some(sentence.clone()),
             });
         }
         for opening in self.openings(element) {
@@ -169,6 +172,7 @@ impl<'a> Reading<'a> {
         flat.recentre();
         let size = flat.outline.box_along(DVec2::X).size;
         notes.extend(self.named_otherwise(element, [flat.thickness, size.x, size.y]));
+        notes.extend(self.called_a_section(element));
         let mut holes: Vec<Hole> = Vec::new();
         for hole in flat.holes.iter().map(hole) {
             let same = |other: &Hole| other.centre.distance(hole.centre) <= tolerances.position.get();
@@ -190,10 +194,34 @@ impl<'a> Reading<'a> {
         }
     }
 
+    /// The sizes that a plate's name states: `PL15*200`, `FL 10x80`, `80*180`; nothing if it holds anything else.
+    fn sizes_in(&self, text: &str) -> Option<Vec<f64>> {
+        let text = text.trim();
+        let prefix = text.split(|c: char| !c.is_alphabetic()).next().unwrap_or_default();
+        if !(prefix.is_empty() || self.rulebook.means("plate", prefix)) {
+            return None;
+        }
+        let numbers: Option<Vec<f64>> =
+            text[prefix.len()..].split(['*', 'X', 'x', '×']).map(|n| n.trim().replace(',', ".").parse().ok()).collect();
+        numbers.filter(|n| n.len() >= 2 && n.iter().all(|n: &f64| *n > 0.0))
+    }
+
+    /// A sentence where a plate is named by a section.
+    fn called_a_section(&self, element: Entity<'a>) -> Option<String> {
+        self.names_of(element).into_iter().find_map(|(by, text)| {
+            let section = self.rulebook.section(text)?;
+            // A longer name may say what the plate belongs to.
+            let alone = text.trim().chars().count() <= section.designation.chars().count() + 2;
+            alone.then(|| {
+                format!("{by} \"{text}\" is the section {} but it has the shape of a plate", section.designation)
+            })
+        })
+    }
+
     /// A sentence where a name like `PL15*200` states a size that the plate does not have.
     fn named_otherwise(&self, element: Entity<'a>, sizes: [f64; 3]) -> Option<String> {
         self.names_of(element).into_iter().find_map(|(by, text)| {
-            let named = sizes_in(text)?;
+            let named = self.sizes_in(text)?;
             let has = |wanted: &f64| sizes.iter().any(|size| (size - wanted).abs() <= NAMED);
             // The thickness must be among them; a further number may be the length before cutting.
             let thickness = named.iter().copied().fold(f64::INFINITY, f64::min);
@@ -220,16 +248,4 @@ fn hole(l: &Loop) -> Hole {
             Hole { centre: bounds.centre, diameter: bounds.size.min_element(), length: bounds.size.max_element() }
         }
     }
-}
-
-/// The sizes that a plate's name states: `PL15*200`, `FL 10x80`, `80*180`; nothing if it holds anything else.
-fn sizes_in(text: &str) -> Option<Vec<f64>> {
-    let text = text.trim().to_uppercase();
-    let prefix: String = text.chars().take_while(|c| c.is_alphabetic()).collect();
-    if !["", "PL", "FL", "BL", "PLT", "FLT", "FLAT", "STRIP", "PLATE"].contains(&prefix.as_str()) {
-        return None;
-    }
-    let numbers: Option<Vec<f64>> =
-        text[prefix.len()..].split(['*', 'X', '×']).map(|n| n.trim().replace(',', ".").parse().ok()).collect();
-    numbers.filter(|n| n.len() >= 2 && n.iter().all(|n: &f64| *n > 0.0))
 }

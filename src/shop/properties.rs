@@ -96,6 +96,11 @@ impl Property<'_> {
         text(self.value).filter(|t| !t.is_empty())
     }
 
+    /// Its value as a plain number.
+    pub fn count(&self) -> Option<f64> {
+        self.number().map(|(number, _)| number)
+    }
+
     /// Its value as a number, and whether the exchange says that it is a length in the project's unit.
     fn number(&self) -> Option<(f64, bool)> {
         match self.value {

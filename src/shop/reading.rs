@@ -1,11 +1,13 @@
 //! What the takers of parts share: the graph, the units, who is related to whom, and the problems met on the way.
 
-use std::cell::RefCell;
+use std::cell::{Cell, RefCell};
 use std::collections::BTreeMap;
+use std::rc::Rc;
 
 use glam::DAffine3;
 
 use super::Identity;
+use super::solid::Solid;
 use super::units::Units;
 use crate::exchange::{Entities, Entity, Exchange, Id, Value};
 use crate::origin::Problem;
@@ -30,8 +32,15 @@ pub(super) struct Reading<'a> {
     parts: BTreeMap<Id, Vec<Id>>,
     /// World placements that were already computed.
     pub placements: RefCell<BTreeMap<Id, DAffine3>>,
+    /// Solids of items that more than one part may use.
+    pub solids_of: RefCell<BTreeMap<Id, Rc<Vec<Solid>>>>,
+    /// How many more solids are read: maps and unions can multiply them.
+    left: Cell<usize>,
     problems: RefCell<Vec<Problem>>,
 }
+
+/// Solids that are read of any exchange, and of each entity besides: more is an attack by maps of maps.
+const SOLIDS: (usize, usize) = (1_000_000, 16);
 
 impl<'a> Reading<'a> {
     pub fn new(exchange: &'a Exchange, rulebook: &'a Rulebook) -> Self {
@@ -61,6 +70,8 @@ impl<'a> Reading<'a> {
             voids: related(entities, "IfcRelVoidsElement", "RelatingBuildingElement", "RelatedOpeningElement"),
             parts: related(entities, "IfcRelAggregates", "RelatingObject", "RelatedObjects"),
             placements: RefCell::default(),
+            solids_of: RefCell::default(),
+            left: Cell::new(SOLIDS.0 + SOLIDS.1 * entities.len()),
             problems: RefCell::new(problems),
         }
     }
@@ -76,6 +87,13 @@ impl<'a> Reading<'a> {
         problems.sort();
         problems.dedup();
         problems
+    }
+
+    /// Takes some solids off what may still be read; false once too many were asked for.
+    pub fn spend(&self, solids: usize) -> bool {
+        let left = self.left.get().checked_sub(solids);
+        self.left.set(left.unwrap_or(0));
+        left.is_some()
     }
 
     pub fn type_of(&self, object: Entity<'_>) -> Option<Entity<'a>> {

@@ -105,7 +105,12 @@ impl<'a> Reading<'a> {
         let Some((witness, section)) = found.first() else {
             return match (seen.shape, seen.sizes) {
                 (Shape::I, Some(sizes)) => {
-                    (self.own_section(element, profile, seen, sizes).map_err(missing), Vec::new())
+                    let (witness, notes) = self.by_material(element, seen, sizes);
+                    let own = match &witness {
+                        Some((profile, sizes)) => self.own_section(element, profile, true, *sizes),
+                        None => self.own_section(element, profile, seen.stated, sizes),
+                    };
+                    (own.map_err(missing), notes)
                 }
                 (shape, _) => {
                     let what = if shape == Shape::Hollow { "a hollow section" } else { &*seen.what };
@@ -170,12 +175,35 @@ impl<'a> Reading<'a> {
         }
     }
 
+    /// The I profile of the part's material that agrees with an outline: it knows the radius, which the outline hides.
+    /// Else a sentence where it disagrees with the body.
+    fn by_material(&self, element: Entity<'a>, seen: &Seen, sizes: ISizes) -> (Option<(Profile, ISizes)>, Vec<String>) {
+        let mut notes = Vec::new();
+        for mut profile in self.material_profiles(element) {
+            let Kind::I(said) = profile.kind else { continue };
+            let near = |a: f64, b: f64, tolerance: f64| (a - b).abs() <= tolerance;
+            let agree = near(said.h, sizes.h, OUTLINE)
+                && near(said.b, sizes.b, OUTLINE)
+                && near(said.t_w, sizes.t_w, OUTLINE_THICKNESS)
+                && near(said.t_f, sizes.t_f, OUTLINE_THICKNESS);
+            if agree && !seen.stated {
+                profile.of_material = true;
+                return (Some((profile, said)), notes);
+            }
+            if !agree {
+                let written = |s: ISizes| format!("{:.1} x {:.1} x {:.1} x {:.1}", s.h, s.b, s.t_w, s.t_f);
+                notes.push(format!("its material's profile is {} but modelled {}", written(said), written(sizes)));
+            }
+        }
+        (None, notes)
+    }
+
     /// An I section of which no table knows the name, by the model's own sizes.
     fn own_section(
         &self,
         element: Entity<'a>,
         profile: &Profile,
-        seen: &Seen,
+        stated: bool,
         sizes: ISizes,
     ) -> Result<Datum<Section>, String> {
         let named = profile.name.clone().or_else(|| element.text("ObjectType").map(str::to_owned));
@@ -192,8 +220,9 @@ impl<'a> Reading<'a> {
             sizes.r.map(mm),
             rolled,
         )?;
-        let origin = if seen.stated {
-            Origin::Modelled { by: format!("sizes of the profile \"{designation}\""), at: Some(profile.place.clone()) }
+        let origin = if stated {
+            let whose = if profile.of_material { "the material's profile" } else { "the profile" };
+            Origin::Modelled { by: format!("sizes of {whose} \"{designation}\""), at: Some(profile.place.clone()) }
         } else {
             Origin::Derived(format!("sizes read off the outline of the profile ({})", profile.place))
         };

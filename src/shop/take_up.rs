@@ -4,10 +4,14 @@ use std::collections::BTreeMap;
 
 use glam::DVec3;
 
+use super::bolt::Says;
+use super::hardware::{Hardware, Lines};
+use super::member::LONG;
 use super::plate::{flat, too_thick};
 use super::profile::Kind;
 use super::reading::Reading;
 use super::section::see;
+use super::several::SOLIDS;
 use super::shank::{SMALL, round, small_part};
 use super::solid::Prism;
 use super::words::Word;
@@ -17,8 +21,6 @@ use crate::rulebook::Rulebook;
 
 /// Coordinates beyond this lose digits in what follows and get a local origin, mm.
 const FAR: f64 = 1e6;
-/// A profile without a known section is a member only if it is this much longer than wide.
-const LONG: f64 = 2.0;
 /// An outline that fills less of its box than this is a section (angle, channel), not a block.
 const OPEN: f64 = 0.6;
 
@@ -46,12 +48,21 @@ const NO_STEELWORK: [&str; 20] = [
     "IfcWindow",
 ];
 
+/// What an element is, once it is known to be none of the parts that are told apart only by others.
+enum Found {
+    Parts(Vec<Part>),
+    /// Perhaps a bolt: what says so, and its solids.
+    Bolt(Says, Vec<Prism>),
+    /// A nut or a washer.
+    Hardware(Word, Vec<Prism>),
+}
+
 /// Takes up the steelwork of an exchange. Every element ends as a part, a piece, an opening or a rejection.
 pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
     let reading = Reading::new(exchange, rulebook);
     let mut steelwork = Steelwork::default();
     let mut parts: BTreeMap<Id, Vec<Part>> = BTreeMap::new();
-    let mut wholes = Vec::new();
+    let (mut wholes, mut bolts, mut hardware) = (Vec::new(), Vec::new(), Vec::new());
     for element in exchange.entities.of_class("IfcElement") {
         if element.is_a("IfcFeatureElementSubtraction") {
             continue; // taken with the element that it voids
@@ -61,20 +72,21 @@ pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
             wholes.push(element);
             continue;
         }
+        if whole {
+            wholes.push(element);
+        }
         match reading.take(element, &mut steelwork) {
-            Ok(taken) => {
-                parts.insert(element.id, taken);
-                if whole {
-                    wholes.push(element);
-                }
-            }
+            Ok(Found::Parts(taken)) => _ = parts.insert(element.id, taken),
+            Ok(Found::Bolt(says, prisms)) => bolts.push((element, says, prisms)),
+            Ok(Found::Hardware(what, prisms)) => hardware.extend(reading.hardware(element, what, &prisms)),
             Err(reason) => steelwork.rejected.push(Rejected { identity: reading.identity(element), reason }),
         }
     }
+    reading.tell_bolts(bolts, hardware, &mut steelwork, &mut parts);
     for whole in wholes {
         match reading.piece(whole, &parts) {
             Some(piece) => steelwork.pieces.push(piece),
-            None if parts.contains_key(&whole.id) => {}
+            None if parts.contains_key(&whole.id) || whole.entity("Representation").is_some() => {}
             None => {
                 let reason = "an assembly of which no part was taken up".to_owned();
                 steelwork.rejected.push(Rejected { identity: reading.identity(whole), reason });
@@ -82,7 +94,7 @@ pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
         }
     }
     steelwork.told = reading.told(&parts);
-    // Rejected assemblies were met last; places put them back into the order of the file.
+    // Rejected assemblies and fasteners were met last; places put them back into the order of the file.
     steelwork.rejected.sort_by(|a, b| a.identity.place.cmp(&b.identity.place));
     steelwork.problems = reading.into_problems();
     steelwork.shift();
@@ -94,10 +106,10 @@ impl<'a> Reading<'a> {
     ///
     /// # Errors
     /// Why it was not taken up.
-    fn take(&self, element: Entity<'a>, steelwork: &mut Steelwork) -> Result<Vec<Part>, String> {
+    fn take(&self, element: Entity<'a>, steelwork: &mut Steelwork) -> Result<Found, String> {
         if self.is_weld(element) {
             steelwork.welds.push(self.weld(element));
-            return Ok(vec![Part::Weld(steelwork.welds.len() - 1)]);
+            return Ok(Found::Parts(vec![Part::Weld(steelwork.welds.len() - 1)]));
         }
         if element.is_a("IfcFeatureElement") {
             return Err(format!("{} adds to another element or marks it; it is not taken up", element.class()));
@@ -106,13 +118,21 @@ impl<'a> Reading<'a> {
         if let Some(reason) = self.no_bolt(element).filter(|_| fastener) {
             return Err(reason);
         }
-        let solids = self.body(element)?;
-        let prisms: Vec<&Prism> = solids.iter().filter_map(|solid| solid.as_ref().ok()).collect();
-        let unread: Vec<&String> = solids.iter().filter_map(|solid| solid.as_ref().err()).collect();
-        if prisms.is_empty() || (!unread.is_empty() && !fastener) {
-            return Err(unread.first().map_or_else(|| "it has no body".into(), |reason| (*reason).clone()));
+        let (mut prisms, mut unread) = (Vec::new(), Vec::new());
+        for solid in self.body(element)? {
+            match solid {
+                Ok(prism) => prisms.push(prism),
+                Err(reason) => unread.push(reason),
+            }
         }
-        if self.may_be_bolt(element, &prisms) {
+        if prisms.is_empty() || (!unread.is_empty() && !fastener && prisms.len() > SOLIDS) {
+            return Err(unread.into_iter().next().unwrap_or_else(|| "it has no body".into()));
+        }
+        let seen: Vec<&Prism> = prisms.iter().collect();
+        if let Some(what) = self.small(element, &seen) {
+            return Ok(Found::Hardware(what, prisms));
+        }
+        if let Some(says) = self.bolt_by(element, &seen) {
             if let Some(reason) = unread.first() {
                 let count = unread.len();
                 self.problem(
@@ -120,10 +140,7 @@ impl<'a> Reading<'a> {
                     format!("{count} of the fastener's solids can't be read ({reason}); the others are."),
                 );
             }
-            let bolts = self.bolts(element, &prisms)?;
-            let first = steelwork.bolts.len();
-            steelwork.bolts.extend(bolts);
-            return Ok((first..steelwork.bolts.len()).map(Part::Bolt).collect());
+            return Ok(Found::Bolt(says, prisms));
         }
         if let Some(material) = self.not_of_steel(element) {
             return Err(format!("its material \"{material}\" is no steel"));
@@ -131,30 +148,96 @@ impl<'a> Reading<'a> {
         if NO_STEELWORK.iter().any(|class| element.is_a(class)) && self.grade(element).is_err() {
             return Err(format!("{} without a steel grade: no steelwork", element.class()));
         }
-        if let Some(reason) = self.small(element, &prisms) {
+        if let Some(reason) = self.no_bolt(element).filter(|_| seen.iter().any(|p| round(p))) {
             return Err(reason);
         }
-        self.by_shape(element, &prisms, steelwork)
+        let parts = self.by_shape(element, &seen, steelwork)?;
+        if let Some(reason) = unread.first() {
+            steelwork.is_partly_read(&parts, reason, unread.len());
+        }
+        Ok(Found::Parts(parts))
     }
 
     /// Nuts and washers come as any class: by name if they are small, else by shape.
-    fn small(&self, element: Entity<'a>, prisms: &[&Prism]) -> Option<String> {
+    fn small(&self, element: Entity<'a>, prisms: &[&Prism]) -> Option<Word> {
         let extent = |p: &&Prism| see(&p.profile).bounds.size.max_element().max(p.depth);
         let little = prisms.iter().all(|p| extent(p) <= SMALL);
         match self.called(element) {
-            Some(Word::Nut) if little => Some("nut".into()),
-            Some(Word::Washer) if little => Some("washer".into()),
-            Some(Word::Stud) if prisms.iter().any(|p| round(p)) => Some("called a stud: no bolt".into()),
+            Some(word @ (Word::Nut | Word::Washer)) if little => Some(word),
+            // A short bolt in several solids is no nut.
+            Some(Word::Bolt | Word::Anchor) if prisms.len() > 1 => None,
             _ => small_part(prisms),
         }
     }
 
-    /// A plate or a member, by shape.
+    /// Nuts or washers with their axis; without a plain one they are told of and prove nothing.
+    fn hardware(&self, element: Entity<'a>, what: Word, prisms: &[Prism]) -> Vec<Hardware> {
+        let all: Vec<&Prism> = prisms.iter().collect();
+        let identity = self.identity(element);
+        let one = |prism: &Prism| {
+            let centre = prism.profile.outer.least_box(glam::DVec2::X).centre;
+            Hardware {
+                what,
+                at: prism.at(centre, prism.depth / 2.0),
+                axis: prism.axis(),
+                rejected: Rejected { identity: identity.clone(), reason: String::new() },
+            }
+        };
+        self.clusters(&all).iter().filter_map(|cluster| cluster.first()).map(one).collect()
+    }
+
+    /// Decides on bolts, with the nuts and washers that lie apart from them as evidence.
+    fn tell_bolts(
+        &self,
+        bolts: Vec<(Entity<'a>, Says, Vec<Prism>)>,
+        hardware: Vec<Hardware>,
+        steelwork: &mut Steelwork,
+        parts: &mut BTreeMap<Id, Vec<Part>>,
+    ) {
+        let (aside, straight) = (2.0 * self.rulebook.tolerances.position.get(), self.straight());
+        let mut nuts = Lines::default();
+        for piece in &hardware {
+            nuts.put(piece.at, piece.at + piece.axis);
+        }
+        let mut shanks = Lines::default();
+        for (element, says, prisms) in bolts {
+            let all: Vec<&Prism> = prisms.iter().collect();
+            // A nut sits at an end or within: the shank is asked at short steps.
+            let nutted = |from: DVec3, to: DVec3| {
+                let axis = (to - from).normalize_or_zero();
+                let steps = (from.distance(to) / 50.0).ceil().clamp(1.0, 64.0);
+                (0..=steps as usize).any(|i| nuts.hold(from.lerp(to, i as f64 / steps), axis, aside, straight))
+            };
+            match self.bolts(element, says, &all, nutted) {
+                Ok(found) => {
+                    let first = steelwork.bolts.len();
+                    found.iter().for_each(|bolt| shanks.put(bolt.start, bolt.end));
+                    steelwork.bolts.extend(found);
+                    parts.insert(element.id, (first..steelwork.bolts.len()).map(Part::Bolt).collect());
+                }
+                Err(reason) => {
+                    steelwork.rejected.push(Rejected { identity: self.identity(element), reason });
+                }
+            }
+        }
+        for mut piece in hardware {
+            let held = shanks.hold(piece.at, piece.axis, aside, straight);
+            let what = if piece.what == Word::Nut { "nut or bolt head" } else { "washer" };
+            piece.rejected.reason =
+                if held { what.to_owned() } else { format!("{what} on whose axis no bolt was found") };
+            steelwork.rejected.push(piece.rejected);
+        }
+    }
+
+    /// Plates or a member, by shape.
     fn by_shape(&self, element: Entity<'a>, prisms: &[&Prism], steelwork: &mut Steelwork) -> Result<Vec<Part>, String> {
-        let volume = |p: &&Prism| p.profile.outer.area() * p.depth;
-        let Some(main) = prisms.iter().max_by(|a, b| volume(a).total_cmp(&volume(b))) else {
+        let Some(main) = prisms.iter().max_by(|a, b| a.bulk().total_cmp(&b.bulk())) else {
             return Err("it has no body".into());
         };
+        if let ([_], Some(member)) = (prisms, self.curved_bar(element, main)) {
+            steelwork.members.push(member);
+            return Ok(vec![Part::Member(steelwork.members.len() - 1)]);
+        }
         if let ([_], Some(flat)) = (prisms, flat(main)) {
             if let Some(reason) = too_thick(&flat) {
                 return Err(reason);
@@ -162,31 +245,38 @@ impl<'a> Reading<'a> {
             steelwork.plates.push(self.plate(element, main, flat));
             return Ok(vec![Part::Plate(steelwork.plates.len() - 1)]);
         }
+        if prisms.len() > 1 {
+            return self.of_several(element, prisms, main, steelwork);
+        }
         let seen = see(&main.profile);
         let size = seen.bounds.size;
         let long = main.depth >= LONG * size.max_element();
         let section =
             main.profile.kind != Kind::Outline || seen.shape == Shape::I || seen.area < OPEN * size.x * size.y;
-        if !(long || section) || (prisms.len() > 1 && flat(main).is_some()) {
-            return Err(if prisms.len() > 1 {
-                format!("its body is {} solids and none of them a member", prisms.len())
-            } else {
-                format!(
-                    "a block of {:.0} x {:.0} x {:.0} mm: neither flat as a plate nor long as a member",
-                    size.x, size.y, main.depth
-                )
-            });
+        if !(long || section || main.beyond.is_some()) {
+            return Err(format!(
+                "a block of {:.0} x {:.0} x {:.0} mm: neither flat as a plate nor long as a member",
+                size.x, size.y, main.depth
+            ));
         }
-        let mut member = self.member(element, main);
-        if prisms.len() > 1 {
-            member.not_assessed = Some(format!("built up of {} solids", prisms.len()));
-        }
-        steelwork.members.push(member);
+        steelwork.members.push(self.member(element, main));
         Ok(vec![Part::Member(steelwork.members.len() - 1)])
     }
 }
 
 impl Steelwork {
+    /// Says of parts that some of their solids can't be read: a member is not assessed then.
+    fn is_partly_read(&mut self, parts: &[Part], reason: &str, count: usize) {
+        let sentence = format!("{count} of its solids can't be read ({reason})");
+        for part in parts {
+            match part {
+                Part::Member(i) => self.members[*i].not_assessed = Some(sentence.clone()),
+                Part::Plate(i) => self.plates[*i].disagreements.push(sentence.clone()),
+                Part::Bolt(_) | Part::Weld(_) => {}
+            }
+        }
+    }
+
     /// Takes a common origin (in whole metres) off coordinates that are too large.
     fn shift(&mut self) {
         let firsts = [

@@ -8,7 +8,6 @@ use super::properties::{Plausible, Property};
 use super::reading::Reading;
 use super::solid::Prism;
 use super::statement::Statement;
-use super::words::{Word, only_weld, says};
 use super::{Weld, WeldSort};
 use crate::exchange::Entity;
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
@@ -33,11 +32,16 @@ impl<'a> Reading<'a> {
             return match self.predefined(element) {
                 Some("WELD") => true,
                 Some("GLUE" | "MORTAR") => false,
-                _ => has_set() || names.iter().any(|(_, text)| says(text, Word::Weld)),
+                _ => has_set() || names.iter().any(|(_, text)| self.rulebook.says("weld", text)),
             };
         }
         let may_be = element.is_a("IfcBuildingElementProxy") || element.is_a("IfcDiscreteAccessory");
-        may_be && (has_set() || names.iter().any(|(_, text)| only_weld(text)))
+        may_be && (has_set() || names.iter().any(|(_, text)| self.only_weld(text)))
+    }
+
+    /// Whether a text consists of nothing but words for a weld and numbers: "Fillet weld 12".
+    fn only_weld(&self, text: &str) -> bool {
+        self.rulebook.says("weld", text) && self.rulebook.says_only(&["weld", "butt-weld", "fillet-weld"], text)
     }
 
     /// A weld.
@@ -60,10 +64,10 @@ impl<'a> Reading<'a> {
         let seam = properties.iter().filter(|p| p.set == SET && p.name == "Type1").find_map(Property::text);
         let names = self.names_of(element).into_iter().map(|(_, text)| text.to_owned());
         for text in seam.iter().cloned().chain(names) {
-            if says(&text, Word::Fillet) {
+            if self.rulebook.says("fillet-weld", &text) {
                 return WeldSort::Fillet;
             }
-            if says(&text, Word::Butt) {
+            if self.rulebook.says("butt-weld", &text) {
                 return WeldSort::Butt;
             }
         }

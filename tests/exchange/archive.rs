@@ -65,13 +65,9 @@ fn a_step_file_in_an_archive_is_read_by_its_content() {
 fn every_other_member_is_said() {
     let members = [("read me.txt", "x"), ("m.ifcxml", MODEL), ("__MACOSX/._m.ifcxml", "x"), ("\u{1b}\n/ifc", "x")];
     let exchange = read(&archive(&members), "m.ifczip").unwrap();
-    let said = |name: &str| {
-        format!("1:1 the archive holds \"{name}\" too, which is not read: only its .ifc or .ifcxml is")
-    };
-    assert_eq!(
-        problems_of(&exchange),
-        ["__MACOSX/._m.ifcxml", "read me.txt", "\u{fffd}\u{fffd}/ifc"].map(said)
-    );
+    let said =
+        |name: &str| format!("1:1 the archive holds \"{name}\" too, which is not read: only its .ifc or .ifcxml is");
+    assert_eq!(problems_of(&exchange), ["__MACOSX/._m.ifcxml", "read me.txt", "\u{fffd}\u{fffd}/ifc"].map(said));
     assert!(exchange.problems.iter().all(|p| &*p.at.as_ref().unwrap().file == "m.ifczip"));
     assert!(exchange.entities.all().any(|e| e.label() == "m"));
 }
@@ -128,7 +124,10 @@ fn a_member_that_cannot_be_taken_out_says_why() {
             "is damaged: it does not inflate to the 71 bytes that the archive states",
         ),
     ] {
-        assert_eq!(refused(&bytes), format!("dir/model.ifczip: the file is a zip archive whose member d/m.ifc {reason}"));
+        assert_eq!(
+            refused(&bytes),
+            format!("dir/model.ifczip: the file is a zip archive whose member d/m.ifc {reason}")
+        );
     }
     let mut flipped = packed(CompressionMethod::Stored, &[("m.ifc", MODEL)]);
     let at = flipped.windows(4).position(|w| w == b"S355").unwrap();

@@ -307,6 +307,8 @@ fn steelwork(rulebook: &Rulebook) -> Steelwork {
         length: known(mm(90.0)),
         class: known("8.8".into()),
         hole: None,
+        slot: None,
+        anchor: false,
     };
     let weld = |guid: &str, line: u32| Weld {
         identity: identity(guid, line),

@@ -100,6 +100,8 @@ pub fn bolt(mark: &str, start: DVec3, end: DVec3, d: f64) -> Bolt {
         length: missing("bolt length"),
         class: known("8.8".into()),
         hole: None,
+        slot: None,
+        anchor: false,
     }
 }
 

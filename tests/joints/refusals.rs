@@ -2,6 +2,7 @@
 
 use faying::joints::{Kind, recognise};
 use faying::shop::Steelwork;
+use faying::units::mm;
 use glam::{DVec2, DVec3};
 
 use super::build::*;
@@ -18,6 +19,20 @@ fn refused(steel: &Steelwork, reason: &str) {
 
 fn plain() -> Steelwork {
     frame(&[Detail::default()])
+}
+
+#[test]
+fn slots_that_the_bolts_state() {
+    let mut steel = plain();
+    steel.bolts[3].slot = Some(mm(40.0));
+    refused(&steel, "slotted holes");
+}
+
+#[test]
+fn an_anchor_among_the_bolts() {
+    let mut steel = plain();
+    steel.bolts[3].anchor = true;
+    refused(&steel, "among its bolts are anchors");
 }
 
 #[test]

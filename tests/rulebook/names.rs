@@ -245,3 +245,31 @@ fn concepts_that_one_part_can_have_share_no_word() {
         }
     }
 }
+
+#[test]
+fn words_of_a_name() {
+    let rules = Rulebook::embedded();
+    for (concept, text) in [
+        ("anchor", "M24 anchor-bolt galv."),
+        ("anchor", "HOLDING DOWN BOLT M30"),
+        ("anchor", "Ankerschraube"),
+        ("bolt", "Bolt_M20x70"),
+        ("bolt", "Śruba M20"),
+        ("nut", "Écrou H M20"),
+        ("nut", "Hex nut"),
+        ("washer", "Unterlegscheibe A21"),
+        ("weld", "Schweißnaht 5"),
+        ("stud", "Shear stud 19 x 100"),
+        ("no-steel", "Béton C25/30"),
+        ("stiffener", "Full stiffener"),
+    ] {
+        assert!(rules.says(concept, text), "{text:?} as {concept}");
+    }
+    for (concept, text) in
+        [("bolt", "bolted plate"), ("nut", "minute"), ("anchor", "bolt"), ("washer", ""), ("no such concept", "bolt")]
+    {
+        assert!(!rules.says(concept, text), "{text:?} as {concept}");
+    }
+    assert!(rules.says_only(&["weld", "fillet-weld"], "Fillet weld 12") && !rules.says_only(&["weld"], "weld plate"));
+    assert!(!rules.says_only(&["weld"], "12"));
+}

@@ -36,6 +36,19 @@ fn the_embedded_settings() {
 }
 
 #[test]
+fn words_of_ones_own_come_beside_the_embedded_ones() {
+    let own = "hole-diameter = [\"Bore Ø\"]\nbolt = [\"Zugstift\"]\n";
+    let rules = Rulebook::with_overrides(&[("vocabulary.toml", own)]).unwrap();
+    assert!(rules.means("hole-diameter", "bore-ø") && rules.says("bolt", "M20 zugstift verzinkt"));
+    assert!(
+        rules.means("hole-diameter", "Lochdurchmesser") && rules.says("bolt", "Bolt M20"),
+        "the embedded words stay"
+    );
+    assert!(rules.means("mark", "part mark"));
+    assert!(!Rulebook::embedded().says("bolt", "zugstift"));
+}
+
+#[test]
 fn single_files_can_be_changed() {
     let detailing = with(DETAILING, "\"linear-beyond-1.9\"\n", "\"thin-plate-or-linear\"\n");
     let detailing = with(&detailing, "\"method-1\"\n", "\"method-2\"\n");
@@ -210,7 +223,6 @@ fn every_error_says_what_was_given_and_what_is_allowed() {
             Some("weld-lag"),
         ),
         ("vocabulary.toml", with(VOCABULARY, "\"d0\",", "\"-\","), "a word without letters or digits", Some("\"-\"")),
-        ("vocabulary.toml", "mark = []".into(), "no words for \"bolt-diameter\"", None),
         // sections
         (
             "sections/uc.csv",

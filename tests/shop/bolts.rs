@@ -185,7 +185,6 @@ fn fasteners_that_are_no_bolts_are_rejected_with_a_reason() {
         .collect();
     for (attributes, solid, word) in [
         (r#"Name="S19" PredefinedType="studshearconnector""#, shank.clone(), "STUDSHEARCONNECTOR"),
-        (r#"Name="M24" PredefinedType="anchorbolt""#, shank.clone(), "anchor"),
         (r#"Name="Nut M20""#, shank.clone(), "nut"),
         (r#"Name="Washer M20""#, shank.clone(), "washer"),
         (r#"Name="M20" NominalDiameter="20""#, extruded(&circle(25.0), 80.0, "0 0 1"), "hole pattern"),

@@ -1,6 +1,7 @@
 use faying::shop::{Plate, Steelwork};
 
 use super::model::*;
+use super::polyhedra::{Body, ring};
 use crate::close;
 
 #[track_caller]
@@ -87,6 +88,21 @@ fn openings_through_a_plate_are_holes() {
     let hole = only(&steelwork).holes[0];
     close(hole.diameter, 22.0, 1e-9);
     close(hole.length, 50.0, 1e-9);
+}
+
+#[test]
+fn openings_by_their_faces_and_voiding_features_are_holes() {
+    let round = Body::prism(&ring((45.0, -60.0), 11.0, 16), &[], -10.0, 40.0);
+    for solid in [round.faceted(), round.polygonal()] {
+        let steelwork = pierced("0 0 0", &solid);
+        let hole = only(&steelwork).holes[0];
+        close(hole.diameter, 22.0, 1e-6);
+    }
+    let plate = extruded(&rectangle(200.0, 400.0), 20.0, "0 0 1");
+    let feature = opening("45 -60 -10", &extruded(&circle(11.0), 40.0, "0 0 1"))
+        .replace("IfcOpeningElement", "IfcVoidingFeature");
+    let steelwork = taken(&element("IfcPlate", r#"id="i1""#, "", &plate, &feature));
+    close(only(&steelwork).holes[0].diameter, 22.0, 1e-9);
 }
 
 #[test]
