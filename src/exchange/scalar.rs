@@ -81,7 +81,13 @@ fn truth(base: Base, word: &str) -> Result<Value, String> {
 /// A text in quotes, cut where it is long: a problem must stay one readable line.
 pub(super) fn quoted(text: &str) -> String {
     const LONGEST: usize = 40;
-    let mut short: String = text.chars().take(LONGEST).flat_map(char::escape_debug).collect();
+    let mut short = String::new();
+    for c in text.chars().take(LONGEST) {
+        match c {
+            '\'' => short.push(c), // the quotes around are double ones
+            c => short.extend(c.escape_debug()),
+        }
+    }
     if text.chars().nth(LONGEST).is_some() {
         short.push('…');
     }

@@ -65,33 +65,40 @@ impl<'a> Cursor<'a> {
         self.take_while(|b| b > b' ' && !matches!(b, b',' | b'(' | b')' | b';' | b'\'' | b'"' | b'/' | 0xA0 | 0xC2))
     }
 
-    /// What stands between the quotes, the first of which comes next; doubled quotes as they are written.
+    /// What stands between the quotes, the first of which comes next; quotes as they are written.
+    ///
+    /// A quote ends a string only where the record can go on after it: one that should have been doubled, as in
+    /// `'Beam's end',`, is part of the text. A string is taken for one that lost its closing quote where it holds the
+    /// start of another record and either a line break or a quote that does not end it.
     ///
     /// # Errors
     /// It is not closed. The reading then stands where the record seems to end.
-    pub fn string(&mut self) -> Result<&'a [u8], String> {
-        let start = self.at + 1;
-        let window = &self.bytes[start.min(self.bytes.len())..self.bytes.len().min(start + LONGEST_STRING + 1)];
-        let mut end = 0;
-        let closed = loop {
-            let Some(quote) = memchr::memchr(b'\'', &window[end..]) else { break false };
-            end += quote;
-            if window.get(end + 1) != Some(&b'\'') {
-                break true;
+    pub fn string(&mut self) -> Result<Quoted<'a>, String> {
+        let start = self.bytes.len().min(self.at + 1);
+        let window = &self.bytes[start..self.bytes.len().min(start + LONGEST_STRING + 1)];
+        let mut is_doubled = true;
+        let mut at = 0; // up to where each piece between quotes has been looked at
+        while let Some(length) = memchr::memchr(b'\'', &window[at..]) {
+            let (piece, quote) = (&window[at..at + length], at + length);
+            let after = &self.bytes[start + quote + 1..];
+            let doubled = after.starts_with(b"'");
+            let ends = !doubled && may_follow_string(after);
+            if (!ends || memchr::memchr2(b'\n', b'\r', piece).is_some())
+                && let Some(lost) = record_end(piece)
+            {
+                self.at = start + at + lost;
+                return Err(not_closed());
             }
-            end += 2;
-        };
-        let text = if closed { &window[..end] } else { &self.bytes[start.min(self.bytes.len())..] };
-        // a string that runs into the next record has lost its closing quote
-        if let Some(lost) = record_end(text) {
-            self.at = start + lost;
-        } else if closed {
-            self.at = start + end + 1;
-            return Ok(text);
-        } else {
-            self.at = self.bytes.len();
+            if ends {
+                self.at = start + quote + 1;
+                return Ok(Quoted { raw: &window[..quote], is_doubled });
+            }
+            is_doubled &= doubled;
+            at = window.len().min(quote + 1 + usize::from(doubled));
         }
-        Err(format!("holds a string that is not closed (or longer than {LONGEST_STRING} bytes)"))
+        let rest = start + at;
+        self.at = record_end(&self.bytes[rest..]).map_or(self.bytes.len(), |lost| rest + lost);
+        Err(not_closed())
     }
 
     /// Leaves a record: past the `;` that ends it, or up to where another record plainly starts.
@@ -104,6 +111,29 @@ impl<'a> Cursor<'a> {
                 _ => self.at += 1,
             }
         }
+    }
+}
+
+/// What stands between the quotes of a string.
+pub(super) struct Quoted<'a> {
+    pub raw: &'a [u8],
+    /// Whether all quotes in it are doubled, as they must be.
+    pub is_doubled: bool,
+}
+
+fn not_closed() -> String {
+    format!("holds a string that is not closed (or longer than {LONGEST_STRING} bytes)")
+}
+
+/// Whether a record can go on so after a string: with a mark or a comment, or not at all.
+fn may_follow_string(bytes: &[u8]) -> bool {
+    let mut rest = bytes;
+    loop {
+        rest = match rest {
+            [] | [b',' | b')' | b';', ..] | [b'/', b'*', ..] => return true,
+            [0..=b' ' | 0x7F | 0xA0, after @ ..] | [0xC2, 0xA0, after @ ..] => after,
+            _ => return false,
+        };
     }
 }
 

@@ -4,7 +4,7 @@ use super::super::Entities;
 use super::super::problems::Spot;
 use super::super::scalar::quoted;
 use super::super::schema::Schema;
-use super::{Reader, text};
+use super::Reader;
 
 impl Reader<'_> {
     /// Reads `FILE_SCHEMA(('IFC4'))` after its first word and takes the tables of that schema.
@@ -16,9 +16,9 @@ impl Reader<'_> {
         while let Some(byte @ (b'(' | b'\'' | b',')) = self.cursor.peek() {
             if byte != b'\'' {
                 self.cursor.at += 1;
-            } else if let Ok(raw) = self.cursor.string() {
+            } else if let Ok(text) = self.cursor.string() {
                 // an object identifier may follow: 'IFC4 {1 0 10303 …}'
-                let name = text::decode(raw).text;
+                let name = super::text::decode(text.raw).text;
                 names.push(name.split_whitespace().next().unwrap_or_default().to_ascii_uppercase());
             }
         }

@@ -118,6 +118,11 @@ impl Reader<'_> {
                     return if data { Ok(()) } else { Err("holds no DATA section".into()) };
                 }
                 (Section::Other, _) => {}
+                _ if self.cursor.rest().starts_with(b"/*") => {
+                    self.problems.add("comment that is not closed", spot, || {
+                        "a comment starts here and is not closed; it is read as if it were none".into()
+                    });
+                }
                 _ => {
                     let shown = super::scalar::quoted(&keyword);
                     self.problems.add("statement that is not understood", spot, || {
@@ -148,7 +153,7 @@ impl Reader<'_> {
     fn finish(mut self) -> Exchange {
         if let Some((spot, count)) = self.latin1 {
             self.problems.add("text that is not UTF-8", spot, || {
-                format!("texts with bytes that are not UTF-8, {count} from here on, are read as ISO 8859-1")
+                format!("texts with bytes that are not UTF-8, {count} from here on, are read as Windows-1252")
             });
         }
         self.numbers.sort(); // of two with the same number the first comes first

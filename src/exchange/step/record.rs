@@ -141,7 +141,7 @@ impl Reader<'_> {
             Some(_) => {
                 let rest = self.cursor.rest();
                 let shown = String::from_utf8_lossy(&rest[..rest.len().min(20)]);
-                let shown = quoted(shown.lines().next().unwrap_or_default()).replace("\\'", "'");
+                let shown = quoted(shown.lines().next().unwrap_or_default());
                 format!("has {shown} where {required} is required")
             }
         }

@@ -1,10 +1,12 @@
 //! Strings of ISO 10303-21 into text.
 
+use encoding_rs as enc;
+
 /// The text of a string, and what is wrong with it, in words that follow "…: ".
 pub(super) struct Text {
     pub text: String,
     pub wrong: Option<String>,
-    /// Whether it holds bytes that are not UTF-8, which are read as ISO 8859-1.
+    /// Whether it holds bytes that are not UTF-8, which are read as Windows-1252: ISO 8859-1 and what programs add to it.
     pub is_latin1: bool,
 }
 
@@ -14,7 +16,7 @@ pub(super) struct Text {
 pub(super) fn decode(raw: &[u8]) -> Text {
     let (written, is_latin1) = match std::str::from_utf8(raw) {
         Ok(text) => (text.to_owned(), false),
-        Err(_) => (raw.iter().map(|b| char::from(*b)).collect(), true),
+        Err(_) => (enc::WINDOWS_1252.decode_without_bom_handling(raw).0.into_owned(), true),
     };
     let mut decoded = Text { text: String::new(), wrong: None, is_latin1 };
     if !written.contains(|c: char| c == '\\' || c == '\'' || c.is_control()) {
@@ -51,11 +53,13 @@ fn escape(rest: &str, page: &mut char, into: &mut Text) -> usize {
         return 5;
     }
     if let Some(c) = rest.strip_prefix("\\S\\").and_then(|after| after.chars().next()).filter(char::is_ascii) {
-        if *page == 'A' {
-            into.text.push(char::from(c as u8 | 0x80));
-        } else {
-            into.text.push(char::REPLACEMENT_CHARACTER);
-            into.wrong = Some(format!("uses the code page \\P{page}\\; of these only \\PA\\ (ISO 8859-1) is read"));
+        let byte = c as u8 | 0x80;
+        match in_page(*page, byte) {
+            Some(text) => into.text.push(text),
+            None => {
+                into.text.push(char::REPLACEMENT_CHARACTER);
+                into.wrong = Some(format!("holds \\S\\{c}, which the code page \\P{page}\\ does not have"));
+            }
         }
         return if c == '\'' { 5 } else { 4 }; // a quote stands doubled here too
     }
@@ -70,27 +74,44 @@ fn escape(rest: &str, page: &mut char, into: &mut Text) -> usize {
     first.len_utf8()
 }
 
-/// `\X2\…\X0\` or `\X4\…\X0\`: characters of so many digits each.
+/// The character of a byte in the upper half of a code page: A to I are ISO 8859-1 to 8859-9.
+fn in_page(page: char, byte: u8) -> Option<char> {
+    let encoding = match page {
+        'A' => return Some(char::from(byte)),
+        'B' => enc::ISO_8859_2,
+        'C' => enc::ISO_8859_3,
+        'D' => enc::ISO_8859_4,
+        'E' => enc::ISO_8859_5,
+        'F' => enc::ISO_8859_6,
+        'G' => enc::ISO_8859_7,
+        'H' => enc::ISO_8859_8,
+        'I' => enc::WINDOWS_1254, // the same as ISO 8859-9 from 0xA0 on
+        _ => return None,
+    };
+    let text = encoding.decode_without_bom_handling_and_without_replacement(std::slice::from_ref(&byte))?;
+    text.chars().next()
+}
+
+/// `\X2\…\X0\` or `\X4\…\X0\`: characters of so many digits each, which a line break may part.
 fn wide(rest: &str, after: &str, digits: usize, into: &mut Text) -> usize {
-    let written = after.find("\\X0\\").map(|end| &after[..end]);
-    let text = written.and_then(|written| {
-        let codes = written.as_bytes().chunks(digits).map(|code| {
-            let code = std::str::from_utf8(code).ok().filter(|code| code.len() == digits)?;
-            hex(code)
-        });
-        let codes: Vec<u32> = codes.collect::<Option<_>>()?;
-        if digits == 4 {
-            char::decode_utf16(codes.iter().map(|code| *code as u16)).collect::<Result<String, _>>().ok()
-        } else {
-            codes.into_iter().map(char::from_u32).collect()
-        }
+    let end = after.bytes().take_while(|b| b.is_ascii_hexdigit() || b.is_ascii_control()).count();
+    let written = &after[..end];
+    let codes: String = written.chars().filter(char::is_ascii_hexdigit).collect();
+    let codes = codes.as_bytes().chunks(digits).map(|code| {
+        let code = std::str::from_utf8(code).ok().filter(|code| code.len() == digits)?;
+        u32::from_str_radix(code, 16).ok()
     });
-    match (written, text) {
-        (Some(written), Some(text)) => {
+    let codes: Option<Vec<u32>> = codes.collect();
+    let text = codes.filter(|_| after[end..].starts_with("\\X0\\")).and_then(|codes| match digits {
+        4 => char::decode_utf16(codes.iter().map(|code| *code as u16)).collect::<Result<String, _>>().ok(),
+        _ => codes.into_iter().map(char::from_u32).collect(),
+    });
+    match text {
+        Some(text) => {
             into.text.push_str(&text);
-            4 + written.len() + 4
+            4 + end + 4
         }
-        _ => {
+        None => {
             let name = &rest[..4];
             into.wrong = Some(format!(
                 "holds {name} without groups of {digits} hexadecimal digits and \\X0\\ after it; it is kept as it stands"

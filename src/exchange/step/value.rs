@@ -128,8 +128,14 @@ impl Reader<'_> {
     }
 
     fn text(&mut self, base: Base, at: At) -> Read<Value> {
-        let raw = self.cursor.string().map_err(Trouble::Broken)?;
-        let decoded = text::decode(raw);
+        let string = self.cursor.string().map_err(Trouble::Broken)?;
+        let decoded = text::decode(string.raw);
+        if !string.is_doubled {
+            let text = quoted(&decoded.text);
+            self.note("quote that is not doubled", at, |named| {
+                format!("{named} has a single ' in its text; it is read as {text}")
+            });
+        }
         if decoded.is_latin1 {
             self.latin1.get_or_insert((at.spot, 0)).1 += 1;
         }

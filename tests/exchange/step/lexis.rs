@@ -27,6 +27,17 @@ fn strings_are_decoded() {
         ("\\S\\i", "é"),
         ("\\PA\\\\S\\i", "é"),
         ("\\S\\''", "\u{a7}"),
+        // a letter of each part of ISO 8859 from 2 to 9
+        ("\\PB\\\\S\\9", "š"),
+        ("\\PC\\\\S\\!", "Ħ"),
+        ("\\PD\\\\S\\!", "Ą"),
+        ("\\PE\\\\S\\A\\S\\B", "СТ"),
+        ("\\PF\\\\S\\G", "ا"),
+        ("\\PG\\\\S\\a", "α"),
+        ("\\PH\\\\S\\`", "א"),
+        ("\\PI\\\\S\\}\\PA\\\\S\\}", "ıý"),
+        ("\\X2\\00E9\r\n03\nB1\\X0\\", "éα"),
+        ("see ;#12=IFCBEAM(", "see ;#12=IFCBEAM("),
         ("PL 15 × 200", "PL 15 × 200"),
         ("a\r\n  b", "a  b"),
         ("a;b /* c */ #1=", "a;b /* c */ #1="),
@@ -37,15 +48,20 @@ fn strings_are_decoded() {
 }
 
 #[test]
-fn bytes_that_are_not_utf8_are_latin1_and_said_once() {
-    let file = file_of("IFC4", "#1=IFCMATERIAL('Tr~ger',$,$);\n#2=IFCMATERIAL('~',$,$);\n#3=IFCMATERIAL('é',$,$);");
-    let bytes: Vec<u8> = file.bytes().map(|b| if b == b'~' { 0xE4 } else { b }).collect();
+fn bytes_that_are_not_utf8_are_windows_1252_and_said_once() {
+    let file = file_of("IFC4", "#1=IFCMATERIAL('Tr~ger',$,$);\n#2=IFCMATERIAL('5^~',$,$);\n#3=IFCMATERIAL('é',$,$);");
+    let raw = |b| match b {
+        b'~' => 0xE4,
+        b'^' => 0x96,
+        b => b,
+    };
+    let bytes: Vec<u8> = file.bytes().map(raw).collect();
     let exchange = read(&bytes, "t.ifc").unwrap();
     let names: Vec<_> = exchange.entities.all().map(|e| e.text("Name").unwrap()).collect();
-    assert_eq!(names, ["Träger", "ä", "é"]);
+    assert_eq!(names, ["Träger", "5–ä", "é"]);
     assert_eq!(
         problems_of(&exchange),
-        ["2:1 texts with bytes that are not UTF-8, 2 from here on, are read as ISO 8859-1"]
+        ["2:1 texts with bytes that are not UTF-8, 2 from here on, are read as Windows-1252"]
     );
 }
 

@@ -78,8 +78,8 @@ const PROBLEMS: &[(&str, &[&str])] = &[
         ],
     ),
     (
-        "#1=IFCMATERIAL('\\PB\\\\S\\i',$,$);",
-        &["2:1 Name of IfcMaterial #1 uses the code page \\PB\\; of these only \\PA\\ (ISO 8859-1) is read"],
+        "#1=IFCMATERIAL('\\PF\\\\S\\!',$,$);",
+        &["2:1 Name of IfcMaterial #1 holds \\S\\!, which the code page \\PF\\ does not have"],
     ),
     (
         "#1=IFCBOLT('x',#99999);",
@@ -90,10 +90,14 @@ const PROBLEMS: &[(&str, &[&str])] = &[
         "#1=(IFCCURVE()IFCLABELLED('a);(b'));",
         &["2:1 #1 is of several classes at once; it is kept, but nothing of it is understood"],
     ),
+    ("#1=IFCMATERIAL('it's',$,$);", &["2:1 Name of IfcMaterial #1 has a single ' in its text; it is read as \"it's\""]),
     (
-        "#1=IFCMATERIAL('it's',$,$);",
-        &["2:1 IfcMaterial #1 has \"s',$,$);\" where , or ) is required; what follows in it is not read"],
+        "#1=IFCMATERIAL('it,$,$);#2=IFCMATERIAL('a',$,$);#3=IFCMATERIAL('b',$,$);",
+        &[
+            "2:1 IfcMaterial #1 holds a string that is not closed (or longer than 1048576 bytes); what follows in it is not read",
+        ],
     ),
+    ("/* #1=IFCMATERIAL('a',$,$);", &["2:1 a comment starts here and is not closed; it is read as if it were none"]),
     (
         "#1=IFCMATERIAL('it,$,$);",
         &[
@@ -208,10 +212,46 @@ fn nesting_and_strings_have_a_limit() {
 
 #[test]
 fn broken_files_take_linear_time() {
-    for piece in ["/*", "'", "#1='", "#1=IFCX('';", "#1=IFCX(", ";   ", "';#1", "\"", "#", "("] {
+    for piece in [
+        "''');",
+        "'a'b",
+        "#1=A('' ",
+        "#1=A('\\X2\\",
+        "/*",
+        "'",
+        "#1='",
+        "#1=IFCX('';",
+        "#1=IFCX(",
+        ";   ",
+        "';#1",
+        "\"",
+        "#",
+        "(",
+    ] {
         let exchange = read_records(&piece.repeat(300_000));
         assert!(!exchange.problems.is_empty() || exchange.entities.is_empty(), "{piece}");
     }
+}
+
+#[test]
+fn escapes_without_end_take_linear_time() {
+    for end in ["", "\\X0\\"] {
+        let exchange = read_records(&format!("#1=IFCMATERIAL('{}{end}',$,$);", "\\X2\\".repeat(200_000)));
+        assert_eq!(exchange.problems.len(), 1);
+    }
+}
+
+/// What stands behind a quote that was not doubled is not lost: a member would lose its place and its body.
+#[test]
+fn a_quote_that_is_not_doubled_costs_nothing() {
+    let exchange = read_records(
+        "#1=IFCBEAM('0000000000000000000001',$,'Beam's 'end'',$,'it's' ,#2,$,'T''7',.BEAM.);#2=IFCLOCALPLACEMENT($,$);",
+    );
+    let beam = labelled(&exchange, "#1");
+    assert_eq!((beam.text("Name"), beam.text("ObjectType")), (Some("Beam's 'end'"), Some("it's")));
+    assert_eq!((beam.text("Tag"), beam.token("PredefinedType")), (Some("T'7"), Some("BEAM")));
+    assert_eq!(beam.entity("ObjectPlacement").map(|e| e.label()), Some("#2"));
+    assert_eq!(exchange.problems.len(), 2);
 }
 
 const SMALL: &str = "ISO-10303-21;HEADER;FILE_SCHEMA(('IFC4'));ENDSEC;DATA;\n\
