@@ -6,6 +6,7 @@ mod forms;
 mod hostile;
 mod part28;
 mod problems;
+mod step;
 mod unreadable;
 mod values;
 

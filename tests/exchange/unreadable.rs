@@ -7,11 +7,16 @@ fn a_file_that_is_no_exchange_says_why_in_one_sentence() {
     for (text, reason) in [
         ("", "the file is empty"),
         (" \r\n\t ", "the file is empty"),
+        ("\u{feff}\nISO-10303-21;\nHEADER;", "the file breaks off before its DATA section: the file is truncated"),
+        ("ISO-10303-21;HEADER;ENDSEC;END-ISO-10303-21;", "the file holds no DATA section"),
         (
-            "\u{feff}\nISO-10303-21;\nHEADER;",
-            "the file is a STEP file (ISO 10303-21); this form is not read yet, ifcXML of IFC4 is",
+            "ISO-10303-21;HEADER;\n FILE_SCHEMA(('AUTOMOTIVE_DESIGN { 1 0 10303 214 }'));ENDSEC;DATA;ENDSEC;",
+            "the file is STEP of the schema \"AUTOMOTIVE_DESIGN\" at line 2, column 2; IFC2X3, IFC4 and IFC4X3 are read",
         ),
-        ("Mark,Moment\n", "the file is no exchange: it starts with \"Mark,Moment\\n\", XML is required"),
+        (
+            "Mark,Moment\n",
+            "the file is no exchange: it starts with \"Mark,Moment\\n\", ifcXML or STEP (ISO-10303-21) is required",
+        ),
         (
             "<ex:iso_10303_28 xmlns:ex='urn:iso.org:standard:10303:part(28):version(2):xmlschema:common'/>",
             "the file is ifcXML by ISO 10303-28 without a uos, which would hold the entities",

@@ -141,7 +141,8 @@ impl Reader<'_> {
             Some(_) => {
                 let rest = self.cursor.rest();
                 let shown = String::from_utf8_lossy(&rest[..rest.len().min(20)]);
-                format!("has {} where {required} is required", quoted(&shown))
+                let shown = quoted(shown.lines().next().unwrap_or_default()).replace("\\'", "'");
+                format!("has {shown} where {required} is required")
             }
         }
     }

@@ -57,7 +57,7 @@ fn escape(rest: &str, page: &mut char, into: &mut Text) -> usize {
             into.text.push(char::REPLACEMENT_CHARACTER);
             into.wrong = Some(format!("uses the code page \\P{page}\\; of these only \\PA\\ (ISO 8859-1) is read"));
         }
-        return 4;
+        return if c == '\'' { 5 } else { 4 }; // a quote stands doubled here too
     }
     if let [b'\\', b'P', c @ b'A'..=b'I', b'\\', ..] = rest.as_bytes() {
         *page = char::from(*c);
