@@ -129,6 +129,16 @@ fn entities_of_several_parts_of_a_document_are_one_graph() {
     assert_eq!(labelled(&exchange, "l").entities("Materials")[0].text("Name"), Some("S355"));
 }
 
+/// Some writers put a value, or a reference to anything, where the schema derives one.
+#[test]
+fn a_derived_attribute_has_no_value() {
+    let unit = "<IfcSIUnit id='u'><Dimensions><IfcDimensionalExponents ref='m' xsi:nil='true'/></Dimensions><UnitType>lengthunit</UnitType><Name>metre</Name></IfcSIUnit><IfcMaterial id='m'/>";
+    let exchange = read(published(unit).as_bytes(), "t").unwrap();
+    assert_eq!(exchange.problems, []);
+    assert_eq!(*labelled(&exchange, "u").value("Dimensions"), Value::Absent);
+    assert_eq!(labelled(&exchange, "u").token("Name"), Some("METRE"));
+}
+
 /// The XSD of IFC2X3 knows no inverse attribute, and an attribute of a later version is none here.
 #[test]
 fn what_the_version_does_not_have_is_a_problem() {
