@@ -130,7 +130,8 @@ impl Version {
 fn version(namespace: &str) -> Option<Version> {
     let plain: String =
         namespace.chars().filter(|c| c.is_ascii_alphanumeric()).collect::<String>().to_ascii_lowercase();
-    const VERSIONS: [(&str, &str, fn() -> &'static Schema); 10] = [
+    type Table = fn() -> &'static Schema;
+    const VERSIONS: [(&str, &str, Table); 10] = [
         ("ifc2x3", "IFC2X3", Schema::ifc2x3),
         ("ifc2x2", "IFC2X2", Schema::ifc2x3),
         ("ifc4x1", "IFC4X1", Schema::ifc4),
