@@ -1,6 +1,3 @@
-<<<<<<< HEAD
-
-=======
 //! What the versions of ifcXML from IFC4 on write differently: where relations stand, and what their schemas changed.
 
 use super::*;
@@ -150,4 +147,3 @@ fn a_version_without_tables_says_by_which_it_is_read() {
         assert_eq!(problems_of(&exchange), [format!("1:1 the entities are of {version}, which is read as IFC4")]);
     }
 }
->>>>>>> room/part28

@@ -1,6 +1,3 @@
-<<<<<<< HEAD
-
-=======
 //! ifcXML by ISO 10303-28, the form of IFC2X3.
 
 use super::*;
@@ -181,4 +178,3 @@ fn every_proper_beginning_of_a_document_is_unreadable() {
         assert!(read(&document.as_bytes()[..end], "t").is_err(), "{end}");
     }
 }
->>>>>>> room/part28
