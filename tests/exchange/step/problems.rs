@@ -245,13 +245,23 @@ fn escapes_without_end_take_linear_time() {
 #[test]
 fn a_quote_that_is_not_doubled_costs_nothing() {
     let exchange = read_records(
-        "#1=IFCBEAM('0000000000000000000001',$,'Beam's 'end'',$,'it's' ,#2,$,'T''7',.BEAM.);#2=IFCLOCALPLACEMENT($,$);",
+        "#1=IFCBEAM('0000000000000000000001',$,'Beam's 'far' end',$,'it's' ,#2,$,'T''7',.BEAM.);#2=IFCLOCALPLACEMENT($,$);",
     );
     let beam = labelled(&exchange, "#1");
-    assert_eq!((beam.text("Name"), beam.text("ObjectType")), (Some("Beam's 'end'"), Some("it's")));
+    assert_eq!((beam.text("Name"), beam.text("ObjectType")), (Some("Beam's 'far' end"), Some("it's")));
     assert_eq!((beam.text("Tag"), beam.token("PredefinedType")), (Some("T'7"), Some("BEAM")));
     assert_eq!(beam.entity("ObjectPlacement").map(|e| e.label()), Some("#2"));
     assert_eq!(exchange.problems.len(), 2);
+}
+
+/// Two quotes are one quote of the text, as the standard has it, even where the writer meant the end: that swallows
+/// the next text, and the record says that it is short.
+#[test]
+fn a_quote_that_is_not_doubled_at_the_end_of_a_text_is_said() {
+    let exchange = read_records("#1=IFCMATERIAL('in'',$,'x');#2=IFCMATERIAL('kept',$,$);");
+    assert_eq!(labelled(&exchange, "#1").text("Name"), Some("in',$,'x"));
+    assert_eq!(labelled(&exchange, "#2").text("Name"), Some("kept"));
+    assert!(problems_of(&exchange).iter().any(|p| p.contains("has 1 attributes, 3 are required")));
 }
 
 const SMALL: &str = "ISO-10303-21;HEADER;FILE_SCHEMA(('IFC4'));ENDSEC;DATA;\n\
