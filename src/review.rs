@@ -1,5 +1,7 @@
 //! The review: the plain data that every report is drawn from.
 
+use std::sync::Arc;
+
 use crate::origin::{Missing, Place, Problem};
 use crate::working::Working;
 
@@ -174,7 +176,7 @@ pub struct CheckResult {
     /// "met", "not met" or "unproven".
     pub outcome: &'static str,
     /// The working.
-    pub working: Working,
+    pub working: Arc<Working>,
 }
 
 /// One joint's review.

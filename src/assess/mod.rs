@@ -2,6 +2,8 @@
 
 pub mod end_plate;
 
+use std::sync::Arc;
+
 use crate::origin::{Datum, Missing, Origin};
 use crate::units::{Force, Length, Moment};
 use crate::working::Working;
@@ -46,7 +48,7 @@ pub struct Component {
     /// What it carries at the joint's own full moment resistance.
     pub at_full: Force,
     /// The working.
-    pub working: Working,
+    pub working: Arc<Working>,
 }
 
 /// The moment resistance in one sense and for one β.
@@ -152,7 +154,7 @@ pub struct CaseResult {
     /// One of each [`About`] that applies.
     pub verdicts: Vec<Verdict>,
     /// The moment resistance of this case (its sense and β); `None` if M is not stated or nothing could be computed.
-    pub moment: Option<MomentResistance>,
+    pub moment: Option<Arc<MomentResistance>>,
     /// The shear resistance beside this case's bolt tensions; `None` if V is not stated.
     pub shear: Option<ShearResistance>,
 }
@@ -172,9 +174,9 @@ pub struct ShearResistance {
 #[derive(Clone, Debug, Default)]
 pub struct Assessment {
     /// M_j,Rd with tension at the top.
-    pub hogging: Option<MomentResistance>,
+    pub hogging: Option<Arc<MomentResistance>>,
     /// M_j,Rd with tension at the bottom.
-    pub sagging: Option<MomentResistance>,
+    pub sagging: Option<Arc<MomentResistance>>,
     /// V_Rd.
     pub shear: Option<ShearResistance>,
     /// Results for each load case.

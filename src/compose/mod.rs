@@ -3,10 +3,11 @@
 mod brief;
 mod joint;
 
+use rayon::prelude::*;
 use sha2::{Digest, Sha256};
 
 use crate::assess::Assessment;
-use crate::assess::end_plate::{self, Demand, Opposite};
+use crate::assess::end_plate::{self, Demand, Opposite, Solver};
 use crate::exchange::Exchange;
 use crate::findings::{self, Context};
 use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
@@ -36,7 +37,9 @@ pub struct Sources<'a> {
 
 /// The review of everything.
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
-    let mut joints: Vec<JointReview> = (0..sources.joints.joints.len()).map(|index| sources.found(index)).collect();
+    let solver = Solver::new(sources.rulebook);
+    let found = (0..sources.joints.joints.len()).into_par_iter();
+    let mut joints: Vec<JointReview> = found.map(|index| sources.found(&solver, index)).collect();
     let pairing = sources.pairing;
     joints.extend(pairing.not_found.iter().filter_map(|&index| sources.without_steel(index, false)));
     joints.extend(pairing.unclear.iter().filter_map(|&index| sources.without_steel(index, true)));
@@ -190,12 +193,12 @@ impl<'a> Sources<'a> {
         cases.iter().map(|case| Demand { case, opposite: opposite(case) }).collect()
     }
 
-    fn compute(&self, joint: &Joint, scheduled: Option<&ScheduledJoint>) -> Computed {
+    fn compute(&self, solver: &Solver<'_>, joint: &Joint, scheduled: Option<&ScheduledJoint>) -> Computed {
         let Ok(layout) = &joint.layout else { return Computed { detailed: None, intended: None } };
         let cases = scheduled.map_or(&[][..], |s| &s.cases);
         let demands = self.demands(joint, cases);
         let two_sided = joint.opposite.is_some() || joint.opposite_unclear.is_some();
-        let assess = |layout: &EndPlateLayout| end_plate::assess(layout, &demands, two_sided, self.rulebook);
+        let assess = |layout: &EndPlateLayout| end_plate::assess_with(solver, layout, &demands, two_sided);
         let intended = self.detail(scheduled).map(|detail| {
             let meant = end_plate::intended(layout, detail, self.rulebook)?;
             let assessment = assess(&meant);
@@ -204,10 +207,10 @@ impl<'a> Sources<'a> {
         Computed { detailed: Some(assess(layout)), intended }
     }
 
-    fn found(&self, index: usize) -> JointReview {
+    fn found(&self, solver: &Solver<'_>, index: usize) -> JointReview {
         let joint = &self.joints.joints[index];
         let scheduled = self.scheduled(index);
-        let computed = self.compute(joint, scheduled);
+        let computed = self.compute(solver, joint, scheduled);
         let context = Context {
             rulebook: self.rulebook,
             steelwork: self.steelwork,

@@ -35,6 +35,11 @@ pub struct FlangeCompression {
     pub V_Ed: Force,
 }
 
+/// V_pl,Rd, EN 1993-1-1 6.2.6 (6.18).
+pub fn shear_resistance(A_v: Area, f_y: Stress, gamma_M0: f64) -> Force {
+    A_v * f_y / (3.0_f64.sqrt() * gamma_M0)
+}
+
 /// F_c,fb,Rd = M_c,Rd/(h − t_fb), 6.2.6.7 (6.21), with M_c,Rd reduced beside a shear above half of the beam's own
 /// (EN 1993-1-1 6.2.8, (6.30)); with h above 600 mm the web's share is at most 20 %.
 ///
@@ -46,7 +51,7 @@ pub fn flange_compression(c: &FlangeCompression, gamma_M0: f64) -> Result<Resist
     given!(w, "beam"; W_y, h, b_fb, t_fb, f_y);
     step!(w, "EN 1993-1-1 6.2.5", M_c_Rd = W_y * f_y / gamma_M0);
     let mut M_beam = M_c_Rd;
-    let V_pl_Rd = A_v * f_y / (3.0_f64.sqrt() * gamma_M0);
+    let V_pl_Rd = shear_resistance(A_v, f_y, gamma_M0);
     if !(V_Ed <= V_pl_Rd) {
         return Err(format!("V = {V_Ed} is more than the beam's own V_pl,Rd = {V_pl_Rd} (EN 1993-1-1 6.2.6)"));
     }

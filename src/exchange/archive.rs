@@ -2,7 +2,7 @@
 
 use std::io::{Cursor, Read};
 
-use zip::ZipArchive;
+use zip::{CompressionMethod, ZipArchive};
 
 use super::problems::{Problems, Spot};
 use super::scalar::quoted;
@@ -64,25 +64,25 @@ pub(super) fn model(bytes: &[u8], problems: &mut Problems) -> Result<(String, Ve
 /// The bytes of a member. Not more is inflated than the archive states for it, and what it states is limited: so the
 /// limit holds whatever it states.
 fn inflated(archive: &mut ZipArchive<Cursor<&[u8]>>, index: usize) -> Result<Vec<u8>, String> {
-    let entry = archive.by_index_data(index).map_err(|error| format!("is damaged: {error}"))?;
+    let damaged = |error: &dyn std::error::Error| format!("is damaged: {error}");
+    let entry = archive.by_index_data(index).map_err(|error| damaged(&error))?;
     let stated = entry.size();
     if entry.encrypted() {
         return Err("is encrypted; a model without a password is required".into());
     }
+    if ![CompressionMethod::Stored, CompressionMethod::Deflated].contains(&entry.compression()) {
+        return Err("is compressed in a way that is not read; stored and deflated members are".into());
+    }
     if stated > LARGEST {
         return Err(format!("inflates to {stated} bytes, {LARGEST} are allowed; read it unpacked"));
     }
-    let member = archive.by_index(index).map_err(|error| match error {
-        zip::result::ZipError::CompressionMethodNotSupported(method) => {
-            format!("is compressed by method {method}; stored (0) and deflated (8) are allowed")
-        }
-        error => format!("is damaged: {error}"),
-    })?;
+    let member = archive.by_index(index).map_err(|error| damaged(&error))?;
     let mut model = Vec::new();
-    member.take(stated + 1).read_to_end(&mut model).map_err(|error| format!("is damaged: {error}"))?;
+    let read = member.take(stated + 1).read_to_end(&mut model);
     if model.len() as u64 != stated {
         return Err(format!("is damaged: it does not inflate to the {stated} bytes that the archive states"));
     }
+    read.map_err(|error| damaged(&error))?;
     Ok(model)
 }
 

@@ -161,12 +161,12 @@ fn sense(moment: f64) -> Option<Sense> {
 }
 
 fn of_case(assessment: &Assessment, index: usize) -> Option<&MomentResistance> {
-    assessment.cases.iter().find(|case| case.case == index)?.moment.as_ref()
+    assessment.cases.iter().find(|case| case.case == index)?.moment.as_deref()
 }
 
 fn of_sense(assessment: &Assessment, sense: Sense) -> Option<&MomentResistance> {
     match sense {
-        Sense::Hogging => assessment.hogging.as_ref(),
-        Sense::Sagging => assessment.sagging.as_ref(),
+        Sense::Hogging => assessment.hogging.as_deref(),
+        Sense::Sagging => assessment.sagging.as_deref(),
     }
 }

@@ -195,7 +195,7 @@ pub fn resistance(
     sense: Sense,
     beta: f64,
     rulebook: &Rulebook,
-) -> Result<MomentResistance, String> {
+) -> Result<std::sync::Arc<MomentResistance>, String> {
     let own = if sense == Sense::Hogging { 1.0 } else { -1.0 };
     let assessment =
         asked(layout, &case(Some(own), Some(0.0), Some(0.0)), Opposite::Moment(knm(own * (1.0 - beta))), rulebook);

@@ -9,7 +9,7 @@ use faying::units::mm;
 use super::joint::{PLAIN, RULES, Sketch, resistance, stiffener};
 use crate::close;
 
-fn hogging(sketch: &Sketch, rulebook: &Rulebook) -> MomentResistance {
+fn hogging(sketch: &Sketch, rulebook: &Rulebook) -> std::sync::Arc<MomentResistance> {
     resistance(&sketch.layout(rulebook), Sense::Hogging, 0.0, rulebook).unwrap()
 }
 

@@ -13,7 +13,7 @@ use super::joint::{
 use super::plastic::rows_of;
 use crate::close;
 
-fn hogging(layout: &EndPlateLayout, beta: f64) -> MomentResistance {
+fn hogging(layout: &EndPlateLayout, beta: f64) -> std::sync::Arc<MomentResistance> {
     resistance(layout, Sense::Hogging, beta, &RULES).unwrap()
 }
 

@@ -6,7 +6,7 @@ use proptest::prelude::*;
 
 use super::joint::{RULES, Sketch, resistance, sketches};
 
-fn hogging(sketch: &Sketch, rulebook: &Rulebook) -> Option<MomentResistance> {
+fn hogging(sketch: &Sketch, rulebook: &Rulebook) -> Option<std::sync::Arc<MomentResistance>> {
     resistance(&sketch.layout(rulebook), Sense::Hogging, 1.0, rulebook).ok()
 }
 

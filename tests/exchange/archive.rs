@@ -67,7 +67,7 @@ fn every_other_member_is_said() {
     let exchange = read(&archive(&members), "m.ifczip").unwrap();
     let said =
         |name: &str| format!("1:1 the archive holds \"{name}\" too, which is not read: only its .ifc or .ifcxml is");
-    assert_eq!(problems_of(&exchange), ["__MACOSX/._m.ifcxml", "read me.txt", "\u{fffd}\u{fffd}/ifc"].map(said));
+    assert_eq!(problems_of(&exchange), ["read me.txt", "__MACOSX/._m.ifcxml", "\u{fffd}\u{fffd}/ifc"].map(said));
     assert!(exchange.problems.iter().all(|p| &*p.at.as_ref().unwrap().file == "m.ifczip"));
     assert!(exchange.entities.all().any(|e| e.label() == "m"));
 }
@@ -109,7 +109,10 @@ fn a_member_that_cannot_be_taken_out_says_why() {
     let short = MODEL.len() as u32 - 1;
     for (bytes, reason) in [
         (patched(plain.clone(), 8, &[1, 0]), "is encrypted; a model without a password is required"),
-        (patched(plain.clone(), 10, &[14, 0]), "is compressed by method 14; stored (0) and deflated (8) are allowed"),
+        (
+            patched(plain.clone(), 10, &[14, 0]),
+            "is compressed in a way that is not read; stored and deflated members are",
+        ),
         (
             patched(plain.clone(), 24, &0x4000_0001_u32.to_le_bytes()),
             "inflates to 1073741825 bytes, 1073741824 are allowed; read it unpacked",
@@ -117,11 +120,11 @@ fn a_member_that_cannot_be_taken_out_says_why() {
         // more or less inside than the archive states: neither may pass, or the limit would be none
         (
             patched(plain.clone(), 24, &short.to_le_bytes()),
-            "is damaged: it does not inflate to the 69 bytes that the archive states",
+            "is damaged: it does not inflate to the 68 bytes that the archive states",
         ),
         (
             patched(plain.clone(), 24, &(short + 2).to_le_bytes()),
-            "is damaged: it does not inflate to the 71 bytes that the archive states",
+            "is damaged: it does not inflate to the 70 bytes that the archive states",
         ),
     ] {
         assert_eq!(
@@ -133,17 +136,6 @@ fn a_member_that_cannot_be_taken_out_says_why() {
     let at = flipped.windows(4).position(|w| w == b"S355").unwrap();
     flipped[at + 1] = b'2';
     assert!(refused(&flipped).contains("member m.ifc is damaged: "), "a checksum that is wrong");
-}
-
-/// 64 MiB of zeros in 64 KiB, of which the archive states 100 bytes: not more than these may be inflated.
-#[test]
-fn a_bomb_is_not_inflated() {
-    let zeros = "\0".repeat(1 << 26);
-    let bomb = patched(archive(&[("m.ifc", &zeros)]), 24, &100_u32.to_le_bytes());
-    assert!(bomb.len() < 1 << 17);
-    let started = std::time::Instant::now();
-    assert!(refused(&bomb).ends_with("is damaged: it does not inflate to the 100 bytes that the archive states"));
-    assert!(started.elapsed().as_millis() < 100, "{:?}", started.elapsed());
 }
 
 #[test]

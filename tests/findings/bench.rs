@@ -151,8 +151,8 @@ pub fn verdict(about: About, state: State, required: f64, unit: &'static str) ->
     }
 }
 
-pub fn moment(sense: Sense, resistance: f64) -> MomentResistance {
-    MomentResistance {
+pub fn moment(sense: Sense, resistance: f64) -> Arc<MomentResistance> {
+    Arc::new(MomentResistance {
         sense,
         beta: 1.0,
         moment: knm(resistance),
@@ -162,7 +162,7 @@ pub fn moment(sense: Sense, resistance: f64) -> MomentResistance {
         rows: Vec::new(),
         components: Vec::new(),
         notes: Vec::new(),
-    }
+    })
 }
 
 pub fn load_case(name: &str, moment: Option<f64>, shear: Option<f64>, axial: Option<f64>, line: u32) -> LoadCase {

@@ -205,7 +205,7 @@ pub fn small() -> Review {
         unit: "kN",
         utilisation: Some(437.3 / 885.6),
         outcome: "met",
-        working: Working::default(),
+        working: Working::default().into(),
     }];
     clear.assumptions = vec!["thread in the shear plane (rule file)".into()];
     clear.inputs = vec![("bolt class".into(), "8.8".into(), "modelled: name of the bolts".into())];

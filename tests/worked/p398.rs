@@ -60,7 +60,7 @@ fn throat(leg: f64) -> Length {
     mm(leg / 2.0_f64.sqrt())
 }
 
-fn hogging(both_sides: bool) -> MomentResistance {
+fn hogging(both_sides: bool) -> std::sync::Arc<MomentResistance> {
     assessed(both_sides, &Rulebook::embedded()).hogging.unwrap()
 }
 

@@ -6,6 +6,7 @@ mod moment;
 mod numbers;
 mod rows;
 mod shear;
+mod solver;
 mod sound;
 mod totals;
 mod weld_checks;
@@ -13,6 +14,8 @@ mod weld_checks;
 pub use intended::intended;
 use numbers::{Noted, Numbers};
 use shear::Tension;
+use solver::Solved;
+pub use solver::Solver;
 
 use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict};
 use crate::intent::LoadCase;
@@ -91,6 +94,17 @@ fn at_bound(opposite: Opposite) -> bool {
 /// Assesses a joint as laid out, against load cases if there are any. `two_sided`: whether a joint stands on the column's
 /// other flange (then, without load cases, β is at its upper bound).
 pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, rulebook: &Rulebook) -> Assessment {
+    assess_with(&Solver::new(rulebook), layout, demands, two_sided)
+}
+
+/// The same with a solver that remembers what it solved for other joints.
+pub fn assess_with(
+    solver: &Solver<'_>,
+    layout: &EndPlateLayout,
+    demands: &[Demand<'_>],
+    two_sided: bool,
+) -> Assessment {
+    let rulebook = solver.rulebook;
     let mut noted = Noted::default();
     let numbers = Numbers::gather(layout, rulebook, &mut noted);
     let mut assessment = Assessment { ..Assessment::default() };
@@ -102,7 +116,7 @@ pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, 
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
         let turned = n.upside_down();
         let solve = |sense: Sense, beta: f64, shear: Force, rule: Option<RowForces>| {
-            moment::resistance(if sense == Sense::Hogging { n } else { &turned }, sense, beta, shear, rule, rulebook)
+            solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, shear, rule)
         };
         let at_rest = |sense, noted: &mut Noted| match solve(
             sense,
@@ -247,10 +261,10 @@ struct Cases<'a, F> {
     solve: &'a F,
 }
 
-impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Result<MomentResistance, String>> Cases<'_, F> {
+impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Solved> Cases<'_, F> {
     /// The moment resistance of a case. Where an unknown makes it a lower bound, it must be one beyond the cliff of
     /// 6.2.7.2(9) too: what is unknown may raise a row above 1.9 F_t,Rd and so lower the rows below it.
-    fn moment(&self, m: Moment, opposite: Opposite, shear: Force) -> Result<MomentResistance, String> {
+    fn moment(&self, m: Moment, opposite: Opposite, shear: Force) -> Solved {
         let sense = sense_of(m);
         let rule = self.rulebook.settings.row_forces;
         let solved = (self.solve)(sense, beta(m, opposite), shear, Some(rule))?;

@@ -40,7 +40,7 @@ pub fn resistance(
             clause: limit.clause,
             resistance: limit.resistance.value,
             at_full: forces.get(limit.first..=limit.last).map_or(Force::ZERO, |f| f.iter().map(|row| row.force).sum()),
-            working: limit.resistance.working.clone(),
+            working: limit.resistance.working.clone().into(),
         })
         .chain(totals.iter().map(|limit| Component {
             id: limit.id.into(),
@@ -48,7 +48,7 @@ pub fn resistance(
             clause: limit.clause,
             resistance: limit.resistance.value,
             at_full: total * limit.share,
-            working: limit.resistance.working.clone(),
+            working: limit.resistance.working.clone().into(),
         }))
         .collect();
 

@@ -1,6 +1,8 @@
 //! The numbers of an end-plate joint: what the layout states and the rulebook adds, or what is missing.
 
 use super::sound;
+use std::sync::Arc;
+
 use crate::assess::{Gap, Input};
 use crate::eurocode::stiffeners::Pair;
 use crate::eurocode::{beam, bolts};
@@ -14,7 +16,7 @@ use crate::working::Working;
 const R_MOST: Length = mm(30.0);
 
 /// Strengths of a rolled section's flange and web, and the smaller f_u.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Copy, Debug, PartialEq)]
 pub struct MemberStrength {
     pub f_y_flange: Stress,
     pub f_y_web: Stress,
@@ -22,7 +24,7 @@ pub struct MemberStrength {
 }
 
 /// A stiffener pair that the checks credit.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Copy, Debug, PartialEq)]
 pub struct StiffenerPair {
     pub height: Length,
     pub b_s: Length,
@@ -41,7 +43,7 @@ impl StiffenerPair {
 }
 
 /// One row, seen from the tension side.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Copy, Debug, PartialEq)]
 pub struct Row {
     /// Its number from the top of the joint, from 1, whatever the sense.
     pub number: usize,
@@ -52,7 +54,7 @@ pub struct Row {
 }
 
 /// Everything the formulas need, for tension at the top; [`Numbers::upside_down`] gives the other sense.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, PartialEq)]
 #[allow(non_snake_case)]
 pub struct Numbers {
     pub column: Section,
@@ -83,10 +85,10 @@ pub struct Numbers {
     pub alpha_v: f64,
     pub washer: Length,
     pub F_t_Rd: Force,
-    pub tension_working: Working,
+    pub tension_working: Arc<Working>,
     pub B_p_plate: Force,
     pub B_p_column: Force,
-    pub punching_working: Working,
+    pub punching_working: Arc<Working>,
     pub rows: Vec<Row>,
     pub a_tension: Option<Length>,
     pub a_compression: Option<Length>,
@@ -285,10 +287,10 @@ impl Numbers {
             alpha_v: class.alpha_v,
             washer: size.washer,
             F_t_Rd: tension.value,
-            tension_working: tension.working,
+            tension_working: Arc::new(tension.working),
             B_p_plate: punching_plate.value,
             B_p_column: punching_column.value,
-            punching_working,
+            punching_working: Arc::new(punching_working),
             rows: (layout.bolts.rows.iter().enumerate())
                 .map(|(i, row)| Row {
                     number: i + 1,
@@ -305,6 +307,11 @@ impl Numbers {
             column_above: layout.column_above,
             column_below: layout.column_below,
         })
+    }
+
+    /// V_pl,Rd of the beam, EN 1993-1-1 6.2.6 (6.18).
+    pub fn beam_shear_resistance(&self, gamma_m0: f64) -> Force {
+        beam::shear_resistance(self.beam.a_v_z, self.beam_strength.f_y_flange, gamma_m0)
     }
 
     /// The same joint turned upside down, so that its lower side is the tension side.

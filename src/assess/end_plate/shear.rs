@@ -69,7 +69,7 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
         clause: "EN 1993-1-8:2005 3.6.1",
         resistance: V_bolts,
         at_full: Force::ZERO,
-        working: w,
+        working: w.into(),
     }];
     let mut least = (V_bolts, "bolts in shear with their tension".to_owned());
     for (id, title, ply) in [
@@ -87,7 +87,7 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
             clause: "EN 1993-1-8:2005 3.6.1",
             resistance: worst.0,
             at_full: Force::ZERO,
-            working: worst.2,
+            working: worst.2.into(),
         });
     }
     let reach = match tension {

@@ -54,7 +54,7 @@ pub fn at_flange_and_web(
             clause: "EN 1993-1-8:2005 4.5.3.2",
             resistance: F_flange_w_Rd,
             at_full: F_flange_Ed,
-            working: w,
+            working: w.into(),
         }
     });
 
@@ -71,7 +71,7 @@ pub fn at_flange_and_web(
                 clause: "EN 1993-1-8:2005 4.5.3.2",
                 resistance: F_web_w_Rd,
                 at_full: force,
-                working: w,
+                working: w.into(),
             }
         };
         let mut components = Vec::new();
@@ -111,6 +111,6 @@ pub fn in_shear(n: &Numbers, rulebook: &Rulebook, tension_reach: Length) -> Opti
         clause: "EN 1993-1-8:2005 4.5.3.2",
         resistance: V_w_Rd,
         at_full: Force::ZERO,
-        working: w,
+        working: w.into(),
     })
 }

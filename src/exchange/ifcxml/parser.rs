@@ -377,7 +377,12 @@ impl Parser {
             return;
         }
         match self.stack.pop() {
-            Some(Frame::Entity(open)) => self.entities.close(open.id, open.values, open.extras),
+            Some(Frame::Entity(mut open)) => {
+                // the schema derives these from others; some writers put a value nevertheless
+                let derived = self.attributes(open.class).iter().zip(&mut open.values).filter(|(a, _)| a.derived);
+                derived.for_each(|(_, value)| *value = Value::Absent);
+                self.entities.close(open.id, open.values, open.extras);
+            }
             Some(Frame::Slot(mut slot)) => {
                 let value = slot.value(&mut self.problems);
                 self.deliver(slot.target, slot.kind, slot.pos, value, slot.spot);
