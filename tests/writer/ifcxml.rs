@@ -29,6 +29,8 @@ pub struct Style {
 pub struct IfcXml<W: Write> {
     out: Writer<W>,
     style: Style,
+    /// Attributes that this version declares as a supertype of what IFC4 declares.
+    wider: &'static [&'static str],
     last_id: u64,
 }
 
@@ -40,7 +42,8 @@ impl<W: Write> IfcXml<W> {
 
     /// The same in another version's namespace.
     pub fn begin_in(to: W, namespace: &str, style: Style, name: &str) -> io::Result<Self> {
-        let mut document = Self { out: Writer::new_with_indent(to, b' ', 1), style, last_id: 0 };
+        let wider: &[&str] = if namespace == IFC4X3 { &["Location"] } else { &[] };
+        let mut document = Self { out: Writer::new_with_indent(to, b' ', 1), style, wider, last_id: 0 };
         document.out.write_event(Event::Decl(BytesDecl::new("1.0", Some("UTF-8"), None)))?;
         let declares = if style.prefixed { "xmlns:ifc" } else { "xmlns" };
         document.open("ifcXML", &[(declares, namespace), ("xmlns:xsi", INSTANCE)])?;
@@ -125,7 +128,9 @@ impl<W: Write> IfcXml<W> {
                 self.close(name)
             }
             Field::One(name, Declared::Select, link) => self.wrapped(name, std::slice::from_ref(link)),
-            Field::One(name, declared, link) => self.link(name, *declared == Declared::Wider, link),
+            Field::One(name, declared, link) => {
+                self.link(name, *declared == Declared::Wider || self.wider.contains(name), link)
+            }
             Field::Inverse { name, single: true, relations, .. } => {
                 relations.iter().try_for_each(|relation| self.link(name, false, relation))
             }

@@ -5,6 +5,7 @@ use std::io;
 
 use super::entity::{Declared, Entity, Field, Link, Sink};
 use super::model::Reference;
+use super::version::Version;
 
 /// The end of a relation that takes several; a relation that is shared waits for all of them.
 const SEVERAL: &str = "RelatedObjects";
@@ -35,7 +36,7 @@ impl<S: Sink> TwoEnded<S> {
     pub fn finish(mut self) -> io::Result<S> {
         for (relation, ends) in self.waiting.into_values() {
             let ends = ends.iter().map(|(class, id)| Link::To(class, *id)).collect();
-            self.to.put(relation.many(SEVERAL, ends))?;
+            self.to.put(sorted(relation.many(SEVERAL, ends)))?;
         }
         Ok(self.to)
     }
@@ -89,11 +90,18 @@ impl<S: Sink> Sink for TwoEnded<S> {
                             SEVERAL => Field::Many(back, vec![end]),
                             _ => Field::One(back, Declared::Wider, end),
                         };
-                        self.to.put(relation.field(field))?;
+                        self.to.put(sorted(relation.field(field)))?;
                     }
                 },
             }
         }
         Ok(())
     }
+}
+
+/// With its attributes in the order of the schema, as the XSD wants it.
+fn sorted(mut relation: Entity) -> Entity {
+    let attributes = Version::Ifc4.schema().attributes(relation.class);
+    relation.fields.sort_by_key(|field| attributes.iter().position(|a| a.name == field.name()));
+    relation
 }

@@ -1,5 +1,6 @@
 //! What differs between the versions of IFC in what this writer writes.
 
+use std::collections::BTreeMap;
 use std::io;
 use std::sync::LazyLock;
 
@@ -65,6 +66,8 @@ pub struct AsIfc2x3<S> {
     /// Where they go.
     pub to: S,
     owner: u64,
+    /// The relation that gives each property set to all who have it; there may be only one.
+    given: BTreeMap<u64, u64>,
 }
 
 impl<S: Sink> AsIfc2x3<S> {
@@ -92,10 +95,10 @@ impl<S: Sink> AsIfc2x3<S> {
                 .token("ChangeAction", "NOCHANGE")
                 .integer("CreationDate", 1_714_640_400),
         )?;
-        Ok(Self { to, owner })
+        Ok(Self { to, owner, given: BTreeMap::new() })
     }
 
-    fn adapt(&self, entity: &mut Entity) {
+    fn adapt(&mut self, entity: &mut Entity) {
         let class = entity.class;
         entity.fields.retain(|field| match field {
             Field::Simple(name, _) => !LATER.contains(&(class, *name)),
@@ -122,11 +125,30 @@ impl<S: Sink> AsIfc2x3<S> {
                 }
             }
         }
-        entity.fields.iter_mut().flat_map(Field::links_mut).for_each(|link| {
+        for link in entity.fields.iter_mut().flat_map(Field::links_mut) {
+            self.give_once(link);
             if let Link::Own(owned) = link {
                 self.adapt(owned);
             }
+        }
+    }
+
+    /// A relation that gives a property set which another one gives already becomes that other one.
+    fn give_once(&mut self, link: &mut Link) {
+        let Link::Own(relation) = link else { return };
+        let mut fields = relation.fields.iter();
+        let set = fields.find_map(|field| match field {
+            Field::One("RelatingPropertyDefinition", _, Link::Own(set)) => set.id,
+            Field::One("RelatingPropertyDefinition", _, Link::To(_, id)) => Some(*id),
+            _ => None,
         });
+        let Some(set) = set else { return };
+        if let Some(other) = self.given.get(&set) {
+            *link = Link::To(relation.class, *other);
+        } else {
+            let id = *relation.id.get_or_insert_with(|| self.to.new_id());
+            self.given.insert(set, id);
+        }
     }
 }
 
