@@ -12,6 +12,7 @@ mod report;
 mod rulebook;
 mod sample;
 mod shop;
+mod twins;
 mod worked;
 mod writer;
 

@@ -31,7 +31,6 @@ pub enum Field {
         /// The inverse attribute: `IsDefinedBy`.
         name: &'static str,
         /// The relations' attribute that points back: `RelatedObjects`.
-        #[expect(dead_code, reason = "for forms that have no inverse attributes, such as STEP")]
         back: &'static str,
         /// Whether at most one relation is allowed, which ifcXML then writes without a wrapper.
         single: bool,
@@ -155,6 +154,26 @@ impl Entity {
     }
 }
 
+impl Field {
+    /// Its attribute.
+    pub fn name(&self) -> &'static str {
+        match self {
+            Self::Simple(name, _) | Self::One(name, ..) | Self::Many(name, _) | Self::Typed(name, ..) => name,
+            Self::Inverse { name, .. } => name,
+        }
+    }
+
+    /// The entities that it holds or refers to.
+    pub fn links_mut(&mut self) -> &mut [Link] {
+        match self {
+            Self::One(_, _, link) => std::slice::from_mut(link),
+            Self::Many(_, links) => links,
+            Self::Inverse { relations, .. } => relations,
+            Self::Simple(..) | Self::Typed(..) => &mut [],
+        }
+    }
+}
+
 impl From<Entity> for Link {
     fn from(entity: Entity) -> Self {
         Self::Own(entity)
@@ -164,4 +183,40 @@ impl From<Entity> for Link {
 /// Links to entities that are defined elsewhere.
 pub fn links(to: &[(&'static str, u64)]) -> Vec<Link> {
     to.iter().map(|(class, id)| Link::To(class, *id)).collect()
+}
+
+/// Writes all that an entity owns, deepest first, and leaves links in its place.
+pub fn hoist<S: Sink>(
+    entity: &mut Entity,
+    sink: &mut S,
+    write: fn(&mut S, &Entity) -> io::Result<()>,
+) -> io::Result<()> {
+    for link in entity.fields.iter_mut().flat_map(Field::links_mut) {
+        if let Link::Own(owned) = link {
+            hoist(owned, sink, write)?;
+            let id = *owned.id.get_or_insert_with(|| sink.new_id());
+            write(sink, owned)?;
+            *link = Link::To(owned.class, id);
+        }
+    }
+    Ok(())
+}
+
+/// A simple value as XML writes it.
+pub fn plain(value: &Simple) -> String {
+    match value {
+        Simple::Text(text) => text.clone(),
+        Simple::Real(real) => number(*real),
+        Simple::Integer(integer) => integer.to_string(),
+        Simple::Truth(truth) => truth.to_string(),
+        Simple::Token(token) => token.to_lowercase(),
+        Simple::Reals(reals) => reals.iter().map(|real| number(*real)).collect::<Vec<_>>().join(" "),
+    }
+}
+
+/// A real to a millionth, so that the noise of additions is not written.
+pub fn number(real: f64) -> String {
+    let rounded = (real * 1e6).round() / 1e6;
+    // Adding zero turns a negative zero into a plain one.
+    format!("{}", rounded + 0.0)
 }

@@ -1,13 +1,19 @@
-//! How entities are written as ifcXML of IFC4 ADD2 TC1.
+//! How entities are written as ifcXML of IFC4 and later.
 
 use std::io::{self, Write};
 
 use quick_xml::Writer;
 use quick_xml::events::{BytesDecl, BytesEnd, BytesStart, BytesText, Event};
 
-use super::entity::{Declared, Entity, Field, Link, Simple, Sink};
+use super::entity::{Declared, Entity, Field, Link, Sink, hoist, plain};
 
-const NAMESPACE: &str = "http://www.buildingsmart-tech.org/ifc/IFC4/Add2TC1";
+/// The namespace of IFC4 ADD2 TC1.
+pub const ADD2_TC1: &str = "http://www.buildingsmart-tech.org/ifc/IFC4/Add2TC1";
+/// The namespace of the first edition of IFC4, in which relations stand with both of their ends.
+pub const FIRST: &str = "http://www.buildingsmart-tech.org/ifcXML/IFC4/final";
+/// A namespace of IFC4X3.
+pub const IFC4X3: &str = "https://standards.buildingsmart.org/IFC/RELEASE/IFC4/3/DEV/ef03d81";
+
 const INSTANCE: &str = "http://www.w3.org/2001/XMLSchema-instance";
 
 /// Ways in which programs differ that mean the same.
@@ -23,16 +29,24 @@ pub struct Style {
 pub struct IfcXml<W: Write> {
     out: Writer<W>,
     style: Style,
+    /// Attributes that this version declares as a supertype of what IFC4 declares.
+    wider: &'static [&'static str],
     last_id: u64,
 }
 
 impl<W: Write> IfcXml<W> {
     /// Opens the document and writes its header.
     pub fn begin(to: W, style: Style, name: &str) -> io::Result<Self> {
-        let mut document = Self { out: Writer::new_with_indent(to, b' ', 1), style, last_id: 0 };
+        Self::begin_in(to, ADD2_TC1, style, name)
+    }
+
+    /// The same in another version's namespace.
+    pub fn begin_in(to: W, namespace: &str, style: Style, name: &str) -> io::Result<Self> {
+        let wider: &[&str] = if namespace == IFC4X3 { &["Location"] } else { &[] };
+        let mut document = Self { out: Writer::new_with_indent(to, b' ', 1), style, wider, last_id: 0 };
         document.out.write_event(Event::Decl(BytesDecl::new("1.0", Some("UTF-8"), None)))?;
-        let namespace = if style.prefixed { "xmlns:ifc" } else { "xmlns" };
-        document.open("ifcXML", &[(namespace, NAMESPACE), ("xmlns:xsi", INSTANCE)])?;
+        let declares = if style.prefixed { "xmlns:ifc" } else { "xmlns" };
+        document.open("ifcXML", &[(declares, namespace), ("xmlns:xsi", INSTANCE)])?;
         document.open("header", &[])?;
         for (element, text) in [
             ("name", name),
@@ -77,29 +91,6 @@ impl<W: Write> IfcXml<W> {
         self.out.write_event(Event::End(end))
     }
 
-    /// Puts owned entities to the top, deepest first, and leaves links to them.
-    fn hoist(&mut self, entity: &mut Entity) -> io::Result<()> {
-        for field in &mut entity.fields {
-            let links = match field {
-                Field::One(_, _, link) => std::slice::from_mut(link),
-                Field::Many(_, links) => links.as_mut_slice(),
-                Field::Inverse { relations, .. } => relations.as_mut_slice(),
-                Field::Simple(..) | Field::Typed(..) => &mut [],
-            };
-            for link in links {
-                if let Link::Own(owned) = link {
-                    self.hoist(owned)?;
-                    let id = owned.id.unwrap_or_else(|| self.new_id());
-                    let to = Link::To(owned.class, id);
-                    if let Link::Own(owned) = std::mem::replace(link, to) {
-                        self.entity(owned.class, false, &owned.id(id))?;
-                    }
-                }
-            }
-        }
-        Ok(())
-    }
-
     /// An entity under a name of its own, or of the attribute that holds it.
     fn entity(&mut self, name: &str, say_type: bool, entity: &Entity) -> io::Result<()> {
         let mut start = BytesStart::new(self.tag(name));
@@ -111,7 +102,7 @@ impl<W: Write> IfcXml<W> {
         }
         for field in &entity.fields {
             if let Field::Simple(name, value) = field {
-                start.push_attribute((*name, printed(value).as_str()));
+                start.push_attribute((*name, plain(value).as_str()));
             }
         }
         let children = || entity.fields.iter().filter(|field| !matches!(field, Field::Simple(..)));
@@ -132,12 +123,14 @@ impl<W: Write> IfcXml<W> {
                 let wrapper = format!("{of}-wrapper");
                 self.open(name, &[])?;
                 self.open(&wrapper, &[])?;
-                self.out.write_event(Event::Text(BytesText::new(&printed(value))))?;
+                self.out.write_event(Event::Text(BytesText::new(&plain(value))))?;
                 self.close(&wrapper)?;
                 self.close(name)
             }
             Field::One(name, Declared::Select, link) => self.wrapped(name, std::slice::from_ref(link)),
-            Field::One(name, declared, link) => self.link(name, *declared == Declared::Wider, link),
+            Field::One(name, declared, link) => {
+                self.link(name, *declared == Declared::Wider || self.wider.contains(name), link)
+            }
             Field::Inverse { name, single: true, relations, .. } => {
                 relations.iter().try_for_each(|relation| self.link(name, false, relation))
             }
@@ -175,26 +168,8 @@ impl<W: Write> Sink for IfcXml<W> {
 
     fn put(&mut self, mut entity: Entity) -> io::Result<()> {
         if self.style.flat {
-            self.hoist(&mut entity)?;
+            hoist(&mut entity, self, |document, owned| document.entity(owned.class, false, owned))?;
         }
         self.entity(entity.class, false, &entity)
     }
-}
-
-fn printed(value: &Simple) -> String {
-    match value {
-        Simple::Text(text) => text.clone(),
-        Simple::Real(real) => number(*real),
-        Simple::Integer(integer) => integer.to_string(),
-        Simple::Truth(truth) => truth.to_string(),
-        Simple::Token(token) => token.to_lowercase(),
-        Simple::Reals(reals) => reals.iter().map(|real| number(*real)).collect::<Vec<_>>().join(" "),
-    }
-}
-
-/// A real to a millionth, so that the noise of additions is not written.
-fn number(real: f64) -> String {
-    let rounded = (real * 1e6).round() / 1e6;
-    // Adding zero turns a negative zero into a plain one.
-    format!("{}", rounded + 0.0)
 }

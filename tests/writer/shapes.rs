@@ -23,6 +23,11 @@ pub fn axes(frame: Frame) -> Entity {
     placement.one("Axis", Exactly, direction(frame.z)).one("RefDirection", Exactly, direction(frame.x))
 }
 
+/// A placement in the plane of a profile, with its axes.
+pub fn flat_axes(origin: &[f64; 2]) -> Entity {
+    Entity::new("IfcAxis2Placement2D").one("Location", Exactly, point(origin))
+}
+
 /// A frame with the parent's axes.
 pub fn moved(origin: DVec3) -> Frame {
     Frame { origin, z: DVec3::Z, x: DVec3::X }
@@ -93,8 +98,7 @@ pub fn outline(corners: &[[f64; 2]]) -> Entity {
 /// A closed outline with round holes: centre and diameter.
 pub fn outline_with_holes(corners: &[[f64; 2]], holes: &[([f64; 2], f64)]) -> Entity {
     let hole = |(centre, diameter): &([f64; 2], f64)| {
-        let place = Entity::new("IfcAxis2Placement2D").one("Location", Exactly, point(centre));
-        Entity::new("IfcCircle").one("Position", Select, place).real("Radius", diameter / 2.0).into()
+        Entity::new("IfcCircle").one("Position", Select, flat_axes(centre)).real("Radius", diameter / 2.0).into()
     };
     Entity::new("IfcArbitraryProfileDefWithVoids")
         .token("ProfileType", "AREA")
