@@ -4,6 +4,7 @@ mod archive;
 mod dialects;
 mod forms;
 mod hostile;
+mod limits;
 mod part28;
 mod problems;
 mod step;

@@ -4,12 +4,9 @@ use std::io::{Cursor, Read};
 
 use zip::{CompressionMethod, ZipArchive};
 
+use super::limits::Limits;
 use super::problems::{Problems, Spot};
 use super::scalar::quoted;
-
-/// The largest model that is inflated, in bytes (1 GiB): a small archive can hold any size, and all of it would lie
-/// in memory. Larger models are read unpacked.
-const LARGEST: u64 = 1 << 30;
 
 /// Whether bytes are a zip archive: the sign of its first member, of an empty archive or of one cut in parts.
 pub(super) fn is_archive(bytes: &[u8]) -> bool {
@@ -20,7 +17,7 @@ pub(super) fn is_archive(bytes: &[u8]) -> bool {
 ///
 /// # Errors
 /// Why no one model can be taken out, in one sentence without the file's name.
-pub(super) fn model(bytes: &[u8], problems: &mut Problems) -> Result<(String, Vec<u8>), String> {
+pub(super) fn model(bytes: &[u8], limits: Limits, problems: &mut Problems) -> Result<(String, Vec<u8>), String> {
     let damaged = |error: zip::result::ZipError| format!("is a zip archive that is damaged: {error}");
     let mut archive = ZipArchive::new(Cursor::new(bytes)).map_err(damaged)?;
     if archive.has_duplicate_names() {
@@ -56,14 +53,14 @@ pub(super) fn model(bytes: &[u8], problems: &mut Problems) -> Result<(String, Ve
             ));
         }
     };
-    let model =
-        inflated(&mut archive, index).map_err(|wrong| format!("is a zip archive whose member {name} {wrong}"))?;
+    let model = inflated(&mut archive, index, limits)
+        .map_err(|wrong| format!("is a zip archive whose member {name} {wrong}"))?;
     Ok((name, model))
 }
 
 /// The bytes of a member. Not more is inflated than the archive states for it, and what it states is limited: so the
 /// limit holds whatever it states.
-fn inflated(archive: &mut ZipArchive<Cursor<&[u8]>>, index: usize) -> Result<Vec<u8>, String> {
+fn inflated(archive: &mut ZipArchive<Cursor<&[u8]>>, index: usize, limits: Limits) -> Result<Vec<u8>, String> {
     let damaged = |error: &dyn std::error::Error| format!("is damaged: {error}");
     let entry = archive.by_index_data(index).map_err(|error| damaged(&error))?;
     let stated = entry.size();
@@ -73,8 +70,8 @@ fn inflated(archive: &mut ZipArchive<Cursor<&[u8]>>, index: usize) -> Result<Vec
     if ![CompressionMethod::Stored, CompressionMethod::Deflated].contains(&entry.compression()) {
         return Err("is compressed in a way that is not read; stored and deflated members are".into());
     }
-    if stated > LARGEST {
-        return Err(format!("inflates to {stated} bytes, {LARGEST} are allowed; read it unpacked"));
+    if stated > limits.inflated {
+        return Err(limits.inflates_too_far(stated));
     }
     let member = archive.by_index(index).map_err(|error| damaged(&error))?;
     let mut model = Vec::new();

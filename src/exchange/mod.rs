@@ -6,6 +6,7 @@ mod entity;
 mod graph;
 mod ifcxml;
 mod labels;
+mod limits;
 mod problems;
 mod scalar;
 mod schema;
@@ -15,6 +16,7 @@ mod waiting;
 
 pub use entity::{Entity, Id, TypeName, Value};
 pub use graph::Entities;
+pub use limits::Limits;
 
 use std::sync::Arc;
 
@@ -48,23 +50,32 @@ pub struct Unreadable {
 /// [`Unreadable`] where the bytes are no exchange: empty, truncated, neither ifcXML nor STEP, a DTD inside, an archive
 /// without exactly one model.
 pub fn read(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
+    read_within(bytes, file, Limits::default())
+}
+
+/// As [`read`], within other limits.
+///
+/// # Errors
+/// As of [`read`].
+pub fn read_within(bytes: &[u8], file: &str, limits: Limits) -> Result<Exchange, Unreadable> {
+    let limits = limits.lowered();
     if !archive::is_archive(bytes) {
-        return read_plain(bytes, file);
+        return read_plain(bytes, file, limits);
     }
     let mut problems = problems::Problems::new(file.into());
-    let (member, model) = archive::model(bytes, &mut problems).map_err(|reason| unreadable(file, &reason))?;
-    let mut exchange = read_plain(&model, &format!("{file}/{member}"))?;
+    let (member, model) = archive::model(bytes, limits, &mut problems).map_err(|reason| unreadable(file, &reason))?;
+    let mut exchange = read_plain(&model, &format!("{file}/{member}"), limits)?;
     exchange.problems.splice(..0, problems.finish());
     Ok(exchange)
 }
 
-fn read_plain(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
+fn read_plain(bytes: &[u8], file: &str, limits: Limits) -> Result<Exchange, Unreadable> {
     let name: Arc<str> = file.into();
     let mut problems = problems::Problems::new(name.clone());
-    sniff::decode(bytes, &mut problems)
+    sniff::decode(bytes, limits, &mut problems)
         .and_then(|text| match sniff::is_step(&text) {
-            true => step::read(&text, problems, name),
-            false => ifcxml::read(&text, problems, name),
+            true => step::read(&text, problems, name, limits),
+            false => ifcxml::read(&text, problems, name, limits),
         })
         .map_err(|reason| unreadable(file, &reason))
 }

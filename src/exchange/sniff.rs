@@ -2,6 +2,7 @@
 
 use std::borrow::Cow;
 
+use super::limits::Limits;
 use super::problems::{Problems, Spot};
 use super::scalar::quoted;
 
@@ -9,12 +10,12 @@ use super::scalar::quoted;
 ///
 /// # Errors
 /// Why the file is of no form that is read, in one sentence without the file's name.
-pub(super) fn decode<'a>(bytes: &'a [u8], problems: &mut Problems) -> Result<Cow<'a, [u8]>, String> {
+pub(super) fn decode<'a>(bytes: &'a [u8], limits: Limits, problems: &mut Problems) -> Result<Cow<'a, [u8]>, String> {
     if bytes.iter().all(u8::is_ascii_whitespace) {
         return Err("is empty".into());
     }
-    if u32::try_from(bytes.len()).is_err() {
-        return Err("is larger than 4 GiB, which is not read".into()); // the graph counts in 32 bits
+    if bytes.len() as u64 > limits.file {
+        return Err(limits.file_too_large(bytes.len()));
     }
     if super::archive::is_archive(bytes) {
         return Err("is a zip archive within a zip archive, which is not read".into());
@@ -25,6 +26,9 @@ pub(super) fn decode<'a>(bytes: &'a [u8], problems: &mut Problems) -> Result<Cow
         [0xFE, 0xFF, rest @ ..] => utf16(rest, u16::from_be_bytes).into(),
         _ => declared(bytes, problems),
     };
+    if text.len() as u64 > limits.file {
+        return Err(limits.file_too_large(text.len())); // another encoding can be shorter than UTF-8
+    }
     let start = text.trim_ascii_start();
     if !start.starts_with(b"<") && !is_step(&text) {
         let shown = quoted(&String::from_utf8_lossy(&start[..start.len().min(32)]));

@@ -21,20 +21,18 @@ use self::dialect::{Around, Dialect};
 use self::head::Head;
 use self::parser::Parser;
 use super::Exchange;
+use super::limits::Limits;
 use super::problems::{Problems, Ruler, Spot};
-
-/// How deep elements may nest; what lies deeper is not read, and a problem says so. Shop models stay below 200.
-const DEEPEST: usize = 1000;
 
 /// Reads a document.
 ///
 /// # Errors
 /// Why it is no ifcXML at all, in one sentence.
-pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<Exchange, String> {
+pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) -> Result<Exchange, String> {
     let mut xml = Reader::from_reader(bytes);
     xml.config_mut().allow_dangling_amp = true; // one badly written name must not lose the file
     let mut ruler = Ruler::new(bytes);
-    let mut parser = Parser::new(file, problems);
+    let mut parser = Parser::new(file, problems, limits);
     let mut dialect = Dialect::default();
     let mut started = false;
     loop {
@@ -82,6 +80,9 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
                         format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)
                     })?;
                     parser.start(head);
+                    if parser.entities.len() > limits.entities {
+                        return Err(limits.too_many_entities(spot));
+                    }
                 }
                 if let Event::Empty(_) = event {
                     parser.end();

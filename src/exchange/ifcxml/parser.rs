@@ -4,12 +4,12 @@ use std::borrow::Cow;
 use std::sync::Arc;
 
 use super::super::labels::Labels;
+use super::super::limits::Limits;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Attribute, Base, ClassId, Kind, Schema};
 use super::super::waiting::WAITING;
 use super::super::{Entities, Id, Value};
-use super::DEEPEST;
 use super::head::{Head, Pos};
 use super::slot::{Slot, Target, stray_text, untyped};
 
@@ -54,10 +54,11 @@ pub(super) struct Parser {
     stack: Vec<Frame>,
     /// How many open elements are passed over.
     skipping: usize,
+    limits: Limits,
 }
 
 impl Parser {
-    pub fn new(file: Arc<str>, problems: Problems) -> Self {
+    pub fn new(file: Arc<str>, problems: Problems, limits: Limits) -> Self {
         let schema = Schema::ifc4(); // until the document says which
         Self {
             schema,
@@ -68,6 +69,7 @@ impl Parser {
             problems,
             stack: Vec::new(),
             skipping: 0,
+            limits,
         }
     }
 
@@ -107,10 +109,9 @@ impl Parser {
 
     /// An element starts; exactly one [`Parser::end`] follows it.
     pub fn start(&mut self, head: Head) {
-        if self.stack.len() >= DEEPEST {
-            self.problems.add("element nested too deep", head.spot, || {
-                format!("{} is nested deeper than {DEEPEST} elements and is not read", head.name)
-            });
+        if self.stack.len() >= self.limits.depth {
+            let limits = self.limits;
+            self.problems.add("element nested too deep", head.spot, || limits.too_deep(&head.name));
             self.skip();
         } else if head.name == "include" {
             self.problems

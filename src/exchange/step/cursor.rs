@@ -3,19 +3,18 @@
 
 use memchr::memmem;
 
-/// The longest string that is read, in bytes as written; what is longer has lost its closing quote.
-pub(super) const LONGEST_STRING: usize = 1 << 20;
-
 pub(super) struct Cursor<'a> {
     pub bytes: &'a [u8],
     pub at: usize,
+    /// In bytes as written.
+    longest_string: usize,
     /// Whether `*/` was looked for in vain: looking again before each `/*` would take quadratic time.
     no_comment_ends: bool,
 }
 
 impl<'a> Cursor<'a> {
-    pub fn new(bytes: &'a [u8]) -> Self {
-        Self { bytes, at: 0, no_comment_ends: false }
+    pub fn new(bytes: &'a [u8], longest_string: usize) -> Self {
+        Self { bytes, at: 0, longest_string, no_comment_ends: false }
     }
 
     pub fn rest(&self) -> &'a [u8] {
@@ -71,11 +70,10 @@ impl<'a> Cursor<'a> {
     /// `'Beam's end',`, is part of the text. A string is taken for one that lost its closing quote where it holds the
     /// start of another record and either a line break or a quote that does not end it.
     ///
-    /// # Errors
-    /// It is not closed. The reading then stands where the record seems to end.
-    pub fn string(&mut self) -> Result<Quoted<'a>, String> {
+    /// `None` where it is not closed; the reading then stands where the record seems to end.
+    pub fn string(&mut self) -> Option<Quoted<'a>> {
         let start = self.bytes.len().min(self.at + 1);
-        let window = &self.bytes[start..self.bytes.len().min(start + LONGEST_STRING + 1)];
+        let window = &self.bytes[start..self.bytes.len().min(start + self.longest_string + 1)];
         let mut is_doubled = true;
         let mut at = 0; // up to where each piece between quotes has been looked at
         while let Some(length) = memchr::memchr(b'\'', &window[at..]) {
@@ -87,18 +85,18 @@ impl<'a> Cursor<'a> {
                 && let Some(lost) = record_end(piece)
             {
                 self.at = start + at + lost;
-                return Err(not_closed());
+                return None;
             }
             if ends {
                 self.at = start + quote + 1;
-                return Ok(Quoted { raw: &window[..quote], is_doubled });
+                return Some(Quoted { raw: &window[..quote], is_doubled });
             }
             is_doubled &= doubled;
             at = window.len().min(quote + 1 + usize::from(doubled));
         }
         let rest = start + at;
         self.at = record_end(&self.bytes[rest..]).map_or(self.bytes.len(), |lost| rest + lost);
-        Err(not_closed())
+        None
     }
 
     /// Leaves a record: past the `;` that ends it, or up to where another record plainly starts.
@@ -119,10 +117,6 @@ pub(super) struct Quoted<'a> {
     pub raw: &'a [u8],
     /// Whether all quotes in it are doubled, as they must be.
     pub is_doubled: bool,
-}
-
-fn not_closed() -> String {
-    format!("holds a string that is not closed (or longer than {LONGEST_STRING} bytes)")
 }
 
 /// Whether a record can go on so after a string: with a mark or a comment, or not at all.

@@ -16,7 +16,7 @@ impl Reader<'_> {
         while let Some(byte @ (b'(' | b'\'' | b',')) = self.cursor.peek() {
             if byte != b'\'' {
                 self.cursor.at += 1;
-            } else if let Ok(text) = self.cursor.string() {
+            } else if let Some(text) = self.cursor.string() {
                 // an object identifier may follow: 'IFC4 {1 0 10303 …}'
                 let name = super::text::decode(text.raw).text;
                 names.push(name.split_whitespace().next().unwrap_or_default().to_ascii_uppercase());

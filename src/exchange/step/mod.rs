@@ -11,6 +11,7 @@ mod value;
 use std::sync::Arc;
 
 use self::cursor::Cursor;
+use super::limits::Limits;
 use super::problems::{Problems, Ruler, Spot};
 use super::schema::Schema;
 use super::waiting;
@@ -39,15 +40,18 @@ struct Reader<'a> {
     references: Vec<(u64, Id)>,
     /// Where the first text that is not UTF-8 stands, and how many there are.
     latin1: Option<(Spot, usize)>,
+    limits: Limits,
+    /// Where the record starts that is being read.
+    started: usize,
 }
 
 /// Reads a file.
 ///
 /// # Errors
 /// Why it is no exchange at all, in one sentence.
-pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<Exchange, String> {
+pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) -> Result<Exchange, String> {
     let mut reader = Reader {
-        cursor: Cursor::new(bytes),
+        cursor: Cursor::new(bytes, limits.string),
         ruler: Ruler::new(bytes),
         schema: Schema::ifc4(),
         entities: Entities::new(Schema::ifc4(), file),
@@ -55,6 +59,8 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
         numbers: Vec::new(),
         references: Vec::new(),
         latin1: None,
+        limits,
+        started: 0,
     };
     reader.sections()?;
     Ok(reader.finish())
@@ -83,6 +89,10 @@ impl Reader<'_> {
                     });
                 }
                 data = true;
+                if self.entities.len() >= self.limits.entities {
+                    let spot = self.spot();
+                    return Err(self.limits.too_many_entities(spot));
+                }
                 self.record();
                 continue;
             }

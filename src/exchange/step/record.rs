@@ -23,6 +23,7 @@ impl Reader<'_> {
     /// Reads the record whose `#` comes next; at least that is taken.
     pub(super) fn record(&mut self) {
         let spot = self.spot();
+        self.started = self.cursor.at;
         self.cursor.at += 1;
         let digits = String::from_utf8_lossy(self.cursor.take_while(|b| b.is_ascii_digit()));
         if digits.is_empty() || !self.cursor.eat(b'=') {

@@ -9,9 +9,6 @@ use super::cursor::starts_record;
 use super::record::At;
 use super::text;
 
-/// How deep lists and typed values may nest; the schema asks for three at most.
-const DEEPEST: usize = 64;
-
 /// Why there is no value.
 enum Trouble {
     /// The record cannot be followed any further.
@@ -39,8 +36,11 @@ impl Reader<'_> {
     }
 
     fn value(&mut self, kind: Kind, at: At, level: usize) -> Read<Value> {
-        if level > DEEPEST {
-            return Err(Trouble::Broken(format!("nests values deeper than {DEEPEST}")));
+        if level > self.limits.nesting {
+            return Err(Trouble::Broken(self.limits.nested_too_far()));
+        }
+        if self.cursor.at - self.started > self.limits.record {
+            return Err(Trouble::Broken(self.limits.record_too_long()));
         }
         let next = self.cursor.peek();
         match next {
@@ -128,7 +128,7 @@ impl Reader<'_> {
     }
 
     fn text(&mut self, base: Base, at: At) -> Read<Value> {
-        let string = self.cursor.string().map_err(Trouble::Broken)?;
+        let string = self.cursor.string().ok_or_else(|| Trouble::Broken(self.limits.string_not_closed()))?;
         let decoded = text::decode(string.raw);
         if !string.is_doubled {
             let text = quoted(&decoded.text);
