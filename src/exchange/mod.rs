@@ -12,11 +12,14 @@ mod scalar;
 mod schema;
 mod sniff;
 mod step;
+mod store;
+mod value;
 mod waiting;
 
-pub use entity::{Entity, Id, TypeName, Value};
+pub use entity::{Entity, Id};
 pub use graph::Entities;
 pub use limits::Limits;
+pub use value::{Inner, List, Value, View};
 
 use std::sync::Arc;
 

@@ -2,7 +2,7 @@
 
 use super::reading::Reading;
 use super::units::length_unit;
-use crate::exchange::{Entity, Value};
+use crate::exchange::{Entity, View};
 use crate::origin::Place;
 
 /// Complex properties nest; deeper than this nobody looks.
@@ -16,7 +16,7 @@ pub(super) struct Property<'a> {
     pub set: &'a str,
     /// Its own name.
     pub name: &'a str,
-    value: &'a Value,
+    value: View<'a>,
     /// mm per unit, where it overrides the project's unit.
     unit: Option<f64>,
     /// Whether the part's type holds it.
@@ -104,24 +104,24 @@ impl Property<'_> {
     /// Its value as a number, and whether the exchange says that it is a length in the project's unit.
     fn number(&self) -> Option<(f64, bool)> {
         match self.value {
-            Value::Typed(of, inner) if of.ends_with("LengthMeasure") => inner.number().map(|n| (n, true)),
+            View::Typed(of, inner) if of.ends_with("LengthMeasure") => inner.view().number().map(|n| (n, true)),
             value => value.number().map(|n| (n, false)).or_else(|| Some((number_in(&text(value)?)?, false))),
         }
     }
 }
 
-fn text(value: &Value) -> Option<String> {
+fn text(value: View) -> Option<String> {
     match value {
-        Value::Text(text) => Some(text.trim().to_owned()),
-        Value::Token(token) => Some(token.to_string()),
-        Value::Number(number) => Some(number.to_string()),
-        Value::Integer(number) => Some(number.to_string()),
-        Value::Typed(_, inner) => match &**inner {
-            Value::Typed(..) => None,
+        View::Text(text) => Some(text.trim().to_owned()),
+        View::Token(token) => Some(token.to_string()),
+        View::Number(number) => Some(number.to_string()),
+        View::Integer(number) => Some(number.to_string()),
+        View::Typed(_, inner) => match inner.view() {
+            View::Typed(..) => None,
             inner => text(inner),
         },
-        Value::List(items) if items.len() == 1 => items.first().and_then(|item| match item {
-            Value::List(_) => None,
+        View::List(items) if items.len() == 1 => items.get(0).and_then(|item| match item {
+            View::List(_) => None,
             item => text(item),
         }),
         _ => None,
@@ -163,7 +163,7 @@ fn flatten<'a>(
     let value = ["NominalValue", "EnumerationValues", "SetPointValue", "LengthValue", "CountValue"]
         .into_iter()
         .map(|attribute| property.value(attribute))
-        .find(|value| !matches!(value, Value::Absent));
+        .find(|value| !value.is_absent());
     if let (Some(value), Some(name)) = (value, property.text("Name")) {
         let unit = property.entity("Unit").and_then(length_unit);
         into.push(Property { set, name, value, unit, of_type, place: property.place() });

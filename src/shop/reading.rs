@@ -9,7 +9,7 @@ use glam::DAffine3;
 use super::Identity;
 use super::solid::Solid;
 use super::units::Units;
-use crate::exchange::{Entities, Entity, Exchange, Id, Value};
+use crate::exchange::{Entities, Entity, Exchange, Id, View};
 use crate::origin::Problem;
 use crate::rulebook::Rulebook;
 
@@ -180,17 +180,10 @@ fn related(entities: &Entities, class: &str, from: &str, to: &str) -> BTreeMap<I
 }
 
 /// The entities of a value: one, a list, or a list in a defined type (`IfcPropertySetDefinitionSet`).
-fn ids(value: &Value) -> Vec<Id> {
-    let listed =
-        |list: &[Value]| list.iter().filter_map(|v| if let Value::Entity(id) = v { Some(*id) } else { None }).collect();
+fn ids(value: View) -> Vec<Id> {
+    let value = if let View::Typed(_, inner) = value { inner.view() } else { value };
     match value {
-        Value::Entity(id) => vec![*id],
-        Value::List(list) => listed(list),
-        Value::Typed(_, inner) => match &**inner {
-            Value::Entity(id) => vec![*id],
-            Value::List(list) => listed(list),
-            _ => Vec::new(),
-        },
-        _ => Vec::new(),
+        View::List(list) => list.iter().filter_map(View::entity).collect(),
+        value => value.entity().into_iter().collect(),
     }
 }

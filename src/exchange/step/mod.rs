@@ -14,7 +14,7 @@ use self::cursor::Cursor;
 use super::limits::Limits;
 use super::problems::{Problems, Ruler, Spot};
 use super::schema::Schema;
-use super::waiting;
+use super::store::Cell;
 use super::{Entities, Exchange, Id, conform};
 
 /// Where in the file the reading stands.
@@ -34,6 +34,8 @@ struct Reader<'a> {
     schema: &'static Schema,
     entities: Entities,
     problems: Problems,
+    /// The items of the lists that are being read, those of the innermost last.
+    items: Vec<Cell>,
     /// The records by the numbers that the file gives them.
     numbers: Vec<(u64, Id)>,
     /// References by number, and who refers.
@@ -56,6 +58,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
         schema: Schema::ifc4(),
         entities: Entities::new(Schema::ifc4(), file),
         problems,
+        items: Vec::new(),
         numbers: Vec::new(),
         references: Vec::new(),
         latin1: None,
@@ -183,7 +186,7 @@ impl Reader<'_> {
                 format!("{} {} refers to #{number}, but no entity has that id", entity.class(), entity.label())
             });
         }
-        self.entities.values_mut().for_each(|value| waiting::settle(value, &targets));
+        self.entities.settle(&targets);
         conform::check(&self.entities, &mut self.problems);
         Exchange {
             form: format!("{} STEP", self.schema.name),
