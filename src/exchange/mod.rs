@@ -83,6 +83,8 @@ fn read_plain(bytes: &[u8], file: &str, limits: Limits) -> Result<Exchange, Unre
         .map_err(|reason| unreadable(file, &reason))
 }
 
+/// One line, whatever of the file a reason quotes.
 fn unreadable(file: &str, reason: &str) -> Unreadable {
-    Unreadable { file: file.to_owned(), reason: format!("the file {reason}") }
+    let plain = |c: char| if c.is_control() { '\u{fffd}' } else { c };
+    Unreadable { file: file.to_owned(), reason: format!("the file {}", reason.chars().map(plain).collect::<String>()) }
 }
