@@ -11,7 +11,7 @@ use super::member::LONG;
 use super::plate::{flat, too_thick};
 use super::profile::Kind;
 use super::reading::{Common, Reading};
-use super::section::see;
+use super::section::{extent, see};
 use super::several::SOLIDS;
 use super::shank::{SMALL, round, small_part};
 use super::solid::Prism;
@@ -259,10 +259,10 @@ impl<'a> Reading<'a> {
 
     /// Nuts and washers come as any class: by name if they are small, else by shape.
     fn small(&self, element: Entity<'a>, prisms: &[&Prism]) -> Option<Word> {
-        let extent = |p: &&Prism| see(&p.profile).bounds.size.max_element().max(p.depth);
-        let little = prisms.iter().all(|p| extent(p) <= SMALL);
+        let extent = |p: &&Prism| extent(&p.profile).max(p.depth);
+        let little = || prisms.iter().all(|p| extent(p) <= SMALL);
         match self.called(element) {
-            Some(word @ (Word::Nut | Word::Washer)) if little => Some(word),
+            Some(word @ (Word::Nut | Word::Washer)) if little() => Some(word),
             // A short bolt in several solids is no nut.
             Some(Word::Bolt | Word::Anchor) if prisms.len() > 1 => None,
             _ => small_part(prisms),
