@@ -28,7 +28,7 @@ impl<'a> Reading<'a> {
         let of = |entity: Entity<'a>, of_type: bool| {
             let value = entity.number(attribute)? * self.units.length;
             let by = By::Attribute { name: attribute, of_type };
-            (value > 0.0 && value.is_finite()).then(|| Statement { value, by, at: entity })
+            (value > 0.0 && value.is_finite()).then_some(Statement { value, by, at: entity })
         };
         let of_type = self.type_of(element).and_then(|t| of(t, true));
         of_type.into_iter().chain(of(element, false)).collect()

@@ -146,6 +146,9 @@ impl<'a> Taken<'a> {
     }
 }
 
+/// The bolts of a fastener, or why it holds none.
+type Asked = Result<Vec<Bolt>, String>;
+
 /// Decides on bolts, with the nuts and washers that lie apart from them as evidence.
 fn tell_bolts<'a>(
     common: &Common<'a>,
@@ -166,18 +169,18 @@ fn tell_bolts<'a>(
         let steps = (from.distance(to) / 50.0).ceil().clamp(1.0, 64.0);
         (0..=steps as usize).any(|i| nuts.hold(from.lerp(to, i as f64 / steps), axis, aside, straight))
     };
-    let told: Vec<(Vec<Result<Vec<Bolt>, Rejected>>, Vec<Problem>)> = bolts
+    let told: Vec<(Vec<Asked>, Vec<Problem>)> = bolts
         .par_chunks(GO)
         .map(|some| {
             let reading = common.reading();
             let tell = |(element, says, prisms): &(Entity<'a>, Says, Vec<Prism>)| {
                 let all: Vec<&Prism> = prisms.iter().collect();
-                let bolts = reading.bolts(*element, *says, &all, nutted);
-                bolts.map_err(|reason| Rejected { identity: reading.identity(*element), reason })
+                reading.bolts(*element, *says, &all, nutted)
             };
             (some.iter().map(tell).collect(), reading.into_problems())
         })
         .collect();
+    let reading = common.reading();
     let mut shanks = Lines::default();
     let (found, problems): (Vec<_>, Vec<_>) = told.into_iter().unzip();
     steelwork.problems.extend(problems.into_iter().flatten());
@@ -189,7 +192,7 @@ fn tell_bolts<'a>(
                 steelwork.bolts.extend(found);
                 parts.insert(element.id, (first..steelwork.bolts.len()).map(Part::Bolt).collect());
             }
-            Err(rejected) => steelwork.rejected.push(rejected),
+            Err(reason) => steelwork.rejected.push(Rejected { identity: reading.identity(*element), reason }),
         }
     }
     for mut piece in hardware {
