@@ -1,6 +1,7 @@
 //! One building in every form: the same graph where the version is the same, and the same review of all.
 
 mod forms;
+mod shapes;
 
 use faying::report::json;
 use faying::run::{Inputs, run};
