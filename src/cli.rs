@@ -3,6 +3,7 @@
 mod failure;
 mod inputs;
 mod output;
+mod progress;
 mod rules;
 
 use std::path::PathBuf;
@@ -162,7 +163,7 @@ fn report(
     let given = Given::gather(path, schedules, common.rules.as_deref())?;
     // Before the work is done, so that nobody waits for a report that can't be written.
     let output = Output::open(common.output.as_deref(), common.color, &given.paths)?;
-    let review = run::run(&given.inputs())?;
+    let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
     let drawn = draw(&review, &output, &given.model.bytes).map_err(|why| Failure::because("can't write JSON", why))?;
     output.write(&drawn)?;
     Ok(review)
