@@ -2,9 +2,10 @@
 
 use std::collections::BTreeMap;
 
+use faying::report::json;
 use serde_json::Value;
 
-use super::{differences, reviewed, texts};
+use super::{data, differences, reviewed, texts};
 use crate::sample::boathouse::boathouse;
 use crate::writer::Form::Step;
 use crate::writer::building::{BoltBody, Building, End, PlateAs};
@@ -78,7 +79,7 @@ fn said_by(body: BoltBody, version: Version, origin: &str) -> String {
 /// columns with faces: nothing differs but who the bolts are and where their size is said.
 #[test]
 fn every_shape_of_a_joint_gives_the_same_review() {
-    let of = |body, plates, version| reviewed(&bytes(&shaped(body, plates), Step(version)));
+    let of = |body, plates, version| data(json::review(&reviewed(&bytes(&shaped(body, plates), Step(version)))));
     let first = of(BoltBody::Mapped, PlateAs::Plate, Version::Ifc4);
     let groups = groups(&boathouse());
     for (body, plates, version) in [
