@@ -10,7 +10,7 @@ mod step;
 mod unreadable;
 mod values;
 
-use faying::exchange::{Entity, Exchange, Value, read};
+use faying::exchange::{Entity, Exchange, Value, View, read};
 
 /// A document of IFC4 ADD2 TC1 around entities; they start on line 2.
 fn document(body: &str) -> String {
@@ -39,17 +39,17 @@ fn labelled<'a>(exchange: &'a Exchange, label: &str) -> Entity<'a> {
 
 /// Everything that can be reached from an entity, written out without labels and places.
 fn written_out(entity: Entity, exchange: &Exchange) -> String {
-    fn value(v: &Value, exchange: &Exchange) -> String {
+    fn value(v: View, exchange: &Exchange) -> String {
         match v {
-            Value::Entity(id) => written_out(exchange.entities.get(*id), exchange),
-            Value::List(items) => {
+            View::Entity(id) => written_out(exchange.entities.get(id), exchange),
+            View::List(items) => {
                 format!("({})", items.iter().map(|i| value(i, exchange)).collect::<Vec<_>>().join(" "))
             }
-            Value::Typed(name, inner) => format!("{name}:{}", value(inner, exchange)),
+            View::Typed(name, inner) => format!("{name}:{}", value(inner.view(), exchange)),
             other => format!("{other:?}"),
         }
     }
-    let given = entity.values().filter(|(_, v)| **v != Value::Absent);
+    let given = entity.values().filter(|(_, v)| !v.is_absent());
     let given: Vec<String> = given.map(|(name, v)| format!("{name}={}", value(v, exchange))).collect();
     format!("{}[{}]", entity.class(), given.join(", "))
 }

@@ -2,17 +2,20 @@
 
 use super::problems::Problems;
 use super::scalar::quoted;
-use super::schema::{Base, Kind};
-use super::{Entities, Entity, Value};
+use super::schema::{Attribute, Base, Kind};
+use super::store::Cell;
+use super::{Entities, Entity};
 
 /// Notes what contradicts the schema and would mislead whoever follows the graph; the graph stays as it is.
 pub(super) fn check(entities: &Entities, problems: &mut Problems) {
+    let relationship = entities.schema().find("IfcRelationship");
     for entity in entities.all() {
-        for (attribute, value) in entity.known_values() {
-            let name = attribute.name;
-            check_value(entity, name, attribute.kind, value, problems);
-            let end = name.starts_with("Relat") && matches!(attribute.kind.base, Base::Entity(_) | Base::Select);
-            if end && *value == Value::Absent && entity.is_a("IfcRelationship") {
+        let is_relation = relationship.is_some_and(|asked| entities.schema().is_subtype(entity.class_id(), asked));
+        for (attribute, cell) in entity.known_cells() {
+            if !cell.is_absent() {
+                check_value(entity, attribute, attribute.kind, cell, problems);
+            } else if is_relation && is_end(attribute) {
+                let name = attribute.name;
                 problems.add("relation without an end", entity.spot(), || {
                     format!("{} has no {name} and relates nothing", named(entity))
                 });
@@ -22,29 +25,41 @@ pub(super) fn check(entities: &Entities, problems: &mut Problems) {
     check_global_ids(entities, problems);
 }
 
-fn check_value(entity: Entity, name: &str, kind: Kind, value: &Value, problems: &mut Problems) {
-    let schema = entity.graph().schema();
-    let wrong = match (kind.base, value) {
-        (_, Value::Absent) | (Base::Any, _) => None,
-        (_, Value::List(items)) => {
-            return items.iter().for_each(|item| check_value(entity, name, kind, item, problems));
+fn is_end(attribute: &Attribute) -> bool {
+    attribute.name.starts_with("Relat") && matches!(attribute.kind.base, Base::Entity(_) | Base::Select)
+}
+
+fn check_value(entity: Entity, attribute: &Attribute, kind: Kind, cell: Cell, problems: &mut Problems) {
+    let graph = entity.graph();
+    let schema = graph.schema();
+    let wrong = match (kind.base, cell.to_entity()) {
+        (Base::Any | Base::Select, _) => None,
+        (Base::Entity(_), None) if cell.is_list() => {
+            let items = graph.store.items(cell).iter();
+            return items.for_each(|item| check_value(entity, attribute, kind, *item, problems));
         }
-        (Base::Entity(asked), Value::Entity(to)) => {
-            let to = entity.graph().get(*to);
-            let known = schema.find(to.class()); // of one that is not known nothing can be said
+        (_, None) if cell.is_list() => {
+            let items = graph.store.items(cell).iter().filter(|item| item.is_list() || item.to_entity().is_some());
+            return items.for_each(|item| check_value(entity, attribute, kind, *item, problems));
+        }
+        (Base::Entity(asked), Some(to)) => {
+            let to = graph.get(to);
+            let known = schema.class(to.class_id()); // of one that is not known nothing can be said
             known
-                .filter(|class| !schema.is_subtype(*class, asked))
+                .filter(|_| !schema.is_subtype(to.class_id(), asked))
                 .map(|_| format!("is {}, {} is required", named(to), schema.class(asked).map_or("", |c| c.name)))
         }
-        (Base::Entity(asked), _) => {
+        (Base::Entity(_), None) if cell.is_absent() => None,
+        (Base::Entity(asked), None) => {
             Some(format!("is a plain value, {} is required", schema.class(asked).map_or("", |c| c.name)))
         }
-        (Base::Select, _) => None,
-        (_, Value::Entity(to)) => Some(format!("is {}, a plain value is required", named(entity.graph().get(*to)))),
-        _ => None,
+        (_, Some(to)) => Some(format!("is {}, a plain value is required", named(graph.get(to)))),
+        (_, None) => None,
     };
     if let Some(wrong) = wrong {
-        problems.add("value of the wrong kind", entity.spot(), || format!("{name} of {} {wrong}", named(entity)));
+        problems.add("value of the wrong kind", entity.spot(), || {
+            format!("{} of {} {wrong}", attribute.name, named(entity))
+        });
     }
 }
 

@@ -1,63 +1,15 @@
 //! One entity of the graph and its values.
 
-use std::sync::Arc;
-
 use super::graph::Entities;
 use super::problems::Spot;
-use super::schema::Attribute;
+use super::schema::{Attribute, ClassId};
+use super::store::Cell;
+use super::value::View;
 use crate::origin::Place;
 
 /// An entity's index in the graph, in the order of the file.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
 pub struct Id(pub u32);
-
-/// An attribute's value.
-#[derive(Clone, Debug, PartialEq, Default)]
-pub enum Value {
-    /// Not given, or derived.
-    #[default]
-    Absent,
-    /// A string.
-    Text(Box<str>),
-    /// A finite real.
-    Number(f64),
-    /// An integer.
-    Integer(i64),
-    /// A BOOLEAN, or a LOGICAL that is not unknown.
-    Truth(bool),
-    /// An enumeration item, upper case without dots.
-    Token(Box<str>),
-    /// Another entity.
-    Entity(Id),
-    /// A list, set or array; lists of lists nest.
-    List(Vec<Value>),
-    /// A defined type chosen in a SELECT: `IfcLabel`, with its value.
-    Typed(TypeName, Box<Value>),
-}
-
-/// The name of a defined type, such as `IfcLabel`; thin and shared, because exchanges hold very many values.
-#[derive(Clone, Debug, PartialEq, Eq)]
-pub struct TypeName(Arc<Box<str>>);
-
-impl From<&str> for TypeName {
-    fn from(name: &str) -> Self {
-        Self(Arc::new(name.into()))
-    }
-}
-
-impl std::ops::Deref for TypeName {
-    type Target = str;
-
-    fn deref(&self) -> &str {
-        &self.0
-    }
-}
-
-impl std::fmt::Display for TypeName {
-    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        f.write_str(self)
-    }
-}
 
 /// One entity of the graph.
 #[derive(Clone, Copy, Debug)]
@@ -84,12 +36,11 @@ impl<'a> Entity<'a> {
     /// Whether it is of that class or of a subtype, by the schema of its exchange. What IFC4X3 renamed answers to
     /// the older name too.
     pub fn is_a(self, class: &str) -> bool {
-        let renamed = match class {
-            "IfcBuildingElement" => "IfcBuiltElement",
-            "IfcBuildingElementType" => "IfcBuiltElementType",
-            same => same,
-        };
-        self.graph.lineage(self.id).any(|name| name == class || name == renamed)
+        self.graph.is_a(self.graph.class(self.id), class)
+    }
+
+    pub(super) fn class_id(self) -> ClassId {
+        self.graph.class(self.id)
     }
 
     /// The file's own name for it: `i110`, `#110`; empty where it has none.
@@ -108,20 +59,25 @@ impl<'a> Entity<'a> {
     }
 
     /// The value of an attribute, by its EXPRESS name.
-    pub fn value(self, attribute: &str) -> &'a Value {
-        const ABSENT: &Value = &Value::Absent;
-        self.values().find(|(name, _)| *name == attribute).map_or(ABSENT, |(_, value)| value)
+    pub fn value(self, attribute: &str) -> View<'a> {
+        let known = self.graph.attributes(self.id).iter().position(|a| a.name == attribute);
+        let cell = known.map_or_else(
+            || self.graph.extras(self.id).iter().find(|(name, _)| **name == *attribute).map(|(_, cell)| *cell),
+            |index| self.graph.cells(self.id).get(index).copied(),
+        );
+        cell.map_or(View::Absent, |cell| self.graph.store.view(cell))
     }
 
     /// All attributes with their values, absent ones too: the schema's in its order, then unknown ones.
-    pub fn values(self) -> impl Iterator<Item = (&'a str, &'a Value)> {
-        let extras = self.graph.extras(self.id).iter().map(|(name, value)| (&**name, value));
-        self.known_values().map(|(attribute, value)| (attribute.name, value)).chain(extras)
+    pub fn values(self) -> impl Iterator<Item = (&'a str, View<'a>)> {
+        let extras = self.graph.extras(self.id).iter().map(|(name, cell)| (&**name, *cell));
+        let all = self.known_cells().map(|(attribute, cell)| (attribute.name, cell)).chain(extras);
+        all.map(move |(name, cell)| (name, self.graph.store.view(cell)))
     }
 
     /// The schema's attributes with their values.
-    pub(super) fn known_values(self) -> impl Iterator<Item = (&'static Attribute, &'a Value)> {
-        self.graph.attributes(self.id).iter().zip(self.graph.values(self.id))
+    pub(super) fn known_cells(self) -> impl Iterator<Item = (&'static Attribute, Cell)> {
+        self.graph.attributes(self.id).iter().zip(self.graph.cells(self.id).iter().copied())
     }
 
     /// The entities that point here by any attribute, in the order of the file.
@@ -136,14 +92,11 @@ impl<'a> Entity<'a> {
 
     /// A string attribute (also of a SELECT type); empty strings count as absent.
     pub fn text(self, attribute: &str) -> Option<&'a str> {
-        fn text(value: &Value) -> Option<&str> {
-            match value {
-                Value::Text(text) => Some(text).map(|t| t.trim()).filter(|t| !t.is_empty()),
-                Value::Typed(_, inner) => text(inner),
-                _ => None,
-            }
+        let mut value = self.value(attribute);
+        while let View::Typed(_, inner) = value {
+            value = inner.view();
         }
-        text(self.value(attribute))
+        if let View::Text(text) = value { Some(text.trim()).filter(|t| !t.is_empty()) } else { None }
     }
 
     /// A number attribute (real or integer, also of a SELECT type), in the file's unit.
@@ -153,61 +106,33 @@ impl<'a> Entity<'a> {
 
     /// A list of numbers, such as `Coordinates`; `None` if any item is no number.
     pub fn numbers(self, attribute: &str) -> Option<Vec<f64>> {
-        match self.value(attribute) {
-            Value::List(items) => items.iter().map(Value::number).collect(),
-            _ => None,
-        }
+        self.value(attribute).list()?.numbers()
     }
 
     /// An enumeration item, upper case.
     pub fn token(self, attribute: &str) -> Option<&'a str> {
-        match self.value(attribute) {
-            Value::Token(token) => Some(token),
-            _ => None,
-        }
+        if let View::Token(token) = self.value(attribute) { Some(token) } else { None }
     }
 
     /// A BOOLEAN attribute.
     pub fn truth(self, attribute: &str) -> Option<bool> {
-        match self.value(attribute) {
-            Value::Truth(truth) => Some(*truth),
-            _ => None,
-        }
+        if let View::Truth(truth) = self.value(attribute) { Some(truth) } else { None }
     }
 
     /// The entity an attribute points to.
     pub fn entity(self, attribute: &str) -> Option<Entity<'a>> {
-        match self.value(attribute) {
-            Value::Entity(id) => Some(self.graph.get(*id)),
-            _ => None,
-        }
+        self.value(attribute).entity().map(|id| self.graph.get(id))
     }
 
     /// The entities of a list attribute (or the single one it holds).
     pub fn entities(self, attribute: &str) -> Vec<Entity<'a>> {
         let mut value = self.value(attribute);
-        while let Value::Typed(_, inner) = value {
-            value = inner;
+        while let View::Typed(_, inner) = value {
+            value = inner.view();
         }
         match value {
-            Value::List(items) => items
-                .iter()
-                .filter_map(|item| if let Value::Entity(id) = item { Some(self.graph.get(*id)) } else { None })
-                .collect(),
-            Value::Entity(id) => vec![self.graph.get(*id)],
-            _ => Vec::new(),
-        }
-    }
-}
-
-impl Value {
-    /// A number, also inside a typed value.
-    pub fn number(&self) -> Option<f64> {
-        match self {
-            Self::Number(number) => Some(*number),
-            Self::Integer(integer) => Some(*integer as f64),
-            Self::Typed(_, inner) => inner.number(),
-            _ => None,
+            View::List(items) => items.iter().filter_map(View::entity).map(|id| self.graph.get(id)).collect(),
+            value => value.entity().map(|id| self.graph.get(id)).into_iter().collect(),
         }
     }
 }

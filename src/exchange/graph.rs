@@ -5,6 +5,7 @@ use std::sync::{Arc, OnceLock};
 
 use super::problems::Spot;
 use super::schema::{Attribute, ClassId, Kind, Schema};
+use super::store::{Cell, Store};
 use super::{Entity, Id, Value};
 
 /// All entities of one exchange.
@@ -13,17 +14,25 @@ pub struct Entities {
     schema: &'static Schema,
     file: Arc<str>,
     nodes: Vec<Node>,
-    /// The attributes of all nodes, each node's in the order of the schema.
-    values: Vec<Value>,
+    /// The attributes of all nodes, each node's in the order of the schema, and what they hold.
+    pub(super) store: Store,
     /// The labels of all nodes.
     labels: String,
     /// Names of classes that the schema does not know; their numbers follow the schema's.
     strangers: Vec<Box<str>>,
     stranger_ids: HashMap<Box<str>, ClassId>,
     /// Attributes that the schema does not know, by node.
-    extras: BTreeMap<Id, Vec<(Box<str>, Value)>>,
-    /// Who is pointed to by whom, sorted; from the first time somebody asks.
-    pointers: OnceLock<Vec<(Id, Id)>>,
+    extras: BTreeMap<Id, Vec<(Box<str>, Cell)>>,
+    /// Who is pointed to by whom; from the first time somebody asks.
+    pointers: OnceLock<Pointers>,
+}
+
+/// Who is pointed to by whom.
+#[derive(Debug)]
+struct Pointers {
+    /// Where in `from` those that point to an entity start; they end where the next one's start.
+    starts: Vec<u32>,
+    from: Vec<Id>,
 }
 
 #[derive(Debug)]
@@ -48,7 +57,7 @@ impl Entities {
             schema,
             file,
             nodes: Vec::new(),
-            values: Vec::new(),
+            store: Store::new(schema),
             labels: String::new(),
             strangers: Vec::new(),
             stranger_ids: HashMap::new(),
@@ -77,8 +86,11 @@ impl Entities {
     }
 
     /// Those of the class or a subtype of it, in the order of the file.
-    pub fn of_class<'a>(&'a self, class: &'a str) -> impl Iterator<Item = Entity<'a>> {
-        self.all().filter(move |e| e.is_a(class))
+    pub fn of_class<'a>(&'a self, class: &str) -> impl Iterator<Item = Entity<'a>> + use<'a> {
+        // asked once a class, not once an entity
+        let count = self.schema.len() + self.strangers.len();
+        let is_it: Vec<bool> = (0..count).map(|of| self.is_a(of as ClassId, class)).collect();
+        self.all().filter(move |e| is_it.get(usize::from(self.class(e.id))).is_some_and(|is_it| *is_it))
     }
 
     /// One.
@@ -92,15 +104,13 @@ impl Entities {
         let class = self.class_id(class);
         let id = self.open(class, "", Spot::default());
         let known = self.attributes(id);
-        let mut values = vec![Value::Absent; known.len()];
-        let mut extras = Vec::new();
         for (name, value) in attributes {
+            let cell = self.store.put(&value);
             match known.iter().position(|a| a.name == name) {
-                Some(index) => values[index] = value,
-                None => extras.push((name.into(), value)),
+                Some(index) => self.set(id, index, cell),
+                None => self.add_extra(id, name, cell),
             }
         }
-        self.close(id, values, extras);
         id
     }
 
@@ -128,46 +138,71 @@ impl Entities {
         }
     }
 
-    /// Starts an entity, so that it has an id before its attributes are known.
+    /// Adds an entity, all of its attributes absent.
     pub(super) fn open(&mut self, class: ClassId, label: &str, spot: Spot) -> Id {
         self.pointers.take(); // whoever asked before did not see this entity
         let id = Id(self.nodes.len() as u32);
         let start = self.labels.len() as u32;
         self.labels.push_str(label);
-        self.nodes.push(Node { class, label: start, values: 0, line: spot.line, column: spot.column });
+        let values = self.store.room(self.schema.class(class).map_or(0, |c| c.attributes.len()));
+        self.nodes.push(Node { class, label: start, values, line: spot.line, column: spot.column });
         id
     }
 
-    /// Ends an entity: `values` in the order of the schema, one an attribute.
-    pub(super) fn close(&mut self, id: Id, values: Vec<Value>, extras: Vec<(Box<str>, Value)>) {
-        self.nodes[id.0 as usize].values = self.values.len() as u32;
-        self.values.extend(values);
-        if !extras.is_empty() {
-            self.extras.insert(id, extras);
+    /// The value of the attribute at a position of the schema.
+    pub(super) fn cell(&self, id: Id, index: usize) -> Cell {
+        self.cells(id).get(index).copied().unwrap_or(Cell::ABSENT)
+    }
+
+    /// Gives the attribute at a position of the schema, of which the entity must have one there, its value.
+    pub(super) fn set(&mut self, id: Id, index: usize, value: Cell) {
+        let at = self.node(id).values as usize + index;
+        if let Some(cell) = self.store.cell_mut(at) {
+            *cell = value;
         }
     }
 
-    /// All values, to fill in what was not known when they were read.
-    pub(super) fn values_mut(&mut self) -> impl Iterator<Item = &mut Value> {
-        self.values.iter_mut().chain(self.extras.values_mut().flatten().map(|(_, value)| value))
+    /// Gives an entity an attribute that the schema does not know.
+    pub(super) fn add_extra(&mut self, id: Id, name: &str, value: Cell) {
+        self.extras.entry(id).or_default().push((name.into(), value));
     }
 
-    /// A value and its kind, by the attribute's name.
-    pub(super) fn value_mut(&mut self, id: Id, attribute: &str) -> Option<(Kind, &mut Value)> {
-        let node = self.nodes.get(id.0 as usize)?;
-        let known = &self.schema.class(node.class)?.attributes;
-        let (index, known) = known.iter().enumerate().find(|(_, a)| a.name == attribute)?;
-        Some((known.kind, self.values.get_mut(node.values as usize + index)?))
+    /// Replaces waiting references by their targets.
+    pub(super) fn settle(&mut self, targets: &[Option<Id>]) {
+        self.store.settle(targets);
+        for (_, value) in self.extras.values_mut().flatten() {
+            super::store::settle(value, targets);
+            if value.is_list() {
+                *value = self.store.without_gaps(*value);
+            }
+        }
+    }
+
+    /// The position and kind of an attribute.
+    pub(super) fn attribute(&self, id: Id, name: &str) -> Option<(usize, Kind)> {
+        let (index, known) = self.attributes(id).iter().enumerate().find(|(_, a)| a.name == name)?;
+        Some((index, known.kind))
     }
 
     pub(super) fn class(&self, id: Id) -> ClassId {
         self.node(id).class
     }
 
-    /// The names of an entity's class and its supertypes, innermost first.
-    pub(super) fn lineage(&self, id: Id) -> impl Iterator<Item = &str> {
-        let up = |class: &ClassId| self.schema.class(*class).and_then(|c| c.parent);
-        std::iter::successors(Some(self.class(id)), up).map(|class| self.class_name(class))
+    /// Whether a class is of that name or a subtype of it. What IFC4X3 renamed answers to the older name too.
+    pub(super) fn is_a(&self, class: ClassId, name: &str) -> bool {
+        self.is_named(class, name)
+            || match name {
+                "IfcBuildingElement" => self.is_named(class, "IfcBuiltElement"),
+                "IfcBuildingElementType" => self.is_named(class, "IfcBuiltElementType"),
+                _ => false,
+            }
+    }
+
+    fn is_named(&self, class: ClassId, name: &str) -> bool {
+        match self.schema.class(class) {
+            Some(class) => class.line.iter().rev().any(|class| self.class_name(*class) == name),
+            None => self.class_name(class) == name,
+        }
     }
 
     pub(super) fn label(&self, id: Id) -> &str {
@@ -191,39 +226,56 @@ impl Entities {
     }
 
     /// The values of these attributes.
-    pub(super) fn values(&self, id: Id) -> &[Value] {
-        let start = self.node(id).values as usize;
-        self.values.get(start..start + self.attributes(id).len()).unwrap_or_default()
+    pub(super) fn cells(&self, id: Id) -> &[Cell] {
+        self.store.cells(self.node(id).values as usize, self.attributes(id).len())
     }
 
     /// The attributes that the schema does not give it.
-    pub(super) fn extras(&self, id: Id) -> &[(Box<str>, Value)] {
+    pub(super) fn extras(&self, id: Id) -> &[(Box<str>, Cell)] {
         self.extras.get(&id).map_or(&[], |extras| extras)
     }
 
     /// Who points to an entity.
     pub(super) fn referring(&self, id: Id) -> impl Iterator<Item = Id> {
-        let pointers = self.pointers.get_or_init(|| self.pointers());
-        let start = pointers.partition_point(|(to, _)| *to < id);
-        pointers.iter().skip(start).take_while(move |(to, _)| *to == id).map(|(_, from)| *from)
+        let Pointers { starts, from } = self.pointers.get_or_init(|| self.pointers());
+        let at = id.0 as usize;
+        let range = starts.get(at).zip(starts.get(at + 1)).map(|(start, end)| *start as usize..*end as usize);
+        range.and_then(|range| from.get(range)).unwrap_or_default().iter().copied()
     }
 
-    fn pointers(&self) -> Vec<(Id, Id)> {
-        fn collect(from: Id, value: &Value, into: &mut Vec<(Id, Id)>) {
-            match value {
-                Value::Entity(to) => into.push((*to, from)),
-                Value::List(items) => items.iter().for_each(|item| collect(from, item, into)),
-                Value::Typed(_, inner) => collect(from, inner, into),
-                _ => {}
+    /// Counts who points to each entity, then puts them in their places.
+    fn pointers(&self) -> Pointers {
+        let each = |with: &mut dyn FnMut(usize, Id)| {
+            for from in (0..self.nodes.len() as u32).map(Id) {
+                let cells = self.cells(from).iter().chain(self.extras(from).iter().map(|(_, cell)| cell));
+                for cell in cells {
+                    self.store.each_entity(*cell, &mut |to| with(to.0 as usize, from));
+                }
             }
+        };
+        // who points twice is counted once: its pointers come one after the other
+        let mut last = vec![u32::MAX; self.nodes.len()];
+        let mut starts = vec![0_u32; self.nodes.len() + 1];
+        each(&mut |to, from| {
+            if last.get(to).is_some_and(|last| *last != from.0) {
+                last[to] = from.0;
+                starts[to + 1] += 1;
+            }
+        });
+        for index in 1..starts.len() {
+            starts[index] += starts[index - 1];
         }
-        let mut pointers = Vec::new();
-        for entity in self.all() {
-            entity.values().for_each(|(_, value)| collect(entity.id, value, &mut pointers));
-        }
-        pointers.sort_unstable();
-        pointers.dedup();
-        pointers
+        let mut from_all = vec![Id(0); starts.last().map_or(0, |all| *all as usize)];
+        let mut next = starts.clone();
+        last.fill(u32::MAX);
+        each(&mut |to, from| {
+            if last.get(to).is_some_and(|last| *last != from.0) {
+                last[to] = from.0;
+                from_all[next[to] as usize] = from;
+                next[to] += 1;
+            }
+        });
+        Pointers { starts, from: from_all }
     }
 
     fn node(&self, id: Id) -> &Node {

@@ -1,7 +1,8 @@
 //! Finds entities by the file's own names for them, without a copy of the names.
 
-use std::hash::{BuildHasher, RandomState};
+use std::hash::BuildHasher;
 
+use foldhash::fast::RandomState;
 use hashbrown::HashTable;
 
 use super::{Entities, Id};

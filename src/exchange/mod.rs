@@ -11,10 +11,13 @@ mod scalar;
 mod schema;
 mod sniff;
 mod step;
+mod store;
+mod value;
 mod waiting;
 
-pub use entity::{Entity, Id, TypeName, Value};
+pub use entity::{Entity, Id};
 pub use graph::Entities;
+pub use value::{Inner, List, Value, View};
 
 use std::sync::Arc;
 
@@ -69,6 +72,8 @@ fn read_plain(bytes: &[u8], file: &str) -> Result<Exchange, Unreadable> {
         .map_err(|reason| unreadable(file, &reason))
 }
 
+/// One line, whatever of the file a reason quotes.
 fn unreadable(file: &str, reason: &str) -> Unreadable {
-    Unreadable { file: file.to_owned(), reason: format!("the file {reason}") }
+    let plain = |c: char| if c.is_control() { '\u{fffd}' } else { c };
+    Unreadable { file: file.to_owned(), reason: format!("the file {}", reason.chars().map(plain).collect::<String>()) }
 }

@@ -29,13 +29,17 @@ impl<'a> Ruler<'a> {
 
     pub fn spot(&mut self, offset: usize) -> Spot {
         let end = offset.min(self.bytes.len());
-        for &byte in self.bytes.get(self.offset..end).unwrap_or_default() {
-            if byte == b'\n' {
-                self.spot = Spot { line: self.spot.line.saturating_add(1), column: 1 };
-            } else if byte & 0xC0 != 0x80 {
-                self.spot.column = self.spot.column.saturating_add(1);
-            }
+        let mut passed = self.bytes.get(self.offset..end).unwrap_or_default();
+        if let Some(last) = memchr::memrchr(b'\n', passed) {
+            let lines = memchr::memchr_iter(b'\n', &passed[..last]).count() + 1;
+            self.spot = Spot { line: self.spot.line.saturating_add(lines as u32), column: 1 };
+            passed = &passed[last + 1..];
         }
+        let characters = match passed.is_ascii() {
+            true => passed.len(),
+            false => passed.iter().filter(|byte| **byte & 0xC0 != 0x80).count(),
+        };
+        self.spot.column = self.spot.column.saturating_add(characters as u32);
         self.offset = self.offset.max(end);
         self.spot
     }

@@ -1,13 +1,13 @@
 //! The schema's entities, supertypes and attributes: data, so that every exchange form is read by one table.
 
-use std::borrow::Cow;
-use std::collections::HashMap;
 use std::sync::LazyLock;
 
-use super::TypeName;
+use hashbrown::HashTable;
 
 /// An entity of the schema, by its index in the table.
 pub(super) type ClassId = u16;
+/// A defined type of the schema, by its index in the table.
+pub(super) type TypeId = u16;
 
 /// What an attribute holds at the innermost level of its lists.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -64,7 +64,8 @@ pub(super) struct Inverse {
 #[derive(Debug)]
 pub(super) struct Class {
     pub name: &'static str,
-    pub parent: Option<ClassId>,
+    /// Its supertypes from the outermost one on, and itself.
+    pub line: Vec<ClassId>,
     pub is_abstract: bool,
     /// Explicit attributes, inherited ones first: the positions of STEP.
     pub attributes: Vec<Attribute>,
@@ -77,8 +78,9 @@ pub(super) struct Schema {
     /// Its name for people.
     pub name: &'static str,
     classes: Vec<Class>,
-    by_name: HashMap<String, ClassId>,
-    types: HashMap<String, (TypeName, Kind)>,
+    by_name: HashTable<(&'static str, ClassId)>,
+    types: Vec<(&'static str, Kind)>,
+    types_by_name: HashTable<(&'static str, TypeId)>,
 }
 
 impl Schema {
@@ -102,12 +104,23 @@ impl Schema {
 
     /// The entity of that name, in whatever case.
     pub fn find(&self, name: &str) -> Option<ClassId> {
-        self.by_name.get(&*upper(name)).copied()
+        self.by_name.find(hash(name), |(known, _)| known.eq_ignore_ascii_case(name)).map(|(_, class)| *class)
     }
 
-    /// The defined type of that name, in whatever case: its name as the schema spells it, and its kind.
-    pub fn find_type(&self, name: &str) -> Option<(TypeName, Kind)> {
-        self.types.get(&*upper(name)).cloned()
+    /// The defined type of that name, in whatever case, and its kind.
+    pub fn find_type(&self, name: &str) -> Option<(TypeId, Kind)> {
+        let (_, id) = self.types_by_name.find(hash(name), |(known, _)| known.eq_ignore_ascii_case(name))?;
+        Some((*id, self.types.get(usize::from(*id))?.1))
+    }
+
+    /// The name of a defined type as the schema spells it.
+    pub fn type_name(&self, id: TypeId) -> Option<&'static str> {
+        self.types.get(usize::from(id)).map(|(name, _)| *name)
+    }
+
+    /// How many defined types the schema has; numbers from here on are free for unknown ones.
+    pub fn types(&self) -> usize {
+        self.types.len()
     }
 
     /// The entity; `None` for the number of an entity that the schema does not know.
@@ -120,8 +133,10 @@ impl Schema {
     pub fn inverse(&self, class: ClassId, name: &str) -> Option<&Inverse> {
         let known = self.class(class);
         let stand_ins = ["IfcElement", "IfcSpatialElement"].iter().filter_map(|name| self.class(self.find(name)?));
-        let asked: Vec<&Class> = if let Some(known) = known { vec![known] } else { stand_ins.collect() };
-        asked.into_iter().flat_map(|class| &class.inverses).find(|inverse| inverse.name == name)
+        match known {
+            Some(known) => known.inverses.iter().find(|inverse| inverse.name == name),
+            None => stand_ins.flat_map(|class| &class.inverses).find(|inverse| inverse.name == name),
+        }
     }
 
     /// How many entities the schema has; numbers from here on are free for unknown ones.
@@ -131,29 +146,32 @@ impl Schema {
 
     /// Whether `class` is `ancestor` or a subtype of it.
     pub fn is_subtype(&self, class: ClassId, ancestor: ClassId) -> bool {
-        let mut at = Some(class);
-        while let Some(here) = at {
-            if here == ancestor {
-                return true;
-            }
-            at = self.class(here).and_then(|c| c.parent);
-        }
-        false
+        let line = |class| self.class(class).map(|c| &c.line);
+        class == ancestor
+            || line(ancestor).is_some_and(|of| line(class).and_then(|line| line.get(of.len() - 1)) == Some(&ancestor))
     }
 
     /// Reads the table; its own head says how it is written. The table is part of the program, so a line that
     /// breaks the format is an error of the program and panics.
     fn parse(name: &'static str, text: &'static str) -> Self {
-        let mut schema = Self { name, classes: Vec::new(), by_name: HashMap::new(), types: HashMap::new() };
+        let mut schema = Self {
+            name,
+            classes: Vec::new(),
+            by_name: HashTable::new(),
+            types: Vec::new(),
+            types_by_name: HashTable::new(),
+        };
         let lines = || text.lines().filter(|line| !line.starts_with('#') && !line.is_empty());
         let entities = || lines().filter(|line| !line.starts_with('='));
         for (number, line) in entities().enumerate() {
             let name = line.trim_start_matches('*').split([' ', '<']).next().unwrap_or_default();
-            schema.by_name.insert(name.to_ascii_uppercase(), number as ClassId);
+            schema.by_name.insert_unique(hash(name), (name, number as ClassId), |(name, _)| hash(name));
         }
         for line in lines().filter_map(|line| line.strip_prefix('=')) {
             let (name, kind) = line.split_once(':').expect("a defined type and its kind");
-            schema.types.insert(name.to_ascii_uppercase(), (name.into(), schema.kind(kind)));
+            let id = schema.types.len() as TypeId;
+            schema.types_by_name.insert_unique(hash(name), (name, id), |(name, _)| hash(name));
+            schema.types.push((name, schema.kind(kind)));
         }
         for line in entities() {
             let class = schema.entity(line);
@@ -166,10 +184,11 @@ impl Schema {
         let (head, items) = line.split_once(' ').unwrap_or((line, ""));
         let (name, parent) = head.split_once('<').map_or((head, None), |(name, parent)| (name, Some(parent)));
         let parent = parent.map(|parent| self.find(parent).expect("a supertype that the table has"));
-        let (mut attributes, mut inverses) = match parent.and_then(|id| self.class(id)) {
-            Some(parent) => (parent.attributes.clone(), parent.inverses.clone()),
+        let (mut attributes, mut inverses, mut line) = match parent.and_then(|id| self.class(id)) {
+            Some(parent) => (parent.attributes.clone(), parent.inverses.clone(), parent.line.clone()),
             None => Default::default(),
         };
+        line.push(self.classes.len() as ClassId);
         for item in items.split_ascii_whitespace() {
             if let Some(name) = item.strip_prefix('-') {
                 attributes.iter_mut().filter(|a| a.name == name).for_each(|a| a.derived = true);
@@ -183,7 +202,7 @@ impl Schema {
                 attributes.push(Attribute { name, kind: self.kind(kind), derived: false });
             }
         }
-        Class { name: name.trim_start_matches('*'), parent, is_abstract: name.starts_with('*'), attributes, inverses }
+        Class { name: name.trim_start_matches('*'), line, is_abstract: name.starts_with('*'), attributes, inverses }
     }
 
     fn kind(&self, code: &str) -> Kind {
@@ -206,10 +225,10 @@ impl Schema {
     }
 }
 
-/// In upper case; without a copy where it is already, as in nearly every STEP file.
-fn upper(name: &str) -> Cow<'_, str> {
-    match name.bytes().any(|b| b.is_ascii_lowercase()) {
-        true => name.to_ascii_uppercase().into(),
-        false => name.into(),
-    }
+/// A quick hash of a name in whatever case; the names that are looked for are few and not the file's.
+fn hash(name: &str) -> u64 {
+    let mixed = name.bytes().fold(name.len() as u64, |hash, byte| {
+        (hash.rotate_left(5) ^ u64::from(byte | 0x20)).wrapping_mul(0x9E37_79B9_7F4A_7C15) // 2^64 / golden ratio
+    });
+    mixed ^ mixed >> 32
 }

@@ -26,6 +26,7 @@ use catalogue::Catalogue;
 use load::{EMBEDDED, RuleFile};
 use steel::Steel;
 use vocabulary::Vocabulary;
+pub use vocabulary::Words;
 
 /// Everything under `rules/`.
 #[derive(Clone, Debug)]
@@ -222,17 +223,22 @@ impl Rulebook {
     /// Whether a word (a property's name, a column's heading) stands for a concept, without regard to case, spaces,
     /// punctuation and diacritics. Concepts: the keys of `vocabulary.toml`; any other has no words.
     pub fn means(&self, concept: &str, word: &str) -> bool {
-        self.vocabulary.means(concept, word)
+        self.vocabulary.read(word).means(concept)
     }
 
     /// Whether a text (a part's name) holds a word of a concept as a word of its own: "M20 anchor bolt" an "anchor".
     pub fn says(&self, concept: &str, text: &str) -> bool {
-        self.vocabulary.says(concept, text)
+        self.vocabulary.read(text).says(concept)
     }
 
     /// Whether a text is nothing but words of some concepts, and numbers: "Fillet weld 12".
     pub fn says_only(&self, concepts: &[&str], text: &str) -> bool {
-        self.vocabulary.says_only(concepts, text)
+        self.vocabulary.read(text).says_only(concepts)
+    }
+
+    /// What a text says, to be asked for many concepts.
+    pub fn words_of(&self, text: &str) -> Words {
+        self.vocabulary.read(text)
     }
 
     /// The words of a concept, normalised and sorted.

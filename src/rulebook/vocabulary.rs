@@ -48,12 +48,48 @@ const JOINED: usize = 3;
 #[derive(Clone, Debug)]
 pub(super) struct Vocabulary {
     words: BTreeMap<String, BTreeSet<String>>,
+    /// The concepts of each word, a bit each in the order of [`CONCEPTS`]. Only looked up, never walked.
+    concepts: BTreeMap<String, u32>,
+}
+
+/// What a text says by the words of the vocabulary: looked up once, it can be asked for every concept.
+#[derive(Clone, Debug)]
+pub struct Words {
+    /// Concepts that the text as a whole is a word of.
+    means: u32,
+    /// Concepts of which it holds a word.
+    says: u32,
+    /// Concepts of each of its words.
+    each: Vec<u32>,
+}
+
+impl Words {
+    /// Like [`Rulebook::means`](super::Rulebook::means).
+    pub fn means(&self, concept: &str) -> bool {
+        self.means & bit(concept) != 0
+    }
+
+    /// Like [`Rulebook::says`](super::Rulebook::says).
+    pub fn says(&self, concept: &str) -> bool {
+        self.says & bit(concept) != 0
+    }
+
+    /// Like [`Rulebook::says_only`](super::Rulebook::says_only).
+    pub fn says_only(&self, concepts: &[&str]) -> bool {
+        let wanted = concepts.iter().fold(0, |all, concept| all | bit(concept));
+        !self.each.is_empty() && self.each.iter().all(|word| word & wanted != 0)
+    }
+}
+
+/// The bit of a concept; none for what is no concept.
+fn bit(concept: &str) -> u32 {
+    CONCEPTS.iter().position(|known| *known == concept).map_or(0, |index| 1 << index)
 }
 
 impl Vocabulary {
     /// Reads the program's own words.
     pub fn load(file: RuleFile<'_>) -> Result<Self, RuleError> {
-        let mut all = Self { words: BTreeMap::new() };
+        let mut all = Self { words: BTreeMap::new(), concepts: BTreeMap::new() };
         all.add(file)?;
         match CONCEPTS.iter().find(|concept| !all.words.contains_key(**concept)) {
             Some(concept) => Err(RuleError::new(
@@ -74,40 +110,33 @@ impl Vocabulary {
                 let message = format!("\"{}\" is no concept; allowed is {}", concept.get_ref(), CONCEPTS.join(", "));
                 return Err(file.error(&concept, message));
             }
+            let bit = bit(concept.get_ref());
             let set = self.words.entry(concept.into_inner()).or_default();
             for word in &list {
                 let plain = normalise(word.get_ref());
                 if plain.is_empty() {
                     return Err(file.error(word, "a word without letters or digits; at least one is needed"));
                 }
+                *self.concepts.entry(plain.clone()).or_default() |= bit;
                 set.insert(plain);
             }
         }
         Ok(())
     }
 
-    pub fn means(&self, concept: &str, word: &str) -> bool {
-        self.words.get(concept).is_some_and(|words| words.contains(&normalise(word)))
-    }
-
-    /// Whether a text holds a word of a concept, or several in a row that are one: "M20 anchor bolt".
-    pub fn says(&self, concept: &str, text: &str) -> bool {
-        let Some(known) = self.words.get(concept) else { return false };
+    /// What a text says, several words in a row that are one included: "M20 anchor bolt".
+    pub fn read(&self, text: &str) -> Words {
+        let of = |word: &str| self.concepts.get(word).copied().unwrap_or_default();
         let tokens = tokens(text);
-        (0..tokens.len()).any(|start| {
+        let mut says = 0;
+        for start in 0..tokens.len() {
             let mut joined = String::new();
-            tokens.iter().skip(start).take(JOINED).any(|token| {
+            for token in tokens.iter().skip(start).take(JOINED) {
                 joined.push_str(token);
-                known.contains(&joined)
-            })
-        })
-    }
-
-    /// Whether a text is nothing but words of some concepts, and numbers.
-    pub fn says_only(&self, concepts: &[&str], text: &str) -> bool {
-        let sets: Vec<_> = concepts.iter().filter_map(|concept| self.words.get(*concept)).collect();
-        let tokens = tokens(text);
-        !tokens.is_empty() && tokens.iter().all(|token| sets.iter().any(|words| words.contains(token)))
+                says |= of(&joined);
+            }
+        }
+        Words { means: of(&normalise(text)), says, each: tokens.iter().map(|token| of(token)).collect() }
     }
 
     pub fn words(&self, concept: &str) -> impl Iterator<Item = &str> {
@@ -117,11 +146,14 @@ impl Vocabulary {
 
 /// Lower case letters and digits, without diacritics.
 fn normalise(word: &str) -> String {
+    if word.is_ascii() {
+        return word.chars().filter(char::is_ascii_alphanumeric).map(|c| c.to_ascii_lowercase()).collect();
+    }
     word.nfkd().filter(|c| c.is_alphanumeric() && !is_combining_mark(*c)).flat_map(char::to_lowercase).collect()
 }
 
 /// The words of a text, normalised; numbers and signs part them.
 fn tokens(text: &str) -> Vec<String> {
-    let words = text.split(|c: char| !(c.is_alphabetic() || is_combining_mark(c)));
+    let words = text.split(|c: char| !(c.is_alphabetic() || (!c.is_ascii() && is_combining_mark(c))));
     words.map(normalise).filter(|word| !word.is_empty()).collect()
 }

@@ -3,7 +3,6 @@
 use glam::DVec3;
 
 use super::Bolt;
-use super::bolt_name::size_in;
 use super::material::said_by;
 use super::properties::{Plausible, Property};
 use super::reading::Reading;
@@ -64,9 +63,10 @@ impl<'a> Reading<'a> {
         if shanks.len() < clusters.len() || !shanks.iter().all(|(_, s)| bolt(s.start.distance(s.end), s.diameter)) {
             return None;
         }
-        let named = self.names_of(element).into_iter().filter_map(|(_, text)| size_in(text));
+        let named = self.names_of(element);
+        let named = named.iter().filter_map(|(_, text)| self.text(text).size());
         let drawn = shanks.first().map_or(0.0, |(_, shank)| shank.diameter);
-        let by_name = named.into_iter().any(|(d, _)| (d - drawn).abs() <= 0.1 * d);
+        let by_name = { named }.any(|(d, _)| (d - drawn).abs() <= 0.1 * d);
         let headed = shanks.iter().all(|(cluster, shank)| cluster.headed(shank));
         Some(if by_name || headed { Says::Bolt } else { Says::Shape })
     }
@@ -117,9 +117,7 @@ impl<'a> Reading<'a> {
         let hole = self.hole(element, &properties);
         let slot = self.slot(element, &properties);
         self.count(element, &properties, shanks.len());
-        let counted = |concept: &str| {
-            properties.iter().any(|p| self.rulebook.means(concept, p.name) && p.count().is_some_and(|n| n > 0.0))
-        };
+        let counted = |concept: &str| properties.iter().any(|p| p.means(concept) && p.count().is_some_and(|n| n > 0.0));
         let said = counted("nut-count") || counted("washer-count");
         let mut bolts = Vec::new();
         for (cluster, shank) in shanks {
@@ -168,10 +166,10 @@ impl<'a> Reading<'a> {
     fn diameters(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Vec<Statement<f64>> {
         let mut all = self.attribute_lengths(element, "NominalDiameter");
         all.extend(self.property_lengths(element, properties, Plausible(5.0, 100.0), |p| {
-            p.name == "NominalDiameter" || p.name == "ThreadDiameter" || self.rulebook.means("bolt-diameter", p.name)
+            p.name == "NominalDiameter" || p.name == "ThreadDiameter" || p.means("bolt-diameter")
         }));
-        for (by, text) in self.names_of(element) {
-            all.extend(size_in(text).map(|(d, _)| Statement {
+        for (by, text) in self.names_of(element).iter() {
+            all.extend(self.text(text).size().map(|(d, _)| Statement {
                 value: d,
                 by: format!("{by} \"{text}\""),
                 at: element.place(),
@@ -238,10 +236,10 @@ impl<'a> Reading<'a> {
     fn length(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Known<Length> {
         let mut all = self.attribute_lengths(element, "NominalLength");
         all.extend(self.property_lengths(element, properties, Plausible(10.0, 3000.0), |p| {
-            p.name == "NominalLength" || self.rulebook.means("bolt-length", p.name)
+            p.name == "NominalLength" || p.means("bolt-length")
         }));
-        for (by, text) in self.names_of(element) {
-            let length = size_in(text).and_then(|(_, length)| length);
+        for (by, text) in self.names_of(element).iter() {
+            let length = self.text(text).size().and_then(|(_, length)| length);
             all.extend(length.map(|value| Statement { value, by: format!("{by} \"{text}\""), at: element.place() }));
         }
         let missing = |reason: String| Missing {
@@ -263,22 +261,22 @@ impl<'a> Reading<'a> {
     }
 
     /// The strength class: materials, names and properties are all asked; two that disagree are none.
-    fn class(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Known<String> {
+    fn class(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Known<String> {
         let mut texts = self.material_texts(element);
-        texts.extend(first_text(self.names_of(element), element));
-        texts.extend(properties.iter().filter(|p| self.rulebook.means("bolt-class", p.name)).filter_map(said_by));
-        if let Some(said) = texts.iter().find(|said| self.rulebook.says("countersunk", &said.text)) {
+        texts.extend(first_text(&self.names_of(element), element));
+        texts.extend(properties.iter().filter(|p| p.means("bolt-class")).filter_map(said_by));
+        if let Some(said) = texts.iter().find(|said| self.says("countersunk", &said.text)) {
             return Err(Missing {
                 what: COUNTERSUNK.into(),
                 reason: format!(
                     "{} \"{}\" calls them so; their tension resistance (k2 = 0.63, Table 3.4) is not assessed yet",
                     said.by, said.text
                 ),
-                at: Some(said.at.clone()),
+                at: Some(said.at.place()),
                 ask: Ask::Method,
             });
         }
-        let mut found = texts.iter().filter_map(|said| Some((said, self.rulebook.class_in(&said.text)?)));
+        let mut found = texts.iter().filter_map(|said| Some((said, self.text(&said.text).class()?)));
         let missing = |reason: String| Missing {
             what: "bolt class".into(),
             reason,
@@ -295,13 +293,11 @@ impl<'a> Reading<'a> {
             )));
         }
         let by = format!("{} \"{}\" of the {}", witness.by, witness.text, self.fastener(element));
-        Ok(Datum::new(class, Origin::Modelled { by, at: Some(witness.at.clone()) }))
+        Ok(Datum::new(class, Origin::Modelled { by, at: Some(witness.at.place()) }))
     }
 
     fn hole(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Option<Length> {
-        let all = self.property_lengths(element, properties, Plausible(5.0, 130.0), |p| {
-            self.rulebook.means("hole-diameter", p.name)
-        });
+        let all = self.property_lengths(element, properties, Plausible(5.0, 130.0), |p| p.means("hole-diameter"));
         let first = all.first()?;
         if let Some(other) = all.iter().find(|s| !((s.value - first.value).abs() <= 0.1)) {
             self.problem(
@@ -317,15 +313,13 @@ impl<'a> Reading<'a> {
     }
     /// The length of slotted holes; of two that differ the longer one counts.
     fn slot(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Option<Length> {
-        let all = self.property_lengths(element, properties, Plausible(1.0, 500.0), |p| {
-            self.rulebook.means("slot-length", p.name)
-        });
+        let all = self.property_lengths(element, properties, Plausible(1.0, 500.0), |p| p.means("slot-length"));
         all.iter().map(|s| s.value).max_by(f64::total_cmp).map(mm)
     }
 
     /// Says where a property counts other bolts than are drawn.
     fn count(&self, element: Entity<'a>, properties: &[Property<'_>], drawn: usize) {
-        for property in properties.iter().filter(|p| self.rulebook.means("bolt-count", p.name)) {
+        for property in properties.iter().filter(|p| p.means("bolt-count")) {
             let Some(said) = property.count().filter(|n| *n > 0.0 && *n != drawn as f64) else { continue };
             self.problem(
                 element,

@@ -6,7 +6,7 @@ use glam::DVec2;
 
 use super::outline::{FACETS, Loop};
 use super::reading::Reading;
-use crate::exchange::{Entity, Value};
+use crate::exchange::{Entity, View};
 
 /// Composite curves nest; deeper than this is no outline.
 const DEPTH: usize = 2;
@@ -65,7 +65,7 @@ impl Reading<'_> {
         let trim = |attribute: &str| -> Result<(Option<DVec2>, Option<f64>), String> {
             let point = curve.entities(attribute).into_iter().find(|e| e.is_a("IfcCartesianPoint"));
             let parameter = match curve.value(attribute) {
-                Value::List(items) => items.iter().find_map(Value::number),
+                View::List(items) => items.iter().find_map(View::number),
                 value => value.number(),
             };
             Ok((point.map(|p| self.point(Some(p))).transpose()?.map(|p| p.truncate()), parameter))
@@ -100,25 +100,22 @@ impl Reading<'_> {
 
     fn indexed_points(&self, curve: Entity<'_>) -> Result<Vec<DVec2>, String> {
         let wrong = || format!("its outline has an IfcIndexedPolyCurve at {} that can't be followed", curve.place());
-        let Some(Value::List(rows)) = curve.entity("Points").map(|list| list.value("CoordList")) else {
+        let Some(rows) = curve.entity("Points").and_then(|list| list.value("CoordList").list()) else {
             return Err(wrong());
         };
-        let point = |row: &Value| match row {
-            Value::List(xy) => match xy.as_slice() {
-                [x, y, ..] => Some(DVec2::new(x.number()?, y.number()?) * self.units.length),
-                _ => None,
-            },
-            _ => None,
+        let point = |row: View| {
+            let xy = row.list()?;
+            Some(DVec2::new(xy.get(0)?.number()?, xy.get(1)?.number()?) * self.units.length)
         };
         let points: Vec<DVec2> = rows.iter().map(point).collect::<Option<_>>().ok_or_else(wrong)?;
-        let Value::List(segments) = curve.value("Segments") else { return Ok(points) };
+        let Some(segments) = curve.value("Segments").list() else { return Ok(points) };
         let mut out = Vec::new();
-        for segment in segments {
-            let Value::Typed(of, indices) = segment else { return Err(wrong()) };
-            let Value::List(indices) = &**indices else { return Err(wrong()) };
-            let corner = |index: &Value| points.get((index.number()? as usize).checked_sub(1)?).copied();
+        for segment in segments.iter() {
+            let View::Typed(of, indices) = segment else { return Err(wrong()) };
+            let Some(indices) = indices.view().list() else { return Err(wrong()) };
+            let corner = |index: View| points.get((index.number()? as usize).checked_sub(1)?).copied();
             let corners: Vec<DVec2> = indices.iter().map(corner).collect::<Option<_>>().ok_or_else(wrong)?;
-            match (&**of, corners.as_slice()) {
+            match (of, corners.as_slice()) {
                 ("IfcLineIndex", _) => out.extend(corners),
                 ("IfcArcIndex", [a, b, c]) => out.extend(arc_through(*a, *b, *c)),
                 _ => return Err(wrong()),

@@ -9,7 +9,7 @@ use super::outline::FACETS;
 use super::polyhedron::Asked;
 use super::reading::Reading;
 use super::solid::{Cut, Solid};
-use crate::exchange::{Entity, Value};
+use crate::exchange::{Entity, View};
 
 /// An edge of a curved face: its points, and the circle it runs on.
 struct Edge {
@@ -133,39 +133,36 @@ impl<'a> Reading<'a> {
 
     fn tessellation(&self, item: Entity<'a>, builder: &mut Builder) -> Result<(), String> {
         let wrong = || format!("its body has an {} at {} that can't be followed", item.class(), item.place());
-        let Some(Value::List(rows)) = item.entity("Coordinates").map(|list| list.value("CoordList")) else {
+        let Some(rows) = item.entity("Coordinates").and_then(|list| list.value("CoordList").list()) else {
             return Err(wrong());
         };
         if rows.len() > POINTS {
             return Err(format!("its body has more than {POINTS} points"));
         }
         let mut points = Vec::with_capacity(rows.len());
-        for row in rows {
-            let Value::List(xyz) = row else { return Err(wrong()) };
-            let [x, y, z] = xyz.as_slice() else { return Err(wrong()) };
-            let (Some(x), Some(y), Some(z)) = (x.number(), y.number(), z.number()) else { return Err(wrong()) };
+        for row in rows.iter() {
+            let xyz = row.list().filter(|xyz| xyz.len() == 3).ok_or_else(wrong)?;
+            let at = |axis| xyz.get(axis).and_then(View::number).ok_or_else(wrong);
+            let (x, y, z) = (at(0)?, at(1)?, at(2)?);
             points.push(builder.point(DVec3::new(x, y, z) * self.units.length)?);
         }
         // Indices count from 1; where PnIndex is given they count in it.
         let renamed = item.numbers("PnIndex").filter(|all| !all.is_empty());
-        let nth = |index: &Value| -> Option<u32> {
+        let nth = |index: View| -> Option<u32> {
             let at = (index.number()? as usize).checked_sub(1)?;
             let at = renamed.as_ref().map_or(Some(at), |all| (*all.get(at)? as usize).checked_sub(1))?;
             points.get(at).copied()
         };
-        let corners = |list: &Value| -> Option<Vec<u32>> {
-            let Value::List(list) = list else { return None };
-            list.iter().map(nth).collect()
-        };
-        if let Value::List(triangles) = item.value("CoordIndex") {
-            for triangle in triangles {
+        let corners = |list: View| -> Option<Vec<u32>> { list.list()?.iter().map(nth).collect() };
+        if let Some(triangles) = item.value("CoordIndex").list() {
+            for triangle in triangles.iter() {
                 builder.face(vec![corners(triangle).ok_or_else(wrong)?])?;
             }
         }
         for face in item.entities("Faces") {
             let mut loops = vec![corners(face.value("CoordIndex")).ok_or_else(wrong)?];
-            if let Value::List(inner) = face.value("InnerCoordIndices") {
-                for hole in inner {
+            if let Some(inner) = face.value("InnerCoordIndices").list() {
+                for hole in inner.iter() {
                     loops.push(corners(hole).ok_or_else(wrong)?);
                 }
             }

@@ -1,20 +1,22 @@
 //! Materials of a part and the steel grade that they name.
 
+use std::borrow::Cow;
+
 use super::profile::Profile;
-use super::properties::Property;
+use super::properties::{By, Property};
 use super::reading::Reading;
 use crate::exchange::Entity;
-use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::Grade;
 
 /// Sets and usages of materials nest; deeper than this is none.
 const DEPTH: usize = 5;
 
 /// A text about a part's material, with what holds it.
-pub(super) struct Said {
-    pub by: String,
-    pub text: String,
-    pub at: Place,
+pub(super) struct Said<'a> {
+    pub by: By<'a>,
+    pub text: Cow<'a, str>,
+    pub at: Entity<'a>,
 }
 
 impl<'a> Reading<'a> {
@@ -62,13 +64,19 @@ impl<'a> Reading<'a> {
     }
 
     /// What a part's materials are called.
-    pub fn material_texts(&self, element: Entity<'a>) -> Vec<Said> {
+    pub fn material_texts(&self, element: Entity<'a>) -> Vec<Said<'a>> {
         let mut texts = Vec::new();
         for material in self.materials(element) {
-            for attribute in ["Name", "Category", "Description"] {
-                let by =
-                    if attribute == "Name" { "material".to_owned() } else { format!("{attribute} of the material") };
-                texts.extend(material.text(attribute).map(|t| Said { by, text: t.to_owned(), at: material.place() }));
+            for (attribute, by) in [
+                ("Name", "material"),
+                ("Category", "Category of the material"),
+                ("Description", "Description of the material"),
+            ] {
+                texts.extend(material.text(attribute).map(|t| Said {
+                    by: By::Words(by),
+                    text: t.into(),
+                    at: material,
+                }));
             }
         }
         texts
@@ -86,7 +94,7 @@ impl<'a> Reading<'a> {
             })
         };
         let mut texts = self.material_texts(element).into_iter();
-        texts.find(|said| self.rulebook.says("no-steel", &said.text) || concrete(&said.text)).map(|said| said.text)
+        texts.find(|said| self.says("no-steel", &said.text) || concrete(&said.text)).map(|said| said.text.into_owned())
     }
 
     /// The steel grade of a part, from its materials and its properties; never from other parts.
@@ -98,12 +106,12 @@ impl<'a> Reading<'a> {
             ask: Ask::Fabricator,
         };
         let mut said = self.material_texts(element);
-        let states = |p: &&Property<'_>| p.name == "StructuralGrade" || self.rulebook.means("grade", p.name);
+        let states = |p: &&Property<'_>| p.name == "StructuralGrade" || p.means("grade");
         for material in self.materials(element) {
             said.extend(self.properties_of_material(material).iter().filter(states).filter_map(said_by));
         }
         said.extend(self.properties_of(element).iter().filter(states).filter_map(said_by));
-        let mut found = said.iter().filter_map(|s| Some((s, self.rulebook.grade(&s.text)?)));
+        let mut found = said.iter().filter_map(|s| Some((s, self.text(&s.text).grade()?)));
         let Some((witness, grade)) = found.next() else {
             let texts: Vec<String> = said.iter().map(|s| format!("{} \"{}\"", s.by, s.text)).collect();
             return Err(missing(if texts.is_empty() {
@@ -119,12 +127,12 @@ impl<'a> Reading<'a> {
             )));
         }
         let by = format!("{} \"{}\"", witness.by, witness.text);
-        Ok(Datum::new(grade, Origin::Modelled { by, at: Some(witness.at.clone()) }))
+        Ok(Datum::new(grade, Origin::Modelled { by, at: Some(witness.at.place()) }))
     }
 }
 
-pub(super) fn said_by(property: &Property<'_>) -> Option<Said> {
-    Some(Said { by: property.by(), text: property.text()?, at: property.place.clone() })
+pub(super) fn said_by<'a>(property: &Property<'a>) -> Option<Said<'a>> {
+    Some(Said { by: property.by(), text: property.text()?, at: property.entity })
 }
 
 /// Walks down a material definition.

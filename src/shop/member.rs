@@ -119,8 +119,9 @@ impl<'a> Reading<'a> {
 
     /// A sentence where a part with the shape of a member is called a plate and nothing else.
     fn called_a_plate(&self, element: Entity<'a>) -> Option<String> {
-        let plate = |text: &str| self.rulebook.says_only(&["plate", "stiffener"], text);
-        let (by, text) = self.names_of(element).into_iter().find(|(_, text)| plate(text))?;
+        let plate = |text: &str| self.text(text).words().says_only(&["plate", "stiffener"]);
+        let names = self.names_of(element);
+        let (by, text) = names.iter().find(|(_, text)| plate(text))?;
         Some(format!("{by} calls it \"{text}\" but it has the shape of a member"))
     }
 }

@@ -124,12 +124,15 @@ impl Loop {
     pub fn least_box(&self, x: DVec2) -> Box2 {
         let area = |b: &Box2| b.size.x * b.size.y;
         let own = self.box_along(x);
+        if self.circle.is_some() {
+            return own;
+        }
         let mut edges: Vec<DVec2> = neighbours(&self.points).map(|(before, at, _)| at - before).collect();
         edges.sort_by(|a, b| b.length_squared().total_cmp(&a.length_squared()));
         let directions = edges.into_iter().take(EDGES).filter_map(DVec2::try_normalize);
         let least = directions.map(|edge| self.box_along(edge)).min_by(|a, b| area(a).total_cmp(&area(b)));
         match least {
-            Some(least) if self.circle.is_none() && area(&least) < 0.999 * area(&own) => least,
+            Some(least) if area(&least) < 0.999 * area(&own) => least,
             _ => own,
         }
     }

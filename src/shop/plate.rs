@@ -198,7 +198,7 @@ impl<'a> Reading<'a> {
     fn sizes_in(&self, text: &str) -> Option<Vec<f64>> {
         let text = text.trim();
         let prefix = text.split(|c: char| !c.is_alphabetic()).next().unwrap_or_default();
-        if !(prefix.is_empty() || self.rulebook.means("plate", prefix)) {
+        if !(prefix.is_empty() || self.means("plate", prefix)) {
             return None;
         }
         let numbers: Option<Vec<f64>> =
@@ -208,8 +208,8 @@ impl<'a> Reading<'a> {
 
     /// A sentence where a plate is named by a section.
     fn called_a_section(&self, element: Entity<'a>) -> Option<String> {
-        self.names_of(element).into_iter().find_map(|(by, text)| {
-            let section = self.rulebook.section(text)?;
+        self.names_of(element).iter().find_map(|(by, text)| {
+            let section = self.text(text).section()?;
             // A longer name may say what the plate belongs to.
             let alone = text.trim().chars().count() <= section.designation.chars().count() + 2;
             alone.then(|| {
@@ -220,7 +220,7 @@ impl<'a> Reading<'a> {
 
     /// A sentence where a name like `PL15*200` states a size that the plate does not have.
     fn named_otherwise(&self, element: Entity<'a>, sizes: [f64; 3]) -> Option<String> {
-        self.names_of(element).into_iter().find_map(|(by, text)| {
+        self.names_of(element).iter().find_map(|(by, text)| {
             let named = self.sizes_in(text)?;
             let has = |wanted: &f64| sizes.iter().any(|size| (size - wanted).abs() <= NAMED);
             // The thickness must be among them; a further number may be the length before cutting.

@@ -1,9 +1,13 @@
 //! Properties and quantities of a part, and the lengths they state.
 
+use std::borrow::Cow;
+use std::fmt;
+use std::rc::Rc;
+
 use super::reading::Reading;
+use super::text::Text;
 use super::units::length_unit;
-use crate::exchange::{Entity, Value};
-use crate::origin::Place;
+use crate::exchange::{Entity, View};
 
 /// Complex properties nest; deeper than this nobody looks.
 const DEPTH: usize = 4;
@@ -16,13 +20,36 @@ pub(super) struct Property<'a> {
     pub set: &'a str,
     /// Its own name.
     pub name: &'a str,
-    value: &'a Value,
+    value: View<'a>,
     /// mm per unit, where it overrides the project's unit.
     unit: Option<f64>,
     /// Whether the part's type holds it.
     pub of_type: bool,
-    /// Where it stands.
-    pub place: Place,
+    /// Itself.
+    pub entity: Entity<'a>,
+    /// Its name, to be asked.
+    words: Rc<Text<'a>>,
+}
+
+/// What holds a text, for people.
+#[derive(Clone, Copy, Debug)]
+pub(super) enum By<'a> {
+    /// An attribute.
+    Words(&'static str),
+    /// A property.
+    Property { set: &'a str, name: &'a str, of_type: bool },
+}
+
+impl fmt::Display for By<'_> {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        match self {
+            Self::Words(words) => f.write_str(words),
+            Self::Property { set, name, of_type } => {
+                let of_type = if *of_type { " of the type" } else { "" };
+                write!(f, "property \"{name}\" in \"{set}\"{of_type}")
+            }
+        }
+    }
 }
 
 /// Sizes that are plausible for what a property says, mm: they decide how a number without a unit is read.
@@ -31,15 +58,26 @@ pub(super) struct Plausible(pub f64, pub f64);
 
 impl<'a> Reading<'a> {
     /// A part's own properties, then those of its type that the part does not override.
-    pub fn properties_of(&self, element: Entity<'_>) -> Vec<Property<'a>> {
+    pub fn properties_of(&self, element: Entity<'_>) -> Rc<Vec<Property<'a>>> {
+        if let Some((id, known)) = &*self.last_properties.borrow()
+            && *id == element.id
+        {
+            return known.clone();
+        }
+        let properties = Rc::new(self.collect_properties(element));
+        *self.last_properties.borrow_mut() = Some((element.id, properties.clone()));
+        properties
+    }
+
+    fn collect_properties(&self, element: Entity<'_>) -> Vec<Property<'a>> {
         let mut properties = Vec::new();
         for set in self.property_sets_of(element) {
-            collect(set, false, &mut properties);
+            self.collect(set, false, &mut properties);
         }
         if let Some(of_type) = self.type_of(element) {
             let mut inherited = Vec::new();
             for set in of_type.entities("HasPropertySets") {
-                collect(set, true, &mut inherited);
+                self.collect(set, true, &mut inherited);
             }
             inherited.retain(|p| !properties.iter().any(|own| own.set == p.set && own.name == p.name));
             properties.append(&mut inherited);
@@ -51,7 +89,7 @@ impl<'a> Reading<'a> {
     pub fn properties_of_material(&self, material: Entity<'_>) -> Vec<Property<'a>> {
         let mut properties = Vec::new();
         for set in self.material_properties_of(material) {
-            collect(set, false, &mut properties);
+            self.collect(set, false, &mut properties);
         }
         properties
     }
@@ -59,8 +97,8 @@ impl<'a> Reading<'a> {
     /// What a property means as a length in mm, and a word on how it was read; an error if it is a number that can
     /// be read in two ways or in none, `None` if it is not a number at all. Zero stays zero.
     pub fn length_of(&self, property: &Property<'_>, plausible: Plausible) -> Option<Result<(f64, String), String>> {
-        let by = property.by();
         let (number, is_length) = property.number()?;
+        let by = property.by();
         if !number.is_finite() {
             return Some(Err(format!("{by} is no finite number")));
         }
@@ -70,12 +108,12 @@ impl<'a> Reading<'a> {
         let as_project = number * property.unit.unwrap_or(self.units.length);
         // A plain number has no unit. Where the project counts in mm both readings are one.
         if property.unit.is_some() || is_length || (self.units.length - 1.0).abs() < 1e-9 {
-            return Some(if sane(as_project) { Ok((as_project, by)) } else { strange(as_project) });
+            return Some(if sane(as_project) { Ok((as_project, by.to_string())) } else { strange(as_project) });
         }
         Some(match (sane(as_project), sane(number)) {
-            (true, false) => Ok((as_project, by)),
+            (true, false) => Ok((as_project, by.to_string())),
             (false, true) => Ok((number, format!("{by}, a number without unit read as mm"))),
-            (true, true) if number == 0.0 => Ok((0.0, by)),
+            (true, true) if number == 0.0 => Ok((0.0, by.to_string())),
             (true, true) => {
                 Err(format!("{by} is {number} without a unit: it could be mm or the project's length unit"))
             }
@@ -84,15 +122,19 @@ impl<'a> Reading<'a> {
     }
 }
 
-impl Property<'_> {
+impl<'a> Property<'a> {
     /// How a report names it.
-    pub fn by(&self) -> String {
-        let of_type = if self.of_type { " of the type" } else { "" };
-        format!("property \"{}\" in \"{}\"{of_type}", self.name, self.set)
+    pub fn by(&self) -> By<'a> {
+        By::Property { set: self.set, name: self.name, of_type: self.of_type }
+    }
+
+    /// Whether its name stands for a concept of the vocabulary.
+    pub fn means(&self, concept: &str) -> bool {
+        self.words.words().means(concept)
     }
 
     /// Its value as text, trimmed, if there is any.
-    pub fn text(&self) -> Option<String> {
+    pub fn text(&self) -> Option<Cow<'a, str>> {
         text(self.value).filter(|t| !t.is_empty())
     }
 
@@ -104,24 +146,24 @@ impl Property<'_> {
     /// Its value as a number, and whether the exchange says that it is a length in the project's unit.
     fn number(&self) -> Option<(f64, bool)> {
         match self.value {
-            Value::Typed(of, inner) if of.ends_with("LengthMeasure") => inner.number().map(|n| (n, true)),
+            View::Typed(of, inner) if of.ends_with("LengthMeasure") => inner.view().number().map(|n| (n, true)),
             value => value.number().map(|n| (n, false)).or_else(|| Some((number_in(&text(value)?)?, false))),
         }
     }
 }
 
-fn text(value: &Value) -> Option<String> {
+fn text(value: View<'_>) -> Option<Cow<'_, str>> {
     match value {
-        Value::Text(text) => Some(text.trim().to_owned()),
-        Value::Token(token) => Some(token.to_string()),
-        Value::Number(number) => Some(number.to_string()),
-        Value::Integer(number) => Some(number.to_string()),
-        Value::Typed(_, inner) => match &**inner {
-            Value::Typed(..) => None,
+        View::Text(text) => Some(text.trim().into()),
+        View::Token(token) => Some(token.into()),
+        View::Number(number) => Some(number.to_string().into()),
+        View::Integer(number) => Some(number.to_string().into()),
+        View::Typed(_, inner) => match inner.view() {
+            View::Typed(..) => None,
             inner => text(inner),
         },
-        Value::List(items) if items.len() == 1 => items.first().and_then(|item| match item {
-            Value::List(_) => None,
+        View::List(items) if items.len() == 1 => items.get(0).and_then(|item| match item {
+            View::List(_) => None,
             item => text(item),
         }),
         _ => None,
@@ -135,37 +177,39 @@ fn number_in(text: &str) -> Option<f64> {
     bare.parse().ok()
 }
 
-fn collect<'a>(set: Entity<'a>, of_type: bool, into: &mut Vec<Property<'a>>) {
-    let name = set.text("Name").unwrap_or_default();
-    let mut budget = PROPERTIES;
-    for list in ["HasProperties", "Properties", "Quantities"] {
-        for property in set.entities(list) {
-            flatten(name, property, of_type, 0, &mut budget, into);
+impl<'a> Reading<'a> {
+    fn collect(&self, set: Entity<'a>, of_type: bool, into: &mut Vec<Property<'a>>) {
+        let name = set.text("Name").unwrap_or_default();
+        let mut budget = PROPERTIES;
+        for list in ["HasProperties", "Properties", "Quantities"] {
+            for property in set.entities(list) {
+                self.flatten((name, of_type), property, 0, &mut budget, into);
+            }
         }
     }
-}
 
-fn flatten<'a>(
-    set: &'a str,
-    property: Entity<'a>,
-    of_type: bool,
-    depth: usize,
-    budget: &mut usize,
-    into: &mut Vec<Property<'a>>,
-) {
-    let Some(left) = budget.checked_sub(1) else { return };
-    *budget = left;
-    for inner in property.entities("HasProperties") {
-        if depth < DEPTH {
-            flatten(set, inner, of_type, depth + 1, budget, into);
+    fn flatten(
+        &self,
+        (set, of_type): (&'a str, bool),
+        property: Entity<'a>,
+        depth: usize,
+        budget: &mut usize,
+        into: &mut Vec<Property<'a>>,
+    ) {
+        let Some(left) = budget.checked_sub(1) else { return };
+        *budget = left;
+        for inner in property.entities("HasProperties") {
+            if depth < DEPTH {
+                self.flatten((set, of_type), inner, depth + 1, budget, into);
+            }
         }
-    }
-    let value = ["NominalValue", "EnumerationValues", "SetPointValue", "LengthValue", "CountValue"]
-        .into_iter()
-        .map(|attribute| property.value(attribute))
-        .find(|value| !matches!(value, Value::Absent));
-    if let (Some(value), Some(name)) = (value, property.text("Name")) {
-        let unit = property.entity("Unit").and_then(length_unit);
-        into.push(Property { set, name, value, unit, of_type, place: property.place() });
+        let value = ["NominalValue", "EnumerationValues", "SetPointValue", "LengthValue", "CountValue"]
+            .into_iter()
+            .map(|attribute| property.value(attribute))
+            .find(|value| !value.is_absent());
+        if let (Some(value), Some(name)) = (value, property.text("Name")) {
+            let unit = property.entity("Unit").and_then(length_unit);
+            into.push(Property { set, name, value, unit, of_type, entity: property, words: self.text(name) });
+        }
     }
 }

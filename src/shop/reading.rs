@@ -1,145 +1,145 @@
 //! What the takers of parts share: the graph, the units, who is related to whom, and the problems met on the way.
 
-use std::cell::{Cell, RefCell};
-use std::collections::BTreeMap;
+use std::cell::RefCell;
+use std::collections::HashMap;
 use std::rc::Rc;
+use std::sync::Arc;
 
 use glam::DAffine3;
 
 use super::Identity;
+use super::links::{Link, Links};
+use super::properties::Property;
 use super::solid::Solid;
+use super::text::Text;
 use super::units::Units;
-use crate::exchange::{Entities, Entity, Exchange, Id, Value};
+use crate::exchange::{Entities, Entity, Exchange, Id};
 use crate::origin::Problem;
 use crate::rulebook::Rulebook;
 
-/// One reading of an exchange.
+/// The names of a part with what bears them.
+pub(super) type Names<'a> = Rc<Vec<(&'static str, &'a str)>>;
+
+/// One reading of an exchange, or of some of its elements. Its maps are only looked up, never walked.
 pub(super) struct Reading<'a> {
     pub entities: &'a Entities,
     pub rulebook: &'a Rulebook,
     pub units: Units,
-    /// Property sets of an object by relation.
-    property_sets: BTreeMap<Id, Vec<Id>>,
-    /// Type of an occurrence.
-    types: BTreeMap<Id, Id>,
-    /// Material definitions of an object.
-    materials: BTreeMap<Id, Vec<Id>>,
-    /// Property sets of a material.
-    material_properties: BTreeMap<Id, Vec<Id>>,
-    /// Openings and other subtractions of an element.
-    voids: BTreeMap<Id, Vec<Id>>,
-    /// Parts of a whole.
-    parts: BTreeMap<Id, Vec<Id>>,
+    pub links: Arc<Links>,
     /// World placements that were already computed.
-    pub placements: RefCell<BTreeMap<Id, DAffine3>>,
+    pub placements: RefCell<HashMap<Id, DAffine3>>,
     /// Solids of items that more than one part may use.
-    pub solids_of: RefCell<BTreeMap<Id, Rc<Vec<Solid>>>>,
-    /// How many more solids are read: maps and unions can multiply them.
-    left: Cell<usize>,
+    pub solids_of: RefCell<HashMap<Id, Rc<Vec<Solid>>>>,
+    /// Texts that were already looked up.
+    pub texts: RefCell<HashMap<Box<str>, Rc<Text<'a>>>>,
+    /// The properties of the part that was asked last, and its names: they are asked for again and again.
+    pub last_properties: RefCell<Option<(Id, Rc<Vec<Property<'a>>>)>>,
+    last_names: RefCell<Option<(Id, Names<'a>)>>,
     problems: RefCell<Vec<Problem>>,
 }
 
-/// Solids that are read of any exchange, and of each entity besides: more is an attack by maps of maps.
-const SOLIDS: (usize, usize) = (1_000_000, 16);
+/// What threads share of a reading.
+#[derive(Clone)]
+pub(super) struct Common<'a> {
+    pub entities: &'a Entities,
+    pub rulebook: &'a Rulebook,
+    pub units: Units,
+    pub links: Arc<Links>,
+}
 
-impl<'a> Reading<'a> {
-    pub fn new(exchange: &'a Exchange, rulebook: &'a Rulebook) -> Self {
-        let mut problems = Vec::new();
-        let units = Units::read(exchange, &mut problems);
+impl<'a> Common<'a> {
+    /// Of an exchange; what is wrong with its units goes into the problems.
+    pub fn of(exchange: &'a Exchange, rulebook: &'a Rulebook, problems: &mut Vec<Problem>) -> Self {
         let entities = &exchange.entities;
-        let mut material_properties: BTreeMap<Id, Vec<Id>> = BTreeMap::new();
-        for set in entities.of_class("IfcMaterialProperties") {
-            if let Some(material) = set.entity("Material") {
-                material_properties.entry(material.id).or_default().push(set.id);
-            }
-        }
-        let types = related(entities, "IfcRelDefinesByType", "RelatedObjects", "RelatingType");
-        Self {
-            entities,
-            rulebook,
-            units,
-            property_sets: related(
-                entities,
-                "IfcRelDefinesByProperties",
-                "RelatedObjects",
-                "RelatingPropertyDefinition",
-            ),
-            types: types.into_iter().filter_map(|(id, of)| Some((id, *of.first()?))).collect(),
-            materials: related(entities, "IfcRelAssociatesMaterial", "RelatedObjects", "RelatingMaterial"),
-            material_properties,
-            voids: related(entities, "IfcRelVoidsElement", "RelatingBuildingElement", "RelatedOpeningElement"),
-            parts: related(entities, "IfcRelAggregates", "RelatingObject", "RelatedObjects"),
-            placements: RefCell::default(),
-            solids_of: RefCell::default(),
-            left: Cell::new(SOLIDS.0 + SOLIDS.1 * entities.len()),
-            problems: RefCell::new(problems),
-        }
+        Self { entities, rulebook, units: Units::read(exchange, problems), links: Arc::new(Links::of(entities)) }
     }
 
+    /// A reading that shares it.
+    pub fn reading(&self) -> Reading<'a> {
+        Reading {
+            entities: self.entities,
+            rulebook: self.rulebook,
+            units: self.units,
+            links: self.links.clone(),
+            placements: RefCell::default(),
+            solids_of: RefCell::default(),
+            texts: RefCell::default(),
+            last_properties: RefCell::default(),
+            last_names: RefCell::default(),
+            problems: RefCell::default(),
+        }
+    }
+}
+
+impl<'a> Reading<'a> {
     /// Notes what could not be understood.
     pub fn problem(&self, at: Entity<'_>, message: impl Into<String>) {
         self.problems.borrow_mut().push(Problem { at: Some(at.place()), message: message.into() });
     }
 
-    /// All problems in file order, each once.
+    /// All problems, as they were met.
     pub fn into_problems(self) -> Vec<Problem> {
-        let mut problems = self.problems.into_inner();
-        problems.sort();
-        problems.dedup();
-        problems
+        self.problems.into_inner()
     }
 
     /// Takes some solids off what may still be read; false once too many were asked for.
     pub fn spend(&self, solids: usize) -> bool {
-        let left = self.left.get().checked_sub(solids);
-        self.left.set(left.unwrap_or(0));
-        left.is_some()
+        self.links.spend(solids)
     }
 
     pub fn type_of(&self, object: Entity<'_>) -> Option<Entity<'a>> {
-        self.types.get(&object.id).map(|id| self.entities.get(*id))
+        self.links.types.of(object.id).next().map(|id| self.entities.get(id))
     }
 
     pub fn property_sets_of(&self, object: Entity<'_>) -> Vec<Entity<'a>> {
-        self.several(&self.property_sets, object)
+        self.several(&self.links.property_sets, object)
     }
 
     /// The object's own material definitions, else those of its type.
     pub fn materials_of(&self, object: Entity<'_>) -> Vec<Entity<'a>> {
-        let own = self.several(&self.materials, object);
+        let own = self.several(&self.links.materials, object);
         match self.type_of(object) {
-            Some(of_type) if own.is_empty() => self.several(&self.materials, of_type),
+            Some(of_type) if own.is_empty() => self.several(&self.links.materials, of_type),
             _ => own,
         }
     }
 
     pub fn material_properties_of(&self, material: Entity<'_>) -> Vec<Entity<'a>> {
-        self.several(&self.material_properties, material)
+        self.several(&self.links.material_properties, material)
     }
 
     pub fn voids_of(&self, element: Entity<'_>) -> Vec<Entity<'a>> {
-        self.several(&self.voids, element)
+        self.several(&self.links.voids, element)
     }
 
     pub fn parts_of(&self, whole: Entity<'_>) -> Vec<Entity<'a>> {
-        self.several(&self.parts, whole)
+        self.several(&self.links.parts, whole)
     }
 
-    fn several(&self, of: &BTreeMap<Id, Vec<Id>>, key: Entity<'_>) -> Vec<Entity<'a>> {
-        of.get(&key.id).into_iter().flatten().map(|id| self.entities.get(*id)).collect()
+    fn several(&self, link: &Link, key: Entity<'_>) -> Vec<Entity<'a>> {
+        link.of(key.id).map(|id| self.entities.get(id)).collect()
     }
 
     /// The names that a part bears, with what bears them; the part's own first.
-    pub fn names_of(&self, element: Entity<'_>) -> Vec<(String, &'a str)> {
-        let element = self.entities.get(element.id);
-        let own = ["Name", "ObjectType", "Description"].map(|attribute| (attribute.to_owned(), element, attribute));
+    pub fn names_of(&self, element: Entity<'_>) -> Names<'a> {
+        if let Some((id, known)) = &*self.last_names.borrow()
+            && *id == element.id
+        {
+            return known.clone();
+        }
+        let own = self.entities.get(element.id);
+        let of_own = ["Name", "ObjectType", "Description"].map(|attribute| (attribute, own.text(attribute)));
         let of_type = self.type_of(element).into_iter().flat_map(|t| {
-            ["Name", "ElementType", "Description"].map(|attribute| (format!("{attribute} of its type"), t, attribute))
+            [
+                ("Name of its type", t.text("Name")),
+                ("ElementType of its type", t.text("ElementType")),
+                ("Description of its type", t.text("Description")),
+            ]
         });
-        own.into_iter()
-            .chain(of_type)
-            .filter_map(|(by, entity, attribute)| Some((by, entity.text(attribute)?)))
-            .collect()
+        let names: Names<'a> =
+            Rc::new(of_own.into_iter().chain(of_type).filter_map(|(by, text)| Some((by, text?))).collect());
+        *self.last_names.borrow_mut() = Some((element.id, names.clone()));
+        names
     }
 
     /// `PredefinedType` of the part, or of its type where the part leaves it open.
@@ -152,10 +152,8 @@ impl<'a> Reading<'a> {
     pub fn identity(&self, element: Entity<'_>) -> Identity {
         let mark = element.text("Tag").map(str::to_owned).or_else(|| {
             let properties = self.properties_of(element);
-            let marks = |p: &&super::properties::Property<'_>| {
-                self.rulebook.means("mark", p.name) || (p.name == "Reference" && p.set.starts_with("Pset_"))
-            };
-            properties.iter().filter(|p| !p.of_type).find(marks).and_then(|p| p.text())
+            let marks = |p: &&Property<'_>| p.means("mark") || (p.name == "Reference" && p.set.starts_with("Pset_"));
+            properties.iter().filter(|p| !p.of_type).find(marks).and_then(|p| p.text()).map(|text| text.into_owned())
         });
         Identity {
             guid: element.text("GlobalId").unwrap_or_default().to_owned(),
@@ -164,33 +162,5 @@ impl<'a> Reading<'a> {
             mark,
             place: element.place(),
         }
-    }
-}
-
-/// From each entity of `from` to those of `to`, over all relations of one class, in file order.
-fn related(entities: &Entities, class: &str, from: &str, to: &str) -> BTreeMap<Id, Vec<Id>> {
-    let mut all: BTreeMap<Id, Vec<Id>> = BTreeMap::new();
-    for relation in entities.of_class(class) {
-        let targets = ids(relation.value(to));
-        for source in ids(relation.value(from)) {
-            all.entry(source).or_default().extend(&targets);
-        }
-    }
-    all
-}
-
-/// The entities of a value: one, a list, or a list in a defined type (`IfcPropertySetDefinitionSet`).
-fn ids(value: &Value) -> Vec<Id> {
-    let listed =
-        |list: &[Value]| list.iter().filter_map(|v| if let Value::Entity(id) = v { Some(*id) } else { None }).collect();
-    match value {
-        Value::Entity(id) => vec![*id],
-        Value::List(list) => listed(list),
-        Value::Typed(_, inner) => match &**inner {
-            Value::Entity(id) => vec![*id],
-            Value::List(list) => listed(list),
-            _ => Vec::new(),
-        },
-        _ => Vec::new(),
     }
 }

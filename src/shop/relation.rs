@@ -37,7 +37,8 @@ impl<'a> Reading<'a> {
     /// Relations that say which parts are connected, and by what.
     pub fn told(&self, parts: &BTreeMap<Id, Vec<Part>>) -> Vec<Told> {
         let mut all = Vec::new();
-        for relation in self.entities.of_class("IfcRelConnectsElements") {
+        for id in &self.links.connections {
+            let relation = self.entities.get(*id);
             if relation.is_a("IfcRelConnectsPathElements") {
                 continue;
             }

@@ -97,7 +97,7 @@ impl<'a> Reading<'a> {
         };
         let mut found: Vec<(String, &Section)> = Vec::new();
         for (by, text) in self.section_names(element, profile) {
-            if let Some(section) = self.rulebook.section(&text) {
+            if let Some(section) = self.text(&text).section() {
                 found.push((format!("{by} \"{text}\""), section));
             }
         }
@@ -234,10 +234,12 @@ impl<'a> Reading<'a> {
         let mut names: Vec<(String, String)> =
             profile.name.iter().map(|name| ("profile name".to_owned(), name.clone())).collect();
         names.extend(self.profile_set_names(element));
-        names.extend(self.names_of(element).into_iter().map(|(by, text)| (by, text.to_owned())));
+        names.extend(self.names_of(element).iter().map(|(by, text)| ((*by).to_owned(), (*text).to_owned())));
         let properties = self.properties_of(element);
-        let sections = |p: &&Property<'_>| self.rulebook.means("section", p.name);
-        names.extend(properties.iter().filter(sections).filter_map(|p| Some((p.by(), p.text()?))));
+        let sections = |p: &&Property<'_>| p.means("section");
+        names.extend(
+            properties.iter().filter(sections).filter_map(|p| Some((p.by().to_string(), p.text()?.into_owned()))),
+        );
         names
     }
 }

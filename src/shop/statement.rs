@@ -1,7 +1,7 @@
 //! What attributes and properties state of a length, with the words that held it.
 
 use super::material::Said;
-use super::properties::{Plausible, Property};
+use super::properties::{By, Plausible, Property};
 use super::reading::Reading;
 use crate::exchange::Entity;
 use crate::origin::{Origin, Place};
@@ -45,7 +45,7 @@ impl<'a> Reading<'a> {
         let mut all = Vec::new();
         for property in properties.iter().filter(|p| wanted(p)) {
             match self.length_of(property, plausible) {
-                Some(Ok((value, by))) if value > 0.0 => all.push(Statement { value, by, at: property.place.clone() }),
+                Some(Ok((value, by))) if value > 0.0 => all.push(Statement { value, by, at: property.entity.place() }),
                 Some(Err(reason)) => self.problem(element, format!("{reason}; it is not taken.")),
                 _ => {}
             }
@@ -55,6 +55,6 @@ impl<'a> Reading<'a> {
 }
 
 /// Names as texts about a part.
-pub(super) fn first_text(names: Vec<(String, &str)>, element: Entity<'_>) -> Vec<Said> {
-    names.into_iter().map(|(by, text)| Said { by, text: text.to_owned(), at: element.place() }).collect()
+pub(super) fn first_text<'a>(names: &[(&'static str, &'a str)], element: Entity<'a>) -> Vec<Said<'a>> {
+    names.iter().map(|(by, text)| Said { by: By::Words(by), text: (*text).into(), at: element }).collect()
 }

@@ -9,7 +9,7 @@ use super::placement::direction;
 use super::profile::{Kind, Profile};
 use super::reading::Reading;
 use super::solid::{Prism, Solid};
-use crate::exchange::{Entity, Value};
+use crate::exchange::{Entity, View};
 
 /// Curves of curves nest; deeper than this is none.
 const DEPTH: usize = 4;
@@ -201,14 +201,11 @@ impl<'a> Reading<'a> {
         match curve.class() {
             "IfcPolyline" => all(curve.entities("Points")),
             "IfcIndexedPolyCurve" => {
-                let Some(Value::List(rows)) = curve.entity("Points").map(|list| list.value("CoordList")) else {
+                let Some(rows) = curve.entity("Points").and_then(|list| list.value("CoordList").list()) else {
                     return Err(unread());
                 };
-                let point = |row: &Value| match row {
-                    Value::List(xyz) => match xyz.as_slice() {
-                        [x, y, z] => Some(DVec3::new(x.number()?, y.number()?, z.number()?) * self.units.length),
-                        _ => None,
-                    },
+                let point = |row: View| match row.list()?.numbers()?.as_slice() {
+                    [x, y, z] => Some(DVec3::new(*x, *y, *z) * self.units.length),
                     _ => None,
                 };
                 let points: Option<Vec<DVec3>> = rows.iter().map(point).collect();
@@ -230,7 +227,7 @@ impl<'a> Reading<'a> {
                 let trim = |name: &str| {
                     let point = curve.entities(name).into_iter().find(|e| e.is_a("IfcCartesianPoint"));
                     let parameter = match curve.value(name) {
-                        Value::List(items) => items.iter().find_map(Value::number),
+                        View::List(items) => items.iter().find_map(View::number),
                         value => value.number(),
                     };
                     (point, parameter)

@@ -3,20 +3,22 @@
 use std::collections::BTreeMap;
 
 use glam::DVec3;
+use rayon::prelude::*;
 
 use super::bolt::Says;
 use super::hardware::{Hardware, Lines};
 use super::member::LONG;
 use super::plate::{flat, too_thick};
 use super::profile::Kind;
-use super::reading::Reading;
+use super::reading::{Common, Reading};
 use super::section::see;
 use super::several::SOLIDS;
 use super::shank::{SMALL, round, small_part};
 use super::solid::Prism;
 use super::words::Word;
-use super::{Part, Rejected, Shape, Steelwork};
+use super::{Bolt, Part, Rejected, Shape, Steelwork};
 use crate::exchange::{Entity, Exchange, Id};
+use crate::origin::Problem;
 use crate::rulebook::Rulebook;
 
 /// Coordinates beyond this lose digits in what follows and get a local origin, mm.
@@ -57,32 +59,42 @@ enum Found {
     Hardware(Word, Vec<Prism>),
 }
 
+/// So many elements are taken up by one thread in a go: they share what they have in common.
+const GO: usize = 2048;
+
+/// What came of some elements.
+#[derive(Default)]
+struct Taken<'a> {
+    steelwork: Steelwork,
+    parts: Vec<(Id, Vec<Part>)>,
+    wholes: Vec<Entity<'a>>,
+    bolts: Vec<(Entity<'a>, Says, Vec<Prism>)>,
+    hardware: Vec<Hardware>,
+}
+
 /// Takes up the steelwork of an exchange. Every element ends as a part, a piece, an opening or a rejection.
 pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
-    let reading = Reading::new(exchange, rulebook);
-    let mut steelwork = Steelwork::default();
+    let mut problems = Vec::new();
+    let common = Common::of(exchange, rulebook, &mut problems);
+    let elements = &common.links.elements;
+    let mut taken: Vec<Taken<'_>> = elements.par_chunks(GO).map(|some| Taken::of(&common, some)).collect();
+    if common.links.spent() && elements.len() > GO {
+        // Each go reads shared bodies for itself. Which elements get no more must not depend on who came first.
+        common.links.refill(common.entities);
+        taken = vec![Taken::of(&common, elements)];
+    }
+    let mut steelwork = Steelwork { problems, ..Steelwork::default() };
     let mut parts: BTreeMap<Id, Vec<Part>> = BTreeMap::new();
     let (mut wholes, mut bolts, mut hardware) = (Vec::new(), Vec::new(), Vec::new());
-    for element in exchange.entities.of_class("IfcElement") {
-        if element.is_a("IfcFeatureElementSubtraction") {
-            continue; // taken with the element that it voids
-        }
-        let whole = !reading.parts_of(element).is_empty();
-        if element.is_a("IfcElementAssembly") || (whole && element.entity("Representation").is_none()) {
-            wholes.push(element);
-            continue;
-        }
-        if whole {
-            wholes.push(element);
-        }
-        match reading.take(element, &mut steelwork) {
-            Ok(Found::Parts(taken)) => _ = parts.insert(element.id, taken),
-            Ok(Found::Bolt(says, prisms)) => bolts.push((element, says, prisms)),
-            Ok(Found::Hardware(what, prisms)) => hardware.extend(reading.hardware(element, what, &prisms)),
-            Err(reason) => steelwork.rejected.push(Rejected { identity: reading.identity(element), reason }),
-        }
+    for some in taken {
+        let moved = steelwork.append(some.steelwork);
+        parts.extend(some.parts.into_iter().map(|(id, of)| (id, of.into_iter().map(&moved).collect())));
+        wholes.extend(some.wholes);
+        bolts.extend(some.bolts);
+        hardware.extend(some.hardware);
     }
-    reading.tell_bolts(bolts, hardware, &mut steelwork, &mut parts);
+    tell_bolts(&common, bolts, hardware, &mut steelwork, &mut parts);
+    let reading = common.reading();
     for whole in wholes {
         match reading.piece(whole, &parts) {
             Some(piece) => steelwork.pieces.push(piece),
@@ -96,9 +108,97 @@ pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
     steelwork.told = reading.told(&parts);
     // Rejected assemblies and fasteners were met last; places put them back into the order of the file.
     steelwork.rejected.sort_by(|a, b| a.identity.place.cmp(&b.identity.place));
-    steelwork.problems = reading.into_problems();
+    steelwork.problems.extend(reading.into_problems());
+    steelwork.problems.sort();
+    steelwork.problems.dedup();
     steelwork.shift();
     steelwork
+}
+
+impl<'a> Taken<'a> {
+    fn of(common: &Common<'a>, elements: &[Id]) -> Self {
+        let reading = common.reading();
+        let mut all = Self::default();
+        for id in elements {
+            let element = common.entities.get(*id);
+            if element.is_a("IfcFeatureElementSubtraction") {
+                continue; // taken with the element that it voids
+            }
+            let whole = !reading.parts_of(element).is_empty();
+            if element.is_a("IfcElementAssembly") || (whole && element.entity("Representation").is_none()) {
+                all.wholes.push(element);
+                continue;
+            }
+            if whole {
+                all.wholes.push(element);
+            }
+            match reading.take(element, &mut all.steelwork) {
+                Ok(Found::Parts(taken)) => all.parts.push((element.id, taken)),
+                Ok(Found::Bolt(says, prisms)) => all.bolts.push((element, says, prisms)),
+                Ok(Found::Hardware(what, prisms)) => all.hardware.extend(reading.hardware(element, what, &prisms)),
+                Err(reason) => {
+                    all.steelwork.rejected.push(Rejected { identity: reading.identity(element), reason });
+                }
+            }
+        }
+        all.steelwork.problems = reading.into_problems();
+        all
+    }
+}
+
+/// Decides on bolts, with the nuts and washers that lie apart from them as evidence.
+fn tell_bolts<'a>(
+    common: &Common<'a>,
+    bolts: Vec<(Entity<'a>, Says, Vec<Prism>)>,
+    hardware: Vec<Hardware>,
+    steelwork: &mut Steelwork,
+    parts: &mut BTreeMap<Id, Vec<Part>>,
+) {
+    let tolerances = &common.rulebook.tolerances;
+    let (aside, straight) = (2.0 * tolerances.position.get(), tolerances.angle.to_radians().sin());
+    let mut nuts = Lines::default();
+    for piece in &hardware {
+        nuts.put(piece.at, piece.at + piece.axis);
+    }
+    // A nut sits at an end or within: the shank is asked at short steps.
+    let nutted = |from: DVec3, to: DVec3| {
+        let axis = (to - from).normalize_or_zero();
+        let steps = (from.distance(to) / 50.0).ceil().clamp(1.0, 64.0);
+        (0..=steps as usize).any(|i| nuts.hold(from.lerp(to, i as f64 / steps), axis, aside, straight))
+    };
+    type Told = Result<Vec<Bolt>, Box<Rejected>>;
+    let told: Vec<(Vec<Told>, Vec<Problem>)> = bolts
+        .par_chunks(GO)
+        .map(|some| {
+            let reading = common.reading();
+            let tell = |(element, says, prisms): &(Entity<'a>, Says, Vec<Prism>)| {
+                let all: Vec<&Prism> = prisms.iter().collect();
+                let bolts = reading.bolts(*element, *says, &all, nutted);
+                bolts.map_err(|reason| Box::new(Rejected { identity: reading.identity(*element), reason }))
+            };
+            (some.iter().map(tell).collect(), reading.into_problems())
+        })
+        .collect();
+    let mut shanks = Lines::default();
+    let (found, problems): (Vec<_>, Vec<_>) = told.into_iter().unzip();
+    steelwork.problems.extend(problems.into_iter().flatten());
+    for ((element, ..), found) in bolts.iter().zip(found.into_iter().flatten()) {
+        match found {
+            Ok(found) => {
+                let first = steelwork.bolts.len();
+                found.iter().for_each(|bolt| shanks.put(bolt.start, bolt.end));
+                steelwork.bolts.extend(found);
+                parts.insert(element.id, (first..steelwork.bolts.len()).map(Part::Bolt).collect());
+            }
+            Err(rejected) => steelwork.rejected.push(*rejected),
+        }
+    }
+    for mut piece in hardware {
+        let held = shanks.hold(piece.at, piece.axis, aside, straight);
+        let what = if piece.what == Word::Nut { "nut or bolt head" } else { "washer" };
+        piece.rejected.reason = if held { what.to_owned() } else { format!("{what} on whose axis no bolt was found") };
+        steelwork.rejected.push(piece.rejected);
+    }
 }
 
 impl<'a> Reading<'a> {
@@ -186,49 +286,6 @@ impl<'a> Reading<'a> {
         self.clusters(&all).iter().filter_map(|cluster| cluster.first()).map(one).collect()
     }
 
-    /// Decides on bolts, with the nuts and washers that lie apart from them as evidence.
-    fn tell_bolts(
-        &self,
-        bolts: Vec<(Entity<'a>, Says, Vec<Prism>)>,
-        hardware: Vec<Hardware>,
-        steelwork: &mut Steelwork,
-        parts: &mut BTreeMap<Id, Vec<Part>>,
-    ) {
-        let (aside, straight) = (2.0 * self.rulebook.tolerances.position.get(), self.straight());
-        let mut nuts = Lines::default();
-        for piece in &hardware {
-            nuts.put(piece.at, piece.at + piece.axis);
-        }
-        let mut shanks = Lines::default();
-        for (element, says, prisms) in bolts {
-            let all: Vec<&Prism> = prisms.iter().collect();
-            // A nut sits at an end or within: the shank is asked at short steps.
-            let nutted = |from: DVec3, to: DVec3| {
-                let axis = (to - from).normalize_or_zero();
-                let steps = (from.distance(to) / 50.0).ceil().clamp(1.0, 64.0);
-                (0..=steps as usize).any(|i| nuts.hold(from.lerp(to, i as f64 / steps), axis, aside, straight))
-            };
-            match self.bolts(element, says, &all, nutted) {
-                Ok(found) => {
-                    let first = steelwork.bolts.len();
-                    found.iter().for_each(|bolt| shanks.put(bolt.start, bolt.end));
-                    steelwork.bolts.extend(found);
-                    parts.insert(element.id, (first..steelwork.bolts.len()).map(Part::Bolt).collect());
-                }
-                Err(reason) => {
-                    steelwork.rejected.push(Rejected { identity: self.identity(element), reason });
-                }
-            }
-        }
-        for mut piece in hardware {
-            let held = shanks.hold(piece.at, piece.axis, aside, straight);
-            let what = if piece.what == Word::Nut { "nut or bolt head" } else { "washer" };
-            piece.rejected.reason =
-                if held { what.to_owned() } else { format!("{what} on whose axis no bolt was found") };
-            steelwork.rejected.push(piece.rejected);
-        }
-    }
-
     /// Plates or a member, by shape.
     fn by_shape(&self, element: Entity<'a>, prisms: &[&Prism], steelwork: &mut Steelwork) -> Result<Vec<Part>, String> {
         let Some(main) = prisms.iter().max_by(|a, b| a.bulk().total_cmp(&b.bulk())) else {
@@ -265,6 +322,24 @@ impl<'a> Reading<'a> {
 }
 
 impl Steelwork {
+    /// Takes up what another holds of members, plates, welds, rejections and problems; says which part is which then.
+    fn append(&mut self, mut other: Self) -> impl Fn(Part) -> Part + use<> {
+        let (members, plates, bolts, welds) =
+            (self.members.len(), self.plates.len(), self.bolts.len(), self.welds.len());
+        self.members.append(&mut other.members);
+        self.plates.append(&mut other.plates);
+        self.bolts.append(&mut other.bolts);
+        self.welds.append(&mut other.welds);
+        self.rejected.append(&mut other.rejected);
+        self.problems.append(&mut other.problems);
+        move |part| match part {
+            Part::Member(i) => Part::Member(members + i),
+            Part::Plate(i) => Part::Plate(plates + i),
+            Part::Bolt(i) => Part::Bolt(bolts + i),
+            Part::Weld(i) => Part::Weld(welds + i),
+        }
+    }
+
     /// Says of parts that some of their solids can't be read: a member is not assessed then.
     fn is_partly_read(&mut self, parts: &[Part], reason: &str, count: usize) {
         let sentence = format!("{count} of its solids can't be read ({reason})");

@@ -1,6 +1,6 @@
 //! The project's units, as factors to mm and radians.
 
-use crate::exchange::{Entity, Exchange, Value};
+use crate::exchange::{Entity, Exchange, View};
 use crate::origin::Problem;
 
 /// Conversion-based units may stand on one another; deeper than this is no unit.
@@ -89,9 +89,9 @@ fn by_name(name: &str) -> Option<f64> {
 }
 
 /// SI prefixes of `IfcSIPrefix`; an unknown one is no unit.
-fn prefix(value: &Value) -> Option<f64> {
-    let Value::Token(prefix) = value else { return Some(1.0) };
-    Some(match &**prefix {
+fn prefix(value: View) -> Option<f64> {
+    let View::Token(prefix) = value else { return Some(1.0) };
+    Some(match prefix {
         "EXA" => 1e18,
         "PETA" => 1e15,
         "TERA" => 1e12,

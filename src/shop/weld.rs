@@ -32,7 +32,7 @@ impl<'a> Reading<'a> {
             return match self.predefined(element) {
                 Some("WELD") => true,
                 Some("GLUE" | "MORTAR") => false,
-                _ => has_set() || names.iter().any(|(_, text)| self.rulebook.says("weld", text)),
+                _ => has_set() || names.iter().any(|(_, text)| self.says("weld", text)),
             };
         }
         let may_be = element.is_a("IfcBuildingElementProxy") || element.is_a("IfcDiscreteAccessory");
@@ -41,7 +41,7 @@ impl<'a> Reading<'a> {
 
     /// Whether a text consists of nothing but words for a weld and numbers: "Fillet weld 12".
     fn only_weld(&self, text: &str) -> bool {
-        self.rulebook.says("weld", text) && self.rulebook.says_only(&["weld", "butt-weld", "fillet-weld"], text)
+        self.says("weld", text) && self.text(text).words().says_only(&["weld", "butt-weld", "fillet-weld"])
     }
 
     /// A weld.
@@ -62,12 +62,15 @@ impl<'a> Reading<'a> {
         // ISO 2553 names of butt preparations, besides the words.
         const BUTT: [&str; 12] = ["i", "v", "hv", "y", "hy", "u", "hu", "j", "x", "k", "dv", "dhv"];
         let seam = properties.iter().filter(|p| p.set == SET && p.name == "Type1").find_map(Property::text);
-        let names = self.names_of(element).into_iter().map(|(_, text)| text.to_owned());
-        for text in seam.iter().cloned().chain(names) {
-            if self.rulebook.says("fillet-weld", &text) {
+        let names = self.names_of(element);
+        let names = names.iter().map(|(_, text)| *text);
+        for text in seam.as_deref().into_iter().chain(names) {
+            let text = self.text(text);
+            let words = text.words();
+            if words.says("fillet-weld") {
                 return WeldSort::Fillet;
             }
-            if self.rulebook.says("butt-weld", &text) {
+            if words.says("butt-weld") {
                 return WeldSort::Butt;
             }
         }
@@ -89,7 +92,7 @@ impl<'a> Reading<'a> {
     ) -> Vec<Statement<f64>> {
         self.property_lengths(element, properties, plausible, |p| {
             let standard = p.set == SET && (p.name == letter || p.name == later);
-            standard || (p.set != SET && !concept.is_empty() && self.rulebook.means(concept, p.name))
+            standard || (p.set != SET && !concept.is_empty() && p.means(concept))
         })
     }
 

@@ -34,7 +34,9 @@ impl Word {
 impl<'a> Reading<'a> {
     /// What the first of its names that says anything calls a part.
     pub fn called(&self, element: Entity<'a>) -> Option<Word> {
-        let says = |text: &str, word: &Word| self.rulebook.says(word.concept(), text);
-        self.names_of(element).into_iter().find_map(|(_, text)| Word::ALL.into_iter().find(|word| says(text, word)))
+        self.names_of(element).iter().find_map(|(_, text)| {
+            let text = self.text(text);
+            Word::ALL.into_iter().find(|word| text.words().says(word.concept()))
+        })
     }
 }

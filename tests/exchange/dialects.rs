@@ -134,7 +134,7 @@ fn locations_of_a_load_are_rows() {
         let exchange = read_as(namespace, body);
         assert_eq!(exchange.problems, [], "{form}");
         let rows = [0.0, 6.0].map(|at| Value::List(vec![Value::Number(at)]));
-        assert_eq!(*labelled(&exchange, "s").value("Locations"), Value::List(rows.into()));
+        assert_eq!(labelled(&exchange, "s").value("Locations"), Value::List(rows.into()));
     }
 }
 

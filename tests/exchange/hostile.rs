@@ -100,11 +100,11 @@ fn elements() -> impl Strategy<Value = String> {
 }
 
 /// Whether every entity that a value points to is one of the graph.
-fn is_settled(value: &Value, exchange: &Exchange) -> bool {
+fn is_settled(value: View, exchange: &Exchange) -> bool {
     match value {
-        Value::Entity(id) => (id.0 as usize) < exchange.entities.len(),
-        Value::List(items) => items.iter().all(|item| is_settled(item, exchange)),
-        Value::Typed(_, inner) => is_settled(inner, exchange),
+        View::Entity(id) => (id.0 as usize) < exchange.entities.len(),
+        View::List(items) => items.iter().all(|item| is_settled(item, exchange)),
+        View::Typed(_, inner) => is_settled(inner.view(), exchange),
         _ => true,
     }
 }

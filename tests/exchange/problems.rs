@@ -155,8 +155,8 @@ fn the_rest_of_the_entity_survives() {
         "<IfcExtrudedAreaSolid id='s' Depth='NaN'><SweptArea xsi:type='IfcCircleProfileDef' Radius='12' ProfileName='&bad;'/><Position ref='no'/></IfcExtrudedAreaSolid>",
     );
     let solid = labelled(&exchange, "s");
-    assert_eq!(*solid.value("Depth"), Value::Absent);
-    assert_eq!(*solid.value("Position"), Value::Absent);
+    assert_eq!(solid.value("Depth"), Value::Absent);
+    assert_eq!(solid.value("Position"), Value::Absent);
     let profile = solid.entity("SweptArea").unwrap();
     assert_eq!((profile.number("Radius"), profile.text("ProfileName")), (Some(12.0), Some("&bad;")));
     assert_eq!(exchange.problems.len(), 3);

@@ -28,19 +28,19 @@ fn read_clean_records(records: &str) -> Exchange {
 
 /// The rooted entities, each written out up to the next rooted ones, which are named by their GlobalId.
 fn rooted(exchange: &Exchange) -> Vec<String> {
-    fn value(v: &Value, exchange: &Exchange) -> String {
+    fn value(v: View, exchange: &Exchange) -> String {
         match v {
-            Value::Entity(id) => {
-                let to = exchange.entities.get(*id);
+            View::Entity(id) => {
+                let to = exchange.entities.get(id);
                 to.text("GlobalId").map_or_else(|| attributes(to, exchange), |guid| format!("-> {guid}"))
             }
-            Value::List(items) => items.iter().map(|i| value(i, exchange) + " ").collect(),
-            Value::Typed(name, inner) => format!("{name}:{}", value(inner, exchange)),
+            View::List(items) => items.iter().map(|i| value(i, exchange) + " ").collect(),
+            View::Typed(name, inner) => format!("{name}:{}", value(inner.view(), exchange)),
             other => format!("{other:?}"),
         }
     }
     fn attributes(entity: Entity, exchange: &Exchange) -> String {
-        let given = entity.values().filter(|(_, v)| **v != Value::Absent);
+        let given = entity.values().filter(|(_, v)| !v.is_absent());
         let given: Vec<String> = given.map(|(name, v)| format!("{name}={}", value(v, exchange))).collect();
         format!("{}[{}]", entity.class(), given.join(", "))
     }

@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 use std::io::{Cursor, Write};
 
-use faying::exchange::{Entity, Exchange, Value, read};
+use faying::exchange::{Entity, Exchange, View, read};
 use faying::report::json;
 
 use super::{data, differences, reviewed, texts};
@@ -51,25 +51,25 @@ pub fn written(form: Form, zipped: bool) -> Vec<u8> {
 /// The rooted entities, each written out up to the next rooted ones, which are named by their GlobalId, and how many
 /// entities of each class there are. Lists of rooted entities are sets in all that is written here.
 fn graph(exchange: &Exchange) -> Vec<String> {
-    fn value(of: &Value, exchange: &Exchange) -> String {
+    fn value(of: View, exchange: &Exchange) -> String {
         match of {
-            Value::Entity(id) => {
-                let to = exchange.entities.get(*id);
+            View::Entity(id) => {
+                let to = exchange.entities.get(id);
                 to.text("GlobalId").map_or_else(|| attributes(to, exchange), |guid| format!("-> {guid}"))
             }
-            Value::List(items) => {
+            View::List(items) => {
                 let mut items: Vec<String> = items.iter().map(|item| value(item, exchange)).collect();
                 if items.iter().all(|item| item.starts_with("->")) {
                     items.sort();
                 }
                 items.join(" ")
             }
-            Value::Typed(name, inner) => format!("{name}:{}", value(inner, exchange)),
+            View::Typed(name, inner) => format!("{name}:{}", value(inner.view(), exchange)),
             other => format!("{other:?}"),
         }
     }
     fn attributes(entity: Entity, exchange: &Exchange) -> String {
-        let given = entity.values().filter(|(_, value)| **value != Value::Absent);
+        let given = entity.values().filter(|(_, value)| !value.is_absent());
         let given: Vec<String> = given.map(|(name, of)| format!("{name}={}", value(of, exchange))).collect();
         format!("{}[{}]", entity.class(), given.join(", "))
     }

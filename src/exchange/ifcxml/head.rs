@@ -6,58 +6,72 @@ use quick_xml::events::BytesStart;
 
 use super::super::problems::{Problems, Spot};
 
-/// One element's start.
+/// One element's start; all of it stands in the document, of which nothing is copied that has no escapes.
 #[derive(Default)]
-pub(super) struct Head<'a> {
+pub(super) struct Head<'x> {
     /// Local name.
-    pub name: Cow<'a, str>,
+    pub name: Cow<'x, str>,
     pub spot: Spot,
-    pub id: Option<Cow<'a, str>>,
+    pub id: Option<Cow<'x, str>>,
     /// Label of the entity it refers to, by `ref` or by `href` into the same document.
-    pub reference: Option<Cow<'a, str>>,
+    pub reference: Option<Cow<'x, str>>,
     /// What lies in another document.
-    pub elsewhere: Option<Cow<'a, str>>,
+    pub elsewhere: Option<Cow<'x, str>>,
     pub nil: bool,
     /// `xsi:type` without its prefix.
-    pub class: Option<Cow<'a, str>>,
+    pub class: Option<Cow<'x, str>>,
     pub pos: Option<Pos>,
-    /// The schema's attributes in the form of XML attributes.
-    pub rest: Vec<(Cow<'a, str>, Cow<'a, str>)>,
+    /// The schema's attributes in the form of XML attributes, the values as they are written.
+    pub rest: Vec<(Cow<'x, str>, &'x [u8])>,
 }
 
 /// Index in a list, and in the row of a list of lists.
 pub(super) type Pos = (u32, u32);
 
-impl<'a> Head<'a> {
-    /// Reads the start tag.
+impl<'x> Head<'x> {
+    /// Reads the start tag, which stands in `document`; `rest` is room to use.
     ///
     /// # Errors
     /// What is not well-formed about it.
-    pub fn read(start: &'a BytesStart<'_>, spot: Spot, problems: &mut Problems) -> Result<Self, String> {
-        let mut head = Self { name: local(start.name().as_ref(), spot, problems), spot, ..Self::default() };
+    pub fn read(
+        document: &'x [u8],
+        start: &BytesStart,
+        spot: Spot,
+        mut rest: Vec<(Cow<'x, str>, &'x [u8])>,
+        problems: &mut Problems,
+    ) -> Result<Self, String> {
+        let lasting = |piece: &[u8]| within(document, piece).ok_or_else(|| "it can't be followed".to_owned());
+        rest.clear();
+        let name = local(lasting(start.name().as_ref())?, spot, problems);
+        let mut head = Self { name, spot, rest, ..Self::default() };
         // repeated attributes are found where they are set: the library's own check takes quadratic time
         for attribute in start.attributes().with_checks(false) {
             let attribute = attribute.map_err(|e| e.to_string())?;
-            let key = attribute.key.as_ref();
-            if key == b"xmlns" || key.starts_with(b"xmlns:") || key.starts_with(b"xml:") {
+            let key = lasting(attribute.key.as_ref())?;
+            if key.starts_with(b"xml")
+                && (key.len() == 5 && key == b"xmlns" || matches!(&key[3..], [b'n', b's', b':', ..] | [b':', ..]))
+            {
                 continue;
             }
+            let raw = lasting(&attribute.value)?;
             let name = local(key, spot, problems);
-            let value = text(attribute.value, spot, problems);
             match &*name {
-                "id" => head.id = Some(value),
-                "ref" => head.reference = Some(value),
-                "href" => match value.strip_prefix('#') {
-                    Some(label) => head.reference = Some(label.to_owned().into()),
-                    None => head.elsewhere = Some(value),
+                "id" => head.id = Some(text(raw, spot, problems)),
+                "ref" => head.reference = Some(text(raw, spot, problems)),
+                "href" => match cut(text(raw, spot, problems), |href| href.strip_prefix('#')) {
+                    Ok(label) => head.reference = Some(label),
+                    Err(href) => head.elsewhere = Some(href),
                 },
-                "nil" => head.nil = matches!(value.trim(), "true" | "1"),
-                "type" => head.class = Some(value.rsplit(':').next().unwrap_or_default().trim().to_owned().into()),
-                "pos" => head.pos = head.position(&value, problems),
+                "nil" => head.nil = matches!(raw.trim_ascii(), b"true" | b"1"),
+                "type" => {
+                    let class = cut(text(raw, spot, problems), |class| class.rsplit(':').next().map(str::trim));
+                    head.class = Some(class.unwrap_or_else(|class| class));
+                }
+                "pos" => head.pos = head.position(&text(raw, spot, problems), problems),
                 // written for people and schema processors only
                 "cType" | "itemType" | "arraySize" | "path" | "extraBits" => {}
                 "schemaLocation" | "noNamespaceSchemaLocation" => {}
-                _ => head.rest.push((name, value)),
+                _ => head.rest.push((name, raw)),
             }
         }
         Ok(head)
@@ -84,20 +98,50 @@ impl<'a> Head<'a> {
     }
 }
 
-/// The name without its prefix.
-fn local<'a>(name: &[u8], spot: Spot, problems: &mut Problems) -> Cow<'a, str> {
-    let local = name.rsplit(|&b| b == b':').next().unwrap_or(name);
-    match String::from_utf8_lossy(local) {
-        Cow::Borrowed(name) => name.to_owned().into(),
-        Cow::Owned(name) => {
-            not_utf8(spot, problems);
-            name.into()
-        }
+/// The same bytes, seen as part of the document in which they lie: the library's events do not outlast themselves.
+pub(super) fn within<'x>(document: &'x [u8], piece: &[u8]) -> Option<&'x [u8]> {
+    let start = (piece.as_ptr() as usize).checked_sub(document.as_ptr() as usize)?;
+    document.get(start..start.checked_add(piece.len())?)
+}
+
+/// A part of a text without a copy where it is borrowed; the text itself where it has no such part.
+fn cut<'x>(text: Cow<'x, str>, part: impl Fn(&str) -> Option<&str>) -> Result<Cow<'x, str>, Cow<'x, str>> {
+    match text {
+        Cow::Borrowed(text) => match part(text).and_then(|part| within(text.as_bytes(), part.as_bytes())) {
+            Some(part) => Ok(String::from_utf8_lossy(part)),
+            None => Err(text.into()),
+        },
+        Cow::Owned(text) => match part(&text) {
+            Some(part) => Ok(part.to_owned().into()),
+            None => Err(text.into()),
+        },
     }
 }
 
+/// The name without its prefix.
+fn local<'x>(name: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str> {
+    let local = match name.iter().rposition(|&b| b == b':') {
+        Some(colon) => &name[colon + 1..],
+        None => name,
+    };
+    let local = String::from_utf8_lossy(local);
+    if let Cow::Owned(_) = local {
+        not_utf8(spot, problems);
+    }
+    local
+}
+
+/// The text of a piece of XML that needs no decoding; `None` where it may need some.
+pub(super) fn plain(raw: &[u8]) -> Option<&str> {
+    // EF starts the replacement character
+    if raw.iter().any(|b| matches!(b, b'&' | 0xEF)) { None } else { std::str::from_utf8(raw).ok() }
+}
+
 /// The text of a piece of XML: decoded, escapes resolved.
-pub(super) fn text<'a>(raw: Cow<'a, [u8]>, spot: Spot, problems: &mut Problems) -> Cow<'a, str> {
+pub(super) fn text<'x>(raw: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str> {
+    if let Some(text) = plain(raw) {
+        return text.into();
+    }
     let decoded = decode(raw, spot, problems);
     match quick_xml::escape::unescape(&decoded) {
         Ok(Cow::Borrowed(_)) => decoded,
@@ -110,11 +154,8 @@ pub(super) fn text<'a>(raw: Cow<'a, [u8]>, spot: Spot, problems: &mut Problems) 
 }
 
 /// The text of a piece of XML that has no escapes.
-pub(super) fn decode<'a>(raw: Cow<'a, [u8]>, spot: Spot, problems: &mut Problems) -> Cow<'a, str> {
-    let decoded = match raw {
-        Cow::Borrowed(bytes) => String::from_utf8_lossy(bytes),
-        Cow::Owned(bytes) => String::from_utf8_lossy(&bytes).into_owned().into(),
-    };
+pub(super) fn decode<'x>(raw: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str> {
+    let decoded = String::from_utf8_lossy(raw);
     if decoded.contains(char::REPLACEMENT_CHARACTER) {
         not_utf8(spot, problems);
     }

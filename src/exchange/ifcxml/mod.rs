@@ -7,6 +7,7 @@
 
 mod dialect;
 mod head;
+mod memory;
 mod parser;
 mod resolve;
 mod slot;
@@ -37,6 +38,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
     let mut parser = Parser::new(file, problems);
     let mut dialect = Dialect::default();
     let mut started = false;
+    let mut room = Vec::new();
     loop {
         let offset = xml.buffer_position() as usize;
         let event = match xml.read_event() {
@@ -60,7 +62,12 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
                 None => Err("holds no XML element".into()),
             };
         }
-        let spot = if parser.is_skipping() { Spot::default() } else { ruler.spot(offset) };
+        let is_blank = match &event {
+            Event::End(_) => true,
+            Event::Text(text) => text.iter().all(u8::is_ascii_whitespace) && !parser.is_in_text(),
+            _ => false,
+        };
+        let spot = if parser.is_skipping() || is_blank { Spot::default() } else { ruler.spot(offset) };
         let done = started && parser.is_done();
         match event {
             Event::Start(_) | Event::Empty(_) if done => {
@@ -78,10 +85,11 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
                     }
                     started = true;
                 } else {
-                    let head = Head::read(start, spot, &mut parser.problems).map_err(|error| {
+                    let head = Head::read(bytes, start, spot, room, &mut parser.problems).map_err(|error| {
                         format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)
                     })?;
-                    parser.start(head);
+                    parser.start(&head);
+                    room = head.rest;
                 }
                 if let Event::Empty(_) = event {
                     parser.end();
@@ -89,18 +97,21 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
             }
             Event::End(_) => parser.end(),
             _ if parser.is_skipping() && !matches!(event, Event::End(_) | Event::DocType(_)) => {}
+            Event::Text(_) if is_blank => {}
             Event::Text(text) => {
-                let text = head::text(text.into_inner(), spot, &mut parser.problems);
+                let raw = head::within(bytes, &text).unwrap_or_default();
+                let text = head::text(raw, spot, &mut parser.problems);
                 parser.text(text, spot);
             }
             Event::CData(data) => {
-                let text = head::decode(data.into_inner(), spot, &mut parser.problems);
+                let raw = head::within(bytes, &data).unwrap_or_default();
+                let text = head::decode(raw, spot, &mut parser.problems);
                 parser.text(text, spot);
             }
             Event::GeneralRef(reference) => {
                 let escape = [b"&", &reference[..], b";"].concat();
-                let text = head::text(escape.into(), spot, &mut parser.problems);
-                parser.text(text, spot);
+                let text = head::text(&escape, spot, &mut parser.problems).into_owned();
+                parser.text(text.into(), spot);
             }
             Event::DocType(_) => {
                 return Err(format!(

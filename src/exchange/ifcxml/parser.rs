@@ -7,32 +7,35 @@ use super::super::labels::Labels;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Attribute, Base, ClassId, Kind, Schema};
+use super::super::store::Cell;
 use super::super::waiting::WAITING;
-use super::super::{Entities, Id, Value};
+use super::super::{Entities, Id};
 use super::DEEPEST;
-use super::head::{Head, Pos};
-use super::slot::{Slot, Target, stray_text, untyped};
+use super::head::{self, Head, Pos};
+use super::memory::Memory;
+use super::slot::{Item, Slot, Target, stray_text, untyped};
 
 /// What an open element is.
-enum Frame {
+enum Frame<'x> {
     /// Around documents.
     Envelope,
     Document,
     Entity(Open),
-    Slot(Slot),
+    Slot(Slot<'x>),
 }
 
 /// An entity whose element is open.
+#[derive(Clone, Copy)]
 struct Open {
     id: Id,
     class: ClassId,
-    values: Vec<Value>,
-    extras: Vec<(Box<str>, Value)>,
+    /// Where in `Parser::repeated` its own start.
+    repeated: usize,
 }
 
 /// A reference whose target had not been read yet.
-pub(super) struct Waiting {
-    pub label: Box<str>,
+pub(super) struct Waiting<'x> {
+    pub label: Cow<'x, str>,
     pub spot: Spot,
 }
 
@@ -44,19 +47,24 @@ pub(super) struct Link {
     pub spot: Spot,
 }
 
-pub(super) struct Parser {
+pub(super) struct Parser<'x> {
     schema: &'static Schema,
     pub entities: Entities,
     pub labels: Labels,
-    pub waiting: Vec<Waiting>,
+    pub waiting: Vec<Waiting<'x>>,
     pub links: Vec<Link>,
     pub problems: Problems,
-    stack: Vec<Frame>,
+    stack: Vec<Frame<'x>>,
+    /// The items of all open slots, those of the innermost last.
+    items: Vec<Item>,
+    /// What comes for attributes of the open entities that have their list already, by the attribute's position.
+    repeated: Vec<(usize, Cell)>,
+    memory: Memory<'x>,
     /// How many open elements are passed over.
     skipping: usize,
 }
 
-impl Parser {
+impl<'x> Parser<'x> {
     pub fn new(file: Arc<str>, problems: Problems) -> Self {
         let schema = Schema::ifc4(); // until the document says which
         Self {
@@ -67,6 +75,9 @@ impl Parser {
             links: Vec::new(),
             problems,
             stack: Vec::new(),
+            items: Vec::new(),
+            repeated: Vec::new(),
+            memory: Memory::new(),
             skipping: 0,
         }
     }
@@ -106,7 +117,7 @@ impl Parser {
     }
 
     /// An element starts; exactly one [`Parser::end`] follows it.
-    pub fn start(&mut self, head: Head) {
+    pub fn start(&mut self, head: &Head<'x>) {
         if self.stack.len() >= DEEPEST {
             self.problems.add("element nested too deep", head.spot, || {
                 format!("{} is nested deeper than {DEEPEST} elements and is not read", head.name)
@@ -128,7 +139,7 @@ impl Parser {
         }
     }
 
-    fn start_in_document(&mut self, head: Head) {
+    fn start_in_document(&mut self, head: &Head<'x>) {
         if is_entity_name(&head.name) {
             return self.start_item(head, Kind::ANY);
         }
@@ -141,7 +152,7 @@ impl Parser {
     }
 
     /// An attribute's element inside an entity.
-    fn start_attribute(&mut self, head: Head, class: ClassId) {
+    fn start_attribute(&mut self, head: &Head<'x>, class: ClassId) {
         let attributes = self.attributes(class);
         let (target, kind) = if let Some(index) = attributes.iter().position(|a| a.name == head.name) {
             (Target::Attribute(index), attributes[index].kind)
@@ -149,15 +160,15 @@ impl Parser {
             (Target::Inverse(inverse.attribute), Kind { depth: 1, ..Kind::one(Base::Entity(inverse.class)) })
         } else {
             self.unknown_attribute(class, &head.name, head.spot);
-            (Target::Extra(head.name.as_ref().into()), Kind::ANY)
+            (Target::Extra, Kind::ANY)
         };
         if head.is_reference() {
-            self.deliver_reference(&head, target, kind);
+            self.deliver_reference(head, target, kind);
         } else if head.nil {
             self.skip();
         } else {
             let typed = head.class.as_deref().and_then(|name| self.schema.find_type(name));
-            let slot = Slot::new(&head, target, kind);
+            let slot = Slot::new(head, self.items.len(), target, kind);
             if let Some((name, kind)) = typed {
                 self.stack.push(Frame::Slot(slot.typed(name, kind)));
             } else if head.class.is_some() || head.id.is_some() || !head.rest.is_empty() {
@@ -169,9 +180,9 @@ impl Parser {
     }
 
     /// An attribute's element that is itself the entity.
-    fn start_direct(&mut self, slot: Slot, head: Head) {
+    fn start_direct(&mut self, slot: Slot<'x>, head: &Head<'x>) {
         let class = match (slot.kind.base, &head.class) {
-            (Base::Entity(_) | Base::Select | Base::Any, Some(name)) => self.class(name, &head),
+            (Base::Entity(_) | Base::Select | Base::Any, Some(name)) => self.class(name, head),
             (Base::Entity(class), None) if !self.schema.class(class).is_some_and(|c| c.is_abstract) => class,
             (Base::Entity(_) | Base::Select | Base::Any, None) => {
                 let class = if let Base::Entity(class) = slot.kind.base { class } else { self.entities.class_id("") };
@@ -189,20 +200,20 @@ impl Parser {
                 return self.stack.push(Frame::Slot(slot));
             }
         };
-        let open = self.open(class, &head);
-        self.deliver(slot.target, slot.kind, slot.pos, Value::Entity(open.id), slot.spot);
-        self.stack.push(Frame::Entity(open));
+        let open = self.open(class, head);
+        self.deliver(slot.target, &slot.name, slot.kind, slot.pos, Cell::entity(open.id), slot.spot);
+        self.push(open);
     }
 
     /// A child of an attribute's element: an item of it, or the sign that the element is itself the entity.
-    fn start_in_slot(&mut self, head: Head) {
+    fn start_in_slot(&mut self, head: &Head<'x>) {
         let Some(Frame::Slot(slot)) = self.stack.last() else { return };
         let kind = slot.kind;
         if is_entity_name(&head.name) || head.name.ends_with("-wrapper") {
             return self.start_item(head, kind);
         }
         let may_be_entity = matches!(kind.base, Base::Entity(_) | Base::Select | Base::Any)
-            && slot.items.is_empty()
+            && slot.items == self.items.len()
             && slot.target != Target::Item
             && slot.typed.is_none();
         if !may_be_entity {
@@ -213,8 +224,8 @@ impl Parser {
         }
         if let Some(Frame::Slot(slot)) = self.stack.pop() {
             stray_text(&slot.text, &slot.name, slot.spot, &mut self.problems);
-            let outer = Head { name: slot.name.to_string().into(), spot: slot.spot, ..Head::default() };
-            self.start_direct(slot, outer);
+            let outer = Head { name: slot.name.clone(), spot: slot.spot, ..Head::default() };
+            self.start_direct(slot, &outer);
         }
         if let Some(Frame::Entity(open)) = self.stack.last() {
             let class = open.class;
@@ -223,37 +234,37 @@ impl Parser {
     }
 
     /// An entity, a reference to one, or a wrapped value, at the top of the document or in a slot of that kind.
-    fn start_item(&mut self, head: Head, kind: Kind) {
+    fn start_item(&mut self, head: &Head<'x>, kind: Kind) {
         let (name, wrapped) = match head.name.strip_suffix("-wrapper") {
             Some(name) => (name, true),
             None => (head.class.as_deref().unwrap_or(&head.name), false),
         };
         let item = Kind { depth: 0, row: 0, ..kind };
         if head.is_reference() {
-            self.deliver_reference(&head, Target::Item, kind);
+            self.deliver_reference(head, Target::Item, kind);
         } else if head.nil {
             self.skip();
         } else if let Some((name, typed)) = self.schema.find_type(name) {
-            let slot = Slot::new(&head, Target::Item, item);
+            let slot = Slot::new(head, self.items.len(), Target::Item, item);
             self.stack.push(Frame::Slot(slot.typed(name, typed)));
         } else if wrapped {
             let row = name.starts_with("Seq-"); // one row of a list of lists
-            let mut slot = Slot::new(&head, Target::Item, Kind { depth: u8::from(row), ..item });
+            let mut slot = Slot::new(head, self.items.len(), Target::Item, Kind { depth: u8::from(row), ..item });
             if !row && matches!(kind.base, Base::Select | Base::Any) {
                 self.problems.add("unknown type", head.spot, || format!("{name} is no type of the schema"));
-                slot = slot.typed(name.into(), Kind::ANY);
+                slot = slot.typed(self.entities.store.type_id(name), Kind::ANY);
             }
             self.stack.push(Frame::Slot(slot));
         } else {
-            let class = self.class(name, &head);
-            let open = self.open(class, &head);
-            self.deliver(Target::Item, kind, head.pos, Value::Entity(open.id), head.spot);
-            self.stack.push(Frame::Entity(open));
+            let class = self.class(name, head);
+            let open = self.open(class, head);
+            self.deliver(Target::Item, &head.name, kind, head.pos, Cell::entity(open.id), head.spot);
+            self.push(open);
         }
     }
 
     /// The class of that name.
-    fn class(&mut self, name: &str, head: &Head) -> ClassId {
+    fn class(&mut self, name: &str, head: &Head<'x>) -> ClassId {
         let class = self.entities.class_id(name);
         match self.schema.class(class) {
             None => self.problems.add("unknown entity", head.spot, || {
@@ -268,7 +279,7 @@ impl Parser {
     }
 
     /// Starts an entity with what its start tag tells.
-    fn open(&mut self, class: ClassId, head: &Head) -> Open {
+    fn open(&mut self, class: ClassId, head: &Head<'x>) -> Open {
         let label = head.id.as_deref().unwrap_or_default();
         let id = self.entities.open(class, label, head.spot);
         if head.id.is_some() {
@@ -281,20 +292,21 @@ impl Parser {
             }
         }
         let attributes = self.attributes(class);
-        let mut open = Open { id, class, values: vec![Value::Absent; attributes.len()], extras: Vec::new() };
-        for (name, text) in &head.rest {
+        for (name, raw) in &head.rest {
             let Some(index) = attributes.iter().position(|a| a.name == name) else {
                 self.unknown_attribute(class, name, head.spot);
-                open.extras.push((name.as_ref().into(), Value::Text(text.as_ref().into())));
+                let text = head::text(raw, head.spot, &mut self.problems);
+                let text = self.entities.store.text(&text);
+                self.entities.add_extra(id, name, text);
                 continue;
             };
             let kind = attributes[index].kind;
-            match scalar::parse(kind, text) {
-                Ok(value) if open.values[index] == Value::Absent => {
+            match self.scalar(kind, raw, head.spot) {
+                Ok(value) if self.entities.cell(id, index).is_absent() => {
                     if kind.base == Base::Select {
                         untyped(name, head.spot, &mut self.problems);
                     }
-                    open.values[index] = value;
+                    self.entities.set(id, index, value);
                 }
                 Ok(_) => self.given_twice(class, name, head.spot),
                 Err(wrong) => {
@@ -304,63 +316,117 @@ impl Parser {
                 }
             }
         }
-        open
+        Open { id, class, repeated: 0 }
     }
 
-    fn deliver_reference(&mut self, head: &Head, target: Target, kind: Kind) {
+    /// Opens the element of an entity, once the entity has been delivered.
+    fn push(&mut self, open: Open) {
+        self.stack.push(Frame::Entity(Open { repeated: self.repeated.len(), ..open }));
+    }
+
+    /// The value of an XML attribute.
+    ///
+    /// # Errors
+    /// What is wrong with it, in words that follow "…: ".
+    fn scalar(&mut self, kind: Kind, raw: &'x [u8], spot: Spot) -> Result<Cell, String> {
+        let Some(text) = head::plain(raw) else {
+            let text = head::text(raw, spot, &mut self.problems);
+            return scalar::parse(&mut self.entities.store, kind, &text);
+        };
+        let (known, place) = self.memory.recall(kind, raw);
+        if let Some(cell) = known {
+            return Ok(cell);
+        }
+        let cell = scalar::parse(&mut self.entities.store, kind, text)?;
+        if let Some(place) = place {
+            self.memory.remember(place, kind, raw, cell);
+        }
+        Ok(cell)
+    }
+
+    fn deliver_reference(&mut self, head: &Head<'x>, target: Target, kind: Kind) {
         self.skip(); // content beside a reference would define the entity a second time
         if let Some(elsewhere) = &head.elsewhere {
             self.problems.add("reference to another document", head.spot, || {
                 format!("{} refers to {}: other documents are not read", head.name, scalar::quoted(elsewhere))
             });
-        } else if let Some(label) = head.reference.as_deref() {
+        } else if let Some(label) = &head.reference {
             let id = self.labels.find(label, &self.entities).unwrap_or_else(|| {
-                self.waiting.push(Waiting { label: label.into(), spot: head.spot });
+                self.waiting.push(Waiting { label: label.clone(), spot: head.spot });
                 Id(WAITING + (self.waiting.len() - 1) as u32)
             });
-            self.deliver(target, kind, head.pos, Value::Entity(id), head.spot);
+            self.deliver(target, &head.name, kind, head.pos, Cell::entity(id), head.spot);
         }
     }
 
-    /// Brings a value to its target in the innermost open element.
-    fn deliver(&mut self, target: Target, kind: Kind, pos: Option<Pos>, value: Value, spot: Spot) {
-        match (self.stack.last_mut(), target) {
-            (_, _) if value == Value::Absent => {}
-            (Some(Frame::Slot(slot)), Target::Item) => slot.items.push((pos, value)),
-            (Some(Frame::Entity(open)), Target::Extra(name)) => open.extras.push((name, value)),
+    /// Brings a value to its target in the innermost open element; `name` is that of the element it comes from.
+    fn deliver(&mut self, target: Target, name: &str, kind: Kind, pos: Option<Pos>, value: Cell, spot: Spot) {
+        match (self.stack.last(), target) {
+            (_, _) if value.is_absent() => {}
+            (Some(Frame::Slot(_)), Target::Item) => self.items.push((pos, value)),
+            (Some(Frame::Entity(open)), Target::Extra) => self.entities.add_extra(open.id, name, value),
             (Some(Frame::Entity(open)), Target::Inverse(attribute)) => {
-                let relations = if let Value::List(items) = value { items } else { vec![value] };
-                for relation in relations {
-                    if let Value::Entity(relation) = relation {
-                        self.links.push(Link { relation, attribute, parent: open.id, spot });
-                    }
-                }
+                let single = [value];
+                let relations = if value.is_list() { self.entities.store.items(value) } else { &single };
+                let parent = open.id;
+                let relations = relations.iter().filter_map(|relation| relation.to_entity());
+                self.links.extend(relations.map(|relation| Link { relation, attribute, parent, spot }));
             }
             (Some(Frame::Entity(open)), Target::Attribute(index)) => {
-                let held = &mut open.values[index];
+                let Open { id, class, .. } = *open;
                 // the element of an attribute that takes several entities may be one of them, and be repeated
                 let several = kind.depth > 0 && matches!(kind.base, Base::Entity(_) | Base::Select);
-                match (held, value) {
-                    (Value::List(items), Value::List(more)) if several => items.extend(more),
-                    (Value::List(items), value) if several => items.push(value),
-                    (held @ Value::Absent, value @ Value::Entity(_)) if several => *held = Value::List(vec![value]),
-                    (held @ Value::Absent, value) => *held = value,
-                    _ => {
-                        let class = open.class;
-                        let name = self.attributes(class)[index].name;
-                        self.given_twice(class, name, spot);
+                let held = self.entities.cell(id, index);
+                if held.is_absent() && !(several && value.to_entity().is_some()) {
+                    self.entities.set(id, index, value);
+                } else if several && (held.is_absent() || held.is_list()) {
+                    if held.is_absent() {
+                        self.entities.set(id, index, Cell::EMPTY_LIST);
                     }
+                    if value.is_list() {
+                        let items = self.entities.store.items(value);
+                        self.repeated.extend(items.iter().map(|item| (index, *item)));
+                    } else {
+                        self.repeated.push((index, value));
+                    }
+                } else {
+                    self.given_twice(class, self.attributes(class)[index].name, spot);
                 }
             }
             _ => {}
         }
     }
 
+    /// Ends an entity: its lists take up what came for them later.
+    fn close(&mut self, open: Open) {
+        if self.repeated.len() > open.repeated {
+            let mut repeated = self.repeated.split_off(open.repeated);
+            repeated.sort_by_key(|(index, _)| *index); // stable: the order of the document stands
+            for group in repeated.chunk_by(|(a, _), (b, _)| a == b) {
+                let index = group[0].0;
+                let held = self.entities.store.items(self.entities.cell(open.id, index));
+                let items: Vec<Cell> = held.iter().copied().chain(group.iter().map(|(_, cell)| *cell)).collect();
+                let list = self.entities.store.list(&items);
+                self.entities.set(open.id, index, list);
+            }
+        }
+        // the schema derives these from others; some writers put a value nevertheless
+        for (index, _) in self.attributes(open.class).iter().enumerate().filter(|(_, a)| a.derived) {
+            self.entities.set(open.id, index, Cell::ABSENT);
+        }
+    }
+
+    /// Whether white space that comes next may be part of a value.
+    pub fn is_in_text(&self) -> bool {
+        matches!(self.stack.last(), Some(Frame::Slot(slot)) if !slot.text.is_empty())
+    }
+
     /// Text inside the innermost open element.
-    pub fn text(&mut self, text: Cow<str>, spot: Spot) {
+    pub fn text(&mut self, text: Cow<'x, str>, spot: Spot) {
         match self.stack.last_mut() {
             Some(Frame::Slot(slot)) if slot.text.is_empty() && text.trim().is_empty() => {}
-            Some(Frame::Slot(slot)) => slot.text.push_str(&text),
+            Some(Frame::Slot(slot)) if slot.text.is_empty() => slot.text = text,
+            Some(Frame::Slot(slot)) => slot.text.to_mut().push_str(&text),
             Some(Frame::Entity(open)) => {
                 stray_text(&text, self.entities.class_name(open.class), spot, &mut self.problems);
             }
@@ -377,15 +443,10 @@ impl Parser {
             return;
         }
         match self.stack.pop() {
-            Some(Frame::Entity(mut open)) => {
-                // the schema derives these from others; some writers put a value nevertheless
-                let derived = self.attributes(open.class).iter().zip(&mut open.values).filter(|(a, _)| a.derived);
-                derived.for_each(|(_, value)| *value = Value::Absent);
-                self.entities.close(open.id, open.values, open.extras);
-            }
-            Some(Frame::Slot(mut slot)) => {
-                let value = slot.value(&mut self.problems);
-                self.deliver(slot.target, slot.kind, slot.pos, value, slot.spot);
+            Some(Frame::Entity(open)) => self.close(open),
+            Some(Frame::Slot(slot)) => {
+                let value = slot.value(&mut self.items, &mut self.entities.store, &mut self.problems);
+                self.deliver(slot.target, &slot.name, slot.kind, slot.pos, value, slot.spot);
             }
             Some(Frame::Document | Frame::Envelope) | None => {}
         }

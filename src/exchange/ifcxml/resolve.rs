@@ -2,8 +2,9 @@
 
 use std::collections::HashSet;
 
-use super::super::waiting::{settle, target};
-use super::super::{Exchange, Id, Value, conform};
+use super::super::store::Cell;
+use super::super::waiting::target;
+use super::super::{Exchange, Id, conform};
 use super::parser::{Link, Parser};
 
 pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
@@ -15,7 +16,7 @@ pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
             .problems
             .add("reference to nothing", waiting.spot, || format!("refers to {label}, but no entity has that id"));
     }
-    parser.entities.values_mut().for_each(|value| settle(value, &targets));
+    parser.entities.settle(&targets);
     let mut links = std::mem::take(&mut parser.links);
     links.retain_mut(|link| match target(link.relation, &targets) {
         Some(id) => {
@@ -36,31 +37,32 @@ pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
 fn fill_in(parser: &mut Parser, links: &[Link]) {
     let Some(&Link { relation, attribute, spot, .. }) = links.first() else { return };
     let class = parser.entities.get(relation).class().to_owned();
-    let Some((kind, value)) = parser.entities.value_mut(relation, attribute) else {
+    let Some((index, kind)) = parser.entities.attribute(relation, attribute) else {
         parser
             .problems
             .add("relation of the wrong class", spot, || format!("{class} has no {attribute} and cannot stand here"));
         return;
     };
+    let mut held = parser.entities.cell(relation, index);
     if kind.depth == 0 {
         for link in links {
-            match value {
-                Value::Absent => *value = Value::Entity(link.parent),
-                Value::Entity(id) if *id == link.parent => {}
-                _ => parser.problems.add("relation with two ends for one", link.spot, || {
+            if held.is_absent() {
+                held = Cell::entity(link.parent);
+            } else if held.to_entity() != Some(link.parent) {
+                parser.problems.add("relation with two ends for one", link.spot, || {
                     format!("this {class} has one {attribute} already; this second one is not read")
-                }),
+                });
             }
         }
-        return;
+        return parser.entities.set(relation, index, held);
     }
-    let mut items = match std::mem::take(value) {
-        Value::List(items) => items,
-        Value::Absent => Vec::new(),
+    let mut items: Vec<Cell> = match held {
+        Cell::ABSENT => Vec::new(),
+        list if list.is_list() => parser.entities.store.items(list).to_vec(),
         single => vec![single],
     };
-    let mut seen: HashSet<Id> =
-        items.iter().filter_map(|item| if let Value::Entity(id) = item { Some(*id) } else { None }).collect();
-    items.extend(links.iter().map(|link| link.parent).filter(|id| seen.insert(*id)).map(Value::Entity));
-    *value = Value::List(items);
+    let mut seen: HashSet<Id> = items.iter().filter_map(|item| item.to_entity()).collect();
+    items.extend(links.iter().map(|link| link.parent).filter(|id| seen.insert(*id)).map(Cell::entity));
+    let list = parser.entities.store.list(&items);
+    parser.entities.set(relation, index, list);
 }

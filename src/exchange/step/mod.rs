@@ -13,7 +13,7 @@ use std::sync::Arc;
 use self::cursor::Cursor;
 use super::problems::{Problems, Ruler, Spot};
 use super::schema::Schema;
-use super::waiting;
+use super::store::Cell;
 use super::{Entities, Exchange, Id, conform};
 
 /// Where in the file the reading stands.
@@ -33,6 +33,8 @@ struct Reader<'a> {
     schema: &'static Schema,
     entities: Entities,
     problems: Problems,
+    /// The items of the lists that are being read, those of the innermost last.
+    items: Vec<Cell>,
     /// The records by the numbers that the file gives them.
     numbers: Vec<(u64, Id)>,
     /// References by number, and who refers.
@@ -52,6 +54,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
         schema: Schema::ifc4(),
         entities: Entities::new(Schema::ifc4(), file),
         problems,
+        items: Vec::new(),
         numbers: Vec::new(),
         references: Vec::new(),
         latin1: None,
@@ -168,7 +171,7 @@ impl Reader<'_> {
                 format!("{} {} refers to #{number}, but no entity has that id", entity.class(), entity.label())
             });
         }
-        self.entities.values_mut().for_each(|value| waiting::settle(value, &targets));
+        self.entities.settle(&targets);
         conform::check(&self.entities, &mut self.problems);
         Exchange {
             form: format!("{} STEP", self.schema.name),

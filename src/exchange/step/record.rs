@@ -1,9 +1,10 @@
 //! One record: `#12=IFCBEAM('…',#5,$);`.
 
+use super::super::Id;
 use super::super::problems::{Sort, Spot};
 use super::super::scalar::quoted;
 use super::super::schema::{Attribute, Kind};
-use super::super::{Id, Value};
+use super::super::store::Cell;
 use super::Reader;
 use super::cursor::starts_record;
 
@@ -31,8 +32,7 @@ impl Reader<'_> {
         let label = format!("#{digits}");
         if self.cursor.peek() == Some(b'(') {
             let class = self.entities.class_id(COMPLEX);
-            let id = self.open(class, &label, &digits, spot);
-            self.entities.close(id, Vec::new(), Vec::new());
+            self.open(class, &label, &digits, spot);
             return self.give_up(
                 "complex instance",
                 spot,
@@ -71,13 +71,9 @@ impl Reader<'_> {
     /// The attributes of a record and its end.
     fn attributes(&mut self, id: Id, spot: Spot) {
         let known: &'static [Attribute] = self.entities.attributes(id);
-        let mut values = Vec::with_capacity(known.len());
-        let mut extras: Vec<(Box<str>, Value)> = Vec::new();
-        let broken = self.positions(id, spot, known, &mut values, &mut extras).err();
-        let given = values.len() + extras.len();
-        values.resize(known.len(), Value::Absent);
+        let mut given = 0;
+        let broken = self.positions(id, spot, known, &mut given).err();
         let is_known = self.schema.class(self.entities.class(id)).is_some();
-        self.entities.close(id, values, extras);
         let at = At { id, spot, attribute: "" };
         if let Some(wrong) = broken {
             self.note("record that breaks off", at, |named| format!("{named} {wrong}; what follows in it is not read"));
@@ -89,31 +85,25 @@ impl Reader<'_> {
         }
     }
 
-    fn positions(
-        &mut self,
-        id: Id,
-        spot: Spot,
-        known: &'static [Attribute],
-        values: &mut Vec<Value>,
-        extras: &mut Vec<(Box<str>, Value)>,
-    ) -> Result<(), String> {
+    fn positions(&mut self, id: Id, spot: Spot, known: &'static [Attribute], given: &mut usize) -> Result<(), String> {
         if !self.cursor.eat(b'(') {
             return Err(self.unexpected("( after the class"));
         }
         let mut is_first = true;
         while !(is_first && self.cursor.eat(b')')) {
             is_first = false;
-            match known.get(values.len()) {
+            match known.get(*given) {
                 Some(attribute) => {
                     let value = self.attribute(attribute.kind, At { id, spot, attribute: attribute.name })?;
-                    values.push(if attribute.derived { Value::Absent } else { value });
+                    self.entities.set(id, *given, if attribute.derived { Cell::ABSENT } else { value });
                 }
                 None => {
-                    let name = (values.len() + extras.len() + 1).to_string();
+                    let name = (*given + 1).to_string();
                     let value = self.attribute(Kind::ANY, At { id, spot, attribute: &name })?;
-                    extras.push((name.into(), value));
+                    self.entities.add_extra(id, &name, value);
                 }
             }
+            *given += 1;
             if self.cursor.eat(b')') {
                 break;
             }

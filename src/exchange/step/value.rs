@@ -1,9 +1,11 @@
 //! The values in a record, by the kinds that the schema asks for.
 
+use super::super::Id;
 use super::super::scalar::{self, quoted};
 use super::super::schema::{Base, Kind};
+use super::super::store::{Cell, Store};
+use super::super::value::View;
 use super::super::waiting::WAITING;
-use super::super::{Id, TypeName, Value};
 use super::Reader;
 use super::cursor::starts_record;
 use super::record::At;
@@ -27,18 +29,18 @@ impl Reader<'_> {
     ///
     /// # Errors
     /// The record is broken here.
-    pub(super) fn attribute(&mut self, kind: Kind, at: At) -> Result<Value, String> {
+    pub(super) fn attribute(&mut self, kind: Kind, at: At) -> Result<Cell, String> {
         match self.value(kind, at, 0) {
             Ok(value) => Ok(value),
             Err(Trouble::Broken(wrong)) => Err(wrong),
             Err(Trouble::Wrong(wrong)) => {
                 self.note("value that is not understood", at, |named| format!("{named} {wrong}"));
-                Ok(Value::Absent)
+                Ok(Cell::ABSENT)
             }
         }
     }
 
-    fn value(&mut self, kind: Kind, at: At, level: usize) -> Read<Value> {
+    fn value(&mut self, kind: Kind, at: At, level: usize) -> Read<Cell> {
         if level > DEEPEST {
             return Err(Trouble::Broken(format!("nests values deeper than {DEEPEST}")));
         }
@@ -47,18 +49,18 @@ impl Reader<'_> {
             Some(b'(') => self.list(kind, at, level),
             Some(b'$' | b'*') => {
                 self.cursor.at += 1;
-                Ok(Value::Absent)
+                Ok(Cell::ABSENT)
             }
             None => Err(Trouble::Broken(self.unexpected("a value"))),
             Some(_) if kind.depth > 0 => {
                 let value = self.value(Kind { depth: kind.depth - 1, ..kind }, at, level + 1)?;
-                if value == Value::Absent {
+                if value.is_absent() {
                     return Ok(value);
                 }
                 self.note("single value for a list", at, |named| {
                     format!("{named} is a single value, a list in ( ) is required; read as a list of one")
                 });
-                Ok(Value::List(vec![value]))
+                Ok(self.entities.store.list(&[value]))
             }
             Some(b'#') => self.reference(at.id),
             Some(b'\'') => self.text(kind.base, at),
@@ -68,23 +70,32 @@ impl Reader<'_> {
         }
     }
 
-    fn list(&mut self, kind: Kind, at: At, level: usize) -> Read<Value> {
+    fn list(&mut self, kind: Kind, at: At, level: usize) -> Read<Cell> {
         self.cursor.at += 1;
         let is_open = matches!(kind.base, Base::Any | Base::Select);
         // a scalar's list is read to its end, so that the record can go on
-        let (inner, mut wrong) = match kind.depth {
+        let (inner, wrong) = match kind.depth {
             0 if is_open => (kind, None),
             0 => (Kind::ANY, Some("is a list, a single value is required".to_owned())),
             depth => (Kind { depth: depth - 1, ..kind }, None),
         };
-        let mut items = Vec::new();
+        let start = self.items.len();
+        let list = self.items(kind, inner, wrong, at, level);
+        let list = list.map(|()| self.entities.store.list(&self.items[start..]));
+        self.items.truncate(start);
+        list
+    }
+
+    /// The items of a list and its end.
+    fn items(&mut self, kind: Kind, inner: Kind, mut wrong: Option<String>, at: At, level: usize) -> Read<()> {
+        let start = self.items.len();
         let mut absent = false;
         let mut is_first = true;
         while !(is_first && self.cursor.eat(b')')) {
             is_first = false;
             match self.value(inner, at, level + 1) {
-                Ok(Value::Absent) => absent = true,
-                Ok(value) => items.push(value),
+                Ok(Cell::ABSENT) => absent = true,
+                Ok(value) => self.items.push(value),
                 Err(Trouble::Wrong(what)) => wrong = wrong.or(Some(what)),
                 Err(broken) => return Err(broken),
             }
@@ -104,15 +115,14 @@ impl Reader<'_> {
         if absent {
             self.note("list with gaps", at, |named| format!("{named} has $ in its list; the others are read"));
         }
-        let row = usize::from(kind.row);
-        if kind.depth == 1 && row > 0 && items.len() != row {
-            return Err(Trouble::Wrong(format!("has a row of {} values, but rows of {row} are required", items.len())));
+        let (row, length) = (usize::from(kind.row), self.items.len() - start);
+        if kind.depth == 1 && row > 0 && length != row {
+            return Err(Trouble::Wrong(format!("has a row of {length} values, but rows of {row} are required")));
         }
-        items.shrink_to_fit(); // most memory goes into short lists
-        Ok(Value::List(items))
+        Ok(())
     }
 
-    fn reference(&mut self, from: Id) -> Read<Value> {
+    fn reference(&mut self, from: Id) -> Read<Cell> {
         if starts_record(self.cursor.rest()) {
             return Err(Trouble::Broken(self.unexpected("a value")));
         }
@@ -124,10 +134,10 @@ impl Reader<'_> {
             return Err(Trouble::Wrong(format!("refers to {shown}, which is no id")));
         };
         self.references.push((number, from));
-        Ok(Value::Entity(Id(WAITING + (self.references.len() - 1) as u32)))
+        Ok(Cell::entity(Id(WAITING + (self.references.len() - 1) as u32)))
     }
 
-    fn text(&mut self, base: Base, at: At) -> Read<Value> {
+    fn text(&mut self, base: Base, at: At) -> Read<Cell> {
         let raw = self.cursor.string().map_err(Trouble::Broken)?;
         let decoded = text::decode(raw);
         if decoded.is_latin1 {
@@ -141,11 +151,11 @@ impl Reader<'_> {
             Base::Select => self.untyped(at),
             _ => return Err(Trouble::Wrong(format!("is the text {}, {}", quoted(&decoded.text), required(base)))),
         }
-        Ok(Value::Text(decoded.text.into()))
+        Ok(self.entities.store.text(&decoded.text))
     }
 
     /// A binary literal, kept as its digits.
-    fn binary(&mut self, base: Base) -> Read<Value> {
+    fn binary(&mut self, base: Base) -> Read<Cell> {
         self.cursor.at += 1;
         let digits = self.cursor.take_while(|b| b.is_ascii_hexdigit());
         if !self.cursor.eat(b'"') {
@@ -153,13 +163,13 @@ impl Reader<'_> {
         }
         let digits = String::from_utf8_lossy(digits);
         match base {
-            Base::Binary | Base::Any | Base::Select => Ok(Value::Text(digits.into())),
+            Base::Binary | Base::Any | Base::Select => Ok(self.entities.store.text(&digits)),
             _ => Err(Trouble::Wrong(format!("is the binary {}, {}", quoted(&digits), required(base)))),
         }
     }
 
     /// `IFCLABEL('x')`; the type is kept only where the schema leaves a choice.
-    fn typed(&mut self, kind: Kind, at: At, level: usize) -> Read<Value> {
+    fn typed(&mut self, kind: Kind, at: At, level: usize) -> Read<Cell> {
         let start = self.cursor.at;
         let name = String::from_utf8_lossy(self.cursor.keyword());
         if !self.cursor.eat(b'(') {
@@ -177,32 +187,32 @@ impl Reader<'_> {
         }
         let value = value?;
         // types that are enumerations are not in the tables; only they hold tokens
-        if found.is_none() && !matches!(value, Value::Token(_) | Value::Truth(_)) {
+        if found.is_none() && !value.is_token() {
             return Err(Trouble::Wrong(format!("holds {name}, which is no type of the schema")));
         }
-        if value == Value::Absent || !matches!(kind.base, Base::Select | Base::Any) {
+        if value.is_absent() || !matches!(kind.base, Base::Select | Base::Any) {
             return self.unwrapped(kind.base, value);
         }
-        let name = found.map_or_else(|| TypeName::from(&*name), |(name, _)| name);
-        Ok(Value::Typed(name, value.into()))
+        let name = found.map_or_else(|| self.entities.store.type_id(&name), |(name, _)| name);
+        Ok(self.entities.store.typed(name, value))
     }
 
     /// The value of a type where the schema leaves no choice of types.
-    fn unwrapped(&mut self, base: Base, value: Value) -> Read<Value> {
-        match (base, value) {
-            (Base::Real, Value::Integer(integer)) => Ok(Value::Number(integer as f64)),
-            (_, Value::Absent) => Ok(Value::Absent),
-            (Base::Text | Base::Binary, value @ Value::Text(_))
-            | (Base::Real, value @ Value::Number(_))
-            | (Base::Integer, value @ Value::Integer(_))
-            | (Base::Boolean | Base::Logical, value @ Value::Truth(_))
-            | (Base::Logical | Base::Token, value @ Value::Token(_)) => Ok(value),
+    fn unwrapped(&mut self, base: Base, value: Cell) -> Read<Cell> {
+        match (base, self.entities.store.view(value)) {
+            (Base::Real, View::Integer(integer)) => Ok(self.entities.store.number(integer as f64)),
+            (_, View::Absent)
+            | (Base::Text | Base::Binary, View::Text(_))
+            | (Base::Real, View::Number(_))
+            | (Base::Integer, View::Integer(_))
+            | (Base::Boolean | Base::Logical, View::Truth(_))
+            | (Base::Logical | Base::Token, View::Token(_)) => Ok(value),
             _ => Err(Trouble::Wrong(format!("is a typed value of another kind, {}", required(base)))),
         }
     }
 
     /// A number, or a token between dots.
-    fn word(&mut self, base: Base, at: At) -> Read<Value> {
+    fn word(&mut self, base: Base, at: At) -> Read<Cell> {
         let start = self.cursor.at;
         let word = String::from_utf8_lossy(self.cursor.word());
         if word.is_empty() && !matches!(self.cursor.peek(), Some(b',' | b')')) {
@@ -213,14 +223,16 @@ impl Reader<'_> {
         let plain = Kind::one(base);
         let value = match base {
             Base::Any | Base::Select => {
-                let value = open(&word);
+                let value = open(&mut self.entities.store, &word);
                 if base == Base::Select && value.is_ok() {
                     self.untyped(at);
                 }
                 value
             }
-            Base::Real | Base::Integer => scalar::parse(plain, &word),
-            Base::Boolean | Base::Logical | Base::Token if is_token => scalar::parse(plain, &word),
+            Base::Real | Base::Integer => scalar::parse(&mut self.entities.store, plain, &word),
+            Base::Boolean | Base::Logical | Base::Token if is_token => {
+                scalar::parse(&mut self.entities.store, plain, &word)
+            }
             _ => Err(format!("is {}, {}", quoted(&word), required(base))),
         };
         value.map_err(Trouble::Wrong)
@@ -234,18 +246,18 @@ impl Reader<'_> {
 }
 
 /// The value of a word where the schema does not say of which kind it is.
-fn open(word: &str) -> Result<Value, String> {
+fn open(store: &mut Store, word: &str) -> Result<Cell, String> {
     match word {
-        ".T." | ".t." => return Ok(Value::Truth(true)),
-        ".F." | ".f." => return Ok(Value::Truth(false)),
+        ".T." | ".t." => return Ok(Cell::truth(true)),
+        ".F." | ".f." => return Ok(Cell::truth(false)),
         _ if word.len() > 2 && word.starts_with('.') && word.ends_with('.') => {
-            return scalar::parse(Kind::one(Base::Token), word);
+            return scalar::parse(store, Kind::one(Base::Token), word);
         }
         _ => {}
     }
     match word.parse() {
-        Ok(integer) => Ok(Value::Integer(integer)),
-        Err(_) => scalar::parse(Kind::one(Base::Real), word),
+        Ok(integer) => Ok(store.integer(integer)),
+        Err(_) => scalar::parse(store, Kind::one(Base::Real), word),
     }
 }
 

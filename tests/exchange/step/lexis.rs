@@ -5,7 +5,7 @@ use super::*;
 /// One material's name.
 fn name(written: &str) -> String {
     let exchange = read_clean_records(&format!("#1=IFCMATERIAL('{written}',$,$);"));
-    let text = exchange.entities.all().next().unwrap().value("Name").clone();
+    let text = exchange.entities.all().next().unwrap().value("Name").to_value();
     let Value::Text(text) = text else { panic!("{written}: {text:?}") };
     text.into()
 }
@@ -106,7 +106,7 @@ fn values_by_their_kinds() {
          #8=IFCEXTRUDEDAREASOLID($,$,$,IFCPOSITIVELENGTHMEASURE(7.));\n\
          #9=IFCPRESENTATIONSTYLEASSIGNMENT((IFCNULLSTYLE(.NULL.)));",
     );
-    let value = |label: &str, attribute: &str| labelled(&exchange, label).value(attribute).clone();
+    let value = |label: &str, attribute: &str| labelled(&exchange, label).value(attribute).to_value();
     let typed = |name: &str, value| Value::Typed(name.into(), Box::new(value));
     let list = |items: &[i64]| Value::List(items.iter().map(|i| Value::Integer(*i)).collect());
     assert_eq!(value("#1", "NominalValue"), typed("IfcBoolean", Value::Truth(true)));

@@ -262,7 +262,7 @@ proptest! {
     #[test]
     fn strings_come_back(text in "[^\\\\\\x00-\\x1f\\x7f-\\x9f]{0,20}") {
         let exchange = read_records(&format!("#1=IFCMATERIAL('{}',$,$);", text.replace('\'', "''")));
-        let value = exchange.entities.all().next().unwrap().value("Name").clone();
+        let value = exchange.entities.all().next().unwrap().value("Name").to_value();
         prop_assert_eq!(value, Value::Text(text.into()));
     }
 }
