@@ -72,7 +72,8 @@ enum Command {
 
 #[derive(Debug, Args)]
 struct ReviewArgs {
-    /// The shop model (ifcXML of IFC4), or a folder that holds one model and its schedule.
+    /// The shop model (STEP or ifcXML of IFC2X3, IFC4 or IFC4X3, also zipped), or a folder that holds one model and its
+    /// schedule.
     ///
     /// In a folder the schedule is called schedule.csv or schedule.toml, or both. Subfolders are not looked at.
     path: PathBuf,
@@ -88,7 +89,7 @@ struct ReviewArgs {
 
 #[derive(Debug, Args)]
 struct SurveyArgs {
-    /// The shop model (ifcXML of IFC4), or a folder that holds one.
+    /// The shop model (STEP or ifcXML of IFC2X3, IFC4 or IFC4X3, also zipped), or a folder that holds one.
     #[arg(value_name = "MODEL")]
     path: PathBuf,
     #[command(flatten)]

@@ -1,6 +1,6 @@
 //! The words by which shop models and schedules call the things a joint needs.
 
-use std::collections::{BTreeMap, BTreeSet, HashMap};
+use std::collections::{BTreeMap, BTreeSet};
 
 use toml::Spanned;
 use unicode_normalization::UnicodeNormalization;
@@ -49,7 +49,7 @@ const JOINED: usize = 3;
 pub(super) struct Vocabulary {
     words: BTreeMap<String, BTreeSet<String>>,
     /// The concepts of each word, a bit each in the order of [`CONCEPTS`]. Only looked up, never walked.
-    concepts: HashMap<String, u32>,
+    concepts: BTreeMap<String, u32>,
 }
 
 /// What a text says by the words of the vocabulary: looked up once, it can be asked for every concept.
@@ -89,7 +89,7 @@ fn bit(concept: &str) -> u32 {
 impl Vocabulary {
     /// Reads the program's own words.
     pub fn load(file: RuleFile<'_>) -> Result<Self, RuleError> {
-        let mut all = Self { words: BTreeMap::new(), concepts: HashMap::new() };
+        let mut all = Self { words: BTreeMap::new(), concepts: BTreeMap::new() };
         all.add(file)?;
         match CONCEPTS.iter().find(|concept| !all.words.contains_key(**concept)) {
             Some(concept) => Err(RuleError::new(

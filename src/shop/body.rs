@@ -56,7 +56,6 @@ impl<'a> Reading<'a> {
 
     /// End points of its Axis representation in the world, if it is a polyline.
     pub fn axis_line(&self, product: Entity<'a>) -> Option<Vec<DVec3>> {
-        let world = self.placement_of(product).ok()?;
         let line = product
             .entity("Representation")?
             .entities("Representations")
@@ -64,6 +63,7 @@ impl<'a> Reading<'a> {
             .filter(|r| r.text("RepresentationIdentifier").is_some_and(|i| i.eq_ignore_ascii_case("Axis")))
             .flat_map(|r| r.entities("Items"))
             .find(|item| item.is_a("IfcPolyline"))?;
+        let world = self.placement_of(product).ok()?;
         let points = line.entities("Points");
         let ends = [*points.first()?, *points.last()?];
         ends.into_iter().map(|p| Some(world.transform_point3(self.point(Some(p)).ok()?))).collect()
@@ -96,7 +96,12 @@ impl<'a> Reading<'a> {
                 return into.push(Err(format!("its body has more than {ITEMS} solids")));
             }
             *budget -= solids.len();
-            into.extend(solids.iter().map(|solid| solid.as_ref().map_err(Clone::clone)?.moved(map, straight)));
+            match Rc::try_unwrap(solids) {
+                Ok(own) => into.extend(own.into_iter().map(|solid| solid?.moved(map, straight))),
+                Err(shared) => into.extend(
+                    shared.iter().map(|solid| solid.as_ref().map_err(Clone::clone)?.clone().moved(map, straight)),
+                ),
+            }
         }
     }
 

@@ -4,7 +4,7 @@ use glam::DVec3;
 
 use super::Bolt;
 use super::material::said_by;
-use super::properties::{Plausible, Property};
+use super::properties::{By, Plausible, Property};
 use super::reading::Reading;
 use super::shank::{Cluster, Shank, round};
 use super::solid::Prism;
@@ -163,7 +163,7 @@ impl<'a> Reading<'a> {
     }
 
     /// All that is said of the diameter: attributes, properties, names.
-    fn diameters(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Vec<Statement<f64>> {
+    fn diameters(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Vec<Statement<'a, f64>> {
         let mut all = self.attribute_lengths(element, "NominalDiameter");
         all.extend(self.property_lengths(element, properties, Plausible(5.0, 100.0), |p| {
             p.name == "NominalDiameter" || p.name == "ThreadDiameter" || p.means("bolt-diameter")
@@ -171,15 +171,20 @@ impl<'a> Reading<'a> {
         for (by, text) in self.names_of(element).iter() {
             all.extend(self.text(text).size().map(|(d, _)| Statement {
                 value: d,
-                by: format!("{by} \"{text}\""),
-                at: element.place(),
+                by: By::Named(by, text),
+                at: element,
             }));
         }
         all
     }
 
     /// The diameter by statements and geometry. Where they disagree the smaller one is taken, which carries less.
-    fn diameter(&self, element: Entity<'a>, stated: &[Statement<f64>], drawn: f64) -> Result<Datum<Length>, String> {
+    fn diameter(
+        &self,
+        element: Entity<'a>,
+        stated: &[Statement<'a, f64>],
+        drawn: f64,
+    ) -> Result<Datum<Length>, String> {
         let Some(least) = stated.iter().min_by(|a, b| a.value.total_cmp(&b.value)) else {
             let how = format!("diameter of the modelled shank of the fastener at {}", element.place());
             return Ok(Datum::new(mm(drawn), Origin::Derived(how)));
@@ -233,14 +238,14 @@ impl<'a> Reading<'a> {
         format!("fastener \"{}\"", element.text("Name").unwrap_or_else(|| element.label()))
     }
 
-    fn length(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Known<Length> {
+    fn length(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Known<Length> {
         let mut all = self.attribute_lengths(element, "NominalLength");
         all.extend(self.property_lengths(element, properties, Plausible(10.0, 3000.0), |p| {
             p.name == "NominalLength" || p.means("bolt-length")
         }));
         for (by, text) in self.names_of(element).iter() {
             let length = self.text(text).size().and_then(|(_, length)| length);
-            all.extend(length.map(|value| Statement { value, by: format!("{by} \"{text}\""), at: element.place() }));
+            all.extend(length.map(|value| Statement { value, by: By::Named(by, text), at: element }));
         }
         let missing = |reason: String| Missing {
             what: "bolt length".into(),
@@ -296,7 +301,7 @@ impl<'a> Reading<'a> {
         Ok(Datum::new(class, Origin::Modelled { by, at: Some(witness.at.place()) }))
     }
 
-    fn hole(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Option<Length> {
+    fn hole(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Option<Length> {
         let all = self.property_lengths(element, properties, Plausible(5.0, 130.0), |p| p.means("hole-diameter"));
         let first = all.first()?;
         if let Some(other) = all.iter().find(|s| !((s.value - first.value).abs() <= 0.1)) {
@@ -312,13 +317,13 @@ impl<'a> Reading<'a> {
         Some(mm(first.value))
     }
     /// The length of slotted holes; of two that differ the longer one counts.
-    fn slot(&self, element: Entity<'a>, properties: &[Property<'_>]) -> Option<Length> {
+    fn slot(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Option<Length> {
         let all = self.property_lengths(element, properties, Plausible(1.0, 500.0), |p| p.means("slot-length"));
         all.iter().map(|s| s.value).max_by(f64::total_cmp).map(mm)
     }
 
     /// Says where a property counts other bolts than are drawn.
-    fn count(&self, element: Entity<'a>, properties: &[Property<'_>], drawn: usize) {
+    fn count(&self, element: Entity<'a>, properties: &[Property<'a>], drawn: usize) {
         for property in properties.iter().filter(|p| p.means("bolt-count")) {
             let Some(said) = property.count().filter(|n| *n > 0.0 && *n != drawn as f64) else { continue };
             self.problem(

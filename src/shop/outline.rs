@@ -1,6 +1,7 @@
 //! Closed loops of points in a plane, mm, and what can be asked of them.
 
 use std::f64::consts::TAU;
+use std::sync::LazyLock;
 
 use glam::{DAffine2, DVec2};
 
@@ -39,7 +40,9 @@ impl Loop {
 
     /// A circle.
     pub fn circle(centre: DVec2, radius: f64) -> Self {
-        let points = (0..FACETS as usize).map(|i| centre + radius * DVec2::from_angle(TAU * i as f64 / FACETS));
+        static UNIT: LazyLock<[DVec2; FACETS as usize]> =
+            LazyLock::new(|| std::array::from_fn(|i| DVec2::from_angle(TAU * i as f64 / FACETS)));
+        let points = UNIT.iter().map(|unit| centre + radius * unit);
         Self { points: points.collect(), circle: Some((centre, radius)) }
     }
 

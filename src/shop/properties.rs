@@ -38,6 +38,12 @@ pub(super) enum By<'a> {
     Words(&'static str),
     /// A property.
     Property { set: &'a str, name: &'a str, of_type: bool },
+    /// A property whose number has no unit, read as mm.
+    Unitless { set: &'a str, name: &'a str, of_type: bool },
+    /// An attribute, and the text that it holds.
+    Named(&'static str, &'a str),
+    /// An attribute of the part, or of its type.
+    Attribute { name: &'static str, of_type: bool },
 }
 
 impl fmt::Display for By<'_> {
@@ -48,6 +54,12 @@ impl fmt::Display for By<'_> {
                 let of_type = if *of_type { " of the type" } else { "" };
                 write!(f, "property \"{name}\" in \"{set}\"{of_type}")
             }
+            Self::Unitless { set, name, of_type } => {
+                let property = By::Property { set, name, of_type: *of_type };
+                write!(f, "{property}, a number without unit read as mm")
+            }
+            Self::Named(by, text) => write!(f, "{by} \"{text}\""),
+            Self::Attribute { name, of_type } => write!(f, "{name}{}", if *of_type { " of the type" } else { "" }),
         }
     }
 }
@@ -96,9 +108,10 @@ impl<'a> Reading<'a> {
 
     /// What a property means as a length in mm, and a word on how it was read; an error if it is a number that can
     /// be read in two ways or in none, `None` if it is not a number at all. Zero stays zero.
-    pub fn length_of(&self, property: &Property<'_>, plausible: Plausible) -> Option<Result<(f64, String), String>> {
+    pub fn length_of(&self, property: &Property<'a>, plausible: Plausible) -> Option<Result<(f64, By<'a>), String>> {
         let (number, is_length) = property.number()?;
         let by = property.by();
+        let unitless = By::Unitless { set: property.set, name: property.name, of_type: property.of_type };
         if !number.is_finite() {
             return Some(Err(format!("{by} is no finite number")));
         }
@@ -108,12 +121,12 @@ impl<'a> Reading<'a> {
         let as_project = number * property.unit.unwrap_or(self.units.length);
         // A plain number has no unit. Where the project counts in mm both readings are one.
         if property.unit.is_some() || is_length || (self.units.length - 1.0).abs() < 1e-9 {
-            return Some(if sane(as_project) { Ok((as_project, by.to_string())) } else { strange(as_project) });
+            return Some(if sane(as_project) { Ok((as_project, by)) } else { strange(as_project) });
         }
         Some(match (sane(as_project), sane(number)) {
-            (true, false) => Ok((as_project, by.to_string())),
-            (false, true) => Ok((number, format!("{by}, a number without unit read as mm"))),
-            (true, true) if number == 0.0 => Ok((0.0, by.to_string())),
+            (true, false) => Ok((as_project, by)),
+            (false, true) => Ok((number, unitless)),
+            (true, true) if number == 0.0 => Ok((0.0, by)),
             (true, true) => {
                 Err(format!("{by} is {number} without a unit: it could be mm or the project's length unit"))
             }

@@ -33,6 +33,14 @@ pub(super) struct Seen {
     pub what: String,
 }
 
+/// The longer side of the bounding box that [`see`] finds, mm.
+pub(super) fn extent(profile: &Profile) -> f64 {
+    let across = -profile.up.perp();
+    let outline = profile.kind == Kind::Outline;
+    let bounds = if outline { profile.outer.least_box(across) } else { profile.outer.box_along(across) };
+    bounds.size.max_element()
+}
+
 /// Looks at a profile.
 pub(super) fn see(profile: &Profile) -> Seen {
     let across = -profile.up.perp();

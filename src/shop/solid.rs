@@ -82,10 +82,10 @@ impl Prism {
     ///
     /// # Errors
     /// A clause where it is no right prism any more.
-    pub fn moved(&self, map: DAffine3, straight: f64) -> Solid {
-        let mut moved = Self::swept(self.profile.clone(), map * self.frame, DVec3::Z * self.depth, straight)?;
+    pub fn moved(self, map: DAffine3, straight: f64) -> Solid {
+        let mut moved = Self::swept(self.profile, map * self.frame, DVec3::Z * self.depth, straight)?;
         moved.cuts = self.cuts.iter().map(|cut| cut.moved(map, straight)).collect();
-        moved.beyond.clone_from(&self.beyond);
+        moved.beyond = self.beyond;
         Ok(moved)
     }
 
@@ -130,7 +130,7 @@ impl Cut {
                     None => Self::Other("a half-space that its map makes flat".into()),
                 }
             }
-            Self::Prism(prism) => match prism.moved(map, straight) {
+            Self::Prism(prism) => match prism.as_ref().clone().moved(map, straight) {
                 Ok(prism) => Self::Prism(Box::new(prism)),
                 Err(_) => Self::Other("a slanted extrusion".into()),
             },

@@ -11,7 +11,7 @@ use super::member::LONG;
 use super::plate::{flat, too_thick};
 use super::profile::Kind;
 use super::reading::{Common, Reading};
-use super::section::see;
+use super::section::{extent, see};
 use super::several::SOLIDS;
 use super::shank::{SMALL, round, small_part};
 use super::solid::Prism;
@@ -146,6 +146,9 @@ impl<'a> Taken<'a> {
     }
 }
 
+/// The bolts of a fastener, or why it holds none.
+type Asked = Result<Vec<Bolt>, String>;
+
 /// Decides on bolts, with the nuts and washers that lie apart from them as evidence.
 fn tell_bolts<'a>(
     common: &Common<'a>,
@@ -166,19 +169,18 @@ fn tell_bolts<'a>(
         let steps = (from.distance(to) / 50.0).ceil().clamp(1.0, 64.0);
         (0..=steps as usize).any(|i| nuts.hold(from.lerp(to, i as f64 / steps), axis, aside, straight))
     };
-    type Told = Result<Vec<Bolt>, Box<Rejected>>;
-    let told: Vec<(Vec<Told>, Vec<Problem>)> = bolts
+    let told: Vec<(Vec<Asked>, Vec<Problem>)> = bolts
         .par_chunks(GO)
         .map(|some| {
             let reading = common.reading();
             let tell = |(element, says, prisms): &(Entity<'a>, Says, Vec<Prism>)| {
                 let all: Vec<&Prism> = prisms.iter().collect();
-                let bolts = reading.bolts(*element, *says, &all, nutted);
-                bolts.map_err(|reason| Box::new(Rejected { identity: reading.identity(*element), reason }))
+                reading.bolts(*element, *says, &all, nutted)
             };
             (some.iter().map(tell).collect(), reading.into_problems())
         })
         .collect();
+    let reading = common.reading();
     let mut shanks = Lines::default();
     let (found, problems): (Vec<_>, Vec<_>) = told.into_iter().unzip();
     steelwork.problems.extend(problems.into_iter().flatten());
@@ -190,7 +192,7 @@ fn tell_bolts<'a>(
                 steelwork.bolts.extend(found);
                 parts.insert(element.id, (first..steelwork.bolts.len()).map(Part::Bolt).collect());
             }
-            Err(rejected) => steelwork.rejected.push(*rejected),
+            Err(reason) => steelwork.rejected.push(Rejected { identity: reading.identity(*element), reason }),
         }
     }
     for mut piece in hardware {
@@ -260,10 +262,10 @@ impl<'a> Reading<'a> {
 
     /// Nuts and washers come as any class: by name if they are small, else by shape.
     fn small(&self, element: Entity<'a>, prisms: &[&Prism]) -> Option<Word> {
-        let extent = |p: &&Prism| see(&p.profile).bounds.size.max_element().max(p.depth);
-        let little = prisms.iter().all(|p| extent(p) <= SMALL);
+        let extent = |p: &&Prism| extent(&p.profile).max(p.depth);
+        let little = || prisms.iter().all(|p| extent(p) <= SMALL);
         match self.called(element) {
-            Some(word @ (Word::Nut | Word::Washer)) if little => Some(word),
+            Some(word @ (Word::Nut | Word::Washer)) if little() => Some(word),
             // A short bolt in several solids is no nut.
             Some(Word::Bolt | Word::Anchor) if prisms.len() > 1 => None,
             _ => small_part(prisms),

@@ -58,7 +58,7 @@ impl<'a> Reading<'a> {
         }
     }
 
-    fn weld_sort(&self, element: Entity<'a>, properties: &[Property<'_>]) -> WeldSort {
+    fn weld_sort(&self, element: Entity<'a>, properties: &[Property<'a>]) -> WeldSort {
         // ISO 2553 names of butt preparations, besides the words.
         const BUTT: [&str; 12] = ["i", "v", "hv", "y", "hy", "u", "hu", "j", "x", "k", "dv", "dhv"];
         let seam = properties.iter().filter(|p| p.set == SET && p.name == "Type1").find_map(Property::text);
@@ -84,19 +84,19 @@ impl<'a> Reading<'a> {
     fn sizes(
         &self,
         element: Entity<'a>,
-        properties: &[Property<'_>],
+        properties: &[Property<'a>],
         letter: &str,
         later: &str,
         concept: &str,
         plausible: Plausible,
-    ) -> Vec<Statement<f64>> {
+    ) -> Vec<Statement<'a, f64>> {
         self.property_lengths(element, properties, plausible, |p| {
             let standard = p.set == SET && (p.name == letter || p.name == later);
             standard || (p.set != SET && !concept.is_empty() && p.means(concept))
         })
     }
 
-    fn throat(&self, element: Entity<'a>, properties: &[Property<'_>], sort: WeldSort) -> Known<Length> {
+    fn throat(&self, element: Entity<'a>, properties: &[Property<'a>], sort: WeldSort) -> Known<Length> {
         let missing = |reason: String| Missing {
             what: "weld throat".into(),
             reason,
@@ -113,7 +113,7 @@ impl<'a> Reading<'a> {
                 return Err(missing(format!("{} says {a:.1} mm, {} says {b:.1} mm", first.by, other.by)));
             }
         }
-        let modelled = |s: &Statement<f64>| Ok(Datum::new(mm(s.value), s.origin("weld")));
+        let modelled = |s: &Statement<'a, f64>| Ok(Datum::new(mm(s.value), s.origin("weld")));
         match (throats.first(), legs.first()) {
             (Some(a), Some(z)) if !((a.value - z.value / SQRT_2).abs() <= AGREE * a.value) => Err(missing(format!(
                 "throat and leg contradict each other: {} is {:.1} mm, {} is {:.1} mm, and a should be z/√2",
@@ -121,7 +121,7 @@ impl<'a> Reading<'a> {
             ))),
             (Some(a), _) => modelled(a),
             (None, Some(z)) if sort != WeldSort::Butt => {
-                let how = format!("throat a = z/√2 from {}, z = {:.1} mm ({})", z.by, z.value, z.at);
+                let how = format!("throat a = z/√2 from {}, z = {:.1} mm ({})", z.by, z.value, z.at.place());
                 Ok(Datum::new(mm(z.value / SQRT_2), Origin::Derived(how)))
             }
             _ => {
@@ -135,7 +135,7 @@ impl<'a> Reading<'a> {
         }
     }
 
-    fn seam_length(&self, element: Entity<'a>, properties: &[Property<'_>], axis: Option<&[DVec3]>) -> Known<Length> {
+    fn seam_length(&self, element: Entity<'a>, properties: &[Property<'a>], axis: Option<&[DVec3]>) -> Known<Length> {
         let missing = |reason: String| Missing {
             what: "weld length".into(),
             reason,

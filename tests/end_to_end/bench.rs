@@ -7,8 +7,8 @@ use faying::review::{JointReview, Review};
 use faying::run::{Failed, Inputs, run};
 
 use crate::writer::building::{
-    Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, Section, Stiffener,
-    Storey, Welds,
+    Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, PlateAs, Section,
+    Stiffener, Storey, Welds,
 };
 use crate::writer::entity::{Entity, Field, Link, Simple, Sink};
 use crate::writer::guid::global_id;
@@ -87,6 +87,7 @@ pub fn shed() -> Building {
             top: 3600.0,
             ends: [end(0, "J1"), end(1, "J2")],
         }],
+        plates: PlateAs::Plate,
     }
 }
 

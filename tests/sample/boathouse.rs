@@ -3,8 +3,8 @@
 //! A boat hall of British sections on grid lines A to D by 1 and 2, and a clubroom wing of European sections on E and F.
 
 use crate::writer::building::{
-    Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, Section, Stiffener,
-    Storey, Welds,
+    Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, PlateAs, Section,
+    Stiffener, Storey, Welds,
 };
 
 /// A joint's mark, the name of its intended detail, and the column it stands at.
@@ -158,6 +158,7 @@ pub fn boathouse() -> Building {
         storeys: vec![storey("Slipway", 0.0), storey("Boat store and clubroom", 3300.0), storey("Roof", 6000.0)],
         columns,
         beams,
+        plates: PlateAs::Plate,
     }
 }
 

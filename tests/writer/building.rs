@@ -13,6 +13,8 @@ pub struct Building {
     pub columns: Vec<Column>,
     /// Beams with the joints at their ends.
     pub beams: Vec<Beam>,
+    /// What its plates are written as.
+    pub plates: PlateAs,
 }
 
 /// A storey.
@@ -168,6 +170,19 @@ pub enum BoltBody {
     Shank,
     /// Head, shank and nut by a map that all bolts of the type share.
     Mapped,
+    /// All bolts of the joint are one fastener, which repeats that map.
+    Group,
+    /// A bolt, a nut and a washer, each an element of its own that says what it is by its name only.
+    Proxies,
+}
+
+/// What a plate is written as.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum PlateAs {
+    /// A plate, extruded.
+    Plate,
+    /// A beam, and a stiffener a column, bounded by faces.
+    Member,
 }
 
 /// Throats of the fillets, both sides of each flange and of the web.

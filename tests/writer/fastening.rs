@@ -4,11 +4,11 @@ use std::io;
 
 use glam::DVec3;
 
-use super::building::{Beam, BoltBody, ClassIn, Column, Joint, Section};
+use super::building::{Beam, BoltBody, Bolts, ClassIn, Column, Joint, Section};
 use super::entity::{Declared::*, Entity, Link, Simple};
 use super::hardware;
 use super::model::{Model, Reference, level};
-use super::shapes::{axes, circle, extrusion, hexagon, mapped, moved, outline, polyline, representation, shape};
+use super::shapes::{axes, circle, extrusion, hexagon, mapped, moved, outline, polyline, representation, ring, shape};
 use super::space::{Face, Frame};
 
 /// A weld along a line, with a fillet on both sides of a plate's edge.
@@ -23,6 +23,23 @@ pub struct Seam {
     pub across: DVec3,
     /// Half of the plate's thickness.
     pub half: f64,
+}
+
+/// What the bolts of a joint have in common.
+struct Kind {
+    name: String,
+    size: hardware::Size,
+    grip: f64,
+    length: f64,
+    level: f64,
+}
+
+/// Where a bolt is.
+struct Place {
+    name: String,
+    origin: DVec3,
+    /// In the frame of a group: x up from the soffit, y across.
+    in_group: DVec3,
 }
 
 impl Model<'_> {
@@ -107,43 +124,115 @@ impl Model<'_> {
             Some((class, ClassIn::Name)) => format!("{plain} - {class}"),
             _ => plain.clone(),
         };
+        let behind = face.soffit + face.out * plate.thickness;
+        let place = |row: usize, side: f64, hand: char| {
+            let aside = side * bolts.gauge;
+            let origin = behind + DVec3::Z * bolts.rows[row] + DVec3::Z.cross(face.out) * aside;
+            let name = format!("{owner}/bolt {}{hand}", row + 1);
+            Place { name, origin, in_group: DVec3::new(bolts.rows[row], aside, 0.0) }
+        };
+        let both = |row| [place(row, -0.5, 'L'), place(row, 0.5, 'R')];
+        let places: Vec<Place> = (0..bolts.rows.len()).flat_map(both).collect();
+        let kind = Kind { name, size, grip, length, level: level(beam) };
+        let frame = |origin| Frame { origin, z: -face.out, x: DVec3::Z };
         let mut parts = Vec::new();
-        for (row, height) in bolts.rows.iter().enumerate() {
-            for (side, hand) in [(-0.5, 'L'), (0.5, 'R')] {
-                let key = format!("bolt type {name} {:?} {grip}", bolts.body);
-                let of = self.bolt_type(&key, &name, size, length, (bolts.body == BoltBody::Mapped).then_some(grip));
-                let set = self.bolt_properties(size, length);
-                let body = match self.known(&format!("{key} map")) {
-                    Some(map) => representation(self.body, "Body", "MappedRepresentation", vec![mapped(map).into()]),
-                    None => {
-                        let shank = extrusion(circle(size.d), None, length);
-                        representation(self.body, "Body", "SweptSolid", vec![shank.into()])
-                    }
-                };
-                let behind = face.soffit + face.out * plate.thickness + DVec3::Z * height;
-                let origin = behind + DVec3::Z.cross(face.out) * side * bolts.gauge;
-                let frame = Frame { origin, z: -face.out, x: DVec3::Z };
-                let this = ("IfcMechanicalFastener", self.new_id());
-                let entity =
-                    Entity::root("IfcMechanicalFastener", &self.path(&format!("{owner}/bolt {}{hand}", row + 1)))
-                        .id(this.1)
-                        .text("Name", &name)
-                        .real("NominalDiameter", size.d)
-                        .real("NominalLength", length)
-                        .token("PredefinedType", "BOLT")
-                        .held_single("IsTypedBy", "RelatedObjects", of)
-                        .held("IsDefinedBy", "RelatedObjects", vec![set])
-                        .one("ObjectPlacement", Wider, self.placed(level(beam), frame))
-                        .one("Representation", Wider, shape(body));
-                if let Some((class, ClassIn::Material)) = &bolts.class {
-                    self.of_material(class, this);
+        match bolts.body {
+            BoltBody::Group => {
+                let at: Vec<DVec3> = places.iter().map(|place| place.in_group).collect();
+                parts.push(self.fastener(&format!("{owner}/bolts"), &kind, bolts, frame(behind), &at)?);
+            }
+            BoltBody::Shank | BoltBody::Mapped => {
+                for place in &places {
+                    parts.push(self.fastener(&place.name, &kind, bolts, frame(place.origin), &[DVec3::ZERO])?);
                 }
-                self.contain(level(beam), this);
-                self.put(entity)?;
-                parts.push(this);
+            }
+            BoltBody::Proxies => {
+                for place in &places {
+                    parts.extend(self.proxies(&place.name, &kind, bolts, frame(place.origin))?);
+                }
             }
         }
         Ok(parts)
+    }
+
+    /// A fastener of bolts at places in its frame.
+    fn fastener(
+        &mut self,
+        path: &str,
+        kind: &Kind,
+        bolts: &Bolts,
+        frame: Frame,
+        at: &[DVec3],
+    ) -> io::Result<Reference> {
+        let Kind { name, size, grip, length, level } = kind;
+        let is_mapped = bolts.body != BoltBody::Shank;
+        let key = format!("bolt type {name} {:?} {grip}", bolts.body);
+        let of = self.bolt_type(&key, name, *size, *length, is_mapped.then_some(*grip));
+        let set = self.bolt_properties(*size, *length);
+        let body = match self.known(&format!("{key} map")) {
+            Some(map) => {
+                let items = at.iter().map(|place| mapped(map, *place).into());
+                representation(self.body, "Body", "MappedRepresentation", items.collect())
+            }
+            None => {
+                let shank = extrusion(circle(size.d), None, *length);
+                representation(self.body, "Body", "SweptSolid", vec![shank.into()])
+            }
+        };
+        let this = ("IfcMechanicalFastener", self.new_id());
+        let entity = Entity::root("IfcMechanicalFastener", &self.path(path))
+            .id(this.1)
+            .text("Name", name)
+            .real("NominalDiameter", size.d)
+            .real("NominalLength", *length)
+            .token("PredefinedType", "BOLT")
+            .held_single("IsTypedBy", "RelatedObjects", of)
+            .held("IsDefinedBy", "RelatedObjects", vec![set])
+            .one("ObjectPlacement", Wider, self.placed(*level, frame))
+            .one("Representation", Wider, shape(body));
+        self.of_class(bolts, this);
+        self.contain(*level, this);
+        self.put(entity)?;
+        Ok(this)
+    }
+
+    /// A bolt, its washer and its nut as elements of no class.
+    fn proxies(&mut self, path: &str, kind: &Kind, bolts: &Bolts, frame: Frame) -> io::Result<[Reference; 3]> {
+        let Kind { name, size, grip, length, level } = kind;
+        let from = |z: f64| Some(moved(DVec3::Z * z));
+        let bolt = vec![
+            extrusion(hexagon(size.across_flats), from(-size.head), size.head).into(),
+            extrusion(circle(size.d), None, *length).into(),
+        ];
+        let washer = extrusion(ring(size.washer.1, size.d + 1.0), from(*grip), size.washer.0);
+        let nut = extrusion(hexagon(size.across_flats), from(grip + size.washer.0), size.nut);
+        let pieces = [
+            ("", name.clone(), bolt),
+            ("/washer", format!("WASHER {}", size.d), vec![washer.into()]),
+            ("/nut", format!("NUT M{}", size.d), vec![nut.into()]),
+        ];
+        let mut parts = [("IfcBuildingElementProxy", 0); 3];
+        for (part, (suffix, name, items)) in parts.iter_mut().zip(pieces) {
+            part.1 = self.new_id();
+            let entity = Entity::root(part.0, &self.path(&format!("{path}{suffix}")))
+                .id(part.1)
+                .text("Name", &name)
+                .one("ObjectPlacement", Wider, self.placed(*level, frame))
+                .one("Representation", Wider, shape(representation(self.body, "Body", "SweptSolid", items)));
+            if suffix.is_empty() {
+                self.of_class(bolts, *part);
+            }
+            self.contain(*level, *part);
+            self.put(entity)?;
+        }
+        Ok(parts)
+    }
+
+    /// Says the strength class as a material, where that is how it is said.
+    fn of_class(&mut self, bolts: &Bolts, element: Reference) {
+        if let Some((class, ClassIn::Material)) = &bolts.class {
+            self.of_material(class, element);
+        }
     }
 
     fn bolt_type(

@@ -1,8 +1,8 @@
 //! A building of any size: equal frames of five bays and four storeys, one behind the other.
 
 use super::building::{
-    Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, Section, Stiffener,
-    Storey, Welds,
+    Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, PlateAs, Section,
+    Stiffener, Storey, Welds,
 };
 
 const BAYS: usize = 5;
@@ -21,6 +21,7 @@ pub fn frames(joints: usize, told: bool) -> Building {
         storeys: (0..=STOREYS).map(|i| Storey { name: format!("Level {i}"), elevation: i as f64 * HEIGHT }).collect(),
         columns: Vec::new(),
         beams: Vec::with_capacity(beams),
+        plates: PlateAs::Plate,
     };
     for frame in 0..beams.div_ceil(BAYS * STOREYS) {
         let first = building.columns.len();

@@ -36,7 +36,8 @@ use version::{AsIfc2x3, Version};
 pub enum Form {
     /// ifcXML of IFC4 ADD2 TC1.
     IfcXml(Style),
-    /// ifcXML of the first edition of IFC4.
+    /// ifcXML of the first edition of IFC4: relations stand with both ends. Of property sets its XSD allows one object a
+    /// relation; here as many share one as in the other forms, so that the graphs can be compared.
     FirstEdition,
     /// ifcXML of IFC4X3.
     IfcXml4x3,

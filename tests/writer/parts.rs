@@ -4,12 +4,12 @@ use std::io;
 
 use glam::DVec3;
 
-use super::building::{Beam, Building, Column, End, Joint, Level, Section, Stiffener};
+use super::building::{Beam, Building, Column, End, Joint, Level, PlateAs, Section, Stiffener};
 use super::entity::{Declared::*, Entity, Link, Simple, links};
 use super::fastening::Seam;
 use super::hardware;
 use super::model::{Model, Reference, level};
-use super::shapes::{extrusion, i_profile, outline, outline_with_holes, representation, shape};
+use super::shapes::{Outline, extrusion, faceted, i_profile, outline, outline_with_holes, representation, shape};
 use super::space::{Face, Frame, depth_of, ends, face};
 
 /// A pair of stiffeners in a column: its middle level and what it is.
@@ -111,7 +111,7 @@ impl Model<'_> {
         ];
         let middle = DVec3::new(column.at[0], column.at[1], pair.height);
         let frame = Frame { origin: middle - DVec3::Z * thickness / 2.0, z: DVec3::Z, x: along };
-        let plate = self.plate(name, "STIFFENER", column.bottom, frame, outline(&corners), *thickness, grade)?;
+        let plate = self.plate(name, "STIFFENER", column.bottom, frame, (&corners, &[]), *thickness, grade)?;
         let away = DVec3::Z.cross(along);
         let at = |x: f64, y: f64| middle + along * x + away * y;
         let seam = |from, to, into| Seam { from, to, into, across: DVec3::Z, half: thickness / 2.0 };
@@ -134,19 +134,31 @@ impl Model<'_> {
         name: &str,
         level: f64,
         frame: Frame,
-        profile: Entity,
+        (corners, holes): Outline<'_>,
         thickness: f64,
         grade: &str,
     ) -> io::Result<Reference> {
-        let this = ("IfcPlate", self.new_id());
+        let class = match (self.building.plates, name) {
+            (PlateAs::Plate, _) => "IfcPlate",
+            (PlateAs::Member, "STIFFENER") => "IfcColumn",
+            (PlateAs::Member, _) => "IfcBeam",
+        };
+        let this = (class, self.new_id());
         let mark = owner.rsplit([' ', '/']).next().unwrap_or(owner);
-        let entity = Entity::root("IfcPlate", &self.path(owner))
-            .id(this.1)
-            .text("Name", name)
-            .text("Tag", mark)
-            .token("PredefinedType", "SHEET")
-            .one("ObjectPlacement", Wider, self.placed(level, frame))
-            .one("Representation", Wider, self.solid(vec![extrusion(profile, None, thickness).into()]));
+        let entity = Entity::root(class, &self.path(owner)).id(this.1).text("Name", name).text("Tag", mark);
+        let (entity, shape) = match self.building.plates {
+            PlateAs::Plate => {
+                let profile = if holes.is_empty() { outline(corners) } else { outline_with_holes(corners, holes) };
+                let body = self.solid(vec![extrusion(profile, None, thickness).into()]);
+                (entity.token("PredefinedType", "SHEET"), body)
+            }
+            PlateAs::Member => {
+                let brep = faceted(corners, holes, thickness).into();
+                (entity, shape(representation(self.body, "Body", "Brep", vec![brep])))
+            }
+        };
+        let entity =
+            entity.one("ObjectPlacement", Wider, self.placed(level, frame)).one("Representation", Wider, shape);
         self.of_material(grade, this);
         self.put(entity)?;
         Ok(this)
@@ -221,8 +233,7 @@ impl Model<'_> {
             .collect();
         let corners = [[-half, 0.0], [half, 0.0], [half, height], [-half, height]];
         let frame = Frame { origin: face.soffit + DVec3::Z * plate.bottom, z: face.out, x: DVec3::Z.cross(face.out) };
-        let profile = outline_with_holes(&corners, &holes);
         let name = format!("{owner}/plate {}-{}", beam.mark, if which == "start" { 1 } else { 2 });
-        self.plate(&name, "END PLATE", level(beam), frame, profile, plate.thickness, &plate.grade)
+        self.plate(&name, "END PLATE", level(beam), frame, (&corners, &holes), plate.thickness, &plate.grade)
     }
 }

@@ -3,7 +3,7 @@
 use glam::DVec3;
 
 use super::building::Section;
-use super::entity::{Declared::*, Entity, Link};
+use super::entity::{Declared::*, Entity, Field, Link, Simple};
 use super::space::Frame;
 
 fn point(coordinates: &[f64]) -> Entity {
@@ -106,9 +106,60 @@ pub fn outline_with_holes(corners: &[[f64; 2]], holes: &[([f64; 2], f64)]) -> En
         .many("InnerCurves", holes.iter().map(hole).collect())
 }
 
+/// Corners, and round holes by centre and diameter.
+pub type Outline<'a> = (&'a [[f64; 2]], &'a [([f64; 2], f64)]);
+
+/// How many edges a round hole has in a body bounded by plane faces.
+const EDGES: usize = 24;
+
+/// A prism on an outline, bounded by plane faces.
+pub fn faceted(corners: &[[f64; 2]], holes: &[([f64; 2], f64)], depth: f64) -> Entity {
+    let around = |([x, y], diameter): &([f64; 2], f64)| -> Vec<[f64; 2]> {
+        // clockwise: the material is outside
+        let angles = (0..EDGES).rev().map(|edge| std::f64::consts::TAU * edge as f64 / EDGES as f64);
+        angles.map(|angle| [x + angle.cos() * diameter / 2.0, y + angle.sin() * diameter / 2.0]).collect()
+    };
+    let loops: Vec<Vec<[f64; 2]>> = std::iter::once(corners.to_vec()).chain(holes.iter().map(around)).collect();
+    let bound = |class, points: Vec<[f64; 3]>| -> Link {
+        let points = points.iter().map(|xyz| point(xyz).into()).collect();
+        Entity::new(class)
+            .one("Bound", Wider, Entity::new("IfcPolyLoop").many("Polygon", points))
+            .field(Field::Simple("Orientation", Simple::Truth(true)))
+            .into()
+    };
+    let class = |index| if index == 0 { "IfcFaceOuterBound" } else { "IfcFaceBound" };
+    let cap = |z: f64, turned: bool| -> Link {
+        let bounds = loops.iter().enumerate().map(|(index, corners)| {
+            let mut points: Vec<[f64; 3]> = corners.iter().map(|[x, y]| [*x, *y, z]).collect();
+            if turned {
+                points.reverse();
+            }
+            bound(class(index), points)
+        });
+        Entity::new("IfcFace").many("Bounds", bounds.collect()).into()
+    };
+    let mut faces = vec![cap(0.0, true), cap(depth, false)];
+    for corners in &loops {
+        for (index, [x, y]) in corners.iter().enumerate() {
+            let [next_x, next_y] = corners[(index + 1) % corners.len()];
+            let side = vec![[*x, *y, 0.0], [next_x, next_y, 0.0], [next_x, next_y, depth], [*x, *y, depth]];
+            faces.push(Entity::new("IfcFace").many("Bounds", vec![bound("IfcFaceOuterBound", side)]).into());
+        }
+    }
+    Entity::new("IfcFacetedBrep").one("Outer", Exactly, Entity::new("IfcClosedShell").many("CfsFaces", faces))
+}
+
 /// A full circle.
 pub fn circle(diameter: f64) -> Entity {
     Entity::new("IfcCircleProfileDef").token("ProfileType", "AREA").real("Radius", diameter / 2.0)
+}
+
+/// A ring by its outer and inner diameter.
+pub fn ring(outer: f64, inner: f64) -> Entity {
+    Entity::new("IfcCircleHollowProfileDef")
+        .token("ProfileType", "AREA")
+        .real("Radius", outer / 2.0)
+        .real("WallThickness", (outer - inner) / 2.0)
 }
 
 /// A regular hexagon by its width across flats.
@@ -121,9 +172,10 @@ pub fn hexagon(across_flats: f64) -> Entity {
     outline(&corners)
 }
 
-/// An item that repeats a map where it stands.
-pub fn mapped(map: u64) -> Entity {
-    let target = Entity::new("IfcCartesianTransformationOperator3D").one("LocalOrigin", Exactly, point(&[0.0; 3]));
+/// An item that repeats a map at a place.
+pub fn mapped(map: u64, at: DVec3) -> Entity {
+    let at = point(&at.to_array());
+    let target = Entity::new("IfcCartesianTransformationOperator3D").one("LocalOrigin", Exactly, at);
     Entity::new("IfcMappedItem").one("MappingSource", Exactly, Link::To("IfcRepresentationMap", map)).one(
         "MappingTarget",
         Wider,

@@ -107,7 +107,9 @@ impl<S: Sink> AsIfc2x3<S> {
         let has = |name: &str| entity.fields.iter().any(|field| field.name() == name);
         // these were not optional yet
         let place = match class {
-            "IfcIShapeProfileDef" | "IfcCircleProfileDef" if !has("Position") => Some(flat_axes(&[0.0, 0.0])),
+            "IfcIShapeProfileDef" | "IfcCircleProfileDef" | "IfcCircleHollowProfileDef" if !has("Position") => {
+                Some(flat_axes(&[0.0, 0.0]))
+            }
             "IfcExtrudedAreaSolid" if !has("Position") => Some(axes(moved(DVec3::ZERO))),
             _ => None,
         };
