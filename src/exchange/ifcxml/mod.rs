@@ -38,7 +38,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
     let mut parser = Parser::new(file, problems);
     let mut dialect = Dialect::default();
     let mut started = false;
-    let mut room = Vec::new();
+    let mut head = Head::default();
     loop {
         let offset = xml.buffer_position() as usize;
         let event = match xml.read_event() {
@@ -85,11 +85,10 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>) -> Result<E
                     }
                     started = true;
                 } else {
-                    let head = Head::read(bytes, start, spot, room, &mut parser.problems).map_err(|error| {
+                    head.read(bytes, start, spot, &mut parser.problems).map_err(|error| {
                         format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)
                     })?;
                     parser.start(&head);
-                    room = head.rest;
                 }
                 if let Event::Empty(_) = event {
                     parser.end();
