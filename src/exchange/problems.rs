@@ -30,10 +30,11 @@ impl<'a> Ruler<'a> {
     pub fn spot(&mut self, offset: usize) -> Spot {
         let end = offset.min(self.bytes.len());
         let mut passed = self.bytes.get(self.offset..end).unwrap_or_default();
-        if let Some(last) = memchr::memrchr(b'\n', passed) {
-            let lines = memchr::memchr_iter(b'\n', &passed[..last]).count() + 1;
+        // what is passed is short as a rule
+        let lines = passed.iter().filter(|byte| **byte == b'\n').count();
+        if lines > 0 {
             self.spot = Spot { line: self.spot.line.saturating_add(lines as u32), column: 1 };
-            passed = &passed[last + 1..];
+            passed = passed.rsplit(|byte| *byte == b'\n').next().unwrap_or_default();
         }
         let characters = match passed.is_ascii() {
             true => passed.len(),

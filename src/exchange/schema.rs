@@ -72,6 +72,14 @@ pub(super) struct Class {
     pub inverses: Vec<Inverse>,
 }
 
+/// What a name stands for in the schema.
+#[derive(Clone, Copy)]
+pub(super) enum Named {
+    Class(ClassId),
+    Type(TypeId, Kind),
+    Neither,
+}
+
 /// One version of the schema.
 #[derive(Debug)]
 pub(super) struct Schema {
@@ -105,6 +113,16 @@ impl Schema {
     /// The entity of that name, in whatever case.
     pub fn find(&self, name: &str) -> Option<ClassId> {
         self.by_name.find(hash(name), |(known, _)| known.eq_ignore_ascii_case(name)).map(|(_, class)| *class)
+    }
+
+    /// The entity or the defined type of that name, in whatever case.
+    pub fn named(&self, name: &str) -> Named {
+        let hash = hash(name);
+        if let Some((_, class)) = self.by_name.find(hash, |(known, _)| known.eq_ignore_ascii_case(name)) {
+            return Named::Class(*class);
+        }
+        let known = self.types_by_name.find(hash, |(known, _)| known.eq_ignore_ascii_case(name));
+        known.and_then(|(_, id)| Some(Named::Type(*id, self.types.get(usize::from(*id))?.1))).unwrap_or(Named::Neither)
     }
 
     /// The defined type of that name, in whatever case, and its kind.

@@ -29,21 +29,23 @@ pub(super) struct Head<'x> {
 pub(super) type Pos = (u32, u32);
 
 impl<'x> Head<'x> {
-    /// Reads the start tag, which stands in `document`; `rest` is room to use.
+    /// Reads the start tag, which stands in `document`, into what was another one's head.
     ///
     /// # Errors
     /// What is not well-formed about it.
     pub fn read(
+        &mut self,
         document: &'x [u8],
         start: &BytesStart,
         spot: Spot,
-        mut rest: Vec<(Cow<'x, str>, &'x [u8])>,
         problems: &mut Problems,
-    ) -> Result<Self, String> {
+    ) -> Result<(), String> {
         let lasting = |piece: &[u8]| within(document, piece).ok_or_else(|| "it can't be followed".to_owned());
-        rest.clear();
-        let name = local(lasting(start.name().as_ref())?, spot, problems);
-        let mut head = Self { name, spot, rest, ..Self::default() };
+        self.name = local(lasting(start.name().as_ref())?, spot, problems);
+        self.spot = spot;
+        (self.id, self.reference, self.elsewhere, self.class) = (None, None, None, None);
+        (self.nil, self.pos) = (false, None);
+        self.rest.clear();
         // repeated attributes are found where they are set: the library's own check takes quadratic time
         for attribute in start.attributes().with_checks(false) {
             let attribute = attribute.map_err(|e| e.to_string())?;
@@ -56,25 +58,25 @@ impl<'x> Head<'x> {
             let raw = lasting(&attribute.value)?;
             let name = local(key, spot, problems);
             match &*name {
-                "id" => head.id = Some(text(raw, spot, problems)),
-                "ref" => head.reference = Some(text(raw, spot, problems)),
+                "id" => self.id = Some(text(raw, spot, problems)),
+                "ref" => self.reference = Some(text(raw, spot, problems)),
                 "href" => match cut(text(raw, spot, problems), |href| href.strip_prefix('#')) {
-                    Ok(label) => head.reference = Some(label),
-                    Err(href) => head.elsewhere = Some(href),
+                    Ok(label) => self.reference = Some(label),
+                    Err(href) => self.elsewhere = Some(href),
                 },
-                "nil" => head.nil = matches!(raw.trim_ascii(), b"true" | b"1"),
+                "nil" => self.nil = matches!(raw.trim_ascii(), b"true" | b"1"),
                 "type" => {
                     let class = cut(text(raw, spot, problems), |class| class.rsplit(':').next().map(str::trim));
-                    head.class = Some(class.unwrap_or_else(|class| class));
+                    self.class = Some(class.unwrap_or_else(|class| class));
                 }
-                "pos" => head.pos = head.position(&text(raw, spot, problems), problems),
+                "pos" => self.pos = self.position(&text(raw, spot, problems), problems),
                 // written for people and schema processors only
                 "cType" | "itemType" | "arraySize" | "path" | "extraBits" => {}
                 "schemaLocation" | "noNamespaceSchemaLocation" => {}
-                _ => head.rest.push((name, raw)),
+                _ => self.rest.push((name, raw)),
             }
         }
-        Ok(head)
+        Ok(())
     }
 
     /// Whether it stands for an entity that is defined elsewhere.
@@ -124,11 +126,11 @@ fn local<'x>(name: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str
         Some(colon) => &name[colon + 1..],
         None => name,
     };
-    let local = String::from_utf8_lossy(local);
-    if let Cow::Owned(_) = local {
-        not_utf8(spot, problems);
+    if let Ok(local) = std::str::from_utf8(local) {
+        return local.into();
     }
-    local
+    not_utf8(spot, problems);
+    String::from_utf8_lossy(local)
 }
 
 /// The text of a piece of XML that needs no decoding; `None` where it may need some.

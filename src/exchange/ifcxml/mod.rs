@@ -36,7 +36,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
     let mut parser = Parser::new(file, problems, limits);
     let mut dialect = Dialect::default();
     let mut started = false;
-    let mut room = Vec::new();
+    let mut head = Head::default();
     loop {
         let offset = xml.buffer_position() as usize;
         let event = match xml.read_event() {
@@ -83,11 +83,10 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
                     }
                     started = true;
                 } else {
-                    let head = Head::read(bytes, start, spot, room, &mut parser.problems).map_err(|error| {
+                    head.read(bytes, start, spot, &mut parser.problems).map_err(|error| {
                         format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)
                     })?;
                     parser.start(&head);
-                    room = head.rest;
                     if parser.entities.len() > limits.entities {
                         return Err(limits.too_many_entities(spot));
                     }

@@ -7,7 +7,7 @@ use super::super::labels::Labels;
 use super::super::limits::Limits;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
-use super::super::schema::{Attribute, Base, ClassId, Kind, Schema};
+use super::super::schema::{Attribute, Base, ClassId, Kind, Named, Schema};
 use super::super::store::Cell;
 use super::super::waiting::WAITING;
 use super::super::{Entities, Id};
@@ -168,12 +168,12 @@ impl<'x> Parser<'x> {
         } else if head.nil {
             self.skip();
         } else {
-            let typed = head.class.as_deref().and_then(|name| self.schema.find_type(name));
+            let named = head.class.as_deref().map_or(Named::Neither, |name| self.schema.named(name));
             let slot = Slot::new(head, self.items.len(), target, kind);
-            if let Some((name, kind)) = typed {
+            if let Named::Type(name, kind) = named {
                 self.stack.push(Frame::Slot(slot.typed(name, kind)));
             } else if head.class.is_some() || head.id.is_some() || !head.rest.is_empty() {
-                self.start_direct(slot, head);
+                self.start_direct(slot, named, head);
             } else {
                 self.stack.push(Frame::Slot(slot));
             }
@@ -181,9 +181,9 @@ impl<'x> Parser<'x> {
     }
 
     /// An attribute's element that is itself the entity.
-    fn start_direct(&mut self, slot: Slot<'x>, head: &Head<'x>) {
+    fn start_direct(&mut self, slot: Slot<'x>, named: Named, head: &Head<'x>) {
         let class = match (slot.kind.base, &head.class) {
-            (Base::Entity(_) | Base::Select | Base::Any, Some(name)) => self.class(name, head),
+            (Base::Entity(_) | Base::Select | Base::Any, Some(name)) => self.class(name, named, head),
             (Base::Entity(class), None) if !self.schema.class(class).is_some_and(|c| c.is_abstract) => class,
             (Base::Entity(_) | Base::Select | Base::Any, None) => {
                 let class = if let Base::Entity(class) = slot.kind.base { class } else { self.entities.class_id("") };
@@ -226,7 +226,7 @@ impl<'x> Parser<'x> {
         if let Some(Frame::Slot(slot)) = self.stack.pop() {
             stray_text(&slot.text, &slot.name, slot.spot, &mut self.problems);
             let outer = Head { name: slot.name.clone(), spot: slot.spot, ..Head::default() };
-            self.start_direct(slot, &outer);
+            self.start_direct(slot, Named::Neither, &outer);
         }
         if let Some(Frame::Entity(open)) = self.stack.last() {
             let class = open.class;
@@ -242,10 +242,13 @@ impl<'x> Parser<'x> {
         };
         let item = Kind { depth: 0, row: 0, ..kind };
         if head.is_reference() {
-            self.deliver_reference(head, Target::Item, kind);
-        } else if head.nil {
-            self.skip();
-        } else if let Some((name, typed)) = self.schema.find_type(name) {
+            return self.deliver_reference(head, Target::Item, kind);
+        }
+        if head.nil {
+            return self.skip();
+        }
+        let named = self.schema.named(name);
+        if let Named::Type(name, typed) = named {
             let slot = Slot::new(head, self.items.len(), Target::Item, item);
             self.stack.push(Frame::Slot(slot.typed(name, typed)));
         } else if wrapped {
@@ -257,16 +260,16 @@ impl<'x> Parser<'x> {
             }
             self.stack.push(Frame::Slot(slot));
         } else {
-            let class = self.class(name, head);
+            let class = self.class(name, named, head);
             let open = self.open(class, head);
             self.deliver(Target::Item, &head.name, kind, head.pos, Cell::entity(open.id), head.spot);
             self.push(open);
         }
     }
 
-    /// The class of that name.
-    fn class(&mut self, name: &str, head: &Head<'x>) -> ClassId {
-        let class = self.entities.class_id(name);
+    /// The class of that name, which stands for `named` in the schema.
+    fn class(&mut self, name: &str, named: Named, head: &Head<'x>) -> ClassId {
+        let class = if let Named::Class(class) = named { class } else { self.entities.class_id(name) };
         match self.schema.class(class) {
             None => self.problems.add("unknown entity", head.spot, || {
                 format!("{name} is no entity of the schema; it is kept, but nothing of it is understood")

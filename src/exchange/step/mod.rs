@@ -38,6 +38,8 @@ struct Reader<'a> {
     items: Vec<Cell>,
     /// The records by the numbers that the file gives them.
     numbers: Vec<(u64, Id)>,
+    /// Whether each of these was larger than the one before.
+    is_ascending: bool,
     /// References by number, and who refers.
     references: Vec<(u64, Id)>,
     /// Where the first text that is not UTF-8 stands, and how many there are.
@@ -60,6 +62,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
         problems,
         items: Vec::new(),
         numbers: Vec::new(),
+        is_ascending: true,
         references: Vec::new(),
         latin1: None,
         limits,

@@ -133,6 +133,11 @@ impl Reader<'_> {
             let shown = quoted(&format!("#{digits}"));
             return Err(Trouble::Wrong(format!("refers to {shown}, which is no id")));
         };
+        if self.is_ascending
+            && let Some(known) = self.target(number)
+        {
+            return Ok(Cell::entity(known));
+        }
         self.references.push((number, from));
         Ok(Cell::entity(Id(WAITING + (self.references.len() - 1) as u32)))
     }
