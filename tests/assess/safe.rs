@@ -385,3 +385,22 @@ proptest! {
         prop_assert!(most <= 1.0 + 1e-9);
     }
 }
+
+#[test]
+fn a_joint_that_fails_without_a_partial_depth_stiffener_is_not_proven_to_fail() {
+    let huge = case(Some(5000.0), Some(20.0), Some(0.0));
+    let ends = |full_depth: Option<bool>| {
+        let layout = plain(|l| {
+            l.stiffeners = full_depth
+                .into_iter()
+                .map(|full_depth| faying::joints::Stiffener {
+                    full_depth,
+                    ..stiffener(&RULES, "S275", 380.0, 12.0, 100.0, mm(120.0))
+                })
+                .collect();
+        });
+        asked(&layout, &huge, Opposite::None, &RULES).carries()
+    };
+    assert_eq!(ends(None), State::NotMet);
+    assert_eq!(ends(Some(false)), State::Unproven);
+}

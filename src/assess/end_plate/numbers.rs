@@ -371,7 +371,16 @@ fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Opti
         return refuse("it is on one side of the web only");
     }
     if !stiffener.full_depth {
-        return refuse("it does not reach from flange to flange (partial-depth stiffeners are not assessed yet)");
+        const WHY: &str = "it does not reach from flange to flange (partial-depth stiffeners are not assessed yet)";
+        let refused = refuse(WHY);
+        // Like every strengthening part without credit: what fails without it is not proven to fail.
+        noted.gaps.push(Gap::LowerBound(Missing {
+            what: "credit for a strengthening part".into(),
+            reason: format!("{at}: {WHY}"),
+            at: None,
+            ask: Ask::Method,
+        }));
+        return refused;
     }
     let grade = match &stiffener.grade {
         Ok(grade) => grade,
