@@ -1,0 +1,205 @@
+//! The joint from the side: column, stiffeners, end plate, beam, bolts, welds, row forces, what governs.
+
+use super::Scene;
+use super::canvas::{Anchor, Canvas, Ink};
+use super::dimension::{self, figure};
+use crate::review::RowResult;
+
+/// Draws it with the column's loaded face at paper `x0`.
+pub(super) fn draw(canvas: &mut Canvas, scene: &Scene<'_>, x0: f64) {
+    let view = View { scene, x0 };
+    canvas.text("title", Anchor::Start, (x0 - scene.sketch.column.depth_mm * scene.scale, 4.0), "Elevation");
+    view.column(canvas);
+    view.beam(canvas);
+    view.governs(canvas);
+    view.bolts(canvas);
+    view.welds(canvas);
+    view.forces(canvas);
+    view.dimensions(canvas);
+}
+
+struct View<'a> {
+    scene: &'a Scene<'a>,
+    x0: f64,
+}
+
+impl View<'_> {
+    /// Paper point of a distance out of the column's face and a height, mm of steel.
+    fn at(&self, out: f64, height: f64) -> (f64, f64) {
+        (self.x0 + out * self.scene.scale, self.scene.y(height))
+    }
+
+    fn column(&self, canvas: &mut Canvas) {
+        let (scene, column) = (self.scene, &self.scene.sketch.column);
+        let (h, t_f) = (column.depth_mm, column.flange_mm.unwrap_or(0.0));
+        let (bottom, top) = (scene.bottom, scene.top);
+        for stiffener in &scene.sketch.stiffeners {
+            let reach = if stiffener.full_depth { h - 2.0 * t_f } else { stiffener.reach_mm.min(h - 2.0 * t_f) };
+            let half = stiffener.thickness_mm / 2.0;
+            let (a, b) = (self.at(-t_f - reach, stiffener.height_mm - half), self.at(-t_f, stiffener.height_mm + half));
+            canvas.rect(if stiffener.both_sides { Ink::Cut } else { Ink::Plate }, a, b);
+        }
+        let edges = if t_f > 0.0 { vec![-h, t_f - h, -t_f, 0.0] } else { vec![-h, 0.0] };
+        for x in edges {
+            canvas.line(Ink::Edge, self.at(x, bottom), self.at(x, top));
+        }
+        for (end, shown) in [(scene.sketch.column_top_mm, top), (scene.sketch.column_bottom_mm, bottom)] {
+            match end == Some(shown) {
+                true => canvas.line(Ink::Edge, self.at(-h, shown), self.at(0.0, shown)),
+                false => canvas.broken(self.at(-h, shown), self.at(0.0, shown)),
+            }
+        }
+        canvas.text("", Anchor::Start, (self.at(-h, top).0, 9.5), &format!("column {}", column.label));
+    }
+
+    fn beam(&self, canvas: &mut Canvas) {
+        let (sketch, stub) = (self.scene.sketch, self.scene.stub);
+        let (beam, t_p) = (&sketch.beam, sketch.plate.thickness_mm);
+        let (h, t_f) = (beam.depth_mm, beam.flange_mm.unwrap_or(0.0));
+        canvas.rect(Ink::Plate, self.at(0.0, sketch.plate.bottom_mm), self.at(t_p, sketch.plate.top_mm));
+        let edges = if t_f > 0.0 { vec![0.0, t_f, h - t_f, h] } else { vec![0.0, h] };
+        for y in edges {
+            canvas.line(Ink::Edge, self.at(t_p, y), self.at(t_p + stub, y));
+        }
+        canvas.broken(self.at(t_p + stub, 0.0), self.at(t_p + stub, h));
+        let (x, _) = self.at(t_p + stub, 0.0);
+        canvas.text("", Anchor::End, (x, self.scene.y(self.scene.bottom) - 1.0), &format!("beam {}", beam.label));
+    }
+
+    /// Heads and nuts at both ends of each bolt, its axis, its row's number.
+    fn bolts(&self, canvas: &mut Canvas) {
+        let sketch = self.scene.sketch;
+        let (t_p, t_f) = (sketch.plate.thickness_mm, sketch.column.flange_mm.unwrap_or(0.0));
+        for (i, row) in sketch.rows.iter().enumerate() {
+            let y = row.height_mm;
+            let reach = sketch.bolt_mm.unwrap_or(0.0);
+            if let Some(d) = sketch.bolt_mm {
+                canvas.rect(Ink::Bolt, self.at(-t_f - 0.8 * d, y - 0.8 * d), self.at(-t_f, y + 0.8 * d));
+                canvas.rect(Ink::Bolt, self.at(t_p, y - 0.8 * d), self.at(t_p + 0.7 * d, y + 0.8 * d));
+                for side in [-0.5, 0.5] {
+                    canvas.line(Ink::Hidden, self.at(-t_f, y + side * d), self.at(t_p, y + side * d));
+                }
+            }
+            canvas.line(Ink::Axis, self.at(-t_f - 2.0 * reach, y), self.at(t_p + 2.0 * reach, y));
+            let (x, y) = self.at(-t_f - 2.0 * reach, y);
+            canvas.text("", Anchor::End, (x - 0.6, y + 0.95), &format!("row {}", i + 1));
+        }
+    }
+
+    /// Fillets as they lie, not smaller than can be seen; their throats beside them.
+    fn welds(&self, canvas: &mut Canvas) {
+        let (sketch, scale) = (self.scene.sketch, self.scene.scale);
+        let (t_p, h, t_f) = (sketch.plate.thickness_mm, sketch.beam.depth_mm, sketch.beam.flange_mm.unwrap_or(0.0));
+        let [top, web, bottom] = sketch.throats_mm;
+        let leg = |a: f64| (2.0_f64.sqrt() * a).max(1.1 / scale);
+        let mut fillet = |a: Option<f64>, y: f64, up: f64, room: f64| {
+            if let Some(leg) = a.map(leg).filter(|leg| *leg <= room) {
+                let at = |out: f64, up: f64| self.at(t_p + out, y + up);
+                canvas.polygon(Ink::Weld, &[at(0.0, 0.0), at(leg, 0.0), at(0.0, up * leg)]);
+            }
+        };
+        fillet(top, h, 1.0, sketch.plate.top_mm - h);
+        fillet(top, h - t_f, -1.0, f64::INFINITY);
+        fillet(bottom, t_f, 1.0, f64::INFINITY);
+        fillet(bottom, 0.0, -1.0, -sketch.plate.bottom_mm);
+        if let Some(leg) = web.map(leg) {
+            canvas.rect(Ink::Weld, self.at(t_p, t_f), self.at(t_p + 0.4 * leg, h - t_f));
+        }
+        let said = |a: Option<f64>| a.map_or_else(|| "a not known".into(), |a| format!("a {}", figure(a)));
+        // The web's throat where no row's force is written.
+        let taken = |y: f64| sketch.rows.iter().map(|row| (row.height_mm - y).abs()).fold(f64::INFINITY, f64::min);
+        let free = (2..=8).map(|part| f64::from(part) / 10.0 * h);
+        let middle = free.max_by(|a, b| taken(*a).total_cmp(&taken(*b))).unwrap_or(h / 2.0);
+        for (a, y, shift) in [(top, h - t_f, 3.0), (web, middle, 0.95), (bottom, t_f, -0.8)] {
+            let (x, y) = self.at(t_p, y);
+            canvas.text("", Anchor::Start, (x + 2.2, y + shift), &said(a));
+        }
+    }
+
+    /// Row forces pull at the plate, their sum presses at the compression flange.
+    fn forces(&self, canvas: &mut Canvas) {
+        let (scene, sketch) = (self.scene, self.scene.sketch);
+        let (t_p, h, t_f) = (sketch.plate.thickness_mm, sketch.beam.depth_mm, sketch.beam.flange_mm.unwrap_or(0.0));
+        let number = |row: &&RowResult| row.force_kn.is_finite() && row.force_kn > 0.0;
+        let most = scene.joint.rows.iter().filter(number).map(|row| row.force_kn).fold(0.0, f64::max);
+        let room = scene.stub * scene.scale;
+        let start = (1.4 * sketch.bolt_mm.unwrap_or(0.0) * scene.scale).max(3.0);
+        // Arrows end where their figures still have room.
+        let longest = (room - start - 21.0).max(6.0);
+        for row in scene.joint.rows.iter().filter(number) {
+            let Some(at) = row.row.checked_sub(1).and_then(|i| sketch.rows.get(i)) else { continue };
+            let (x, y) = self.at(t_p, at.height_mm);
+            let tip = x + start + (longest * row.force_kn / most).max(4.0);
+            canvas.arrow(Ink::Force, (x + start, y), (tip, y));
+            canvas.text("force", Anchor::Start, (tip + 0.8, y + 0.95), &format!("F{} {:.0} kN", row.row, row.force_kn));
+        }
+        let sum: f64 = scene.joint.rows.iter().map(|row| row.force_kn).sum();
+        if let Some(basis) = &scene.joint.row_basis
+            && sum.is_finite()
+            && sum > 0.0
+        {
+            let (x, y) = self.at(t_p, if basis.tension_at_top { t_f / 2.0 } else { h - t_f / 2.0 });
+            let from = x + start + longest;
+            canvas.arrow(Ink::Force, (from, y), (x + 0.6, y));
+            canvas.text("force", Anchor::Start, (from + 0.8, y + 0.95), &format!("ΣF {sum:.0} kN"));
+        }
+    }
+
+    /// A broken outline round what governs, and its name below.
+    fn governs(&self, canvas: &mut Canvas) {
+        let (scene, sketch) = (self.scene, self.scene.sketch);
+        let (t_p, h, t_b) = (sketch.plate.thickness_mm, sketch.beam.depth_mm, sketch.beam.flange_mm.unwrap_or(0.0));
+        let (h_c, t_c) = (sketch.column.depth_mm, sketch.column.flange_mm.unwrap_or(0.0));
+        let rows = || scene.joint.rows.iter().filter_map(|row| sketch.rows.get(row.row.checked_sub(1)?));
+        let upper = rows().map(|row| row.height_mm).fold(f64::NEG_INFINITY, f64::max) + 40.0;
+        let lower = rows().map(|row| row.height_mm).fold(f64::INFINITY, f64::min) - 40.0;
+        let (upper, lower) = if upper > lower { (upper, lower) } else { (sketch.plate.top_mm, sketch.plate.bottom_mm) };
+        let at_top = scene.joint.row_basis.as_ref().is_some_and(|basis| !basis.tension_at_top);
+        let flange = if at_top { h - t_b } else { 0.0 };
+        let tension = if at_top { 0.0 } else { h - t_b };
+        let spread = 0.12 * h;
+        let places: [(&[&str], (f64, f64), (f64, f64)); 10] = [
+            (&["column-web-panel"], (t_c - h_c, 0.0), (-t_c, h)),
+            (&["column-web-in-compression"], (t_c - h_c, flange - spread), (-t_c, flange + t_b + spread)),
+            (&["column-web", "column-stiffener", "stiffener"], (t_c - h_c, lower), (-t_c, upper)),
+            (&["column-flange"], (-t_c, lower), (0.0, upper)),
+            (&["end-plate"], (0.0, lower), (t_p, upper)),
+            (&["bolts", "punching"], (-t_c - spread / 2.0, lower), (t_p + spread / 2.0, upper)),
+            (&["beam-flange"], (t_p, flange - 6.0), (t_p + 2.0 * spread, flange + t_b + 6.0)),
+            (&["beam-web"], (t_p, t_b), (t_p + 2.0 * spread, h - t_b)),
+            (&["flange-weld"], (t_p - 6.0, tension - 15.0), (t_p + spread, tension + t_b + 15.0)),
+            (&["web-weld"], (t_p - 6.0, t_b), (t_p + spread / 2.0, h - t_b)),
+        ];
+        if let Some((_, a, b)) = places.iter().find(|(parts, ..)| scene.governs(parts)) {
+            canvas.rect(Ink::Governs, self.at(a.0, a.1), self.at(b.0, b.1));
+        }
+        if let Some(what) = crate::report::group::governing(scene.joint) {
+            let y = scene.y(scene.bottom) + 19.5;
+            let x = self.at(-h_c, 0.0).0;
+            canvas.line(Ink::Governs, (x, y - 0.9), (x + 8.0, y - 0.9));
+            canvas.text("governs", Anchor::Start, (x + 10.0, y), &format!("governs: {what}"));
+        }
+    }
+
+    fn dimensions(&self, canvas: &mut Canvas) {
+        let (scene, sketch) = (self.scene, self.scene.sketch);
+        let (h_c, t_p) = (sketch.column.depth_mm, sketch.plate.thickness_mm);
+        let y = scene.y(scene.bottom) + 6.0;
+        let ticks = [-h_c, 0.0].map(|x| (self.at(x, 0.0).0, x));
+        dimension::level(canvas, y, &ticks);
+        let (left, right) = (self.at(0.0, 0.0).0, self.at(t_p, 0.0).0);
+        for x in [left, right] {
+            canvas.line(Ink::Thin, (x, scene.y(sketch.plate.bottom_mm) + 0.8), (x, y + 1.2));
+        }
+        canvas.line(Ink::Thin, (right, y), (right + 3.0, y));
+        canvas.text("", Anchor::Start, (right + 1.2, y - 0.8), &format!("plate {}", figure(t_p)));
+        let stiffeners: Vec<(f64, String)> = (sketch.stiffeners.iter())
+            .map(|s| (scene.y(s.height_mm), format!("+{} ({})", figure(s.height_mm), figure(s.thickness_mm))))
+            .collect();
+        if !stiffeners.is_empty() {
+            let x = self.at(-h_c, 0.0).0 - 0.6;
+            canvas.text("", Anchor::Start, (1.0, scene.y(scene.top) - 3.5), "stiffeners");
+            dimension::listed(canvas, x, true, &stiffeners);
+        }
+    }
+}
