@@ -1,14 +1,15 @@
 //! Dimension lines, figures in mm.
 
 use super::canvas::{Anchor, Canvas, Ink};
+use crate::report::number;
 
 /// Figures that stand closer than this would run into each other, mm of paper.
 const APART: f64 = 3.1;
 
 /// A length as it is written on a drawing: to a tenth, without a useless zero.
-pub(super) fn figure(mm: f64) -> String {
-    let rounded = (mm * 10.0).round() / 10.0 + 0.0;
-    rounded.to_string()
+pub(in crate::report) fn figure(mm: f64) -> String {
+    let tenth = number::one_decimal(mm);
+    tenth.strip_suffix(".0").unwrap_or(&tenth).to_owned()
 }
 
 /// Ticks at paper positions along a level line at `y`, the lengths between them as figures.

@@ -141,7 +141,12 @@ impl View<'_> {
             let (x, y) = self.at(t_p, if basis.tension_at_top { t_f / 2.0 } else { h - t_f / 2.0 });
             let from = x + start + longest;
             canvas.arrow(Ink::Force, (from, y), (x + 0.6, y));
-            canvas.text("force", Anchor::Start, (from + 0.8, y + 0.95), &format!("ΣF {sum:.0} kN"));
+            canvas.text(
+                "force",
+                Anchor::Start,
+                (from + 0.8, if basis.tension_at_top { y - 2.4 } else { y + 4.2 }),
+                &format!("ΣF {sum:.0} kN"),
+            );
         }
     }
 
@@ -150,7 +155,11 @@ impl View<'_> {
         let (scene, sketch) = (self.scene, self.scene.sketch);
         let (t_p, h, t_b) = (sketch.plate.thickness_mm, sketch.beam.depth_mm, sketch.beam.flange_mm.unwrap_or(0.0));
         let (h_c, t_c) = (sketch.column.depth_mm, sketch.column.flange_mm.unwrap_or(0.0));
-        let rows = || scene.joint.rows.iter().filter_map(|row| sketch.rows.get(row.row.checked_sub(1)?));
+        let named = scene.governs.and_then(|check| rows_in(&check.title));
+        let rows = || {
+            let meant = scene.joint.rows.iter().filter(|row| named.is_none_or(|(a, b)| (a..=b).contains(&row.row)));
+            meant.filter_map(|row| sketch.rows.get(row.row.checked_sub(1)?))
+        };
         let upper = rows().map(|row| row.height_mm).fold(f64::NEG_INFINITY, f64::max) + 40.0;
         let lower = rows().map(|row| row.height_mm).fold(f64::INFINITY, f64::min) - 40.0;
         let (upper, lower) = if upper > lower { (upper, lower) } else { (sketch.plate.top_mm, sketch.plate.bottom_mm) };
@@ -171,7 +180,9 @@ impl View<'_> {
             (&["web-weld"], (t_p - 6.0, t_b), (t_p + spread / 2.0, h - t_b)),
         ];
         if let Some((_, a, b)) = places.iter().find(|(parts, ..)| scene.governs(parts)) {
-            canvas.rect(Ink::Governs, self.at(a.0, a.1), self.at(b.0, b.1));
+            // Off the edges, so that both stay visible.
+            let ((x1, y1), (x2, y2)) = (self.at(a.0, a.1), self.at(b.0, b.1));
+            canvas.rect(Ink::Governs, (x1 - 0.8, y1 + 0.8), (x2 + 0.8, y2 - 0.8));
         }
         if let Some(what) = crate::report::group::governing(scene.joint) {
             let y = scene.y(scene.bottom) + 19.5;
@@ -202,4 +213,13 @@ impl View<'_> {
             dimension::listed(canvas, x, true, &stiffeners);
         }
     }
+}
+
+/// First and last row that a check's title names: "end plate in bending, rows 2-3 (mode 1)".
+fn rows_in(title: &str) -> Option<(usize, usize)> {
+    let (_, rest) = title.split_once(", row ").or_else(|| title.split_once(", rows "))?;
+    let mut numbers = rest.split(|c: char| !c.is_ascii_digit()).map(str::parse::<usize>);
+    let first = numbers.next()?.ok()?;
+    let last = if rest[first.to_string().len()..].starts_with('-') { numbers.next()?.ok()? } else { first };
+    Some((first, last))
 }

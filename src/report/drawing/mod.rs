@@ -13,6 +13,7 @@ use crate::review::sketch::Sketch;
 use crate::review::{CheckResult, JointReview};
 use canvas::Canvas;
 pub use canvas::STYLE;
+pub(super) use dimension::figure;
 
 use super::group;
 

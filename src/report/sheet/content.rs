@@ -5,6 +5,7 @@ use super::parts;
 use super::working::{self, WorkLine};
 use crate::report::group;
 use crate::review::{CheckResult, JointReview, Review};
+use crate::working::Working;
 
 /// A part of a section.
 #[derive(Clone, Debug)]
@@ -76,7 +77,7 @@ pub(super) fn sheet(review: &Review, joint: &JointReview) -> Sheet {
         sections.push(Section { level: 2, heading: format!("{number} {heading}"), blocks });
         number
     };
-    add("Outcome", parts::outcome(joint));
+    add("Outcome", parts::outcome(review, joint));
     if let Some(sketch) = &joint.sketch {
         add("The joint as detailed", parts::detailed(sketch));
     }
@@ -84,35 +85,37 @@ pub(super) fn sheet(review: &Review, joint: &JointReview) -> Sheet {
         add("Intended and detailed", parts::difference(joint, intended, detailed));
     }
     if !joint.inputs.is_empty() {
-        add("Inputs and where they came from", vec![parts::inputs(joint)]);
+        add("Inputs and where they came from", vec![parts::inputs(review, joint)]);
     }
     if !joint.rows.is_empty() {
         add("Row forces", parts::rows(joint));
     }
     if !joint.checks.is_empty() {
-        add("Checks", parts::checks(joint));
+        add("Checks", parts::checks(review, joint));
         let number = add("Working", vec![Block::Line(text(parts::HOW_TO_READ))]);
         let common = [
             ("gamma_M0", review.basis.gamma_m0),
             ("gamma_M1", review.basis.gamma_m1),
             ("gamma_M2", review.basis.gamma_m2),
         ];
-        let of_check = |(i, check): (usize, &CheckResult)| Section {
-            level: 3,
-            heading: format!("{number}.{} {}", i + 1, check.title),
-            blocks: [parts::result(joint, check)]
-                .into_iter()
-                .chain([Block::Working(working::lines(&check.working, &common))])
-                .collect(),
-        };
-        sections.extend(joint.checks.iter().enumerate().filter(|(_, c)| !c.working.steps.is_empty()).map(of_check));
+        let mut earlier: Vec<(String, &Working)> = Vec::new();
+        for (i, check) in joint.checks.iter().enumerate().filter(|(_, check)| !check.working.steps.is_empty()) {
+            let called = format!("{number}.{}", i + 1);
+            let lines = working::lines(&check.working, &earlier, &common);
+            sections.push(Section {
+                level: 3,
+                heading: format!("{called} {}", check.title),
+                blocks: vec![parts::result(joint, check), Block::Working(lines)],
+            });
+            earlier.push((called, &check.working));
+        }
     }
     let mut add = |heading: &str, blocks: Vec<Block>| {
         let number = sections.iter().filter(|section| section.level == 2).count() + 1;
         sections.push(Section { level: 2, heading: format!("{number} {heading}"), blocks });
     };
-    add("Findings", parts::findings(joint));
-    add("Unproven, and what to ask", parts::unproven(joint));
+    add("Findings", parts::findings(review, joint));
+    add("Unproven, and what to ask", parts::unproven(review, joint));
     add("Assumptions", parts::assumptions(joint));
     add("For the record", parts::record());
     Sheet { title: format!("Calculation sheet, joint {}", joint.mark), head: parts::head(review, joint), sections }

@@ -102,7 +102,8 @@ pub(in crate::report) fn printed(step: &Step, values: &Values<'_>) -> Option<(Li
     let Ok(parsed) = syn::parse_str::<Expr>(code) else { return Some((text(code), None)) };
     let mut symbols = Writer { values: None, out: Vec::new(), unknown: false };
     symbols.write(&parsed, 0);
-    let bare = matches!(strip(&parsed), Expr::Lit(_));
+    // A number or another symbol gives the value without an operation.
+    let bare = matches!(strip(&parsed), Expr::Lit(_) | Expr::Path(_));
     let gives = evaluate(&parsed, values).zip(scale(step.value.unit)).is_some_and(|(got, per)| {
         let expected = step.value.value * per;
         (got - expected).abs() <= 1e-9 * expected.abs().max(1e-9)
@@ -132,6 +133,9 @@ fn binding(expr: &Expr) -> u8 {
         _ => 4,
     }
 }
+
+/// Tighter than anything binds: always in brackets.
+const ALONE: u8 = 5;
 
 /// The last part of a path: `PI` of `std::f64::consts::PI`; `ZERO` of `Length::ZERO`.
 fn name_of(expr: &Expr) -> Option<String> {
@@ -190,7 +194,7 @@ fn evaluate(expr: &Expr, values: &Values<'_>) -> Option<f64> {
             ("not_negative", [a]) => Some(a.max(0.0)),
             ("sqrt", [a]) => Some(a.sqrt()),
             ("abs", [a]) => Some(a.abs()),
-            ("powi" | "powf", [a, b]) => Some(a.powf(*b)),
+            ("powi", [a, b]) => Some(a.powf(*b)),
             ("epsilon", [f_y]) => Some((235.0 / f_y).sqrt()),
             _ => None,
         };
@@ -254,6 +258,7 @@ impl Writer<'_> {
             return self.call(&name, args);
         }
         match expr {
+            Expr::Binary(binary) if squared(binary) => self.power(&binary.left, Some(2.0)),
             Expr::Binary(binary) => {
                 let (sign, left, right) = match binary.op {
                     BinOp::Add(_) => (" + ", 1, 1),
@@ -288,6 +293,18 @@ impl Writer<'_> {
         }
     }
 
+    /// A square or another whole power.
+    fn power(&mut self, base: &Expr, power: Option<f64>) {
+        let one_sign = literal(strip(base)).is_some() || name_of(strip(base)).is_some() && self.values.is_none();
+        self.write(base, if one_sign { 0 } else { ALONE });
+        match power {
+            Some(2.0) => self.put("²"),
+            Some(3.0) => self.put("³"),
+            Some(other) => self.put(&format!("^{other}")),
+            None => self.unknown = true,
+        }
+    }
+
     fn call(&mut self, name: &str, args: Vec<&Expr>) {
         match (name, args.as_slice()) {
             ("not_negative", [only]) => {
@@ -309,20 +326,7 @@ impl Writer<'_> {
                 self.write(only, 0);
                 self.put("|");
             }
-            ("powi" | "powf", [base, power]) => {
-                let number = literal(strip(base)).is_some() || name_of(strip(base)).is_some() && self.values.is_none();
-                self.put(if number { "" } else { "(" });
-                self.write(base, 0);
-                self.put(if number { "" } else { ")" });
-                match literal(strip(power)) {
-                    Some(2.0) => self.put("²"),
-                    Some(3.0) => self.put("³"),
-                    _ => {
-                        self.put("^");
-                        self.write(power, 4);
-                    }
-                }
-            }
+            ("powi", [base, power]) => self.power(base, literal(strip(power))),
             _ => {
                 let known = least(name) || matches!(name, "max" | "epsilon");
                 self.unknown |= !known && self.values.is_some();
@@ -342,6 +346,12 @@ impl Writer<'_> {
             }
         }
     }
+}
+
+/// Whether a product is something times itself.
+fn squared(product: &syn::ExprBinary) -> bool {
+    let (left, right) = (name_of(strip(&product.left)), name_of(strip(&product.right)));
+    matches!(product.op, BinOp::Mul(_)) && left.is_some() && left == right
 }
 
 /// What is no formula, as it stands in the code.

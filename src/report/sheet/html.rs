@@ -125,7 +125,7 @@ fn draw(id: &str, joint: &JointReview, block: &Block) -> Markup {
                     figcaption {
                         "Both views at one scale; lengths in mm, heights from the soffit of the beam's lower flange. \
                          Arrows: row forces at the full moment resistance and their sum in compression. \
-                         Broken thick outline: what governs."
+                         Broken thick outline: what governs. a: throats of the fillets."
                     }
                 }
             } @else { p { "The joint's geometry can't be drawn." } },
@@ -168,6 +168,7 @@ fn working(lines: &[WorkLine]) -> Markup {
                     tr {
                         @match line {
                             WorkLine::Heading(heading) => th class="about" scope="colgroup" colspan="4" { (clean(heading)) },
+                            WorkLine::As(said) => td colspan="4" { (set(said)) },
                             WorkLine::Given(what, values) => {
                                 td class="symbol" { "given" }
                                 td colspan="2" { (set(values)) }

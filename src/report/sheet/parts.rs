@@ -2,11 +2,14 @@
 
 use super::content::{Block, Table, governs};
 use super::formula::text;
+use super::working::shown;
 use crate::origin::{Ask, Place};
+use crate::report::drawing::figure;
 use crate::report::number::{factor, one_decimal, utilisation};
 use crate::report::{group, hold};
 use crate::review::sketch::Sketch;
 use crate::review::{CAUTION, CheckResult, JointReview, Review};
+use crate::units::Quantity;
 
 /// Said once above all workings.
 pub(super) const HOW_TO_READ: &str = "Each step stands in symbols, in numbers and with its value, as it was computed; \
@@ -22,8 +25,15 @@ fn used(ratio: Option<f64>) -> String {
     ratio.map_or_else(|| "-".into(), utilisation)
 }
 
-fn at(place: Option<&Place>) -> String {
-    place.map_or_else(|| "-".into(), Place::to_string)
+fn at(review: &Review, place: Option<&Place>) -> String {
+    place.map_or_else(|| "-".into(), |place| short(review, &place.to_string()))
+}
+
+/// A text with the inputs' file names without their folders; the heading has them in full.
+fn short(review: &Review, text: &str) -> String {
+    let files = std::iter::once(review.file.as_str()).chain(review.schedule.iter().flat_map(|all| all.split(", ")));
+    let bare = |file: &str| file.rsplit(['/', '\\']).next().unwrap_or(file).to_owned();
+    files.filter(|file| !bare(file).is_empty()).fold(text.to_owned(), |text, file| text.replace(file, &bare(file)))
 }
 
 fn list(sentences: impl IntoIterator<Item = String>, none: &str) -> Vec<Block> {
@@ -39,7 +49,7 @@ pub(super) fn head(review: &Review, joint: &JointReview) -> Vec<Block> {
     let settings: Vec<String> = basis.settings.iter().map(|(name, value)| format!("{name}: {value}")).collect();
     let mut pairs = vec![
         ("joint", hold::who(joint)),
-        ("look at", at(joint.at.as_ref())),
+        ("look at", at(review, joint.at.as_ref())),
         ("model", format!("{} ({})", review.file, review.exchange)),
         ("SHA-256", review.sha256.clone()),
         ("schedule", review.schedule.clone().unwrap_or_else(|| "none was given".into())),
@@ -53,7 +63,7 @@ pub(super) fn head(review: &Review, joint: &JointReview) -> Vec<Block> {
 }
 
 /// How it ends, why, and the required actions by case.
-pub(super) fn outcome(joint: &JointReview) -> Vec<Block> {
+pub(super) fn outcome(review: &Review, joint: &JointReview) -> Vec<Block> {
     let governed = group::governing(joint).map(|what| format!("governed by {what}"));
     let ratio = joint.utilisation().map(|ratio| format!("utilisation {}", utilisation(ratio)));
     let case = group::worst_case(joint).filter(|case| case.utilisation.is_some());
@@ -82,7 +92,7 @@ pub(super) fn outcome(joint: &JointReview) -> Vec<Block> {
             plain(case.moment_resistance_knm),
             used(case.utilisation),
             case.governed_by.clone().unwrap_or_else(|| "-".into()),
-            at(case.at.as_ref()),
+            at(review, case.at.as_ref()),
         ]
     }));
     blocks.push(Block::Table(table));
@@ -91,7 +101,7 @@ pub(super) fn outcome(joint: &JointReview) -> Vec<Block> {
 
 /// The drawing and its measures.
 pub(super) fn detailed(sketch: &Sketch) -> Vec<Block> {
-    let throat = |a: Option<f64>| a.map_or_else(|| "not known".into(), |a| format!("throat {} mm", one_decimal(a)));
+    let throat = |a: Option<f64>| a.map_or_else(|| "not known".into(), |a| format!("throat {} mm", figure(a)));
     let [top, web, bottom] = sketch.throats_mm.map(throat);
     let plate = &sketch.plate;
     let head = ["row", ">height", ">gauge", ">edge of plate", ">edge of column flange", ">to the row above"];
@@ -114,7 +124,7 @@ pub(super) fn detailed(sketch: &Sketch) -> Vec<Block> {
         .map(|s| {
             let sides = if s.both_sides { "a pair" } else { "on one side only" };
             let depth = if s.full_depth { "" } else { ", not from flange to flange" };
-            format!("at {}, {} thick, {sides}{depth}", plain(Some(s.height_mm)), plain(Some(s.thickness_mm)))
+            format!("at {}, {} thick, {sides}{depth}", figure(s.height_mm), figure(s.thickness_mm))
         })
         .collect();
     vec![
@@ -127,9 +137,9 @@ pub(super) fn detailed(sketch: &Sketch) -> Vec<Block> {
                 format!(
                     "{}, {} wide, from {} to {} mm",
                     plate.label,
-                    plain(Some(plate.width_mm)),
-                    plain(Some(plate.bottom_mm)),
-                    plain(Some(plate.top_mm))
+                    figure(plate.width_mm),
+                    figure(plate.bottom_mm),
+                    figure(plate.top_mm)
                 ),
             ),
             ("bolts", sketch.bolts.clone()),
@@ -157,9 +167,10 @@ pub(super) fn difference(joint: &JointReview, intended: &[String], detailed: &[S
 }
 
 /// Every number that entered a check.
-pub(super) fn inputs(joint: &JointReview) -> Block {
+pub(super) fn inputs(review: &Review, joint: &JointReview) -> Block {
     let mut table = Table::new("Every number that entered a check", &["input", "value", "where it came from"]);
-    let row = |(name, value, origin): &(String, String, String)| vec![name.clone(), value.clone(), origin.clone()];
+    let row =
+        |(name, value, origin): &(String, String, String)| vec![name.clone(), value.clone(), short(review, origin)];
     table.rows.extend(joint.inputs.iter().map(row));
     Block::Table(table)
 }
@@ -173,7 +184,7 @@ pub(super) fn rows(joint: &JointReview) -> Vec<Block> {
         blocks.push(Block::Line(text(format!(
             "At the full moment resistance with tension at the {side}{case}; β = {} (5.3). Worked down from the tension side: \
              each row takes the least that it, its groups, the compression side and the web panel still allow (6.2.7.2).",
-            factor(basis.beta)
+            shown(basis.beta.shown())
         ))));
     }
     let head = ["row", ">lever arm mm", ">alone and in groups kN", ">force kN", ">force · arm kNm", "governed by"];
@@ -214,7 +225,7 @@ pub(super) fn rows(joint: &JointReview) -> Vec<Block> {
 }
 
 /// All checks in one table.
-pub(super) fn checks(joint: &JointReview) -> Vec<Block> {
+pub(super) fn checks(review: &Review, joint: &JointReview) -> Vec<Block> {
     let cases = [
         ("moment", joint.row_basis.as_ref().and_then(|basis| basis.case.as_ref())),
         ("shear", joint.shear_case.as_ref()),
@@ -229,7 +240,8 @@ pub(super) fn checks(joint: &JointReview) -> Vec<Block> {
         ),
     };
     let head = ["no.", "check", ">resistance", ">acts", "unit", ">utilisation", "result", "clause"];
-    let mut table = Table::new("Checks", &head);
+    let standard = format!("{} ", review.basis.standard);
+    let mut table = Table::new(format!("Checks; clauses without a standard are of {}", review.basis.standard), &head);
     for (i, check) in joint.checks.iter().enumerate() {
         let governs = if governs(joint, check) { ", governs" } else { "" };
         table.rows.push(vec![
@@ -240,7 +252,7 @@ pub(super) fn checks(joint: &JointReview) -> Vec<Block> {
             check.unit.into(),
             used(check.utilisation),
             format!("{}{governs}", check.outcome),
-            check.clause.clone(),
+            check.clause.replace(&standard, ""),
         ]);
     }
     vec![Block::Line(text(said)), Block::Table(table)]
@@ -263,27 +275,27 @@ pub(super) fn result(joint: &JointReview, check: &CheckResult) -> Block {
 }
 
 /// Findings, each with the parts it stands on and the place.
-pub(super) fn findings(joint: &JointReview) -> Vec<Block> {
+pub(super) fn findings(review: &Review, joint: &JointReview) -> Vec<Block> {
     let said = joint.findings.iter().map(|finding| {
         let parts = match finding.elements.as_slice() {
             [] => String::new(),
             guids => format!("; GlobalId {}", guids.join(", ")),
         };
-        let place = finding.at.as_ref().map_or(String::new(), |at| format!("; {at}"));
+        let place = finding.at.as_ref().map_or(String::new(), |place| format!("; {}", at(review, Some(place))));
         format!("{}: {}{parts}{place}", finding.severity.word(), group::sentence(finding))
     });
     list(said, "Nothing was found.")
 }
 
 /// What keeps the joint from a proof, and who can close the gap.
-pub(super) fn unproven(joint: &JointReview) -> Vec<Block> {
+pub(super) fn unproven(review: &Review, joint: &JointReview) -> Vec<Block> {
     let said = joint.missing.iter().map(|missing| {
         let ask = match missing.ask {
             Ask::Fabricator => "ask the fabricator",
             Ask::Engineer => "ask the engineer",
             Ask::Method => "by hand: the method does not cover it",
         };
-        let place = missing.at.as_ref().map_or(String::new(), |at| format!("; {at}"));
+        let place = missing.at.as_ref().map_or(String::new(), |place| format!("; {}", at(review, Some(place))));
         format!("{missing}; {ask}{place}")
     });
     list(said, "Nothing is missing for a proof.")

@@ -95,6 +95,7 @@ fn drawn(table: &Table, width: usize) -> Vec<String> {
 fn work(page: &mut Page, line: &WorkLine) {
     match line {
         WorkLine::Heading(heading) => page.line(3, &format!("{heading}:")),
+        WorkLine::As(said) => page.line(5, &plain(said)),
         WorkLine::Given(what, values) => page.hanging(5, "given ", &format!("{what}: {}", plain(values))),
         WorkLine::Step { symbol, formula, numbers, value, clause } => {
             let (symbol, formula) = (plain(symbol), plain(formula));

@@ -9,6 +9,8 @@ use crate::working::Working;
 pub(super) enum WorkLine {
     /// What the following lines are about.
     Heading(String),
+    /// Which other working this one begins like.
+    As(Line),
     /// Values given from outside: what they are, and "t_f = 25.00 mm; m = 40.00 mm".
     Given(&'static str, Line),
     /// One evaluated step.
@@ -31,10 +33,28 @@ pub(super) fn shown(value: Shown) -> String {
     if value.value.is_finite() { value.to_string() } else { "no number".into() }
 }
 
-/// The lines of a working; `common` are values that stand once for the whole sheet.
-pub(super) fn lines(working: &Working, common: &[(&'static str, f64)]) -> Vec<WorkLine> {
+/// Fewer steps than this are written again where another working began with them.
+const WORTH_A_REFERENCE: usize = 5;
+
+/// The lines of a working. One that begins like one of the `earlier` ones refers to it; `common` are values that stand once
+/// for the whole sheet.
+pub(super) fn lines(
+    working: &Working,
+    earlier: &[(String, &Working)],
+    common: &[(&'static str, f64)],
+) -> Vec<WorkLine> {
     let mut lines: Vec<WorkLine> = Vec::new();
-    for (i, step) in working.steps.iter().enumerate() {
+    let shared = |other: &Working| working.steps.iter().zip(&other.steps).take_while(|(a, b)| a == b).count();
+    // The first of several that share as much.
+    let likest = earlier.iter().rev().max_by_key(|(_, other)| shared(other));
+    let known = likest.map_or(0, |(_, other)| shared(other));
+    let from = if known >= WORTH_A_REFERENCE { known } else { 0 };
+    if let Some(((called, _), last)) = likest.zip(from.checked_sub(1).and_then(|last| working.steps.get(last))) {
+        let last = [Piece::Symbol(last.symbol.to_owned()), Piece::Text(format!(" = {}", shown(last.value)))];
+        let said = text(format!("As in {called}, down to ")).into_iter().chain(last);
+        lines.push(WorkLine::As(said.collect()));
+    }
+    for (i, step) in working.steps.iter().enumerate().skip(from) {
         lines.extend(step.heading.clone().map(WorkLine::Heading));
         let symbol = vec![Piece::Symbol(step.symbol.to_owned())];
         match printed(step, &Values::before(&working.steps[..i], common)) {
