@@ -39,8 +39,8 @@ pub struct SketchRow {
     pub gauge_mm: f64,
     /// From an axis to the plate's nearer side edge, mm.
     pub edge_plate_mm: f64,
-    /// From an axis to the column flange's nearer side edge, mm.
-    pub edge_column_mm: f64,
+    /// From an axis to the nearer side edge of what the plate is bolted to, mm.
+    pub edge_other_mm: f64,
 }
 
 /// A transverse stiffener of the column.
@@ -58,27 +58,52 @@ pub struct SketchStiffener {
     pub full_depth: bool,
 }
 
-/// An end-plate joint as it is drawn.
+/// A beam's end with its end plate.
 #[derive(Clone, Debug, PartialEq)]
-pub struct Sketch {
-    /// The column.
-    pub column: Profile,
-    /// Height of the column's upper end, mm; `None` where it runs on past 10 m.
-    pub column_top_mm: Option<f64>,
-    /// Height of the column's lower end, mm; `None` where it runs on past 10 m.
-    pub column_bottom_mm: Option<f64>,
+pub struct BeamEnd {
     /// The beam.
     pub beam: Profile,
-    /// The end plate.
+    /// Height of its lower flange's soffit, mm: 0 for the beam that heights are measured from.
+    pub soffit_mm: f64,
+    /// Its end plate.
     pub plate: PlateFace,
+    /// Throats of its fillets at upper flange, web and lower flange, mm; `None` if not known.
+    pub throats_mm: [Option<f64>; 3],
+}
+
+/// The column that an end plate is bolted to.
+#[derive(Clone, Debug, PartialEq)]
+pub struct ColumnPart {
+    /// The column.
+    pub column: Profile,
+    /// Height of its upper end, mm; `None` where it runs on past 10 m.
+    pub top_mm: Option<f64>,
+    /// Height of its lower end, mm; `None` where it runs on past 10 m.
+    pub bottom_mm: Option<f64>,
+    /// Its stiffeners, from the top down.
+    pub stiffeners: Vec<SketchStiffener>,
+}
+
+/// What an end plate is bolted to.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Against {
+    /// A column's flange.
+    Column(ColumnPart),
+    /// Another beam's end plate.
+    Beam(BeamEnd),
+}
+
+/// A joint with an end plate as it is drawn.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Sketch {
+    /// The supported member's end.
+    pub end: BeamEnd,
+    /// What it is bolted to.
+    pub against: Against,
     /// "M24 8.8", as far as it is known.
     pub bolts: String,
     /// d, mm, if known.
     pub bolt_mm: Option<f64>,
     /// Rows from the top down.
     pub rows: Vec<SketchRow>,
-    /// Throats of the beam's fillets at upper flange, web and lower flange, mm; `None` if not known.
-    pub throats_mm: [Option<f64>; 3],
-    /// The column's stiffeners, from the top down.
-    pub stiffeners: Vec<SketchStiffener>,
 }

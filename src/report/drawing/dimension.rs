@@ -12,6 +12,16 @@ pub(in crate::report) fn figure(mm: f64) -> String {
     tenth.strip_suffix(".0").unwrap_or(&tenth).to_owned()
 }
 
+/// A height from the soffit: "+502", "−20".
+pub(super) fn height(mm: f64) -> String {
+    let shown = figure(mm.abs());
+    match shown.as_str() {
+        "0" => shown,
+        _ if mm < 0.0 => format!("−{shown}"),
+        _ => format!("+{shown}"),
+    }
+}
+
 /// Ticks at paper positions along a level line at `y`, the lengths between them as figures.
 pub(super) fn level(canvas: &mut Canvas, y: f64, ticks: &[(f64, f64)]) {
     let Some((first, last)) = ticks.first().zip(ticks.last()) else { return };

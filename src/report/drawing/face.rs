@@ -3,19 +3,23 @@
 use super::Scene;
 use super::canvas::{Anchor, Canvas, Ink};
 use super::dimension::{self, figure};
+use crate::review::sketch::Against;
 
 /// Draws it from paper `left` on.
 pub(super) fn draw(canvas: &mut Canvas, scene: &Scene<'_>, left: f64) {
     let (sketch, scale) = (scene.sketch, scene.scale);
-    let (column, beam, plate) = (&sketch.column, &sketch.beam, &sketch.plate);
-    let half = column.width_mm.max(plate.width_mm).max(beam.width_mm) / 2.0;
+    let (beam, plate) = (&sketch.end.beam, &sketch.end.plate);
+    let (other, name, low, high) = match &sketch.against {
+        Against::Column(part) => (part.column.width_mm, "column flange", scene.bottom, scene.top),
+        Against::Beam(end) => (end.plate.width_mm, "other plate", end.plate.bottom_mm, end.plate.top_mm),
+    };
+    let half = other.max(plate.width_mm).max(beam.width_mm) / 2.0;
     let at = |across: f64, height: f64| (left + (half + across) * scale, scene.y(height));
     canvas.text("title", Anchor::Start, (left, 4.0), "View from the beam");
     canvas.text("", Anchor::Start, (left, 9.5), &format!("{}; {}", plate.label, sketch.bolts));
 
     for side in [-0.5, 0.5] {
-        let x = side * column.width_mm;
-        canvas.line(Ink::Hidden, at(x, scene.bottom), at(x, scene.top));
+        canvas.line(Ink::Hidden, at(side * other, low), at(side * other, high));
     }
     canvas.rect(Ink::Plate, at(-plate.width_mm / 2.0, plate.bottom_mm), at(plate.width_mm / 2.0, plate.top_mm));
     let (b, h) = (beam.width_mm / 2.0, beam.depth_mm);
@@ -41,7 +45,7 @@ pub(super) fn draw(canvas: &mut Canvas, scene: &Scene<'_>, left: f64) {
     // Below: edges and gauge of the first row, the plate's width, the flange's width.
     let below = scene.y(scene.bottom);
     let across = |points: &[f64]| points.iter().map(|x| (at(*x, 0.0).0, *x)).collect::<Vec<_>>();
-    let (b_p, b_c) = (plate.width_mm / 2.0, column.width_mm / 2.0);
+    let (b_p, b_c) = (plate.width_mm / 2.0, other / 2.0);
     if let Some(row) = sketch.rows.first() {
         let w = row.gauge_mm / 2.0;
         dimension::level(canvas, below + 6.0, &across(&[-b_p, -w, w, b_p]));
@@ -55,7 +59,7 @@ pub(super) fn draw(canvas: &mut Canvas, scene: &Scene<'_>, left: f64) {
     for x in [-b_p, b_p] {
         canvas.line(Ink::Thin, at(x, plate.bottom_mm), (at(x, 0.0).0, below + 12.0));
     }
-    for (y, what) in [(6.0, "gauge"), (11.0, "plate"), (16.0, "column flange")] {
+    for (y, what) in [(6.0, "gauge"), (11.0, "plate"), (16.0, name)] {
         canvas.text("", Anchor::Start, (at(half, 0.0).0 + 2.0, below + y), what);
     }
 
@@ -75,9 +79,8 @@ pub(super) fn draw(canvas: &mut Canvas, scene: &Scene<'_>, left: f64) {
     }
     let named = |height: f64| match height {
         0.0 => "0 soffit".to_owned(),
-        other if other == h => format!("+{} top", figure(h)),
-        other if other < 0.0 => format!("−{}", figure(-other)),
-        other => format!("+{}", figure(other)),
+        other if other == h => format!("{} top", dimension::height(h)),
+        other => dimension::height(other),
     };
     let mut labels: Vec<f64> = heights.into_iter().chain([0.0, h]).collect();
     labels.sort_by(f64::total_cmp);

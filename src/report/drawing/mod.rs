@@ -9,13 +9,14 @@ mod face;
 
 use maud::Markup;
 
-use crate::review::sketch::Sketch;
+use crate::review::sketch::{Against, BeamEnd, Profile, Sketch};
 use crate::review::{CheckResult, JointReview};
 use canvas::Canvas;
 pub use canvas::STYLE;
 pub(super) use dimension::figure;
 
 use super::group;
+use super::page::clean;
 
 /// Width of the paper, mm: A4 less its margins.
 const PAPER: f64 = 180.0;
@@ -59,61 +60,87 @@ impl Scene<'_> {
     }
 }
 
+/// How much of a beam is drawn, in its depths.
+const STUB: f64 = 0.8;
+
+/// How far the left part reaches from the contact face, mm of steel.
+fn reach(against: &Against) -> f64 {
+    match against {
+        Against::Column(part) => part.column.depth_mm,
+        Against::Beam(end) => end.plate.thickness_mm + STUB * end.beam.depth_mm,
+    }
+}
+
+/// What is behind the end plate: its width.
+fn behind(against: &Against) -> f64 {
+    match against {
+        Against::Column(part) => part.column.width_mm,
+        Against::Beam(end) => end.plate.width_mm,
+    }
+}
+
 /// The dimensioned sketch of a joint with its row forces and what governs; `id` makes the drawing's ids unique on a page.
 ///
 /// `None` where the joint has no geometry, or none that can be drawn.
 pub fn sketch(joint: &JointReview, id: &str) -> Option<Markup> {
     let sketch = joint.sketch.as_deref()?;
-    let (column, beam, plate) = (&sketch.column, &sketch.beam, &sketch.plate);
+    let (beam, plate) = (&sketch.end.beam, &sketch.end.plate);
+    let other: Option<&BeamEnd> = match &sketch.against {
+        Against::Column(_) => None,
+        Against::Beam(end) => Some(end),
+    };
+    let ends = || std::iter::once(&sketch.end).chain(other);
+    let upper = ends().flat_map(|end| [end.soffit_mm + end.beam.depth_mm, end.plate.top_mm]);
+    let lower = ends().flat_map(|end| [end.soffit_mm, end.plate.bottom_mm]);
     let rows = || sketch.rows.iter().map(|row| row.height_mm);
-    let highest = rows().fold(beam.depth_mm.max(plate.top_mm), f64::max);
-    let lowest = rows().fold(plate.bottom_mm.min(0.0), f64::min);
+    let (highest, lowest) = (upper.chain(rows()).fold(0.0, f64::max), lower.chain(rows()).fold(0.0, f64::min));
     let past = 0.22 * (highest - lowest);
-    let stub = 0.8 * beam.depth_mm;
-    let wide = column.depth_mm + plate.thickness_mm + stub + column.width_mm.max(plate.width_mm).max(beam.width_mm);
-    let (bottom, top) = (lowest - past, highest + past);
+    let (mut bottom, mut top) = (lowest - past, highest + past);
+    let (left, stub) = (reach(&sketch.against), STUB * beam.depth_mm);
+    let wide = left + plate.thickness_mm + stub + behind(&sketch.against).max(plate.width_mm).max(beam.width_mm);
     let scale = ((PAPER - LEFT - BETWEEN - RIGHT) / wide).min(HIGHEST / (top - bottom));
-    let sizes = [column.depth_mm, column.width_mm, beam.depth_mm, beam.width_mm, plate.width_mm, plate.thickness_mm];
-    if !(scale > 0.0 && scale.is_finite() && sizes.iter().all(|size| *size > 0.0) && rows().all(f64::is_finite)) {
+    let of_profile = |profile: &Profile| [profile.depth_mm, profile.width_mm];
+    let of_end = |end: &BeamEnd| [end.plate.width_mm, end.plate.thickness_mm].into_iter().chain(of_profile(&end.beam));
+    let sizes = ends().flat_map(of_end).chain([left]).all(|size| size > 0.0 && size.is_finite());
+    if !(scale > 0.0 && scale.is_finite() && sizes && rows().all(f64::is_finite)) {
         return None;
     }
+    if let Against::Column(part) = &sketch.against {
+        bottom = part.bottom_mm.filter(|end| *end < lowest).map_or(bottom, |end| end.max(bottom));
+        top = part.top_mm.filter(|end| *end > highest).map_or(top, |end| end.min(top));
+    }
     let governing = group::governing(joint);
-    let scene = Scene {
-        sketch,
-        joint,
-        scale,
-        bottom: sketch.column_bottom_mm.map_or(bottom, |end| end.max(bottom)),
-        top,
-        stub,
-        governs: joint.checks.iter().find(|check| Some(&check.title) == governing),
-    };
-    let scene =
-        Scene { top: sketch.column_top_mm.filter(|end| *end > highest).map_or(top, |end| end.min(top)), ..scene };
+    let governs = joint.checks.iter().find(|check| Some(&check.title) == governing);
+    let scene = Scene { sketch, joint, scale, bottom, top, stub, governs };
     let mut canvas = Canvas::default();
-    let face = LEFT + (column.depth_mm + plate.thickness_mm + stub) * scale + BETWEEN;
-    elevation::draw(&mut canvas, &scene, LEFT + column.depth_mm * scale);
-    face::draw(&mut canvas, &scene, face);
+    elevation::draw(&mut canvas, &scene, LEFT + left * scale);
+    face::draw(&mut canvas, &scene, LEFT + (left + plate.thickness_mm + stub) * scale + BETWEEN);
     let height = scene.y(scene.bottom) + BELOW;
-    let title = format!("Sketch of joint {}", joint.mark);
-    Some(canvas.finish((PAPER, height), id, &title, &described(&scene)))
+    let title = format!("Sketch of joint {}", clean(&joint.mark));
+    Some(canvas.finish((PAPER, height), id, &title, &clean(&described(&scene))))
 }
 
 /// The drawing in words.
 fn described(scene: &Scene<'_>) -> String {
     let sketch = scene.sketch;
-    let rows: Vec<String> = sketch.rows.iter().map(|row| dimension::figure(row.height_mm)).collect();
-    let mut said = vec![
-        format!("Elevation and view from the beam of the end plate. Column {}", sketch.column.label),
-        format!("beam {}", sketch.beam.label),
+    let rows: Vec<String> = sketch.rows.iter().map(|row| figure(row.height_mm)).collect();
+    let end = |end: &BeamEnd| {
+        let sizes = [end.plate.width_mm, end.plate.bottom_mm, end.plate.top_mm].map(figure);
         format!(
-            "end plate {}, {} mm wide, from {} to {} mm above the soffit of the beam's lower flange",
-            sketch.plate.label,
-            dimension::figure(sketch.plate.width_mm),
-            dimension::figure(sketch.plate.bottom_mm),
-            dimension::figure(sketch.plate.top_mm)
-        ),
+            "beam {}; end plate {}, {} mm wide, from {} to {} mm above the soffit of the beam's lower flange",
+            end.beam.label, end.plate.label, sizes[0], sizes[1], sizes[2]
+        )
+    };
+    let other = match &sketch.against {
+        Against::Column(part) => {
+            format!("column {} with {} stiffeners", part.column.label, part.stiffeners.len())
+        }
+        Against::Beam(other) => format!("against it {}", end(other)),
+    };
+    let mut said = vec![
+        format!("Elevation and view from the beam of the end plate. {}", end(&sketch.end)),
+        other,
         format!("{} rows of two bolts {} at {} mm", rows.len(), sketch.bolts, rows.join(", ")),
-        format!("{} stiffeners of the column", sketch.stiffeners.len()),
     ];
     let force = |row: &crate::review::RowResult| format!("row {} {:.0} kN", row.row, row.force_kn);
     if scene.joint.rows.iter().any(|row| row.force_kn.is_finite()) {

@@ -7,7 +7,7 @@ use crate::origin::{Ask, Place};
 use crate::report::drawing::figure;
 use crate::report::number::{factor, one_decimal, utilisation};
 use crate::report::{group, hold};
-use crate::review::sketch::Sketch;
+use crate::review::sketch::{Against, BeamEnd, ColumnPart, Sketch, SketchStiffener};
 use crate::review::{CAUTION, CheckResult, JointReview, Review};
 use crate::units::Quantity;
 
@@ -101,10 +101,20 @@ pub(super) fn outcome(review: &Review, joint: &JointReview) -> Vec<Block> {
 
 /// The drawing and its measures.
 pub(super) fn detailed(sketch: &Sketch) -> Vec<Block> {
-    let throat = |a: Option<f64>| a.map_or_else(|| "not known".into(), |a| format!("throat {} mm", figure(a)));
-    let [top, web, bottom] = sketch.throats_mm.map(throat);
-    let plate = &sketch.plate;
-    let head = ["row", ">height", ">gauge", ">edge of plate", ">edge of column flange", ">to the row above"];
+    let mut pairs = beam_end("beam", "end plate", "welds", &sketch.end);
+    let other = match &sketch.against {
+        Against::Beam(end) => {
+            pairs.extend(beam_end("other beam", "other end plate", "other welds", end));
+            ">edge of other plate"
+        }
+        Against::Column(part) => {
+            pairs.insert(0, ("column", part.column.label.clone()));
+            pairs.push(("stiffeners", stiffeners(part)));
+            ">edge of column flange"
+        }
+    };
+    pairs.push(("bolts", sketch.bolts.clone()));
+    let head = ["row", ">height", ">gauge", ">edge of plate", other, ">to the row above"];
     let mut table = Table::new("Bolt rows, mm; heights from the soffit of the beam's lower flange", &head);
     let mut above: Option<f64> = None;
     for (i, row) in sketch.rows.iter().enumerate() {
@@ -114,40 +124,38 @@ pub(super) fn detailed(sketch: &Sketch) -> Vec<Block> {
             plain(Some(row.height_mm)),
             plain(Some(row.gauge_mm)),
             plain(Some(row.edge_plate_mm)),
-            plain(Some(row.edge_column_mm)),
+            plain(Some(row.edge_other_mm)),
             plain(pitch),
         ]);
     }
-    let stiffeners: Vec<String> = sketch
-        .stiffeners
-        .iter()
-        .map(|s| {
-            let sides = if s.both_sides { "a pair" } else { "on one side only" };
-            let depth = if s.full_depth { "" } else { ", not from flange to flange" };
-            format!("at {}, {} thick, {sides}{depth}", figure(s.height_mm), figure(s.thickness_mm))
-        })
-        .collect();
+    vec![Block::Drawing, Block::Pairs(pairs), Block::Table(table)]
+}
+
+fn beam_end(
+    beam: &'static str,
+    plate: &'static str,
+    welds: &'static str,
+    end: &BeamEnd,
+) -> Vec<(&'static str, String)> {
+    let throat = |a: Option<f64>| a.map_or_else(|| "not known".into(), |a| format!("throat {} mm", figure(a)));
+    let [top, web, bottom] = end.throats_mm.map(throat);
+    let face = &end.plate;
+    let sizes = [face.width_mm, face.bottom_mm, face.top_mm].map(figure);
     vec![
-        Block::Drawing,
-        Block::Pairs(vec![
-            ("column", sketch.column.label.clone()),
-            ("beam", sketch.beam.label.clone()),
-            (
-                "end plate",
-                format!(
-                    "{}, {} wide, from {} to {} mm",
-                    plate.label,
-                    figure(plate.width_mm),
-                    figure(plate.bottom_mm),
-                    figure(plate.top_mm)
-                ),
-            ),
-            ("bolts", sketch.bolts.clone()),
-            ("welds", format!("top flange {top}; web {web}; lower flange {bottom}")),
-            ("stiffeners", if stiffeners.is_empty() { "none".into() } else { stiffeners.join("; ") }),
-        ]),
-        Block::Table(table),
+        (beam, end.beam.label.clone()),
+        (plate, format!("{}, {} wide, from {} to {} mm", face.label, sizes[0], sizes[1], sizes[2])),
+        (welds, format!("top flange {top}; web {web}; lower flange {bottom}")),
     ]
+}
+
+fn stiffeners(part: &ColumnPart) -> String {
+    let one = |s: &SketchStiffener| {
+        let sides = if s.both_sides { "a pair" } else { "on one side only" };
+        let depth = if s.full_depth { "" } else { ", not from flange to flange" };
+        format!("at {}, {} thick, {sides}{depth}", figure(s.height_mm), figure(s.thickness_mm))
+    };
+    let all: Vec<String> = part.stiffeners.iter().map(one).collect();
+    if all.is_empty() { "none".into() } else { all.join("; ") }
 }
 
 /// The intended detail beside what was detailed.
