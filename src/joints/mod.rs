@@ -16,6 +16,7 @@ mod opposite;
 mod rank;
 mod recognise;
 mod scene;
+mod splice;
 mod stiffeners;
 mod told;
 mod touch;
@@ -23,7 +24,7 @@ mod welds;
 
 pub use layout::{
     BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Layout, MemberAt, PlateSide, SpliceLayout, Stiffener,
-    Support, Welds,
+    Support, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;

@@ -4,10 +4,11 @@
 mod column;
 mod plate;
 
-use super::numbers::{Numbers, PlateSide, Row, Which};
+use super::numbers::{Numbers, PlateSide, Row};
 use crate::eurocode::effective_length::EffectiveLength;
 use crate::eurocode::t_stub::{ModeOne, TStub, t_stub};
 use crate::eurocode::{Resistance, alpha};
+use crate::joints::Which;
 use crate::rulebook::{self, Rulebook};
 use crate::units::{Force, Length};
 use crate::working::Working;

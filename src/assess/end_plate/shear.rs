@@ -123,8 +123,9 @@ impl<'a> Ply<'a> {
             f_u: side.strength.f_u,
         };
         let behind = match &n.support {
-            Support::Plate(other) => plate(other),
-            Support::Column(column) => Self {
+            Support::Twin => None,
+            Support::Plate(other) => Some(plate(other)),
+            Support::Column(column) => Some(Self {
                 plate: None,
                 ends: [
                     n.rows.first().zip(column.above).map(|(row, above)| row.height + above),
@@ -132,9 +133,9 @@ impl<'a> Ply<'a> {
                 ],
                 t: column.section.t_f,
                 f_u: column.strength.f_u,
-            },
+            }),
         };
-        vec![plate(&n.side), behind]
+        [plate(&n.side)].into_iter().chain(behind).collect()
     }
 
     fn named(self) -> (&'static str, String) {

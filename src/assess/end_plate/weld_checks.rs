@@ -2,9 +2,10 @@
 #![allow(non_snake_case)]
 
 use super::limits::Limit;
-use super::numbers::{PlateSide, Which};
+use super::numbers::PlateSide;
 use crate::assess::{Component, RowForce};
 use crate::eurocode::welds;
+use crate::joints::Which;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length};
 use crate::{given, step};
