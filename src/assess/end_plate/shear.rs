@@ -5,10 +5,10 @@ use super::numbers::{Numbers, PlateSide, Row, Support};
 use super::weld_checks;
 use crate::assess::{Component, MomentResistance, ShearResistance};
 use crate::eurocode::bolts::{self, BearingPlace};
+use crate::given;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length, Stress, mm};
 use crate::working::Working;
-use crate::{given, step};
 
 /// M12 and M14 in holes with 2 mm clearance carry 0.85 of their shear, 3.6.1(5).
 fn beta_hole(n: &Numbers) -> f64 {
@@ -174,7 +174,7 @@ fn bearing(n: &Numbers, ply: Ply<'_>, up: bool, shear_left: &[Force], gamma_M2: 
         all += 2.0 * bearing.value;
         with_shear += 2.0 * bearing.value.min(shear_left[i]);
     }
-    let V_bearing = all;
-    step!(w, "sum over the rows", V_b_Rd = V_bearing);
+    let V_b_Rd = all;
+    given!(w, "two bolts a row, summed over the rows"; V_b_Rd);
     (V_b_Rd, with_shear, w)
 }
