@@ -1,12 +1,16 @@
 //! One joint's review: resistance, required actions, checks, findings, outcome.
 
 use super::{Computed, Sources, brief};
+use crate::assess::classification::classify;
 use crate::assess::end_plate::{BOUND_BY_OPPOSITE, BOUND_BY_TENSION};
-use crate::assess::{About, Assessment, Component, Gap, Sense, State, Verdict};
-use crate::intent::ScheduledJoint;
+use crate::assess::{About, Assessment, Component, Gap, MomentResistance, Sense, State, Verdict};
+use crate::intent::{JointClass, ScheduledJoint};
 use crate::joints::Joint;
 use crate::origin::{Ask, Missing};
-use crate::review::{CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowResult};
+use crate::review::{
+    CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowResult, StiffnessResult,
+};
+use crate::units::Moment;
 
 /// A joint of the steel.
 pub fn review(
@@ -39,6 +43,7 @@ pub fn review(
         intended_resistance: intended.map(|(_, a)| resistance(a)),
         required: required(assessment, scheduled),
         rows: leading.as_ref().map(|l| l.rows.clone()).unwrap_or_default(),
+        stiffness: leading.as_ref().and_then(|l| l.stiffness.clone()),
         checks: leading.map(|l| l.checks).unwrap_or_default(),
         findings,
         missing,
@@ -83,6 +88,7 @@ pub fn without_steel(scheduled: &ScheduledJoint, kind: &str, findings: Vec<Findi
         intended_resistance: None,
         required: required(None, Some(scheduled)),
         rows: Vec::new(),
+        stiffness: None,
         checks: Vec::new(),
         findings,
         missing: Vec::new(),
@@ -228,6 +234,7 @@ fn required(assessment: Option<&Assessment>, scheduled: Option<&ScheduledJoint>)
 /// Row forces and checks of the load case that uses the joint most, or at its own full resistance without one.
 struct Leading {
     rows: Vec<RowResult>,
+    stiffness: Option<StiffnessResult>,
     checks: Vec<CheckResult>,
 }
 
@@ -251,10 +258,13 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         })
         .collect();
 
+    let stated = by_moment.and_then(|case| scheduled?.cases.get(case.case)?.moment);
+    let stiffness = moment.and_then(|moment| stiffness(assessment, moment, scheduled, stated));
+
     let mut checks = Vec::new();
     let share = by_moment.map(|case| use_of(&case.verdicts, About::Moment));
     if let Some(moment) = moment {
-        let required = by_moment.and_then(|case| scheduled?.cases.get(case.case)?.moment).map(|m| m.knm().abs());
+        let required = stated.map(|m| m.knm().abs());
         let title = match moment.sense {
             Sense::Hogging => "moment, tension at the top",
             Sense::Sagging => "moment, tension at the bottom",
@@ -273,7 +283,41 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", shear.shear.kn(), required, "kN"));
         checks.extend(shear.components.iter().map(|c| component(c, required)));
     }
-    Leading { rows, checks }
+    Leading { rows, stiffness, checks }
+}
+
+fn stiffness(
+    assessment: &Assessment,
+    moment: &MomentResistance,
+    scheduled: Option<&ScheduledJoint>,
+    required: Option<Moment>,
+) -> Option<StiffnessResult> {
+    let joint = moment.stiffness.as_ref()?;
+    let frame = scheduled.map(|s| s.frame).unwrap_or_default();
+    let classified = classify(moment, joint, &frame, required);
+    Some(StiffnessResult {
+        sense: match moment.sense {
+            Sense::Hogging => "tension at the top",
+            Sense::Sagging => "tension at the bottom",
+        },
+        beta: moment.beta,
+        initial: joint.initial.knm_per_rad(),
+        at_required: classified.at_required.map(|s| s.knm_per_rad()),
+        lower_bound: assessment.at_bound(),
+        lever_arm_mm: joint.lever_arm.get(),
+        springs: joint.springs.iter().map(|spring| (spring.title.clone(), spring.k.map(|k| k.get()))).collect(),
+        rigid_from: classified.limits.map(|(rigid, _)| rigid.knm_per_rad()),
+        pinned_up_to: classified.limits.map(|(_, pinned)| pinned.knm_per_rad()),
+        class: match classified.by_stiffness {
+            Ok(class) => class.word().into(),
+            Err(why) => format!("not stated: {why}"),
+        },
+        assumed: frame.class.map(JointClass::word),
+        strength: classified.by_strength,
+        rotation: joint.rotation.clone(),
+        notes: classified.notes,
+        working: classified.working.into(),
+    })
 }
 
 fn component(component: &Component, action: Option<f64>) -> CheckResult {

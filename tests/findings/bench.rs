@@ -161,6 +161,7 @@ pub fn moment(sense: Sense, resistance: f64) -> Arc<MomentResistance> {
         governed_by: "column web in compression".into(),
         rows: Vec::new(),
         components: Vec::new(),
+        stiffness: None,
         notes: Vec::new(),
     })
 }

@@ -189,11 +189,8 @@ fn the_joint_in_its_frame_is_read() {
     }
     assert_eq!(framed("span_m", ""), InFrame::default());
     let toml = "[[joint]]\nmark = \"J1\"\nspan_m = 7.2\nframe = \"braced\"\nclass = \"semi-rigid\"\n";
-    let stated = InFrame {
-        span: Some(faying::units::mm(7200.0)),
-        braced: Some(true),
-        class: Some(JointClass::SemiRigid),
-    };
+    let stated =
+        InFrame { span: Some(faying::units::mm(7200.0)), braced: Some(true), class: Some(JointClass::SemiRigid) };
     assert_eq!(sound("s.toml", toml).joints[0].frame, stated);
     // What another file states of the joint stays with it.
     let csv = read("joint,M_Ed_kNm\nJ1,12\n".as_bytes(), "s.csv").unwrap();

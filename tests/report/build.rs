@@ -34,6 +34,7 @@ pub fn joint(n: usize, outcome: Outcome) -> JointReview {
         intended_resistance: None,
         required: Vec::new(),
         rows: Vec::new(),
+        stiffness: None,
         checks: Vec::new(),
         findings: Vec::new(),
         missing: Vec::new(),

@@ -106,6 +106,7 @@ pub fn resistance(
         web_in_tension,
         rows: forces,
         components,
+        stiffness: None,
         notes,
     })
 }
