@@ -101,6 +101,9 @@ struct Common {
     /// A folder of rule files that stand in for the built-in ones of the same name.
     #[arg(long, value_name = "FOLDER")]
     rules: Option<PathBuf>,
+    /// The partial factors and choices of a national annex: a file of annexes/ in the rules, without ".toml".
+    #[arg(long, value_name = "NAME")]
+    annex: Option<String>,
     /// How to write the report.
     #[arg(long, value_enum, default_value_t = Format::Text)]
     format: Format,
@@ -164,7 +167,8 @@ fn report(
     let given = Given::gather(path, schedules, common.rules.as_deref())?;
     // Before the work is done, so that nobody waits for a report that can't be written.
     let output = Output::open(common.output.as_deref(), common.color, &given.paths)?;
-    let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
+    let review =
+        progress::watched("reading and checking the model", || run::run_by(&given.inputs(), common.annex.as_deref()))?;
     let drawn = draw(&review, &output, &given.model.bytes).map_err(|why| Failure::because("can't write JSON", why))?;
     output.write(&drawn)?;
     Ok(review)

@@ -8,7 +8,7 @@ use super::numbers::{Numbers, Row};
 use crate::eurocode::effective_length::EffectiveLength;
 use crate::eurocode::t_stub::{ModeOne, TStub, t_stub};
 use crate::eurocode::{Resistance, alpha};
-use crate::rulebook::{self, Rulebook};
+use crate::rulebook::{self, Alpha, Rulebook};
 use crate::units::{Force, Length};
 use crate::working::Working;
 
@@ -113,7 +113,10 @@ impl<'a> TensionSide<'a> {
     fn alpha(&self, m: Length, e: Length, m_2: Length, w: &mut Working) -> f64 {
         crate::step!(w, "Figure 6.11", lambda_1 = m / (m + e));
         crate::step!(w, "Figure 6.11", lambda_2 = m_2 / (m + e));
-        alpha::alpha(lambda_1, lambda_2, self.rulebook.settings.alpha_max)
+        match self.rulebook.settings.alpha {
+            Alpha::Chart => alpha::alpha(lambda_1, lambda_2, self.rulebook.settings.alpha_max),
+            Alpha::Draft2024 => alpha::alpha_of_draft(lambda_1, lambda_2),
+        }
     }
 
     #[allow(clippy::too_many_arguments)]
