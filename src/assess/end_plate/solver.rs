@@ -4,6 +4,7 @@
 use std::collections::HashMap;
 use std::sync::{Arc, Mutex, PoisonError};
 
+use super::Beside;
 use super::moment;
 use super::numbers::Numbers;
 use crate::assess::{MomentResistance, Sense};
@@ -28,7 +29,7 @@ struct Question {
     numbers: Numbers,
     sense: Sense,
     beta: f64,
-    V_Ed: Force,
+    beside: Beside,
     rule: Option<RowForces>,
 }
 
@@ -44,20 +45,28 @@ impl<'a> Solver<'a> {
     }
 
     /// M_j,Rd of the joint with its tension side up; see [`moment::resistance`].
-    pub fn moment(&self, n: &Numbers, sense: Sense, beta: f64, V_Ed: Force, rule: Option<RowForces>) -> Solved {
+    pub(super) fn moment(
+        &self,
+        n: &Numbers,
+        sense: Sense,
+        beta: f64,
+        beside: Beside,
+        rule: Option<RowForces>,
+    ) -> Solved {
         // Below half of the beam's own resistance the shear changes nothing (EN 1993-1-1 6.2.8).
-        let V_pl_Rd = n.beam_shear_resistance(self.rulebook.annex.gamma_m0);
-        let V_Ed = if V_Ed <= 0.5 * V_pl_Rd { Force::ZERO } else { V_Ed };
+        let V_pl_Rd = n.least(|side| side.shear_resistance(self.rulebook.annex.gamma_m0));
+        let V_Ed = if beside.V_Ed <= 0.5 * V_pl_Rd { Force::ZERO } else { beside.V_Ed };
+        let beside = Beside { V_Ed, ..beside };
         let shelf = shelf(n, beta, V_Ed);
         let asked = |entry: &&Entry| {
-            let Question { numbers, sense: s, beta: b, V_Ed: v, rule: r } = &entry.question;
-            (*s, *b, *v, *r) == (sense, beta, V_Ed, rule) && numbers == n
+            let Question { numbers, sense: s, beta: b, beside: v, rule: r } = &entry.question;
+            (*s, *b, *v, *r) == (sense, beta, beside, rule) && numbers == n
         };
         if let Some(entry) = self.locked().get(&shelf).and_then(|entries| entries.iter().find(asked)) {
             return entry.solved.clone();
         }
-        let solved = moment::resistance(n, sense, beta, V_Ed, rule, self.rulebook).map(Arc::new);
-        let question = Question { numbers: n.clone(), sense, beta, V_Ed, rule };
+        let solved = moment::resistance(n, sense, beta, beside, rule, self.rulebook).map(Arc::new);
+        let question = Question { numbers: n.clone(), sense, beta, beside, rule };
         self.locked().entry(shelf).or_default().push(Entry { question, solved: solved.clone() });
         solved
     }
@@ -71,8 +80,12 @@ impl<'a> Solver<'a> {
 /// Where to look: a few of the numbers, mixed. Equal questions always share a shelf.
 fn shelf(n: &Numbers, beta: f64, V_Ed: Force) -> u64 {
     let rows = n.rows.iter().flat_map(|row| [row.height.get(), row.gauge.get()]);
-    let sizes = [n.beam.h.get(), n.column.h.get(), n.t_p.get(), n.plate_top.get(), n.F_t_Rd.get(), beta, V_Ed.get()];
+    let sides = n.sides().flat_map(|side| [side.beam.h.get(), side.t_p.get(), side.top.get()]);
+    let column = n.column().map(|column| column.section.h.get());
+    let sizes = [n.bolts.F_t_Rd.get(), beta, V_Ed.get()];
     // Adding 0 makes -0 and 0, which are equal, the same bits.
-    rows.chain(sizes)
+    rows.chain(sides)
+        .chain(column)
+        .chain(sizes)
         .fold(0, |mixed: u64, x| (mixed.rotate_left(7) ^ (x + 0.0).to_bits()).wrapping_mul(0x9E37_79B9_7F4A_7C15))
 }
