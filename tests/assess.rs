@@ -9,4 +9,5 @@ mod odd_sizes;
 mod plastic;
 mod safe;
 mod splices;
+mod stiffness;
 mod strengthening;

@@ -34,6 +34,7 @@ mod section_unknown;
 mod shear_short;
 mod stiffener_added;
 mod stiffener_missing;
+mod stiffness_differs;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;

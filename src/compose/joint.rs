@@ -1,14 +1,17 @@
 //! One joint's review: resistance, required actions, checks, findings, outcome.
 
 use super::{Computed, Sources, brief, sketch};
+use crate::assess::classification::classify;
 use crate::assess::end_plate::{BOUND_BY_OPPOSITE, BOUND_BY_TENSION};
-use crate::assess::{About, Assessment, Component, Gap, Sense, State, Verdict};
-use crate::intent::ScheduledJoint;
+use crate::assess::{About, Assessment, Component, Gap, MomentResistance, Sense, State, Verdict};
+use crate::intent::{JointClass, ScheduledJoint};
 use crate::joints::Joint;
 use crate::origin::{Ask, Missing};
 use crate::review::{
     CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowBasis, RowResult,
+    StiffnessResult,
 };
+use crate::units::Moment;
 
 /// A joint of the steel.
 pub fn review(
@@ -43,6 +46,7 @@ pub fn review(
         rows: leading.rows,
         row_basis: leading.row_basis,
         shear_case: leading.shear_case,
+        stiffness: leading.stiffness,
         checks: leading.checks,
         findings,
         missing,
@@ -90,6 +94,7 @@ pub fn without_steel(scheduled: &ScheduledJoint, kind: &str, findings: Vec<Findi
         rows: Vec::new(),
         row_basis: None,
         shear_case: None,
+        stiffness: None,
         checks: Vec::new(),
         findings,
         missing: Vec::new(),
@@ -239,6 +244,7 @@ struct Leading {
     rows: Vec<RowResult>,
     row_basis: Option<RowBasis>,
     shear_case: Option<String>,
+    stiffness: Option<StiffnessResult>,
     checks: Vec<CheckResult>,
 }
 
@@ -271,10 +277,13 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         notes: m.notes.clone(),
     });
 
+    let stated = by_moment.and_then(|case| scheduled?.cases.get(case.case)?.moment);
+    let stiffness = moment.and_then(|moment| stiffness(assessment, moment, scheduled, stated));
+
     let mut checks = Vec::new();
     let share = by_moment.map(|case| use_of(&case.verdicts, About::Moment));
     if let Some(moment) = moment {
-        let required = by_moment.and_then(|case| scheduled?.cases.get(case.case)?.moment).map(|m| m.knm().abs());
+        let required = stated.map(|m| m.knm().abs());
         let title = match moment.sense {
             Sense::Hogging => "moment, tension at the top",
             Sense::Sagging => "moment, tension at the bottom",
@@ -294,7 +303,41 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         checks.extend(shear.components.iter().map(|c| component(c, required)));
     }
     let shear_case = shear_case.filter(|case| case.shear.is_some()).and_then(|case| named(case.case));
-    Leading { rows, row_basis, shear_case, checks }
+    Leading { rows, row_basis, shear_case, stiffness, checks }
+}
+
+fn stiffness(
+    assessment: &Assessment,
+    moment: &MomentResistance,
+    scheduled: Option<&ScheduledJoint>,
+    required: Option<Moment>,
+) -> Option<StiffnessResult> {
+    let joint = moment.stiffness.as_ref()?;
+    let frame = scheduled.map(|s| s.frame).unwrap_or_default();
+    let classified = classify(moment, joint, &frame, required);
+    Some(StiffnessResult {
+        sense: match moment.sense {
+            Sense::Hogging => "tension at the top",
+            Sense::Sagging => "tension at the bottom",
+        },
+        beta: moment.beta,
+        initial: joint.initial.knm_per_rad(),
+        at_required: classified.at_required.map(|s| s.knm_per_rad()),
+        lower_bound: assessment.at_bound(),
+        lever_arm_mm: joint.lever_arm.get(),
+        springs: joint.springs.iter().map(|spring| (spring.title.clone(), spring.k.map(|k| k.get()))).collect(),
+        rigid_from: classified.limits.map(|(rigid, _)| rigid.knm_per_rad()),
+        pinned_up_to: classified.limits.map(|(_, pinned)| pinned.knm_per_rad()),
+        class: match classified.by_stiffness {
+            Ok(class) => class.word().into(),
+            Err(why) => format!("not stated: {why}"),
+        },
+        assumed: frame.class.map(JointClass::word),
+        strength: classified.by_strength,
+        rotation: joint.rotation.clone(),
+        notes: classified.notes,
+        working: classified.working.into(),
+    })
 }
 
 fn component(component: &Component, action: Option<f64>) -> CheckResult {

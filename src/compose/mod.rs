@@ -15,7 +15,7 @@ use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
 use crate::joints::{Joint, Joints, Layout};
 use crate::origin::{Missing, Problem};
 use crate::review::{Basis, Counts, JointReview, Outcome, Review, Survey};
-use crate::rulebook::{ModeOne, RowForces, Rulebook};
+use crate::rulebook::{Alpha, ModeOne, RowForces, Rulebook};
 use crate::shop::Steelwork;
 
 /// Everything that was read and recognised.
@@ -125,9 +125,18 @@ fn basis(rulebook: &Rulebook) -> Basis {
                 }
                 .into(),
             ),
+            said("table of steel strengths", rulebook.steel_table().to_owned()),
             said(
                 "strength of rolled sections",
                 if settings.strength_by_flange { "by flange thickness" } else { "by each element's thickness" }.into(),
+            ),
+            said(
+                "α beside stiffeners and flanges",
+                match settings.alpha {
+                    Alpha::Chart => "Figure 6.11",
+                    Alpha::Draft2024 => "formula of a draft of EN 1993-1-8:2024, at most 8",
+                }
+                .into(),
             ),
             said("α of Figure 6.11, at most", format!("{}", settings.alpha_max)),
             said("rows carry shear only below", format!("{} of the beam's depth", settings.shear_only_below)),

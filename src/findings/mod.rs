@@ -37,6 +37,7 @@ mod shortfall;
 mod stiffener_added;
 mod stiffener_missing;
 mod stiffeners;
+mod stiffness_differs;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;
@@ -78,6 +79,7 @@ pub const RULES: &[Rule] = &[
     gauge_differs::RULE,
     plate_size_differs::RULE,
     axial_force_beyond_limit::RULE,
+    stiffness_differs::RULE,
     kind_not_assessed::RULE,
     joint_not_scheduled::RULE,
     joint_not_paired::RULE,

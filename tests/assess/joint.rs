@@ -181,7 +181,7 @@ pub fn sketches() -> impl Strategy<Value = Sketch> {
 
 pub fn case(moment: Option<f64>, shear: Option<f64>, axial: Option<f64>) -> LoadCase {
     let at = Place { file: "".into(), line: 0, column: 0 };
-    LoadCase { name: "ULS".into(), moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), at }
+    LoadCase { moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), ..LoadCase::blank("ULS", at) }
 }
 
 /// The joint alone, with one load case.

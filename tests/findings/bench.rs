@@ -4,7 +4,7 @@ use std::sync::Arc;
 
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
-use faying::intent::{IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
+use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
 use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
@@ -164,13 +164,14 @@ pub fn moment(sense: Sense, resistance: f64) -> Arc<MomentResistance> {
         governed_by: "column web in compression".into(),
         rows: Vec::new(),
         components: Vec::new(),
+        stiffness: None,
         notes: Vec::new(),
     })
 }
 
 pub fn load_case(name: &str, moment: Option<f64>, shear: Option<f64>, axial: Option<f64>, line: u32) -> LoadCase {
     let at = Place { file: "schedule.csv".into(), line, column: 1 };
-    LoadCase { name: name.into(), moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), at }
+    LoadCase { moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), ..LoadCase::blank(name, at) }
 }
 
 pub fn place(line: u32) -> Place {
@@ -337,6 +338,7 @@ fn scheduled() -> ScheduledJoint {
         end: Some("start".into()),
         cases: vec![load_case("W1", Some(300.0), Some(100.0), Some(0.0), 2)],
         detail: Some("E1".into()),
+        frame: InFrame::default(),
         at: Place { file: "schedule.csv".into(), line: 2, column: 1 },
     }
 }

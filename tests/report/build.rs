@@ -36,6 +36,7 @@ pub fn joint(n: usize, outcome: Outcome) -> JointReview {
         rows: Vec::new(),
         row_basis: None,
         shear_case: None,
+        stiffness: None,
         checks: Vec::new(),
         findings: Vec::new(),
         missing: Vec::new(),

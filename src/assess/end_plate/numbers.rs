@@ -65,6 +65,9 @@ pub struct BoltNumbers {
     pub A: Area,
     pub alpha_v: f64,
     pub washer: Length,
+    pub washer_thickness: Length,
+    pub head: Length,
+    pub nut: Length,
     pub F_t_Rd: Force,
     pub tension_working: Arc<Working>,
 }
@@ -255,6 +258,9 @@ impl BoltNumbers {
             A: size.a,
             alpha_v: class.alpha_v,
             washer: size.washer,
+            washer_thickness: size.washer_thickness,
+            head: size.head,
+            nut: size.nut,
             F_t_Rd: tension.value,
             tension_working: Arc::new(tension.working),
         })

@@ -4,6 +4,7 @@
 use std::collections::HashMap;
 use std::sync::{Arc, Mutex, PoisonError};
 
+use super::Beside;
 use super::moment;
 use super::numbers::Numbers;
 use crate::assess::{MomentResistance, Sense};
@@ -28,7 +29,7 @@ struct Question {
     numbers: Numbers,
     sense: Sense,
     beta: f64,
-    V_Ed: Force,
+    beside: Beside,
     rule: Option<RowForces>,
 }
 
@@ -44,20 +45,28 @@ impl<'a> Solver<'a> {
     }
 
     /// M_j,Rd of the joint with its tension side up; see [`moment::resistance`].
-    pub fn moment(&self, n: &Numbers, sense: Sense, beta: f64, V_Ed: Force, rule: Option<RowForces>) -> Solved {
+    pub(super) fn moment(
+        &self,
+        n: &Numbers,
+        sense: Sense,
+        beta: f64,
+        beside: Beside,
+        rule: Option<RowForces>,
+    ) -> Solved {
         // Below half of the beam's own resistance the shear changes nothing (EN 1993-1-1 6.2.8).
         let V_pl_Rd = n.least(|side| side.shear_resistance(self.rulebook.annex.gamma_m0));
-        let V_Ed = if V_Ed <= 0.5 * V_pl_Rd { Force::ZERO } else { V_Ed };
+        let V_Ed = if beside.V_Ed <= 0.5 * V_pl_Rd { Force::ZERO } else { beside.V_Ed };
+        let beside = Beside { V_Ed, ..beside };
         let shelf = shelf(n, beta, V_Ed);
         let asked = |entry: &&Entry| {
-            let Question { numbers, sense: s, beta: b, V_Ed: v, rule: r } = &entry.question;
-            (*s, *b, *v, *r) == (sense, beta, V_Ed, rule) && numbers == n
+            let Question { numbers, sense: s, beta: b, beside: v, rule: r } = &entry.question;
+            (*s, *b, *v, *r) == (sense, beta, beside, rule) && numbers == n
         };
         if let Some(entry) = self.locked().get(&shelf).and_then(|entries| entries.iter().find(asked)) {
             return entry.solved.clone();
         }
-        let solved = moment::resistance(n, sense, beta, V_Ed, rule, self.rulebook).map(Arc::new);
-        let question = Question { numbers: n.clone(), sense, beta, V_Ed, rule };
+        let solved = moment::resistance(n, sense, beta, beside, rule, self.rulebook).map(Arc::new);
+        let question = Question { numbers: n.clone(), sense, beta, beside, rule };
         self.locked().entry(shelf).or_default().push(Entry { question, solved: solved.clone() });
         solved
     }
