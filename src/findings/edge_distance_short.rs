@@ -5,22 +5,18 @@ use super::say::mm;
 use super::{Context, Rule};
 use crate::joints::EndPlateLayout;
 use crate::review::{Finding, Outcome};
+use crate::rulebook::Distances;
 use crate::units::Length;
 
 const ID: &str = "edge-distance-short";
 pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rules/findings/edge-distance-short.md") };
-
-/// Least distances in hole diameters, EN 1993-1-8:2005 Table 3.3 (round holes, rows not staggered).
-const E_MIN: f64 = 1.2;
-const P_1_MIN: f64 = 2.2;
-const P_2_MIN: f64 = 2.4;
 
 /// Needs no intention and no required action: below these distances the formulas of the standard do not hold. Of each
 /// sort the shortest is told.
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some(layout) = context.layout else { return Vec::new() };
     let Ok(hole) = &layout.bolts.hole else { return Vec::new() };
-    let findings = distances(layout).into_iter().filter_map(|(what, factor, all)| {
+    let findings = distances(layout, &context.rulebook.distances).into_iter().filter_map(|(what, factor, all)| {
         let shortest = all.into_iter().reduce(Length::min)?;
         let least = factor * hole.value;
         if !less(shortest, least, context.rulebook.tolerances.size) {
@@ -36,22 +32,26 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     findings.collect()
 }
 
-/// What, its least in hole diameters, all of its sort.
-fn distances(layout: &EndPlateLayout) -> Vec<(&'static str, f64, Vec<Length>)> {
+/// What, its least in hole diameters (round holes, rows not staggered: the layout takes no others), all of its sort.
+fn distances(layout: &EndPlateLayout, least: &Distances) -> Vec<(&'static str, f64, Vec<Length>)> {
     let (rows, plate) = (&layout.bolts.rows, &layout.plate);
     let ends = [rows.first().map(|row| plate.top - row.height), rows.last().map(|row| row.height - plate.bottom)];
     let pitches = rows.windows(2).filter_map(|pair| Some(pair.first()?.height - pair.last()?.height));
     let column_ends = [layout.column_above, layout.column_below];
     vec![
-        ("the end distance e1 of the bolts in the end plate", E_MIN, ends.into_iter().flatten().collect()),
-        ("the end distance e1 of the bolts in the column", E_MIN, column_ends.into_iter().flatten().collect()),
-        ("the edge distance e2 of the bolts in the end plate", E_MIN, rows.iter().map(|row| row.edge_plate).collect()),
+        ("the end distance e1 of the bolts in the end plate", least.end, ends.into_iter().flatten().collect()),
+        ("the end distance e1 of the bolts in the column", least.end, column_ends.into_iter().flatten().collect()),
+        (
+            "the edge distance e2 of the bolts in the end plate",
+            least.edge,
+            rows.iter().map(|row| row.edge_plate).collect(),
+        ),
         (
             "the edge distance e2 of the bolts in the column flange",
-            E_MIN,
+            least.edge,
             rows.iter().map(|row| row.edge_column).collect(),
         ),
-        ("the spacing p1 of the bolt rows", P_1_MIN, pitches.collect()),
-        ("the gauge p2 of the bolts", P_2_MIN, rows.iter().map(|row| row.gauge).collect()),
+        ("the spacing p1 of the bolt rows", least.pitch, pitches.collect()),
+        ("the gauge p2 of the bolts", least.gauge, rows.iter().map(|row| row.gauge).collect()),
     ]
 }

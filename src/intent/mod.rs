@@ -104,6 +104,8 @@ pub struct IntendedDetail {
     pub stiffener_top: Option<Option<IntendedStiffener>>,
     /// The same at the bottom flange.
     pub stiffener_bottom: Option<Option<IntendedStiffener>>,
+    /// Whether the steel is exposed to weather or to other corrosive influences.
+    pub exposed: Option<bool>,
     /// Where it is written.
     pub at: Option<Place>,
 }

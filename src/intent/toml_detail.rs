@@ -19,13 +19,14 @@ impl Reader<'_> {
             return None;
         };
         let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
-        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members"]);
+        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members", "exposed"]);
         let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
         match tidy(name.get_ref()) {
             Ok(name) if !name.is_empty() => detail.name = name,
             Ok(_) => self.fault(name.span(), "a detail has no name; allowed is [detail.NAME]".into()),
             Err(message) => self.fault(name.span(), format!("detail: {message}")),
         }
+        detail.exposed = self.truth(&table, "exposed");
         if let Some(bolts) = self.inner(&table, "bolts") {
             self.known(&bolts, &["size", "class", "rows_mm", "gauge_mm"]);
             detail.bolt_diameter = self.bolt_size(&bolts);

@@ -40,6 +40,7 @@ impl Bolts {
         #[serde(deny_unknown_fields)]
         struct Size {
             d: Spanned<f64>,
+            pitch: Spanned<f64>,
             a_s: Spanned<f64>,
             across_flats: Spanned<f64>,
             across_corners: Spanned<f64>,
@@ -48,6 +49,7 @@ impl Bolts {
             washer_thickness: Spanned<f64>,
             head: Spanned<f64>,
             nut: Spanned<f64>,
+            nut_preloaded: Spanned<f64>,
         }
         #[derive(Deserialize)]
         #[serde(deny_unknown_fields)]
@@ -106,6 +108,7 @@ impl Bolts {
             let across_flats = rules.length("across_flats", &size.across_flats)?;
             bolts.sizes.push(BoltSize {
                 d,
+                pitch: Length(rules.within("pitch", &size.pitch, 0.5..=10.0)?),
                 a,
                 a_s,
                 d_0: d + clearance.round,
@@ -120,6 +123,7 @@ impl Bolts {
                 washer_thickness: rules.length("washer_thickness", &size.washer_thickness)?,
                 head: rules.length("head", &size.head)?,
                 nut: rules.length("nut", &size.nut)?,
+                nut_preloaded: rules.length("nut_preloaded", &size.nut_preloaded)?,
             });
         }
         Ok(bolts)

@@ -2,6 +2,7 @@
 
 mod bolts;
 mod catalogue;
+mod distances;
 mod error;
 mod load;
 mod names;
@@ -15,8 +16,8 @@ use std::sync::OnceLock;
 
 pub use error::RuleError;
 pub use tables::{
-    Annex, BoltClass, BoltSize, Clearance, Grade, ModeOne, RowForces, Section, Settings, Strength, Tolerances,
-    WeldRules,
+    Annex, BoltClass, BoltSize, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings, Strength,
+    Tolerances, WeldRules,
 };
 
 use crate::origin::Known;
@@ -45,6 +46,8 @@ pub struct Rulebook {
     pub alpha_v_shank: f64,
     /// Hole clearances by bolt diameter.
     pub clearances: Vec<Clearance>,
+    /// Distances and room of bolts.
+    pub distances: Distances,
     /// Rules for fillet welds.
     pub welds: WeldRules,
     annexes: Vec<(String, Annex)>,
@@ -124,6 +127,7 @@ impl Rulebook {
             bolt_classes: bolts.classes,
             alpha_v_shank: bolts.alpha_v_shank,
             clearances: bolts.clearances,
+            distances: file("distances.toml").distances()?,
             welds: file("welds.toml").welds()?,
             annexes,
             steel: Steel::load(file("steel.toml"))?,

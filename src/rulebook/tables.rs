@@ -50,6 +50,8 @@ pub struct Section {
 pub struct BoltSize {
     /// d.
     pub d: Length,
+    /// p: pitch of the coarse thread.
+    pub pitch: Length,
     /// A: gross area of the shank.
     pub a: Area,
     /// A_s: tensile stress area.
@@ -70,6 +72,8 @@ pub struct BoltSize {
     pub head: Length,
     /// m: nut height.
     pub nut: Length,
+    /// m of EN 14399-4: no nut of class 10.9 is lower.
+    pub nut_preloaded: Length,
 }
 
 /// A bolt strength class.
@@ -98,6 +102,35 @@ pub struct Clearance {
     pub short_slot: Length,
     /// Long slotted hole: its overall length in bolt diameters.
     pub long_slot: f64,
+}
+
+/// Distances and room of bolts: what the detailing rules ask for.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Distances {
+    /// Least e_1 in d_0.
+    pub end: f64,
+    /// Least e_2 in d_0.
+    pub edge: f64,
+    /// Least p_1 in d_0.
+    pub pitch: f64,
+    /// Least p_2 in d_0.
+    pub gauge: f64,
+    /// Greatest e_1 and e_2 of exposed steel: so many t …
+    pub greatest_edge: f64,
+    /// … and this.
+    pub greatest_edge_beside: Length,
+    /// Greatest p_1 and p_2 of exposed steel: so many t …
+    pub greatest_spacing: f64,
+    /// … and at most this.
+    pub greatest_spacing_most: Length,
+    /// Whether steel is exposed where the schedule does not say.
+    pub exposed: bool,
+    /// Threads that a bolt shows past its nut.
+    pub threads_past_nut: f64,
+    /// Washers on a bolt where nobody counts them.
+    pub washers: f64,
+    /// A socket's outer diameter in widths across flats.
+    pub socket: f64,
 }
 
 /// Rules for fillet welds, EN 1993-1-8 section 4; throats a and lengths.

@@ -358,6 +358,7 @@ fn intended() -> IntendedDetail {
         web_weld: Some(mm(5.0)),
         stiffener_top: Some(None),
         stiffener_bottom: Some(Some(IntendedStiffener { thickness: Some(mm(12.0)), grade: Some("S355".into()) })),
+        exposed: None,
         at: Some(Place { file: "details.toml".into(), line: 1, column: 1 }),
     }
 }

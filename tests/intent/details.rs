@@ -15,13 +15,15 @@ fn every_field_is_read() {
          welds = {{ flange_throat_mm = 8.4, web_throat_mm = 5 }}\n\
          stiffeners = {{ top = {{ thickness_mm = 15, grade = 'S275' }}, bottom = 'none' }}\n\
          members = {{ supporting_section = 'UC 1', supported_section = 'UB 1', supporting_grade = 'S355', \
-         supported_grade = 'S235' }}\n"
+         supported_grade = 'S235' }}\n\
+         exposed = true\n"
     );
     let intent = sound("s.toml", &text);
     let d = &intent.details[0];
     assert_eq!(d.name, "M3");
     assert_eq!(d.at.as_ref().map(ToString::to_string).as_deref(), Some("s.toml:4:9"));
     assert_eq!((d.bolt_diameter, d.bolt_class.as_deref()), (Some(mm(24.0)), Some("8.8")));
+    assert_eq!(d.exposed, Some(true));
     assert_eq!(d.rows, Some(vec![mm(573.1), mm(483.0), mm(-60.0)]));
     assert_eq!((d.gauge, d.plate_thickness, d.plate_width), (Some(mm(100.0)), Some(mm(25.0)), Some(mm(250.0))));
     assert_eq!((d.plate_top, d.plate_bottom), (Some(mm(620.0)), Some(mm(-50.5))));
@@ -38,7 +40,7 @@ fn what_is_not_stated_is_none() {
     let intent = sound("s.toml", &format!("{JOINT}[detail.M3.stiffeners]\ntop = {{}}\n"));
     let d = &intent.details[0];
     assert_eq!(d.stiffener_top, Some(Some(IntendedStiffener { thickness: None, grade: None })));
-    assert_eq!(d.stiffener_bottom, None);
+    assert_eq!((&d.stiffener_bottom, d.exposed), (&None, None));
     assert!(d.bolt_diameter.is_none() && d.rows.is_none() && d.plate_thickness.is_none() && d.flange_weld.is_none());
 }
 
