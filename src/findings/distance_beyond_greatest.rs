@@ -16,14 +16,11 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let limits = &context.rulebook.distances;
     let Some(layout) = context.layout else { return Vec::new() };
     let exposed = context.intended.and_then(|detail| detail.exposed).unwrap_or(limits.exposed);
-    let Ok(column) = &layout.column.section else { return Vec::new() };
-    if !exposed {
-        return Vec::new();
-    }
-    let t = layout.plate.thickness.min(column.value.t_f);
+    let Some([t_p, behind]) = layout.plies().filter(|_| exposed) else { return Vec::new() };
+    let t = t_p.min(behind);
     let edge = limits.greatest_edge * t + limits.greatest_edge_beside;
     let spacing = (limits.greatest_spacing * t).min(limits.greatest_spacing_most);
-    let (rows, plate) = (&layout.bolts.rows, &layout.plate);
+    let (rows, plate) = (&layout.bolts().rows, layout.side().plate);
     let ends = [rows.first().map(|row| plate.top - row.height), rows.last().map(|row| row.height - plate.bottom)];
     let pitches = rows.windows(2).filter_map(|pair| Some(pair.first()?.height - pair.last()?.height));
     let sorts: [(&str, Length, Vec<Length>); 5] = [

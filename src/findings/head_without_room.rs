@@ -10,7 +10,7 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 /// The smallest head of the product standards that clashes is a hold; a washer, which nobody says is there, a comment.
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let diameter = context.layout.and_then(|layout| layout.bolts.diameter.as_ref().ok());
+    let diameter = context.layout.and_then(|layout| layout.bolts().diameter.as_ref().ok());
     let Some(size) = diameter.and_then(|d| context.rulebook.bolt_size(d.value)) else { return Vec::new() };
     let tolerance = context.rulebook.tolerances.position;
     let clash = |beside: room::Beside| {

@@ -11,7 +11,7 @@ pub(super) const RULE: Rule =
 
 /// A comment: the formulas take the smaller edge distance of both, so the joint's strength is not touched.
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let Some(layout) = context.layout else { return Vec::new() };
+    let Some(layout) = context.layout.and_then(|layout| layout.on_column()) else { return Vec::new() };
     let Ok(column) = &layout.column.section else { return Vec::new() };
     let (width, flange) = (layout.plate.width, column.value.b);
     if !more(width, flange, context.rulebook.tolerances.position) {

@@ -2,7 +2,7 @@
 
 use super::Context;
 use super::context::Parts;
-use crate::joints::{BoltRow, EndPlateLayout};
+use crate::joints::{BoltRow, EndPlateLayout, PlateSide};
 use crate::origin::Known;
 use crate::rulebook::Section;
 use crate::units::{Length, mm};
@@ -39,15 +39,22 @@ impl Block {
 /// radius) is left out: the steel itself is there in any case.
 pub(super) fn beside(context: &Context<'_>) -> Vec<Beside> {
     let Some(layout) = context.layout else { return Vec::new() };
-    let blocks = on_plate(layout).into_iter().map(|(what, block)| (what, block, context.plate()));
-    let web = column_web(layout).into_iter().map(|(what, block)| (what, block, context.column()));
-    let stiffeners = stiffeners(layout).into_iter().map(|(what, block, guids)| (what, block, context.parts(guids)));
-    let all = blocks.chain(web).chain(stiffeners).filter_map(|(what, block, on)| {
-        let rows = layout.bolts.rows.iter().map(|row| (row.height, block.distance(row)));
+    let mut blocks: Vec<(String, Block, Parts)> = Vec::new();
+    for side in layout.sides() {
+        let on = || context.parts([side.plate.guid.as_str()]);
+        blocks.extend(on_plate(side).into_iter().map(|(what, block)| (what, block, on())));
+    }
+    if let Some(layout) = layout.on_column() {
+        blocks.extend(column_web(layout).map(|(what, block)| (what, block, context.column())));
+        let stiffeners = stiffeners(layout).into_iter();
+        blocks.extend(stiffeners.map(|(what, block, guids)| (what, block, context.parts(guids))));
+    }
+    let nearest = |(what, block, on): (String, Block, Parts)| {
+        let rows = layout.bolts().rows.iter().map(|row| (row.height, block.distance(row)));
         let (row, distance) = rows.min_by(|a, b| a.1.get().total_cmp(&b.1.get()))?;
         Some(Beside { what, row, distance, on })
-    });
-    all.collect()
+    };
+    blocks.into_iter().filter_map(nearest).collect()
 }
 
 /// The leg of a fillet, with the words that tell whether it is in.
@@ -58,21 +65,20 @@ fn leg(throat: &Known<Length>) -> (Length, &'static str) {
     }
 }
 
-/// The beam's end on the end plate.
-fn on_plate(layout: &EndPlateLayout) -> Vec<(String, Block)> {
-    let Ok(beam) = &layout.beam.section else { return Vec::new() };
+/// A beam's end on its end plate.
+fn on_plate(side: PlateSide<'_>) -> Vec<(String, Block)> {
+    let Ok(beam) = &side.beam.section else { return Vec::new() };
     let Section { h, b, t_w, t_f, .. } = beam.value;
+    let (low, high) = (side.soffit, side.soffit + h);
     let flange = |name: &str, throat, low: Length, high: Length| {
         let (leg, weld) = leg(throat);
-        let block = Block { outer: 0.5 * b, low: low - leg, high: high + leg };
-        (format!("the beam's {name} flange{weld}"), block)
+        (format!("the beam's {name} flange{weld}"), Block { outer: 0.5 * b, low: low - leg, high: high + leg })
     };
-    let (web_leg, web_weld) = leg(&layout.welds.web);
-    let web = Block { outer: 0.5 * t_w + web_leg, low: Length::ZERO, high: h };
+    let (web_leg, web_weld) = leg(&side.welds.web);
     vec![
-        flange("top", &layout.welds.flange_top, h - t_f, h),
-        flange("bottom", &layout.welds.flange_bottom, Length::ZERO, t_f),
-        (format!("the beam's web{web_weld}"), web),
+        flange("top", &side.welds.flange_top, high - t_f, high),
+        flange("bottom", &side.welds.flange_bottom, low, low + t_f),
+        (format!("the beam's web{web_weld}"), Block { outer: 0.5 * t_w + web_leg, low, high }),
     ]
 }
 

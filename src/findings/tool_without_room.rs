@@ -10,7 +10,7 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 /// A comment. What the head itself clashes with, `head-without-room` tells.
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let diameter = context.layout.and_then(|layout| layout.bolts.diameter.as_ref().ok());
+    let diameter = context.layout.and_then(|layout| layout.bolts().diameter.as_ref().ok());
     let Some(size) = diameter.and_then(|d| context.rulebook.bolt_size(d.value)) else { return Vec::new() };
     let tolerance = context.rulebook.tolerances.position;
     let socket = 0.5 * context.rulebook.distances.socket * size.across_flats;
