@@ -12,7 +12,7 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 /// Of several stated lengths the shortest; a length that nobody states makes no finding.
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some(layout) = context.layout else { return Vec::new() };
-    let (Some(plies), Ok(d)) = (layout.plies(), &layout.bolts().diameter) else { return Vec::new() };
+    let (Some(grip), Ok(d)) = (layout.grip(), &layout.bolts().diameter) else { return Vec::new() };
     let Some(size) = context.rulebook.bolt_size(d.value) else { return Vec::new() };
     let bolts = context.joint.into_iter().flat_map(|joint| &joint.bolts);
     let bolts = bolts.filter_map(|index| context.steelwork.bolts.get(*index));
@@ -20,7 +20,6 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
         return Vec::new();
     };
     let (tolerances, rules) = (&context.rulebook.tolerances, &context.rulebook.distances);
-    let grip: Length = plies.into_iter().sum();
     let past = rules.threads_past_nut * size.pitch;
     let washers = rules.washers * size.washer_thickness;
     let high_strength = layout.bolts().class.as_ref().is_ok_and(|class| class.value == "10.9");

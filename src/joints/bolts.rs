@@ -4,7 +4,7 @@ use glam::{DVec2, DVec3};
 
 use super::draft::Draft;
 use super::end_plate::Case;
-use super::layout::{BoltRow, Bolts};
+use super::layout::{BoltRow, Bolts, Held};
 use super::scene::Scene;
 use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use crate::shop::{Bolt, Part};
@@ -82,7 +82,7 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) -> Result<B
     );
     let class = all_alike("bolt class", bodies.iter().map(|bolt| &bolt.class), |a, b| a == b, Clone::clone);
     let hole = hole(scene, draft, case, &placed, &diameter)?;
-    Ok(Bolts { diameter, class, hole, rows: laid })
+    Ok(Bolts { diameter, class, hole, rows: laid, held: Held::default() })
 }
 
 /// From a bolt to the outline's side edge on its own side of the web, at the bolt's height.

@@ -1,11 +1,13 @@
 //! Bolt sizes, strength classes and hole clearances.
 
+use std::collections::BTreeMap;
+
 use serde::Deserialize;
 use toml::Spanned;
 
 use super::error::RuleError;
 use super::load::RuleFile;
-use super::tables::{BoltClass, BoltSize, Clearance};
+use super::tables::{BoltClass, BoltSize, Clearance, SlipRules};
 use crate::units::{Area, Length};
 
 /// What `bolts.toml` holds.
@@ -15,6 +17,7 @@ pub(super) struct Bolts {
     pub classes: Vec<BoltClass>,
     pub clearances: Vec<Clearance>,
     pub sizes: Vec<BoltSize>,
+    pub slip: SlipRules,
 }
 
 impl Bolts {
@@ -53,8 +56,16 @@ impl Bolts {
         }
         #[derive(Deserialize)]
         #[serde(deny_unknown_fields)]
+        struct Slip {
+            preloaded: Vec<String>,
+            friction: BTreeMap<String, Spanned<f64>>,
+            reduced_by_tension: bool,
+        }
+        #[derive(Deserialize)]
+        #[serde(deny_unknown_fields)]
         struct File {
             alpha_v_shank: Spanned<f64>,
+            slip: Slip,
             class: Vec<Class>,
             clearance: Vec<Gap>,
             size: Vec<Size>,
@@ -62,6 +73,11 @@ impl Bolts {
         let file: File = rules.parse()?;
         let mut bolts =
             Bolts { alpha_v_shank: rules.within("alpha_v_shank", &file.alpha_v_shank, 0.1..=0.7)?, ..Self::default() };
+        bolts.slip.preloaded = file.slip.preloaded;
+        bolts.slip.reduced_by_tension = file.slip.reduced_by_tension;
+        for (class, mu) in &file.slip.friction {
+            bolts.slip.friction.insert(class.clone(), rules.within("friction", mu, 0.05..=0.8)?);
+        }
         for class in &file.class {
             let name = rules.text("name", &class.name)?;
             if bolts.classes.iter().any(|other| other.name == name) {

@@ -99,6 +99,8 @@ impl RuleFile<'_> {
             gamma_M0: Factor,
             gamma_M1: Factor,
             gamma_M2: Factor,
+            gamma_M3: Option<Factor>,
+            gamma_M3_ser: Option<Factor>,
         }
         let file: File = self.parse()?;
         let mut sources: Vec<String> = Vec::new();
@@ -110,6 +112,12 @@ impl RuleFile<'_> {
             gamma_m0: factor("gamma_M0", &file.gamma_M0)?,
             gamma_m1: factor("gamma_M1", &file.gamma_M1)?,
             gamma_m2: factor("gamma_M2", &file.gamma_M2)?,
+            gamma_m3: match (&file.gamma_M3, &file.gamma_M3_ser) {
+                (Some(ultimate), Some(service)) => {
+                    Some((factor("gamma_M3", ultimate)?, factor("gamma_M3_ser", service)?))
+                }
+                _ => None,
+            },
             name: self.text("name", &file.name)?,
             source: sources.join("; "),
         })

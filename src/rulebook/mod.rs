@@ -16,8 +16,8 @@ use std::sync::OnceLock;
 
 pub use error::RuleError;
 pub use tables::{
-    Annex, BoltClass, BoltSize, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings, Strength,
-    Tolerances, WeldRules,
+    Annex, BoltClass, BoltSize, Category, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings,
+    SlipRules, Strength, Tolerances, WeldRules,
 };
 
 use crate::origin::Known;
@@ -46,6 +46,8 @@ pub struct Rulebook {
     pub alpha_v_shank: f64,
     /// Hole clearances by bolt diameter.
     pub clearances: Vec<Clearance>,
+    /// Slip of preloaded bolts.
+    pub slip: SlipRules,
     /// Distances and room of bolts.
     pub distances: Distances,
     /// Rules for fillet welds.
@@ -127,6 +129,7 @@ impl Rulebook {
             bolt_classes: bolts.classes,
             alpha_v_shank: bolts.alpha_v_shank,
             clearances: bolts.clearances,
+            slip: bolts.slip,
             distances: file("distances.toml").distances()?,
             welds: file("welds.toml").welds()?,
             annexes,

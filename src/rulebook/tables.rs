@@ -89,6 +89,51 @@ pub struct BoltClass {
     pub alpha_v: f64,
 }
 
+/// Category of a bolted connection, EN 1993-1-8:2005 3.4, Table 3.2.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Category {
+    /// Bearing type.
+    A,
+    /// Slip-resistant at serviceability.
+    B,
+    /// Slip-resistant at the ultimate limit state.
+    C,
+    /// In tension, not preloaded.
+    D,
+    /// In tension, preloaded.
+    E,
+}
+
+impl Category {
+    /// By its letter.
+    pub fn named(letter: &str) -> Option<Self> {
+        match letter.trim() {
+            "A" | "a" => Some(Self::A),
+            "B" | "b" => Some(Self::B),
+            "C" | "c" => Some(Self::C),
+            "D" | "d" => Some(Self::D),
+            "E" | "e" => Some(Self::E),
+            _ => None,
+        }
+    }
+
+    /// Whether its bolts are preloaded.
+    pub fn preloaded(self) -> bool {
+        matches!(self, Self::B | Self::C | Self::E)
+    }
+}
+
+/// Slip of preloaded bolts.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct SlipRules {
+    /// Bolt classes that may be preloaded, 3.1.2.
+    pub preloaded: Vec<String>,
+    /// μ by class of friction surface, Table 3.7.
+    pub friction: BTreeMap<String, f64>,
+    /// Whether a bolt's own tension takes off its slip resistance (3.8), or is counterbalanced by 3.9.2(3).
+    pub reduced_by_tension: bool,
+}
+
 /// What a hole is larger than the bolt, EN 1090-2.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Clearance {
@@ -159,6 +204,8 @@ pub struct Annex {
     pub gamma_m1: f64,
     /// γ_M2.
     pub gamma_m2: f64,
+    /// γ_M3 and γ_M3,ser, for slip; `None` where the annex does not state both.
+    pub gamma_m3: Option<(f64, f64)>,
     /// Where the values come from.
     pub source: String,
 }

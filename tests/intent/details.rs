@@ -1,7 +1,8 @@
 //! Intended details.
 
 use super::sound;
-use faying::intent::IntendedStiffener;
+use faying::intent::{Friction, IntendedStiffener, read};
+use faying::rulebook::Category;
 use faying::units::mm;
 
 const JOINT: &str = "[[joint]]\nmark = 'J1'\ndetail = 'M3'\n";
@@ -50,4 +51,28 @@ fn details_stand_in_the_order_of_the_file() {
     let names: Vec<&str> = intent.details.iter().map(|d| d.name.as_str()).collect();
     assert_eq!(names, ["Z", "A", "M3"]);
     assert_eq!(intent.problems.len(), 2);
+}
+
+#[test]
+fn category_and_friction_surfaces_are_read() {
+    let bolts = |keys: &str| {
+        let intent = sound("s.toml", &format!("{JOINT}[detail.M3]\nbolts = {{ {keys} }}\n"));
+        let detail = &intent.details[0];
+        (detail.bolt_category, detail.friction.clone())
+    };
+    assert_eq!(bolts("size = 'M24'"), (None, None));
+    assert_eq!(bolts("category = 'c', friction_class = 'b'"), (Some(Category::C), Some(Friction::Class("B".into()))));
+    assert_eq!(bolts("category = 'B', slip_factor = 0.45"), (Some(Category::B), Some(Friction::Factor(0.45))));
+    for wrong in [
+        "category = 'F'",
+        "category = 3",
+        "friction_class = 'E'",
+        "slip_factor = 0",
+        "slip_factor = 1.2",
+        "slip_factor = 0.4, friction_class = 'B'",
+    ] {
+        let text = format!("{JOINT}[detail.M3]\nbolts = {{ {wrong} }}\n");
+        assert!(read(text.as_bytes(), "s.toml").is_err(), "{wrong}");
+    }
+    assert!(read(format!("{JOINT}[detail.M3]\nexposed = 'yes'\n").as_bytes(), "s.toml").is_err());
 }

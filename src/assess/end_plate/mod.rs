@@ -11,7 +11,7 @@ mod sound;
 mod totals;
 mod weld_checks;
 
-pub use intended::{intended, intended_layout};
+pub use intended::{intended, intended_layout, with_category};
 use numbers::{Noted, Numbers};
 use shear::Tension;
 use solver::Solved;
