@@ -5,6 +5,7 @@ mod intended;
 pub mod joint;
 mod known_limits;
 mod laws;
+mod needed_throat;
 mod odd_sizes;
 mod plastic;
 mod safe;

@@ -7,6 +7,7 @@ use crate::intent::ScheduledJoint;
 use crate::joints::Joint;
 use crate::origin::{Ask, Missing};
 use crate::review::{CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowResult};
+use crate::units::{Length, kn};
 
 /// A joint of the steel.
 pub fn review(
@@ -23,7 +24,7 @@ pub fn review(
     findings.sort_by_key(|finding| finding.severity);
     let outcome = outcome(assessment, &findings, &missing);
     let intended = computed.intended.as_ref().and_then(|i| i.as_ref().ok());
-    let leading = assessment.map(|a| leading(a, scheduled));
+    let leading = assessment.map(|a| leading(a, scheduled, sources.rulebook.welds.min_throat));
     JointReview {
         mark: scheduled.and_then(|s| s.mark.clone()).unwrap_or_else(|| joint.mark.clone()),
         kind: joint.kind.word().into(),
@@ -231,7 +232,7 @@ struct Leading {
     checks: Vec<CheckResult>,
 }
 
-fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leading {
+fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>, least_throat: Length) -> Leading {
     let use_of = |verdicts: &[Verdict], about: About| {
         verdicts.iter().find(|v| v.about == about).and_then(|v| v.utilisation).unwrap_or(0.0)
     };
@@ -261,7 +262,7 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         };
         checks.push(check("moment", title, "EN 1993-1-8:2005 6.2.7", moment.moment.knm(), required, "kNm"));
         // At a smaller moment each component carries its share of what it carries at the full one.
-        checks.extend(moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()))));
+        checks.extend(moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()), least_throat)));
     }
     let shear_case = assessment
         .cases
@@ -271,14 +272,17 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         let verdict = shear_case.and_then(|case| case.verdicts.iter().find(|v| v.about == About::Shear));
         let required = verdict.and_then(|v| v.required);
         checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", shear.shear.kn(), required, "kN"));
-        checks.extend(shear.components.iter().map(|c| component(c, required)));
+        checks.extend(shear.components.iter().map(|c| component(c, required, least_throat)));
     }
     Leading { rows, checks }
 }
 
-fn component(component: &Component, action: Option<f64>) -> CheckResult {
+fn component(component: &Component, action: Option<f64>, least_throat: Length) -> CheckResult {
     let mut result = check(&component.id, &component.title, component.clause, component.resistance.kn(), action, "kN");
     result.working = component.working.clone();
+    let force = action.map_or(component.at_full, kn);
+    result.needed_throat_mm =
+        component.needed_throat(force, least_throat).map(Length::get).filter(|_| force.get() > 0.0);
     result
 }
 
@@ -297,6 +301,7 @@ fn check(id: &str, title: &str, clause: &str, resistance: f64, action: Option<f6
             Some(_) => "not met",
             None => "unproven",
         },
+        needed_throat_mm: None,
         working: Default::default(),
     }
 }

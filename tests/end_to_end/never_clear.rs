@@ -83,7 +83,7 @@ fn cases() -> Vec<Case> {
         ("the weld of the bottom flange left out", Written(|e| !is(e, "beam B1/start/weld lower flange")), Unproven, "no weld is modelled there"),
         ("the weld of the web left out", Written(|e| !is(e, "beam B1/start/weld web")), Unproven, "no weld is modelled there"),
         ("a weld below the least throat", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 2.0), Unproven, "3.000 mm is the least"),
-        ("a weld thinner than needed", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 3.0), Hold, "weld"),
+        ("a weld thinner than needed", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 3.0), Hold, "it needs a throat of"),
         // ---- plate
         ("no plate", Written(|e| !is(e, PLATE)), Hold, "no bolted joint"),
         ("a plate 5 mm off the column", Written(|e| { if is(e, PLATE) { origin(e)[0] += 5.0 } true }), Unproven, ""),
