@@ -231,6 +231,8 @@ pub struct CheckResult {
     pub utilisation: Option<f64>,
     /// "met", "not met" or "unproven".
     pub outcome: &'static str,
+    /// For a weld: the throat that the action needs, or what the joint's full resistance needs where none is stated, mm.
+    pub needed_throat_mm: Option<f64>,
     /// The working.
     pub working: Arc<Working>,
 }

@@ -52,6 +52,18 @@ pub struct Component {
     pub working: Arc<Working>,
 }
 
+impl Component {
+    /// For a weld: the throat that `force` needs on it, which is in proportion, at least `least`.
+    pub fn needed_throat(&self, force: Force, least: Length) -> Option<Length> {
+        if !self.id.contains("-weld") {
+            return None;
+        }
+        let throat = self.working.steps.iter().find(|step| step.symbol == "a")?.value.value;
+        let needed = Length(throat) * (force.abs() / self.resistance);
+        needed.get().is_finite().then(|| needed.max(least))
+    }
+}
+
 /// A spring of the joint's rotational stiffness, Table 6.11.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Spring {

@@ -11,7 +11,7 @@ use crate::review::{
     CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowBasis, RowResult,
     StiffnessResult,
 };
-use crate::units::Moment;
+use crate::units::{Length, Moment, kn};
 
 /// A joint of the steel.
 pub fn review(
@@ -28,7 +28,8 @@ pub fn review(
     findings.sort_by_key(|finding| finding.severity);
     let outcome = outcome(assessment, &findings, &missing);
     let intended = computed.intended.as_ref().and_then(|i| i.as_ref().ok());
-    let leading = assessment.map(|a| leading(a, scheduled)).unwrap_or_default();
+    let least_throat = sources.rulebook.welds.min_throat;
+    let leading = assessment.map(|a| leading(a, scheduled, least_throat)).unwrap_or_default();
     JointReview {
         mark: scheduled.and_then(|s| s.mark.clone()).unwrap_or_else(|| joint.mark.clone()),
         kind: joint.kind.word().into(),
@@ -248,7 +249,7 @@ struct Leading {
     checks: Vec<CheckResult>,
 }
 
-fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leading {
+fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>, least_throat: Length) -> Leading {
     let use_of = |verdicts: &[Verdict], about: About| {
         verdicts.iter().find(|v| v.about == about).and_then(|v| v.utilisation).unwrap_or(0.0)
     };
@@ -290,7 +291,7 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         };
         checks.push(check("moment", title, "EN 1993-1-8:2005 6.2.7", moment.moment.knm(), required, "kNm"));
         // At a smaller moment each component carries its share of what it carries at the full one.
-        checks.extend(moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()))));
+        checks.extend(moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()), least_throat)));
     }
     let shear_case = assessment
         .cases
@@ -300,7 +301,7 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         let verdict = shear_case.and_then(|case| case.verdicts.iter().find(|v| v.about == About::Shear));
         let required = verdict.and_then(|v| v.required);
         checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", shear.shear.kn(), required, "kN"));
-        checks.extend(shear.components.iter().map(|c| component(c, required)));
+        checks.extend(shear.components.iter().map(|c| component(c, required, least_throat)));
     }
     let shear_case = shear_case.filter(|case| case.shear.is_some()).and_then(|case| named(case.case));
     Leading { rows, row_basis, shear_case, stiffness, checks }
@@ -340,9 +341,12 @@ fn stiffness(
     })
 }
 
-fn component(component: &Component, action: Option<f64>) -> CheckResult {
+fn component(component: &Component, action: Option<f64>, least_throat: Length) -> CheckResult {
     let mut result = check(&component.id, &component.title, component.clause, component.resistance.kn(), action, "kN");
     result.working = component.working.clone();
+    let force = action.map_or(component.at_full, kn);
+    result.needed_throat_mm =
+        component.needed_throat(force, least_throat).map(Length::get).filter(|_| force.get() > 0.0);
     result
 }
 
@@ -361,6 +365,7 @@ fn check(id: &str, title: &str, clause: &str, resistance: f64, action: Option<f6
             Some(_) => "not met",
             None => "unproven",
         },
+        needed_throat_mm: None,
         working: Default::default(),
     }
 }

@@ -214,7 +214,8 @@ impl<'a> Sources<'a> {
             let assessment = assess(&meant);
             Ok((meant, assessment))
         });
-        Computed { detailed: Some(assess(layout)), intended }
+        let asked = self.detail(scheduled).and_then(|detail| end_plate::with_category(layout, detail, self.rulebook));
+        Computed { detailed: Some(assess(asked.as_ref().unwrap_or(layout))), intended }
     }
 
     fn found(&self, solver: &Solver<'_>, index: usize) -> JointReview {

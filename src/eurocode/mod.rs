@@ -10,6 +10,7 @@ pub mod bolts;
 pub mod classification;
 pub mod column_web;
 pub mod effective_length;
+pub mod slip;
 pub mod stiffeners;
 pub mod stiffness;
 pub mod t_stub;

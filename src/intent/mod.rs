@@ -20,6 +20,7 @@ pub(crate) use source::fold;
 pub use source::{MAX_BYTES, MAX_LINE_BYTES};
 
 use crate::origin::{Place, Problem};
+use crate::rulebook::Category;
 use crate::units::{Force, Length, Moment};
 
 /// One concurrent set of actions. M is positive when it puts the top of the joint in tension, N positive in tension,
@@ -106,6 +107,15 @@ pub struct ScheduledJoint {
     pub at: Place,
 }
 
+/// What is stated of friction surfaces.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Friction {
+    /// A class of EN 1993-1-8 Table 3.7, as written.
+    Class(String),
+    /// μ by test.
+    Factor(f64),
+}
+
 /// An intended pair of transverse stiffeners.
 #[derive(Clone, Debug, PartialEq)]
 pub struct IntendedStiffener {
@@ -132,6 +142,10 @@ pub struct IntendedDetail {
     pub bolt_diameter: Option<Length>,
     /// Bolt class: "8.8".
     pub bolt_class: Option<String>,
+    /// Category of Table 3.2.
+    pub bolt_category: Option<Category>,
+    /// The friction surfaces of slip-resistant bolts.
+    pub friction: Option<Friction>,
     /// Heights of the rows above the soffit of the supported member, top down.
     pub rows: Option<Vec<Length>>,
     /// w.
@@ -154,6 +168,8 @@ pub struct IntendedDetail {
     pub stiffener_top: Option<Option<IntendedStiffener>>,
     /// The same at the bottom flange.
     pub stiffener_bottom: Option<Option<IntendedStiffener>>,
+    /// Whether the steel is exposed to weather or to other corrosive influences.
+    pub exposed: Option<bool>,
     /// Where it is written.
     pub at: Option<Place>,
 }

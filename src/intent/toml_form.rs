@@ -138,6 +138,16 @@ impl<'a> Reader<'a> {
         self.stated(table, key).map(|stated| stated.text)
     }
 
+    /// True or false, if stated.
+    pub fn truth(&mut self, table: &Table<'_>, key: &str) -> Option<bool> {
+        let value = table.table.get(key)?;
+        let truth = value.get_ref().as_bool();
+        if truth.is_none() {
+            self.wrong(value, key, "true or false");
+        }
+        truth
+    }
+
     /// A finite number times `size`.
     pub fn number(&mut self, value: &Spanned<DeValue<'_>>, key: &str, size: f64, sign: Sign) -> Option<f64> {
         let number = match value.get_ref() {

@@ -271,6 +271,7 @@ fn check(c: &review::CheckResult) -> Check {
         unit: c.unit.into(),
         utilisation: c.utilisation.and_then(ratio),
         outcome: c.outcome.into(),
+        needed_throat_mm: c.needed_throat_mm.and_then(thousandth),
     }
 }
 

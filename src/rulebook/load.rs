@@ -22,6 +22,7 @@ pub(super) const EMBEDDED: &[(&str, &str)] = &[
     ("annexes/uk.toml", include_str!("../../rules/annexes/uk.toml")),
     ("bolts.toml", include_str!("../../rules/bolts.toml")),
     ("detailing.toml", include_str!("../../rules/detailing.toml")),
+    ("distances.toml", include_str!("../../rules/distances.toml")),
     ("sections/hea.csv", include_str!("../../rules/sections/hea.csv")),
     ("sections/heb.csv", include_str!("../../rules/sections/heb.csv")),
     ("sections/hem.csv", include_str!("../../rules/sections/hem.csv")),
@@ -131,6 +132,8 @@ impl RuleFile<'_> {
             gamma_M2: Factor,
             gamma_Mu: Option<Factor>,
             row_forces: Option<Choice>,
+            gamma_M3: Option<Factor>,
+            gamma_M3_ser: Option<Factor>,
         }
         let file: File = self.parse()?;
         let mut sources: Vec<String> = Vec::new();
@@ -142,6 +145,10 @@ impl RuleFile<'_> {
         let gamma_m1 = factor("gamma_M1", &file.gamma_M1)?;
         let gamma_m2 = factor("gamma_M2", &file.gamma_M2)?;
         let gamma_mu = file.gamma_Mu.as_ref().map(|given| factor("gamma_Mu", given)).transpose()?;
+        let gamma_m3 = match (&file.gamma_M3, &file.gamma_M3_ser) {
+            (Some(ultimate), Some(service)) => Some((factor("gamma_M3", ultimate)?, factor("gamma_M3_ser", service)?)),
+            _ => None,
+        };
         if let Some(rows) = &file.row_forces {
             sources.push(format!("row forces: {}", self.text("source", &rows.source)?));
         }
@@ -151,6 +158,7 @@ impl RuleFile<'_> {
             gamma_m2,
             gamma_mu,
             row_forces: file.row_forces.and_then(|rows| rows.choice.choice()),
+            gamma_m3,
             name: self.text("name", &file.name)?,
             source: sources.join("; "),
         })

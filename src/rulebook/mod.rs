@@ -2,6 +2,7 @@
 
 mod bolts;
 mod catalogue;
+mod distances;
 mod error;
 mod load;
 mod names;
@@ -15,8 +16,8 @@ use std::sync::OnceLock;
 
 pub use error::RuleError;
 pub use tables::{
-    Alpha, Annex, BoltClass, BoltSize, Clearance, Grade, ModeOne, RowForces, Section, Settings, Strength, Tolerances,
-    WeldRules,
+    Alpha, Annex, BoltClass, BoltSize, Category, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings,
+    SlipRules, Strength, Tolerances, WeldRules,
 };
 
 use crate::origin::Known;
@@ -45,6 +46,10 @@ pub struct Rulebook {
     pub alpha_v_shank: f64,
     /// Hole clearances by bolt diameter.
     pub clearances: Vec<Clearance>,
+    /// Slip of preloaded bolts.
+    pub slip: SlipRules,
+    /// Distances and room of bolts.
+    pub distances: Distances,
     /// Rules for fillet welds.
     pub welds: WeldRules,
     annexes: Vec<(String, Annex)>,
@@ -125,6 +130,8 @@ impl Rulebook {
             bolt_classes: bolts.classes,
             alpha_v_shank: bolts.alpha_v_shank,
             clearances: bolts.clearances,
+            slip: bolts.slip,
+            distances: file("distances.toml").distances()?,
             welds: file("welds.toml").welds()?,
             annexes,
             steel: Steel::load(file("steel.toml"))?,

@@ -35,6 +35,8 @@ fn scaled_rules(rulebook: &Rulebook, k: f64) -> Rulebook {
             &mut size.washer_thickness,
             &mut size.head,
             &mut size.nut,
+            &mut size.nut_preloaded,
+            &mut size.pitch,
         ] {
             *length = k * *length;
         }

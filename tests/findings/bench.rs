@@ -5,7 +5,7 @@ use std::sync::Arc;
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
 use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
+use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
 use faying::rulebook::{Grade, Rulebook, Section};
@@ -245,6 +245,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
             class: known("8.8".into()),
             hole: known(mm(26.0)),
             rows: rows(&[560.0, 440.0, 350.0, 60.0]),
+            held: Held::default(),
         },
         welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
         stiffeners: vec![stiffener(8.0)],
@@ -363,6 +364,9 @@ fn intended() -> IntendedDetail {
         web_weld: Some(mm(5.0)),
         stiffener_top: Some(None),
         stiffener_bottom: Some(Some(IntendedStiffener { thickness: Some(mm(12.0)), grade: Some("S355".into()) })),
+        exposed: None,
+        bolt_category: None,
+        friction: None,
         at: Some(Place { file: "details.toml".into(), line: 1, column: 1 }),
     }
 }

@@ -209,6 +209,7 @@ pub fn small() -> Review {
         unit: "kN",
         utilisation: Some(437.3 / 885.6),
         outcome: "met",
+        needed_throat_mm: None,
         working: Working::default().into(),
     }];
     clear.assumptions = vec!["thread in the shear plane (rule file)".into()];

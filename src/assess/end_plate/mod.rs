@@ -12,7 +12,7 @@ mod totals;
 mod turning;
 mod weld_checks;
 
-pub use intended::{intended, intended_layout};
+pub use intended::{intended, intended_layout, with_category};
 use numbers::{Noted, Numbers};
 use shear::Tension;
 use solver::Solved;

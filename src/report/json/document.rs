@@ -324,6 +324,9 @@ pub struct Check {
     pub utilisation: Option<f64>,
     /// "met", "not met" or "unproven".
     pub outcome: String,
+    /// For a weld: the throat that the action needs, or that the joint's full resistance needs where none is stated.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub needed_throat_mm: Option<f64>,
 }
 
 /// A finding.
