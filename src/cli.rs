@@ -6,11 +6,12 @@ mod output;
 mod progress;
 mod rules;
 
+use std::io::{self, Write};
 use std::path::PathBuf;
 use std::process::ExitCode;
 
 use clap::{Args, CommandFactory, Parser, Subcommand, ValueEnum};
-use faying::report::{json, survey, text};
+use faying::report::{Options, json, survey, text};
 use faying::review::Review;
 use faying::run;
 
@@ -128,16 +129,16 @@ pub fn main() -> ExitCode {
     let done = match Cli::parse().command {
         Command::Review(args) => review(&args),
         Command::Survey(args) => survey(&args),
-        Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::to_stdout(&text)).map(|()| 0),
+        Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::text_to_stdout(&text)).map(|()| 0),
         Command::Completions { shell } => completions(shell).map(|()| 0),
     };
     ExitCode::from(done.unwrap_or_else(|failure| failure.tell()))
 }
 
 fn review(args: &ReviewArgs) -> Result<u8, Failure> {
-    let draw = |review: &Review, output: &Output, model: &[u8]| match args.common.format {
-        Format::Text => Ok(text::render(review, &output.options(args.common.all), Some(model))),
-        Format::Json => json::review(review),
+    let draw = |review: &Review, options: &Options, model: &[u8], to: &mut dyn Write| match args.common.format {
+        Format::Text => to.write_all(text::render(review, options, Some(model)).as_bytes()),
+        Format::Json => json::write_review(review, to),
     };
     let review = report(&args.path, Some(&args.schedule), &args.common, draw)?;
     Ok(match review.exit_code() {
@@ -147,9 +148,9 @@ fn review(args: &ReviewArgs) -> Result<u8, Failure> {
 }
 
 fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
-    let draw = |review: &Review, output: &Output, _: &[u8]| match args.common.format {
-        Format::Text => Ok(survey::render(review, &output.options(args.common.all))),
-        Format::Json => json::survey(review),
+    let draw = |review: &Review, options: &Options, _: &[u8], to: &mut dyn Write| match args.common.format {
+        Format::Text => to.write_all(survey::render(review, options).as_bytes()),
+        Format::Json => json::write_survey(review, to),
     };
     report(&args.path, None, &args.common, draw).map(|_| 0)
 }
@@ -159,19 +160,19 @@ fn report(
     path: &std::path::Path,
     schedules: Option<&[PathBuf]>,
     common: &Common,
-    draw: impl FnOnce(&Review, &Output, &[u8]) -> serde_json::Result<String>,
+    draw: impl FnOnce(&Review, &Options, &[u8], &mut dyn Write) -> io::Result<()>,
 ) -> Result<Review, Failure> {
     let given = Given::gather(path, schedules, common.rules.as_deref())?;
     // Before the work is done, so that nobody waits for a report that can't be written.
     let output = Output::open(common.output.as_deref(), common.color, &given.paths)?;
     let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
-    let drawn = draw(&review, &output, &given.model.bytes).map_err(|why| Failure::because("can't write JSON", why))?;
-    output.write(&drawn)?;
+    let options = output.options(common.all);
+    output.write(|to| draw(&review, &options, &given.model.bytes, to))?;
     Ok(review)
 }
 
 fn completions(shell: clap_complete::Shell) -> Result<(), Failure> {
     let mut script = Vec::new();
     clap_complete::generate(shell, &mut Cli::command(), "faying", &mut script);
-    output::to_stdout(&String::from_utf8_lossy(&script))
+    output::text_to_stdout(&String::from_utf8_lossy(&script))
 }

@@ -42,8 +42,10 @@ pub fn run(inputs: &Inputs<'_>) -> Result<Review, Failed> {
     let rulebook = Rulebook::with_overrides(&inputs.rules).map_err(|e| Failed::Rules(Box::new(e)))?;
     let intent = intent::read_all(&inputs.schedules).map_err(|e| Failed::Schedule(Box::new(e)))?;
     let (file, bytes) = inputs.model;
-    let exchange = exchange::read(bytes, file)?;
+    let mut exchange = exchange::read(bytes, file)?;
     let steelwork = shop::take_up(&exchange, &rulebook);
+    // Nobody asks the graph any more: its memory is better used for what follows.
+    exchange.entities = exchange::Entities::default();
     let joints = joints::recognise(&steelwork, &rulebook);
     let pairing = intent::pair(&intent, &joints, &steelwork);
     let sources = Sources {
