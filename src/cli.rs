@@ -5,19 +5,21 @@ mod inputs;
 mod output;
 mod progress;
 mod rules;
+mod sheet;
 
 use std::io::{self, Write};
-use std::path::PathBuf;
+use std::path::{Path, PathBuf};
 use std::process::ExitCode;
 
 use clap::{Args, CommandFactory, Parser, Subcommand, ValueEnum};
-use faying::report::{Options, json, survey, text};
+use faying::report::{json, survey, text};
 use faying::review::Review;
 use faying::run;
 
 use failure::Failure;
 use inputs::Given;
 use output::{Colour, Output};
+use sheet::SheetArgs;
 
 const EXIT_CODES: &str = "\
 Exit codes:
@@ -25,6 +27,16 @@ Exit codes:
   1  at least one joint is on hold: it does not carry what is required, or it is not there
   2  wrong use, or an input that can't be read
   3  nothing is on hold, but something could not be proven (or no joint was found at all)
+
+An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
+
+const SHEET_EXIT_CODES: &str = "\
+Exit codes:
+  0  the joint is clear, or deviates and carries (a comment)
+  1  the joint is on hold: it does not carry what is required, or it is not there
+  2  wrong use, a mark that fits no joint or several, or an input that can't be read
+  3  the joint could not be proven
+With several joints the worst counts: 1 before 3 before 0.
 
 An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
 
@@ -59,6 +71,11 @@ enum Command {
     /// Needs no schedule; ends with what to ask the fabricator for.
     #[command(after_help = SURVEY_EXIT_CODES)]
     Survey(SurveyArgs),
+    /// Print the calculation sheet of a joint: sketch, inputs with their origin, every check with formula and clause.
+    ///
+    /// To be followed by hand, printed and signed. Numbers are rounded for reading and were computed unrounded.
+    #[command(after_help = SHEET_EXIT_CODES)]
+    Sheet(SheetArgs),
     /// List the rules, or print the page of one: what it finds, why it matters, what to do.
     Rules {
         /// The rule's id, as it stands before a finding: plate-thinner.
@@ -124,11 +141,25 @@ enum Format {
     Json,
 }
 
+/// Where rules come from and a report goes.
+struct Places<'a> {
+    rules: Option<&'a Path>,
+    output: Option<&'a Path>,
+    color: Colour,
+}
+
+impl Common {
+    fn places(&self) -> Places<'_> {
+        Places { rules: self.rules.as_deref(), output: self.output.as_deref(), color: self.color }
+    }
+}
+
 /// Runs the command line and gives the exit code.
 pub fn main() -> ExitCode {
     let done = match Cli::parse().command {
         Command::Review(args) => review(&args),
         Command::Survey(args) => survey(&args),
+        Command::Sheet(args) => sheet_of(&args),
         Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::text_to_stdout(&text)).map(|()| 0),
         Command::Completions { shell } => completions(shell).map(|()| 0),
     };
@@ -136,11 +167,11 @@ pub fn main() -> ExitCode {
 }
 
 fn review(args: &ReviewArgs) -> Result<u8, Failure> {
-    let draw = |review: &Review, options: &Options, model: &[u8], to: &mut dyn Write| match args.common.format {
-        Format::Text => to.write_all(text::render(review, options, Some(model)).as_bytes()),
-        Format::Json => json::write_review(review, to),
+    let draw = |review: &Review, output: &Output, model: &[u8]| match args.common.format {
+        Format::Text => Ok(Drawn::Whole(text::render(review, &output.options(args.common.all), Some(model)))),
+        Format::Json => Ok(Drawn::Written(|review, to| json::write_review(review, to))),
     };
-    let review = report(&args.path, Some(&args.schedule), &args.common, draw)?;
+    let review = report(&args.path, Some(&args.schedule), &args.common.places(), draw)?;
     Ok(match review.exit_code() {
         3 if args.allow_unproven => 0,
         code => code,
@@ -148,26 +179,42 @@ fn review(args: &ReviewArgs) -> Result<u8, Failure> {
 }
 
 fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
-    let draw = |review: &Review, options: &Options, _: &[u8], to: &mut dyn Write| match args.common.format {
-        Format::Text => to.write_all(survey::render(review, options).as_bytes()),
-        Format::Json => json::write_survey(review, to),
+    let draw = |review: &Review, output: &Output, _: &[u8]| match args.common.format {
+        Format::Text => Ok(Drawn::Whole(survey::render(review, &output.options(args.common.all)))),
+        Format::Json => Ok(Drawn::Written(|review, to| json::write_survey(review, to))),
     };
-    report(&args.path, None, &args.common, draw).map(|_| 0)
+    report(&args.path, None, &args.common.places(), draw).map(|_| 0)
+}
+
+fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {
+    let places = Places { rules: args.rules.as_deref(), output: args.output.as_deref(), color: args.color };
+    let draw = |review: &Review, output: &Output, _: &[u8]| sheet::draw(args, review, output).map(Drawn::Whole);
+    let review = report(&args.path, Some(&args.schedule), &places, draw)?;
+    sheet::exit_code(args, &review)
+}
+
+/// A report: in full, or how it is written without ever holding all of it.
+enum Drawn {
+    Whole(String),
+    Written(fn(&Review, &mut dyn Write) -> io::Result<()>),
 }
 
 /// Reads, runs, draws and writes; `schedules` is `None` where none is wanted, not even the folder's own.
 fn report(
-    path: &std::path::Path,
+    path: &Path,
     schedules: Option<&[PathBuf]>,
-    common: &Common,
-    draw: impl FnOnce(&Review, &Options, &[u8], &mut dyn Write) -> io::Result<()>,
+    places: &Places<'_>,
+    draw: impl FnOnce(&Review, &Output, &[u8]) -> Result<Drawn, Failure>,
 ) -> Result<Review, Failure> {
-    let given = Given::gather(path, schedules, common.rules.as_deref())?;
+    let given = Given::gather(path, schedules, places.rules)?;
     // Before the work is done, so that nobody waits for a report that can't be written.
-    let output = Output::open(common.output.as_deref(), common.color, &given.paths)?;
+    let output = Output::open(places.output, places.color, &given.paths)?;
     let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
-    let options = output.options(common.all);
-    output.write(|to| draw(&review, &options, &given.model.bytes, to))?;
+    let drawn = draw(&review, &output, &given.model.bytes)?;
+    output.write(|to| match drawn {
+        Drawn::Whole(text) => to.write_all(text.as_bytes()),
+        Drawn::Written(write) => write(&review, to),
+    })?;
     Ok(review)
 }
 

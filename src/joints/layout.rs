@@ -1,4 +1,4 @@
-//! An end-plate joint in its own frame: everything that its assessment needs, nothing else.
+//! A joint in its own frame: everything that its assessment needs, nothing else.
 //!
 //! Heights are measured up from the soffit of the supported member's lower flange, in the direction of the member's
 //! depth that points to the sky; sides are measured across, from the supported member's web.
@@ -46,7 +46,7 @@ pub struct BoltRow {
     pub gauge: Length,
     /// e: from the bolt's axis to the plate's nearer side edge.
     pub edge_plate: Length,
-    /// e: from the bolt's axis to the column flange's nearer side edge.
+    /// e: from the bolt's axis to the nearer side edge of the column's flange, or of a splice's other end plate.
     pub edge_column: Length,
 }
 
@@ -97,7 +97,7 @@ pub struct Stiffener {
     pub weld: Known<Length>,
 }
 
-/// The joint in its own frame.
+/// An end-plate joint on a column's flange.
 #[derive(Clone, Debug)]
 pub struct EndPlateLayout {
     /// The column.
@@ -118,4 +118,195 @@ pub struct EndPlateLayout {
     pub column_below: Option<Length>,
     /// Parts welded to the column here that no check credits (web plates, diagonals, backing plates): one sentence each.
     pub not_credited: Vec<String>,
+}
+
+/// One half of an end-plate splice.
+#[derive(Clone, Debug)]
+pub struct Half {
+    /// The beam.
+    pub beam: MemberAt,
+    /// Height of its lower flange's soffit: 0 for the supported member, whose soffit heights are measured from.
+    pub soffit: Length,
+    /// Its end plate.
+    pub plate: EndPlate,
+    /// Its welds.
+    pub welds: Welds,
+}
+
+/// Two beams' end plates bolted to each other.
+#[derive(Clone, Debug)]
+pub struct SpliceLayout {
+    /// The half of the supported member.
+    pub supported: Half,
+    /// The other half; a row's `edge_column` is that to its plate's edge.
+    pub supporting: Half,
+    /// The bolts.
+    pub bolts: Bolts,
+}
+
+/// A joint of a kind that is assessed, in its own frame.
+#[derive(Clone, Debug)]
+#[allow(clippy::large_enum_variant, reason = "one a joint")]
+pub enum Layout {
+    /// A beam's end plate on a column's flange.
+    EndPlate(EndPlateLayout),
+    /// Two beams' end plates on each other.
+    Splice(SpliceLayout),
+}
+
+/// Which side of a joint an end plate with its beam is.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Which {
+    /// The only one: the other side is a column.
+    Only,
+    /// The supported member's half of a splice.
+    Supported,
+    /// The other half of a splice.
+    Supporting,
+    /// Both halves, which are alike.
+    Both,
+}
+
+impl Which {
+    /// Before a part's name: "supported ".
+    pub fn owner(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => "supported ",
+            Self::Supporting => "supporting ",
+        }
+    }
+
+    /// After a plate's name: " of the supported beam".
+    pub fn of(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => " of the supported beam",
+            Self::Supporting => " of the supporting beam",
+        }
+    }
+
+    /// After a component's name: ", supported side".
+    pub fn suffix(self) -> &'static str {
+        match self {
+            Self::Only => "",
+            Self::Supported => ", supported side",
+            Self::Supporting => ", supporting side",
+            Self::Both => ", both sides",
+        }
+    }
+}
+
+/// A beam with its end plate, wherever the plate is bolted to.
+#[derive(Clone, Copy, Debug)]
+pub struct PlateSide<'a> {
+    /// Which side it is.
+    pub which: Which,
+    /// The beam.
+    pub beam: &'a MemberAt,
+    /// Height of its lower flange's soffit.
+    pub soffit: Length,
+    /// Its end plate.
+    pub plate: &'a EndPlate,
+    /// Its welds.
+    pub welds: &'a Welds,
+}
+
+/// What an end plate is bolted to.
+#[derive(Clone, Copy, Debug)]
+pub enum Support<'a> {
+    /// The flange of a column.
+    Column(&'a EndPlateLayout),
+    /// Another end plate.
+    Plate(PlateSide<'a>),
+}
+
+/// An end-plate joint of either kind as its assessment takes it.
+#[derive(Clone, Copy, Debug)]
+pub struct BoltedPlate<'a> {
+    /// The supported member's side.
+    pub side: PlateSide<'a>,
+    /// The other side.
+    pub support: Support<'a>,
+    /// The bolts between them.
+    pub bolts: &'a Bolts,
+}
+
+impl Half {
+    fn side(&self, which: Which) -> PlateSide<'_> {
+        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
+    }
+}
+
+impl EndPlateLayout {
+    /// The beam's side.
+    pub fn side(&self) -> PlateSide<'_> {
+        PlateSide { which: Which::Only, beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
+    }
+}
+
+impl Layout {
+    /// The supported member's side.
+    pub fn side(&self) -> PlateSide<'_> {
+        match self {
+            Self::EndPlate(layout) => layout.side(),
+            Self::Splice(layout) => layout.supported.side(Which::Supported),
+        }
+    }
+
+    /// Every end plate with its beam: the supported member's first.
+    pub fn sides(&self) -> Vec<PlateSide<'_>> {
+        match self {
+            Self::EndPlate(layout) => vec![layout.side()],
+            Self::Splice(layout) => {
+                vec![layout.supported.side(Which::Supported), layout.supporting.side(Which::Supporting)]
+            }
+        }
+    }
+
+    /// The bolts.
+    pub fn bolts(&self) -> &Bolts {
+        match self {
+            Self::EndPlate(layout) => &layout.bolts,
+            Self::Splice(layout) => &layout.bolts,
+        }
+    }
+
+    /// The supporting member.
+    pub fn supporting(&self) -> &MemberAt {
+        match self {
+            Self::EndPlate(layout) => &layout.column,
+            Self::Splice(layout) => &layout.supporting.beam,
+        }
+    }
+
+    /// The joint on a column's flange, if it is one.
+    pub fn on_column(&self) -> Option<&EndPlateLayout> {
+        match self {
+            Self::EndPlate(layout) => Some(layout),
+            Self::Splice(_) => None,
+        }
+    }
+}
+
+impl<'a> From<&'a EndPlateLayout> for BoltedPlate<'a> {
+    fn from(layout: &'a EndPlateLayout) -> Self {
+        Self { side: layout.side(), support: Support::Column(layout), bolts: &layout.bolts }
+    }
+}
+
+impl<'a> From<&'a SpliceLayout> for BoltedPlate<'a> {
+    fn from(layout: &'a SpliceLayout) -> Self {
+        let support = Support::Plate(layout.supporting.side(Which::Supporting));
+        Self { side: layout.supported.side(Which::Supported), support, bolts: &layout.bolts }
+    }
+}
+
+impl<'a> From<&'a Layout> for BoltedPlate<'a> {
+    fn from(layout: &'a Layout) -> Self {
+        match layout {
+            Layout::EndPlate(layout) => layout.into(),
+            Layout::Splice(layout) => layout.into(),
+        }
+    }
 }

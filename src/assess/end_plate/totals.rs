@@ -1,7 +1,7 @@
 //! What limits the sum of all rows: the compression side and the web panel in shear.
 #![allow(non_snake_case)]
 
-use super::numbers::{Numbers, StiffenerPair};
+use super::numbers::{ColumnSide, Numbers, PlateSide, StiffenerPair};
 use crate::eurocode::stiffeners::{self, Web};
 use crate::eurocode::web_panel::{self, FrameAction};
 use crate::eurocode::{Resistance, beam, column_web};
@@ -14,7 +14,7 @@ pub struct Total {
     /// `column-web-panel-in-shear`.
     pub id: &'static str,
     /// In words.
-    pub title: &'static str,
+    pub title: String,
     /// Clause.
     pub clause: &'static str,
     /// Its own resistance.
@@ -30,17 +30,10 @@ impl Total {
     }
 }
 
-/// The credited pair level with a flange whose middle is at `level`: within half the flange's thickness.
-fn pair_at(n: &Numbers, level: Length) -> Option<&StiffenerPair> {
-    let off = |s: &StiffenerPair| (s.height - level).abs();
-    let level = n.stiffeners.iter().filter(|s| off(s) <= 0.5 * n.beam.t_f);
-    level.min_by(|a, b| off(a).get().total_cmp(&off(b).get()).then(a.height.get().total_cmp(&b.height.get())))
-}
-
 /// All total limits for tension at the top and one β, beside a shear `V_Ed` in the beam.
 ///
 /// # Errors
-/// Why the web panel or the beam can't be assessed.
+/// Why the web panel or a beam can't be assessed.
 pub fn totals(
     n: &Numbers,
     rulebook: &Rulebook,
@@ -48,24 +41,92 @@ pub fn totals(
     V_Ed: Force,
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
-    let (gamma_M0, gamma_M1) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1);
-    let (column, strength) = (&n.column, n.column_strength);
-    let h_clear = column.h - 2.0 * column.t_f;
-    let d_wc = h_clear - 2.0 * n.r_c;
-    let compression_pair = pair_at(n, 0.5 * n.beam.t_f);
-    let tension_pair = pair_at(n, n.beam.h - 0.5 * n.beam.t_f);
+    let mut totals = match n.column() {
+        Some(column) => on_column(n, column, rulebook, beta, notes)?,
+        None => {
+            level(n)?;
+            Vec::new()
+        }
+    };
+    for side in n.sides() {
+        totals.push(Total {
+            id: "beam-flange-in-compression",
+            title: format!("beam flange and web in compression{}", side.which.suffix()),
+            clause: "EN 1993-1-8:2005 6.2.6.7",
+            resistance: flange(side, V_Ed, rulebook.annex.gamma_m0)?,
+            share: 1.0,
+        });
+    }
+    Ok(totals)
+}
 
-    let a_p = n.a_compression.unwrap_or(Length::ZERO);
+/// Whether the compression passes straight from one beam's flange into the other's.
+///
+/// # Errors
+/// By how much it doesn't.
+fn level(n: &Numbers) -> Result<(), String> {
+    let centres = n.sides().map(PlateSide::compression);
+    let (lowest, highest) =
+        (centres.clone().fold(n.side.compression(), Length::min), centres.fold(n.side.compression(), Length::max));
+    let off = highest - lowest;
+    if !(off <= 0.5 * n.least(|side| side.beam.t_f)) {
+        return Err(format!(
+            "the compression flanges of the two beams lie {off} apart, more than half a flange's thickness: not assessed yet"
+        ));
+    }
+    Ok(())
+}
+
+fn flange(side: &PlateSide, V_Ed: Force, gamma_M0: f64) -> Result<Resistance, String> {
+    beam::flange_compression(
+        &beam::FlangeCompression {
+            W_y: side.W_beam,
+            h: side.beam.h,
+            b_fb: side.beam.b,
+            t_fb: side.beam.t_f,
+            t_wb: side.beam.t_w,
+            A_v: side.beam.a_v_z,
+            f_y: side.beam_strength.f_y_flange,
+            V_Ed,
+        },
+        gamma_M0,
+    )
+}
+
+/// The credited pair level with a flange whose middle is at `level`: within half the flange's thickness.
+fn pair_at(column: &ColumnSide, level: Length, t_fb: Length) -> Option<&StiffenerPair> {
+    let off = |s: &StiffenerPair| (s.height - level).abs();
+    let level = column.stiffeners.iter().filter(|s| off(s) <= 0.5 * t_fb);
+    level.min_by(|a, b| off(a).get().total_cmp(&off(b).get()).then(a.height.get().total_cmp(&b.height.get())))
+}
+
+/// The column's web in compression and its panel in shear.
+fn on_column(
+    n: &Numbers,
+    own: &ColumnSide,
+    rulebook: &Rulebook,
+    beta: f64,
+    notes: &mut Vec<String>,
+) -> Result<Vec<Total>, String> {
+    let (gamma_M0, gamma_M1) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1);
+    let (column, strength, side) = (&own.section, own.strength, &n.side);
+    let t_fb = side.beam.t_f;
+    let h_clear = column.h - 2.0 * column.t_f;
+    let d_wc = h_clear - 2.0 * own.r;
+    let compression_pair = pair_at(own, side.compression(), t_fb);
+    let tension_pair = pair_at(own, side.flange_top() - 0.5 * t_fb, t_fb);
+
+    let a_p = side.a_compression.unwrap_or(Length::ZERO);
     // The column's lower end lies this far below a level.
-    let to_end = |level: Length| Some(level - n.rows.last()?.height + n.column_below?);
+    let to_end = |level: Length| Some(level - n.rows.last()?.height + own.below?);
     let web = column_web::Compression {
-        t_fb: n.beam.t_f,
+        t_fb,
         a_p,
         t_fc: column.t_f,
-        s: n.r_c,
-        t_p: n.t_p,
-        projection: (-n.plate_bottom).max(Length::ZERO),
-        to_end: to_end(0.5 * n.beam.t_f),
+        s: own.r,
+        t_p: side.t_p,
+        projection: (side.soffit - side.bottom).max(Length::ZERO),
+        to_end: to_end(side.compression()),
         t_wc: column.t_w,
         d_wc,
         f_y_wc: strength.f_y_web,
@@ -76,7 +137,7 @@ pub fn totals(
     let (plain, crushing) = column_web::compression(&web, gamma_M0, gamma_M1);
     let (mut title, mut compression) = ("column web in compression", plain);
     if let Some(pair) = compression_pair {
-        let plates = pair.plates(n);
+        let plates = pair.plates(own);
         if !plates.rigid(column.t_w, h_clear) {
             notes.push(
                 "the compression stiffeners are too slight to hold the web (EN 1993-1-5 9.3.3(3)): not credited".into(),
@@ -100,27 +161,13 @@ pub fn totals(
         }
     }
 
-    let flange = beam::flange_compression(
-        &beam::FlangeCompression {
-            W_y: n.W_beam,
-            h: n.beam.h,
-            b_fb: n.beam.b,
-            t_fb: n.beam.t_f,
-            t_wb: n.beam.t_w,
-            A_v: n.beam.a_v_z,
-            f_y: n.beam_strength.f_y_flange,
-            V_Ed,
-        },
-        gamma_M0,
-    )?;
-
     let frame = match (compression_pair, tension_pair) {
         (Some(lower), Some(upper)) => Some(FrameAction {
             d_s: upper.height - lower.height,
             b_fc: column.b,
             t_fc: column.t_f,
             f_y_fc: strength.f_y_flange,
-            b_st: 2.0 * lower.plates(n).b_s.min(upper.plates(n).b_s) + column.t_w,
+            b_st: 2.0 * lower.plates(own).b_s.min(upper.plates(own).b_s) + column.t_w,
             t_st: lower.t_s.min(upper.t_s),
             f_y_st: lower.f_y.min(upper.f_y),
         }),
@@ -131,23 +178,16 @@ pub fn totals(
     Ok(vec![
         Total {
             id: "column-web-panel-in-shear",
-            title: "column web panel in shear",
+            title: "column web panel in shear".into(),
             clause: "EN 1993-1-8:2005 6.2.6.1",
             resistance: panel,
             share: beta,
         },
         Total {
             id: "column-web-in-compression",
-            title,
+            title: title.into(),
             clause: "EN 1993-1-8:2005 6.2.6.2",
             resistance: compression,
-            share: 1.0,
-        },
-        Total {
-            id: "beam-flange-in-compression",
-            title: "beam flange and web in compression",
-            clause: "EN 1993-1-8:2005 6.2.6.7",
-            resistance: flange,
             share: 1.0,
         },
     ])
