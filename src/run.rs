@@ -56,8 +56,10 @@ pub fn run_by(inputs: &Inputs<'_>, annex: Option<&str>) -> Result<Review, Failed
     }
     let intent = intent::read_all(&inputs.schedules).map_err(|e| Failed::Schedule(Box::new(e)))?;
     let (file, bytes) = inputs.model;
-    let exchange = exchange::read(bytes, file)?;
+    let mut exchange = exchange::read(bytes, file)?;
     let steelwork = shop::take_up(&exchange, &rulebook);
+    // Nobody asks the graph any more: its memory is better used for what follows.
+    exchange.entities = exchange::Entities::default();
     let joints = joints::recognise(&steelwork, &rulebook);
     let pairing = intent::pair(&intent, &joints, &steelwork);
     let sources = Sources {

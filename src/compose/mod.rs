@@ -40,7 +40,10 @@ pub struct Sources<'a> {
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
     let solver = Solver::new(sources.rulebook);
     let found = (0..sources.joints.joints.len()).into_par_iter();
-    let mut joints: Vec<JointReview> = found.map(|index| sources.found(&solver, index)).collect();
+    let (mut joints, sha256) = rayon::join(
+        || found.map(|index| sources.found(&solver, index)).collect::<Vec<JointReview>>(),
+        || Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect(),
+    );
     let pairing = sources.pairing;
     joints.extend(pairing.not_found.iter().filter_map(|&index| sources.without_steel(index, false)));
     joints.extend(pairing.unclear.iter().filter_map(|&index| sources.without_steel(index, true)));
@@ -69,7 +72,7 @@ pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
     Review {
         file: file.to_owned(),
         exchange: sources.exchange.form.clone(),
-        sha256: Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect(),
+        sha256,
         schedule: (!sources.schedules.is_empty()).then(|| sources.schedules.join(", ")),
         basis: basis(sources.rulebook),
         counts,

@@ -2,9 +2,9 @@
 
 use serde::{Deserialize, Serialize};
 
-/// The whole review document.
+/// The whole review document; what may be many comes in lists, or in what is written like one.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct Review {
+pub struct Review<J = Vec<Joint>, P = Vec<Problem>> {
     /// [`REVIEW_SCHEMA`](super::REVIEW_SCHEMA).
     pub schema: String,
     /// Who wrote it.
@@ -18,9 +18,9 @@ pub struct Review {
     /// Counts.
     pub counts: Counts,
     /// Joints sorted by mark.
-    pub joints: Vec<Joint>,
+    pub joints: J,
     /// Problems of model and schedule.
-    pub problems: Vec<Problem>,
+    pub problems: P,
     /// The caution.
     pub caution: String,
 }
