@@ -1,5 +1,9 @@
 //! What the schema asks of a graph as a whole, whatever form it was read from.
 
+use std::collections::HashSet;
+
+use foldhash::fast::RandomState;
+
 use super::problems::Problems;
 use super::scalar::quoted;
 use super::schema::{Attribute, Base, Kind};
@@ -67,9 +71,14 @@ fn check_value(entity: Entity, attribute: &Attribute, kind: Kind, cell: Cell, pr
 /// hand-made files often lack it, and nothing here needs theirs.
 fn check_global_ids(entities: &Entities, problems: &mut Problems) {
     let mut given: Vec<(&str, Entity)> = Vec::new();
+    let mut known: HashSet<&str, RandomState> = HashSet::default();
+    let mut is_repeated = false;
     for entity in entities.of_class("IfcRoot") {
         match entity.text("GlobalId") {
-            Some(guid) if is_global_id(guid) => given.push((guid, entity)),
+            Some(guid) if is_global_id(guid) => {
+                given.push((guid, entity));
+                is_repeated |= !known.insert(guid);
+            }
             Some(guid) => problems.add("GlobalId that is none", entity.spot(), || {
                 format!(
                     "the GlobalId {} of {} is not 22 characters of 0-9 A-Z a-z _ $ from 0 to 3",
@@ -83,6 +92,9 @@ fn check_global_ids(entities: &Entities, problems: &mut Problems) {
             }
             None => {}
         }
+    }
+    if !is_repeated {
+        return;
     }
     given.sort_by_key(|(guid, entity)| (*guid, entity.id));
     for same in given.chunk_by(|(a, _), (b, _)| a == b) {

@@ -50,6 +50,7 @@ impl<'a> Ruler<'a> {
 pub(super) type Sort = &'static str;
 
 /// What could not be understood.
+#[derive(Clone)]
 pub(super) struct Problems {
     file: Arc<str>,
     listed: Vec<Problem>,

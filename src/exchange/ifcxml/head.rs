@@ -41,21 +41,38 @@ impl<'x> Head<'x> {
         problems: &mut Problems,
     ) -> Result<(), String> {
         let lasting = |piece: &[u8]| within(document, piece).ok_or_else(|| "it can't be followed".to_owned());
-        self.name = local(lasting(start.name().as_ref())?, spot, problems);
+        // repeated attributes are found where they are set: the library's own check takes quadratic time
+        let mut attributes = start.attributes();
+        let attributes = attributes.with_checks(false).map(|attribute| {
+            let attribute = attribute.map_err(|e| e.to_string())?;
+            Ok((lasting(attribute.key.as_ref())?, lasting(&attribute.value)?))
+        });
+        self.fill(lasting(start.name().as_ref())?, attributes, spot, problems)
+    }
+
+    /// Tells a start tag's attributes apart; in what was another one's head.
+    ///
+    /// # Errors
+    /// The first of an attribute.
+    pub fn fill<E>(
+        &mut self,
+        name: &'x [u8],
+        attributes: impl Iterator<Item = Result<(&'x [u8], &'x [u8]), E>>,
+        spot: Spot,
+        problems: &mut Problems,
+    ) -> Result<(), E> {
+        self.name = local(name, spot, problems);
         self.spot = spot;
         (self.id, self.reference, self.elsewhere, self.class) = (None, None, None, None);
         (self.nil, self.pos) = (false, None);
         self.rest.clear();
-        // repeated attributes are found where they are set: the library's own check takes quadratic time
-        for attribute in start.attributes().with_checks(false) {
-            let attribute = attribute.map_err(|e| e.to_string())?;
-            let key = lasting(attribute.key.as_ref())?;
+        for attribute in attributes {
+            let (key, raw) = attribute?;
             if key.starts_with(b"xml")
                 && (key.len() == 5 && key == b"xmlns" || matches!(&key[3..], [b'n', b's', b':', ..] | [b':', ..]))
             {
                 continue;
             }
-            let raw = lasting(&attribute.value)?;
             let name = local(key, spot, problems);
             match &*name {
                 "id" => self.id = Some(text(raw, spot, problems)),

@@ -9,7 +9,9 @@ mod dialect;
 mod head;
 mod memory;
 mod parser;
+mod plain;
 mod resolve;
+mod scan;
 mod slot;
 
 use std::sync::Arc;
@@ -30,6 +32,14 @@ use super::problems::{Problems, Ruler, Spot};
 /// # Errors
 /// Why it is no ifcXML at all, in one sentence.
 pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) -> Result<Exchange, String> {
+    match plain::read(bytes, &problems, &file, limits) {
+        Ok(exchange) => Ok(exchange),
+        Err(scan::Unusual) => read_any(bytes, problems, file, limits),
+    }
+}
+
+/// As [`read`], whatever of XML the document makes use of.
+fn read_any(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) -> Result<Exchange, String> {
     let mut xml = Reader::from_reader(bytes);
     xml.config_mut().allow_dangling_amp = true; // one badly written name must not lose the file
     let mut ruler = Ruler::new(bytes);

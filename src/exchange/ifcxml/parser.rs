@@ -154,9 +154,8 @@ impl<'x> Parser<'x> {
 
     /// An attribute's element inside an entity.
     fn start_attribute(&mut self, head: &Head<'x>, class: ClassId) {
-        let attributes = self.attributes(class);
-        let (target, kind) = if let Some(index) = attributes.iter().position(|a| a.name == head.name) {
-            (Target::Attribute(index), attributes[index].kind)
+        let (target, kind) = if let Some((index, kind)) = self.attribute(class, &head.name) {
+            (Target::Attribute(index), kind)
         } else if let Some(inverse) = self.schema.inverse(class, &head.name) {
             (Target::Inverse(inverse.attribute), Kind { depth: 1, ..Kind::one(Base::Entity(inverse.class)) })
         } else {
@@ -295,16 +294,14 @@ impl<'x> Parser<'x> {
                 });
             }
         }
-        let attributes = self.attributes(class);
         for (name, raw) in &head.rest {
-            let Some(index) = attributes.iter().position(|a| a.name == name) else {
+            let Some((index, kind)) = self.attribute(class, name) else {
                 self.unknown_attribute(class, name, head.spot);
                 let text = head::text(raw, head.spot, &mut self.problems);
                 let text = self.entities.store.text(&text);
                 self.entities.add_extra(id, name, text);
                 continue;
             };
-            let kind = attributes[index].kind;
             match self.scalar(kind, raw, head.spot) {
                 Ok(value) if self.entities.cell(id, index).is_absent() => {
                     if kind.base == Base::Select {
@@ -454,6 +451,13 @@ impl<'x> Parser<'x> {
             }
             Some(Frame::Document | Frame::Envelope) | None => {}
         }
+    }
+
+    /// The position and kind of an attribute.
+    fn attribute(&self, class: ClassId, name: &str) -> Option<(usize, Kind)> {
+        let class = self.schema.class(class)?;
+        let index = class.position(name)?;
+        Some((index, class.attributes.get(index)?.kind))
     }
 
     fn attributes(&self, class: ClassId) -> &'static [Attribute] {

@@ -1,6 +1,8 @@
 //! The bytes of a STEP file and where in them the reading stands: blanks, words, strings, and the way back after
 //! something broken.
 
+use std::borrow::Cow;
+
 use memchr::memmem;
 
 pub(super) struct Cursor<'a> {
@@ -22,7 +24,15 @@ impl<'a> Cursor<'a> {
     }
 
     /// The next byte that is neither blank nor comment; `None` at the end of the file.
+    #[inline]
     pub fn peek(&mut self) -> Option<u8> {
+        match self.bytes.get(self.at) {
+            Some(byte @ (b'!'..=b'.' | b'0'..=b'~')) => Some(*byte), // nothing that starts a blank or a comment
+            _ => self.peek_on(),
+        }
+    }
+
+    fn peek_on(&mut self) -> Option<u8> {
         loop {
             match self.rest() {
                 [] => return None,
@@ -39,6 +49,7 @@ impl<'a> Cursor<'a> {
     }
 
     /// Takes the byte if it comes next, blanks and comments aside.
+    #[inline]
     pub fn eat(&mut self, byte: u8) -> bool {
         let comes = self.peek() == Some(byte);
         self.at += usize::from(comes);
@@ -46,6 +57,7 @@ impl<'a> Cursor<'a> {
     }
 
     /// The bytes that come next, blanks and comments aside, as long as `is` holds.
+    #[inline]
     pub fn take_while(&mut self, is: impl Fn(u8) -> bool) -> &'a [u8] {
         self.peek();
         let rest = self.rest();
@@ -75,6 +87,13 @@ impl<'a> Cursor<'a> {
         let start = self.bytes.len().min(self.at + 1);
         let window = &self.bytes[start..self.bytes.len().min(start + self.longest_string + 1)];
         let mut is_doubled = true;
+        // the usual string: short, on one line, a mark right after its quote
+        if let Some(length) = window.iter().take(64).position(|byte| matches!(byte, b'\'' | b'\n' | b'\r'))
+            && let [b'\'', b',' | b')', ..] = window[length..]
+        {
+            self.at = start + length + 1;
+            return Some(Quoted { raw: &window[..length], is_doubled });
+        }
         let mut at = 0; // up to where each piece between quotes has been looked at
         while let Some(length) = memchr::memchr(b'\'', &window[at..]) {
             let (piece, quote) = (&window[at..at + length], at + length);
@@ -96,6 +115,24 @@ impl<'a> Cursor<'a> {
         }
         let rest = start + at;
         self.at = record_end(&self.bytes[rest..]).map_or(self.bytes.len(), |lost| rest + lost);
+        None
+    }
+
+    /// The number of a reference that comes next, if it is written in the usual way: `#12` and a mark at once.
+    #[inline]
+    pub fn reference(&mut self) -> Option<u64> {
+        let digits = self.rest().strip_prefix(b"#")?;
+        let mut number = 0;
+        for (length, byte) in digits.iter().take(19).enumerate() {
+            match byte {
+                b'0'..=b'9' => number = number * 10 + u64::from(byte - b'0'),
+                b',' | b')' if length > 0 => {
+                    self.at += 1 + length;
+                    return Some(number);
+                }
+                _ => return None,
+            }
+        }
         None
     }
 
@@ -129,6 +166,11 @@ fn may_follow_string(bytes: &[u8]) -> bool {
             _ => return false,
         };
     }
+}
+
+/// Bytes as text for people; what is not UTF-8 is replaced.
+pub(super) fn shown(bytes: &[u8]) -> Cow<'_, str> {
+    std::str::from_utf8(bytes).map_or_else(|_| String::from_utf8_lossy(bytes), Cow::Borrowed)
 }
 
 /// Whether bytes start with `#12=`.

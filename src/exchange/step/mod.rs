@@ -172,7 +172,9 @@ impl Reader<'_> {
                 format!("texts with bytes that are not UTF-8, {count} from here on, are read as Windows-1252")
             });
         }
-        self.numbers.sort(); // of two with the same number the first comes first
+        if !self.is_ascending {
+            self.numbers.sort(); // of two with the same number the first comes first
+        }
         for pair in self.numbers.chunk_by(|(a, _), (b, _)| a == b) {
             for (number, id) in pair.iter().skip(1) {
                 let (at, spot) = (self.entities.get(pair[0].1).place(), self.entities.spot(*id));

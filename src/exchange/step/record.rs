@@ -6,7 +6,7 @@ use super::super::scalar::quoted;
 use super::super::schema::{Attribute, Kind};
 use super::super::store::Cell;
 use super::Reader;
-use super::cursor::starts_record;
+use super::cursor::{shown, starts_record};
 
 /// The class of a record that gives an entity several classes at once.
 const COMPLEX: &str = "complex instance";
@@ -26,11 +26,14 @@ impl Reader<'_> {
         let spot = self.spot();
         self.started = self.cursor.at;
         self.cursor.at += 1;
-        let digits = String::from_utf8_lossy(self.cursor.take_while(|b| b.is_ascii_digit()));
+        let digits = shown(self.cursor.take_while(|b| b.is_ascii_digit()));
         if digits.is_empty() || !self.cursor.eat(b'=') {
             return self.give_up("record that is not understood", spot, format!("#{digits} starts no record #1=…"));
         }
-        let label = format!("#{digits}");
+        let label = match self.cursor.bytes.get(self.started..self.started + 1 + digits.len()) {
+            Some(label) if label.ends_with(digits.as_bytes()) => shown(label),
+            _ => format!("#{digits}").into(), // blanks stand between
+        };
         if self.cursor.peek() == Some(b'(') {
             let class = self.entities.class_id(COMPLEX);
             self.open(class, &label, &digits, spot);
@@ -40,7 +43,7 @@ impl Reader<'_> {
                 format!("{label} is of several classes at once; it is kept, but nothing of it is understood"),
             );
         }
-        let name = String::from_utf8_lossy(self.cursor.keyword());
+        let name = shown(self.cursor.keyword());
         if name.is_empty() {
             return self.give_up("record that is not understood", spot, format!("{label} names no entity after its ="));
         }

@@ -7,7 +7,7 @@ use super::super::store::{Cell, Store};
 use super::super::value::View;
 use super::super::waiting::WAITING;
 use super::Reader;
-use super::cursor::starts_record;
+use super::cursor::{shown, starts_record};
 use super::record::At;
 use super::text;
 
@@ -123,15 +123,9 @@ impl Reader<'_> {
     }
 
     fn reference(&mut self, from: Id) -> Read<Cell> {
-        if starts_record(self.cursor.rest()) {
-            return Err(Trouble::Broken(self.unexpected("a value")));
-        }
-        self.cursor.at += 1;
-        let digits = String::from_utf8_lossy(self.cursor.word());
-        let number = digits.parse().ok().filter(|_| digits.bytes().all(|b| b.is_ascii_digit()));
-        let Some(number) = number else {
-            let shown = quoted(&format!("#{digits}"));
-            return Err(Trouble::Wrong(format!("refers to {shown}, which is no id")));
+        let number = match self.cursor.reference() {
+            Some(number) => number,
+            None => self.odd_reference()?,
         };
         if self.is_ascending
             && let Some(known) = self.target(number)
@@ -140,6 +134,20 @@ impl Reader<'_> {
         }
         self.references.push((number, from));
         Ok(Cell::entity(Id(WAITING + (self.references.len() - 1) as u32)))
+    }
+
+    /// The number of a reference in whatever way it is written.
+    fn odd_reference(&mut self) -> Read<u64> {
+        if starts_record(self.cursor.rest()) {
+            return Err(Trouble::Broken(self.unexpected("a value")));
+        }
+        self.cursor.at += 1;
+        let digits = shown(self.cursor.word());
+        let number = digits.parse().ok().filter(|_| digits.bytes().all(|b| b.is_ascii_digit()));
+        number.ok_or_else(|| {
+            let shown = quoted(&format!("#{digits}"));
+            Trouble::Wrong(format!("refers to {shown}, which is no id"))
+        })
     }
 
     fn text(&mut self, base: Base, at: At) -> Read<Cell> {
@@ -172,7 +180,7 @@ impl Reader<'_> {
         if !self.cursor.eat(b'"') {
             return Err(Trouble::Broken(self.unexpected("the end of a binary")));
         }
-        let digits = String::from_utf8_lossy(digits);
+        let digits = shown(digits);
         match base {
             Base::Binary | Base::Any | Base::Select => Ok(self.entities.store.text(&digits)),
             _ => Err(Trouble::Wrong(format!("is the binary {}, {}", quoted(&digits), required(base)))),
@@ -182,7 +190,7 @@ impl Reader<'_> {
     /// `IFCLABEL('x')`; the type is kept only where the schema leaves a choice.
     fn typed(&mut self, kind: Kind, at: At, level: usize) -> Read<Cell> {
         let start = self.cursor.at;
-        let name = String::from_utf8_lossy(self.cursor.keyword());
+        let name = shown(self.cursor.keyword());
         if !self.cursor.eat(b'(') {
             self.cursor.at = start;
             return self.word(kind.base, at);
@@ -225,7 +233,7 @@ impl Reader<'_> {
     /// A number, or a token between dots.
     fn word(&mut self, base: Base, at: At) -> Read<Cell> {
         let start = self.cursor.at;
-        let word = String::from_utf8_lossy(self.cursor.word());
+        let word = shown(self.cursor.word());
         if word.is_empty() && !matches!(self.cursor.peek(), Some(b',' | b')')) {
             self.cursor.at = start;
             return Err(Trouble::Broken(self.unexpected("a value")));
