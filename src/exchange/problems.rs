@@ -27,6 +27,15 @@ impl<'a> Ruler<'a> {
         Self { bytes, offset: 0, spot: Spot { line: 1, column: 1 } }
     }
 
+    /// One that starts further on.
+    pub fn further_on(&self, offset: usize) -> Self {
+        let before = self.bytes.get(..offset).unwrap_or(self.bytes);
+        let line_start = memchr::memrchr(b'\n', before).map_or(0, |at| at + 1);
+        let lines = memchr::memchr_iter(b'\n', before).count();
+        let spot = Spot { line: 1_u32.saturating_add(lines as u32), column: 1 };
+        Self { bytes: self.bytes, offset: line_start, spot }
+    }
+
     pub fn spot(&mut self, offset: usize) -> Spot {
         let end = offset.min(self.bytes.len());
         let mut passed = self.bytes.get(self.offset..end).unwrap_or_default();
@@ -53,7 +62,7 @@ pub(super) type Sort = &'static str;
 #[derive(Clone)]
 pub(super) struct Problems {
     file: Arc<str>,
-    listed: Vec<Problem>,
+    listed: Vec<(Sort, Problem)>,
     counts: BTreeMap<Sort, usize>,
 }
 
@@ -68,16 +77,35 @@ impl Problems {
         *count += 1;
         if *count <= LISTED_OF_A_SORT {
             let at = Place { file: self.file.clone(), line: spot.line, column: spot.column };
-            self.listed.push(Problem { at: Some(at), message: message() });
+            self.listed.push((sort, Problem { at: Some(at), message: message() }));
+        }
+    }
+
+    /// A list for a later part of the file.
+    pub fn without_any(&self) -> Self {
+        Self::new(self.file.clone())
+    }
+
+    /// Takes over those of a later part of the file.
+    pub fn absorb(&mut self, later: Self) {
+        for (sort, problem) in later.listed {
+            if self.listed.iter().filter(|(of, _)| *of == sort).count() < LISTED_OF_A_SORT {
+                self.listed.push((sort, problem));
+            }
+        }
+        for (sort, count) in later.counts {
+            *self.counts.entry(sort).or_default() += count;
         }
     }
 
     /// In file order; then a line for each sort that was too frequent to be listed whole.
-    pub fn finish(mut self) -> Vec<Problem> {
-        self.listed.sort_by(|a, b| a.at.cmp(&b.at));
-        self.listed.extend(self.counts.iter().filter(|(_, count)| **count > LISTED_OF_A_SORT).map(|(sort, count)| {
-            Problem { at: None, message: format!("and {} more of this kind: {sort}", count - LISTED_OF_A_SORT) }
+    pub fn finish(self) -> Vec<Problem> {
+        let mut all: Vec<Problem> = self.listed.into_iter().map(|(_, problem)| problem).collect();
+        all.sort_by(|a, b| a.at.cmp(&b.at));
+        all.extend(self.counts.iter().filter(|(_, count)| **count > LISTED_OF_A_SORT).map(|(sort, count)| Problem {
+            at: None,
+            message: format!("and {} more of this kind: {sort}", count - LISTED_OF_A_SORT),
         }));
-        self.listed
+        all
     }
 }

@@ -13,6 +13,7 @@ use super::super::waiting::WAITING;
 use super::super::{Entities, Id};
 use super::head::{self, Head, Pos};
 use super::memory::Memory;
+use super::scan::Unusual;
 use super::slot::{Item, Slot, Target, stray_text, untyped};
 
 /// What an open element is.
@@ -82,6 +83,49 @@ impl<'x> Parser<'x> {
             skipping: 0,
             limits,
         }
+    }
+
+    /// One for a later part of the document, which starts where this one stands among elements that hold entities.
+    pub fn further_on(&self) -> Self {
+        let mut part = Self::new(self.entities.file(), self.problems.without_any(), self.limits);
+        part.start_document(self.schema);
+        part.stack.clear();
+        part.stack.extend(self.stack.iter().map(|frame| match frame {
+            Frame::Envelope => Frame::Envelope,
+            _ => Frame::Document,
+        }));
+        part
+    }
+
+    /// Whether it stands among elements that hold entities, that many of them within one another.
+    pub fn is_among_entities(&self, depth: usize) -> bool {
+        matches!(self.stack.last(), Some(Frame::Document)) && self.stack.len() == depth && self.skipping == 0
+    }
+
+    /// Takes over what was read of a later part of the document.
+    ///
+    /// # Errors
+    /// An id is given in both of them, so that references in the later part may mean another entity.
+    pub fn absorb(&mut self, part: Self) -> Result<(), Unusual> {
+        if part.labels.find("", &part.entities).is_some() {
+            return Err(Unusual); // it can't be told from those that have no id
+        }
+        let (ids, waiting) = (self.entities.len() as u32, self.waiting.len() as u32);
+        let moved = |id: Id| Id(id.0 + if id.0 < WAITING { ids } else { waiting });
+        self.entities.absorb(part.entities, moved);
+        for id in (ids..self.entities.len() as u32).map(Id).filter(|id| !self.entities.label(*id).is_empty()) {
+            if self.labels.enter(id, &self.entities) != id {
+                return Err(Unusual);
+            }
+        }
+        self.waiting.extend(part.waiting);
+        self.links.extend(part.links.into_iter().map(|link| Link {
+            relation: moved(link.relation),
+            parent: moved(link.parent),
+            ..link
+        }));
+        self.problems.absorb(part.problems);
+        Ok(())
     }
 
     /// Whether the open element is passed over with all that it holds.

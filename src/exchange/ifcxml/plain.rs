@@ -2,7 +2,9 @@
 
 use std::sync::Arc;
 
+use memchr::memmem;
 use quick_xml::events::BytesStart;
+use rayon::prelude::*;
 
 use super::super::Exchange;
 use super::super::limits::Limits;
@@ -18,8 +20,28 @@ use super::scan::{Piece, Scanner, Unusual};
 /// # Errors
 /// It is not plain XML or no exchange; nothing has been read then.
 pub(super) fn read(bytes: &[u8], problems: &Problems, file: &Arc<str>, limits: Limits) -> Result<Exchange, Unusual> {
+    match limits.parts(bytes.len()) {
+        1 => read_in(1, bytes, problems, file, limits),
+        parts => read_in(parts, bytes, problems, file, limits).or_else(|_| read_in(1, bytes, problems, file, limits)),
+    }
+}
+
+/// Reads a document in parts, as many of them at the same time.
+///
+/// A part starts where an element seems to start among those that hold the entities. Whether one does is known when the
+/// part before has been read, which must end just there.
+///
+/// # Errors
+/// As of [`read`], and where the document can't be cut so.
+fn read_in(
+    parts: usize,
+    bytes: &[u8],
+    problems: &Problems,
+    file: &Arc<str>,
+    limits: Limits,
+) -> Result<Exchange, Unusual> {
     let mut dialect = Dialect::default();
-    let mut reader = Reader {
+    let mut first = Reader {
         scanner: Scanner::new(bytes),
         ruler: Ruler::new(bytes),
         parser: Parser::new(file.clone(), problems.clone(), limits),
@@ -27,8 +49,39 @@ pub(super) fn read(bytes: &[u8], problems: &Problems, file: &Arc<str>, limits: L
         started: false,
         limits,
     };
-    while reader.step(Some(&mut dialect))? {}
-    Ok(resolve(reader.parser, dialect.form.ok_or(Unusual)?))
+    while !(first.started && first.parser.is_in_document()) && first.step(Some(&mut dialect))? {}
+    if parts > 1 {
+        let starts = starts(&first.scanner, parts);
+        let mut readers: Vec<Reader> = starts.iter().map(|start| first.further_on(*start)).collect();
+        let ends = starts.iter().copied().chain([bytes.len()]);
+        let mut all: Vec<_> = std::iter::once(&mut first).chain(&mut readers).zip(ends).collect();
+        all.par_iter_mut().try_for_each(|(reader, end)| reader.read_up_to(*end))?;
+        drop(all);
+        readers.into_iter().try_for_each(|reader| first.parser.absorb(reader.parser))?;
+        if first.parser.entities.len() > limits.entities {
+            return Err(Unusual);
+        }
+    } else {
+        while first.step(Some(&mut dialect))? {}
+    }
+    Ok(resolve(first.parser, dialect.form.ok_or(Unusual)?))
+}
+
+/// Where the parts after the first one may start: at elements that are indented as the first one that comes next.
+fn starts(scanner: &Scanner, parts: usize) -> Vec<usize> {
+    let rest = scanner.bytes.get(scanner.at..).unwrap_or_default();
+    let Some(first) = memchr::memchr(b'<', rest) else { return Vec::new() };
+    let indent = &rest[memchr::memrchr(b'\n', &rest[..first]).unwrap_or(first)..=first];
+    let element = memmem::Finder::new(indent);
+    let is_start = |at: &usize| rest.get(at + indent.len()).is_some_and(u8::is_ascii_alphabetic);
+    let start_near = |near: usize| {
+        let rest = rest.get(near..)?;
+        let start = element.find_iter(rest).map(|at| near + at).find(is_start)?;
+        Some(scanner.at + start + indent.len() - 1)
+    };
+    let mut starts: Vec<usize> = (1..parts).filter_map(|part| start_near(rest.len() / parts * part)).collect();
+    starts.dedup();
+    starts
 }
 
 struct Reader<'x> {
@@ -42,6 +95,30 @@ struct Reader<'x> {
 }
 
 impl<'x> Reader<'x> {
+    /// One for a part of the document that starts there.
+    fn further_on(&self, start: usize) -> Self {
+        Self {
+            scanner: self.scanner.further_on(start),
+            ruler: self.ruler.further_on(start),
+            parser: self.parser.further_on(),
+            head: Head::default(),
+            started: true,
+            limits: self.limits,
+        }
+    }
+
+    /// Reads what starts before `end`.
+    fn read_up_to(&mut self, end: usize) -> Result<(), Unusual> {
+        let depth = self.scanner.open.len();
+        while self.scanner.at < end && self.step(None)? {}
+        let is_whole = if end == self.scanner.bytes.len() {
+            self.scanner.open.is_empty()
+        } else {
+            self.scanner.at == end && self.parser.is_among_entities(depth)
+        };
+        if is_whole { Ok(()) } else { Err(Unusual) }
+    }
+
     /// Reads one piece; whether another one follows.
     fn step(&mut self, dialect: Option<&mut Dialect>) -> Result<bool, Unusual> {
         let parser = &mut self.parser;

@@ -37,6 +37,11 @@ impl<'x> Scanner<'x> {
         Self { bytes, at: 0, open: Vec::new(), attributes: Vec::new() }
     }
 
+    /// The same, further on, where the same elements are open.
+    pub fn further_on(&self, at: usize) -> Self {
+        Self { bytes: self.bytes, at, open: self.open.clone(), attributes: Vec::new() }
+    }
+
     fn rest(&self) -> &'x [u8] {
         self.bytes.get(self.at..).unwrap_or_default()
     }
@@ -51,6 +56,7 @@ impl<'x> Scanner<'x> {
             match rest {
                 [] => return Ok(Piece::EndOfFile),
                 [b'<', b'/', ..] => return self.end(),
+                [b'<', b'!', b'-', b'-', b'-' | b'>', ..] => return Err(Unusual),
                 [b'<', b'!', b'-', b'-', ..] => self.at += 4 + memmem::find(&rest[4..], b"-->").ok_or(Unusual)? + 3,
                 [b'<', b'?', ..] => self.at += 2 + memmem::find(&rest[2..], b"?>").ok_or(Unusual)? + 2,
                 [b'<', b'!', ..] => return Err(Unusual),

@@ -19,6 +19,11 @@ impl<'a> Cursor<'a> {
         Self { bytes, at: 0, longest_string, no_comment_ends: false }
     }
 
+    /// One that stands further on.
+    pub fn further_on(&self, at: usize) -> Self {
+        Self { at, ..*self }
+    }
+
     pub fn rest(&self) -> &'a [u8] {
         self.bytes.get(self.at..).unwrap_or_default()
     }

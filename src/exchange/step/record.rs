@@ -63,14 +63,10 @@ impl Reader<'_> {
 
     fn open(&mut self, class: u16, label: &str, digits: &str, spot: Spot) -> Id {
         let id = self.entities.open(class, label, spot);
-        match digits.parse() {
-            Ok(number) => {
-                self.is_ascending &= self.numbers.last().is_none_or(|(last, _)| *last < number);
-                self.numbers.push((number, id));
-            }
-            Err(_) => self.problems.add("id that is too large", spot, || {
+        if digits.parse::<u64>().is_err() {
+            self.problems.add("id that is too large", spot, || {
                 format!("the id {label} is larger than {}: nothing can refer to it", u64::MAX)
-            }),
+            });
         }
         id
     }

@@ -1,13 +1,12 @@
 //! The values in a record, by the kinds that the schema asks for.
 
-use super::super::Id;
 use super::super::scalar::{self, quoted};
 use super::super::schema::{Base, Kind};
 use super::super::store::{Cell, Store};
 use super::super::value::View;
-use super::super::waiting::WAITING;
 use super::Reader;
 use super::cursor::{shown, starts_record};
+use super::numbers;
 use super::record::At;
 use super::text;
 
@@ -62,7 +61,7 @@ impl Reader<'_> {
                 });
                 Ok(self.entities.store.list(&[value]))
             }
-            Some(b'#') => self.reference(at.id),
+            Some(b'#') => self.reference(),
             Some(b'\'') => self.text(kind.base, at),
             Some(b'"') => self.binary(kind.base),
             Some(b'a'..=b'z' | b'A'..=b'Z' | b'!') => self.typed(kind, at, level),
@@ -122,18 +121,12 @@ impl Reader<'_> {
         Ok(())
     }
 
-    fn reference(&mut self, from: Id) -> Read<Cell> {
+    fn reference(&mut self) -> Read<Cell> {
         let number = match self.cursor.reference() {
             Some(number) => number,
             None => self.odd_reference()?,
         };
-        if self.is_ascending
-            && let Some(known) = self.target(number)
-        {
-            return Ok(Cell::entity(known));
-        }
-        self.references.push((number, from));
-        Ok(Cell::entity(Id(WAITING + (self.references.len() - 1) as u32)))
+        Ok(Cell::entity(numbers::reference(number, &mut self.large)))
     }
 
     /// The number of a reference in whatever way it is written.
