@@ -1,19 +1,37 @@
 //! What the schema asks of a graph as a whole, whatever form it was read from.
 
 use std::collections::HashSet;
+use std::ops::Range;
 
 use foldhash::fast::RandomState;
+use rayon::prelude::*;
 
 use super::problems::Problems;
 use super::scalar::quoted;
 use super::schema::{Attribute, Base, Kind};
 use super::store::Cell;
-use super::{Entities, Entity};
+use super::{Entities, Entity, Id};
 
 /// Notes what contradicts the schema and would mislead whoever follows the graph; the graph stays as it is.
 pub(super) fn check(entities: &Entities, problems: &mut Problems) {
+    let some = || problems.without_any();
+    let all = entities.len();
+    let parts = rayon::current_num_threads().clamp(1, all / 10_000 + 1);
+    let bound = |part: usize| (all / parts * part) as u32;
+    let part = |part: usize| {
+        let end = if part + 1 == parts { all as u32 } else { bound(part + 1) };
+        let mut problems = some();
+        check_values(entities, bound(part)..end, &mut problems);
+        problems
+    };
+    let values: Vec<Problems> = (0..parts).into_par_iter().map(part).collect();
+    values.into_iter().for_each(|more| problems.absorb(more));
+    check_global_ids(entities, problems);
+}
+
+fn check_values(entities: &Entities, ids: Range<u32>, problems: &mut Problems) {
     let relationship = entities.schema().find("IfcRelationship");
-    for entity in entities.all() {
+    for entity in ids.map(|id| entities.get(Id(id))) {
         let is_relation = relationship.is_some_and(|asked| entities.schema().is_subtype(entity.class_id(), asked));
         for (attribute, cell) in entity.known_cells() {
             if !cell.is_absent() {
@@ -26,7 +44,6 @@ pub(super) fn check(entities: &Entities, problems: &mut Problems) {
             }
         }
     }
-    check_global_ids(entities, problems);
 }
 
 fn is_end(attribute: &Attribute) -> bool {

@@ -31,19 +31,17 @@ impl<'a> Ruler<'a> {
     pub fn further_on(&self, offset: usize) -> Self {
         let before = self.bytes.get(..offset).unwrap_or(self.bytes);
         let line_start = memchr::memrchr(b'\n', before).map_or(0, |at| at + 1);
-        let lines = memchr::memchr_iter(b'\n', before).count();
-        let spot = Spot { line: 1_u32.saturating_add(lines as u32), column: 1 };
+        let spot = Spot { line: 1_u32.saturating_add(breaks(before)), column: 1 };
         Self { bytes: self.bytes, offset: line_start, spot }
     }
 
     pub fn spot(&mut self, offset: usize) -> Spot {
         let end = offset.min(self.bytes.len());
         let mut passed = self.bytes.get(self.offset..end).unwrap_or_default();
-        // what is passed is short as a rule
-        let lines = passed.iter().filter(|byte| **byte == b'\n').count();
-        if lines > 0 {
-            self.spot = Spot { line: self.spot.line.saturating_add(lines as u32), column: 1 };
-            passed = passed.rsplit(|byte| *byte == b'\n').next().unwrap_or_default();
+        if let Some(last) = passed.iter().rposition(|byte| *byte == b'\n') {
+            let (lines, rest) = passed.split_at(last + 1);
+            self.spot = Spot { line: self.spot.line.saturating_add(breaks(lines)), column: 1 };
+            passed = rest;
         }
         let characters = match passed.is_ascii() {
             true => passed.len(),
@@ -53,6 +51,11 @@ impl<'a> Ruler<'a> {
         self.offset = self.offset.max(end);
         self.spot
     }
+}
+
+/// How many line breaks there are; in steps of which none can count further than a byte does, because those are quick.
+fn breaks(bytes: &[u8]) -> u32 {
+    bytes.chunks(255).map(|chunk| u32::from(chunk.iter().map(|byte| u8::from(*byte == b'\n')).sum::<u8>())).sum()
 }
 
 /// The sorts of problem, by which they are counted; in words for "and 12 more …".

@@ -26,6 +26,7 @@ use self::parser::Parser;
 use super::Exchange;
 use super::limits::Limits;
 use super::problems::{Problems, Ruler, Spot};
+use super::source::Source;
 
 /// Reads a document.
 ///
@@ -40,10 +41,11 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
 
 /// As [`read`], whatever of XML the document makes use of.
 fn read_any(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) -> Result<Exchange, String> {
+    let document = Source::new(bytes);
     let mut xml = Reader::from_reader(bytes);
     xml.config_mut().allow_dangling_amp = true; // one badly written name must not lose the file
     let mut ruler = Ruler::new(bytes);
-    let mut parser = Parser::new(file, problems, limits);
+    let mut parser = Parser::new(document, file, problems, limits);
     let mut dialect = Dialect::default();
     let mut started = false;
     let mut head = Head::default();
@@ -93,7 +95,7 @@ fn read_any(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) ->
                     }
                     started = true;
                 } else {
-                    head.read(bytes, start, spot, &mut parser.problems).map_err(|error| {
+                    head.read(document, start, spot, &mut parser.problems).map_err(|error| {
                         format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)
                     })?;
                     parser.start(&head);
@@ -109,18 +111,18 @@ fn read_any(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) ->
             _ if parser.is_skipping() && !matches!(event, Event::End(_) | Event::DocType(_)) => {}
             Event::Text(_) if is_blank => {}
             Event::Text(text) => {
-                let raw = head::within(bytes, &text).unwrap_or_default();
-                let text = head::text(raw, spot, &mut parser.problems);
+                let raw = head::within(document, &text).unwrap_or_default();
+                let text = head::text(document, raw, spot, &mut parser.problems);
                 parser.text(text, spot);
             }
             Event::CData(data) => {
-                let raw = head::within(bytes, &data).unwrap_or_default();
+                let raw = head::within(document, &data).unwrap_or_default();
                 let text = head::decode(raw, spot, &mut parser.problems);
                 parser.text(text, spot);
             }
             Event::GeneralRef(reference) => {
                 let escape = [b"&", &reference[..], b";"].concat();
-                let text = head::text(&escape, spot, &mut parser.problems).into_owned();
+                let text = head::text(document, &escape, spot, &mut parser.problems).into_owned();
                 parser.text(text.into(), spot);
             }
             Event::DocType(_) => {

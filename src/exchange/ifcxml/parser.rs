@@ -8,6 +8,7 @@ use super::super::limits::Limits;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Attribute, Base, ClassId, Kind, Named, Schema};
+use super::super::source::Source;
 use super::super::store::Cell;
 use super::super::waiting::WAITING;
 use super::super::{Entities, Id};
@@ -49,6 +50,7 @@ pub(super) struct Link {
 }
 
 pub(super) struct Parser<'x> {
+    document: Source<'x>,
     schema: &'static Schema,
     pub entities: Entities,
     pub labels: Labels,
@@ -67,9 +69,10 @@ pub(super) struct Parser<'x> {
 }
 
 impl<'x> Parser<'x> {
-    pub fn new(file: Arc<str>, problems: Problems, limits: Limits) -> Self {
+    pub fn new(document: Source<'x>, file: Arc<str>, problems: Problems, limits: Limits) -> Self {
         let schema = Schema::ifc4(); // until the document says which
         Self {
+            document,
             schema,
             entities: Entities::new(schema, file),
             labels: Labels::default(),
@@ -87,7 +90,7 @@ impl<'x> Parser<'x> {
 
     /// One for a later part of the document, which starts where this one stands among elements that hold entities.
     pub fn further_on(&self) -> Self {
-        let mut part = Self::new(self.entities.file(), self.problems.without_any(), self.limits);
+        let mut part = Self::new(self.document, self.entities.file(), self.problems.without_any(), self.limits);
         part.start_document(self.schema);
         part.stack.clear();
         part.stack.extend(self.stack.iter().map(|frame| match frame {
@@ -341,7 +344,7 @@ impl<'x> Parser<'x> {
         for (name, raw) in &head.rest {
             let Some((index, kind)) = self.attribute(class, name) else {
                 self.unknown_attribute(class, name, head.spot);
-                let text = head::text(raw, head.spot, &mut self.problems);
+                let text = head::text(self.document, raw, head.spot, &mut self.problems);
                 let text = self.entities.store.text(&text);
                 self.entities.add_extra(id, name, text);
                 continue;
@@ -374,14 +377,14 @@ impl<'x> Parser<'x> {
     /// # Errors
     /// What is wrong with it, in words that follow "…: ".
     fn scalar(&mut self, kind: Kind, raw: &'x [u8], spot: Spot) -> Result<Cell, String> {
-        let Some(text) = head::plain(raw) else {
-            let text = head::text(raw, spot, &mut self.problems);
-            return scalar::parse(&mut self.entities.store, kind, &text);
-        };
         let (known, place) = self.memory.recall(kind, raw);
         if let Some(cell) = known {
             return Ok(cell);
         }
+        let Some(text) = head::plain(self.document, raw) else {
+            let text = head::text(self.document, raw, spot, &mut self.problems);
+            return scalar::parse(&mut self.entities.store, kind, &text);
+        };
         let cell = scalar::parse(&mut self.entities.store, kind, text)?;
         if let Some(place) = place {
             self.memory.remember(place, kind, raw, cell);

@@ -9,6 +9,7 @@ use rayon::prelude::*;
 use super::super::Exchange;
 use super::super::limits::Limits;
 use super::super::problems::{Problems, Ruler};
+use super::super::source::Source;
 use super::dialect::{Around, Dialect};
 use super::head::{self, Head};
 use super::parser::Parser;
@@ -41,10 +42,12 @@ fn read_in(
     limits: Limits,
 ) -> Result<Exchange, Unusual> {
     let mut dialect = Dialect::default();
+    let document = Source::new(bytes);
     let mut first = Reader {
+        document,
         scanner: Scanner::new(bytes),
         ruler: Ruler::new(bytes),
-        parser: Parser::new(file.clone(), problems.clone(), limits),
+        parser: Parser::new(document, file.clone(), problems.clone(), limits),
         head: Head::default(),
         started: false,
         limits,
@@ -85,6 +88,7 @@ fn starts(scanner: &Scanner, parts: usize) -> Vec<usize> {
 }
 
 struct Reader<'x> {
+    document: Source<'x>,
     scanner: Scanner<'x>,
     ruler: Ruler<'x>,
     parser: Parser<'x>,
@@ -98,6 +102,7 @@ impl<'x> Reader<'x> {
     /// One for a part of the document that starts there.
     fn further_on(&self, start: usize) -> Self {
         Self {
+            document: self.document,
             scanner: self.scanner.further_on(start),
             ruler: self.ruler.further_on(start),
             parser: self.parser.further_on(),
@@ -133,7 +138,7 @@ impl<'x> Reader<'x> {
                 let spot = self.ruler.spot(content.as_ptr() as usize - self.scanner.bytes.as_ptr() as usize - 1);
                 if parser.is_in_document() {
                     let attributes = self.scanner.attributes.iter().map(|attribute| Ok::<_, Unusual>(*attribute));
-                    self.head.fill(name, attributes, spot, &mut parser.problems)?;
+                    self.head.fill(self.document, name, attributes, spot, &mut parser.problems)?;
                     parser.start(&self.head);
                     if parser.entities.len() > self.limits.entities {
                         return Err(Unusual);
@@ -161,7 +166,7 @@ impl<'x> Reader<'x> {
                 let is_blank = || text.iter().all(u8::is_ascii_whitespace) && !parser.is_in_text();
                 if !parser.is_skipping() && !is_blank() {
                     let spot = self.ruler.spot(self.scanner.at - text.len());
-                    let text = head::text(text, spot, &mut parser.problems);
+                    let text = head::text(self.document, text, spot, &mut parser.problems);
                     parser.text(text, spot);
                 }
             }

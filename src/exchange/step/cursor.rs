@@ -5,8 +5,11 @@ use std::borrow::Cow;
 
 use memchr::memmem;
 
+use super::super::source::Source;
+
 pub(super) struct Cursor<'a> {
     pub bytes: &'a [u8],
+    pub source: Source<'a>,
     pub at: usize,
     /// In bytes as written.
     longest_string: usize,
@@ -16,7 +19,7 @@ pub(super) struct Cursor<'a> {
 
 impl<'a> Cursor<'a> {
     pub fn new(bytes: &'a [u8], longest_string: usize) -> Self {
-        Self { bytes, at: 0, longest_string, no_comment_ends: false }
+        Self { bytes, source: Source::new(bytes), at: 0, longest_string, no_comment_ends: false }
     }
 
     /// One that stands further on.
@@ -141,6 +144,12 @@ impl<'a> Cursor<'a> {
         None
     }
 
+    /// A piece as text; what is not UTF-8 is replaced.
+    #[inline]
+    pub fn text(&self, piece: &'a [u8]) -> Cow<'a, str> {
+        self.source.text(piece).map_or_else(|| String::from_utf8_lossy(piece), Cow::Borrowed)
+    }
+
     /// Leaves a record: past the `;` that ends it, or up to where another record plainly starts.
     pub fn skip_record(&mut self) {
         while let Some(byte) = self.peek() {
@@ -171,11 +180,6 @@ fn may_follow_string(bytes: &[u8]) -> bool {
             _ => return false,
         };
     }
-}
-
-/// Bytes as text for people; what is not UTF-8 is replaced.
-pub(super) fn shown(bytes: &[u8]) -> Cow<'_, str> {
-    std::str::from_utf8(bytes).map_or_else(|_| String::from_utf8_lossy(bytes), Cow::Borrowed)
 }
 
 /// Whether bytes start with `#12=`.

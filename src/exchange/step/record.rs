@@ -6,7 +6,7 @@ use super::super::scalar::quoted;
 use super::super::schema::{Attribute, Kind};
 use super::super::store::Cell;
 use super::Reader;
-use super::cursor::{shown, starts_record};
+use super::cursor::starts_record;
 
 /// The class of a record that gives an entity several classes at once.
 const COMPLEX: &str = "complex instance";
@@ -26,12 +26,13 @@ impl Reader<'_> {
         let spot = self.spot();
         self.started = self.cursor.at;
         self.cursor.at += 1;
-        let digits = shown(self.cursor.take_while(|b| b.is_ascii_digit()));
+        let digits = self.cursor.take_while(|b| b.is_ascii_digit());
+        let digits = self.cursor.text(digits);
         if digits.is_empty() || !self.cursor.eat(b'=') {
             return self.give_up("record that is not understood", spot, format!("#{digits} starts no record #1=…"));
         }
         let label = match self.cursor.bytes.get(self.started..self.started + 1 + digits.len()) {
-            Some(label) if label.ends_with(digits.as_bytes()) => shown(label),
+            Some(label) if label.ends_with(digits.as_bytes()) => self.cursor.text(label),
             _ => format!("#{digits}").into(), // blanks stand between
         };
         if self.cursor.peek() == Some(b'(') {
@@ -43,7 +44,8 @@ impl Reader<'_> {
                 format!("{label} is of several classes at once; it is kept, but nothing of it is understood"),
             );
         }
-        let name = shown(self.cursor.keyword());
+        let name = self.cursor.keyword();
+        let name = self.cursor.text(name);
         if name.is_empty() {
             return self.give_up("record that is not understood", spot, format!("{label} names no entity after its ="));
         }

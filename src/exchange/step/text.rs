@@ -15,10 +15,12 @@ pub(super) struct Text<'a> {
 /// Decodes what stands between the quotes: doubled quotes and backslashes, `\X\`, `\X2\`, `\X4\`, `\S\` with `\P.\`.
 /// A backslash that starts none of these stands for itself, because file names are often written so. Control
 /// characters are left out: only the line breaks of long strings are such.
-pub(super) fn decode(raw: &[u8]) -> Text<'_> {
-    let (written, is_latin1) = match std::str::from_utf8(raw) {
-        Ok(text) => (Cow::Borrowed(text), false),
-        Err(_) => (enc::WINDOWS_1252.decode_without_bom_handling(raw).0, true),
+///
+/// `text` are the same bytes where they are UTF-8.
+pub(super) fn decode<'a>(raw: &'a [u8], text: Option<&'a str>) -> Text<'a> {
+    let (written, is_latin1) = match text {
+        Some(text) => (Cow::Borrowed(text), false),
+        None => (enc::WINDOWS_1252.decode_without_bom_handling(raw).0, true),
     };
     let is_plain = |byte: u8| matches!(byte, b' '..=b'~') && byte != b'\\' && byte != b'\'';
     if raw.iter().all(|byte| is_plain(*byte)) || !written.contains(|c: char| c == '\\' || c == '\'' || c.is_control()) {

@@ -5,7 +5,7 @@ use super::super::schema::{Base, Kind};
 use super::super::store::{Cell, Store};
 use super::super::value::View;
 use super::Reader;
-use super::cursor::{shown, starts_record};
+use super::cursor::starts_record;
 use super::numbers;
 use super::record::At;
 use super::text;
@@ -135,7 +135,8 @@ impl Reader<'_> {
             return Err(Trouble::Broken(self.unexpected("a value")));
         }
         self.cursor.at += 1;
-        let digits = shown(self.cursor.word());
+        let digits = self.cursor.word();
+        let digits = self.cursor.text(digits);
         let number = digits.parse().ok().filter(|_| digits.bytes().all(|b| b.is_ascii_digit()));
         number.ok_or_else(|| {
             let shown = quoted(&format!("#{digits}"));
@@ -145,7 +146,7 @@ impl Reader<'_> {
 
     fn text(&mut self, base: Base, at: At) -> Read<Cell> {
         let string = self.cursor.string().ok_or_else(|| Trouble::Broken(self.limits.string_not_closed()))?;
-        let decoded = text::decode(string.raw);
+        let decoded = text::decode(string.raw, self.cursor.source.text(string.raw));
         if !string.is_doubled {
             let text = quoted(&decoded.text);
             self.note("quote that is not doubled", at, |named| {
@@ -173,7 +174,7 @@ impl Reader<'_> {
         if !self.cursor.eat(b'"') {
             return Err(Trouble::Broken(self.unexpected("the end of a binary")));
         }
-        let digits = shown(digits);
+        let digits = self.cursor.text(digits);
         match base {
             Base::Binary | Base::Any | Base::Select => Ok(self.entities.store.text(&digits)),
             _ => Err(Trouble::Wrong(format!("is the binary {}, {}", quoted(&digits), required(base)))),
@@ -183,7 +184,8 @@ impl Reader<'_> {
     /// `IFCLABEL('x')`; the type is kept only where the schema leaves a choice.
     fn typed(&mut self, kind: Kind, at: At, level: usize) -> Read<Cell> {
         let start = self.cursor.at;
-        let name = shown(self.cursor.keyword());
+        let name = self.cursor.keyword();
+        let name = self.cursor.text(name);
         if !self.cursor.eat(b'(') {
             self.cursor.at = start;
             return self.word(kind.base, at);
@@ -226,7 +228,8 @@ impl Reader<'_> {
     /// A number, or a token between dots.
     fn word(&mut self, base: Base, at: At) -> Read<Cell> {
         let start = self.cursor.at;
-        let word = shown(self.cursor.word());
+        let word = self.cursor.word();
+        let word = self.cursor.text(word);
         if word.is_empty() && !matches!(self.cursor.peek(), Some(b',' | b')')) {
             self.cursor.at = start;
             return Err(Trouble::Broken(self.unexpected("a value")));
