@@ -235,8 +235,8 @@ pub struct JointReview {
     pub row_basis: Option<RowBasis>,
     /// The load case that the checks of the shear stand for.
     pub shear_case: Option<String>,
-    /// Checks.
-    pub checks: Vec<CheckResult>,
+    /// Checks; like joints share theirs.
+    pub checks: Arc<[CheckResult]>,
     /// Findings, worst first.
     pub findings: Vec<Finding>,
     /// What is missing for a proof.
