@@ -119,6 +119,9 @@ struct Common {
     /// A folder of rule files that stand in for the built-in ones of the same name.
     #[arg(long, value_name = "FOLDER")]
     rules: Option<PathBuf>,
+    /// The partial factors and choices of a national annex: a file of annexes/ in the rules, without ".toml".
+    #[arg(long, value_name = "NAME")]
+    annex: Option<String>,
     /// How to write the report.
     #[arg(long, value_enum, default_value_t = Format::Text)]
     format: Format,
@@ -144,13 +147,19 @@ enum Format {
 /// Where rules come from and a report goes.
 struct Places<'a> {
     rules: Option<&'a Path>,
+    annex: Option<&'a str>,
     output: Option<&'a Path>,
     color: Colour,
 }
 
 impl Common {
     fn places(&self) -> Places<'_> {
-        Places { rules: self.rules.as_deref(), output: self.output.as_deref(), color: self.color }
+        Places {
+            rules: self.rules.as_deref(),
+            annex: self.annex.as_deref(),
+            output: self.output.as_deref(),
+            color: self.color,
+        }
     }
 }
 
@@ -187,7 +196,12 @@ fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
 }
 
 fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {
-    let places = Places { rules: args.rules.as_deref(), output: args.output.as_deref(), color: args.color };
+    let places = Places {
+        rules: args.rules.as_deref(),
+        annex: args.annex.as_deref(),
+        output: args.output.as_deref(),
+        color: args.color,
+    };
     let draw = |review: &Review, output: &Output, _: &[u8]| sheet::draw(args, review, output).map(Drawn::Whole);
     let review = report(&args.path, Some(&args.schedule), &places, draw)?;
     sheet::exit_code(args, &review)
@@ -209,7 +223,7 @@ fn report(
     let given = Given::gather(path, schedules, places.rules)?;
     // Before the work is done, so that nobody waits for a report that can't be written.
     let output = Output::open(places.output, places.color, &given.paths)?;
-    let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
+    let review = progress::watched("reading and checking the model", || run::run_by(&given.inputs(), places.annex))?;
     let drawn = draw(&review, &output, &given.model.bytes)?;
     output.write(|to| match drawn {
         Drawn::Whole(text) => to.write_all(text.as_bytes()),

@@ -15,7 +15,7 @@ use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
 use crate::joints::{Joint, Joints, Layout};
 use crate::origin::{Missing, Problem};
 use crate::review::{Basis, Counts, JointReview, Outcome, Review, Survey};
-use crate::rulebook::{ModeOne, RowForces, Rulebook};
+use crate::rulebook::{Alpha, ModeOne, RowForces, Rulebook};
 use crate::shop::Steelwork;
 
 /// Everything that was read and recognised.
@@ -38,7 +38,7 @@ pub struct Sources<'a> {
 
 /// The review of everything.
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
-    let (solver, checks) = (Solver::new(sources.rulebook), joint::Checks::default());
+    let (solver, checks) = (Solver::new(sources.rulebook), joint::Checks::new(sources.rulebook.welds.min_throat));
     let found = (0..sources.joints.joints.len()).into_par_iter();
     let (mut joints, sha256) = rayon::join(
         || found.map(|index| sources.found(&solver, &checks, index)).collect::<Vec<JointReview>>(),
@@ -128,9 +128,18 @@ fn basis(rulebook: &Rulebook) -> Basis {
                 }
                 .into(),
             ),
+            said("table of steel strengths", rulebook.steel_table().to_owned()),
             said(
                 "strength of rolled sections",
                 if settings.strength_by_flange { "by flange thickness" } else { "by each element's thickness" }.into(),
+            ),
+            said(
+                "α beside stiffeners and flanges",
+                match settings.alpha {
+                    Alpha::Chart => "Figure 6.11",
+                    Alpha::Draft2024 => "formula of a draft of EN 1993-1-8:2024, at most 8",
+                }
+                .into(),
             ),
             said("α of Figure 6.11, at most", format!("{}", settings.alpha_max)),
             said("rows carry shear only below", format!("{} of the beam's depth", settings.shear_only_below)),
@@ -208,7 +217,8 @@ impl<'a> Sources<'a> {
             let assessment = assess(&meant);
             Ok((meant, assessment))
         });
-        Computed { detailed: Some(assess(layout)), intended }
+        let asked = self.detail(scheduled).and_then(|detail| end_plate::with_category(layout, detail, self.rulebook));
+        Computed { detailed: Some(assess(asked.as_ref().unwrap_or(layout))), intended }
     }
 
     fn found(&self, solver: &Solver<'_>, checks: &joint::Checks, index: usize) -> JointReview {

@@ -23,8 +23,8 @@ mod touch;
 mod welds;
 
 pub use layout::{
-    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Layout, MemberAt, PlateSide, SpliceLayout, Stiffener,
-    Support, Welds, Which,
+    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Held, Layout, MemberAt, PlateSide, SpliceLayout,
+    Stiffener, Support, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;
@@ -109,7 +109,7 @@ pub struct Joint {
     pub at_end: Option<bool>,
     /// Its bolts.
     pub bolts: Vec<usize>,
-    /// Its plates, with their role: "end-plate", "stiffener", "plate".
+    /// Its plates, with their role: "end-plate", "packing", "stiffener", "plate".
     pub plates: Vec<(usize, &'static str)>,
     /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "other".
     pub welds: Vec<(usize, &'static str)>,

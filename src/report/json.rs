@@ -7,7 +7,8 @@ pub mod document;
 
 use document::{
     Basis, BoltRow, Bolts, Check, Counts, Difference, Finding, Input, Joint, Kind, Lack, LackReason, Member, Missing,
-    Model, Part, Place, Plate, Problem, Question, Recognised, Rejected, Required, Resistance, Row, Setting, Tool, Weld,
+    Model, Part, Place, Plate, Problem, Question, Recognised, Rejected, Required, Resistance, Row, Setting, Spring,
+    Stiffness, Tool, Weld,
 };
 
 use std::io::{self, Write};
@@ -211,6 +212,7 @@ fn joint(j: &review::JointReview) -> Joint {
         intended_resistance: j.intended_resistance.as_ref().map(resistance),
         required: j.required.iter().map(required).collect(),
         rows: j.rows.iter().map(row).collect(),
+        stiffness: j.stiffness.as_ref().map(stiffness),
         checks: j.checks.iter().map(check).collect(),
         findings: j.findings.iter().map(finding).collect(),
         missing: j.missing.iter().map(missing).collect(),
@@ -283,6 +285,26 @@ fn row(r: &review::RowResult) -> Row {
     }
 }
 
+fn stiffness(s: &review::StiffnessResult) -> Stiffness {
+    let spring = |(title, k): &(String, Option<f64>)| Spring { title: title.clone(), k_mm: k.and_then(thousandth) };
+    Stiffness {
+        sense: s.sense.into(),
+        beta: ratio(s.beta),
+        initial_knm_per_rad: thousandth(s.initial),
+        at_required_knm_per_rad: s.at_required.and_then(thousandth),
+        lower_bound: s.lower_bound,
+        lever_arm_mm: thousandth(s.lever_arm_mm),
+        springs: s.springs.iter().map(spring).collect(),
+        rigid_from_knm_per_rad: s.rigid_from.and_then(thousandth),
+        pinned_up_to_knm_per_rad: s.pinned_up_to.and_then(thousandth),
+        class: s.class.clone(),
+        assumed: s.assumed.map(Into::into),
+        strength: s.strength.into(),
+        rotation: s.rotation.clone(),
+        notes: s.notes.clone(),
+    }
+}
+
 fn check(c: &review::CheckResult) -> Check {
     Check {
         id: c.id.clone(),
@@ -293,6 +315,7 @@ fn check(c: &review::CheckResult) -> Check {
         unit: c.unit.into(),
         utilisation: c.utilisation.and_then(ratio),
         outcome: c.outcome.into(),
+        needed_throat_mm: c.needed_throat_mm.and_then(thousandth),
     }
 }
 

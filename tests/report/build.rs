@@ -36,6 +36,7 @@ pub fn joint(n: usize, outcome: Outcome) -> JointReview {
         rows: Vec::new(),
         row_basis: None,
         shear_case: None,
+        stiffness: None,
         checks: Default::default(),
         findings: Vec::new(),
         missing: Vec::new(),
@@ -208,6 +209,7 @@ pub fn small() -> Review {
         unit: "kN",
         utilisation: Some(437.3 / 885.6),
         outcome: "met",
+        needed_throat_mm: None,
         working: Working::default().into(),
     }]
     .into();
