@@ -274,8 +274,8 @@ pub struct JointReview {
     pub shear_case: Option<String>,
     /// Rotational stiffness and class.
     pub stiffness: Option<StiffnessResult>,
-    /// Checks.
-    pub checks: Vec<CheckResult>,
+    /// Checks; like joints share theirs.
+    pub checks: Arc<[CheckResult]>,
     /// Findings, worst first.
     pub findings: Vec<Finding>,
     /// What is missing for a proof.

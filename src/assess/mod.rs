@@ -202,7 +202,7 @@ pub struct CaseResult {
     /// The moment resistance of this case (its sense and β); `None` if M is not stated or nothing could be computed.
     pub moment: Option<Arc<MomentResistance>>,
     /// The shear resistance beside this case's bolt tensions; `None` if V is not stated.
-    pub shear: Option<ShearResistance>,
+    pub shear: Option<Arc<ShearResistance>>,
 }
 
 /// The shear resistance of a joint, with the bolts' tension at its full moment resistance.
@@ -224,7 +224,7 @@ pub struct Assessment {
     /// M_j,Rd with tension at the bottom.
     pub sagging: Option<Arc<MomentResistance>>,
     /// V_Rd.
-    pub shear: Option<ShearResistance>,
+    pub shear: Option<Arc<ShearResistance>>,
     /// Results for each load case.
     pub cases: Vec<CaseResult>,
     /// What keeps it from being a proof.

@@ -38,16 +38,16 @@ pub struct Sources<'a> {
 
 /// The review of everything.
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
-    let solver = Solver::new(sources.rulebook);
+    let (solver, checks) = (Solver::new(sources.rulebook), joint::Checks::new(sources.rulebook.welds.min_throat));
     let found = (0..sources.joints.joints.len()).into_par_iter();
     let (mut joints, sha256) = rayon::join(
-        || found.map(|index| sources.found(&solver, index)).collect::<Vec<JointReview>>(),
+        || found.map(|index| sources.found(&solver, &checks, index)).collect::<Vec<JointReview>>(),
         || Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect(),
     );
     let pairing = sources.pairing;
     joints.extend(pairing.not_found.iter().filter_map(|&index| sources.without_steel(index, false)));
     joints.extend(pairing.unclear.iter().filter_map(|&index| sources.without_steel(index, true)));
-    joints.sort_by_cached_key(|joint| natural(&joint.mark));
+    joints.par_sort_by_cached_key(|joint| natural(&joint.mark));
 
     let ends = |outcome| joints.iter().filter(|joint| joint.outcome == outcome).count();
     let resistance = |joint: &&JointReview| {
@@ -221,7 +221,7 @@ impl<'a> Sources<'a> {
         Computed { detailed: Some(assess(asked.as_ref().unwrap_or(layout))), intended }
     }
 
-    fn found(&self, solver: &Solver<'_>, index: usize) -> JointReview {
+    fn found(&self, solver: &Solver<'_>, checks: &joint::Checks, index: usize) -> JointReview {
         let joint = &self.joints.joints[index];
         let scheduled = self.scheduled(index);
         let computed = self.compute(solver, joint, scheduled);
@@ -238,7 +238,7 @@ impl<'a> Sources<'a> {
             unclear: false,
         };
         let findings = findings::look(&context);
-        joint::review(self, joint, scheduled, &computed, findings)
+        joint::review(self, checks, joint, scheduled, computed, findings)
     }
 
     fn without_steel(&self, index: usize, unclear: bool) -> Option<JointReview> {

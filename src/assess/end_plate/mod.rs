@@ -185,7 +185,7 @@ pub fn assess_with<'l>(
                 .map(|reach| reach.unwrap_or(n.side.beam.h))
                 .fold(Length::ZERO, Length::max),
         };
-        let context = Cases { n, rulebook, n_pl, lower_bound, unknown, solve: &solve };
+        let context = Cases { n, solver, rulebook, n_pl, lower_bound, unknown, solve: &solve };
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(context.result(case, demand));
         }
@@ -193,7 +193,7 @@ pub fn assess_with<'l>(
         noted.assumptions.extend(at_upper_bound(&assessment, demands, two_sided));
         let tension = assessment.hogging.as_ref().or(assessment.sagging.as_ref());
         let tension = tension.map_or(unknown, |moment| Tension::Rows(moment, 1.0));
-        assessment.shear = Some(shear::resistance(n, tension, rulebook));
+        assessment.shear = Some(solver.shear(n, tension));
     } else {
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None, shear: None });
@@ -286,6 +286,7 @@ fn not_computed(case: &LoadCase) -> Vec<Verdict> {
 
 struct Cases<'a, F> {
     n: &'a Numbers,
+    solver: &'a Solver<'a>,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,
     /// Why the resistances are a lower bound, if they are: then "not met" is not proven.
@@ -349,14 +350,14 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
             }
             _ => self.unknown,
         };
-        let shear_resistance = shear.map(|_| shear::resistance(self.n, tension, self.rulebook));
+        let shear_resistance = shear.map(|_| self.solver.shear(self.n, tension));
         verdicts.push(match (shear, &shear_resistance) {
             (Some(v), Some(resistance)) => {
                 let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
                 let bound = solved.is_none().then_some(BOUND_BY_TENSION);
                 let mut verdict = self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, bound);
                 // More than the bolts carry without any tension is proven not to be carried, whatever is not known.
-                let most = || shear::resistance(self.n, Tension::None, self.rulebook).shear;
+                let most = || self.solver.shear(self.n, Tension::None).shear;
                 if verdict.state == State::Unproven && v.get().is_finite() && v.abs() > most() {
                     (verdict.state, verdict.reason) = (State::NotMet, None);
                 }
