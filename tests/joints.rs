@@ -6,3 +6,4 @@ mod laws;
 mod layouts;
 mod marks;
 mod refusals;
+mod strengthening;

@@ -131,5 +131,35 @@ pub fn lines(layout: &EndPlateLayout) -> Vec<String> {
             or(value(&stiffener.grade, |g| g.0.clone()))
         ));
     }
+    for plate in &layout.strengthening.web_plates {
+        lines.push(format!(
+            "web plate from {:.0} to {:.0} mm: {:.0} mm {}, {:.0} mm wide",
+            plate.bottom.get(),
+            plate.top.get(),
+            plate.thickness.get(),
+            or(value(&plate.grade, |g| g.0.clone())),
+            plate.width.get()
+        ));
+    }
+    for diagonal in &layout.strengthening.diagonals {
+        let sides = if diagonal.both_sides { "pair" } else { "one side only" };
+        lines.push(format!(
+            "diagonal from {:.0} mm at the joint to {:.0} mm: {:.0} mm {}, {sides}",
+            diagonal.near.get(),
+            diagonal.far.get(),
+            diagonal.thickness.get(),
+            or(value(&diagonal.grade, |g| g.0.clone()))
+        ));
+    }
+    for backing in &layout.strengthening.backing {
+        let sides = if backing.both_sides { "pair" } else { "one side only" };
+        lines.push(format!(
+            "backing plates from {:.0} to {:.0} mm: {:.0} mm {}, {sides}",
+            backing.bottom.get(),
+            backing.top.get(),
+            backing.thickness.get(),
+            or(value(&backing.grade, |g| g.0.clone()))
+        ));
+    }
     lines
 }

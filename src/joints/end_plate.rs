@@ -50,6 +50,11 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
         draft.joint.plates.extend(plates.iter().map(|plate| (*plate, "stiffener")));
         draft.joint.welds.extend(welded.iter().map(|weld| (*weld, Role::Stiffener.word())));
     }
+    let strengthening = &on_column.strengthening;
+    draft.joint.plates.retain(|(plate, _)| !strengthening.plates.iter().any(|(other, _)| other == plate));
+    draft.joint.plates.extend(&strengthening.plates);
+    let welded = strengthening.welds.iter().filter(|weld| !case.welds.iter().any(|(other, _)| other == *weld));
+    draft.joint.welds.extend(welded.map(|weld| (*weld, Role::Stiffener.word())));
     let listed: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
     draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
     draft.joint.layout = assessable(scene, case, &outline, &bolted)
@@ -150,7 +155,7 @@ fn every_bolt_passes_flange(scene: &Scene, draft: &Draft, case: &Case) -> Result
 }
 
 /// Whether each corner of the outline's extents is a corner of it, and every other corner lies on an edge.
-fn is_rectangular(outline: &[DVec2], within: f64) -> bool {
+pub(super) fn is_rectangular(outline: &[DVec2], within: f64) -> bool {
     let (Some(x), Some(y)) = (Span::of(outline.iter().map(|p| p.x)), Span::of(outline.iter().map(|p| p.y))) else {
         return false;
     };
@@ -199,6 +204,7 @@ fn laid_out(
             web: throat(Role::Web, "weld at the web"),
         },
         stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),
+        strengthening: on_column.strengthening.layout,
         column_above: (above <= RUNS_ON).then_some(mm(above)),
         column_below: (below <= RUNS_ON).then_some(mm(below)),
         not_credited,

@@ -17,11 +17,15 @@ mod rank;
 mod recognise;
 mod scene;
 mod stiffeners;
+mod strengthening;
 mod told;
 mod touch;
 mod welds;
 
-pub use layout::{BoltRow, Bolts, EndPlate, EndPlateLayout, MemberAt, Stiffener, Welds};
+pub use layout::{
+    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, MemberAt, Stiffener, Strengthening,
+    WebPlate, Welds,
+};
 
 use petgraph::graphmap::UnGraphMap;
 

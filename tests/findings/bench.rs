@@ -244,6 +244,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
         },
         welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
         stiffeners: vec![stiffener(8.0)],
+        strengthening: Default::default(),
         column_above: Some(mm(500.0)),
         column_below: None,
         not_credited: Vec::new(),

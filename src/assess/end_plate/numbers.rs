@@ -217,10 +217,17 @@ impl Numbers {
 
         let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, rulebook)).collect();
         // What strengthens and is not credited makes the joint no weaker, so a joint that fails without it is not proven to.
-        for part in &layout.not_credited {
+        let strengthening = &layout.strengthening;
+        let named = [
+            ("a web plate is not credited", strengthening.web_plates.len()),
+            ("a diagonal is not credited", strengthening.diagonals.len()),
+            ("a backing plate is not credited", strengthening.backing.len()),
+        ];
+        let named = named.into_iter().filter(|(_, count)| *count > 0).map(|(what, _)| what.to_owned());
+        for part in layout.not_credited.iter().cloned().chain(named) {
             noted.gaps.push(Gap::LowerBound(Missing {
                 what: "credit for a strengthening part".into(),
-                reason: part.clone(),
+                reason: part,
                 at: None,
                 ask: Ask::Method,
             }));
