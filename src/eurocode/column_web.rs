@@ -63,11 +63,9 @@ pub struct Compression {
     pub k_wc: f64,
 }
 
-/// F_c,wc,Rd: crushing and buckling of the unstiffened web, 6.2.6.2 (6.9); the first value is the smaller, the second is
-/// crushing alone (for a stiffened web).
-pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance, Resistance) {
-    let mut w = Working::default();
-    let Compression { t_fb, a_p, t_fc, s, t_p, projection, to_end, t_wc, d_wc, f_y_wc, A_vc, beta, k_wc } = *c;
+/// b_eff of a web in transverse compression, (6.11), with its steps noted.
+pub fn effective_width(w: &mut Working, c: &Compression) -> Length {
+    let Compression { t_fb, a_p, t_fc, s, t_p, projection, to_end, .. } = *c;
     given!(w, "column web at the compression flange"; t_fb, a_p, t_fc, s, t_p, projection);
     // 45° through the end plate, both ways; below the flange no further than the plate reaches.
     step!(w, "leg of the fillets", leg = 2.0_f64.sqrt() * a_p);
@@ -75,6 +73,15 @@ pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance
     step!(w, "6.2.6.2, (6.11)", b_eff_full = t_fb + spread + 5.0 * (t_fc + s));
     let past_end = to_end.map_or(Length::ZERO, |to_end| (0.5 * b_eff_full - to_end).max(Length::ZERO));
     step!(w, "no web past the column's end", b_eff = (b_eff_full - past_end).max(0.5 * b_eff_full));
+    b_eff
+}
+
+/// F_c,wc,Rd: crushing and buckling of the unstiffened web, 6.2.6.2 (6.9); the first value is the smaller, the second is
+/// crushing alone (for a stiffened web).
+pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance, Resistance) {
+    let mut w = Working::default();
+    let b_eff = effective_width(&mut w, c);
+    let Compression { t_wc, d_wc, f_y_wc, A_vc, beta, k_wc, .. } = *c;
     let omega = omega(&mut w, beta, b_eff, t_wc, A_vc);
     given!(w, "column web"; t_wc, d_wc, f_y_wc, k_wc);
     step!(w, "6.2.6.2, (6.13c)", lambda_p = 0.932 * ((b_eff / t_wc) * (d_wc / t_wc) * (f_y_wc / E)).sqrt());

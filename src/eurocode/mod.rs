@@ -8,10 +8,12 @@ pub mod alpha;
 pub mod beam;
 pub mod bolts;
 pub mod column_web;
+pub mod diagonals;
 pub mod effective_length;
 pub mod stiffeners;
 pub mod t_stub;
 pub mod web_panel;
+pub mod web_plates;
 pub mod welds;
 
 use crate::units::Force;

@@ -8,6 +8,7 @@ mod rows;
 mod shear;
 mod solver;
 mod sound;
+mod strengthening;
 mod totals;
 mod weld_checks;
 
@@ -166,6 +167,7 @@ pub fn assess_with(
         }
     }
     assessment.gaps = noted.gaps;
+    assessment.not_credited = noted.not_credited;
     assessment.assumptions = noted.assumptions;
     assessment.inputs = noted.inputs;
     assessment

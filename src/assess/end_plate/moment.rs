@@ -24,7 +24,7 @@ pub fn resistance(
     let mut notes = Vec::new();
     let side = TensionSide::new(n, rulebook, beta)?;
     let limits = side.limits();
-    let totals = totals::totals(n, rulebook, beta, V_Ed, &mut notes)?;
+    let totals = totals::totals(n, rulebook, beta, V_Ed, side.web_range(), &mut notes)?;
     let arms: Vec<Length> = side.rows.iter().map(|row| lever_arm(n, row)).collect();
     let heights: Vec<Length> = side.rows.iter().map(|row| row.height).collect();
     let numbers: Vec<usize> = side.rows.iter().map(|row| row.number).collect();

@@ -1,10 +1,12 @@
 //! The numbers of an end-plate joint: what the layout states and the rulebook adds, or what is missing.
 
 use super::sound;
+use super::strengthening::{self, Members, Strengthened};
 use std::sync::Arc;
 
 use crate::assess::{Gap, Input};
 use crate::eurocode::stiffeners::Pair;
+use crate::eurocode::welds::Fillets;
 use crate::eurocode::{beam, bolts};
 use crate::joints::{EndPlateLayout, MemberAt, Stiffener};
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
@@ -32,13 +34,28 @@ pub struct StiffenerPair {
     pub f_y: Stress,
     /// 0 if nobody states it: the safe geometry for m_2.
     pub throat: Length,
+    /// Its length along the column's depth.
+    pub reach: Length,
+    /// Whether it reaches from flange to flange; else it holds the flange in tension and nothing more.
+    pub full_depth: bool,
+    /// Its fillets, by its own f_u; `None` if nobody states them.
+    pub fillets: Option<Fillets>,
 }
 
 impl StiffenerPair {
     /// As the formulas take it: no wider than the column's flange, cut back by the column's root radius.
     pub fn plates(&self, n: &Numbers) -> Pair {
         let free = 0.5 * (n.column.b - n.column.t_w);
-        Pair { b_s: self.b_s.min(free), t_s: self.t_s, cope: n.r_c_most, f_y_s: self.f_y }
+        let cope = n.r_c_most;
+        Pair {
+            b_s: self.b_s.min(free),
+            t_s: self.t_s,
+            cope,
+            f_y_s: self.f_y,
+            l_s: (self.reach - if self.full_depth { 2.0 } else { 1.0 } * cope).max(Length::ZERO),
+            fillets: self.fillets.map(|own| Fillets { f_u: own.f_u.min(n.column_strength.f_u), ..own }),
+            ends_in_web: (!self.full_depth).then_some((n.column.t_w, n.column_strength.f_y_web)),
+        }
     }
 }
 
@@ -94,6 +111,7 @@ pub struct Numbers {
     pub a_compression: Option<Length>,
     pub a_web: Option<Length>,
     pub stiffeners: Vec<StiffenerPair>,
+    pub strengthened: Strengthened,
     pub column_above: Option<Length>,
     pub column_below: Option<Length>,
 }
@@ -104,6 +122,7 @@ pub struct Noted {
     pub inputs: Vec<Input>,
     pub assumptions: Vec<String>,
     pub gaps: Vec<Gap>,
+    pub not_credited: Vec<String>,
 }
 
 impl Noted {
@@ -215,19 +234,14 @@ impl Numbers {
         let a_bottom = weld(noted, "weld at the bottom flange", &layout.welds.flange_bottom, least);
         let a_web = weld(noted, "weld at the web", &layout.welds.web, least);
 
-        let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, rulebook)).collect();
+        let column_grade = layout.column.grade.as_ref().ok().map(|grade| &grade.value);
+        let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, column_grade, rulebook)).collect();
         // What strengthens and is not credited makes the joint no weaker, so a joint that fails without it is not proven to.
-        let strengthening = &layout.strengthening;
-        let named = [
-            ("a web plate is not credited", strengthening.web_plates.len()),
-            ("a diagonal is not credited", strengthening.diagonals.len()),
-            ("a backing plate is not credited", strengthening.backing.len()),
-        ];
-        let named = named.into_iter().filter(|(_, count)| *count > 0).map(|(what, _)| what.to_owned());
-        for part in layout.not_credited.iter().cloned().chain(named) {
+        for part in &layout.not_credited {
+            noted.not_credited.push(part.clone());
             noted.gaps.push(Gap::LowerBound(Missing {
                 what: "credit for a strengthening part".into(),
-                reason: part,
+                reason: part.clone(),
                 at: None,
                 ask: Ask::Method,
             }));
@@ -235,6 +249,8 @@ impl Numbers {
 
         let ((column, column_strength, r_c), (beam, beam_strength, r_b)) = (column?, beam?);
         let (r_c_most, r_b_most) = (column.r.unwrap_or(R_MOST), beam.r.unwrap_or(R_MOST));
+        let members = Members { column: &column, strength: column_strength, beam: &beam };
+        let strengthened = strengthening::credit(noted, layout, &members, rulebook);
         let (plate_strength, size, class, d_0) = (plate_strength?, size?, class?, d_0?);
 
         let beam_h = beam.h;
@@ -311,6 +327,7 @@ impl Numbers {
             a_compression: a_bottom,
             a_web,
             stiffeners,
+            strengthened,
             column_above: layout.column_above,
             column_below: layout.column_below,
         })
@@ -332,6 +349,7 @@ impl Numbers {
         turned.a_compression = self.a_tension;
         turned.stiffeners =
             self.stiffeners.iter().rev().map(|s| StiffenerPair { height: h - s.height, ..*s }).collect();
+        turned.strengthened = self.strengthened.upside_down(h);
         turned.column_above = self.column_below;
         turned.column_below = self.column_above;
         turned
@@ -364,30 +382,23 @@ fn weld(noted: &mut Noted, name: &str, known: &Known<Length>, least: Length) -> 
     throat
 }
 
-fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Option<StiffenerPair> {
+fn credit(
+    noted: &mut Noted,
+    stiffener: &Stiffener,
+    column_grade: Option<&Grade>,
+    rulebook: &Rulebook,
+) -> Option<StiffenerPair> {
     let at = format!("stiffener at {:.0} mm", stiffener.height.get());
     let mut refuse = |why: &str| {
         noted.assumptions.push(format!("{at} is not credited: {why}"));
         None
     };
-    let sizes = [stiffener.thickness, stiffener.outstand];
+    let sizes = [stiffener.thickness, stiffener.outstand, stiffener.reach];
     if !(stiffener.height.get().is_finite() && sizes.iter().all(|t| t.get().is_finite() && *t > mm(0.0))) {
         return refuse(&format!("a thickness of {} and an outstand of {}", stiffener.thickness, stiffener.outstand));
     }
     if !stiffener.both_sides {
         return refuse("it is on one side of the web only");
-    }
-    if !stiffener.full_depth {
-        const WHY: &str = "it does not reach from flange to flange (partial-depth stiffeners are not assessed yet)";
-        let refused = refuse(WHY);
-        // Like every strengthening part without credit: what fails without it is not proven to fail.
-        noted.gaps.push(Gap::LowerBound(Missing {
-            what: "credit for a strengthening part".into(),
-            reason: format!("{at}: {WHY}"),
-            at: None,
-            ask: Ask::Method,
-        }));
-        return refused;
     }
     let grade = match &stiffener.grade {
         Ok(grade) => grade,
@@ -403,23 +414,36 @@ fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Opti
         print_length,
     ));
     noted.inputs.push(Input::of(&format!("{at}: grade"), grade, |g| g.0.clone()));
-    let throat = match &stiffener.weld {
-        Ok(weld) => {
-            noted.assumptions.push(format!("{at}: its own weld is not checked"));
-            weld.value
+    let beta_w = column_grade.and_then(|column| rulebook.beta_w(column)).zip(rulebook.beta_w(&grade.value));
+    let fillets = match (&stiffener.weld, beta_w) {
+        (Err(missing), _) => Err((missing.reason.clone(), missing.ask)),
+        (Ok(weld), _) if !(weld.value >= rulebook.welds.min_throat && weld.value.get().is_finite()) => {
+            let least = rulebook.welds.min_throat;
+            Err((
+                format!("a throat of {} is not counted, {least} is the least (4.5.2(2))", weld.value),
+                Ask::Fabricator,
+            ))
         }
-        Err(_) => {
-            noted.assumptions.push(format!(
-                "{at}: no throat known, m2 is measured to its face (the safe geometry) and its weld is not checked"
-            ));
-            mm(0.0)
+        (Ok(_), None) => Err(("β_w is not known for its grade and the column's".into(), Ask::Method)),
+        (Ok(weld), Some((column, own))) => {
+            noted.inputs.push(Input::of(&format!("{at}: weld"), weld, |a| format!("throat {a}")));
+            Ok(Fillets { a: weld.value, f_u: strength.value.f_u, beta_w: own.max(column) })
         }
     };
+    if let Err((reason, ask)) = &fillets {
+        noted.not_checked(&format!("weld of the {at}"), reason.clone(), *ask);
+        noted
+            .assumptions
+            .push(format!("{at}: its weld is not checked, and m2 is measured to its face (the safe geometry)"));
+    }
     Some(StiffenerPair {
         height: stiffener.height,
         b_s: stiffener.outstand,
         t_s: stiffener.thickness,
         f_y: strength.value.f_y,
-        throat,
+        throat: fillets.as_ref().map_or(mm(0.0), |fillets| fillets.a),
+        reach: stiffener.reach,
+        full_depth: stiffener.full_depth,
+        fillets: fillets.ok(),
     })
 }

@@ -3,6 +3,7 @@
 
 use super::{Limit, TensionSide, sum};
 use crate::assess::end_plate::numbers::{Numbers, Row, StiffenerPair};
+use crate::assess::end_plate::{strengthening, totals};
 use crate::eurocode::effective_length::{self as el, RowPlace};
 use crate::eurocode::t_stub::{TStub, t_stub};
 use crate::eurocode::{Resistance, column_web, stiffeners};
@@ -115,7 +116,22 @@ impl TensionSide<'_> {
             n: n_e.min(1.25 * m),
             sum_F_t_Rd: self.bolt_force(first, last, n.B_p_column),
             mode_one: self.mode_one(),
+            backing: n.strengthened.behind(self.rows[first].height, self.rows[last].height, n.d).filter(|_| stiffened),
         }
+    }
+
+    /// All of the column's web in tension and in compression: what a web plate must reach over to add to the panel
+    /// (6.2.6.1(10)), as far as there is a column.
+    pub(in crate::assess::end_plate) fn web_range(&self) -> (Length, Length) {
+        let n = self.n;
+        let half = |i: usize| 0.5 * self.column_stub(i, i, false, n.r_c_most, &mut Working::default()).l_eff_1;
+        let hi = (0..self.rows.len()).map(|i| self.rows[i].height + half(i)).fold(n.beam.h, Length::max);
+        let web = totals::compression_web(n, self.rulebook, self.beta);
+        let b_eff = column_web::effective_width(&mut Working::default(), &web);
+        let lo = 0.5 * n.beam.t_f - 0.5 * b_eff;
+        let top = n.rows.first().zip(n.column_above).map(|(row, above)| row.height + above);
+        let foot = n.rows.last().zip(n.column_below).map(|(row, below)| row.height - below);
+        (foot.map_or(lo, |foot| lo.max(foot)), top.map_or(hi, |top| hi.min(top)))
     }
 
     pub(super) fn column_limits(&self, first: usize, last: usize, limits: &mut Vec<Limit>) {
@@ -135,21 +151,18 @@ impl TensionSide<'_> {
         // A large radius brings the yield lines nearer and leaves less of the web.
         let mut w = Working::default();
         let length = self.column_stub(first, last, false, n.r_c_most, &mut w).l_eff_1.max(Length::ZERO);
-        let mut web = column_web::tension(
-            length,
-            n.column.t_w,
-            n.column_strength.f_y_web,
-            n.column.a_v_z,
-            self.beta,
-            self.gamma_M0(),
-        );
+        let middle = 0.5 * (self.rows[first].height + self.rows[last].height);
+        let range = (middle - 0.5 * length, middle + 0.5 * length);
+        let t_wc = strengthening::in_tension(n, range, &mut w);
+        let A_vc = strengthening::shear_area(n, self.web_range(), self.rulebook, &mut w);
+        let mut web = column_web::tension(length, t_wc, n.column_strength.f_y_web, A_vc, self.beta, self.gamma_M0());
         w.absorb(web.working);
-        for pair in &pairs {
-            let stiffened = stiffeners::tension(&pair.plates(n), web.value, self.gamma_M0());
+        for pair in pairs.iter().filter(|pair| pair.full_depth) {
+            let stiffened = stiffeners::tension(&pair.plates(n), web.value, self.gamma_M0(), self.gamma_M2());
             w.absorb(stiffened.working);
             web.value = stiffened.value;
         }
-        let what = if pairs.is_empty() { "column web" } else { "column web and stiffener" };
+        let what = if !pairs.iter().any(|pair| pair.full_depth) { "column web" } else { "column web and stiffener" };
         limits.push(Limit {
             id: "column-web-in-tension",
             title: format!("{what} in tension, {}", self.named(first, last)),
@@ -187,12 +200,12 @@ impl TensionSide<'_> {
         };
         let value = match (beside_one, [share(first), share(last)].into_iter().flatten().reduce(f64::max)) {
             (Some(pair), Some(most)) => {
-                let support = stiffeners::support(&pair.plates(self.n), most, gamma_M0);
+                let support = stiffeners::support(&pair.plates(self.n), most, gamma_M0, self.gamma_M2());
                 w.absorb(support.working);
                 support.value.max(flange.value)
             }
             _ => pairs.iter().fold(flange.value, |value, pair| {
-                let with = stiffeners::tension(&pair.plates(self.n), value, gamma_M0);
+                let with = stiffeners::tension(&pair.plates(self.n), value, gamma_M0, self.gamma_M2());
                 w.absorb(with.working);
                 with.value
             }),

@@ -103,6 +103,7 @@ impl TensionSide<'_> {
             n: Length::ZERO,
             sum_F_t_Rd: self.bolt_force(first, last, self.n.B_p_plate),
             mode_one: self.mode_one(),
+            backing: None,
         }
     }
 }
