@@ -8,4 +8,5 @@ mod laws;
 mod odd_sizes;
 mod plastic;
 mod safe;
+pub mod strengthened;
 mod strengthening;

@@ -1,6 +1,6 @@
 //! The joint in short: members, bolts, plates, welds, and the detail in lines for a comparison.
 
-use crate::joints::{EndPlateLayout, Joint, MemberAt};
+use crate::joints::{Joint, Layout, MemberAt, Strengthening};
 use crate::origin::Known;
 use crate::review::{BoltsBrief, MemberBrief, PlateBrief, WeldBrief};
 use crate::shop::{Member, Steelwork};
@@ -32,7 +32,7 @@ pub fn bolts(steelwork: &Steelwork, joint: &Joint) -> Option<BoltsBrief> {
         return None;
     }
     let own = || joint.bolts.iter().filter_map(|&i| steelwork.bolts.get(i));
-    let rows = joint.layout.as_ref().map_or(&[][..], |layout| &layout.bolts.rows);
+    let rows = joint.layout.as_ref().map_or(&[][..], |layout| &layout.bolts().rows);
     Some(BoltsBrief {
         count: joint.bolts.len(),
         diameter_mm: common(own().map(|b| value(&b.diameter, |d| d.get()))).flatten(),
@@ -53,7 +53,10 @@ pub fn plates(steelwork: &Steelwork, joint: &Joint) -> Vec<PlateBrief> {
         let (mut width, mut depth) = (size(|p| p.x), size(|p| p.y));
         match &joint.layout {
             Ok(layout) if role == "end-plate" => {
-                (width, depth) = (layout.plate.width.get(), (layout.plate.top - layout.plate.bottom).get());
+                let sides = layout.sides();
+                let laid = sides.iter().map(|side| side.plate).find(|laid| laid.guid == plate.identity.guid);
+                let laid = laid.unwrap_or(layout.side().plate);
+                (width, depth) = (laid.width.get(), (laid.top - laid.bottom).get());
             }
             // Without a frame of the joint the shorter side is the width.
             _ if width > depth => (width, depth) = (depth, width),
@@ -77,11 +80,15 @@ pub fn welds(steelwork: &Steelwork, joint: &Joint) -> Vec<WeldBrief> {
     let brief =
         |role: &str, throat: &Known<Length>| WeldBrief { role: role.to_owned(), throat_mm: value(throat, |a| a.get()) };
     match &joint.layout {
-        Ok(layout) => vec![
-            brief("flange-top", &layout.welds.flange_top),
-            brief("flange-bottom", &layout.welds.flange_bottom),
-            brief("web", &layout.welds.web),
-        ],
+        Ok(layout) => (layout.sides().iter())
+            .flat_map(|side| {
+                [
+                    brief("flange-top", &side.welds.flange_top),
+                    brief("flange-bottom", &side.welds.flange_bottom),
+                    brief("web", &side.welds.web),
+                ]
+            })
+            .collect(),
         Err(_) => (joint.welds.iter())
             .filter_map(|&(index, role)| Some(brief(role, &steelwork.welds.get(index)?.throat)))
             .collect(),
@@ -89,40 +96,52 @@ pub fn welds(steelwork: &Steelwork, joint: &Joint) -> Vec<WeldBrief> {
 }
 
 /// The detail in lines, always the same lines in the same order, so that two details can be laid side by side.
-pub fn lines(layout: &EndPlateLayout) -> Vec<String> {
+pub fn lines(layout: &Layout) -> Vec<String> {
     let or = |text: Option<String>| text.unwrap_or_else(|| "not stated".into());
     let member = |role: &str, at: &MemberAt| {
         let section = or(value(&at.section, |s| s.designation.clone()));
         format!("{role} {section} {}", or(value(&at.grade, |g| g.0.clone())))
     };
-    let plate = &layout.plate;
-    let mut lines = vec![
-        member("column", &layout.column),
-        member("beam", &layout.beam),
-        format!("end plate {:.0} mm {}", plate.thickness.get(), or(value(&plate.grade, |g| g.0.clone()))),
-        format!(
-            "end plate {:.0} mm wide, from {:.0} to {:.0} mm",
+    let mut lines = Vec::new();
+    lines.extend(layout.on_column().map(|layout| member("column", &layout.column)));
+    let sides = layout.sides();
+    let owners: &[&str] = if sides.len() > 1 { &["supported ", "supporting "] } else { &[""] };
+    for (side, of) in sides.iter().zip(owners) {
+        lines.push(member(&format!("{of}beam"), side.beam));
+        let plate = side.plate;
+        lines.push(format!(
+            "{of}end plate {:.0} mm {}",
+            plate.thickness.get(),
+            or(value(&plate.grade, |g| g.0.clone()))
+        ));
+        lines.push(format!(
+            "{of}end plate {:.0} mm wide, from {:.0} to {:.0} mm",
             plate.width.get(),
             plate.bottom.get(),
             plate.top.get()
-        ),
-        format!(
-            "bolts M{} {}",
-            or(value(&layout.bolts.diameter, |d| format!("{:.0}", d.get()))),
-            or(value(&layout.bolts.class, String::clone))
-        ),
-    ];
-    for (i, row) in layout.bolts.rows.iter().enumerate() {
+        ));
+    }
+    let bolts = layout.bolts();
+    lines.push(format!(
+        "bolts M{} {}",
+        or(value(&bolts.diameter, |d| format!("{:.0}", d.get()))),
+        or(value(&bolts.class, String::clone))
+    ));
+    for (i, row) in bolts.rows.iter().enumerate() {
         lines.push(format!("row {} at {:.0} mm, gauge {:.0} mm", i + 1, row.height.get(), row.gauge.get()));
     }
-    for (role, throat) in [
-        ("top flange", &layout.welds.flange_top),
-        ("bottom flange", &layout.welds.flange_bottom),
-        ("web", &layout.welds.web),
-    ] {
-        lines.push(format!("weld at the {role}: throat {}", or(value(throat, |a| format!("{:.1} mm", a.get())))));
+    for (side, of) in sides.iter().zip(owners) {
+        for (role, throat) in [
+            ("top flange", &side.welds.flange_top),
+            ("bottom flange", &side.welds.flange_bottom),
+            ("web", &side.welds.web),
+        ] {
+            let throat = or(value(throat, |a| format!("{:.1} mm", a.get())));
+            lines
+                .push(format!("weld at the {of}{}{role}: throat {throat}", if of.is_empty() { "" } else { "beam's " }));
+        }
     }
-    for stiffener in &layout.stiffeners {
+    for stiffener in layout.on_column().into_iter().flat_map(|layout| &layout.stiffeners) {
         let sides = if stiffener.both_sides { "pair" } else { "one side only" };
         lines.push(format!(
             "stiffener at {:.0} mm: {:.0} mm {}, {sides}",
@@ -131,7 +150,11 @@ pub fn lines(layout: &EndPlateLayout) -> Vec<String> {
             or(value(&stiffener.grade, |g| g.0.clone()))
         ));
     }
-    for plate in &layout.strengthening.web_plates {
+    let Some(Strengthening { web_plates, diagonals, backing }) = layout.on_column().map(|own| &own.strengthening)
+    else {
+        return lines;
+    };
+    for plate in web_plates {
         lines.push(format!(
             "web plate from {:.0} to {:.0} mm: {:.0} mm {}, {:.0} mm wide",
             plate.bottom.get(),
@@ -141,7 +164,7 @@ pub fn lines(layout: &EndPlateLayout) -> Vec<String> {
             plate.width.get()
         ));
     }
-    for diagonal in &layout.strengthening.diagonals {
+    for diagonal in diagonals {
         let sides = if diagonal.both_sides { "pair" } else { "one side only" };
         lines.push(format!(
             "diagonal from {:.0} mm at the joint to {:.0} mm: {:.0} mm {}, {sides}",
@@ -151,7 +174,7 @@ pub fn lines(layout: &EndPlateLayout) -> Vec<String> {
             or(value(&diagonal.grade, |g| g.0.clone()))
         ));
     }
-    for backing in &layout.strengthening.backing {
+    for backing in backing {
         let sides = if backing.both_sides { "pair" } else { "one side only" };
         lines.push(format!(
             "backing plates from {:.0} to {:.0} mm: {:.0} mm {}, {sides}",

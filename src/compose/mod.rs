@@ -11,7 +11,7 @@ use crate::assess::end_plate::{self, Demand, Opposite, Solver};
 use crate::exchange::Exchange;
 use crate::findings::{self, Context};
 use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
-use crate::joints::{EndPlateLayout, Joint, Joints};
+use crate::joints::{Joint, Joints, Layout};
 use crate::origin::{Missing, Problem};
 use crate::review::{Basis, Counts, JointReview, Outcome, Review, Survey};
 use crate::rulebook::{ModeOne, RowForces, Rulebook};
@@ -167,7 +167,7 @@ fn survey(sources: &Sources<'_>) -> Survey {
 /// What was computed for one joint.
 struct Computed {
     detailed: Option<Assessment>,
-    intended: Option<Result<(EndPlateLayout, Assessment), Missing>>,
+    intended: Option<Result<(Layout, Assessment), Missing>>,
 }
 
 impl<'a> Sources<'a> {
@@ -198,9 +198,9 @@ impl<'a> Sources<'a> {
         let cases = scheduled.map_or(&[][..], |s| &s.cases);
         let demands = self.demands(joint, cases);
         let two_sided = joint.opposite.is_some() || joint.opposite_unclear.is_some();
-        let assess = |layout: &EndPlateLayout| end_plate::assess_with(solver, layout, &demands, two_sided);
+        let assess = |layout: &Layout| end_plate::assess_with(solver, layout, &demands, two_sided);
         let intended = self.detail(scheduled).map(|detail| {
-            let meant = end_plate::intended(layout, detail, self.rulebook)?;
+            let meant = end_plate::intended_layout(layout, detail, self.rulebook)?;
             let assessment = assess(&meant);
             Ok((meant, assessment))
         });

@@ -9,7 +9,7 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
-    let (Some(intended), Ok(detailed)) = (&intended.bolt_class, &layout.bolts.class) else { return Vec::new() };
+    let (Some(intended), Ok(detailed)) = (&intended.bolt_class, &layout.bolts().class) else { return Vec::new() };
     if classes(context.rulebook, &detailed.value, intended) != Strength::Higher {
         return Vec::new();
     }

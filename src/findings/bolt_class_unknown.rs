@@ -8,7 +8,7 @@ const ID: &str = "bolt-class-unknown";
 pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rules/findings/bolt-class-unknown.md") };
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let Some(Err(missing)) = context.layout.map(|layout| &layout.bolts.class) else { return Vec::new() };
+    let Some(Err(missing)) = context.layout.map(|layout| &layout.bolts().class) else { return Vec::new() };
     // Their class may well be known; it is not what is missing.
     if missing.what == COUNTERSUNK {
         return Vec::new();

@@ -8,7 +8,7 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 /// A hole whose diameter is unknown only because the bolt's is makes no finding of its own.
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let Some(bolts) = context.layout.map(|layout| &layout.bolts) else { return Vec::new() };
+    let Some(bolts) = context.layout.map(|layout| layout.bolts()) else { return Vec::new() };
     let (what, missing) = match (&bolts.diameter, &bolts.hole) {
         (Err(missing), _) => ("the diameter of the bolts is", missing),
         (Ok(_), Err(missing)) => ("the diameter of the bolts' holes is", missing),

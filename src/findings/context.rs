@@ -2,7 +2,7 @@
 
 use crate::assess::{About, Assessment, Sense, State};
 use crate::intent::{IntendedDetail, ScheduledJoint};
-use crate::joints::{EndPlateLayout, Joint};
+use crate::joints::{Joint, Layout};
 use crate::origin::Place;
 use crate::rulebook::Rulebook;
 use crate::shop::{Identity, Steelwork};
@@ -18,7 +18,7 @@ pub struct Context<'a> {
     /// The joint; `None` if the scheduled joint has no steel, or fits no single joint.
     pub joint: Option<&'a Joint>,
     /// Its layout, where it could be laid out.
-    pub layout: Option<&'a EndPlateLayout>,
+    pub layout: Option<&'a Layout>,
     /// What the schedule requires of it.
     pub scheduled: Option<&'a ScheduledJoint>,
     /// The intended detail.
@@ -49,7 +49,7 @@ impl<'a> Context<'a> {
     }
 
     /// What was detailed and what was intended, where both are there to be compared.
-    pub(super) fn both(&self) -> Option<(&'a EndPlateLayout, &'a IntendedDetail)> {
+    pub(super) fn both(&self) -> Option<(&'a Layout, &'a IntendedDetail)> {
         Some((self.layout?, self.intended?))
     }
 
@@ -61,22 +61,22 @@ impl<'a> Context<'a> {
 
     /// The end plate.
     pub(super) fn plate(&self) -> Parts {
-        self.parts(self.layout.map(|layout| layout.plate.guid.as_str()))
+        self.parts(self.layout.map(|layout| layout.side().plate.guid.as_str()))
     }
 
     /// The supporting member.
     pub(super) fn column(&self) -> Parts {
-        self.parts(self.layout.map(|layout| layout.column.guid.as_str()))
+        self.parts(self.layout.map(|layout| layout.supporting().guid.as_str()))
     }
 
     /// The supported member.
     pub(super) fn beam(&self) -> Parts {
-        self.parts(self.layout.map(|layout| layout.beam.guid.as_str()))
+        self.parts(self.layout.map(|layout| layout.side().beam.guid.as_str()))
     }
 
     /// End plate and both members: all that a resistance stands on, the plate first.
     pub(super) fn whole(&self) -> Parts {
-        let guids = self.layout.map(|l| [&l.plate.guid, &l.beam.guid, &l.column.guid]);
+        let guids = self.layout.map(|l| [&l.side().plate.guid, &l.side().beam.guid, &l.supporting().guid]);
         self.parts(guids.iter().flatten().map(|guid| guid.as_str()))
     }
 

@@ -3,7 +3,7 @@
 use super::compare::less;
 use super::say::mm;
 use super::{Context, Rule};
-use crate::joints::EndPlateLayout;
+use crate::joints::Layout;
 use crate::review::{Finding, Outcome};
 use crate::units::Length;
 
@@ -19,7 +19,7 @@ const P_2_MIN: f64 = 2.4;
 /// sort the shortest is told.
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some(layout) = context.layout else { return Vec::new() };
-    let Ok(hole) = &layout.bolts.hole else { return Vec::new() };
+    let Ok(hole) = &layout.bolts().hole else { return Vec::new() };
     let findings = distances(layout).into_iter().filter_map(|(what, factor, all)| {
         let shortest = all.into_iter().reduce(Length::min)?;
         let least = factor * hole.value;
@@ -37,14 +37,14 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
 }
 
 /// What, its least in hole diameters, all of its sort.
-fn distances(layout: &EndPlateLayout) -> Vec<(&'static str, f64, Vec<Length>)> {
-    let (rows, plate) = (&layout.bolts.rows, &layout.plate);
+fn distances(layout: &Layout) -> Vec<(&'static str, f64, Vec<Length>)> {
+    let (rows, plate) = (&layout.bolts().rows, layout.side().plate);
     let ends = [rows.first().map(|row| plate.top - row.height), rows.last().map(|row| row.height - plate.bottom)];
     let pitches = rows.windows(2).filter_map(|pair| Some(pair.first()?.height - pair.last()?.height));
-    let column_ends = [layout.column_above, layout.column_below];
+    let column_ends = layout.on_column().map(|layout| [layout.column_above, layout.column_below]).into_iter().flatten();
     vec![
         ("the end distance e1 of the bolts in the end plate", E_MIN, ends.into_iter().flatten().collect()),
-        ("the end distance e1 of the bolts in the column", E_MIN, column_ends.into_iter().flatten().collect()),
+        ("the end distance e1 of the bolts in the column", E_MIN, column_ends.flatten().collect()),
         ("the edge distance e2 of the bolts in the end plate", E_MIN, rows.iter().map(|row| row.edge_plate).collect()),
         (
             "the edge distance e2 of the bolts in the column flange",

@@ -12,7 +12,8 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
     let Some(gauge) = intended.gauge else { return Vec::new() };
     let tolerance = context.rulebook.tolerances.position;
-    let gauges = layout.bolts.rows.iter().map(|row| row.gauge).filter(|detailed| differs(*detailed, gauge, tolerance));
+    let gauges =
+        layout.bolts().rows.iter().map(|row| row.gauge).filter(|detailed| differs(*detailed, gauge, tolerance));
     let Some(worst) = gauges.max_by(|a, b| (*a - gauge).abs().get().total_cmp(&(*b - gauge).abs().get())) else {
         return Vec::new();
     };

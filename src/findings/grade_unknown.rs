@@ -12,10 +12,10 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some(layout) = context.layout else { return Vec::new() };
     let stiffeners = if context.carries() == State::Met { Outcome::Comment } else { Outcome::Unproven };
     let mut parts = vec![
-        ("the supporting member", &layout.column.grade, context.column(), Outcome::Unproven),
-        ("the supported member", &layout.beam.grade, context.beam(), Outcome::Unproven),
+        ("the supporting member", &layout.supporting().grade, context.column(), Outcome::Unproven),
+        ("the supported member", &layout.side().beam.grade, context.beam(), Outcome::Unproven),
     ];
-    parts.extend(layout.stiffeners.iter().map(|stiffener| {
+    parts.extend(layout.on_column().into_iter().flat_map(|column| &column.stiffeners).map(|stiffener| {
         let on = context.parts(stiffener.guids.iter().map(String::as_str));
         ("a column stiffener", &stiffener.grade, on, stiffeners)
     }));

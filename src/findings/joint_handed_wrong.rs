@@ -14,11 +14,11 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     vec![match (&intended.rows, intended.plate_top.zip(intended.plate_bottom)) {
         (Some(rows), _) => finding.against(
             format!("rows at {}", heights(rows.iter().copied())),
-            format!("rows at {}", heights(layout.bolts.rows.iter().map(|row| row.height))),
+            format!("rows at {}", heights(layout.bolts().rows.iter().map(|row| row.height))),
         ),
         (None, Some((top, bottom))) => finding.against(
             format!("plate edges at {}", heights([top, bottom])),
-            format!("plate edges at {}", heights([layout.plate.top, layout.plate.bottom])),
+            format!("plate edges at {}", heights([layout.side().plate.top, layout.side().plate.bottom])),
         ),
         (None, None) => finding,
     }]

@@ -9,8 +9,8 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
-    let (Some(intended), Ok(detailed)) = (&intended.plate_grade, &layout.plate.grade) else { return Vec::new() };
-    let strength = grades(context.rulebook, &detailed.value, intended, Some(layout.plate.thickness));
+    let (Some(intended), Ok(detailed)) = (&intended.plate_grade, &layout.side().plate.grade) else { return Vec::new() };
+    let strength = grades(context.rulebook, &detailed.value, intended, Some(layout.side().plate.thickness));
     if !matches!(strength, Strength::Lower | Strength::Unranked) {
         return Vec::new();
     }

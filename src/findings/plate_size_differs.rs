@@ -13,7 +13,7 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 /// is compared: `joint-handed-wrong` tells the rest.
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
-    let (plate, tolerances) = (&layout.plate, &context.rulebook.tolerances);
+    let (plate, tolerances) = (layout.side().plate, &context.rulebook.tolerances);
     let upright = !rows::upside_down(context);
     // What, intended, detailed, tolerance, whether less of it is a smaller plate (else more).
     let sides: [(&str, Option<Length>, Length, Length, bool); 3] = [

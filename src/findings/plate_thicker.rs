@@ -10,7 +10,9 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
-    let (Some(intended), detailed) = (intended.plate_thickness, layout.plate.thickness) else { return Vec::new() };
+    let (Some(intended), detailed) = (intended.plate_thickness, layout.side().plate.thickness) else {
+        return Vec::new();
+    };
     if !more(detailed, intended, context.rulebook.tolerances.size) {
         return Vec::new();
     }

@@ -76,8 +76,8 @@ pub fn match_rows(intended: &[Length], detailed: &[Length], tolerance: Length) -
 pub(super) fn rows_of(context: &Context<'_>) -> Option<(Vec<Length>, Vec<Length>, RowMatch)> {
     let (layout, intended) = context.both()?;
     let intended = top_down(intended.rows.as_ref()?.iter().copied());
-    let detailed = top_down(layout.bolts.rows.iter().map(|row| row.height));
-    let turned = match &layout.beam.section {
+    let detailed = top_down(layout.bolts().rows.iter().map(|row| row.height));
+    let turned = match &layout.side().beam.section {
         Ok(section) if upside_down(context) => turned(&detailed, section.value.h),
         _ => detailed.clone(),
     };
@@ -92,19 +92,19 @@ pub(super) fn rows_of(context: &Context<'_>) -> Option<(Vec<Length>, Vec<Length>
 /// flange, and the mirror image fits better (a plate that merely lost its extension fits neither way better).
 pub(super) fn upside_down(context: &Context<'_>) -> bool {
     let Some((layout, intended)) = context.both() else { return false };
-    let Ok(section) = &layout.beam.section else { return false };
+    let Ok(section) = &layout.side().beam.section else { return false };
     let h = section.value.h;
     let named = intended.supported_section.as_ref().and_then(|name| context.rulebook.section(name));
     let h_intended = named.map_or(h, |named| named.h);
     let tolerance = context.rulebook.tolerances.position;
     if let Some(rows) = &intended.rows {
         let intended = top_down(rows.iter().copied());
-        let detailed = top_down(layout.bolts.rows.iter().map(|row| row.height));
+        let detailed = top_down(layout.bolts().rows.iter().map(|row| row.height));
         return beyond(&intended, h_intended) * beyond(&detailed, h) < 0
             || (!all_at(&intended, &detailed, tolerance) && all_at(&intended, &turned(&detailed, h), tolerance));
     }
     let (Some(top), Some(bottom)) = (intended.plate_top, intended.plate_bottom) else { return false };
-    let plate = &layout.plate;
+    let plate = layout.side().plate;
     let lean_intended = top + bottom - h_intended;
     let lean_detailed = plate.top + plate.bottom - h;
     let apart = |upper: Length, lower: Length| (top - upper).abs() + (bottom - lower).abs();

@@ -13,8 +13,10 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
     let column = (&intended.supporting_section, &intended.supporting_grade);
     let beam = (&intended.supported_section, &intended.supported_grade);
-    let members =
-        [("supporting", &layout.column, column, context.column()), ("supported", &layout.beam, beam, context.beam())];
+    let members = [
+        ("supporting", layout.supporting(), column, context.column()),
+        ("supported", layout.side().beam, beam, context.beam()),
+    ];
     let findings = members.into_iter().flat_map(|(which, member, (section, grade), on)| {
         [
             section.as_ref().and_then(|section| of_section(context, which, member, section, on.clone())),

@@ -8,8 +8,10 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some(layout) = context.layout else { return Vec::new() };
-    let members =
-        [("supporting", &layout.column.section, context.column()), ("supported", &layout.beam.section, context.beam())];
+    let members = [
+        ("supporting", &layout.supporting().section, context.column()),
+        ("supported", &layout.side().beam.section, context.beam()),
+    ];
     let unknown = members.into_iter().filter_map(|(which, section, (elements, place))| {
         let missing = section.as_ref().err()?;
         let message = format!("the section of the {which} member is not known: {}", missing.reason);

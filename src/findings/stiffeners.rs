@@ -20,6 +20,7 @@ pub(super) struct AtFlange<'a> {
 /// nearest counts.
 pub(super) fn at_flanges<'a>(context: &Context<'a>) -> Vec<AtFlange<'a>> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
+    let Some(layout) = layout.on_column() else { return Vec::new() };
     let stated = [("top", &intended.stiffener_top), ("bottom", &intended.stiffener_bottom)];
     let stated = stated.into_iter().filter_map(|(flange, stated)| Some((flange, stated.as_ref()?)));
     let level = |flange: &'static str, intended| {

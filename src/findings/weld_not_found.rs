@@ -8,7 +8,7 @@ const ID: &str = "weld-not-found";
 pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rules/findings/weld-not-found.md") };
 
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let Some(welds) = context.layout.map(|layout| &layout.welds) else { return Vec::new() };
+    let Some(welds) = context.layout.map(|layout| layout.side().welds) else { return Vec::new() };
     let places = [("top flange", &welds.flange_top), ("bottom flange", &welds.flange_bottom), ("web", &welds.web)];
     let unknown: Vec<_> = places.into_iter().filter_map(|(place, weld)| Some((place, weld.as_ref().err()?))).collect();
     let Some((_, first)) = unknown.first() else { return Vec::new() };

@@ -14,15 +14,21 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some((layout, intended)) = context.both() else { return Vec::new() };
     let sense = context.leading_sense();
     let places = [
-        ("top flange", "flange-top", &layout.welds.flange_top, intended.flange_weld, sense != Some(Sense::Sagging)),
+        (
+            "top flange",
+            "flange-top",
+            &layout.side().welds.flange_top,
+            intended.flange_weld,
+            sense != Some(Sense::Sagging),
+        ),
         (
             "bottom flange",
             "flange-bottom",
-            &layout.welds.flange_bottom,
+            &layout.side().welds.flange_bottom,
             intended.flange_weld,
             sense != Some(Sense::Hogging),
         ),
-        ("web", "web", &layout.welds.web, intended.web_weld, true),
+        ("web", "web", &layout.side().welds.web, intended.web_weld, true),
     ];
     let thinner = places.into_iter().filter_map(|(place, role, detailed, intended, compared)| {
         let (intended, detailed) = (intended?, detailed.as_ref().ok()?.value);

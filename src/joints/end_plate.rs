@@ -6,7 +6,7 @@ use super::bolts;
 use super::boxes::{Ply, Slab};
 use super::draft::{Draft, Seat};
 use super::frame::{Frame, Span, are_parallel, corners};
-use super::layout::{EndPlate, EndPlateLayout, MemberAt, Welds};
+use super::layout::{EndPlate, EndPlateLayout, Layout, MemberAt, Welds};
 use super::scene::Scene;
 use super::stiffeners::{self, OnColumn};
 use super::touch::{EndOn, Pass};
@@ -59,7 +59,8 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
     draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
     draft.joint.layout = assessable(scene, case, &outline, &bolted)
         .and_then(|()| every_bolt_passes_flange(scene, draft, case))
-        .and_then(|()| laid_out(scene, draft, case, &outline, on_column));
+        .and_then(|()| laid_out(scene, draft, case, &outline, on_column))
+        .map(Layout::EndPlate);
 }
 
 /// # Errors

@@ -1,7 +1,11 @@
-//! An end-plate joint in its own frame: everything that its assessment needs, nothing else.
+//! A joint in its own frame: everything that its assessment needs, nothing else.
 //!
 //! Heights are measured up from the soffit of the supported member's lower flange, in the direction of the member's
 //! depth that points to the sky; sides are measured across, from the supported member's web.
+
+mod strengthening;
+
+pub use strengthening::{Backing, Diagonal, EdgeWeld, Strengthening, WebPlate};
 
 use crate::origin::Known;
 use crate::rulebook::{Grade, Section};
@@ -46,7 +50,7 @@ pub struct BoltRow {
     pub gauge: Length,
     /// e: from the bolt's axis to the plate's nearer side edge.
     pub edge_plate: Length,
-    /// e: from the bolt's axis to the column flange's nearer side edge.
+    /// e: from the bolt's axis to the nearer side edge of the column's flange, or of a splice's other end plate.
     pub edge_column: Length,
 }
 
@@ -97,94 +101,7 @@ pub struct Stiffener {
     pub weld: Known<Length>,
 }
 
-/// A supplementary plate flat on one side of the column's web.
-#[derive(Clone, Debug)]
-pub struct WebPlate {
-    /// GlobalId.
-    pub guid: String,
-    /// Which side of the web: the sign of the column's own axis across.
-    pub positive: bool,
-    /// t_s.
-    pub thickness: Length,
-    /// b_s: along the column's depth.
-    pub width: Length,
-    /// How far its nearer long edge lies from the middle of the column's depth: half of b_s if it is centred.
-    pub half_width: Length,
-    /// Height of its lower edge.
-    pub bottom: Length,
-    /// Height of its upper edge.
-    pub top: Length,
-    /// Steel grade.
-    pub grade: Known<Grade>,
-    /// What holds its two long edges.
-    pub weld: Known<EdgeWeld>,
-}
-
-/// A weld along the edge of a plate.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum EdgeWeld {
-    /// Fillets, and their throat a.
-    Fillet(Length),
-    /// Full-penetration butt welds.
-    Butt,
-}
-
-/// A diagonal stiffener of the column's web: a pair, one plate on each side of the web.
-#[derive(Clone, Debug)]
-pub struct Diagonal {
-    /// GlobalIds of its plates.
-    pub guids: Vec<String>,
-    /// Height at which its middle plane meets the flange with the joint.
-    pub near: Length,
-    /// The same at the column's other flange.
-    pub far: Length,
-    /// t: the thinner of the pair.
-    pub thickness: Length,
-    /// b: the outstand from the web of the narrower of the pair.
-    pub outstand: Length,
-    /// Whether there is a plate on both sides of the web.
-    pub both_sides: bool,
-    /// Whether it reaches from flange to flange (within the touch tolerance).
-    pub full_depth: bool,
-    /// Steel grade.
-    pub grade: Known<Grade>,
-    /// Throat of its fillets.
-    pub weld: Known<Length>,
-}
-
-/// Backing plates behind the column's flange, one on each side of the web, under the same bolts.
-#[derive(Clone, Debug)]
-pub struct Backing {
-    /// GlobalIds of its plates.
-    pub guids: Vec<String>,
-    /// t_bp: the thinner of the two.
-    pub thickness: Length,
-    /// Height of the lower edge of the higher-ending one.
-    pub bottom: Length,
-    /// Height of the upper edge of the lower-ending one.
-    pub top: Length,
-    /// From the web's face to its inner edge, the larger of the two.
-    pub from_web: Length,
-    /// How far it stops short of the flange's edge, the larger of the two; negative beyond it.
-    pub short_of_edge: Length,
-    /// Whether there is a plate on both sides of the web.
-    pub both_sides: bool,
-    /// Steel grade.
-    pub grade: Known<Grade>,
-}
-
-/// What strengthens the column at the joint besides transverse stiffeners.
-#[derive(Clone, Debug, Default)]
-pub struct Strengthening {
-    /// Supplementary web plates, in the order of their lower edges.
-    pub web_plates: Vec<WebPlate>,
-    /// Diagonal stiffeners from the top down.
-    pub diagonals: Vec<Diagonal>,
-    /// Backing plates from the top down.
-    pub backing: Vec<Backing>,
-}
-
-/// The joint in its own frame.
+/// An end-plate joint on a column's flange.
 #[derive(Clone, Debug)]
 pub struct EndPlateLayout {
     /// The column.
@@ -207,4 +124,149 @@ pub struct EndPlateLayout {
     pub column_below: Option<Length>,
     /// Parts at the column here that are none of these, so that no check can credit them: one sentence each.
     pub not_credited: Vec<String>,
+}
+
+/// One half of an end-plate splice.
+#[derive(Clone, Debug)]
+pub struct Half {
+    /// The beam.
+    pub beam: MemberAt,
+    /// Height of its lower flange's soffit: 0 for the supported member, whose soffit heights are measured from.
+    pub soffit: Length,
+    /// Its end plate.
+    pub plate: EndPlate,
+    /// Its welds.
+    pub welds: Welds,
+}
+
+/// Two beams' end plates bolted to each other.
+#[derive(Clone, Debug)]
+pub struct SpliceLayout {
+    /// The half of the supported member.
+    pub supported: Half,
+    /// The other half; a row's `edge_column` is that to its plate's edge.
+    pub supporting: Half,
+    /// The bolts.
+    pub bolts: Bolts,
+}
+
+/// A joint of a kind that is assessed, in its own frame.
+#[derive(Clone, Debug)]
+#[allow(clippy::large_enum_variant, reason = "one a joint")]
+pub enum Layout {
+    /// A beam's end plate on a column's flange.
+    EndPlate(EndPlateLayout),
+    /// Two beams' end plates on each other.
+    Splice(SpliceLayout),
+}
+
+/// A beam with its end plate, wherever the plate is bolted to.
+#[derive(Clone, Copy, Debug)]
+pub struct PlateSide<'a> {
+    /// The beam.
+    pub beam: &'a MemberAt,
+    /// Height of its lower flange's soffit.
+    pub soffit: Length,
+    /// Its end plate.
+    pub plate: &'a EndPlate,
+    /// Its welds.
+    pub welds: &'a Welds,
+}
+
+/// What an end plate is bolted to.
+#[derive(Clone, Copy, Debug)]
+pub enum Support<'a> {
+    /// The flange of a column.
+    Column(&'a EndPlateLayout),
+    /// Another end plate.
+    Plate(PlateSide<'a>),
+}
+
+/// An end-plate joint of either kind as its assessment takes it.
+#[derive(Clone, Copy, Debug)]
+pub struct BoltedPlate<'a> {
+    /// The supported member's side.
+    pub side: PlateSide<'a>,
+    /// The other side.
+    pub support: Support<'a>,
+    /// The bolts between them.
+    pub bolts: &'a Bolts,
+}
+
+impl Half {
+    /// The half as one side of its joint.
+    pub fn side(&self) -> PlateSide<'_> {
+        PlateSide { beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
+    }
+}
+
+impl EndPlateLayout {
+    /// The beam's side.
+    pub fn side(&self) -> PlateSide<'_> {
+        PlateSide { beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
+    }
+}
+
+impl Layout {
+    /// The supported member's side.
+    pub fn side(&self) -> PlateSide<'_> {
+        match self {
+            Self::EndPlate(layout) => layout.side(),
+            Self::Splice(layout) => layout.supported.side(),
+        }
+    }
+
+    /// Every end plate with its beam: the supported member's first.
+    pub fn sides(&self) -> Vec<PlateSide<'_>> {
+        match self {
+            Self::EndPlate(layout) => vec![layout.side()],
+            Self::Splice(layout) => vec![layout.supported.side(), layout.supporting.side()],
+        }
+    }
+
+    /// The bolts.
+    pub fn bolts(&self) -> &Bolts {
+        match self {
+            Self::EndPlate(layout) => &layout.bolts,
+            Self::Splice(layout) => &layout.bolts,
+        }
+    }
+
+    /// The supporting member.
+    pub fn supporting(&self) -> &MemberAt {
+        match self {
+            Self::EndPlate(layout) => &layout.column,
+            Self::Splice(layout) => &layout.supporting.beam,
+        }
+    }
+
+    /// The joint on a column's flange, if it is one.
+    pub fn on_column(&self) -> Option<&EndPlateLayout> {
+        match self {
+            Self::EndPlate(layout) => Some(layout),
+            Self::Splice(_) => None,
+        }
+    }
+}
+
+impl<'a> From<&'a EndPlateLayout> for BoltedPlate<'a> {
+    fn from(layout: &'a EndPlateLayout) -> Self {
+        Self { side: layout.side(), support: Support::Column(layout), bolts: &layout.bolts }
+    }
+}
+
+impl<'a> From<&'a SpliceLayout> for BoltedPlate<'a> {
+    fn from(layout: &'a SpliceLayout) -> Self {
+        let support = Support::Plate(layout.supporting.side());
+        Self { side: layout.supported.side(), support, bolts: &layout.bolts }
+    }
+}
+
+impl<'a> From<&'a Layout> for BoltedPlate<'a> {
+    fn from(layout: &'a Layout) -> Self {
+        match layout {
+            Layout::EndPlate(layout) => layout.into(),
+            Layout::Splice(layout) => layout.into(),
+        }
+    }
 }

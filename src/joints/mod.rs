@@ -23,8 +23,8 @@ mod touch;
 mod welds;
 
 pub use layout::{
-    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, MemberAt, Stiffener, Strengthening,
-    WebPlate, Welds,
+    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, Half, Layout, MemberAt,
+    PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds,
 };
 
 use petgraph::graphmap::UnGraphMap;
@@ -113,8 +113,8 @@ pub struct Joint {
     pub plates: Vec<(usize, &'static str)>,
     /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "other".
     pub welds: Vec<(usize, &'static str)>,
-    /// The end-plate joint in its own frame, or why it could not be laid out.
-    pub layout: Result<EndPlateLayout, String>,
+    /// The joint in its own frame, or why it could not be laid out.
+    pub layout: Result<Layout, String>,
     /// Index of the joint on the opposite flange of the same column at the same level, if there is one.
     pub opposite: Option<usize>,
     /// Why the moment on the column's other flange can't be told although something stands there; one clause.

@@ -5,7 +5,7 @@ use std::sync::Arc;
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
 use faying::intent::{IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Joint, Kind, MemberAt, Stiffener, Welds};
+use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
 use faying::rulebook::{Grade, Rulebook, Section};
@@ -99,7 +99,10 @@ impl Bench {
     }
 
     pub fn layout(&mut self) -> &mut EndPlateLayout {
-        self.joint().layout.as_mut().expect("a layout")
+        match self.joint().layout.as_mut().expect("a layout") {
+            Layout::EndPlate(layout) => layout,
+            other => panic!("{other:?}"),
+        }
     }
 
     pub fn intended(&mut self) -> &mut IntendedDetail {
@@ -258,7 +261,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
         bolts: vec![0, 1],
         plates: vec![(0, "end-plate"), (1, "stiffener")],
         welds: vec![(0, "flange-top"), (1, "web")],
-        layout: Ok(layout),
+        layout: Ok(Layout::EndPlate(layout)),
         opposite: None,
         opposite_unclear: None,
         disagreements: Vec::new(),

@@ -5,7 +5,7 @@ use faying::shop::{Part, Steelwork};
 use glam::DVec3;
 
 use super::build::*;
-use super::layouts::{find, only};
+use super::layouts::{find, on_column, only};
 
 fn marks(steel: &Steelwork) -> Vec<String> {
     find(steel).joints.into_iter().map(|joint| joint.mark).collect()
@@ -147,6 +147,6 @@ fn a_weld_without_a_place_is_placed_by_its_name_and_says_so() {
     steel.welds[0].identity.name = "Flange top".into();
     steel.told.push(told("T1", &[Part::Member(0), Part::Member(1)], &[Part::Plate(0), Part::Weld(0)]));
     let joint = only(&steel);
-    assert_eq!(length(&joint.layout.unwrap().welds.flange_top), Some(7.0));
+    assert_eq!(length(&on_column(&joint).welds.flange_top), Some(7.0));
     assert_eq!(joint.disagreements, ["a weld has no place: its name alone makes it \"flange-top\""]);
 }

@@ -27,7 +27,7 @@ fn a_web_plate_with_its_fillets() {
     let steel = web_plate(Some(7.0));
     let joint = only(&steel);
     assert_eq!(joint.plates.iter().filter(|(_, role)| *role == "web-plate").count(), 1);
-    let layout = joint.layout.unwrap();
+    let layout = layout(&steel);
     let [found] = &layout.strengthening.web_plates[..] else { panic!("{:?}", layout.strengthening) };
     for (size, expected) in [
         (found.thickness, 10.0),
@@ -115,7 +115,7 @@ fn diagonals_by_the_heights_at_which_they_meet_the_flanges() {
         let steel = moved(steel, degrees, DVec3::new(5e4, -2e4, 100.0));
         let joint = only(&steel);
         assert_eq!(joint.plates.iter().filter(|(_, role)| *role == "diagonal").count(), 3);
-        let layout = joint.layout.unwrap();
+        let layout = layout(&steel);
         let [n, one] = &layout.strengthening.diagonals[..] else { panic!("{:?}", layout.strengthening) };
         for (height, expected) in [(n.near, 400.0), (n.far, 6.4), (one.near, 6.4), (one.far, 203.0)] {
             close(height.get(), expected);
@@ -159,7 +159,7 @@ fn backing_plates_lie_behind_the_flange_under_the_bolts() {
     steel.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 10.0);
     let joint = only(&steel);
     assert_eq!(joint.plates.iter().filter(|(_, role)| *role == "backing-plate").count(), 2);
-    let layout = joint.layout.unwrap();
+    let layout = layout(&steel);
     let [backing] = &layout.strengthening.backing[..] else { panic!("{:?}", layout.strengthening) };
     for (size, expected) in [
         (backing.thickness, 10.0),

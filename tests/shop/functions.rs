@@ -201,16 +201,17 @@ fn a_joint_is_the_same_in_whatever_way_it_is_written() {
             assert_eq!(found.joints.len(), 1);
             let layout = found.joints[0].layout.as_ref().unwrap_or_else(|why| panic!("{why}"));
             // Places and identities differ with the way of writing; numbers must not.
-            let rows: Vec<i64> = layout.bolts.rows.iter().map(|row| (row.height.get() * 1e3).round() as i64).collect();
+            let rows: Vec<i64> =
+                layout.bolts().rows.iter().map(|row| (row.height.get() * 1e3).round() as i64).collect();
             let numbers = format!(
                 "{:?} {:?} {:?} {:.3} {:.3} {:.3} {:.3} {rows:?}",
                 found.joints[0].kind,
-                layout.column.section.as_ref().map(|s| s.value.designation.clone()),
-                layout.beam.section.as_ref().map(|s| s.value.designation.clone()),
-                layout.plate.thickness.get(),
-                layout.plate.width.get(),
-                layout.plate.bottom.get(),
-                layout.plate.top.get(),
+                layout.supporting().section.as_ref().map(|s| s.value.designation.clone()),
+                layout.side().beam.section.as_ref().map(|s| s.value.designation.clone()),
+                layout.side().plate.thickness.get(),
+                layout.side().plate.width.get(),
+                layout.side().plate.bottom.get(),
+                layout.side().plate.top.get(),
             );
             assert_eq!(first.get_or_insert_with(|| numbers.clone()), &numbers);
         }

@@ -1,12 +1,39 @@
 //! The intended detail as a layout: what the schedule states, on the joint as detailed for everything it does not state.
 
 use crate::intent::{IntendedDetail, IntendedStiffener};
-use crate::joints::{BoltRow, EndPlateLayout, MemberAt, Stiffener};
+use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Layout, MemberAt, SpliceLayout, Stiffener, Welds};
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook};
 use crate::units::Length;
 
-/// Lays the intended detail over the joint as detailed.
+/// Lays the intended detail over a joint of any kind as detailed.
+///
+/// # Errors
+/// [`Missing`] where the schedule names a section, grade or stiffener that can't be resolved.
+pub fn intended_layout(layout: &Layout, detail: &IntendedDetail, rulebook: &Rulebook) -> Result<Layout, Missing> {
+    match layout {
+        Layout::EndPlate(layout) => intended(layout, detail, rulebook).map(Layout::EndPlate),
+        Layout::Splice(layout) => splice(layout, detail, rulebook).map(Layout::Splice),
+    }
+}
+
+/// The same for an end-plate splice: what is stated of plate and welds is meant for both halves.
+fn splice(layout: &SpliceLayout, detail: &IntendedDetail, rulebook: &Rulebook) -> Result<SpliceLayout, Missing> {
+    let stated = Stated { detail, rulebook };
+    let mut meant = layout.clone();
+    stated.member(&mut meant.supporting.beam, &detail.supporting_section, &detail.supporting_grade)?;
+    stated.member(&mut meant.supported.beam, &detail.supported_section, &detail.supported_grade)?;
+    for half in [&mut meant.supported, &mut meant.supporting] {
+        stated.plate(&mut half.plate)?;
+        stated.welds(&mut half.welds);
+    }
+    stated.bolts(&mut meant.bolts)?;
+    let width = meant.supporting.plate.width;
+    stated.rows(&mut meant.bolts, meant.supported.plate.width, detail.plate_width.is_some(), Some(width));
+    Ok(meant)
+}
+
+/// Lays the intended detail over an end-plate joint as detailed.
 ///
 /// # Errors
 /// [`Missing`] where the schedule names a section, grade or stiffener that can't be resolved.
@@ -15,60 +42,23 @@ pub fn intended(
     detail: &IntendedDetail,
     rulebook: &Rulebook,
 ) -> Result<EndPlateLayout, Missing> {
-    let by = |what: &str| Origin::Modelled { by: format!("{what} of detail {}", detail.name), at: detail.at.clone() };
-    let grade = |what: &str, text: &str| -> Result<Known<Grade>, Missing> {
-        match rulebook.grade(text) {
-            Some(grade) => Ok(Ok(Datum::new(grade, by(what)))),
-            None => Err(missing(what, format!("'{text}' is no grade of the steel table"), detail)),
-        }
-    };
+    let stated = Stated { detail, rulebook };
     let mut meant = layout.clone();
-    let member = |at: &mut MemberAt, section: &Option<String>, text: &Option<String>| -> Result<(), Missing> {
-        if let Some(name) = section {
-            let found = rulebook
-                .section(name)
-                .ok_or_else(|| missing("intended section", format!("'{name}' is in no section table"), detail))?;
-            at.section = Ok(Datum::new(found.clone(), by("section")));
-        }
-        if let Some(text) = text {
-            at.grade = grade("intended grade", text)?;
-        }
-        Ok(())
+    stated.member(&mut meant.column, &detail.supporting_section, &detail.supporting_grade)?;
+    stated.member(&mut meant.beam, &detail.supported_section, &detail.supported_grade)?;
+    stated.plate(&mut meant.plate)?;
+    stated.bolts(&mut meant.bolts)?;
+    let width = meant.column.section.as_ref().ok().map(|section| section.value.b);
+    stated.rows(&mut meant.bolts, meant.plate.width, detail.supporting_section.is_some(), width);
+    let (own, rows) = (&layout.bolts.rows, &meant.bolts.rows);
+    let moved = |a: Option<&BoltRow>, b: Option<&BoltRow>| match (a, b) {
+        (Some(own), Some(meant)) => meant.height - own.height,
+        _ => Length::ZERO,
     };
-    member(&mut meant.column, &detail.supporting_section, &detail.supporting_grade)?;
-    member(&mut meant.beam, &detail.supported_section, &detail.supported_grade)?;
-
-    let plate = &mut meant.plate;
-    plate.thickness = detail.plate_thickness.unwrap_or(plate.thickness);
-    plate.width = detail.plate_width.unwrap_or(plate.width);
-    plate.top = detail.plate_top.unwrap_or(plate.top);
-    plate.bottom = detail.plate_bottom.unwrap_or(plate.bottom);
-    if let Some(text) = &detail.plate_grade {
-        plate.grade = grade("intended plate grade", text)?;
-    }
-
-    if let Some(d) = detail.bolt_diameter {
-        meant.bolts.diameter = Ok(Datum::new(d, by("bolt size")));
-        let as_detailed = layout.bolts.diameter.as_ref().is_ok_and(|own| own.value == d);
-        if !as_detailed {
-            let size = rulebook
-                .bolt_size(d)
-                .ok_or_else(|| missing("intended bolt size", format!("no table has a bolt of {d}"), detail))?;
-            meant.bolts.hole = Ok(Datum::new(size.d_0, Origin::Assumed("normal round hole, EN 1090-2".into())));
-        }
-    }
-    if let Some(class) = &detail.bolt_class {
-        meant.bolts.class = Ok(Datum::new(class.clone(), by("bolt class")));
-    }
-    rows(&mut meant, layout, detail);
-
-    let weld = |own: &Known<Length>, throat: Option<Length>| match throat {
-        Some(throat) => Ok(Datum::new(throat, by("weld throat"))),
-        None => own.clone(),
-    };
-    meant.welds.flange_top = weld(&layout.welds.flange_top, detail.flange_weld);
-    meant.welds.flange_bottom = weld(&layout.welds.flange_bottom, detail.flange_weld);
-    meant.welds.web = weld(&layout.welds.web, detail.web_weld);
+    let (up, down) = (moved(own.first(), rows.first()), moved(own.last(), rows.last()));
+    meant.column_above = layout.column_above.map(|above| above - up);
+    meant.column_below = layout.column_below.map(|below| below + down);
+    stated.welds(&mut meant.welds);
 
     if let (Ok(beam), Ok(column)) = (&meant.beam.section, &meant.column.section) {
         let (h, t_f) = (beam.value.h, beam.value.t_f);
@@ -96,39 +86,103 @@ pub fn intended(
     Ok(meant)
 }
 
-/// Rows by intended heights and gauge; edge distances follow from the plate's and the flange's width.
-fn rows(meant: &mut EndPlateLayout, layout: &EndPlateLayout, detail: &IntendedDetail) {
-    let Some(first) = layout.bolts.rows.first() else { return };
-    let heights: Vec<Length> =
-        detail.rows.clone().unwrap_or_else(|| layout.bolts.rows.iter().map(|row| row.height).collect());
-    let moved = heights.first().map_or(Length::ZERO, |top| *top - first.height);
-    let lowered = match (heights.last(), layout.bolts.rows.last()) {
-        (Some(lowest), Some(own)) => *lowest - own.height,
-        _ => Length::ZERO,
-    };
-    let width = match &meant.column.section {
-        Ok(section) => Some(section.value.b),
-        Err(_) => None,
-    };
-    meant.bolts.rows = (heights.iter().enumerate())
-        .map(|(i, &height)| {
-            let own = layout.bolts.rows.get(i).unwrap_or(first);
+/// What the detail states, laid over the parts one by one.
+struct Stated<'a> {
+    detail: &'a IntendedDetail,
+    rulebook: &'a Rulebook,
+}
+
+impl Stated<'_> {
+    fn by(&self, what: &str) -> Origin {
+        Origin::Modelled { by: format!("{what} of detail {}", self.detail.name), at: self.detail.at.clone() }
+    }
+
+    fn grade(&self, what: &str, text: &str) -> Result<Known<Grade>, Missing> {
+        match self.rulebook.grade(text) {
+            Some(grade) => Ok(Ok(Datum::new(grade, self.by(what)))),
+            None => Err(missing(what, format!("'{text}' is no grade of the steel table"), self.detail)),
+        }
+    }
+
+    fn member(&self, at: &mut MemberAt, section: &Option<String>, grade: &Option<String>) -> Result<(), Missing> {
+        if let Some(name) = section {
+            let found = self
+                .rulebook
+                .section(name)
+                .ok_or_else(|| missing("intended section", format!("'{name}' is in no section table"), self.detail))?;
+            at.section = Ok(Datum::new(found.clone(), self.by("section")));
+        }
+        if let Some(text) = grade {
+            at.grade = self.grade("intended grade", text)?;
+        }
+        Ok(())
+    }
+
+    fn plate(&self, plate: &mut EndPlate) -> Result<(), Missing> {
+        let detail = self.detail;
+        plate.thickness = detail.plate_thickness.unwrap_or(plate.thickness);
+        plate.width = detail.plate_width.unwrap_or(plate.width);
+        plate.top = detail.plate_top.unwrap_or(plate.top);
+        plate.bottom = detail.plate_bottom.unwrap_or(plate.bottom);
+        if let Some(text) = &detail.plate_grade {
+            plate.grade = self.grade("intended plate grade", text)?;
+        }
+        Ok(())
+    }
+
+    fn bolts(&self, bolts: &mut Bolts) -> Result<(), Missing> {
+        if let Some(d) = self.detail.bolt_diameter {
+            let as_detailed = bolts.diameter.as_ref().is_ok_and(|own| own.value == d);
+            bolts.diameter = Ok(Datum::new(d, self.by("bolt size")));
+            if !as_detailed {
+                let size = self
+                    .rulebook
+                    .bolt_size(d)
+                    .ok_or_else(|| missing("intended bolt size", format!("no table has a bolt of {d}"), self.detail))?;
+                bolts.hole = Ok(Datum::new(size.d_0, Origin::Assumed("normal round hole, EN 1090-2".into())));
+            }
+        }
+        if let Some(class) = &self.detail.bolt_class {
+            bolts.class = Ok(Datum::new(class.clone(), self.by("bolt class")));
+        }
+        Ok(())
+    }
+
+    fn welds(&self, welds: &mut Welds) {
+        let by = || self.by("weld throat");
+        let lay = |own: &mut Known<Length>, throat: Option<Length>| {
+            if let Some(throat) = throat {
+                *own = Ok(Datum::new(throat, by()));
+            }
+        };
+        lay(&mut welds.flange_top, self.detail.flange_weld);
+        lay(&mut welds.flange_bottom, self.detail.flange_weld);
+        lay(&mut welds.web, self.detail.web_weld);
+    }
+
+    /// Rows by intended heights and gauge; edge distances follow from the plate's width and that of what it is bolted to,
+    /// where one of them or the gauge is stated.
+    fn rows(&self, bolts: &mut Bolts, plate: Length, other_width_stated: bool, support: Option<Length>) {
+        let Some(first) = bolts.rows.first().cloned() else { return };
+        let detail = self.detail;
+        let heights: Vec<Length> =
+            detail.rows.clone().unwrap_or_else(|| bolts.rows.iter().map(|row| row.height).collect());
+        let unchanged = detail.gauge.is_none() && detail.plate_width.is_none() && !other_width_stated;
+        let rows = heights.iter().enumerate().map(|(i, &height)| {
+            let own = bolts.rows.get(i).unwrap_or(&first);
             let gauge = detail.gauge.unwrap_or(own.gauge);
-            let unchanged =
-                detail.gauge.is_none() && detail.plate_width.is_none() && detail.supporting_section.is_none();
             BoltRow {
                 height,
                 gauge,
-                edge_plate: if unchanged { own.edge_plate } else { 0.5 * (meant.plate.width - gauge) },
-                edge_column: match width {
+                edge_plate: if unchanged { own.edge_plate } else { 0.5 * (plate - gauge) },
+                edge_column: match support {
                     Some(b) if !unchanged => 0.5 * (b - gauge),
                     _ => own.edge_column,
                 },
             }
-        })
-        .collect();
-    meant.column_above = layout.column_above.map(|above| above - moved);
-    meant.column_below = layout.column_below.map(|below| below + lowered);
+        });
+        bolts.rows = rows.collect();
+    }
 }
 
 #[allow(clippy::too_many_arguments)]

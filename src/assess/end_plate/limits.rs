@@ -4,7 +4,7 @@
 mod column;
 mod plate;
 
-use super::numbers::{Numbers, Row};
+use super::numbers::{Numbers, PlateSide, Row, Which};
 use crate::eurocode::effective_length::EffectiveLength;
 use crate::eurocode::t_stub::{ModeOne, TStub, t_stub};
 use crate::eurocode::{Resistance, alpha};
@@ -19,6 +19,8 @@ pub struct Limit {
     pub id: &'static str,
     /// "end plate in bending, rows 2-3 (mode 2)".
     pub title: String,
+    /// Which side's end plate or beam it is about; `None` for the column.
+    pub of: Option<Which>,
     /// Clause.
     pub clause: &'static str,
     /// Index of the first tension row, from the tension side.
@@ -48,6 +50,13 @@ pub struct TensionSide<'a> {
     beta: f64,
     /// The tension rows from the tension side.
     pub rows: Vec<Row>,
+    /// Where they stand on each end plate.
+    plates: Vec<PlateRows<'a>>,
+}
+
+/// Where the tension rows stand on one end plate.
+struct PlateRows<'a> {
+    side: &'a PlateSide,
     places: Vec<OnPlate>,
 }
 
@@ -57,38 +66,32 @@ impl<'a> TensionSide<'a> {
     /// # Errors
     /// Why this arrangement of rows has no rule in the standard.
     pub fn new(n: &'a Numbers, rulebook: &'a Rulebook, beta: f64) -> Result<Self, String> {
-        let least = rulebook.settings.shear_only_below * n.beam.h;
-        let rows: Vec<Row> = n.rows.iter().filter(|row| lever_arm(n, row) >= least).copied().collect();
-        let flange_soffit = n.beam.h - n.beam.t_f;
-        let mut places = Vec::new();
-        for row in &rows {
-            places.push(if row.height > n.beam.h {
-                if places.contains(&OnPlate::Outside) {
-                    return Err("more than one row beyond the tension flange has no rule in Table 6.6".into());
-                }
-                OnPlate::Outside
-            } else if !(row.height < flange_soffit) {
-                return Err(format!("row {} lies in the beam's flange", row.number));
-            } else if places.iter().any(|p| *p != OnPlate::Outside) {
-                OnPlate::Other
-            } else {
-                OnPlate::BelowFlange
-            });
+        let deepest = n.sides().map(|side| side.beam.h).fold(Length::ZERO, Length::max);
+        let least = rulebook.settings.shear_only_below * deepest;
+        let rows: Vec<Row> = n.rows.iter().filter(|row| n.lever_arm(row) >= least).copied().collect();
+        let mut plates = Vec::new();
+        for side in n.sides() {
+            plates.push(PlateRows { side, places: places(side, &rows)? });
         }
-        let side = Self { n, rulebook, beta, rows, places };
+        let side = Self { n, rulebook, beta, rows, plates };
         for (i, row) in side.rows.iter().enumerate() {
-            let distances = [
-                ("m of the column flange", side.m_column(row)),
-                ("e of the column flange", row.e_column),
-                ("e of the end plate", row.e_plate),
-            ]
-            .into_iter()
-            .chain(match side.places[i] {
-                OnPlate::Outside => vec![("m_x", side.m_x(row)), ("e_x", n.plate_top - row.height)],
-                OnPlate::BelowFlange => vec![("m", side.m_plate(row)), ("m_2", side.m_2_plate(row))],
-                OnPlate::Other => vec![("m", side.m_plate(row))],
-            })
-            .chain(side.next_to_stiffener(i).map(|(m_2, _)| ("m_2 beside the stiffener", m_2)));
+            let mut distances = Vec::new();
+            if let Some(column) = n.column() {
+                distances.push(("m of the column flange", side.m_column(column, row)));
+                distances.push(("e of the column flange", row.e_support));
+                let beside = side.next_to_stiffener(column, i);
+                distances.extend(beside.map(|(m_2, _)| ("m_2 beside the stiffener", m_2)));
+            }
+            for plate in &side.plates {
+                distances.push(("e of the end plate", row.edge(plate.side)));
+                match plate.places[i] {
+                    OnPlate::Outside => {
+                        distances.extend([("m_x", plate.m_x(row)), ("e_x", plate.side.top - row.height)])
+                    }
+                    OnPlate::BelowFlange => distances.extend([("m", plate.m(row)), ("m_2", plate.m_2(row))]),
+                    OnPlate::Other => distances.push(("m", plate.m(row))),
+                }
+            }
             for (what, value) in distances {
                 if !(value > Length::ZERO) {
                     return Err(format!("row {}: {what} is {value}, there is no room for a T-stub", row.number));
@@ -103,8 +106,12 @@ impl<'a> TensionSide<'a> {
         let mut limits = Vec::new();
         for last in 0..self.rows.len() {
             for first in (0..=last).rev() {
-                self.column_limits(first, last, &mut limits);
-                self.plate_limits(first, last, &mut limits);
+                if let Some(column) = self.n.column() {
+                    self.column_limits(column, first, last, &mut limits);
+                }
+                for plate in &self.plates {
+                    self.plate_limits(plate, first, last, &mut limits);
+                }
             }
         }
         limits
@@ -119,7 +126,7 @@ impl<'a> TensionSide<'a> {
     #[allow(clippy::too_many_arguments)]
     fn bending(
         &self,
-        id: &'static str,
+        (id, of): (&'static str, Option<Which>),
         title: &str,
         clause: &'static str,
         stub: TStub,
@@ -132,6 +139,7 @@ impl<'a> TensionSide<'a> {
         limits.push(Limit {
             id,
             title: format!("{title}, {} (mode {})", self.named(first, last), result.mode),
+            of,
             clause,
             first,
             last,
@@ -152,12 +160,12 @@ impl<'a> TensionSide<'a> {
     fn mode_one(&self) -> ModeOne {
         match self.rulebook.settings.mode_one {
             rulebook::ModeOne::Method1 => ModeOne::Method1,
-            rulebook::ModeOne::Method2 => ModeOne::Method2 { d_w: self.n.washer },
+            rulebook::ModeOne::Method2 => ModeOne::Method2 { d_w: self.n.bolts.washer },
         }
     }
 
     fn bolt_force(&self, first: usize, last: usize, punching: Force) -> Force {
-        2.0 * (last - first + 1) as f64 * self.n.F_t_Rd.min(punching)
+        2.0 * (last - first + 1) as f64 * self.n.bolts.F_t_Rd.min(punching)
     }
 
     fn pitch_below(&self, i: usize) -> Length {
@@ -184,9 +192,27 @@ pub fn named(a: usize, b: usize) -> String {
     if a == b { format!("row {a}") } else { format!("rows {}-{}", a.min(b), a.max(b)) }
 }
 
-/// From the centre of compression, the middle of the compression flange (6.2.7.1, Figure 6.15).
-pub fn lever_arm(n: &Numbers, row: &Row) -> Length {
-    row.height - 0.5 * n.beam.t_f
+/// Where the tension rows stand on an end plate.
+///
+/// # Errors
+/// Why this arrangement has no rule in the standard.
+fn places(side: &PlateSide, rows: &[Row]) -> Result<Vec<OnPlate>, String> {
+    let mut places = Vec::new();
+    for row in rows {
+        places.push(if row.height > side.flange_top() {
+            if places.contains(&OnPlate::Outside) {
+                return Err("more than one row beyond the tension flange has no rule in Table 6.6".into());
+            }
+            OnPlate::Outside
+        } else if !(row.height < side.flange_top() - side.beam.t_f) {
+            return Err(format!("row {} lies in the beam's flange", row.number));
+        } else if places.iter().any(|p| *p != OnPlate::Outside) {
+            OnPlate::Other
+        } else {
+            OnPlate::BelowFlange
+        });
+    }
+    Ok(places)
 }
 
 fn sum(lengths: &[EffectiveLength], w: &mut Working) -> (Length, Length) {

@@ -12,7 +12,7 @@ mod strengthening;
 mod totals;
 mod weld_checks;
 
-pub use intended::intended;
+pub use intended::{intended, intended_layout};
 use numbers::{Noted, Numbers};
 use shear::Tension;
 use solver::Solved;
@@ -20,7 +20,7 @@ pub use solver::Solver;
 
 use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict};
 use crate::intent::LoadCase;
-use crate::joints::EndPlateLayout;
+use crate::joints::BoltedPlate;
 use crate::origin::{Ask, Missing};
 use crate::rulebook::{RowForces, Rulebook};
 use crate::units::{Force, Length, Moment};
@@ -92,33 +92,51 @@ fn at_bound(opposite: Opposite) -> bool {
     matches!(opposite, Opposite::NotStated | Opposite::Unclear(_))
 }
 
-/// Assesses a joint as laid out, against load cases if there are any. `two_sided`: whether a joint stands on the column's
+/// Assesses an end-plate joint or splice as laid out, against load cases if there are any. `two_sided`: whether a joint stands on the column's
 /// other flange (then, without load cases, β is at its upper bound).
-pub fn assess(layout: &EndPlateLayout, demands: &[Demand<'_>], two_sided: bool, rulebook: &Rulebook) -> Assessment {
+pub fn assess<'l>(
+    layout: impl Into<BoltedPlate<'l>>,
+    demands: &[Demand<'_>],
+    two_sided: bool,
+    rulebook: &Rulebook,
+) -> Assessment {
     assess_with(&Solver::new(rulebook), layout, demands, two_sided)
 }
 
 /// The same with a solver that remembers what it solved for other joints.
-pub fn assess_with(
+pub fn assess_with<'l>(
     solver: &Solver<'_>,
-    layout: &EndPlateLayout,
+    layout: impl Into<BoltedPlate<'l>>,
     demands: &[Demand<'_>],
     two_sided: bool,
 ) -> Assessment {
     let rulebook = solver.rulebook;
     let mut noted = Noted::default();
-    let numbers = Numbers::gather(layout, rulebook, &mut noted);
+    let numbers = Numbers::gather(layout.into(), rulebook, &mut noted);
     let mut assessment = Assessment { ..Assessment::default() };
     if let Some(n) = &numbers {
-        noted
-            .assumptions
-            .push(format!("k_wc = {}: the column's axial stress is not stated (6.2.6.2(2))", rulebook.settings.k_wc));
+        if n.column().is_some() {
+            noted.assumptions.push(format!(
+                "k_wc = {}: the column's axial stress is not stated (6.2.6.2(2))",
+                rulebook.settings.k_wc
+            ));
+        }
         noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
         let turned = n.upside_down();
         let solve = |sense: Sense, beta: f64, shear: Force, rule: Option<RowForces>| {
             solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, shear, rule)
         };
+        // The side that no case asks for keeps no proof back.
+        let needed = |sense| {
+            demands.is_empty() && sense == Sense::Hogging
+                || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense))
+        };
+        for (sense, n) in [(Sense::Hogging, n), (Sense::Sagging, &turned)] {
+            if needed(sense) {
+                noted.gaps.extend(strengthening::short_in_compression(n));
+            }
+        }
         let at_rest = |sense, noted: &mut Noted| match solve(
             sense,
             plain_beta,
@@ -128,10 +146,7 @@ pub fn assess_with(
             Ok(resistance) => Some(resistance),
             Err(reason) => {
                 let what = if sense == Sense::Hogging { "tension at the top" } else { "tension at the bottom" };
-                // The side that no case asks for keeps no proof back.
-                let needed = demands.is_empty() && sense == Sense::Hogging
-                    || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense));
-                if needed {
+                if needed(sense) {
                     noted.gaps.push(Gap::NotChecked(Missing {
                         what: format!("moment with {what}"),
                         reason,
@@ -144,13 +159,16 @@ pub fn assess_with(
         };
         assessment.hogging = at_rest(Sense::Hogging, &mut noted);
         assessment.sagging = at_rest(Sense::Sagging, &mut noted);
-        let n_pl = n.beam.area * n.beam_strength.f_y_flange / rulebook.annex.gamma_m0;
+        let n_pl = n.least(|side| side.beam.area * side.beam_strength.f_y_flange / rulebook.annex.gamma_m0);
         let lower_bound = lower_bound(&noted.gaps);
         let at_rest = [&assessment.hogging, &assessment.sagging];
         let reach = at_rest.map(|m| m.as_ref().map(|m| m.web_in_tension));
         let unknown = Tension::Unknown {
             // A sense that can't be solved may take all of the web.
-            web_in_tension: reach.into_iter().map(|reach| reach.unwrap_or(n.beam.h)).fold(Length::ZERO, Length::max),
+            web_in_tension: reach
+                .into_iter()
+                .map(|reach| reach.unwrap_or(n.side.beam.h))
+                .fold(Length::ZERO, Length::max),
         };
         let context = Cases { n, rulebook, n_pl, lower_bound, unknown, solve: &solve };
         for (case, demand) in demands.iter().enumerate() {
@@ -270,7 +288,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Solved> Cases<'_, F> {
         let sense = sense_of(m);
         let rule = self.rulebook.settings.row_forces;
         let solved = (self.solve)(sense, beta(m, opposite), shear, Some(rule))?;
-        let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.F_t_Rd);
+        let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.bolts.F_t_Rd);
         let unknown = rule == RowForces::LinearBeyond19
             && (self.lower_bound.is_some()
                 || at_bound(opposite) && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
@@ -302,7 +320,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Solved> Cases<'_, F> {
                     governed,
                     bound,
                 ));
-                if self.n.a_tension.is_some() && self.n.a_web.is_some() {
+                if self.n.sides().all(|side| side.a_tension.is_some() && side.a_web.is_some()) {
                     verdicts.push(self.weld_verdict(*m, resistance, bound));
                 }
             }

@@ -1,7 +1,7 @@
 //! M_j,Rd of one sense and one β: limits, row forces, lever arms, welds.
 
-use super::limits::{TensionSide, lever_arm};
-use super::numbers::Numbers;
+use super::limits::TensionSide;
+use super::numbers::{Numbers, PlateSide, Support};
 use super::{rows, totals, weld_checks};
 use crate::assess::{Component, MomentResistance, Sense};
 use crate::rulebook::{RowForces, Rulebook};
@@ -24,8 +24,8 @@ pub fn resistance(
     let mut notes = Vec::new();
     let side = TensionSide::new(n, rulebook, beta)?;
     let limits = side.limits();
-    let totals = totals::totals(n, rulebook, beta, V_Ed, side.web_range(), &mut notes)?;
-    let arms: Vec<Length> = side.rows.iter().map(|row| lever_arm(n, row)).collect();
+    let totals = totals::totals(n, rulebook, beta, V_Ed, n.column().map(|column| side.web_range(column)), &mut notes)?;
+    let arms: Vec<Length> = side.rows.iter().map(|row| n.lever_arm(row)).collect();
     let heights: Vec<Length> = side.rows.iter().map(|row| row.height).collect();
     let numbers: Vec<usize> = side.rows.iter().map(|row| row.number).collect();
     let forces = rows::forces(n, &arms, &numbers, &limits, &totals, rule, &mut notes);
@@ -44,7 +44,7 @@ pub fn resistance(
         })
         .chain(totals.iter().map(|limit| Component {
             id: limit.id.into(),
-            title: limit.title.into(),
+            title: limit.title.clone(),
             clause: limit.clause,
             resistance: limit.resistance.value,
             at_full: total * limit.share,
@@ -52,22 +52,21 @@ pub fn resistance(
         }))
         .collect();
 
+    let plies = match n.support {
+        Support::Column(_) => "end plate and column flange under head or nut",
+        Support::Plate(_) => "end plates under head or nut",
+    };
     let bolts_used = forces.iter().map(|row| row.bolt_share).fold(0.0, f64::max);
     for (id, title, resistance, working) in [
-        ("bolts-in-tension", "most used bolt in tension, prying included", n.F_t_Rd, &n.tension_working),
-        (
-            "punching",
-            "end plate and column flange under head or nut",
-            n.B_p_plate.min(n.B_p_column),
-            &n.punching_working,
-        ),
+        ("bolts-in-tension", "most used bolt in tension, prying included", n.bolts.F_t_Rd, &n.bolts.tension_working),
+        ("punching", plies, n.punching(), &n.punching_working),
     ] {
         components.push(Component {
             id: id.into(),
             title: title.into(),
             clause: "EN 1993-1-8:2005 3.6.1",
             resistance,
-            at_full: bolts_used * n.F_t_Rd.min(n.B_p_plate).min(n.B_p_column),
+            at_full: bolts_used * n.bolts.F_t_Rd.min(n.punching()),
             working: working.clone(),
         });
     }
@@ -80,23 +79,28 @@ pub fn resistance(
         (None, None) => "no bolt row on the tension side".into(),
     };
 
-    let (flange, web) = weld_checks::at_flange_and_web(n, rulebook, &forces, &heights, &limits);
     let mut share = 1.0_f64;
-    for weld in flange.into_iter().chain(web.into_iter().flatten()) {
-        let own = weld.resistance / weld.at_full;
-        if weld.at_full > Force::ZERO && !(own >= share) {
-            share = own;
-            governed_by = weld.title.clone();
+    for side in n.sides() {
+        for weld in weld_checks::at_flange_and_web(side, rulebook, &forces, &heights, &limits) {
+            let own = weld.resistance / weld.at_full;
+            if weld.at_full > Force::ZERO && !(own >= share) {
+                share = own;
+                governed_by = weld.title.clone();
+            }
+            components.push(weld);
         }
-        components.push(weld);
-    }
-    if n.beam_class == 3 {
-        notes.push("the beam is of class 3: its flange in compression is taken with W_el".into());
+        if side.beam_class == 3 {
+            let of = side.which.owner();
+            notes.push(format!("the {of}beam is of class 3: its flange in compression is taken with W_el"));
+        }
     }
     let last_used = forces.iter().rposition(|row| row.force > Force::ZERO);
-    let web_in_tension = last_used.map_or(Length::ZERO, |i| {
-        (n.beam.h - n.beam.t_f - n.r_b - heights[i]).max(Length::ZERO) + 0.5 * weld_checks::web_length(&limits, i)
-    });
+    let reach = |side: &PlateSide, i: usize| {
+        let below = side.flange_top() - side.beam.t_f - side.r_b - heights[i];
+        below.max(Length::ZERO) + 0.5 * weld_checks::web_length(side, &limits, i)
+    };
+    let web_in_tension =
+        last_used.map_or(Length::ZERO, |i| n.sides().map(|side| reach(side, i)).fold(Length::ZERO, Length::max));
     Ok(MomentResistance {
         sense,
         beta,

@@ -3,7 +3,7 @@
 #![allow(non_snake_case)]
 
 use super::limits::Limit;
-use super::numbers::Numbers;
+use super::numbers::{Numbers, Support};
 use super::totals::Total;
 use crate::assess::RowForce;
 use crate::rulebook::RowForces;
@@ -19,8 +19,12 @@ struct Linear {
 /// Whether the plate or the flange is thin enough for a plastic distribution whatever the row forces: UK practice,
 /// t ≤ (d/1.9) √(f_ub/f_y) of either (UK National Annex to EN 1993-1-8, NA.2.7, from memory).
 fn thin_enough(n: &Numbers) -> bool {
-    let limit = |f_y: crate::units::Stress| n.d / 1.9 * (n.f_ub / f_y).sqrt();
-    n.t_p <= limit(n.plate_strength.f_y) || n.column.t_f <= limit(n.column_strength.f_y_flange)
+    let limit = |f_y: crate::units::Stress| n.bolts.d / 1.9 * (n.bolts.f_ub / f_y).sqrt();
+    let behind = match &n.support {
+        Support::Column(column) => column.section.t_f <= limit(column.strength.f_y_flange),
+        Support::Plate(other) => other.t_p <= limit(other.strength.f_y),
+    };
+    n.side.t_p <= limit(n.side.strength.f_y) || behind
 }
 
 /// Works down the rows. `lever_arms` and `numbers` are of the tension rows, from the tension side. No `rule`: in proportion
@@ -65,21 +69,21 @@ pub fn forces(
         force = force.max(Force::ZERO);
         if linear.is_none() && !plastic {
             let triggers = match rule {
-                Some(RowForces::LinearBeyond19) => !(force <= 1.9 * n.F_t_Rd),
+                Some(RowForces::LinearBeyond19) => !(force <= 1.9 * n.bolts.F_t_Rd),
                 Some(RowForces::ThinPlateOrLinear) | None => true,
             };
             if triggers && r + 1 < lever_arms.len() {
                 notes.push(match rule {
                     Some(RowForces::LinearBeyond19) => format!(
                         "row {number} carries {force}, more than 1.9 Ft,Rd = {}: the rows beyond it are limited in proportion to their lever arms (6.2.7.2(9))",
-                        1.9 * n.F_t_Rd
+                        1.9 * n.bolts.F_t_Rd
                     ),
                     Some(RowForces::ThinPlateOrLinear) => format!(
                         "neither end plate nor column flange is thin enough for a plastic distribution: the rows beyond row {number} are limited in proportion to their lever arms"
                     ),
                     None => format!(
                         "row {number} might pass 1.9 Ft,Rd = {} if all were known: the rows beyond it are limited in proportion to their lever arms (6.2.7.2(9))",
-                        1.9 * n.F_t_Rd
+                        1.9 * n.bolts.F_t_Rd
                     ),
                 });
                 linear = Some(Linear { force, lever_arm, row: number });

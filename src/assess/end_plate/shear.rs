@@ -1,18 +1,18 @@
 //! V_Rd: bolts in shear beside their tension, bearing in plate and column flange, the web's weld.
 #![allow(non_snake_case)]
 
-use super::numbers::Numbers;
+use super::numbers::{Numbers, PlateSide, Row, Support};
 use super::weld_checks;
 use crate::assess::{Component, MomentResistance, ShearResistance};
 use crate::eurocode::bolts::{self, BearingPlace};
 use crate::rulebook::Rulebook;
-use crate::units::{Force, Length, mm};
+use crate::units::{Force, Length, Stress, mm};
 use crate::working::Working;
 use crate::{given, step};
 
 /// M12 and M14 in holes with 2 mm clearance carry 0.85 of their shear, 3.6.1(5).
 fn beta_hole(n: &Numbers) -> f64 {
-    if n.d <= mm(14.0) && !(n.d_0 - n.d < mm(2.0)) { 0.85 } else { 1.0 }
+    if n.bolts.d <= mm(14.0) && !(n.bolts.d_0 - n.bolts.d < mm(2.0)) { 0.85 } else { 1.0 }
 }
 
 /// The tension that acts in the bolts together with the shear.
@@ -33,8 +33,9 @@ pub enum Tension<'a> {
 /// row (each bolt the smaller of its shear and bearing resistance); the shear may act up or down, the worse counts.
 pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> ShearResistance {
     let gamma_M2 = rulebook.annex.gamma_m2;
-    let (alpha_v, area) = if rulebook.settings.thread_in_shear_plane { (n.alpha_v, n.A_s) } else { (0.6, n.A) };
-    let shear = bolts::shear(alpha_v, n.f_ub, area, beta_hole(n), gamma_M2);
+    let (alpha_v, area) =
+        if rulebook.settings.thread_in_shear_plane { (n.bolts.alpha_v, n.bolts.A_s) } else { (0.6, n.bolts.A) };
+    let shear = bolts::shear(alpha_v, n.bolts.f_ub, area, beta_hole(n), gamma_M2);
 
     let mut in_shear = Force::ZERO;
     let mut w = Working::default();
@@ -55,7 +56,7 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
             }
         };
         w.heading(format!("row {}", row.number));
-        let left = bolts::shear_beside_tension(shear.value, used * n.F_t_Rd, n.F_t_Rd);
+        let left = bolts::shear_beside_tension(shear.value, used * n.bolts.F_t_Rd, n.bolts.F_t_Rd);
         w.absorb(left.working);
         in_shear += 2.0 * left.value;
         per_row.push(left.value);
@@ -72,10 +73,8 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
         working: w.into(),
     }];
     let mut least = (V_bolts, "bolts in shear with their tension".to_owned());
-    for (id, title, ply) in [
-        ("end-plate-in-bearing", "end plate in bearing", Ply::Plate),
-        ("column-flange-in-bearing", "column flange in bearing", Ply::Column),
-    ] {
+    for ply in Ply::of(n) {
+        let (id, title) = ply.named();
         let (up, down) = (bearing(n, ply, true, &per_row, gamma_M2), bearing(n, ply, false, &per_row, gamma_M2));
         let worst = if up.1 <= down.1 { up } else { down };
         if !(worst.1 >= least.0) {
@@ -83,7 +82,7 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
         }
         components.push(Component {
             id: id.into(),
-            title: title.into(),
+            title,
             clause: "EN 1993-1-8:2005 3.6.1",
             resistance: worst.0,
             at_full: Force::ZERO,
@@ -95,7 +94,7 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
         Tension::None => Length::ZERO,
         Tension::Rows(moment, _) => moment.web_in_tension,
     };
-    if let Some(weld) = weld_checks::in_shear(n, rulebook, reach) {
+    for weld in n.sides().filter_map(|side| weld_checks::in_shear(side, rulebook, reach)) {
         if !(weld.resistance >= least.0) {
             least = (weld.resistance, weld.title.clone());
         }
@@ -104,36 +103,72 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
     ShearResistance { shear: least.0, governed_by: least.1, components }
 }
 
-#[derive(Clone, Copy, PartialEq)]
-enum Ply {
-    Plate,
-    Column,
+/// What the bolts bear on.
+#[derive(Clone, Copy)]
+struct Ply<'a> {
+    /// The end plate, or the column's flange.
+    plate: Option<&'a PlateSide>,
+    /// Its upper and lower edge; `None` where it runs on.
+    ends: [Option<Length>; 2],
+    t: Length,
+    f_u: Stress,
+}
+
+impl<'a> Ply<'a> {
+    fn of(n: &'a Numbers) -> Vec<Self> {
+        let plate = |side: &'a PlateSide| Self {
+            plate: Some(side),
+            ends: [Some(side.top), Some(side.bottom)],
+            t: side.t_p,
+            f_u: side.strength.f_u,
+        };
+        let behind = match &n.support {
+            Support::Plate(other) => plate(other),
+            Support::Column(column) => Self {
+                plate: None,
+                ends: [
+                    n.rows.first().zip(column.above).map(|(row, above)| row.height + above),
+                    n.rows.last().zip(column.below).map(|(row, below)| row.height - below),
+                ],
+                t: column.section.t_f,
+                f_u: column.strength.f_u,
+            },
+        };
+        vec![plate(&n.side), behind]
+    }
+
+    fn named(self) -> (&'static str, String) {
+        match self.plate {
+            Some(side) => ("end-plate-in-bearing", format!("end plate in bearing{}", side.which.suffix())),
+            None => ("column-flange-in-bearing", "column flange in bearing".into()),
+        }
+    }
+
+    fn e_2(self, row: &Row) -> Length {
+        self.plate.map_or(row.e_support, |side| row.edge(side))
+    }
 }
 
 /// Bearing of all bolts in one ply alone, and the sum of each bolt's smaller of bearing and `shear_left`.
 ///
 /// `up`: the bolts push the ply upwards.
-fn bearing(n: &Numbers, ply: Ply, up: bool, shear_left: &[Force], gamma_M2: f64) -> (Force, Force, Working) {
+fn bearing(n: &Numbers, ply: Ply<'_>, up: bool, shear_left: &[Force], gamma_M2: f64) -> (Force, Force, Working) {
     let mut w = Working::default();
     let (mut all, mut with_shear) = (Force::ZERO, Force::ZERO);
     let count = n.rows.len();
     for (i, row) in n.rows.iter().enumerate() {
         let ahead = if up { i.checked_sub(1) } else { Some(i + 1).filter(|&j| j < count) };
         let p_1 = ahead.map(|j| (n.rows[j].height - row.height).abs());
-        let e_1 = match (ply, ahead, up) {
-            (_, Some(_), _) => None,
-            (Ply::Plate, None, true) => Some(n.plate_top - row.height),
-            (Ply::Plate, None, false) => Some(row.height - n.plate_bottom),
-            (Ply::Column, None, true) => n.column_above,
-            (Ply::Column, None, false) => n.column_below,
+        let [top, bottom] = ply.ends;
+        let e_1 = match (ahead, up) {
+            (Some(_), _) => None,
+            (None, true) => top.map(|top| top - row.height),
+            (None, false) => bottom.map(|bottom| row.height - bottom),
         };
-        let (e_2, t, f_u) = match ply {
-            Ply::Plate => (row.e_plate, n.t_p, n.plate_strength.f_u),
-            Ply::Column => (row.e_column, n.column.t_f, n.column_strength.f_u),
-        };
+        let e_2 = ply.e_2(row);
         w.heading(format!("row {}, bolts pushing {}", row.number, if up { "up" } else { "down" }));
         let place = BearingPlace { e_1, p_1, e_2, p_2: Some(row.gauge) };
-        let bearing = bolts::bearing(place, n.d, n.d_0, t, f_u, n.f_ub, gamma_M2);
+        let bearing = bolts::bearing(place, n.bolts.d, n.bolts.d_0, ply.t, ply.f_u, n.bolts.f_ub, gamma_M2);
         w.absorb(bearing.working);
         all += 2.0 * bearing.value;
         with_shear += 2.0 * bearing.value.min(shear_left[i]);

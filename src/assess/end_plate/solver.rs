@@ -46,7 +46,7 @@ impl<'a> Solver<'a> {
     /// M_j,Rd of the joint with its tension side up; see [`moment::resistance`].
     pub fn moment(&self, n: &Numbers, sense: Sense, beta: f64, V_Ed: Force, rule: Option<RowForces>) -> Solved {
         // Below half of the beam's own resistance the shear changes nothing (EN 1993-1-1 6.2.8).
-        let V_pl_Rd = n.beam_shear_resistance(self.rulebook.annex.gamma_m0);
+        let V_pl_Rd = n.least(|side| side.shear_resistance(self.rulebook.annex.gamma_m0));
         let V_Ed = if V_Ed <= 0.5 * V_pl_Rd { Force::ZERO } else { V_Ed };
         let shelf = shelf(n, beta, V_Ed);
         let asked = |entry: &&Entry| {
@@ -71,8 +71,12 @@ impl<'a> Solver<'a> {
 /// Where to look: a few of the numbers, mixed. Equal questions always share a shelf.
 fn shelf(n: &Numbers, beta: f64, V_Ed: Force) -> u64 {
     let rows = n.rows.iter().flat_map(|row| [row.height.get(), row.gauge.get()]);
-    let sizes = [n.beam.h.get(), n.column.h.get(), n.t_p.get(), n.plate_top.get(), n.F_t_Rd.get(), beta, V_Ed.get()];
+    let sides = n.sides().flat_map(|side| [side.beam.h.get(), side.t_p.get(), side.top.get()]);
+    let column = n.column().map(|column| column.section.h.get());
+    let sizes = [n.bolts.F_t_Rd.get(), beta, V_Ed.get()];
     // Adding 0 makes -0 and 0, which are equal, the same bits.
-    rows.chain(sizes)
+    rows.chain(sides)
+        .chain(column)
+        .chain(sizes)
         .fold(0, |mixed: u64, x| (mixed.rotate_left(7) ^ (x + 0.0).to_bits()).wrapping_mul(0x9E37_79B9_7F4A_7C15))
 }

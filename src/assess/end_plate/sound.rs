@@ -1,30 +1,24 @@
 //! Whether a layout's sizes are such that the formulas have a meaning.
 
-use crate::joints::EndPlateLayout;
+use super::numbers::BoltNumbers;
+use crate::joints::{BoltedPlate, PlateSide, Support};
 use crate::rulebook::Rulebook;
 use crate::units::Length;
 
-/// What of the layout no formula may be asked about: the thing and why. Written so that NaN is refused.
+/// What of the layout no formula may be asked about: the thing and why. `other_h`: the depth of a splice's other beam.
+/// Written so that NaN is refused.
 pub fn reasons(
-    layout: &EndPlateLayout,
+    joint: BoltedPlate<'_>,
     beam_h: Length,
-    d: Length,
-    d_0: Length,
+    other_h: Option<Length>,
+    bolts: &BoltNumbers,
     rulebook: &Rulebook,
 ) -> Vec<(&'static str, String)> {
     let mut reasons = Vec::new();
-    let positive = |value: Length| value.get().is_finite() && value > Length::ZERO;
-    let (plate, rows) = (&layout.plate, &layout.bolts.rows);
-    if !(positive(plate.thickness) && positive(plate.width)) {
-        reasons.push(("end plate size", format!("thickness {}, width {}", plate.thickness, plate.width)));
-    }
-    let position = rulebook.tolerances.position;
-    let finite = plate.bottom.get().is_finite() && plate.top.get().is_finite();
-    if !(finite && plate.bottom <= position && plate.top >= beam_h - position) {
-        reasons.push((
-            "end plate shorter than the beam",
-            format!("it reaches from {} to {} above the soffit, the beam from 0 to {beam_h}", plate.bottom, plate.top),
-        ));
+    let (d, d_0, rows) = (bolts.d, bolts.d_0, &joint.bolts.rows);
+    plate_size(joint.side, beam_h, rulebook, &mut reasons);
+    if let (Support::Plate(other), Some(h)) = (joint.support, other_h) {
+        plate_size(other, h, rulebook, &mut reasons);
     }
     for (i, row) in rows.iter().enumerate() {
         if !(row.height.get().is_finite() && [row.gauge, row.edge_plate, row.edge_column].into_iter().all(positive)) {
@@ -49,7 +43,10 @@ pub fn reasons(
             reasons.push(("bolt pitch", format!("rows {} and {} lie {pitch} apart, bolts of {d}", i + 1, i + 2)));
         }
     }
-    let ends = [layout.column_above, layout.column_below];
+    let ends = match joint.support {
+        Support::Column(layout) => [layout.column_above, layout.column_below],
+        Support::Plate(_) => [None, None],
+    };
     if !ends.into_iter().flatten().all(|end| end.get().is_finite()) {
         reasons.push(("column end", "its distance from the rows is no number".into()));
     }
@@ -66,4 +63,24 @@ pub fn reasons(
         None => reasons.push(("bolt hole", format!("no table has the clearance of a bolt of {d}"))),
     }
     reasons
+}
+
+fn positive(value: Length) -> bool {
+    value.get().is_finite() && value > Length::ZERO
+}
+
+fn plate_size(side: PlateSide<'_>, beam_h: Length, rulebook: &Rulebook, reasons: &mut Vec<(&'static str, String)>) {
+    let (plate, soffit) = (side.plate, side.soffit);
+    if !(positive(plate.thickness) && positive(plate.width)) {
+        reasons.push(("end plate size", format!("thickness {}, width {}", plate.thickness, plate.width)));
+    }
+    let position = rulebook.tolerances.position;
+    let (bottom, top) = (plate.bottom - soffit, plate.top - soffit);
+    let finite = bottom.get().is_finite() && top.get().is_finite();
+    if !(finite && bottom <= position && top >= beam_h - position) {
+        reasons.push((
+            "end plate shorter than the beam",
+            format!("it reaches from {bottom} to {top} above the soffit, the beam from 0 to {beam_h}"),
+        ));
+    }
 }

@@ -2,7 +2,7 @@
 //! backing plates. What they do not let count is said with the reason.
 #![allow(non_snake_case)]
 
-use super::numbers::{MemberStrength, Noted, Numbers};
+use super::numbers::{ColumnSide, MemberStrength, Noted, Numbers, StiffenerPair};
 use crate::assess::{Gap, Input};
 use crate::eurocode::diagonals::{self, Diagonal};
 use crate::eurocode::t_stub::BackingPlates;
@@ -81,91 +81,105 @@ impl Strengthened {
     }
 }
 
-fn web(n: &Numbers) -> Web {
-    let column = &n.column;
-    let d_wc = column.h - 2.0 * (column.t_f + n.r_c);
-    Web { t_wc: column.t_w, d_wc, f_y_wc: n.column_strength.f_y_web }
+fn web(own: &ColumnSide) -> Web {
+    let column = &own.section;
+    let d_wc = column.h - 2.0 * (column.t_f + own.r);
+    Web { t_wc: column.t_w, d_wc, f_y_wc: own.strength.f_y_web }
 }
 
 /// A_vc with the web plate that reaches over all of the web in tension and compression.
-pub fn shear_area(n: &Numbers, range: (Length, Length), rulebook: &Rulebook, w: &mut Working) -> Area {
-    let A_vc = n.column.a_v_z;
+pub fn shear_area(own: &ColumnSide, range: (Length, Length), rulebook: &Rulebook, w: &mut Working) -> Area {
+    let A_vc = own.section.a_v_z;
     let (m0, m2) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m2);
     let shares =
-        n.strengthened.over(range).into_iter().map(|plate| (plate, web_plates::share(&plate, &web(n), m0, m2)));
+        own.strengthened.over(range).into_iter().map(|plate| (plate, web_plates::share(&plate, &web(own), m0, m2)));
     let best = shares.max_by(|(a, (x, _)), (b, (y, _))| (*x * a.b_s).get().total_cmp(&(*y * b.b_s).get()));
     let Some((plate, (share, working))) = best else { return A_vc };
     w.absorb(working);
-    web_plates::shear_area(w, A_vc, n.column.t_w, plate.b_s, share)
+    web_plates::shear_area(w, A_vc, own.section.t_w, plate.b_s, share)
 }
 
 /// t_w,eff in compression over a range of heights.
-pub fn in_compression(n: &Numbers, range: (Length, Length), rulebook: &Rulebook, w: &mut Working) -> Length {
+pub fn in_compression(own: &ColumnSide, range: (Length, Length), rulebook: &Rulebook, w: &mut Working) -> Length {
     let (m0, m2) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m2);
-    let plates = n.strengthened.over(range);
+    let plates = own.strengthened.over(range);
     if plates.is_empty() {
-        return n.column.t_w;
+        return own.section.t_w;
     }
     let mut shares = 0.0;
     for plate in &plates {
-        let (share, working) = web_plates::share(plate, &web(n), m0, m2);
+        let (share, working) = web_plates::share(plate, &web(own), m0, m2);
         w.absorb(working);
         shares += share;
     }
-    web_plates::in_compression(w, n.column.t_w, shares)
+    web_plates::in_compression(w, own.section.t_w, shares)
 }
 
 /// t_w,eff in tension over a range of heights.
-pub fn in_tension(n: &Numbers, range: (Length, Length), w: &mut Working) -> Length {
-    match n.strengthened.over(range) {
-        plates if plates.is_empty() => n.column.t_w,
-        plates => web_plates::in_tension(w, n.column.t_w, n.column_strength.f_y_web, &plates),
+pub fn in_tension(own: &ColumnSide, range: (Length, Length), w: &mut Working) -> Length {
+    match own.strengthened.over(range) {
+        plates if plates.is_empty() => own.section.t_w,
+        plates => web_plates::in_tension(w, own.section.t_w, own.strength.f_y_web, &plates),
     }
 }
 
 /// What the diagonals add to the panel's shear resistance: the lesser of the two pairs of a K. `None` without diagonals.
-pub fn diagonals(n: &Numbers, rulebook: &Rulebook, beta: f64) -> Option<Resistance> {
+pub fn diagonals(n: &Numbers, column: &ColumnSide, rulebook: &Rulebook, beta: f64) -> Option<Resistance> {
     let (m0, m1, m2) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1, rulebook.annex.gamma_m2);
     let one = |at: &DiagonalAt| {
         let mut w = Working::default();
-        let far_end = (!at.met_at_far).then(|| far_end(n, at.far, rulebook, beta, &mut w));
+        let far_end = (!at.met_at_far).then(|| far_end(n, column, at.far, rulebook, beta, &mut w));
         let own = Diagonal {
-            b: at.b.min(0.5 * (n.column.b - n.column.t_w)),
+            b: at.b.min(0.5 * (column.section.b - column.section.t_w)),
             t: at.t,
-            cope: n.r_c_most,
+            cope: column.r_most,
             f_y: at.f_y,
             rise: (at.near - at.far).abs(),
-            run: n.column.h - 2.0 * n.column.t_f,
-            fillets: Fillets { f_u: at.fillets.f_u.min(n.column_strength.f_u), ..at.fillets },
-            t_wc: n.column.t_w,
+            run: column.section.h - 2.0 * column.section.t_f,
+            fillets: Fillets { f_u: at.fillets.f_u.min(column.strength.f_u), ..at.fillets },
+            t_wc: column.section.t_w,
             far_end,
         };
         let own = diagonals::shear(&own, m0, m1, m2);
         w.absorb(own.working);
         Resistance { value: own.value, working: w }
     };
-    n.strengthened.diagonals.iter().map(one).reduce(|a, b| if b.value < a.value { b } else { a })
+    column.strengthened.diagonals.iter().map(one).reduce(|a, b| if b.value < a.value { b } else { a })
 }
 
 /// What takes a diagonal's horizontal part at the column's far flange: the web over its spread through flange and root, and a
 /// pair of stiffeners that is level with the end.
-fn far_end(n: &Numbers, height: Length, rulebook: &Rulebook, beta: f64, w: &mut Working) -> Force {
+fn far_end(n: &Numbers, column: &ColumnSide, height: Length, rulebook: &Rulebook, beta: f64, w: &mut Working) -> Force {
     let (m0, m2) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m2);
-    let (t_fc, s, t_wc, f_y_wc) = (n.column.t_f, n.r_c, n.column.t_w, n.column_strength.f_y_web);
+    let (t_fc, s, t_wc, f_y_wc) = (column.section.t_f, column.r, column.section.t_w, column.strength.f_y_web);
     given!(w, "column at the diagonal's far end"; t_fc, s, t_wc, f_y_wc);
     step!(w, "6.2.6.2(1), flange and root alone", b_eff = 5.0 * (t_fc + s));
-    let omega = column_web::omega(w, beta, b_eff, t_wc, n.column.a_v_z);
+    let omega = column_web::omega(w, beta, b_eff, t_wc, column.section.a_v_z);
     step!(w, "6.2.6.2, (6.9)", F_web = omega * b_eff * t_wc * f_y_wc / m0);
-    let level = |s: &&super::numbers::StiffenerPair| {
-        s.full_depth && (s.height - height).abs() <= n.beam.t_f + rulebook.tolerances.position
+    let level = |s: &&StiffenerPair| {
+        s.full_depth && (s.height - height).abs() <= n.side.beam.t_f + rulebook.tolerances.position
     };
-    let pair = n.stiffeners.iter().find(level).map(|pair| stiffeners::force(&pair.plates(n), m0, m2));
+    let pair = column.stiffeners.iter().find(level).map(|pair| stiffeners::force(&pair.plates(column), m0, m2));
     let F_pair = pair.map_or(Force::ZERO, |pair| {
         w.absorb(pair.working);
         pair.value
     });
     step!(w, "web and the pair level with it", F_far_end = F_web + F_pair);
     F_far_end
+}
+
+/// A partial-depth pair level with the compression flange: no clause credits it there, and what fails without it is not
+/// proven to fail.
+pub fn short_in_compression(n: &Numbers) -> Option<Gap> {
+    let level = n.side.compression();
+    let short = |s: &&StiffenerPair| !s.full_depth && (s.height - level).abs() <= 0.5 * n.side.beam.t_f;
+    n.column()?.stiffeners.iter().find(short)?;
+    Some(Gap::LowerBound(Missing {
+        what: "credit for a strengthening part".into(),
+        reason: "the stiffeners at the compression flange do not reach from flange to flange".into(),
+        at: None,
+        ask: Ask::Method,
+    }))
 }
 
 /// Why a part does not count.

@@ -1,7 +1,7 @@
 //! What limits the sum of all rows: the compression side and the web panel in shear.
 #![allow(non_snake_case)]
 
-use super::numbers::{Numbers, StiffenerPair};
+use super::numbers::{ColumnSide, Numbers, PlateSide, StiffenerPair};
 use super::strengthening;
 use crate::eurocode::stiffeners::{self, Web};
 use crate::eurocode::web_panel::{self, FrameAction};
@@ -17,7 +17,7 @@ pub struct Total {
     /// `column-web-panel-in-shear`.
     pub id: &'static str,
     /// In words.
-    pub title: &'static str,
+    pub title: String,
     /// Clause.
     pub clause: &'static str,
     /// Its own resistance.
@@ -33,67 +33,128 @@ impl Total {
     }
 }
 
+/// All total limits for tension at the top and one β, beside a shear `V_Ed` in the beam. `web_range`: the
+/// column's web in tension and compression.
+///
+/// # Errors
+/// Why the web panel or a beam can't be assessed.
+pub fn totals(
+    n: &Numbers,
+    rulebook: &Rulebook,
+    beta: f64,
+    V_Ed: Force,
+    web_range: Option<(Length, Length)>,
+    notes: &mut Vec<String>,
+) -> Result<Vec<Total>, String> {
+    let mut totals = match n.column() {
+        Some(column) => on_column(n, column, rulebook, beta, web_range.unwrap_or_default(), notes)?,
+        None => {
+            level(n)?;
+            Vec::new()
+        }
+    };
+    for side in n.sides() {
+        totals.push(Total {
+            id: "beam-flange-in-compression",
+            title: format!("beam flange and web in compression{}", side.which.suffix()),
+            clause: "EN 1993-1-8:2005 6.2.6.7",
+            resistance: flange(side, V_Ed, rulebook.annex.gamma_m0)?,
+            share: 1.0,
+        });
+    }
+    Ok(totals)
+}
+
+/// Whether the compression passes straight from one beam's flange into the other's.
+///
+/// # Errors
+/// By how much it doesn't.
+fn level(n: &Numbers) -> Result<(), String> {
+    let centres = n.sides().map(PlateSide::compression);
+    let (lowest, highest) =
+        (centres.clone().fold(n.side.compression(), Length::min), centres.fold(n.side.compression(), Length::max));
+    let off = highest - lowest;
+    if !(off <= 0.5 * n.least(|side| side.beam.t_f)) {
+        return Err(format!(
+            "the compression flanges of the two beams lie {off} apart, more than half a flange's thickness: not assessed yet"
+        ));
+    }
+    Ok(())
+}
+
+fn flange(side: &PlateSide, V_Ed: Force, gamma_M0: f64) -> Result<Resistance, String> {
+    beam::flange_compression(
+        &beam::FlangeCompression {
+            W_y: side.W_beam,
+            h: side.beam.h,
+            b_fb: side.beam.b,
+            t_fb: side.beam.t_f,
+            t_wb: side.beam.t_w,
+            A_v: side.beam.a_v_z,
+            f_y: side.beam_strength.f_y_flange,
+            V_Ed,
+        },
+        gamma_M0,
+    )
+}
+
 /// The credited full-depth pair level with a flange whose middle is at `level`: within half the flange's thickness.
-fn pair_at(n: &Numbers, level: Length) -> Option<&StiffenerPair> {
+fn pair_at(column: &ColumnSide, level: Length, t_fb: Length) -> Option<&StiffenerPair> {
     let off = |s: &StiffenerPair| (s.height - level).abs();
-    let level = n.stiffeners.iter().filter(|s| s.full_depth && off(s) <= 0.5 * n.beam.t_f);
+    let level = column.stiffeners.iter().filter(|s| s.full_depth && off(s) <= 0.5 * t_fb);
     level.min_by(|a, b| off(a).get().total_cmp(&off(b).get()).then(a.height.get().total_cmp(&b.height.get())))
 }
 
 /// How far the column's lower end lies below a level.
-fn to_end(n: &Numbers, level: Length) -> Option<Length> {
-    Some(level - n.rows.last()?.height + n.column_below?)
+fn to_end(n: &Numbers, column: &ColumnSide, level: Length) -> Option<Length> {
+    Some(level - n.rows.last()?.height + column.below?)
 }
 
 /// The column's web at the compression flange, without web plates.
-pub fn compression_web(n: &Numbers, rulebook: &Rulebook, beta: f64) -> column_web::Compression {
-    let column = &n.column;
+pub fn compression_web(n: &Numbers, own: &ColumnSide, rulebook: &Rulebook, beta: f64) -> column_web::Compression {
+    let (column, side) = (&own.section, &n.side);
     column_web::Compression {
-        t_fb: n.beam.t_f,
-        a_p: n.a_compression.unwrap_or(Length::ZERO),
+        t_fb: side.beam.t_f,
+        a_p: side.a_compression.unwrap_or(Length::ZERO),
         t_fc: column.t_f,
-        s: n.r_c,
-        t_p: n.t_p,
-        projection: (-n.plate_bottom).max(Length::ZERO),
-        to_end: to_end(n, 0.5 * n.beam.t_f),
+        s: own.r,
+        t_p: side.t_p,
+        projection: (side.soffit - side.bottom).max(Length::ZERO),
+        to_end: to_end(n, own, side.compression()),
         t_wc: column.t_w,
-        d_wc: column.h - 2.0 * (column.t_f + n.r_c),
-        f_y_wc: n.column_strength.f_y_web,
+        d_wc: column.h - 2.0 * (column.t_f + own.r),
+        f_y_wc: own.strength.f_y_web,
         A_vc: column.a_v_z,
         beta,
         k_wc: rulebook.settings.k_wc,
     }
 }
 
-/// All total limits for tension at the top and one β, beside a shear `V_Ed` in the beam. `web_range`: the column's web in
-/// tension and compression.
-///
-/// # Errors
-/// Why the web panel or the beam can't be assessed.
-pub fn totals(
+/// The column's web in compression and its panel in shear.
+fn on_column(
     n: &Numbers,
+    own: &ColumnSide,
     rulebook: &Rulebook,
     beta: f64,
-    V_Ed: Force,
     web_range: (Length, Length),
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
     let (gamma_M0, gamma_M1, gamma_M2) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1, rulebook.annex.gamma_m2);
-    let (column, strength) = (&n.column, n.column_strength);
+    let (column, strength, side) = (&own.section, own.strength, &n.side);
+    let t_fb = side.beam.t_f;
     let h_clear = column.h - 2.0 * column.t_f;
-    let d_wc = h_clear - 2.0 * n.r_c;
-    let compression_pair = pair_at(n, 0.5 * n.beam.t_f);
-    let tension_pair = pair_at(n, n.beam.h - 0.5 * n.beam.t_f);
+    let d_wc = h_clear - 2.0 * own.r;
+    let compression_pair = pair_at(own, side.compression(), t_fb);
+    let tension_pair = pair_at(own, side.flange_top() - 0.5 * t_fb, t_fb);
 
-    let to_end = |level: Length| to_end(n, level);
     let mut w = Working::default();
-    let A_vc = strengthening::shear_area(n, web_range, rulebook, &mut w);
+    let A_vc = strengthening::shear_area(own, web_range, rulebook, &mut w);
     let added = w;
-    let plain_web = column_web::Compression { A_vc, ..compression_web(n, rulebook, beta) };
+    let plain_web = column_web::Compression { A_vc, ..compression_web(n, own, rulebook, beta) };
     let half = 0.5 * column_web::effective_width(&mut Working::default(), &plain_web);
-    let level = 0.5 * n.beam.t_f;
+    let level = side.compression();
     let mut w = added.clone();
-    let t_wc = strengthening::in_compression(n, (web_range.0.max(level - half), level + half), rulebook, &mut w);
+    let t_wc = strengthening::in_compression(own, (web_range.0.max(level - half), level + half), rulebook, &mut w);
     let (reinforced, _) = column_web::compression(&column_web::Compression { t_wc, ..plain_web }, gamma_M0, gamma_M1);
     w.absorb(reinforced.working);
     // Web plates and a pair together are not in the standard: the better of the two.
@@ -101,7 +162,7 @@ pub fn totals(
     let (_, crushing) = column_web::compression(&plain_web, gamma_M0, gamma_M1);
     let (mut title, mut compression) = ("column web in compression", reinforced);
     if let Some(pair) = compression_pair {
-        let plates = pair.plates(n);
+        let plates = pair.plates(own);
         if !plates.rigid(column.t_w, h_clear) {
             notes.push(
                 "the compression stiffeners are too slight to hold the web (EN 1993-1-5 9.3.3(3)): not credited".into(),
@@ -114,7 +175,7 @@ pub fn totals(
                 t_wc: column.t_w,
                 h_clear,
                 f_y_wc: strength.f_y_web,
-                runs_on: to_end(pair.height),
+                runs_on: to_end(n, own, pair.height),
             };
             let stiffened = stiffeners::compression(&plates, &web, gamma_M0, gamma_M1, gamma_M2);
             compression.working.absorb(stiffened.working);
@@ -125,27 +186,13 @@ pub fn totals(
         }
     }
 
-    let flange = beam::flange_compression(
-        &beam::FlangeCompression {
-            W_y: n.W_beam,
-            h: n.beam.h,
-            b_fb: n.beam.b,
-            t_fb: n.beam.t_f,
-            t_wb: n.beam.t_w,
-            A_v: n.beam.a_v_z,
-            f_y: n.beam_strength.f_y_flange,
-            V_Ed,
-        },
-        gamma_M0,
-    )?;
-
     let frame = match (compression_pair, tension_pair) {
         (Some(lower), Some(upper)) => Some(FrameAction {
             d_s: upper.height - lower.height,
             b_fc: column.b,
             t_fc: column.t_f,
             f_y_fc: strength.f_y_flange,
-            b_st: 2.0 * lower.plates(n).b_s.min(upper.plates(n).b_s) + column.t_w,
+            b_st: 2.0 * lower.plates(own).b_s.min(upper.plates(own).b_s) + column.t_w,
             t_st: lower.t_s.min(upper.t_s),
             f_y_st: lower.f_y.min(upper.f_y),
         }),
@@ -154,7 +201,7 @@ pub fn totals(
     let mut panel = web_panel::shear(A_vc, column.t_w, d_wc, strength.f_y_web, frame, gamma_M0)?;
     let mut w = added;
     w.absorb(panel.working);
-    if let Some(diagonals) = strengthening::diagonals(n, rulebook, beta) {
+    if let Some(diagonals) = strengthening::diagonals(n, own, rulebook, beta) {
         w.absorb(diagonals.working);
         let (V_wp_Rd, V_d_Rd) = (panel.value, diagonals.value);
         given!(w, "panel and diagonals"; V_wp_Rd, V_d_Rd);
@@ -162,34 +209,28 @@ pub fn totals(
         panel.value = V_wp_with_diagonals;
     }
     panel.working = w;
-    if n.strengthened.web_plates.iter().any(|plate| !(plate.bottom <= web_range.0 && plate.top >= web_range.1)) {
+    let (lo, hi) = web_range;
+    if own.strengthened.web_plates.iter().any(|plate| !(plate.bottom <= lo && plate.top >= hi)) {
         notes.push(format!(
             "a web plate does not reach over all of the web in tension and compression, from {:.0} to {:.0} mm: it adds nothing to the panel (6.2.6.1(10))",
-            web_range.0.get(),
-            web_range.1.get()
+            lo.get(),
+            hi.get()
         ));
     }
 
     Ok(vec![
         Total {
             id: "column-web-panel-in-shear",
-            title: "column web panel in shear",
+            title: "column web panel in shear".into(),
             clause: "EN 1993-1-8:2005 6.2.6.1",
             resistance: panel,
             share: beta,
         },
         Total {
             id: "column-web-in-compression",
-            title,
+            title: title.into(),
             clause: "EN 1993-1-8:2005 6.2.6.2",
             resistance: compression,
-            share: 1.0,
-        },
-        Total {
-            id: "beam-flange-in-compression",
-            title: "beam flange and web in compression",
-            clause: "EN 1993-1-8:2005 6.2.6.7",
-            resistance: flange,
             share: 1.0,
         },
     ])

@@ -2,7 +2,7 @@
 #![allow(non_snake_case)]
 
 use super::limits::Limit;
-use super::numbers::Numbers;
+use super::numbers::{PlateSide, Which};
 use crate::assess::{Component, RowForce};
 use crate::eurocode::welds;
 use crate::rulebook::Rulebook;
@@ -10,23 +10,23 @@ use crate::units::{Force, Length};
 use crate::{given, step};
 
 /// β_w and f_u of the weaker part joined.
-fn parts(n: &Numbers) -> Option<(f64, crate::units::Stress)> {
+fn parts(n: &PlateSide) -> Option<(f64, crate::units::Stress)> {
     // The stronger β_w of the two is the safe one where the parts differ (Table 4.1 gives it per grade).
-    Some((n.beta_w_beam?.max(n.beta_w_plate?), n.beam_strength.f_u.min(n.plate_strength.f_u)))
+    Some((n.beta_w_beam?.max(n.beta_w_plate?), n.beam_strength.f_u.min(n.strength.f_u)))
 }
 
 /// The tension flange's fillets against the rows beside the flange, and the web's against the rows beside the web, alone and
-/// in groups, at the joint's full moment resistance. `None` where a throat or a grade is not known.
+/// in groups, at the joint's full moment resistance. None where a throat or a grade is not known.
 pub fn at_flange_and_web(
-    n: &Numbers,
+    n: &PlateSide,
     rulebook: &Rulebook,
     rows: &[RowForce],
     heights: &[Length],
     limits: &[Limit],
-) -> (Option<Component>, Option<Vec<Component>>) {
+) -> Vec<Component> {
     let gamma_M2 = rulebook.annex.gamma_m2;
-    let Some((beta_w, f_u)) = parts(n) else { return (None, None) };
-    let first_below = (0..rows.len()).find(|&i| heights[i] < n.beam.h);
+    let Some((beta_w, f_u)) = parts(n) else { return Vec::new() };
+    let first_below = (0..rows.len()).find(|&i| heights[i] < n.flange_top());
     let F_rows: Force =
         rows.iter().zip(0..).filter(|(_, i)| first_below.is_none_or(|b| *i <= b)).map(|(r, _)| r.force).sum();
     let (b_fb, t_fb, t_wb, r) = (n.beam.b, n.beam.t_f, n.beam.t_w, n.r_b_most);
@@ -36,7 +36,7 @@ pub fn at_flange_and_web(
         let fillet = welds::across(a, f_u, beta_w, gamma_M2);
         let mut w = fillet.working;
         let (F_w_Rd, f_y, b_p) = (fillet.per_length, n.beam_strength.f_y_flange, n.b_p);
-        let beyond_flange = n.plate_top - n.beam.h;
+        let beyond_flange = n.top - n.flange_top();
         given!(w, "beam flange on the plate; rows beside it"; b_fb, t_fb, t_wb, r, f_y, b_p, beyond_flange, F_rows);
         step!(w, "leg of the fillet", leg = 2.0_f64.sqrt() * a);
         // A plate that ends at the flange has no room for the outer fillet.
@@ -50,7 +50,7 @@ pub fn at_flange_and_web(
         step!(w, "6.2.3(4)", F_flange_Ed = F_rows.min(F_most));
         Component {
             id: "flange-weld".into(),
-            title: "weld at the tension flange".into(),
+            title: format!("weld at the tension flange{}", n.which.suffix()),
             clause: "EN 1993-1-8:2005 4.5.3.2",
             resistance: F_flange_w_Rd,
             at_full: F_flange_Ed,
@@ -67,7 +67,11 @@ pub fn at_flange_and_web(
             step!(w, "both sides of the web, 4.5.3.2", F_web_w_Rd = 2.0 * F_w_Rd * b_eff);
             Component {
                 id: "web-weld".into(),
-                title: format!("weld at the web, {}", super::limits::named(rows[first].row, rows[last].row)),
+                title: format!(
+                    "weld at the web{}, {}",
+                    n.which.suffix(),
+                    super::limits::named(rows[first].row, rows[last].row)
+                ),
                 clause: "EN 1993-1-8:2005 4.5.3.2",
                 resistance: F_web_w_Rd,
                 at_full: force,
@@ -75,7 +79,7 @@ pub fn at_flange_and_web(
             }
         };
         let mut components = Vec::new();
-        for limit in limits.iter().filter(|limit| limit.id == "beam-web-in-tension" && limit.last < rows.len()) {
+        for limit in limits.iter().filter(|limit| is_web_of(n.which, limit) && limit.last < rows.len()) {
             let force: Force = rows[limit.first..=limit.last].iter().map(|row| row.force).sum();
             let beside_flange = Some(limit.first) == first_below;
             if !beside_flange {
@@ -87,17 +91,21 @@ pub fn at_flange_and_web(
         }
         components
     });
-    (flange, web)
+    flange.into_iter().chain(web.into_iter().flatten()).collect()
+}
+
+fn is_web_of(which: Which, limit: &Limit) -> bool {
+    limit.id == "beam-web-in-tension" && limit.of == Some(which)
 }
 
 /// The length of web that a row pulls on: l_eff of the end plate for the row alone, as in 6.2.6.8.
-pub fn web_length(limits: &[Limit], row: usize) -> Length {
-    let own = |l: &&Limit| l.id == "beam-web-in-tension" && l.first == row && l.last == row;
+pub fn web_length(n: &PlateSide, limits: &[Limit], row: usize) -> Length {
+    let own = |l: &&Limit| is_web_of(n.which, l) && l.first == row && l.last == row;
     limits.iter().find(own).map_or(Length::ZERO, |limit| limit.length)
 }
 
 /// The web's fillets against the vertical shear: the length of web below the rows in tension. `None` where not known.
-pub fn in_shear(n: &Numbers, rulebook: &Rulebook, tension_reach: Length) -> Option<Component> {
+pub fn in_shear(n: &PlateSide, rulebook: &Rulebook, tension_reach: Length) -> Option<Component> {
     let (beta_w, f_u) = parts(n)?;
     let fillet = welds::along(n.a_web?, f_u, beta_w, rulebook.annex.gamma_m2);
     let mut w = fillet.working;
@@ -107,7 +115,7 @@ pub fn in_shear(n: &Numbers, rulebook: &Rulebook, tension_reach: Length) -> Opti
     step!(w, "both sides of the web, 4.5.3.2", V_w_Rd = 2.0 * F_w_Rd * l_w);
     Some(Component {
         id: "web-weld-in-shear".into(),
-        title: "weld at the web in shear".into(),
+        title: format!("weld at the web in shear{}", n.which.suffix()),
         clause: "EN 1993-1-8:2005 4.5.3.2",
         resistance: V_w_Rd,
         at_full: Force::ZERO,
