@@ -5,8 +5,9 @@ mod inputs;
 mod output;
 mod progress;
 mod rules;
+mod sheet;
 
-use std::path::PathBuf;
+use std::path::{Path, PathBuf};
 use std::process::ExitCode;
 
 use clap::{Args, CommandFactory, Parser, Subcommand, ValueEnum};
@@ -17,6 +18,7 @@ use faying::run;
 use failure::Failure;
 use inputs::Given;
 use output::{Colour, Output};
+use sheet::SheetArgs;
 
 const EXIT_CODES: &str = "\
 Exit codes:
@@ -24,6 +26,16 @@ Exit codes:
   1  at least one joint is on hold: it does not carry what is required, or it is not there
   2  wrong use, or an input that can't be read
   3  nothing is on hold, but something could not be proven (or no joint was found at all)
+
+An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
+
+const SHEET_EXIT_CODES: &str = "\
+Exit codes:
+  0  the joint is clear, or deviates and carries (a comment)
+  1  the joint is on hold: it does not carry what is required, or it is not there
+  2  wrong use, a mark that fits no joint or several, or an input that can't be read
+  3  the joint could not be proven
+With several joints the worst counts: 1 before 3 before 0.
 
 An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
 
@@ -58,6 +70,11 @@ enum Command {
     /// Needs no schedule; ends with what to ask the fabricator for.
     #[command(after_help = SURVEY_EXIT_CODES)]
     Survey(SurveyArgs),
+    /// Print the calculation sheet of a joint: sketch, inputs with their origin, every check with formula and clause.
+    ///
+    /// To be followed by hand, printed and signed. Numbers are rounded for reading and were computed unrounded.
+    #[command(after_help = SHEET_EXIT_CODES)]
+    Sheet(SheetArgs),
     /// List the rules, or print the page of one: what it finds, why it matters, what to do.
     Rules {
         /// The rule's id, as it stands before a finding: plate-thinner.
@@ -123,11 +140,25 @@ enum Format {
     Json,
 }
 
+/// Where rules come from and a report goes.
+struct Places<'a> {
+    rules: Option<&'a Path>,
+    output: Option<&'a Path>,
+    color: Colour,
+}
+
+impl Common {
+    fn places(&self) -> Places<'_> {
+        Places { rules: self.rules.as_deref(), output: self.output.as_deref(), color: self.color }
+    }
+}
+
 /// Runs the command line and gives the exit code.
 pub fn main() -> ExitCode {
     let done = match Cli::parse().command {
         Command::Review(args) => review(&args),
         Command::Survey(args) => survey(&args),
+        Command::Sheet(args) => sheet_of(&args),
         Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::to_stdout(&text)).map(|()| 0),
         Command::Completions { shell } => completions(shell).map(|()| 0),
     };
@@ -137,9 +168,9 @@ pub fn main() -> ExitCode {
 fn review(args: &ReviewArgs) -> Result<u8, Failure> {
     let draw = |review: &Review, output: &Output, model: &[u8]| match args.common.format {
         Format::Text => Ok(text::render(review, &output.options(args.common.all), Some(model))),
-        Format::Json => json::review(review),
+        Format::Json => json::review(review).map_err(no_json),
     };
-    let review = report(&args.path, Some(&args.schedule), &args.common, draw)?;
+    let review = report(&args.path, Some(&args.schedule), &args.common.places(), draw)?;
     Ok(match review.exit_code() {
         3 if args.allow_unproven => 0,
         code => code,
@@ -149,25 +180,36 @@ fn review(args: &ReviewArgs) -> Result<u8, Failure> {
 fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
     let draw = |review: &Review, output: &Output, _: &[u8]| match args.common.format {
         Format::Text => Ok(survey::render(review, &output.options(args.common.all))),
-        Format::Json => json::survey(review),
+        Format::Json => json::survey(review).map_err(no_json),
     };
-    report(&args.path, None, &args.common, draw).map(|_| 0)
+    report(&args.path, None, &args.common.places(), draw).map(|_| 0)
+}
+
+fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {
+    let places = Places { rules: args.rules.as_deref(), output: args.output.as_deref(), color: args.color };
+    let draw = |review: &Review, output: &Output, _: &[u8]| sheet::draw(args, review, output);
+    let review = report(&args.path, Some(&args.schedule), &places, draw)?;
+    sheet::exit_code(args, &review)
 }
 
 /// Reads, runs, draws and writes; `schedules` is `None` where none is wanted, not even the folder's own.
 fn report(
-    path: &std::path::Path,
+    path: &Path,
     schedules: Option<&[PathBuf]>,
-    common: &Common,
-    draw: impl FnOnce(&Review, &Output, &[u8]) -> serde_json::Result<String>,
+    places: &Places<'_>,
+    draw: impl FnOnce(&Review, &Output, &[u8]) -> Result<String, Failure>,
 ) -> Result<Review, Failure> {
-    let given = Given::gather(path, schedules, common.rules.as_deref())?;
+    let given = Given::gather(path, schedules, places.rules)?;
     // Before the work is done, so that nobody waits for a report that can't be written.
-    let output = Output::open(common.output.as_deref(), common.color, &given.paths)?;
+    let output = Output::open(places.output, places.color, &given.paths)?;
     let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
-    let drawn = draw(&review, &output, &given.model.bytes).map_err(|why| Failure::because("can't write JSON", why))?;
+    let drawn = draw(&review, &output, &given.model.bytes)?;
     output.write(&drawn)?;
     Ok(review)
+}
+
+fn no_json(why: serde_json::Error) -> Failure {
+    Failure::because("can't write JSON", why)
 }
 
 fn completions(shell: clap_complete::Shell) -> Result<(), Failure> {

@@ -1,6 +1,10 @@
 //! The review: the plain data that every report is drawn from.
 
+pub mod sketch;
+
 use std::sync::Arc;
+
+use sketch::Sketch;
 
 use crate::origin::{Missing, Place, Problem};
 use crate::working::Working;
@@ -156,6 +160,23 @@ pub struct RowResult {
     pub governed_by: String,
 }
 
+/// What the row forces and the checks of the moment stand for.
+#[derive(Clone, Debug)]
+pub struct RowBasis {
+    /// The load case that uses the moment resistance most; `None` where no case states a moment.
+    pub case: Option<String>,
+    /// Whether the tension is at the top.
+    pub tension_at_top: bool,
+    /// The transformation parameter of 5.3.
+    pub beta: f64,
+    /// Σ F·h of the rows, before the welds are asked, kNm.
+    pub of_rows_knm: f64,
+    /// M_j,Rd, kNm.
+    pub moment_knm: f64,
+    /// What the reader needs to follow them, one sentence each.
+    pub notes: Vec<String>,
+}
+
 /// A check's result.
 #[derive(Clone, Debug)]
 pub struct CheckResult {
@@ -208,8 +229,12 @@ pub struct JointReview {
     pub intended_resistance: Option<Resistance>,
     /// Required actions.
     pub required: Vec<Required>,
-    /// Row forces of the governing sense.
+    /// Row forces of the governing sense, at the full moment resistance.
     pub rows: Vec<RowResult>,
+    /// What the row forces stand for.
+    pub row_basis: Option<RowBasis>,
+    /// The load case that the checks of the shear stand for.
+    pub shear_case: Option<String>,
     /// Checks.
     pub checks: Vec<CheckResult>,
     /// Findings, worst first.
@@ -222,6 +247,8 @@ pub struct JointReview {
     pub inputs: Vec<(String, String, String)>,
     /// The detail in lines, intended and detailed, for a two-column difference; empty if nothing is intended.
     pub difference: Option<(Vec<String>, Vec<String>)>,
+    /// The geometry, if the joint could be laid out.
+    pub sketch: Option<Arc<Sketch>>,
     /// Where to look in the model.
     pub at: Option<Place>,
 }

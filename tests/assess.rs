@@ -8,5 +8,6 @@ mod laws;
 mod odd_sizes;
 mod plastic;
 mod safe;
+mod splices;
 pub mod strengthened;
 mod strengthening;

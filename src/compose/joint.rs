@@ -1,12 +1,14 @@
 //! One joint's review: resistance, required actions, checks, findings, outcome.
 
-use super::{Computed, Sources, brief};
+use super::{Computed, Sources, brief, sketch};
 use crate::assess::end_plate::{BOUND_BY_OPPOSITE, BOUND_BY_TENSION};
 use crate::assess::{About, Assessment, Component, Gap, Sense, State, Verdict};
 use crate::intent::ScheduledJoint;
 use crate::joints::Joint;
 use crate::origin::{Ask, Missing};
-use crate::review::{CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowResult};
+use crate::review::{
+    CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowBasis, RowResult,
+};
 
 /// A joint of the steel.
 pub fn review(
@@ -23,7 +25,7 @@ pub fn review(
     findings.sort_by_key(|finding| finding.severity);
     let outcome = outcome(assessment, &findings, &missing);
     let intended = computed.intended.as_ref().and_then(|i| i.as_ref().ok());
-    let leading = assessment.map(|a| leading(a, scheduled));
+    let leading = assessment.map(|a| leading(a, scheduled)).unwrap_or_default();
     JointReview {
         mark: scheduled.and_then(|s| s.mark.clone()).unwrap_or_else(|| joint.mark.clone()),
         kind: joint.kind.word().into(),
@@ -38,8 +40,10 @@ pub fn review(
         resistance: assessment.map(resistance).unwrap_or_default(),
         intended_resistance: intended.map(|(_, a)| resistance(a)),
         required: required(assessment, scheduled),
-        rows: leading.as_ref().map(|l| l.rows.clone()).unwrap_or_default(),
-        checks: leading.map(|l| l.checks).unwrap_or_default(),
+        rows: leading.rows,
+        row_basis: leading.row_basis,
+        shear_case: leading.shear_case,
+        checks: leading.checks,
         findings,
         missing,
         assumptions: assessment.map(assumptions).unwrap_or_default(),
@@ -49,6 +53,7 @@ pub fn review(
             .collect(),
         difference: intended
             .and_then(|(meant, _)| Some((brief::lines(meant), brief::lines(joint.layout.as_ref().ok()?)))),
+        sketch: sketch::sketch(steel, joint),
         at: joint.place.clone(),
     }
 }
@@ -83,12 +88,15 @@ pub fn without_steel(scheduled: &ScheduledJoint, kind: &str, findings: Vec<Findi
         intended_resistance: None,
         required: required(None, Some(scheduled)),
         rows: Vec::new(),
+        row_basis: None,
+        shear_case: None,
         checks: Vec::new(),
         findings,
         missing: Vec::new(),
         assumptions: Vec::new(),
         inputs: Vec::new(),
         difference: None,
+        sketch: None,
         at: Some(scheduled.at.clone()),
     }
 }
@@ -226,8 +234,11 @@ fn required(assessment: Option<&Assessment>, scheduled: Option<&ScheduledJoint>)
 }
 
 /// Row forces and checks of the load case that uses the joint most, or at its own full resistance without one.
+#[derive(Default)]
 struct Leading {
     rows: Vec<RowResult>,
+    row_basis: Option<RowBasis>,
+    shear_case: Option<String>,
     checks: Vec<CheckResult>,
 }
 
@@ -250,6 +261,15 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
             governed_by: row.governed_by.clone(),
         })
         .collect();
+    let named = |case: usize| Some(scheduled?.cases.get(case)?.name.clone());
+    let row_basis = moment.map(|m| RowBasis {
+        case: by_moment.and_then(|case| named(case.case)),
+        tension_at_top: m.sense == Sense::Hogging,
+        beta: m.beta,
+        of_rows_knm: m.without_welds.knm(),
+        moment_knm: m.moment.knm(),
+        notes: m.notes.clone(),
+    });
 
     let mut checks = Vec::new();
     let share = by_moment.map(|case| use_of(&case.verdicts, About::Moment));
@@ -273,7 +293,8 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", shear.shear.kn(), required, "kN"));
         checks.extend(shear.components.iter().map(|c| component(c, required)));
     }
-    Leading { rows, checks }
+    let shear_case = shear_case.filter(|case| case.shear.is_some()).and_then(|case| named(case.case));
+    Leading { rows, row_basis, shear_case, checks }
 }
 
 fn component(component: &Component, action: Option<f64>) -> CheckResult {

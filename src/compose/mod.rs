@@ -2,6 +2,7 @@
 
 mod brief;
 mod joint;
+mod sketch;
 
 use rayon::prelude::*;
 use sha2::{Digest, Sha256};

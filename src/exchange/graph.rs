@@ -103,11 +103,10 @@ impl Entities {
     pub fn add<'n>(&mut self, class: &str, attributes: impl IntoIterator<Item = (&'n str, Value)>) -> Id {
         let class = self.class_id(class);
         let id = self.open(class, "", Spot::default());
-        let known = self.attributes(id);
         for (name, value) in attributes {
             let cell = self.store.put(&value);
-            match known.iter().position(|a| a.name == name) {
-                Some(index) => self.set(id, index, cell),
+            match self.attribute(id, name) {
+                Some((index, _)) => self.set(id, index, cell),
                 None => self.add_extra(id, name, cell),
             }
         }
@@ -180,15 +179,28 @@ impl Entities {
 
     /// The position and kind of an attribute.
     pub(super) fn attribute(&self, id: Id, name: &str) -> Option<(usize, Kind)> {
-        let (index, known) = self.attributes(id).iter().enumerate().find(|(_, a)| a.name == name)?;
-        Some((index, known.kind))
+        let class = self.schema.class(self.class(id))?;
+        let index = class.position(name)?;
+        Some((index, class.attributes.get(index)?.kind))
     }
 
+    /// The value of an attribute, by its EXPRESS name; `None` where it has no such attribute.
+    #[inline]
+    pub(super) fn value(&self, id: Id, name: &str) -> Option<&Cell> {
+        let node = self.node(id);
+        match self.schema.class(node.class).and_then(|class| class.position(name)) {
+            Some(index) => self.store.cell(node.values as usize + index),
+            None => self.extras(id).iter().find(|(extra, _)| **extra == *name).map(|(_, cell)| cell),
+        }
+    }
+
+    #[inline]
     pub(super) fn class(&self, id: Id) -> ClassId {
         self.node(id).class
     }
 
     /// Whether a class is of that name or a subtype of it. What IFC4X3 renamed answers to the older name too.
+    #[inline]
     pub(super) fn is_a(&self, class: ClassId, name: &str) -> bool {
         self.is_named(class, name)
             || match name {
@@ -198,10 +210,11 @@ impl Entities {
             }
     }
 
+    #[inline]
     fn is_named(&self, class: ClassId, name: &str) -> bool {
-        match self.schema.class(class) {
-            Some(class) => class.line.iter().rev().any(|class| self.class_name(*class) == name),
-            None => self.class_name(class) == name,
+        match self.schema.find_exact(name) {
+            Some(asked) => self.schema.is_subtype(class, asked),
+            None => usize::from(class) >= self.schema.len() && self.class_name(class) == name,
         }
     }
 
@@ -232,6 +245,9 @@ impl Entities {
 
     /// The attributes that the schema does not give it.
     pub(super) fn extras(&self, id: Id) -> &[(Box<str>, Cell)] {
+        if self.extras.is_empty() {
+            return &[];
+        }
         self.extras.get(&id).map_or(&[], |extras| extras)
     }
 
@@ -278,6 +294,7 @@ impl Entities {
         Pointers { starts, from: from_all }
     }
 
+    #[inline]
     fn node(&self, id: Id) -> &Node {
         &self.nodes[id.0 as usize]
     }

@@ -204,10 +204,15 @@ impl Store {
         self.cells.get(start..start + length).unwrap_or_default()
     }
 
+    pub fn cell(&self, at: usize) -> Option<&Cell> {
+        self.cells.get(at)
+    }
+
     pub fn cell_mut(&mut self, at: usize) -> Option<&mut Cell> {
         self.cells.get_mut(at)
     }
 
+    #[inline]
     pub fn view(&self, cell: Cell) -> View<'_> {
         let Some(case) = cell.case() else { return View::Number(f64::from_bits(cell.0)) };
         match case {
@@ -231,6 +236,14 @@ impl Store {
     pub fn items(&self, cell: Cell) -> &[Cell] {
         let (start, length) = self.range_of(cell, Case::WideList);
         self.cells.get(start..start + length).unwrap_or_default()
+    }
+
+    /// The items of a list, or the one value that is none; out of their types, if any.
+    pub fn flat<'a>(&'a self, mut cell: &'a Cell) -> &'a [Cell] {
+        while let (Some(Case::Typed), Some(inner)) = (cell.case(), self.cells.get(cell.index() as usize)) {
+            cell = inner;
+        }
+        if cell.is_list() { self.items(*cell) } else { std::slice::from_ref(cell) }
     }
 
     /// The parts of a list, each of that many items (at least one) and in its place.

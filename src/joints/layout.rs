@@ -160,9 +160,54 @@ pub enum Layout {
     Splice(SpliceLayout),
 }
 
+/// Which side of a joint an end plate with its beam is.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Which {
+    /// The only one: the other side is a column.
+    Only,
+    /// The supported member's half of a splice.
+    Supported,
+    /// The other half of a splice.
+    Supporting,
+    /// Both halves, which are alike.
+    Both,
+}
+
+impl Which {
+    /// Before a part's name: "supported ".
+    pub fn owner(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => "supported ",
+            Self::Supporting => "supporting ",
+        }
+    }
+
+    /// After a plate's name: " of the supported beam".
+    pub fn of(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => " of the supported beam",
+            Self::Supporting => " of the supporting beam",
+        }
+    }
+
+    /// After a component's name: ", supported side".
+    pub fn suffix(self) -> &'static str {
+        match self {
+            Self::Only => "",
+            Self::Supported => ", supported side",
+            Self::Supporting => ", supporting side",
+            Self::Both => ", both sides",
+        }
+    }
+}
+
 /// A beam with its end plate, wherever the plate is bolted to.
 #[derive(Clone, Copy, Debug)]
 pub struct PlateSide<'a> {
+    /// Which side it is.
+    pub which: Which,
     /// The beam.
     pub beam: &'a MemberAt,
     /// Height of its lower flange's soffit.
@@ -194,16 +239,15 @@ pub struct BoltedPlate<'a> {
 }
 
 impl Half {
-    /// The half as one side of its joint.
-    pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
+    fn side(&self, which: Which) -> PlateSide<'_> {
+        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
     }
 }
 
 impl EndPlateLayout {
     /// The beam's side.
     pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
+        PlateSide { which: Which::Only, beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
     }
 }
 
@@ -212,7 +256,7 @@ impl Layout {
     pub fn side(&self) -> PlateSide<'_> {
         match self {
             Self::EndPlate(layout) => layout.side(),
-            Self::Splice(layout) => layout.supported.side(),
+            Self::Splice(layout) => layout.supported.side(Which::Supported),
         }
     }
 
@@ -220,7 +264,9 @@ impl Layout {
     pub fn sides(&self) -> Vec<PlateSide<'_>> {
         match self {
             Self::EndPlate(layout) => vec![layout.side()],
-            Self::Splice(layout) => vec![layout.supported.side(), layout.supporting.side()],
+            Self::Splice(layout) => {
+                vec![layout.supported.side(Which::Supported), layout.supporting.side(Which::Supporting)]
+            }
         }
     }
 
@@ -257,8 +303,8 @@ impl<'a> From<&'a EndPlateLayout> for BoltedPlate<'a> {
 
 impl<'a> From<&'a SpliceLayout> for BoltedPlate<'a> {
     fn from(layout: &'a SpliceLayout) -> Self {
-        let support = Support::Plate(layout.supporting.side());
-        Self { side: layout.supported.side(), support, bolts: &layout.bolts }
+        let support = Support::Plate(layout.supporting.side(Which::Supporting));
+        Self { side: layout.supported.side(Which::Supported), support, bolts: &layout.bolts }
     }
 }
 

@@ -16,6 +16,7 @@ mod opposite;
 mod rank;
 mod recognise;
 mod scene;
+mod splice;
 mod stiffeners;
 mod strengthening;
 mod told;
@@ -24,7 +25,7 @@ mod welds;
 
 pub use layout::{
     Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, Half, Layout, MemberAt,
-    PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds,
+    PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;

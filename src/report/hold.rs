@@ -77,7 +77,7 @@ fn lead(joint: &JointReview, worst: Option<&Required>) -> String {
 }
 
 /// "B1 (UKB 457x191x67, S355) on C1 (UKC 254x254x89, grade not known); end-plate-moment, intended detail M3".
-fn who(joint: &JointReview) -> String {
+pub(super) fn who(joint: &JointReview) -> String {
     let members = match (&joint.supported, &joint.supporting) {
         (Some(on), Some(by)) => format!("{} on {}; ", member(on), member(by)),
         (Some(one), None) | (None, Some(one)) => format!("{}; ", member(one)),

@@ -34,12 +34,15 @@ pub fn joint(n: usize, outcome: Outcome) -> JointReview {
         intended_resistance: None,
         required: Vec::new(),
         rows: Vec::new(),
+        row_basis: None,
+        shear_case: None,
         checks: Vec::new(),
         findings: Vec::new(),
         missing: Vec::new(),
         assumptions: Vec::new(),
         inputs: Vec::new(),
         difference: None,
+        sketch: None,
         at: Some(place("hall.ifcxml", 100 + u32::try_from(n).unwrap(), 3)),
     }
 }

@@ -4,10 +4,11 @@
 mod column;
 mod plate;
 
-use super::numbers::{Numbers, PlateSide, Row, Which};
+use super::numbers::{Numbers, PlateSide, Row};
 use crate::eurocode::effective_length::EffectiveLength;
 use crate::eurocode::t_stub::{ModeOne, TStub, t_stub};
 use crate::eurocode::{Resistance, alpha};
+use crate::joints::Which;
 use crate::rulebook::{self, Rulebook};
 use crate::units::{Force, Length};
 use crate::working::Working;
@@ -118,6 +119,7 @@ impl<'a> TensionSide<'a> {
     }
 
     fn alpha(&self, m: Length, e: Length, m_2: Length, w: &mut Working) -> f64 {
+        crate::given!(w, "beside flange or stiffener"; m, e, m_2);
         crate::step!(w, "Figure 6.11", lambda_1 = m / (m + e));
         crate::step!(w, "Figure 6.11", lambda_2 = m_2 / (m + e));
         alpha::alpha(lambda_1, lambda_2, self.rulebook.settings.alpha_max)

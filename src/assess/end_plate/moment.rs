@@ -54,7 +54,7 @@ pub fn resistance(
 
     let plies = match n.support {
         Support::Column(_) => "end plate and column flange under head or nut",
-        Support::Plate(_) => "end plates under head or nut",
+        Support::Plate(_) | Support::Twin => "end plates under head or nut",
     };
     let bolts_used = forces.iter().map(|row| row.bolt_share).fold(0.0, f64::max);
     for (id, title, resistance, working) in [

@@ -5,10 +5,10 @@ use super::numbers::{Numbers, PlateSide, Row, Support};
 use super::weld_checks;
 use crate::assess::{Component, MomentResistance, ShearResistance};
 use crate::eurocode::bolts::{self, BearingPlace};
+use crate::given;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length, Stress, mm};
 use crate::working::Working;
-use crate::{given, step};
 
 /// M12 and M14 in holes with 2 mm clearance carry 0.85 of their shear, 3.6.1(5).
 fn beta_hole(n: &Numbers) -> f64 {
@@ -123,8 +123,9 @@ impl<'a> Ply<'a> {
             f_u: side.strength.f_u,
         };
         let behind = match &n.support {
-            Support::Plate(other) => plate(other),
-            Support::Column(column) => Self {
+            Support::Twin => None,
+            Support::Plate(other) => Some(plate(other)),
+            Support::Column(column) => Some(Self {
                 plate: None,
                 ends: [
                     n.rows.first().zip(column.above).map(|(row, above)| row.height + above),
@@ -132,9 +133,9 @@ impl<'a> Ply<'a> {
                 ],
                 t: column.section.t_f,
                 f_u: column.strength.f_u,
-            },
+            }),
         };
-        vec![plate(&n.side), behind]
+        [plate(&n.side)].into_iter().chain(behind).collect()
     }
 
     fn named(self) -> (&'static str, String) {
@@ -173,7 +174,7 @@ fn bearing(n: &Numbers, ply: Ply<'_>, up: bool, shear_left: &[Force], gamma_M2: 
         all += 2.0 * bearing.value;
         with_shear += 2.0 * bearing.value.min(shear_left[i]);
     }
-    let V_bearing = all;
-    step!(w, "sum over the rows", V_b_Rd = V_bearing);
+    let V_b_Rd = all;
+    given!(w, "two bolts a row, summed over the rows"; V_b_Rd);
     (V_b_Rd, with_shear, w)
 }
