@@ -2,6 +2,7 @@
 
 mod action_not_stated;
 mod axial_force_beyond_limit;
+mod backing_plate_missing;
 mod bench;
 mod bolt_class_higher;
 mod bolt_class_lower;
@@ -10,6 +11,7 @@ mod bolt_count_differs;
 mod bolt_larger;
 mod bolt_size_unknown;
 mod bolt_smaller;
+mod diagonal_missing;
 mod edge_distance_short;
 mod gauge_differs;
 mod grade_unknown;
@@ -34,6 +36,8 @@ mod section_unknown;
 mod shear_short;
 mod stiffener_added;
 mod stiffener_missing;
+mod strengthening_added;
+mod web_plate_missing;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;

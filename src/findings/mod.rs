@@ -2,6 +2,7 @@
 
 mod action_not_stated;
 mod axial_force_beyond_limit;
+mod backing_plate_missing;
 mod bolt_class_higher;
 mod bolt_class_lower;
 mod bolt_class_unknown;
@@ -11,6 +12,7 @@ mod bolt_size_unknown;
 mod bolt_smaller;
 mod compare;
 mod context;
+mod diagonal_missing;
 mod edge_distance_short;
 mod gauge_differs;
 mod grade_unknown;
@@ -37,6 +39,9 @@ mod shortfall;
 mod stiffener_added;
 mod stiffener_missing;
 mod stiffeners;
+mod strengthening;
+mod strengthening_added;
+mod web_plate_missing;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;
@@ -72,6 +77,9 @@ pub const RULES: &[Rule] = &[
     plate_thinner::RULE,
     weld_thinner::RULE,
     stiffener_missing::RULE,
+    web_plate_missing::RULE,
+    diagonal_missing::RULE,
+    backing_plate_missing::RULE,
     section_differs::RULE,
     plate_grade_lower::RULE,
     row_moved::RULE,
@@ -94,6 +102,7 @@ pub const RULES: &[Rule] = &[
     bolt_class_higher::RULE,
     bolt_larger::RULE,
     stiffener_added::RULE,
+    strengthening_added::RULE,
     not_credited::RULE,
 ];
 
