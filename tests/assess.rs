@@ -12,4 +12,5 @@ mod safe;
 mod slip;
 mod splices;
 mod stiffness;
+pub mod strengthened;
 mod strengthening;

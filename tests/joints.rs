@@ -7,3 +7,4 @@ mod layouts;
 mod marks;
 mod refusals;
 mod splices;
+mod strengthening;

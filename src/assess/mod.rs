@@ -231,6 +231,8 @@ pub struct Assessment {
     pub gaps: Vec<Gap>,
     /// What was assumed, one sentence each.
     pub assumptions: Vec<String>,
+    /// Strengthening parts that no check credits, and why: one sentence each.
+    pub not_credited: Vec<String>,
     /// Inputs with their origins.
     pub inputs: Vec<Input>,
 }

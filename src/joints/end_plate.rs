@@ -50,6 +50,11 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
         draft.joint.plates.extend(plates.iter().map(|plate| (*plate, "stiffener")));
         draft.joint.welds.extend(welded.iter().map(|weld| (*weld, Role::Stiffener.word())));
     }
+    let strengthening = &on_column.strengthening;
+    draft.joint.plates.retain(|(plate, _)| !strengthening.plates.iter().any(|(other, _)| other == plate));
+    draft.joint.plates.extend(&strengthening.plates);
+    let welded = strengthening.welds.iter().filter(|weld| !case.welds.iter().any(|(other, _)| other == *weld));
+    draft.joint.welds.extend(welded.map(|weld| (*weld, Role::Stiffener.word())));
     let listed: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
     draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
     draft.joint.layout = assessable(scene, case, &outline, &bolted)
@@ -238,6 +243,7 @@ fn laid_out(
         bolts,
         welds: welds_at(scene, &case.frame, case.end.member, &case.welds),
         stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),
+        strengthening: on_column.strengthening.layout,
         column_above: (above <= RUNS_ON).then_some(mm(above)),
         column_below: (below <= RUNS_ON).then_some(mm(below)),
         not_credited,

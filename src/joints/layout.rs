@@ -3,6 +3,10 @@
 //! Heights are measured up from the soffit of the supported member's lower flange, in the direction of the member's
 //! depth that points to the sky; sides are measured across, from the supported member's web.
 
+mod strengthening;
+
+pub use strengthening::{Backing, Diagonal, EdgeWeld, Strengthening, WebPlate};
+
 use crate::origin::{Datum, Known};
 use crate::rulebook::{Category, Grade, Section};
 use crate::units::Length;
@@ -125,11 +129,13 @@ pub struct EndPlateLayout {
     pub welds: Welds,
     /// The column's stiffeners near the joint, from the top down.
     pub stiffeners: Vec<Stiffener>,
+    /// What else strengthens the column.
+    pub strengthening: Strengthening,
     /// From the top row up to the column's upper end; `None` where the column runs on past 10 m.
     pub column_above: Option<Length>,
     /// From the lowest row down to the column's lower end.
     pub column_below: Option<Length>,
-    /// Parts welded to the column here that no check credits (web plates, diagonals, backing plates): one sentence each.
+    /// Parts at the column here that are none of these, so that no check can credit them: one sentence each.
     pub not_credited: Vec<String>,
 }
 

@@ -18,13 +18,14 @@ mod recognise;
 mod scene;
 mod splice;
 mod stiffeners;
+mod strengthening;
 mod told;
 mod touch;
 mod welds;
 
 pub use layout::{
-    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Held, Layout, MemberAt, PlateSide, SpliceLayout,
-    Stiffener, Support, Welds, Which,
+    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, Half, Held, Layout, MemberAt,
+    PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;

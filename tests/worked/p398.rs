@@ -51,6 +51,7 @@ pub fn example(rulebook: &Rulebook) -> EndPlateLayout {
         },
         welds: Welds { flange_top: known(throat(12.0)), flange_bottom: known(throat(12.0)), web: known(throat(8.0)) },
         stiffeners: Vec::new(),
+        strengthening: Default::default(),
         column_above: None,
         column_below: None,
         not_credited: Vec::new(),

@@ -173,6 +173,10 @@ impl<'a> TensionSide<'a> {
         self.rulebook.annex.gamma_m0
     }
 
+    fn gamma_M2(&self) -> f64 {
+        self.rulebook.annex.gamma_m2
+    }
+
     fn mode_one(&self) -> ModeOne {
         match self.rulebook.settings.mode_one {
             rulebook::ModeOne::Method1 => ModeOne::Method1,

@@ -8,6 +8,7 @@ mod rows;
 mod shear;
 mod solver;
 mod sound;
+mod strengthening;
 mod totals;
 mod turning;
 mod weld_checks;
@@ -149,6 +150,16 @@ pub fn assess_with<'l>(
         let solve = |sense: Sense, beta: f64, beside: Beside, rule: Option<RowForces>| {
             solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, beside, rule)
         };
+        // The side that no case asks for keeps no proof back.
+        let needed = |sense| {
+            demands.is_empty() && sense == Sense::Hogging
+                || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense))
+        };
+        for (sense, n) in [(Sense::Hogging, n), (Sense::Sagging, &turned)] {
+            if needed(sense) {
+                noted.gaps.extend(strengthening::short_in_compression(n));
+            }
+        }
         let at_rest = |sense, noted: &mut Noted| match solve(
             sense,
             plain_beta,
@@ -158,10 +169,7 @@ pub fn assess_with<'l>(
             Ok(resistance) => Some(resistance),
             Err(reason) => {
                 let what = if sense == Sense::Hogging { "tension at the top" } else { "tension at the bottom" };
-                // The side that no case asks for keeps no proof back.
-                let needed = demands.is_empty() && sense == Sense::Hogging
-                    || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense));
-                if needed {
+                if needed(sense) {
                     noted.gaps.push(Gap::NotChecked(Missing {
                         what: format!("moment with {what}"),
                         reason,
@@ -200,6 +208,7 @@ pub fn assess_with<'l>(
         }
     }
     assessment.gaps = noted.gaps;
+    assessment.not_credited = noted.not_credited;
     assessment.assumptions = noted.assumptions;
     assessment.inputs = noted.inputs;
     assessment
