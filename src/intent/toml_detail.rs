@@ -8,7 +8,8 @@ use toml::de::DeValue;
 use super::actions::decimal;
 use super::source::tidy;
 use super::toml_form::{Reader, Sign, Table};
-use super::{IntendedDetail, IntendedStiffener};
+use super::{DiagonalForm, Friction, IntendedDetail, IntendedStiffener};
+use crate::rulebook::Category;
 use crate::units::{Length, mm};
 
 impl Reader<'_> {
@@ -19,17 +20,19 @@ impl Reader<'_> {
             return None;
         };
         let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
-        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members"]);
+        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members", "exposed"]);
         let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
         match tidy(name.get_ref()) {
             Ok(name) if !name.is_empty() => detail.name = name,
             Ok(_) => self.fault(name.span(), "a detail has no name; allowed is [detail.NAME]".into()),
             Err(message) => self.fault(name.span(), format!("detail: {message}")),
         }
+        detail.exposed = self.truth(&table, "exposed");
         if let Some(bolts) = self.inner(&table, "bolts") {
-            self.known(&bolts, &["size", "class", "rows_mm", "gauge_mm"]);
+            self.known(&bolts, &["size", "class", "rows_mm", "gauge_mm", "category", "friction_class", "slip_factor"]);
             detail.bolt_diameter = self.bolt_size(&bolts);
             detail.bolt_class = self.text(&bolts, "class");
+            (detail.bolt_category, detail.friction) = self.category(&bolts);
             detail.rows = self.rows(&bolts);
             detail.gauge = self.length(&bolts, "gauge_mm", Sign::Positive);
         }
@@ -52,9 +55,22 @@ impl Reader<'_> {
             detail.web_weld = self.length(&welds, "web_throat_mm", Sign::Positive);
         }
         if let Some(stiffeners) = self.inner(&table, "stiffeners") {
-            self.known(&stiffeners, &["top", "bottom"]);
-            detail.stiffener_top = self.stiffener(&stiffeners, "top");
-            detail.stiffener_bottom = self.stiffener(&stiffeners, "bottom");
+            self.known(&stiffeners, &["top", "bottom", "web_plates", "diagonals", "backing_plates"]);
+            const PAIR: [&str; 4] = ["thickness_mm", "grade", "throat_mm", "length_mm"];
+            detail.stiffener_top = self.plates(&stiffeners, "top", &PAIR);
+            detail.stiffener_bottom = self.plates(&stiffeners, "bottom", &PAIR);
+            detail.web_plates =
+                self.plates(&stiffeners, "web_plates", &["thickness_mm", "grade", "throat_mm", "sides"]);
+            detail.diagonals = self.plates(&stiffeners, "diagonals", &["thickness_mm", "grade", "throat_mm", "form"]);
+            detail.backing_plates = self.plates(&stiffeners, "backing_plates", &["thickness_mm", "grade"]);
+            if let Some(Some(_)) = detail.web_plates {
+                let table = self.inner(&stiffeners, "web_plates");
+                detail.web_plate_sides = table.and_then(|table| self.sides(&table));
+            }
+            if let Some(Some(_)) = detail.diagonals {
+                let table = self.inner(&stiffeners, "diagonals");
+                detail.diagonal_form = table.and_then(|table| self.form(&table));
+            }
         }
         if let Some(members) = self.inner(&table, "members") {
             self.known(&members, &["supporting_section", "supported_section", "supporting_grade", "supported_grade"]);
@@ -76,6 +92,33 @@ impl Reader<'_> {
         diameter.map(mm)
     }
 
+    /// The category, and the friction surfaces: their class or their slip factor.
+    fn category(&mut self, bolts: &Table<'_>) -> (Option<Category>, Option<Friction>) {
+        let category = self.text(bolts, "category").and_then(|text| {
+            let category = Category::named(&text);
+            if let (None, Some(value)) = (category, bolts.table.get("category")) {
+                self.wrong(value, "category", "A, B, C, D or E of EN 1993-1-8 Table 3.2");
+            }
+            category
+        });
+        let class = self.text(bolts, "friction_class").and_then(|class| {
+            let class = class.to_uppercase();
+            if !matches!(class.as_str(), "A" | "B" | "C" | "D")
+                && let Some(value) = bolts.table.get("friction_class")
+            {
+                self.wrong(value, "friction_class", "A, B, C or D of EN 1993-1-8 Table 3.7");
+                return None;
+            }
+            Some(Friction::Class(class))
+        });
+        let Some(value) = bolts.table.get("slip_factor") else { return (category, class) };
+        let factor = self.number(value, "slip_factor", 1.0, Sign::Positive).filter(|mu| *mu <= 1.0);
+        if factor.is_none() || class.is_some() {
+            self.wrong(value, "slip_factor", "a number above 0 up to 1, without a friction_class beside it");
+        }
+        (category, factor.map(Friction::Factor).or(class))
+    }
+
     fn rows(&mut self, bolts: &Table<'_>) -> Option<Vec<Length>> {
         let value = bolts.table.get("rows_mm")?;
         let allowed = "a list of heights above the soffit in mm, from the top row down";
@@ -95,20 +138,45 @@ impl Reader<'_> {
         Some(rows)
     }
 
-    fn stiffener(&mut self, stiffeners: &Table<'_>, key: &str) -> Option<Option<IntendedStiffener>> {
+    fn plates(&mut self, stiffeners: &Table<'_>, key: &str, keys: &[&str]) -> Option<Option<IntendedStiffener>> {
         let value = stiffeners.table.get(key)?;
         match value.get_ref() {
             DeValue::String(text) if text == "none" => Some(None),
             DeValue::Table(_) => {
                 let table = self.inner(stiffeners, key)?;
-                self.known(&table, &["thickness_mm", "grade"]);
+                self.known(&table, keys);
                 let thickness = self.length(&table, "thickness_mm", Sign::Positive);
-                Some(Some(IntendedStiffener { thickness, grade: self.text(&table, "grade") }))
+                let throat = self.length(&table, "throat_mm", Sign::Positive);
+                let length = self.length(&table, "length_mm", Sign::Positive);
+                Some(Some(IntendedStiffener { thickness, grade: self.text(&table, "grade"), throat, length }))
             }
             _ => {
                 self.wrong(value, key, "\"none\" or a table such as { thickness_mm = 15, grade = \"S275\" }");
                 None
             }
         }
+    }
+
+    fn sides(&mut self, plates: &Table<'_>) -> Option<u8> {
+        let value = plates.table.get("sides")?;
+        let count = value.get_ref().as_integer().and_then(|count| count.as_str().parse().ok());
+        let sides = count.filter(|count| matches!(count, 1..=2));
+        if sides.is_none() {
+            self.wrong(value, "sides", "1 or 2 sides of the column's web");
+        }
+        sides
+    }
+
+    fn form(&mut self, diagonals: &Table<'_>) -> Option<DiagonalForm> {
+        let value = diagonals.table.get("form")?;
+        let form = match value.get_ref().as_str() {
+            Some("N") => Some(DiagonalForm::N),
+            Some("K") => Some(DiagonalForm::K),
+            _ => None,
+        };
+        if form.is_none() {
+            self.wrong(value, "form", "\"N\" or \"K\"");
+        }
+        form
     }
 }

@@ -3,8 +3,12 @@
 //! Heights are measured up from the soffit of the supported member's lower flange, in the direction of the member's
 //! depth that points to the sky; sides are measured across, from the supported member's web.
 
-use crate::origin::Known;
-use crate::rulebook::{Grade, Section};
+mod strengthening;
+
+pub use strengthening::{Backing, Diagonal, EdgeWeld, Strengthening, WebPlate};
+
+use crate::origin::{Datum, Known};
+use crate::rulebook::{Category, Grade, Section};
 use crate::units::Length;
 
 /// A member as it stands in a joint.
@@ -61,6 +65,19 @@ pub struct Bolts {
     pub hole: Known<Length>,
     /// Rows from the top down.
     pub rows: Vec<BoltRow>,
+    /// What else they hold, and how.
+    pub held: Held,
+}
+
+/// What bolts hold besides the two plies, and how, as far as anybody says.
+#[derive(Clone, Debug, Default)]
+pub struct Held {
+    /// Thickness of each rigid packing plate between the plies; as large as the end plate.
+    pub packing: Vec<Length>,
+    /// Category of Table 3.2; `None` where nobody states one.
+    pub category: Option<Datum<Category>>,
+    /// Slip factor μ of the friction surfaces; `None` where nobody states one.
+    pub slip_factor: Option<Datum<f64>>,
 }
 
 /// Throats a of the fillets between beam and end plate; each both sides of its plate.
@@ -112,11 +129,13 @@ pub struct EndPlateLayout {
     pub welds: Welds,
     /// The column's stiffeners near the joint, from the top down.
     pub stiffeners: Vec<Stiffener>,
+    /// What else strengthens the column.
+    pub strengthening: Strengthening,
     /// From the top row up to the column's upper end; `None` where the column runs on past 10 m.
     pub column_above: Option<Length>,
     /// From the lowest row down to the column's lower end.
     pub column_below: Option<Length>,
-    /// Parts welded to the column here that no check credits (web plates, diagonals, backing plates): one sentence each.
+    /// Parts at the column here that are none of these, so that no check can credit them: one sentence each.
     pub not_credited: Vec<String>,
 }
 
@@ -154,9 +173,54 @@ pub enum Layout {
     Splice(SpliceLayout),
 }
 
+/// Which side of a joint an end plate with its beam is.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Which {
+    /// The only one: the other side is a column.
+    Only,
+    /// The supported member's half of a splice.
+    Supported,
+    /// The other half of a splice.
+    Supporting,
+    /// Both halves, which are alike.
+    Both,
+}
+
+impl Which {
+    /// Before a part's name: "supported ".
+    pub fn owner(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => "supported ",
+            Self::Supporting => "supporting ",
+        }
+    }
+
+    /// After a plate's name: " of the supported beam".
+    pub fn of(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => " of the supported beam",
+            Self::Supporting => " of the supporting beam",
+        }
+    }
+
+    /// After a component's name: ", supported side".
+    pub fn suffix(self) -> &'static str {
+        match self {
+            Self::Only => "",
+            Self::Supported => ", supported side",
+            Self::Supporting => ", supporting side",
+            Self::Both => ", both sides",
+        }
+    }
+}
+
 /// A beam with its end plate, wherever the plate is bolted to.
 #[derive(Clone, Copy, Debug)]
 pub struct PlateSide<'a> {
+    /// Which side it is.
+    pub which: Which,
     /// The beam.
     pub beam: &'a MemberAt,
     /// Height of its lower flange's soffit.
@@ -188,16 +252,15 @@ pub struct BoltedPlate<'a> {
 }
 
 impl Half {
-    /// The half as one side of its joint.
-    pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
+    fn side(&self, which: Which) -> PlateSide<'_> {
+        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
     }
 }
 
 impl EndPlateLayout {
     /// The beam's side.
     pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
+        PlateSide { which: Which::Only, beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
     }
 }
 
@@ -206,7 +269,7 @@ impl Layout {
     pub fn side(&self) -> PlateSide<'_> {
         match self {
             Self::EndPlate(layout) => layout.side(),
-            Self::Splice(layout) => layout.supported.side(),
+            Self::Splice(layout) => layout.supported.side(Which::Supported),
         }
     }
 
@@ -214,7 +277,9 @@ impl Layout {
     pub fn sides(&self) -> Vec<PlateSide<'_>> {
         match self {
             Self::EndPlate(layout) => vec![layout.side()],
-            Self::Splice(layout) => vec![layout.supported.side(), layout.supporting.side()],
+            Self::Splice(layout) => {
+                vec![layout.supported.side(Which::Supported), layout.supporting.side(Which::Supporting)]
+            }
         }
     }
 
@@ -234,6 +299,20 @@ impl Layout {
         }
     }
 
+    /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
+    pub fn plies(&self) -> Option<[Length; 2]> {
+        let behind = match self {
+            Self::EndPlate(layout) => layout.column.section.as_ref().ok()?.value.t_f,
+            Self::Splice(layout) => layout.supporting.plate.thickness,
+        };
+        Some([self.side().plate.thickness, behind])
+    }
+
+    /// All that the bolts hold together: both plies and the packing between them.
+    pub fn grip(&self) -> Option<Length> {
+        Some(self.plies()?.into_iter().chain(self.bolts().held.packing.iter().copied()).sum())
+    }
+
     /// The joint on a column's flange, if it is one.
     pub fn on_column(&self) -> Option<&EndPlateLayout> {
         match self {
@@ -251,8 +330,8 @@ impl<'a> From<&'a EndPlateLayout> for BoltedPlate<'a> {
 
 impl<'a> From<&'a SpliceLayout> for BoltedPlate<'a> {
     fn from(layout: &'a SpliceLayout) -> Self {
-        let support = Support::Plate(layout.supporting.side());
-        Self { side: layout.supported.side(), support, bolts: &layout.bolts }
+        let support = Support::Plate(layout.supporting.side(Which::Supporting));
+        Self { side: layout.supported.side(Which::Supported), support, bolts: &layout.bolts }
     }
 }
 

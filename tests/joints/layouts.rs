@@ -3,7 +3,7 @@
 use faying::joints::{EndPlateLayout, Joint, Joints, Kind, Layout, recognise};
 use faying::origin::Origin;
 use faying::rulebook::Grade;
-use faying::shop::{Steelwork, WeldSort};
+use faying::shop::{Steelwork, Weld, WeldSort};
 use faying::units::mm;
 use glam::DVec3;
 
@@ -92,13 +92,85 @@ fn what_no_weld_states_is_missing() {
     assert_eq!((top.what.as_str(), top.reason.as_str()), ("weld at the top flange", "no weld is modelled there"));
 }
 
-#[test]
-fn a_weld_over_a_short_part_of_the_flange_is_no_flange_weld() {
-    let mut steel = frame(&[Detail::default()]);
-    for point in &mut steel.welds[0].points {
-        point.y *= 0.3;
+/// Draws a weld's body over a share of its length, about its middle.
+fn shorten(weld: &mut Weld, along: DVec3, share: f64) {
+    let middle = weld.points.iter().sum::<DVec3>() / weld.points.len() as f64;
+    for point in &mut weld.points {
+        let from_middle = (*point - middle).dot(along);
+        *point += along * from_middle * (share - 1.0);
     }
-    assert!(layout(&steel).welds.flange_top.is_err());
+}
+
+/// Welds 0, 1 and 2 are top, bottom and web.
+#[test]
+fn a_weld_over_a_part_of_the_flange_or_web_is_not_counted_at_full_length() {
+    for share in [0.3, 0.6, 0.9] {
+        for (weld, along) in [(0, DVec3::Y), (1, DVec3::Y), (2, DVec3::Z)] {
+            let mut steel = frame(&[Detail::default()]);
+            shorten(&mut steel.welds[weld], along, share);
+            let welds = layout(&steel).welds;
+            let all = [welds.flange_top, welds.flange_bottom, welds.web];
+            for (i, known) in all.iter().enumerate() {
+                assert_eq!(known.is_ok(), i != weld, "{share} of weld {weld}: {known:?}");
+            }
+            let reason = &all[weld].as_ref().unwrap_err().reason;
+            assert!(share == 0.3 || reason.contains("shorter or intermittent ones are not counted"), "{reason}");
+        }
+    }
+}
+
+/// The weld between two shares of its length.
+fn piece(weld: &Weld, from: f64, to: f64) -> Weld {
+    let mut piece = weld.clone();
+    let ys = || weld.points.iter().map(|point| point.y);
+    let (lo, hi) = (ys().fold(f64::MAX, f64::min), ys().fold(f64::MIN, f64::max));
+    for point in &mut piece.points {
+        point.y = lo + (hi - lo) * if point.y == lo { from } else { to };
+    }
+    piece
+}
+
+#[test]
+fn a_seam_may_be_drawn_in_pieces_that_meet() {
+    let throat = |pieces: &[(f64, f64)]| {
+        let mut steel = frame(&[Detail::default()]);
+        let whole = steel.welds.remove(0);
+        steel.welds.extend(pieces.iter().map(|(from, to)| piece(&whole, *from, *to)));
+        length(&layout(&steel).welds.flange_top)
+    };
+    assert_eq!(throat(&[(0.0, 0.5), (0.5, 1.0)]), Some(7.0));
+    assert_eq!(throat(&[(0.0, 0.6), (0.4, 1.0)]), Some(7.0));
+    assert_eq!(throat(&[(0.0, 0.4), (0.6, 1.0)]), None);
+    // 0.2 of 191 mm is less than 6a = 42 mm, EN 1993-1-8:2005 4.5.1(2).
+    assert_eq!(throat(&[(0.0, 0.8), (0.8, 1.0)]), None);
+}
+
+/// An intermittent seam is drawn from end to end and states the length of one piece.
+#[test]
+fn a_stated_length_shorter_than_what_is_drawn_counts() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.welds[0].length = known(mm(50.0));
+    let reason = layout(&steel).welds.flange_top.unwrap_err().reason;
+    assert!(reason.starts_with("the welds modelled there run over 50 mm of"), "{reason}");
+    steel.welds[0].length = known(mm(400.0));
+    assert_eq!(length(&layout(&steel).welds.flange_top), Some(7.0), "both sides added up");
+}
+
+#[test]
+fn bodies_on_one_side_only_are_no_weld_on_both() {
+    let mut steel = frame(&[Detail::default()]);
+    let face = steel.welds[0].points.iter().map(|p| p.z).sum::<f64>() / 8.0;
+    for point in &mut steel.welds[0].points {
+        point.z = if point.z > face { face + 10.0 } else { face };
+    }
+    let reason = layout(&steel).welds.flange_top.unwrap_err().reason;
+    assert_eq!(reason, "the welds modelled there lie on one side only; the other side has none");
+    // As a line it tells no side.
+    let points = &mut steel.welds[0].points;
+    *points = vec![points[0], points[7]];
+    points[0].z = face;
+    points[1].z = face;
+    assert_eq!(length(&layout(&steel).welds.flange_top), Some(7.0));
 }
 
 #[test]
@@ -229,42 +301,12 @@ fn stiffeners_far_from_the_joint_are_none_of_its() {
 }
 
 #[test]
-fn web_plates_and_diagonals_are_named_as_not_credited() {
-    let mut steel = frame(&[Detail::default()]);
-    let on_web = DVec3::new(0.0, 13.8 / 2.0 + 5.0, 4200.0);
-    steel.plates.push(plate("WP", on_web, DVec3::X, DVec3::Z, (240.0, 800.0), 10.0));
-    let (along, middle) = (DVec3::new(1.0, 0.0, 1.0).normalize(), DVec3::new(0.0, -70.0, 4200.0));
-    steel.plates.push(plate("DI", middle, along, DVec3::Y, (360.0, 126.0), 12.0));
-    let layout = layout(&steel);
-    assert_eq!(layout.not_credited, ["a diagonal is not credited", "a web plate is not credited"]);
-    assert!(layout.stiffeners.is_empty());
-}
-
-#[test]
-fn a_diagonal_behind_the_end_plate_is_no_other_beams_end_plate() {
-    let mut steel = frame(&[Detail::default()]);
-    // Its normal is 37° from the beam's axis, and the beam's end is near.
-    let (along, middle) = (DVec3::new(-0.606, 0.0, 0.795), DVec3::new(0.0, 78.0, 4203.2));
-    steel.plates.push(plate("DI", middle, along, DVec3::Y, (438.0, 142.0), 15.0));
-    assert_eq!(layout(&steel).not_credited, ["a diagonal is not credited"]);
-}
-
-#[test]
 fn a_stiffener_on_the_far_flange_only_is_not_credited() {
     let mut steel = ribbed(Rib { reach: 120.0, both_sides: false, ..RIB });
     steel.plates[1].centre.x *= -1.0;
     let layout = layout(&steel);
     assert!(layout.stiffeners.is_empty());
     assert_eq!(layout.not_credited, ["a transverse plate is not credited"]);
-}
-
-#[test]
-fn a_backing_plate_is_named_and_the_joint_is_laid_out() {
-    let mut steel = frame(&[Detail::default()]);
-    let inside = DVec3::new(160.25 - 21.7 - 5.0, 0.0, 4397.7);
-    steel.plates.push(plate("BP", inside, DVec3::Y, DVec3::Z, (150.0, 200.0), 10.0));
-    steel.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 10.0);
-    assert_eq!(layout(&steel).not_credited, ["a backing plate is not credited"]);
 }
 
 #[test]

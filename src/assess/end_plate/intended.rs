@@ -1,7 +1,9 @@
 //! The intended detail as a layout: what the schedule states, on the joint as detailed for everything it does not state.
 
-use crate::intent::{IntendedDetail, IntendedStiffener};
-use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Layout, MemberAt, SpliceLayout, Stiffener, Welds};
+mod column;
+
+use crate::intent::{Friction, IntendedDetail};
+use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Layout, MemberAt, SpliceLayout, Welds};
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook};
 use crate::units::Length;
@@ -15,6 +17,21 @@ pub fn intended_layout(layout: &Layout, detail: &IntendedDetail, rulebook: &Rule
         Layout::EndPlate(layout) => intended(layout, detail, rulebook).map(Layout::EndPlate),
         Layout::Splice(layout) => splice(layout, detail, rulebook).map(Layout::Splice),
     }
+}
+
+/// The joint as detailed with what the schedule asks of its bolts and no model shows: their category and friction
+/// surfaces. `None` where the detail states neither.
+pub fn with_category(layout: &Layout, detail: &IntendedDetail, rulebook: &Rulebook) -> Option<Layout> {
+    if detail.bolt_category.is_none() && detail.friction.is_none() {
+        return None;
+    }
+    let mut asked = layout.clone();
+    let held = match &mut asked {
+        Layout::EndPlate(layout) => &mut layout.bolts.held,
+        Layout::Splice(layout) => &mut layout.bolts.held,
+    };
+    Stated { detail, rulebook }.category(held);
+    Some(asked)
 }
 
 /// The same for an end-plate splice: what is stated of plate and welds is meant for both halves.
@@ -60,29 +77,7 @@ pub fn intended(
     meant.column_below = layout.column_below.map(|below| below + down);
     stated.welds(&mut meant.welds);
 
-    if let (Ok(beam), Ok(column)) = (&meant.beam.section, &meant.column.section) {
-        let (h, t_f) = (beam.value.h, beam.value.t_f);
-        let free = 0.5 * (column.value.b - column.value.t_w);
-        let reach = column.value.h - 2.0 * column.value.t_f;
-        for (intended, height) in [(&detail.stiffener_top, h - 0.5 * t_f), (&detail.stiffener_bottom, 0.5 * t_f)] {
-            let Some(intended) = intended else { continue };
-            let level = |s: &Stiffener| (s.height - height).abs() <= t_f;
-            let own = meant.stiffeners.iter().position(level).map(|i| meant.stiffeners.remove(i));
-            if let Some(pair) = intended {
-                meant.stiffeners.push(stiffener(
-                    pair,
-                    own,
-                    height,
-                    free,
-                    reach,
-                    &meant.column.grade,
-                    detail,
-                    rulebook,
-                )?);
-            }
-        }
-        meant.stiffeners.sort_by(|a, b| b.height.get().total_cmp(&a.height.get()));
-    }
+    stated.strengthening(&mut meant)?;
     Ok(meant)
 }
 
@@ -145,7 +140,25 @@ impl Stated<'_> {
         if let Some(class) = &self.detail.bolt_class {
             bolts.class = Ok(Datum::new(class.clone(), self.by("bolt class")));
         }
+        self.category(&mut bolts.held);
         Ok(())
+    }
+
+    fn category(&self, held: &mut Held) {
+        if let Some(category) = self.detail.bolt_category {
+            held.category = Some(Datum::new(category, self.by("category")));
+        }
+        let stated = match &self.detail.friction {
+            Some(Friction::Class(class)) => {
+                let mu = self.rulebook.slip.friction.get(class);
+                mu.map(|mu| (*mu, format!("friction class {class} (Table 3.7)")))
+            }
+            Some(Friction::Factor(mu)) => Some((*mu, "slip factor".into())),
+            None => None,
+        };
+        if let Some((mu, what)) = stated {
+            held.slip_factor = Some(Datum::new(mu, self.by(&what)));
+        }
     }
 
     fn welds(&self, welds: &mut Welds) {
@@ -183,47 +196,6 @@ impl Stated<'_> {
         });
         bolts.rows = rows.collect();
     }
-}
-
-#[allow(clippy::too_many_arguments)]
-fn stiffener(
-    pair: &IntendedStiffener,
-    own: Option<Stiffener>,
-    height: Length,
-    free: Length,
-    reach: Length,
-    column_grade: &Known<Grade>,
-    detail: &IntendedDetail,
-    rulebook: &Rulebook,
-) -> Result<Stiffener, Missing> {
-    let by = Origin::Modelled { by: format!("stiffener of detail {}", detail.name), at: detail.at.clone() };
-    let thickness = pair.thickness.or(own.as_ref().map(|s| s.thickness)).ok_or_else(|| {
-        missing("intended stiffener thickness", "the detail asks for stiffeners and states no thickness".into(), detail)
-    })?;
-    let grade = match &pair.grade {
-        Some(text) => match rulebook.grade(text) {
-            Some(grade) => Ok(Datum::new(grade, by)),
-            None => {
-                return Err(missing(
-                    "intended stiffener grade",
-                    format!("'{text}' is no grade of the steel table"),
-                    detail,
-                ));
-            }
-        },
-        None => own.as_ref().map_or_else(|| column_grade.clone(), |s| s.grade.clone()),
-    };
-    Ok(Stiffener {
-        guids: own.as_ref().map(|s| s.guids.clone()).unwrap_or_default(),
-        height,
-        thickness,
-        outstand: own.as_ref().filter(|s| s.both_sides).map_or(free, |s| s.outstand),
-        reach,
-        both_sides: true,
-        full_depth: true,
-        grade,
-        weld: own.map_or_else(|| Err(missing("stiffener weld", "the detail states none".into(), detail)), |s| s.weld),
-    })
 }
 
 fn missing(what: &str, reason: String, detail: &IntendedDetail) -> Missing {
