@@ -6,7 +6,7 @@ use std::path::Path;
 use std::process::Command;
 
 use faying::report::{Options, sheet};
-use faying::review::sketch::{Against, BeamEnd, ColumnPart, PlateFace, Profile, Sketch, SketchRow};
+use faying::review::sketch::{Against, BeamEnd, ColumnPart, PlateFace, Profile, Sketch, SketchDiagonal, SketchRow};
 use faying::review::{CheckResult, JointReview, Outcome, Review, RowBasis, RowResult};
 use faying::units::{Force, Length, kn, mm};
 use faying::working::Working;
@@ -312,6 +312,7 @@ fn checked(title: &str, working: Working) -> CheckResult {
         unit: "kN",
         utilisation: Some(0.5),
         outcome: "met",
+        needed_throat_mm: None,
         working: working.into(),
     }
 }
@@ -319,7 +320,7 @@ fn checked(title: &str, working: Working) -> CheckResult {
 /// What the sheet prints for one step: symbols, then numbers.
 fn printed(working: Working) -> String {
     let mut joint = joint(1, Outcome::Clear);
-    joint.checks = vec![checked("end plate in bending", working)];
+    joint.checks = [checked("end plate in bending", working)].into();
     let review = review(vec![joint]);
     unwrapped(&both_forms(&review, &review.joints[0])[0])
 }
@@ -389,7 +390,7 @@ fn a_working_that_begins_like_another_refers_to_it() {
         w
     };
     let mut joint = joint(1, Outcome::Clear);
-    joint.checks = vec![checked("first", working(1.0)), checked("second", working(2.0))];
+    joint.checks = [checked("first", working(1.0)), checked("second", working(2.0))].into();
     let review = review(vec![joint]);
     let [text, html] = both_forms(&review, &review.joints[0]).map(|form| unwrapped(&form));
     assert!(text.contains("As in 3.1, down to e = 5.000 sum = a + b + c + d + e + last"), "{text}");
@@ -424,6 +425,9 @@ fn sketched(odd: f64) -> Sketch {
             top_mm: None,
             bottom_mm: Some(-3000.0),
             stiffeners: Vec::new(),
+            web_plates: Vec::new(),
+            diagonals: vec![SketchDiagonal { thickness_mm: 10.0, near_mm: 7.0, far_mm: odd, both_sides: true }],
+            backing: Vec::new(),
         }),
         bolts: "M20 8.8".into(),
         bolt_mm: Some(20.0),
@@ -440,7 +444,8 @@ fn what_is_no_number_is_never_printed_as_one() {
         step!(w, "x", twice = 2.0 * f);
         let mut joint = used(joint(1, Outcome::Unproven), odd, odd);
         joint.checks =
-            vec![CheckResult { resistance: Some(odd), action: Some(odd), utilisation: Some(odd), ..checked("odd", w) }];
+            [CheckResult { resistance: Some(odd), action: Some(odd), utilisation: Some(odd), ..checked("odd", w) }]
+                .into();
         joint.rows = vec![RowResult {
             row: 1,
             lever_arm_mm: odd,
@@ -487,7 +492,7 @@ fn nothing_from_a_file_becomes_markup_or_style() {
     joint.sketch = Some(sketch.into());
     let mut check = checked(EVIL, Working::default());
     check.clause = EVIL.into();
-    joint.checks = vec![check];
+    joint.checks = [check].into();
     let mut review = review(vec![joint]);
     review.file = EVIL.into();
     review.schedule = Some(EVIL.into());
@@ -499,4 +504,21 @@ fn nothing_from_a_file_becomes_markup_or_style() {
     }
     assert!(!html.contains("<script") && !html.contains("onload=x>&amp;amp;\\3c\u{7}"));
     assert!(page.text.contains("<script>alert(1)</script>"), "it is shown as it is");
+}
+
+#[test]
+fn a_splice_is_drawn_with_both_its_ends() {
+    let mut sketch = sketched(60.0);
+    let other = BeamEnd { soffit_mm: -30.0, throats_mm: [None, Some(6.0), Some(8.0)], ..sketch.end.clone() };
+    sketch.against = Against::Beam(other);
+    let mut joint = used(joint(1, Outcome::Clear), 100.0, 80.0);
+    joint.sketch = Some(sketch.into());
+    let review = review(vec![joint]);
+    let [text, html] = both_forms(&review, &review.joints[0]);
+    let page = Page::read(&html);
+    // Plates: one in the elevation for each end, and the one in view.
+    assert_eq!((page.count("circle.bolt"), page.count("rect.plate")), (4, 3));
+    for said in ["other end plate", "other welds", "edge of other plate", "top flange not known; web throat 6 mm"] {
+        assert!(text.contains(said) && page.text.contains(said), "{said}");
+    }
 }
