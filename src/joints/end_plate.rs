@@ -6,7 +6,7 @@ use super::bolts;
 use super::boxes::{Ply, Slab};
 use super::draft::{Draft, Seat};
 use super::frame::{Frame, Span, are_parallel, corners};
-use super::layout::{EndPlate, EndPlateLayout, Layout, MemberAt, Welds};
+use super::layout::{EndPlate, EndPlateLayout, FullButts, Layout, MemberAt, Welds};
 use super::scene::Scene;
 use super::stiffeners::{self, OnColumn};
 use super::touch::{EndOn, Pass};
@@ -222,6 +222,7 @@ fn laid_out(
     let ends = [column.start, column.end].map(|end| case.frame.height(end));
     let (above, below) = (ends[0].max(ends[1]) - rows.hi, rows.lo - ends[0].min(ends[1]));
     let throat = |role, what| welds::throat(scene, &case.frame, case.end.member, &case.welds, role, what);
+    let full = |role| welds::full_butt(scene, &case.frame, case.end.member, &case.welds, role);
     let mut not_credited = on_column.not_credited;
     let backing = draft.joint.plates.iter().filter(|(other, role)| *other != case.plate && *role == "plate");
     let under = backing.filter(|(other, _)| !on_column.others.contains(other)).count();
@@ -243,6 +244,11 @@ fn laid_out(
             flange_top: throat(Role::FlangeTop, "weld at the top flange"),
             flange_bottom: throat(Role::FlangeBottom, "weld at the bottom flange"),
             web: throat(Role::Web, "weld at the web"),
+            full: FullButts {
+                flange_top: full(Role::FlangeTop),
+                flange_bottom: full(Role::FlangeBottom),
+                web: full(Role::Web),
+            },
         },
         stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),
         column_above: (above <= RUNS_ON).then_some(mm(above)),

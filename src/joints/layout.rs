@@ -76,6 +76,18 @@ pub struct Held {
     pub slip_factor: Option<Datum<f64>>,
 }
 
+/// Which of a beam's welds are butt welds of full penetration: as strong as the weaker part (EN 1993-1-8 4.7.1), and no
+/// fillet beside the bolts. Their throat is the thickness of the part.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct FullButts {
+    /// At the upper flange.
+    pub flange_top: bool,
+    /// At the lower flange.
+    pub flange_bottom: bool,
+    /// At the web.
+    pub web: bool,
+}
+
 /// Throats a of the fillets between beam and end plate; each both sides of its plate.
 #[derive(Clone, Debug)]
 pub struct Welds {
@@ -85,6 +97,8 @@ pub struct Welds {
     pub flange_bottom: Known<Length>,
     /// At the web.
     pub web: Known<Length>,
+    /// Which of them are no fillets.
+    pub full: FullButts,
 }
 
 /// A transverse stiffener of the column: a pair, one plate on each side of the web.

@@ -22,8 +22,8 @@ mod touch;
 mod welds;
 
 pub use layout::{
-    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Held, Layout, MemberAt, PlateSide, SpliceLayout,
-    Stiffener, Support, Welds,
+    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, FullButts, Half, Held, Layout, MemberAt, PlateSide,
+    SpliceLayout, Stiffener, Support, Welds,
 };
 
 use petgraph::graphmap::UnGraphMap;

@@ -10,7 +10,7 @@ use super::error::RuleError;
 use super::load::RuleFile;
 
 /// The concepts that have words: of properties and columns, then of parts.
-pub(super) const CONCEPTS: [&str; 28] = [
+pub(super) const CONCEPTS: [&str; 29] = [
     "mark",
     "bolt-diameter",
     "bolt-length",
@@ -35,6 +35,7 @@ pub(super) const CONCEPTS: [&str; 28] = [
     "countersunk",
     "weld",
     "butt-weld",
+    "full-penetration",
     "fillet-weld",
     "plate",
     "stiffener",

@@ -203,8 +203,10 @@ pub struct Bolt {
 pub enum WeldSort {
     /// Fillet.
     Fillet,
-    /// Butt, full penetration where stated.
+    /// Butt, of a penetration that its throat tells, if anything does.
     Butt,
+    /// Butt, of full penetration: by a word, or by the sign of a preparation without a depth (ISO 2553).
+    FullButt,
     /// Nobody says.
     Unknown,
 }

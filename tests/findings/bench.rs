@@ -5,7 +5,9 @@ use std::sync::Arc;
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
 use faying::intent::{IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
+use faying::joints::{
+    BoltRow, Bolts, EndPlate, EndPlateLayout, FullButts, Held, Joint, Kind, Layout, MemberAt, Stiffener, Welds,
+};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
 use faying::rulebook::{Grade, Rulebook, Section};
@@ -246,7 +248,12 @@ fn joint(rulebook: &Rulebook) -> Joint {
             rows: rows(&[560.0, 440.0, 350.0, 60.0]),
             held: Held::default(),
         },
-        welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
+        welds: Welds {
+            flange_top: known(mm(8.5)),
+            flange_bottom: known(mm(8.5)),
+            web: known(mm(5.0)),
+            full: FullButts::default(),
+        },
         stiffeners: vec![stiffener(8.0)],
         column_above: Some(mm(500.0)),
         column_below: None,
