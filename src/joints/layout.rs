@@ -70,6 +70,8 @@ pub struct Bolts {
 pub struct Held {
     /// Thickness of each rigid packing plate between the plies; as large as the end plate.
     pub packing: Vec<Length>,
+    /// The shank without thread: the shortest of the bolts' lengths less their threads; `None` unless all state both.
+    pub shank: Option<Length>,
     /// Category of Table 3.2; `None` where nobody states one.
     pub category: Option<Datum<Category>>,
     /// Slip factor μ of the friction surfaces; `None` where nobody states one.
@@ -214,6 +216,17 @@ pub struct BoltedPlate<'a> {
     pub bolts: &'a Bolts,
 }
 
+impl BoltedPlate<'_> {
+    /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
+    pub fn plies(&self) -> Option<[Length; 2]> {
+        let behind = match self.support {
+            Support::Column(layout) => layout.column.section.as_ref().ok()?.value.t_f,
+            Support::Plate(other) => other.plate.thickness,
+        };
+        Some([self.side.plate.thickness, behind])
+    }
+}
+
 impl Half {
     /// The half as one side of its joint.
     pub fn side(&self) -> PlateSide<'_> {
@@ -263,11 +276,7 @@ impl Layout {
 
     /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
     pub fn plies(&self) -> Option<[Length; 2]> {
-        let behind = match self {
-            Self::EndPlate(layout) => layout.column.section.as_ref().ok()?.value.t_f,
-            Self::Splice(layout) => layout.supporting.plate.thickness,
-        };
-        Some([self.side().plate.thickness, behind])
+        BoltedPlate::from(self).plies()
     }
 
     /// All that the bolts hold together: both plies and the packing between them.

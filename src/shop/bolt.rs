@@ -113,6 +113,7 @@ impl<'a> Reading<'a> {
         let properties = self.properties_of(element);
         let stated = self.diameters(element, &properties);
         let length = self.length(element, &properties);
+        let thread = self.thread(element, &properties);
         let class = self.class(element, &properties);
         let hole = self.hole(element, &properties);
         let slot = self.slot(element, &properties);
@@ -153,6 +154,7 @@ impl<'a> Reading<'a> {
                 end: shank.end,
                 diameter: Ok(diameter),
                 length: length.clone(),
+                thread,
                 class: class.clone(),
                 hole,
                 slot,
@@ -316,6 +318,16 @@ impl<'a> Reading<'a> {
         }
         Some(mm(first.value))
     }
+
+    /// The length of the thread: by the standard's property, or one that the vocabulary knows.
+    fn thread(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Option<Length> {
+        let all = self.property_lengths(element, properties, Plausible(5.0, 1000.0), |p| {
+            p.name == "ThreadLength" || p.means("thread-length")
+        });
+        let first = all.first()?;
+        all.iter().all(|s| (s.value - first.value).abs() <= 1.0).then(|| mm(first.value))
+    }
+
     /// The length of slotted holes; of two that differ the longer one counts.
     fn slot(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Option<Length> {
         let all = self.property_lengths(element, properties, Plausible(1.0, 500.0), |p| p.means("slot-length"));

@@ -188,6 +188,8 @@ pub struct Bolt {
     pub diameter: Known<Length>,
     /// Nominal length as stated (in the wild it may be the grip).
     pub length: Known<Length>,
+    /// Length of the thread as stated; `None` where nothing states it, or two statements differ.
+    pub thread: Option<Length>,
     /// Strength class: "8.8".
     pub class: Known<String>,
     /// Hole diameter as stated by a property.

@@ -316,6 +316,7 @@ fn steelwork(rulebook: &Rulebook) -> Steelwork {
         end: DVec3::X,
         diameter: known(mm(24.0)),
         length: known(mm(90.0)),
+        thread: None,
         class: known("8.8".into()),
         hole: None,
         slot: None,
