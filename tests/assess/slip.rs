@@ -136,7 +136,7 @@ fn where_the_thread_ends_the_model_may_show() {
         let shear = assessment.cases[0].shear.clone().unwrap();
         let words: Vec<String> =
             assessment.assumptions.into_iter().filter(|said| said.contains("shear plane")).collect();
-        (shear.components.into_iter().find(|c| c.id == "bolts-in-shear").unwrap().resistance, words)
+        (shear.components.iter().find(|c| c.id == "bolts-in-shear").unwrap().resistance, words)
     };
     let (thread, words) = shear(None, &RULES);
     assert_eq!(words, ["thread in the shear plane: no model says where it ends"]);
