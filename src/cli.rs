@@ -5,8 +5,10 @@ mod inputs;
 mod output;
 mod progress;
 mod rules;
+mod sheet;
 
-use std::path::PathBuf;
+use std::io::{self, Write};
+use std::path::{Path, PathBuf};
 use std::process::ExitCode;
 
 use clap::{Args, CommandFactory, Parser, Subcommand, ValueEnum};
@@ -17,6 +19,7 @@ use faying::run;
 use failure::Failure;
 use inputs::Given;
 use output::{Colour, Output};
+use sheet::SheetArgs;
 
 const EXIT_CODES: &str = "\
 Exit codes:
@@ -24,6 +27,16 @@ Exit codes:
   1  at least one joint is on hold: it does not carry what is required, or it is not there
   2  wrong use, or an input that can't be read
   3  nothing is on hold, but something could not be proven (or no joint was found at all)
+
+An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
+
+const SHEET_EXIT_CODES: &str = "\
+Exit codes:
+  0  the joint is clear, or deviates and carries (a comment)
+  1  the joint is on hold: it does not carry what is required, or it is not there
+  2  wrong use, a mark that fits no joint or several, or an input that can't be read
+  3  the joint could not be proven
+With several joints the worst counts: 1 before 3 before 0.
 
 An aid to review, not a design: local codes, national annexes and a licensed engineer decide.";
 
@@ -58,6 +71,11 @@ enum Command {
     /// Needs no schedule; ends with what to ask the fabricator for.
     #[command(after_help = SURVEY_EXIT_CODES)]
     Survey(SurveyArgs),
+    /// Print the calculation sheet of a joint: sketch, inputs with their origin, every check with formula and clause.
+    ///
+    /// To be followed by hand, printed and signed. Numbers are rounded for reading and were computed unrounded.
+    #[command(after_help = SHEET_EXIT_CODES)]
+    Sheet(SheetArgs),
     /// List the rules, or print the page of one: what it finds, why it matters, what to do.
     Rules {
         /// The rule's id, as it stands before a finding: plate-thinner.
@@ -101,6 +119,9 @@ struct Common {
     /// A folder of rule files that stand in for the built-in ones of the same name.
     #[arg(long, value_name = "FOLDER")]
     rules: Option<PathBuf>,
+    /// The partial factors and choices of a national annex: a file of annexes/ in the rules, without ".toml".
+    #[arg(long, value_name = "NAME")]
+    annex: Option<String>,
     /// How to write the report.
     #[arg(long, value_enum, default_value_t = Format::Text)]
     format: Format,
@@ -123,12 +144,32 @@ enum Format {
     Json,
 }
 
+/// Where rules come from and a report goes.
+struct Places<'a> {
+    rules: Option<&'a Path>,
+    annex: Option<&'a str>,
+    output: Option<&'a Path>,
+    color: Colour,
+}
+
+impl Common {
+    fn places(&self) -> Places<'_> {
+        Places {
+            rules: self.rules.as_deref(),
+            annex: self.annex.as_deref(),
+            output: self.output.as_deref(),
+            color: self.color,
+        }
+    }
+}
+
 /// Runs the command line and gives the exit code.
 pub fn main() -> ExitCode {
     let done = match Cli::parse().command {
         Command::Review(args) => review(&args),
         Command::Survey(args) => survey(&args),
-        Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::to_stdout(&text)).map(|()| 0),
+        Command::Sheet(args) => sheet_of(&args),
+        Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::text_to_stdout(&text)).map(|()| 0),
         Command::Completions { shell } => completions(shell).map(|()| 0),
     };
     ExitCode::from(done.unwrap_or_else(|failure| failure.tell()))
@@ -136,10 +177,10 @@ pub fn main() -> ExitCode {
 
 fn review(args: &ReviewArgs) -> Result<u8, Failure> {
     let draw = |review: &Review, output: &Output, model: &[u8]| match args.common.format {
-        Format::Text => Ok(text::render(review, &output.options(args.common.all), Some(model))),
-        Format::Json => json::review(review),
+        Format::Text => Ok(Drawn::Whole(text::render(review, &output.options(args.common.all), Some(model)))),
+        Format::Json => Ok(Drawn::Written(|review, to| json::write_review(review, to))),
     };
-    let review = report(&args.path, Some(&args.schedule), &args.common, draw)?;
+    let review = report(&args.path, Some(&args.schedule), &args.common.places(), draw)?;
     Ok(match review.exit_code() {
         3 if args.allow_unproven => 0,
         code => code,
@@ -148,30 +189,51 @@ fn review(args: &ReviewArgs) -> Result<u8, Failure> {
 
 fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
     let draw = |review: &Review, output: &Output, _: &[u8]| match args.common.format {
-        Format::Text => Ok(survey::render(review, &output.options(args.common.all))),
-        Format::Json => json::survey(review),
+        Format::Text => Ok(Drawn::Whole(survey::render(review, &output.options(args.common.all)))),
+        Format::Json => Ok(Drawn::Written(|review, to| json::write_survey(review, to))),
     };
-    report(&args.path, None, &args.common, draw).map(|_| 0)
+    report(&args.path, None, &args.common.places(), draw).map(|_| 0)
+}
+
+fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {
+    let places = Places {
+        rules: args.rules.as_deref(),
+        annex: args.annex.as_deref(),
+        output: args.output.as_deref(),
+        color: args.color,
+    };
+    let draw = |review: &Review, output: &Output, _: &[u8]| sheet::draw(args, review, output).map(Drawn::Whole);
+    let review = report(&args.path, Some(&args.schedule), &places, draw)?;
+    sheet::exit_code(args, &review)
+}
+
+/// A report: in full, or how it is written without ever holding all of it.
+enum Drawn {
+    Whole(String),
+    Written(fn(&Review, &mut dyn Write) -> io::Result<()>),
 }
 
 /// Reads, runs, draws and writes; `schedules` is `None` where none is wanted, not even the folder's own.
 fn report(
-    path: &std::path::Path,
+    path: &Path,
     schedules: Option<&[PathBuf]>,
-    common: &Common,
-    draw: impl FnOnce(&Review, &Output, &[u8]) -> serde_json::Result<String>,
+    places: &Places<'_>,
+    draw: impl FnOnce(&Review, &Output, &[u8]) -> Result<Drawn, Failure>,
 ) -> Result<Review, Failure> {
-    let given = Given::gather(path, schedules, common.rules.as_deref())?;
+    let given = Given::gather(path, schedules, places.rules)?;
     // Before the work is done, so that nobody waits for a report that can't be written.
-    let output = Output::open(common.output.as_deref(), common.color, &given.paths)?;
-    let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
-    let drawn = draw(&review, &output, &given.model.bytes).map_err(|why| Failure::because("can't write JSON", why))?;
-    output.write(&drawn)?;
+    let output = Output::open(places.output, places.color, &given.paths)?;
+    let review = progress::watched("reading and checking the model", || run::run_by(&given.inputs(), places.annex))?;
+    let drawn = draw(&review, &output, &given.model.bytes)?;
+    output.write(|to| match drawn {
+        Drawn::Whole(text) => to.write_all(text.as_bytes()),
+        Drawn::Written(write) => write(&review, to),
+    })?;
     Ok(review)
 }
 
 fn completions(shell: clap_complete::Shell) -> Result<(), Failure> {
     let mut script = Vec::new();
     clap_complete::generate(shell, &mut Cli::command(), "faying", &mut script);
-    output::to_stdout(&String::from_utf8_lossy(&script))
+    output::text_to_stdout(&String::from_utf8_lossy(&script))
 }

@@ -1,6 +1,10 @@
 //! The review: the plain data that every report is drawn from.
 
+pub mod sketch;
+
 use std::sync::Arc;
+
+use sketch::Sketch;
 
 use crate::origin::{Missing, Place, Problem};
 use crate::working::Working;
@@ -156,6 +160,58 @@ pub struct RowResult {
     pub governed_by: String,
 }
 
+/// What the row forces and the checks of the moment stand for.
+#[derive(Clone, Debug)]
+pub struct RowBasis {
+    /// The load case that uses the moment resistance most; `None` where no case states a moment.
+    pub case: Option<String>,
+    /// Whether the tension is at the top.
+    pub tension_at_top: bool,
+    /// The transformation parameter of 5.3.
+    pub beta: f64,
+    /// Σ F·h of the rows, before the welds are asked, kNm.
+    pub of_rows_knm: f64,
+    /// M_j,Rd, kNm.
+    pub moment_knm: f64,
+    /// What the reader needs to follow them, one sentence each.
+    pub notes: Vec<String>,
+}
+
+/// A joint's rotational stiffness at the leading case, or in its own right.
+#[derive(Clone, Debug)]
+pub struct StiffnessResult {
+    /// "tension at the top" or "tension at the bottom".
+    pub sense: &'static str,
+    /// β.
+    pub beta: f64,
+    /// S_j,ini, kNm/rad.
+    pub initial: f64,
+    /// S_j beside the required moment, kNm/rad.
+    pub at_required: Option<f64>,
+    /// Whether something that is not known might make it stiffer.
+    pub lower_bound: bool,
+    /// z, mm.
+    pub lever_arm_mm: f64,
+    /// Springs in a row: in words, and k in mm (`None`: infinitely stiff).
+    pub springs: Vec<(String, Option<f64>)>,
+    /// Rigid from here on, kNm/rad; `None` where span or bracing is not stated.
+    pub rigid_from: Option<f64>,
+    /// Nominally pinned up to here, kNm/rad.
+    pub pinned_up_to: Option<f64>,
+    /// "rigid", "semi-rigid", "pinned", or "not stated: …".
+    pub class: String,
+    /// What the analysis takes it for, if the schedule says so.
+    pub assumed: Option<&'static str>,
+    /// "full-strength", "partial-strength" or "nominally pinned by strength".
+    pub strength: &'static str,
+    /// What may be assumed of the rotation capacity.
+    pub rotation: String,
+    /// What stands behind the class and is not checked.
+    pub notes: Vec<String>,
+    /// The working.
+    pub working: Arc<Working>,
+}
+
 /// A check's result.
 #[derive(Clone, Debug)]
 pub struct CheckResult {
@@ -210,10 +266,16 @@ pub struct JointReview {
     pub intended_resistance: Option<Resistance>,
     /// Required actions.
     pub required: Vec<Required>,
-    /// Row forces of the governing sense.
+    /// Row forces of the governing sense, at the full moment resistance.
     pub rows: Vec<RowResult>,
-    /// Checks.
-    pub checks: Vec<CheckResult>,
+    /// What the row forces stand for.
+    pub row_basis: Option<RowBasis>,
+    /// The load case that the checks of the shear stand for.
+    pub shear_case: Option<String>,
+    /// Rotational stiffness and class.
+    pub stiffness: Option<StiffnessResult>,
+    /// Checks; like joints share theirs.
+    pub checks: Arc<[CheckResult]>,
     /// Findings, worst first.
     pub findings: Vec<Finding>,
     /// What is missing for a proof.
@@ -224,6 +286,8 @@ pub struct JointReview {
     pub inputs: Vec<(String, String, String)>,
     /// The detail in lines, intended and detailed, for a two-column difference; empty if nothing is intended.
     pub difference: Option<(Vec<String>, Vec<String>)>,
+    /// The geometry, if the joint could be laid out.
+    pub sketch: Option<Arc<Sketch>>,
     /// Where to look in the model.
     pub at: Option<Place>,
 }

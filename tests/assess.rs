@@ -11,4 +11,7 @@ mod odd_sizes;
 mod plastic;
 mod safe;
 mod slip;
+mod splices;
+mod stiffness;
+pub mod strengthened;
 mod strengthening;

@@ -1,6 +1,8 @@
 //! Formulas against published values; every expected value carries its source.
 
-use faying::eurocode::alpha::{alpha, lambda_1_on_curve};
+use faying::eurocode::alpha::{alpha, alpha_of_draft, lambda_1_on_curve};
+mod strengthening;
+
 use faying::eurocode::bolts::{self, BearingPlace};
 use faying::eurocode::effective_length::{self as el, RowPlace};
 use faying::eurocode::t_stub::{ModeOne, TStub, t_stub};
@@ -119,6 +121,11 @@ fn alpha_on_the_chart() {
             close(alpha(lambda_1, lambda_2, 8.0), expected, 0.006);
         }
     }
+    // The draft's formula: own arithmetic at e = m = m_2 (4 + 1.67), far from the stiffener (4 + 1.25), close to it.
+    close(alpha_of_draft(0.5, 0.5), 5.67, 1e-9);
+    close(alpha_of_draft(0.5, 5.0), 5.25, 1e-9);
+    close(alpha_of_draft(0.3, 0.05), 8.0, 1e-9);
+    assert!(alpha_of_draft(f64::NAN, 0.5).is_nan() && alpha_of_draft(0.5, f64::NAN).is_nan());
     assert!(alpha(f64::NAN, 0.5, 8.0).is_nan());
 }
 
@@ -168,6 +175,7 @@ fn stub(t: f64, m: f64, l: f64) -> TStub {
         n: mm(1.25 * m),
         sum_F_t_Rd: kn(282.2),
         mode_one: ModeOne::Method1,
+        backing: None,
     }
 }
 

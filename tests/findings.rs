@@ -2,6 +2,7 @@
 
 mod action_not_stated;
 mod axial_force_beyond_limit;
+mod backing_plate_missing;
 mod bench;
 mod bolt_class_higher;
 mod bolt_class_lower;
@@ -11,6 +12,7 @@ mod bolt_larger;
 mod bolt_size_unknown;
 mod bolt_smaller;
 mod bolt_too_short;
+mod diagonal_missing;
 mod distance_beyond_greatest;
 mod edge_distance_short;
 mod gauge_differs;
@@ -39,7 +41,10 @@ mod shear_short;
 mod stiffener_added;
 mod stiffener_in_root;
 mod stiffener_missing;
+mod stiffness_differs;
+mod strengthening_added;
 mod tool_without_room;
+mod web_plate_missing;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;
@@ -50,8 +55,9 @@ use std::path::Path;
 
 use faying::assess::{About, State};
 use faying::findings::{RULES, look};
+use faying::joints::{EndPlate, Half, Layout, SpliceLayout, Welds};
 use faying::review::Outcome;
-use faying::units::mm;
+use faying::units::{Length, mm};
 
 use bench::Bench;
 
@@ -157,4 +163,35 @@ fn findings_come_worst_first_and_then_in_the_order_of_the_rules() {
             (Outcome::Comment, "not-credited"),
         ]
     );
+}
+
+/// Plate and welds of a splice's other half are held against the same intention, and named.
+#[test]
+fn the_other_half_of_a_splice_is_compared_too() {
+    let mut bench = Bench::good();
+    let good = bench.layout().clone();
+    let half = |thickness: f64, throat: f64, guid: &str| Half {
+        beam: good.beam.clone(),
+        soffit: Length::ZERO,
+        plate: EndPlate { guid: guid.into(), thickness: mm(thickness), ..good.plate.clone() },
+        welds: Welds { web: bench::known(mm(throat)), ..good.welds.clone() },
+    };
+    let throat = good.welds.web.as_ref().unwrap().value.get();
+    let supported = half(25.0, throat, "0guidP");
+    let mut supporting = half(15.0, throat - 1.0, "0guidQ");
+    supporting.plate.width = mm(170.0);
+    supporting.plate.grade = Err(bench::missing("steel grade"));
+    supporting.welds.flange_top = Err(bench::missing("throat"));
+    let mut bolts = good.bolts.clone();
+    bolts.rows.iter_mut().for_each(|row| row.edge_column = mm(20.0));
+    bench.joint().layout = Ok(Layout::Splice(SpliceLayout { supported, supporting, bolts }));
+    let rules = ["plate-thinner", "plate-size-differs", "plate-grade-unknown", "weld-thinner", "weld-not-found"];
+    for rule in rules {
+        let found = bench.find(rule);
+        assert_eq!(found.len(), 1, "{rule}: {found:?}");
+        assert!(found[0].message.contains("the supporting beam"), "{}", found[0].message);
+        assert!(found[0].elements.contains(&"0guidQ".to_owned()), "{rule}: {:?}", found[0].elements);
+    }
+    assert_eq!(bench.find("edge-distance-short").len(), 1);
+    assert_eq!(bench.find("section-differs").len(), 1, "the supporting member is a beam, a column was intended");
 }

@@ -6,3 +6,5 @@ mod laws;
 mod layouts;
 mod marks;
 mod refusals;
+mod splices;
+mod strengthening;

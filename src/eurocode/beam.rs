@@ -62,6 +62,7 @@ pub fn flange_compression(c: &FlangeCompression, gamma_M0: f64) -> Result<Resist
         step!(w, "EN 1993-1-1 6.2.8, (6.30)", M_y_V_Rd = (W_y - rho * (A_w * (A_w / (4.0 * t_wb)))) * f_y / gamma_M0);
         M_beam = M_y_V_Rd;
     }
+    given!(w, "the beam's moment resistance that counts"; M_beam);
     step!(w, "6.2.6.7, (6.21)", F_c_fb_Rd = M_beam / (h - t_fb));
     let mut value = F_c_fb_Rd;
     if !(h.get() <= 600.0) {

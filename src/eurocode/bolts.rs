@@ -73,6 +73,7 @@ pub fn bearing(
         step!(w, "Table 3.4", alpha_d_inner = p_1 / (3.0 * d_0) - 0.25);
         alpha_d = least(alpha_d, alpha_d_inner);
     }
+    given!(w, "least of these, at most 1"; alpha_d);
     step!(w, "Table 3.4", alpha_b = least(alpha_d, f_ub / f_u));
     let mut k_1_across = 2.5;
     if let Some(p_2) = p_2 {
@@ -80,6 +81,7 @@ pub fn bearing(
         step!(w, "Table 3.4", k_1_inner = 1.4 * (p_2 / d_0) - 1.7);
         k_1_across = k_1_inner;
     }
+    given!(w, "across the load, at most 2.5"; k_1_across);
     step!(w, "Table 3.4", k_1_edge = 2.8 * (e_2 / d_0) - 1.7);
     step!(w, "Table 3.4", k_1 = least(k_1_edge, least(k_1_across, 2.5)));
     // A distance below the minimum of Table 3.3 would make the factors negative: then nothing is left.

@@ -35,6 +35,7 @@ impl<'a> Entity<'a> {
 
     /// Whether it is of that class or of a subtype, by the schema of its exchange. What IFC4X3 renamed answers to
     /// the older name too.
+    #[inline]
     pub fn is_a(self, class: &str) -> bool {
         self.graph.is_a(self.graph.class(self.id), class)
     }
@@ -59,13 +60,9 @@ impl<'a> Entity<'a> {
     }
 
     /// The value of an attribute, by its EXPRESS name.
+    #[inline]
     pub fn value(self, attribute: &str) -> View<'a> {
-        let known = self.graph.attributes(self.id).iter().position(|a| a.name == attribute);
-        let cell = known.map_or_else(
-            || self.graph.extras(self.id).iter().find(|(name, _)| **name == *attribute).map(|(_, cell)| *cell),
-            |index| self.graph.cells(self.id).get(index).copied(),
-        );
-        cell.map_or(View::Absent, |cell| self.graph.store.view(cell))
+        self.graph.value(self.id, attribute).map_or(View::Absent, |cell| self.graph.store.view(*cell))
     }
 
     /// All attributes with their values, absent ones too: the schema's in its order, then unknown ones.
@@ -87,10 +84,11 @@ impl<'a> Entity<'a> {
 
     /// The entities of that class (or a subtype) that point here by that attribute, in the order of the file.
     pub fn referring_by(self, class: &str, attribute: &str) -> Vec<Entity<'a>> {
-        self.referring().filter(|e| e.is_a(class) && e.entities(attribute).iter().any(|to| to.id == self.id)).collect()
+        self.referring().filter(|e| e.is_a(class) && e.each(attribute).any(|to| to.id == self.id)).collect()
     }
 
     /// A string attribute (also of a SELECT type); empty strings count as absent.
+    #[inline]
     pub fn text(self, attribute: &str) -> Option<&'a str> {
         let mut value = self.value(attribute);
         while let View::Typed(_, inner) = value {
@@ -100,39 +98,52 @@ impl<'a> Entity<'a> {
     }
 
     /// A number attribute (real or integer, also of a SELECT type), in the file's unit.
+    #[inline]
     pub fn number(self, attribute: &str) -> Option<f64> {
         self.value(attribute).number()
     }
 
     /// A list of numbers, such as `Coordinates`; `None` if any item is no number.
+    #[inline]
     pub fn numbers(self, attribute: &str) -> Option<Vec<f64>> {
         self.value(attribute).list()?.numbers()
     }
 
     /// An enumeration item, upper case.
+    #[inline]
     pub fn token(self, attribute: &str) -> Option<&'a str> {
         if let View::Token(token) = self.value(attribute) { Some(token) } else { None }
     }
 
     /// A BOOLEAN attribute.
+    #[inline]
     pub fn truth(self, attribute: &str) -> Option<bool> {
         if let View::Truth(truth) = self.value(attribute) { Some(truth) } else { None }
     }
 
     /// The entity an attribute points to.
+    #[inline]
     pub fn entity(self, attribute: &str) -> Option<Entity<'a>> {
         self.value(attribute).entity().map(|id| self.graph.get(id))
     }
 
     /// The entities of a list attribute (or the single one it holds).
+    #[inline]
     pub fn entities(self, attribute: &str) -> Vec<Entity<'a>> {
-        let mut value = self.value(attribute);
-        while let View::Typed(_, inner) = value {
-            value = inner.view();
-        }
-        match value {
-            View::List(items) => items.iter().filter_map(View::entity).map(|id| self.graph.get(id)).collect(),
-            value => value.entity().map(|id| self.graph.get(id)).into_iter().collect(),
-        }
+        let (graph, cells) = (self.graph, self.targets(attribute));
+        let mut all = Vec::with_capacity(cells.len());
+        all.extend(cells.iter().filter_map(|cell| cell.to_entity()).map(|id| graph.get(id)));
+        all
+    }
+
+    /// As [`Entity::entities`], one after the other.
+    #[inline]
+    pub fn each(self, attribute: &str) -> impl Iterator<Item = Entity<'a>> + use<'a> {
+        let graph = self.graph;
+        self.targets(attribute).iter().filter_map(|cell| cell.to_entity()).map(|id| graph.get(id))
+    }
+
+    fn targets(self, attribute: &str) -> &'a [Cell] {
+        self.graph.value(self.id, attribute).map_or(&[], |cell| self.graph.store.flat(cell))
     }
 }

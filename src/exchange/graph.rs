@@ -103,11 +103,10 @@ impl Entities {
     pub fn add<'n>(&mut self, class: &str, attributes: impl IntoIterator<Item = (&'n str, Value)>) -> Id {
         let class = self.class_id(class);
         let id = self.open(class, "", Spot::default());
-        let known = self.attributes(id);
         for (name, value) in attributes {
             let cell = self.store.put(&value);
-            match known.iter().position(|a| a.name == name) {
-                Some(index) => self.set(id, index, cell),
+            match self.attribute(id, name) {
+                Some((index, _)) => self.set(id, index, cell),
                 None => self.add_extra(id, name, cell),
             }
         }
@@ -167,28 +166,80 @@ impl Entities {
         self.extras.entry(id).or_default().push((name.into(), value));
     }
 
-    /// Replaces waiting references by their targets.
-    pub(super) fn settle(&mut self, targets: &[Option<Id>]) {
-        self.store.settle(targets);
+    /// Replaces waiting references by their targets; whether some have none, which are left as they are.
+    pub(super) fn settle(&mut self, target: impl Fn(Id) -> Option<Id>) -> bool {
+        let mut is_missing = self.store.settle(&target);
         for (_, value) in self.extras.values_mut().flatten() {
-            super::store::settle(value, targets);
+            is_missing |= !value.settle(&target);
+        }
+        is_missing
+    }
+
+    /// Makes the references absent that still wait, or takes them out of the list they stand in.
+    pub(super) fn drop_waiting(&mut self) {
+        self.store.drop_waiting();
+        for (_, value) in self.extras.values_mut().flatten() {
+            value.drop_waiting();
             if value.is_list() {
                 *value = self.store.without_gaps(*value);
             }
         }
     }
 
-    /// The position and kind of an attribute.
-    pub(super) fn attribute(&self, id: Id, name: &str) -> Option<(usize, Kind)> {
-        let (index, known) = self.attributes(id).iter().enumerate().find(|(_, a)| a.name == name)?;
-        Some((index, known.kind))
+    /// Calls with each reference that an entity holds.
+    pub(super) fn each_reference(&self, from: Id, with: &mut impl FnMut(Id)) {
+        let cells = self.cells(from).iter().chain(self.extras(from).iter().map(|(_, cell)| cell));
+        cells.for_each(|cell| self.store.each_entity(*cell, with));
     }
 
+    /// Takes over all entities of another graph of the same schema behind its own; what they refer to becomes what `id`
+    /// makes of it.
+    pub(super) fn absorb(&mut self, other: Self, id: impl Fn(Id) -> Id) {
+        self.pointers.take();
+        let base = self.nodes.len() as u32;
+        let classes: Vec<ClassId> = other.strangers.iter().map(|name| self.class_id(name)).collect();
+        let (cells, labels) = (self.store.next() as u32, self.labels.len() as u32);
+        let moved = self.store.absorb(&other.store, &id);
+        self.labels.reserve_exact(other.labels.len());
+        self.labels.push_str(&other.labels);
+        self.nodes.reserve_exact(other.nodes.len());
+        self.nodes.extend(other.nodes.into_iter().map(|node| {
+            let stranger = usize::from(node.class).checked_sub(self.schema.len()).and_then(|index| classes.get(index));
+            let class = stranger.copied().unwrap_or(node.class);
+            Node { class, label: node.label + labels, values: node.values + cells, ..node }
+        }));
+        for (of, extras) in other.extras {
+            let store = &mut self.store;
+            let extras = extras.into_iter().map(|(name, cell)| (name, store.moved(&other.store, cell, &moved, &id)));
+            let extras = extras.collect();
+            self.extras.insert(Id(of.0 + base), extras);
+        }
+    }
+
+    /// The position and kind of an attribute.
+    pub(super) fn attribute(&self, id: Id, name: &str) -> Option<(usize, Kind)> {
+        let class = self.schema.class(self.class(id))?;
+        let index = class.position(name)?;
+        Some((index, class.attributes.get(index)?.kind))
+    }
+
+    /// The value of an attribute, by its EXPRESS name; `None` where it has no such attribute.
+    #[inline]
+    pub(super) fn value(&self, id: Id, name: &str) -> Option<&Cell> {
+        let node = self.node(id);
+        match self.schema.class(node.class).and_then(|class| class.position(name)) {
+            Some(index) => self.store.cell(node.values as usize + index),
+            None => self.extras(id).iter().find(|(extra, _)| **extra == *name).map(|(_, cell)| cell),
+        }
+    }
+
+    #[inline]
     pub(super) fn class(&self, id: Id) -> ClassId {
         self.node(id).class
     }
 
     /// Whether a class is of that name or a subtype of it. What IFC4X3 renamed answers to the older name too.
+    #[inline]
     pub(super) fn is_a(&self, class: ClassId, name: &str) -> bool {
         self.is_named(class, name)
             || match name {
@@ -198,10 +249,11 @@ impl Entities {
             }
     }
 
+    #[inline]
     fn is_named(&self, class: ClassId, name: &str) -> bool {
-        match self.schema.class(class) {
-            Some(class) => class.line.iter().rev().any(|class| self.class_name(*class) == name),
-            None => self.class_name(class) == name,
+        match self.schema.find_exact(name) {
+            Some(asked) => self.schema.is_subtype(class, asked),
+            None => usize::from(class) >= self.schema.len() && self.class_name(class) == name,
         }
     }
 
@@ -232,6 +284,9 @@ impl Entities {
 
     /// The attributes that the schema does not give it.
     pub(super) fn extras(&self, id: Id) -> &[(Box<str>, Cell)] {
+        if self.extras.is_empty() {
+            return &[];
+        }
         self.extras.get(&id).map_or(&[], |extras| extras)
     }
 
@@ -243,20 +298,19 @@ impl Entities {
         range.and_then(|range| from.get(range)).unwrap_or_default().iter().copied()
     }
 
+    /// Calls with each entity that is pointed to and who points.
+    fn each_pointer(&self, mut with: impl FnMut(usize, Id)) {
+        for from in (0..self.nodes.len() as u32).map(Id) {
+            self.each_reference(from, &mut |to| with(to.0 as usize, from));
+        }
+    }
+
     /// Counts who points to each entity, then puts them in their places.
     fn pointers(&self) -> Pointers {
-        let each = |with: &mut dyn FnMut(usize, Id)| {
-            for from in (0..self.nodes.len() as u32).map(Id) {
-                let cells = self.cells(from).iter().chain(self.extras(from).iter().map(|(_, cell)| cell));
-                for cell in cells {
-                    self.store.each_entity(*cell, &mut |to| with(to.0 as usize, from));
-                }
-            }
-        };
         // who points twice is counted once: its pointers come one after the other
         let mut last = vec![u32::MAX; self.nodes.len()];
         let mut starts = vec![0_u32; self.nodes.len() + 1];
-        each(&mut |to, from| {
+        self.each_pointer(|to, from| {
             if last.get(to).is_some_and(|last| *last != from.0) {
                 last[to] = from.0;
                 starts[to + 1] += 1;
@@ -268,7 +322,7 @@ impl Entities {
         let mut from_all = vec![Id(0); starts.last().map_or(0, |all| *all as usize)];
         let mut next = starts.clone();
         last.fill(u32::MAX);
-        each(&mut |to, from| {
+        self.each_pointer(|to, from| {
             if last.get(to).is_some_and(|last| *last != from.0) {
                 last[to] = from.0;
                 from_all[next[to] as usize] = from;
@@ -278,6 +332,7 @@ impl Entities {
         Pointers { starts, from: from_all }
     }
 
+    #[inline]
     fn node(&self, id: Id) -> &Node {
         &self.nodes[id.0 as usize]
     }

@@ -70,6 +70,39 @@ pub(super) struct Class {
     /// Explicit attributes, inherited ones first: the positions of STEP.
     pub attributes: Vec<Attribute>,
     pub inverses: Vec<Inverse>,
+    /// The attributes' positions and one more, each at the first free place from its name's hash on; the length is a
+    /// power of two above that of `attributes`.
+    places: Box<[u8]>,
+}
+
+impl Class {
+    /// The position of the attribute of that name.
+    #[inline]
+    pub fn position(&self, name: &str) -> Option<usize> {
+        let mask = self.places.len().checked_sub(1)?;
+        let mut at = exact_hash(name) as usize & mask;
+        loop {
+            let position = usize::from(*self.places.get(at)?).checked_sub(1)?; // a free place ends the search
+            if self.attributes.get(position)?.name == name {
+                return Some(position);
+            }
+            at = (at + 1) & mask;
+        }
+    }
+
+    /// Fills the places.
+    fn index(mut self) -> Self {
+        self.places = vec![0; (2 * self.attributes.len() + 1).next_power_of_two()].into();
+        let mask = self.places.len() - 1;
+        for (position, attribute) in self.attributes.iter().enumerate() {
+            let mut at = exact_hash(attribute.name) as usize & mask;
+            while self.places[at] != 0 {
+                at = (at + 1) & mask;
+            }
+            self.places[at] = u8::try_from(position + 1).expect("fewer than 255 attributes");
+        }
+        self
+    }
 }
 
 /// What a name stands for in the schema.
@@ -87,6 +120,9 @@ pub(super) struct Schema {
     pub name: &'static str,
     classes: Vec<Class>,
     by_name: HashTable<(&'static str, ClassId)>,
+    by_exact_name: HashTable<(&'static str, ClassId)>,
+    /// As STEP spells them.
+    by_upper_name: HashTable<(Box<str>, ClassId)>,
     types: Vec<(&'static str, Kind)>,
     types_by_name: HashTable<(&'static str, TypeId)>,
 }
@@ -112,16 +148,26 @@ impl Schema {
 
     /// The entity of that name, in whatever case.
     pub fn find(&self, name: &str) -> Option<ClassId> {
+        // the two usual spellings first, because they are found sooner
+        let upper = || self.by_upper_name.find(exact_hash(name), |(known, _)| **known == *name);
+        if let Some(class) = self.find_exact(name).or_else(|| upper().map(|(_, class)| *class)) {
+            return Some(class);
+        }
         self.by_name.find(hash(name), |(known, _)| known.eq_ignore_ascii_case(name)).map(|(_, class)| *class)
+    }
+
+    /// The entity of exactly that name.
+    #[inline]
+    pub fn find_exact(&self, name: &str) -> Option<ClassId> {
+        self.by_exact_name.find(exact_hash(name), |(known, _)| *known == name).map(|(_, class)| *class)
     }
 
     /// The entity or the defined type of that name, in whatever case.
     pub fn named(&self, name: &str) -> Named {
-        let hash = hash(name);
-        if let Some((_, class)) = self.by_name.find(hash, |(known, _)| known.eq_ignore_ascii_case(name)) {
-            return Named::Class(*class);
+        if let Some(class) = self.find(name) {
+            return Named::Class(class);
         }
-        let known = self.types_by_name.find(hash, |(known, _)| known.eq_ignore_ascii_case(name));
+        let known = self.types_by_name.find(hash(name), |(known, _)| known.eq_ignore_ascii_case(name));
         known.and_then(|(_, id)| Some(Named::Type(*id, self.types.get(usize::from(*id))?.1))).unwrap_or(Named::Neither)
     }
 
@@ -176,6 +222,8 @@ impl Schema {
             name,
             classes: Vec::new(),
             by_name: HashTable::new(),
+            by_exact_name: HashTable::new(),
+            by_upper_name: HashTable::new(),
             types: Vec::new(),
             types_by_name: HashTable::new(),
         };
@@ -183,7 +231,12 @@ impl Schema {
         let entities = || lines().filter(|line| !line.starts_with('='));
         for (number, line) in entities().enumerate() {
             let name = line.trim_start_matches('*').split([' ', '<']).next().unwrap_or_default();
-            schema.by_name.insert_unique(hash(name), (name, number as ClassId), |(name, _)| hash(name));
+            let entry = (name, number as ClassId);
+            schema.by_name.insert_unique(hash(name), entry, |(name, _)| hash(name));
+            schema.by_exact_name.insert_unique(exact_hash(name), entry, |(name, _)| exact_hash(name));
+            let (upper, hash) =
+                (Box::<str>::from(name.to_ascii_uppercase()), |(name, _): &(Box<str>, _)| exact_hash(name));
+            schema.by_upper_name.insert_unique(exact_hash(&upper), (upper, number as ClassId), hash);
         }
         for line in lines().filter_map(|line| line.strip_prefix('=')) {
             let (name, kind) = line.split_once(':').expect("a defined type and its kind");
@@ -220,7 +273,8 @@ impl Schema {
                 attributes.push(Attribute { name, kind: self.kind(kind), derived: false });
             }
         }
-        Class { name: name.trim_start_matches('*'), line, is_abstract: name.starts_with('*'), attributes, inverses }
+        let (name, is_abstract) = (name.trim_start_matches('*'), name.starts_with('*'));
+        Class { name, line, is_abstract, attributes, inverses, places: [].into() }.index()
     }
 
     fn kind(&self, code: &str) -> Kind {
@@ -248,5 +302,18 @@ fn hash(name: &str) -> u64 {
     let mixed = name.bytes().fold(name.len() as u64, |hash, byte| {
         (hash.rotate_left(5) ^ u64::from(byte | 0x20)).wrapping_mul(0x9E37_79B9_7F4A_7C15) // 2^64 / golden ratio
     });
+    mixed ^ mixed >> 32
+}
+
+/// A quicker hash of a name as it is spelt. The program's own names are constants where it is called, and so is their
+/// hash once it is inlined there.
+#[inline(always)]
+fn exact_hash(name: &str) -> u64 {
+    let bytes = name.as_bytes();
+    let (first, last) = match (bytes.first_chunk::<8>(), bytes.last_chunk::<8>()) {
+        (Some(first), Some(last)) => (u64::from_le_bytes(*first), u64::from_le_bytes(*last)),
+        _ => (bytes.iter().fold(0, |all, byte| all << 8 | u64::from(*byte)), 0),
+    };
+    let mixed = (first.rotate_left(23) ^ last ^ bytes.len() as u64).wrapping_mul(0x9E37_79B9_7F4A_7C15); // as above
     mixed ^ mixed >> 32
 }

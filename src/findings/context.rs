@@ -2,7 +2,7 @@
 
 use crate::assess::{About, Assessment, Sense, State};
 use crate::intent::{IntendedDetail, ScheduledJoint};
-use crate::joints::{Joint, Layout};
+use crate::joints::{Joint, Layout, PlateSide};
 use crate::origin::Place;
 use crate::rulebook::Rulebook;
 use crate::shop::{Identity, Steelwork};
@@ -59,7 +59,18 @@ impl<'a> Context<'a> {
         super::sense(moments.max_by(|a, b| a.abs().get().total_cmp(&b.abs().get()))?.get())
     }
 
-    /// The end plate.
+    /// Every end plate with its beam, and what was intended of it, where both are there to be compared.
+    pub(super) fn plates(&self) -> impl Iterator<Item = (PlateSide<'a>, &'a IntendedDetail)> + use<'a> {
+        let both = self.both();
+        both.into_iter().flat_map(|(layout, intended)| layout.sides().into_iter().map(move |side| (side, intended)))
+    }
+
+    /// The end plate of one side.
+    pub(super) fn plate_of(&self, side: PlateSide<'_>) -> Parts {
+        self.parts([side.plate.guid.as_str()])
+    }
+
+    /// The end plate, or the supported member's.
     pub(super) fn plate(&self) -> Parts {
         self.parts(self.layout.map(|layout| layout.side().plate.guid.as_str()))
     }

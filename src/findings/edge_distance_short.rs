@@ -3,7 +3,7 @@
 use super::compare::less;
 use super::say::mm;
 use super::{Context, Rule};
-use crate::joints::Layout;
+use crate::joints::{Layout, PlateSide};
 use crate::review::{Finding, Outcome};
 use crate::rulebook::Distances;
 use crate::units::Length;
@@ -34,23 +34,26 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
 
 /// What, its least in hole diameters (round holes, rows not staggered: the layout takes no others), all of its sort.
 fn distances(layout: &Layout, least: &Distances) -> Vec<(&'static str, f64, Vec<Length>)> {
-    let (rows, plate) = (&layout.bolts().rows, layout.side().plate);
-    let ends = [rows.first().map(|row| plate.top - row.height), rows.last().map(|row| row.height - plate.bottom)];
+    let rows = &layout.bolts().rows;
+    let (top, bottom) = (rows.first(), rows.last());
+    let ends = |side: &PlateSide<'_>| {
+        [top.map(|row| side.plate.top - row.height), bottom.map(|row| row.height - side.plate.bottom)]
+    };
+    let ends = layout.sides().iter().flat_map(ends).flatten().collect();
+    let of_plate = rows.iter().map(|row| row.edge_plate);
+    let behind: Vec<Length> = rows.iter().map(|row| row.edge_column).collect();
     let pitches = rows.windows(2).filter_map(|pair| Some(pair.first()?.height - pair.last()?.height));
-    let column_ends = layout.on_column().map(|layout| [layout.column_above, layout.column_below]).into_iter().flatten();
+    let (plates, flange, column_ends) = match layout {
+        Layout::EndPlate(layout) => {
+            (of_plate.collect(), behind, [layout.column_above, layout.column_below].into_iter().flatten().collect())
+        }
+        Layout::Splice(_) => (of_plate.chain(behind).collect(), Vec::new(), Vec::new()),
+    };
     vec![
-        ("the end distance e1 of the bolts in the end plate", least.end, ends.into_iter().flatten().collect()),
-        ("the end distance e1 of the bolts in the column", least.end, column_ends.flatten().collect()),
-        (
-            "the edge distance e2 of the bolts in the end plate",
-            least.edge,
-            rows.iter().map(|row| row.edge_plate).collect(),
-        ),
-        (
-            "the edge distance e2 of the bolts in the column flange",
-            least.edge,
-            rows.iter().map(|row| row.edge_column).collect(),
-        ),
+        ("the end distance e1 of the bolts in the end plate", least.end, ends),
+        ("the end distance e1 of the bolts in the column", least.end, column_ends),
+        ("the edge distance e2 of the bolts in the end plate", least.edge, plates),
+        ("the edge distance e2 of the bolts in the column flange", least.edge, flange),
         ("the spacing p1 of the bolt rows", least.pitch, pitches.collect()),
         ("the gauge p2 of the bolts", least.gauge, rows.iter().map(|row| row.gauge).collect()),
     ]

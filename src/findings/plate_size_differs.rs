@@ -3,6 +3,8 @@
 use super::compare::{differs, less};
 use super::say::{and, mm};
 use super::{Context, Rule, deviation, rows};
+use crate::intent::IntendedDetail;
+use crate::joints::PlateSide;
 use crate::review::{Finding, Outcome};
 use crate::units::Length;
 
@@ -12,8 +14,11 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 /// A plate that is larger on every differing side is a comment. On a joint that was detailed upside down only the width
 /// is compared: `joint-handed-wrong` tells the rest.
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let Some((layout, intended)) = context.both() else { return Vec::new() };
-    let (plate, tolerances) = (layout.side().plate, &context.rulebook.tolerances);
+    context.plates().filter_map(|(side, intended)| of_plate(context, side, intended)).collect()
+}
+
+fn of_plate(context: &Context<'_>, side: PlateSide<'_>, intended: &IntendedDetail) -> Option<Finding> {
+    let (plate, tolerances) = (side.plate, &context.rulebook.tolerances);
     let upright = !rows::upside_down(context);
     // What, intended, detailed, tolerance, whether less of it is a smaller plate (else more).
     let sides: [(&str, Option<Length>, Length, Length, bool); 3] = [
@@ -27,7 +32,7 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
         .filter(|(_, intended, detailed, tolerance, _)| differs(*intended, *detailed, *tolerance))
         .collect();
     if differing.is_empty() {
-        return Vec::new();
+        return None;
     }
     let smaller = differing.iter().any(|&(_, intended, detailed, tolerance, up)| {
         if up { less(detailed, intended, tolerance) } else { less(intended, detailed, tolerance) }
@@ -36,11 +41,11 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
         .iter()
         .map(|(what, intended, detailed, ..)| format!("{what} {} instead of {}", mm(*detailed), mm(*intended)))
         .collect();
-    let message = format!("the end plate has another size than intended: {}", and(&each));
+    let message = format!("the end plate{} has another size than intended: {}", side.which.of(), and(&each));
     let finding = if smaller { deviation(context, ID, message) } else { Finding::new(ID, Outcome::Comment, message) };
     let print = |of: &dyn Fn(usize) -> Length| {
         let each = differing.iter().enumerate().map(|(i, (what, ..))| format!("{what} {}", mm(of(i))));
         each.collect::<Vec<_>>().join(", ")
     };
-    vec![finding.against(print(&|i| differing[i].1), print(&|i| differing[i].2)).on(context.plate())]
+    Some(finding.against(print(&|i| differing[i].1), print(&|i| differing[i].2)).on(context.plate_of(side)))
 }

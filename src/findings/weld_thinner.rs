@@ -4,6 +4,7 @@ use super::compare::less;
 use super::say::mm;
 use super::{Context, Rule, deviation};
 use crate::assess::Sense;
+use crate::joints::Which;
 use crate::review::Finding;
 
 const ID: &str = "weld-thinner";
@@ -11,36 +12,30 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 
 /// The intended flange throat is that of the flange in tension under the leading moment; without one, of both.
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let Some((layout, intended)) = context.both() else { return Vec::new() };
     let sense = context.leading_sense();
-    let places = [
-        (
-            "top flange",
-            "flange-top",
-            &layout.side().welds.flange_top,
-            intended.flange_weld,
-            sense != Some(Sense::Sagging),
-        ),
-        (
-            "bottom flange",
-            "flange-bottom",
-            &layout.side().welds.flange_bottom,
-            intended.flange_weld,
-            sense != Some(Sense::Hogging),
-        ),
-        ("web", "web", &layout.side().welds.web, intended.web_weld, true),
-    ];
-    let thinner = places.into_iter().filter_map(|(place, role, detailed, intended, compared)| {
+    let places = context.plates().flat_map(|(side, intended)| {
+        let (top, bottom) = (sense != Some(Sense::Sagging), sense != Some(Sense::Hogging));
+        let (welds, flange) = (side.welds, intended.flange_weld);
+        [
+            (side, "top flange", "flange-top", &welds.flange_top, flange.filter(|_| top)),
+            (side, "bottom flange", "flange-bottom", &welds.flange_bottom, flange.filter(|_| bottom)),
+            (side, "web", "web", &welds.web, intended.web_weld),
+        ]
+    });
+    let thinner = places.filter_map(|(side, place, role, detailed, intended)| {
         let (intended, detailed) = (intended?, detailed.as_ref().ok()?.value);
-        if !compared || !less(detailed, intended, context.rulebook.tolerances.size) {
+        if !less(detailed, intended, context.rulebook.tolerances.size) {
             return None;
         }
         let message = format!(
-            "the weld of the beam's {place} is thinner than intended: throat {} instead of {}",
+            "the weld of the {}beam's {place} is thinner than intended: throat {} instead of {}",
+            side.which.owner(),
             mm(detailed),
             mm(intended)
         );
-        Some(deviation(context, ID, message).against(mm(intended), mm(detailed)).on(context.welds(role)))
+        // The welds' roles do not tell the halves of a splice apart; the plates do.
+        let on = if side.which == Which::Only { context.welds(role) } else { context.plate_of(side) };
+        Some(deviation(context, ID, message).against(mm(intended), mm(detailed)).on(on))
     });
     thinner.collect()
 }

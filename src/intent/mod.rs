@@ -6,6 +6,7 @@ mod actions;
 mod csv_cells;
 mod csv_form;
 mod fault;
+mod frame;
 mod gather;
 mod pairing;
 mod source;
@@ -34,8 +35,55 @@ pub struct LoadCase {
     pub shear: Option<Force>,
     /// N_Ed.
     pub axial: Option<Force>,
+    /// N_col,Ed of the supporting member at the joint, positive in tension.
+    pub column_axial: Option<Force>,
+    /// M_col,Ed of the supporting member at the joint, by magnitude.
+    pub column_moment: Option<Moment>,
     /// The line that states it.
     pub at: Place,
+}
+
+impl LoadCase {
+    /// One that states nothing yet.
+    pub fn blank(name: &str, at: Place) -> Self {
+        Self { name: name.into(), moment: None, shear: None, axial: None, column_axial: None, column_moment: None, at }
+    }
+}
+
+/// How a joint is taken in the frame's analysis, EN 1993-1-8 5.2.2.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum JointClass {
+    /// It keeps the angle between its members.
+    Rigid,
+    /// Its stiffness counts in the analysis.
+    SemiRigid,
+    /// It turns freely.
+    Pinned,
+}
+
+impl JointClass {
+    /// Every class.
+    pub const ALL: [Self; 3] = [Self::Rigid, Self::SemiRigid, Self::Pinned];
+
+    /// The word in schedules and reports.
+    pub fn word(self) -> &'static str {
+        match self {
+            Self::Rigid => "rigid",
+            Self::SemiRigid => "semi-rigid",
+            Self::Pinned => "pinned",
+        }
+    }
+}
+
+/// What the analysis of the frame takes a joint for; what is not stated is not compared.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct InFrame {
+    /// L_b: the supported member from column to column (axes).
+    pub span: Option<Length>,
+    /// Whether a bracing takes at least 80 % off the frame's sway, 5.2.2.5.
+    pub braced: Option<bool>,
+    /// The class that the analysis assumes.
+    pub class: Option<JointClass>,
 }
 
 /// One scheduled joint with all its load cases.
@@ -53,6 +101,8 @@ pub struct ScheduledJoint {
     pub cases: Vec<LoadCase>,
     /// Name of the intended detail it uses.
     pub detail: Option<String>,
+    /// What the analysis of the frame takes it for.
+    pub frame: InFrame,
     /// Its first line.
     pub at: Place,
 }
@@ -66,13 +116,26 @@ pub enum Friction {
     Factor(f64),
 }
 
-/// An intended pair of transverse stiffeners.
-#[derive(Clone, Debug, PartialEq)]
+/// Intended plates that strengthen the column: a pair of stiffeners, web plates, diagonals or backing plates.
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct IntendedStiffener {
     /// Thickness.
     pub thickness: Option<Length>,
     /// Grade as written.
     pub grade: Option<String>,
+    /// Throat of their fillets; backing plates have none.
+    pub throat: Option<Length>,
+    /// How long a pair of stiffeners is that does not reach from flange to flange; the others have none.
+    pub length: Option<Length>,
+}
+
+/// How diagonals stand in a column's web.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum DiagonalForm {
+    /// One pair, from the level of one flange of the beam to that of the other.
+    N,
+    /// Two pairs from the levels of the flanges that meet between them.
+    K,
 }
 
 /// An intended detail; what is not stated is not compared.
@@ -120,6 +183,16 @@ pub struct IntendedDetail {
     pub stiffener_bottom: Option<Option<IntendedStiffener>>,
     /// Whether the steel is exposed to weather or to other corrosive influences.
     pub exposed: Option<bool>,
+    /// Supplementary web plates: `Some(None)` means "none intended".
+    pub web_plates: Option<Option<IntendedStiffener>>,
+    /// On how many sides of the web they are: 1 or 2.
+    pub web_plate_sides: Option<u8>,
+    /// Diagonal stiffeners in pairs.
+    pub diagonals: Option<Option<IntendedStiffener>>,
+    /// How they stand.
+    pub diagonal_form: Option<DiagonalForm>,
+    /// Backing plates behind the column's flange, on both sides of the web.
+    pub backing_plates: Option<Option<IntendedStiffener>>,
     /// Where it is written.
     pub at: Option<Place>,
 }

@@ -3,12 +3,21 @@
 use glam::{DVec2, DVec3};
 
 use super::draft::Draft;
-use super::end_plate::Case;
+use super::frame::Frame;
 use super::layout::{BoltRow, Bolts, Held};
 use super::scene::Scene;
 use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use crate::shop::{Bolt, Part};
 use crate::units::{Length, mm};
+
+/// What an end plate's bolts pass through besides it.
+#[derive(Clone, Copy)]
+pub(super) enum Behind {
+    /// A column's flange.
+    Column(usize),
+    /// Another end plate.
+    Plate(usize),
+}
 
 /// A bolt where its axis crosses the end plate.
 struct Placed {
@@ -22,19 +31,26 @@ struct Placed {
 ///
 /// # Errors
 /// One sentence on what is no regular pair of columns of bolts.
-pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) -> Result<Bolts, String> {
+pub(super) fn lay_out(
+    scene: &Scene,
+    draft: &mut Draft,
+    frame: &Frame,
+    plate: usize,
+    behind: Behind,
+) -> Result<Bolts, String> {
     let position = scene.tolerances().position.get();
-    let plate = &scene.steel.plates[case.plate];
+    let end_plate = plate;
+    let plate = &scene.steel.plates[end_plate];
     let mut placed = Vec::new();
     for bolt in &draft.joint.bolts {
         let body = &scene.steel.bolts[*bolt];
         let axis = (body.end - body.start).normalize_or_zero();
-        let lean = axis.dot(case.frame.out).abs().min(1.0).acos().to_degrees();
+        let lean = axis.dot(frame.out).abs().min(1.0).acos().to_degrees();
         if !(lean <= scene.tolerances().angle) {
             return Err(format!("a bolt leans {lean:.1}° from the end plate's normal: not assessed yet"));
         }
         let point = body.start + axis * (plate.centre - body.start).dot(plate.normal) / axis.dot(plate.normal);
-        placed.push(Placed { bolt: *bolt, point, across: case.frame.across(point), height: case.frame.height(point) });
+        placed.push(Placed { bolt: *bolt, point, across: frame.across(point), height: frame.height(point) });
     }
     placed.sort_by(|a, b| b.height.total_cmp(&a.height).then(a.across.total_cmp(&b.across)));
 
@@ -45,8 +61,11 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) -> Result<B
             _ => rows.push(vec![bolt]),
         }
     }
-    let column = &scene.steel.members[case.column];
-    let outline = case.frame.outline(plate);
+    let outline = frame.outline(plate);
+    let other = match behind {
+        Behind::Column(_) => Vec::new(),
+        Behind::Plate(other) => frame.outline(&scene.steel.plates[other]),
+    };
     let mut laid = Vec::new();
     for row in &rows {
         let height = row.iter().map(|bolt| bolt.height).sum::<f64>() / row.len() as f64;
@@ -64,9 +83,15 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) -> Result<B
         }
         let edge = |edges: Option<f64>| edges.filter(|e| *e > 0.0).map(mm);
         let to_plate = to_side(&outline, a).zip(to_side(&outline, b)).map(|(a, b)| a.min(b));
-        let to_flange =
-            [a, b].map(|bolt| column.extents.x / 2.0 - (bolt.point - column.start).dot(column.across).abs());
-        let (Some(edge_plate), Some(edge_column)) = (edge(to_plate), edge(Some(to_flange[0].min(to_flange[1])))) else {
+        let to_other = [a, b].map(|bolt| match behind {
+            Behind::Column(column) => {
+                let column = &scene.steel.members[column];
+                Some(column.extents.x / 2.0 - (bolt.point - column.start).dot(column.across).abs())
+            }
+            Behind::Plate(_) => to_side(&other, bolt),
+        });
+        let to_other = to_other[0].zip(to_other[1]).map(|(a, b)| a.min(b));
+        let (Some(edge_plate), Some(edge_column)) = (edge(to_plate), edge(to_other)) else {
             return Err(format!("a bolt in the row at {height:.0} mm lies on no side edge's inner side"));
         };
         laid.push(BoltRow { height: mm(height), gauge: mm((a.across - b.across).abs()), edge_plate, edge_column });
@@ -81,7 +106,11 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) -> Result<B
         |d| format!("{} mm", d.get()),
     );
     let class = all_alike("bolt class", bodies.iter().map(|bolt| &bolt.class), |a, b| a == b, Clone::clone);
-    let hole = hole(scene, draft, case, &placed, &diameter)?;
+    let plates = match behind {
+        Behind::Column(_) => vec![end_plate],
+        Behind::Plate(other) => vec![end_plate, other],
+    };
+    let hole = hole(scene, draft, &plates, &placed, &diameter)?;
     let shanks = bodies.iter().map(|bolt| Some(bolt.length.as_ref().ok()?.value - bolt.thread?));
     let shank = shanks.collect::<Option<Vec<Length>>>().and_then(|all| all.into_iter().reduce(Length::min));
     Ok(Bolts { diameter, class, hole, rows: laid, held: Held { shank, ..Held::default() } })
@@ -138,18 +167,18 @@ fn all_alike<'k, T: Clone + 'k>(
 fn hole(
     scene: &Scene,
     draft: &mut Draft,
-    case: &Case,
+    plates: &[usize],
     placed: &[Placed],
     diameter: &Known<Length>,
 ) -> Result<Known<Length>, String> {
     let size = scene.tolerances().size.get();
-    let plate = &scene.steel.plates[case.plate];
     let slot = placed.iter().find_map(|bolt| scene.steel.bolts[bolt.bolt].slot);
     if let Some(slot) = slot {
         return Err(format!("slotted holes (a property of the bolts says {slot}): not assessed yet"));
     }
     let mut modelled: Vec<Known<Length>> = Vec::new();
-    for bolt in placed {
+    for (plate, bolt) in plates.iter().flat_map(|plate| placed.iter().map(move |bolt| (plate, bolt))) {
+        let plate = &scene.steel.plates[*plate];
         let from = bolt.point - plate.centre;
         let at = DVec2::new(from.dot(plate.u), from.dot(plate.v));
         let near = plate.holes.iter().filter(|hole| hole.centre.distance(at) <= hole.length.max(hole.diameter) / 2.0);
@@ -166,13 +195,15 @@ fn hole(
         let by = "hole diameter, a property of the bolt".to_owned();
         Some(Ok(Datum::new(d_0, Origin::Modelled { by, at: Some(place(bolt.bolt)) })))
     });
+    let all = if modelled.is_empty() { placed.len() } else { placed.len() * plates.len() };
     let (holes, words): (Vec<Known<Length>>, _) =
         if modelled.is_empty() { (stated.collect(), "stated") } else { (modelled, "modelled") };
     if holes.is_empty() {
         return Ok(assumed(scene, diameter));
     }
-    if holes.len() < placed.len() {
-        draft.joint.disagreements.push(format!("holes are {words} for {} of {} bolts only", holes.len(), placed.len()));
+    if holes.len() < all {
+        let of = if all > placed.len() { "places" } else { "bolts" };
+        draft.joint.disagreements.push(format!("holes are {words} for {} of {all} {of} only", holes.len()));
     }
     let same = |a: &Length, b: &Length| (*a - *b).abs().get() <= size;
     let hole = all_alike("bolt hole", holes.iter(), same, |d_0| format!("{} mm", d_0.get()));

@@ -2,7 +2,7 @@
 
 use glam::DVec2;
 
-use super::bolts;
+use super::bolts::{self, Behind};
 use super::boxes::{Ply, Slab};
 use super::draft::{Draft, Seat};
 use super::frame::{Frame, Span, are_parallel, corners};
@@ -17,7 +17,7 @@ use crate::units::mm;
 const RUNS_ON: f64 = 10_000.0;
 
 /// Beam depths that are not within 60° of the vertical have no upper flange to speak of.
-const UPRIGHT: f64 = 0.5;
+pub(super) const UPRIGHT: f64 = 0.5;
 
 /// An end-plate joint before it is laid out.
 pub(super) struct Case<'a> {
@@ -50,6 +50,11 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
         draft.joint.plates.extend(plates.iter().map(|plate| (*plate, "stiffener")));
         draft.joint.welds.extend(welded.iter().map(|weld| (*weld, Role::Stiffener.word())));
     }
+    let strengthening = &on_column.strengthening;
+    draft.joint.plates.retain(|(plate, _)| !strengthening.plates.iter().any(|(other, _)| other == plate));
+    draft.joint.plates.extend(&strengthening.plates);
+    let welded = strengthening.welds.iter().filter(|weld| !case.welds.iter().any(|(other, _)| other == *weld));
+    draft.joint.welds.extend(welded.map(|weld| (*weld, Role::Stiffener.word())));
     let listed: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
     draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
     draft.joint.layout = assessable(scene, case, &outline, &bolted)
@@ -114,7 +119,7 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
     if !is_rectangular(outline, position) {
         return Err("the end plate is no upright rectangle: not assessed yet".into());
     }
-    beside_beam(scene, case, bolted)
+    beside_beam(scene, &case.frame, case.plate, case.end.member, bolted)
 }
 
 /// Bolted plates between the end plate and the column's flange, from the end plate on.
@@ -148,12 +153,18 @@ fn not_rigid(scene: &Scene, case: &Case, pack: usize, outline: &[DVec2]) -> Opti
 }
 
 /// Haunches and ribs made of plates.
-fn beside_beam(scene: &Scene, case: &Case, bolted: &[usize]) -> Result<(), String> {
+pub(super) fn beside_beam(
+    scene: &Scene,
+    frame: &Frame,
+    plate: usize,
+    beam: usize,
+    bolted: &[usize],
+) -> Result<(), String> {
     let touch = scene.tolerances().touch.get();
-    let beam = Slab::of_member(&scene.steel.members[case.end.member]);
-    for other in scene.touches.plates[case.plate].iter().filter(|other| !bolted.contains(other)) {
+    let beam = Slab::of_member(&scene.steel.members[beam]);
+    for other in scene.touches.plates[plate].iter().filter(|other| !bolted.contains(other)) {
         let plate = &scene.steel.plates[*other];
-        let outward = Span::of(corners(plate).map(|p| case.frame.outward(p)));
+        let outward = Span::of(corners(plate).map(|p| frame.outward(p)));
         let stands_out = outward.is_some_and(|span| span.lo >= -touch && span.hi > plate.thickness.get() + touch);
         let within = beam.zip(Slab::of_plate(plate)).is_some_and(|(beam, plate)| {
             let beam = Slab { half: beam.half + touch, ..beam };
@@ -181,7 +192,7 @@ fn every_bolt_passes_flange(scene: &Scene, draft: &Draft, case: &Case) -> Result
 }
 
 /// Whether each corner of the outline's extents is a corner of it, and every other corner lies on an edge.
-fn is_rectangular(outline: &[DVec2], within: f64) -> bool {
+pub(super) fn is_rectangular(outline: &[DVec2], within: f64) -> bool {
     let (Some(x), Some(y)) = (Span::of(outline.iter().map(|p| p.x)), Span::of(outline.iter().map(|p| p.y))) else {
         return false;
     };
@@ -199,10 +210,9 @@ fn laid_out(
     outline: &[DVec2],
     on_column: OnColumn,
 ) -> Result<EndPlateLayout, String> {
-    let (column, plate) = (&scene.steel.members[case.column], &scene.steel.plates[case.plate]);
-    let spans = Span::of(outline.iter().map(|p| p.x)).zip(Span::of(outline.iter().map(|p| p.y)));
-    let (wide, high) = spans.ok_or("the end plate has no outline")?;
-    let mut bolts = bolts::lay_out(scene, draft, case)?;
+    let column = &scene.steel.members[case.column];
+    let plate = plate_at(scene, case.plate, outline)?;
+    let mut bolts = bolts::lay_out(scene, draft, &case.frame, case.plate, Behind::Column(case.column))?;
     let bolted: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
     let packing = packing(scene, case, &bolted);
     for pack in &packing {
@@ -221,8 +231,6 @@ fn laid_out(
     let rows = Span::of(bolts.rows.iter().map(|row| row.height.get())).ok_or("the joint has no bolts")?;
     let ends = [column.start, column.end].map(|end| case.frame.height(end));
     let (above, below) = (ends[0].max(ends[1]) - rows.hi, rows.lo - ends[0].min(ends[1]));
-    let throat = |role, what| welds::throat(scene, &case.frame, case.end.member, &case.welds, role, what);
-    let full = |role| welds::full_butt(scene, &case.frame, case.end.member, &case.welds, role);
     let mut not_credited = on_column.not_credited;
     let backing = draft.joint.plates.iter().filter(|(other, role)| *other != case.plate && *role == "plate");
     let under = backing.filter(|(other, _)| !on_column.others.contains(other)).count();
@@ -231,38 +239,54 @@ fn laid_out(
     Ok(EndPlateLayout {
         column: member_at(scene, case.column),
         beam: member_at(scene, case.end.member),
-        plate: EndPlate {
-            guid: plate.identity.guid.clone(),
-            thickness: plate.thickness,
-            width: mm(wide.size()),
-            bottom: mm(high.lo),
-            top: mm(high.hi),
-            grade: plate.grade.clone(),
-        },
+        plate,
         bolts,
-        welds: Welds {
-            flange_top: throat(Role::FlangeTop, "weld at the top flange"),
-            flange_bottom: throat(Role::FlangeBottom, "weld at the bottom flange"),
-            web: throat(Role::Web, "weld at the web"),
-            full: FullButts {
-                flange_top: full(Role::FlangeTop),
-                flange_bottom: full(Role::FlangeBottom),
-                web: full(Role::Web),
-            },
-        },
+        welds: welds_at(scene, &case.frame, case.end.member, &case.welds),
         stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),
+        strengthening: on_column.strengthening.layout,
         column_above: (above <= RUNS_ON).then_some(mm(above)),
         column_below: (below <= RUNS_ON).then_some(mm(below)),
         not_credited,
     })
 }
 
-fn member_at(scene: &Scene, member: usize) -> MemberAt {
+pub(super) fn member_at(scene: &Scene, member: usize) -> MemberAt {
     let member = &scene.steel.members[member];
     MemberAt {
         guid: member.identity.guid.clone(),
         mark: member.identity.mark.clone(),
         section: member.section.clone(),
         grade: member.grade.clone(),
+    }
+}
+
+/// An end plate with its outline in the joint's frame.
+pub(super) fn plate_at(scene: &Scene, plate: usize, outline: &[DVec2]) -> Result<EndPlate, String> {
+    let plate = &scene.steel.plates[plate];
+    let spans = Span::of(outline.iter().map(|p| p.x)).zip(Span::of(outline.iter().map(|p| p.y)));
+    let (wide, high) = spans.ok_or("the end plate has no outline")?;
+    Ok(EndPlate {
+        guid: plate.identity.guid.clone(),
+        thickness: plate.thickness,
+        width: mm(wide.size()),
+        bottom: mm(high.lo),
+        top: mm(high.hi),
+        grade: plate.grade.clone(),
+    })
+}
+
+/// The throats of a member's welds to its end plate, `frame` being that member's own.
+pub(super) fn welds_at(scene: &Scene, frame: &Frame, member: usize, roles: &[(usize, Role)]) -> Welds {
+    let throat = |role, what| welds::throat(scene, frame, member, roles, role, what);
+    let full = |role| welds::full_butt(scene, frame, member, roles, role);
+    Welds {
+        flange_top: throat(Role::FlangeTop, "weld at the top flange"),
+        flange_bottom: throat(Role::FlangeBottom, "weld at the bottom flange"),
+        web: throat(Role::Web, "weld at the web"),
+        full: FullButts {
+            flange_top: full(Role::FlangeTop),
+            flange_bottom: full(Role::FlangeBottom),
+            web: full(Role::Web),
+        },
     }
 }

@@ -3,6 +3,10 @@
 //! Heights are measured up from the soffit of the supported member's lower flange, in the direction of the member's
 //! depth that points to the sky; sides are measured across, from the supported member's web.
 
+mod strengthening;
+
+pub use strengthening::{Backing, Diagonal, EdgeWeld, Strengthening, WebPlate};
+
 use crate::origin::{Datum, Known};
 use crate::rulebook::{Category, Grade, Section};
 use crate::units::Length;
@@ -141,11 +145,13 @@ pub struct EndPlateLayout {
     pub welds: Welds,
     /// The column's stiffeners near the joint, from the top down.
     pub stiffeners: Vec<Stiffener>,
+    /// What else strengthens the column.
+    pub strengthening: Strengthening,
     /// From the top row up to the column's upper end; `None` where the column runs on past 10 m.
     pub column_above: Option<Length>,
     /// From the lowest row down to the column's lower end.
     pub column_below: Option<Length>,
-    /// Parts welded to the column here that no check credits (web plates, diagonals, backing plates): one sentence each.
+    /// Parts at the column here that are none of these, so that no check can credit them: one sentence each.
     pub not_credited: Vec<String>,
 }
 
@@ -183,9 +189,54 @@ pub enum Layout {
     Splice(SpliceLayout),
 }
 
+/// Which side of a joint an end plate with its beam is.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Which {
+    /// The only one: the other side is a column.
+    Only,
+    /// The supported member's half of a splice.
+    Supported,
+    /// The other half of a splice.
+    Supporting,
+    /// Both halves, which are alike.
+    Both,
+}
+
+impl Which {
+    /// Before a part's name: "supported ".
+    pub fn owner(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => "supported ",
+            Self::Supporting => "supporting ",
+        }
+    }
+
+    /// After a plate's name: " of the supported beam".
+    pub fn of(self) -> &'static str {
+        match self {
+            Self::Only | Self::Both => "",
+            Self::Supported => " of the supported beam",
+            Self::Supporting => " of the supporting beam",
+        }
+    }
+
+    /// After a component's name: ", supported side".
+    pub fn suffix(self) -> &'static str {
+        match self {
+            Self::Only => "",
+            Self::Supported => ", supported side",
+            Self::Supporting => ", supporting side",
+            Self::Both => ", both sides",
+        }
+    }
+}
+
 /// A beam with its end plate, wherever the plate is bolted to.
 #[derive(Clone, Copy, Debug)]
 pub struct PlateSide<'a> {
+    /// Which side it is.
+    pub which: Which,
     /// The beam.
     pub beam: &'a MemberAt,
     /// Height of its lower flange's soffit.
@@ -228,16 +279,15 @@ impl BoltedPlate<'_> {
 }
 
 impl Half {
-    /// The half as one side of its joint.
-    pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
+    fn side(&self, which: Which) -> PlateSide<'_> {
+        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
     }
 }
 
 impl EndPlateLayout {
     /// The beam's side.
     pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
+        PlateSide { which: Which::Only, beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
     }
 }
 
@@ -246,7 +296,7 @@ impl Layout {
     pub fn side(&self) -> PlateSide<'_> {
         match self {
             Self::EndPlate(layout) => layout.side(),
-            Self::Splice(layout) => layout.supported.side(),
+            Self::Splice(layout) => layout.supported.side(Which::Supported),
         }
     }
 
@@ -254,7 +304,9 @@ impl Layout {
     pub fn sides(&self) -> Vec<PlateSide<'_>> {
         match self {
             Self::EndPlate(layout) => vec![layout.side()],
-            Self::Splice(layout) => vec![layout.supported.side(), layout.supporting.side()],
+            Self::Splice(layout) => {
+                vec![layout.supported.side(Which::Supported), layout.supporting.side(Which::Supporting)]
+            }
         }
     }
 
@@ -301,8 +353,8 @@ impl<'a> From<&'a EndPlateLayout> for BoltedPlate<'a> {
 
 impl<'a> From<&'a SpliceLayout> for BoltedPlate<'a> {
     fn from(layout: &'a SpliceLayout) -> Self {
-        let support = Support::Plate(layout.supporting.side());
-        Self { side: layout.supported.side(), support, bolts: &layout.bolts }
+        let support = Support::Plate(layout.supporting.side(Which::Supporting));
+        Self { side: layout.supported.side(Which::Supported), support, bolts: &layout.bolts }
     }
 }
 

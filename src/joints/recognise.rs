@@ -2,6 +2,8 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
+use rayon::prelude::*;
+
 use super::Kind;
 use super::boxes::{Ply, Slab, thicknesses};
 use super::cut::{self, Cluster};
@@ -10,6 +12,7 @@ use super::end_plate::{self, Case};
 use super::frame::{Frame, Span, are_parallel, are_square};
 use super::rank::{are_in_line, of_equal_rank, ranked};
 use super::scene::Scene;
+use super::splice;
 use super::touch::EndOn;
 use super::welds::{self, Role};
 use crate::shop::{Member, Part, Shape};
@@ -19,16 +22,12 @@ const STANDS: f64 = 0.5;
 
 /// All clusters as joints, without marks.
 pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
-    let mut drafts = Vec::new();
-    for cluster in clusters {
-        match cluster {
-            Cluster::EndPlates { plates, bolts } if plates.len() > 1 => drafts.push(splice(scene, &plates, bolts)),
-            Cluster::EndPlates { plates, bolts } => {
-                drafts.extend(plates.first().and_then(|plate| end_plate(scene, *plate, bolts)));
-            }
-            Cluster::Other { bolts } => drafts.push(other(scene, bolts)),
-        }
-    }
+    let draft = |cluster| match cluster {
+        Cluster::EndPlates { plates, bolts } if plates.len() > 1 => Some(splice(scene, &plates, bolts)),
+        Cluster::EndPlates { plates, bolts } => end_plate(scene, *plates.first()?, bolts),
+        Cluster::Other { bolts } => Some(other(scene, bolts)),
+    };
+    let mut drafts: Vec<Draft> = clusters.into_par_iter().filter_map(draft).collect();
     drafts.extend((0..scene.steel.plates.len()).filter_map(|plate| base_without_bolts(scene, plate)));
     drafts.iter_mut().for_each(|draft| say_what_is_not_assessed(scene, draft));
     drafts
@@ -91,6 +90,7 @@ fn splice(scene: &Scene, plates: &[usize], bolts: Vec<usize>) -> Draft {
     draft.joint.welds = others_at(scene, plates.iter().copied());
     let (first, second) = of_equal_rank(scene, &draft.members);
     draft.support(scene, first, second);
+    splice::lay_out(scene, &mut draft, plates);
     draft
 }
 
@@ -163,7 +163,7 @@ fn only(plies: &BTreeSet<Ply>) -> Option<Ply> {
 }
 
 /// Whether the plate reaches at least to the middle of both flanges.
-fn covers_both_flanges(scene: &Scene, frame: &Frame, end: &EndOn, plate: usize) -> bool {
+pub(super) fn covers_both_flanges(scene: &Scene, frame: &Frame, end: &EndOn, plate: usize) -> bool {
     let beam = &scene.steel.members[end.member];
     let (t_f, _) = thicknesses(beam);
     let heights = Span::of(frame.outline(&scene.steel.plates[plate]).iter().map(|p| p.y));
@@ -171,12 +171,18 @@ fn covers_both_flanges(scene: &Scene, frame: &Frame, end: &EndOn, plate: usize) 
 }
 
 /// Whether a weld lies at a flange, or nothing is known of the welds' places.
-fn reaches_a_flange(welds: &[(usize, Role)]) -> bool {
+pub(super) fn reaches_a_flange(welds: &[(usize, Role)]) -> bool {
     let at_flange = |role: Role| matches!(role, Role::FlangeTop | Role::FlangeBottom);
     welds.iter().any(|(_, role)| at_flange(*role)) || !welds.iter().any(|(_, role)| *role == Role::Web)
 }
 
-fn say_how_joined(scene: &Scene, plate: usize, end: &EndOn, welds: &[(usize, Role)], sentences: &mut Vec<String>) {
+pub(super) fn say_how_joined(
+    scene: &Scene,
+    plate: usize,
+    end: &EndOn,
+    welds: &[(usize, Role)],
+    sentences: &mut Vec<String>,
+) {
     let (p, m) = (Part::Plate(plate), Part::Member(end.member));
     if welds.is_empty() && !scene.are_one_piece(p, m) && !scene.are_told(p, m) {
         let why = "the end plate bears on the member's end, but no weld, piece or relation holds them together";

@@ -3,11 +3,13 @@
 //! Every report is drawn from the same [`Review`](crate::review::Review) and is the same for the same review: no clock,
 //! no terminal and no environment is looked at here; the caller says how wide and whether in colour.
 
+pub mod drawing;
 mod group;
 mod hold;
 pub mod json;
 mod number;
 mod page;
+pub mod sheet;
 mod standing;
 pub mod survey;
 mod table;

@@ -65,6 +65,11 @@ impl Page {
         self.out
     }
 
+    /// Ends a page that says its cautions itself and is not cut short.
+    pub(super) fn end(self) -> String {
+        self.out
+    }
+
     pub(super) fn options(&self) -> &Options {
         &self.options
     }
@@ -88,16 +93,26 @@ impl Page {
 
     /// A paragraph in a tone.
     pub(super) fn toned(&mut self, indent: usize, tone: Tone, text: &str) {
-        let (first, next) = (" ".repeat(indent), " ".repeat(indent + 2));
+        self.wrapped(tone, &" ".repeat(indent), &" ".repeat(indent + 2), text);
+    }
+
+    fn wrapped(&mut self, tone: Tone, first: &str, next: &str, text: &str) {
         let options = textwrap::Options::new(self.options.width)
-            .initial_indent(&first)
-            .subsequent_indent(&next)
+            .initial_indent(first)
+            .subsequent_indent(next)
             .word_separator(WordSeparator::AsciiSpace)
             .word_splitter(WordSplitter::NoHyphenation)
             .break_words(false);
         for line in textwrap::wrap(&clean(text), options) {
             self.push(tone, &line);
         }
+    }
+
+    /// A paragraph behind a lead, wrapped; what runs on stands under the paragraph's beginning.
+    pub(super) fn hanging(&mut self, indent: usize, lead: &str, text: &str) {
+        let first = format!("{}{}", " ".repeat(indent), clean(lead));
+        let next = " ".repeat(first.chars().count());
+        self.wrapped(Tone::Plain, &first, &next, text);
     }
 
     /// A line as it is, not wrapped.

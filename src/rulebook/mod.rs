@@ -16,7 +16,7 @@ use std::sync::OnceLock;
 
 pub use error::RuleError;
 pub use tables::{
-    Annex, BoltClass, BoltSize, Category, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings,
+    Alpha, Annex, BoltClass, BoltSize, Category, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings,
     SlipRules, Strength, Tolerances, WeldRules,
 };
 
@@ -121,6 +121,7 @@ impl Rulebook {
             EMBEDDED.iter().find(|(name, _)| *name == "vocabulary.toml").map(|(_, text)| *text).unwrap_or_default();
         let mut vocabulary = Vocabulary::load(RuleFile { name: "vocabulary.toml", text: own })?;
         vocabulary.add(file("vocabulary.toml"))?;
+        let settings = by_annex(settings, annex);
         Ok(Self {
             annex: annex.clone(),
             settings,
@@ -144,7 +145,7 @@ impl Rulebook {
         self.annexes.iter().map(|(id, _)| id.as_str())
     }
 
-    /// Takes the partial factors of another annex.
+    /// Takes the partial factors of another annex, and what it chooses where the settings leave that to the annex.
     ///
     /// # Errors
     /// A sentence with the annexes there are.
@@ -154,6 +155,7 @@ impl Rulebook {
             return Err(format!("annex \"{id}\"; allowed is {}", known.join(", ")));
         };
         self.annex = annex.clone();
+        self.settings = by_annex(self.settings.clone(), &self.annex);
         Ok(())
     }
 
@@ -252,4 +254,13 @@ impl Rulebook {
     pub fn vocabulary(&self, concept: &str) -> impl Iterator<Item = &str> {
         self.vocabulary.words(concept)
     }
+}
+
+/// The settings with what the annex chooses.
+fn by_annex(settings: Settings, annex: &Annex) -> Settings {
+    let row_forces = match settings.row_forces_by_annex {
+        true => annex.row_forces.unwrap_or(RowForces::LinearBeyond19),
+        false => settings.row_forces,
+    };
+    Settings { row_forces, ..settings }
 }

@@ -204,6 +204,10 @@ pub struct Annex {
     pub gamma_m1: f64,
     /// γ_M2.
     pub gamma_m2: f64,
+    /// γ_Mu, for the resistance to tying; `None` where the annex states none.
+    pub gamma_mu: Option<f64>,
+    /// What "by-annex" means for [`Settings::row_forces`].
+    pub row_forces: Option<RowForces>,
     /// γ_M3 and γ_M3,ser, for slip; `None` where the annex does not state both.
     pub gamma_m3: Option<(f64, f64)>,
     /// Where the values come from.
@@ -217,6 +221,15 @@ pub enum RowForces {
     LinearBeyond19,
     /// UK practice: plastic if the plate or the flange is thin enough, else linear.
     ThinPlateOrLinear,
+}
+
+/// Where α comes from.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Alpha {
+    /// EN 1993-1-8:2005 Figure 6.11.
+    Chart,
+    /// The formula of a draft of EN 1993-1-8:2024.
+    Draft2024,
 }
 
 /// Which formula of Table 6.2 is used for mode 1.
@@ -233,6 +246,10 @@ pub enum ModeOne {
 pub struct Settings {
     /// See [`RowForces`].
     pub row_forces: RowForces,
+    /// Whether the annex in use chooses it.
+    pub row_forces_by_annex: bool,
+    /// See [`Alpha`].
+    pub alpha: Alpha,
     /// See [`ModeOne`].
     pub mode_one: ModeOne,
     /// A rolled section's strength by its flange thickness (true) or each element by its own (false).

@@ -96,7 +96,7 @@ fn the_tension_of_a_moment_may_be_taken_as_counterbalanced() {
     let group = |m: f64, rules| {
         let assessment = asked(&layout, &case(Some(m), Some(1.0), Some(0.0)), Opposite::None, rules);
         let shear = assessment.cases[0].shear.clone().unwrap();
-        shear.components.into_iter().find(|c| c.id == "bolts-in-slip").unwrap().resistance
+        shear.components.iter().find(|c| c.id == "bolts-in-slip").unwrap().resistance
     };
     assert!(group(80.0, &RULES) < group(0.0, &RULES));
     assert_eq!(group(80.0, &rules), group(0.0, &rules));
@@ -111,7 +111,7 @@ fn packing_reduces_the_bolts_shear_and_is_said() {
         let assessment = asked(&layout, &case(Some(0.0), Some(1.0), Some(0.0)), Opposite::None, &RULES);
         assert_eq!(said(&assessment, "3.6.1(12)"), !packing.is_empty());
         let shear = assessment.cases[0].shear.clone().unwrap();
-        shear.components.into_iter().find(|c| c.id == "bolts-in-shear").unwrap().resistance
+        shear.components.iter().find(|c| c.id == "bolts-in-shear").unwrap().resistance
     };
     let d = PLAIN.d;
     assert_eq!(shear(&[d / 4.0]), shear(&[]));

@@ -4,9 +4,10 @@ use std::sync::Arc;
 
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
-use faying::intent::{IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
+use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
 use faying::joints::{
-    BoltRow, Bolts, EndPlate, EndPlateLayout, FullButts, Held, Joint, Kind, Layout, MemberAt, Stiffener, Welds,
+    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Held, Joint, Kind, Layout,
+    MemberAt, Stiffener, WebPlate, Welds,
 };
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
@@ -166,13 +167,14 @@ pub fn moment(sense: Sense, resistance: f64) -> Arc<MomentResistance> {
         governed_by: "column web in compression".into(),
         rows: Vec::new(),
         components: Vec::new(),
+        stiffness: None,
         notes: Vec::new(),
     })
 }
 
 pub fn load_case(name: &str, moment: Option<f64>, shear: Option<f64>, axial: Option<f64>, line: u32) -> LoadCase {
     let at = Place { file: "schedule.csv".into(), line, column: 1 };
-    LoadCase { name: name.into(), moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), at }
+    LoadCase { moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), ..LoadCase::blank(name, at) }
 }
 
 pub fn place(line: u32) -> Place {
@@ -255,6 +257,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
             full: FullButts::default(),
         },
         stiffeners: vec![stiffener(8.0)],
+        strengthening: Default::default(),
         column_above: Some(mm(500.0)),
         column_below: None,
         not_credited: Vec::new(),
@@ -346,6 +349,7 @@ fn scheduled() -> ScheduledJoint {
         end: Some("start".into()),
         cases: vec![load_case("W1", Some(300.0), Some(100.0), Some(0.0), 2)],
         detail: Some("E1".into()),
+        frame: InFrame::default(),
         at: Place { file: "schedule.csv".into(), line: 2, column: 1 },
     }
 }
@@ -369,10 +373,69 @@ fn intended() -> IntendedDetail {
         flange_weld: Some(mm(8.5)),
         web_weld: Some(mm(5.0)),
         stiffener_top: Some(None),
-        stiffener_bottom: Some(Some(IntendedStiffener { thickness: Some(mm(12.0)), grade: Some("S355".into()) })),
+        stiffener_bottom: Some(Some(IntendedStiffener {
+            thickness: Some(mm(12.0)),
+            grade: Some("S355".into()),
+            ..IntendedStiffener::default()
+        })),
         exposed: None,
         bolt_category: None,
         friction: None,
+        web_plates: None,
+        web_plate_sides: None,
+        diagonals: None,
+        diagonal_form: None,
+        backing_plates: None,
         at: Some(Place { file: "details.toml".into(), line: 1, column: 1 }),
     }
+}
+
+/// A 12 mm plate of S355 on one side of the web, its fillets 7 mm.
+pub fn web_plate(positive: bool) -> WebPlate {
+    WebPlate {
+        guid: if positive { "0guidS1" } else { "0guidS2" }.into(),
+        positive,
+        thickness: mm(12.0),
+        width: mm(240.0),
+        half_width: mm(120.0),
+        bottom: mm(-300.0),
+        top: mm(800.0),
+        grade: grade("S355"),
+        weld: known(EdgeWeld::Fillet(mm(7.0))),
+    }
+}
+
+/// A pair of 12 mm diagonals of S355, its fillets 6 mm.
+pub fn diagonal(near: f64, far: f64) -> Diagonal {
+    Diagonal {
+        guids: vec!["0guidS1".into(), "0guidS2".into()],
+        near: mm(near),
+        far: mm(far),
+        thickness: mm(12.0),
+        outstand: mm(120.0),
+        both_sides: true,
+        full_depth: true,
+        grade: grade("S355"),
+        weld: known(mm(6.0)),
+    }
+}
+
+/// A pair of 10 mm backing plates of S355.
+pub fn backing() -> Backing {
+    Backing {
+        guids: vec!["0guidS1".into(), "0guidS2".into()],
+        thickness: mm(10.0),
+        bottom: mm(0.0),
+        top: mm(600.0),
+        from_web: mm(20.0),
+        short_of_edge: mm(0.0),
+        both_sides: true,
+        grade: grade("S355"),
+    }
+}
+
+/// Intended plates of S355.
+pub fn plates(thickness: f64, throat: Option<f64>) -> Option<Option<IntendedStiffener>> {
+    let (thickness, throat) = (Some(mm(thickness)), throat.map(mm));
+    Some(Some(IntendedStiffener { thickness, throat, grade: Some("S355".into()), length: None }))
 }

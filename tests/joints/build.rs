@@ -251,6 +251,30 @@ pub fn add(steel: &mut Steelwork, column: usize, detail: &Detail) {
     }
 }
 
+/// Two beams whose end plates are bolted to each other at the origin: `one` runs towards +x, `two` towards -x. The rows
+/// are those of `one`.
+pub fn spliced(one: &Detail, two: &Detail) -> Steelwork {
+    let mut steel = Steelwork::default();
+    for (detail, turned) in [(one, false), (two, true)] {
+        let mut own = frame(&[Detail { turned, rows: one.rows.clone(), ..detail.clone() }]);
+        let by = DVec3::X * COLUMN.1 / 2.0 * if turned { 1.0 } else { -1.0 };
+        move_all(&mut own, |p| p + by, |d| d);
+        let (m, p) = (steel.members.len(), steel.plates.len());
+        steel.members.extend(own.members.drain(1..));
+        steel.plates.append(&mut own.plates);
+        steel.welds.append(&mut own.welds);
+        if !turned {
+            own.bolts.iter_mut().for_each(|b| b.start.x = -two.thickness);
+            steel.bolts.append(&mut own.bolts);
+        }
+        if detail.piece {
+            let parts = vec![Part::Member(m), Part::Plate(p)];
+            steel.pieces.push(Piece { identity: identity(&format!("A-{}", detail.beam_mark)), parts });
+        }
+    }
+    steel
+}
+
 pub fn hole(x: f64, y: f64, diameter: f64, length: f64) -> Hole {
     Hole { centre: DVec2::new(x, y), diameter, length }
 }

@@ -1,6 +1,6 @@
 //! The other kinds: listed with their parts, not laid out.
 
-use faying::joints::{Joint, Kind, Meets};
+use faying::joints::{self, Joint, Kind, Meets};
 use faying::shop::{Part, Shape, Steelwork};
 use glam::DVec3;
 
@@ -109,19 +109,10 @@ fn a_beam_on_its_side_is_no_moment_joint() {
 #[test]
 fn two_end_plates_bolted_to_each_other() {
     let half = Detail { rows: vec![329.0, 71.0], bottom: -15.0, top: 430.0, ..Detail::default() };
-    let mut steel = Steelwork::default();
-    for (mark, turned) in [("B1", false), ("B2", true)] {
-        let mut own = frame(&[Detail { beam_mark: mark, turned, ..half.clone() }]);
-        let by = DVec3::X * COLUMN.1 / 2.0 * if turned { 1.0 } else { -1.0 };
-        move_all(&mut own, |p| p + by, |d| d);
-        steel.members.extend(own.members.drain(1..));
-        steel.plates.append(&mut own.plates);
-        if !turned {
-            own.bolts.iter_mut().for_each(|b| b.start.x = -15.0);
-            steel.bolts.append(&mut own.bolts);
-        }
-    }
-    let joint = is(&steel, Kind::EndPlateSplice, 4, Some(0), Some(1));
+    let other = Detail { beam_mark: "B2", ..half.clone() };
+    let joint = only(&spliced(&half, &other));
+    assert_eq!((joint.kind, joint.bolts.len()), (Kind::EndPlateSplice, 4));
+    assert_eq!((joint.supporting, joint.supported), (Some(0), Some(1)));
     assert_eq!(joint.plates, [(0, "end-plate"), (1, "end-plate")]);
     assert_eq!(joint.mark, "B2 / B1");
 }
@@ -289,7 +280,7 @@ fn the_graph_keeps_the_strongest_witness() {
     let mut steel = frame(&[Detail::default()]);
     let (column, beam, end_plate) = (Part::Member(0), Part::Member(1), Part::Plate(0));
     steel.told.push(told("T1", &[column, beam], &[end_plate, Part::Bolt(0)]));
-    let graph = find(&steel).graph;
+    let graph = joints::graph(&steel, &rulebook());
     let meets = |a, b| graph.edge_weight(a, b).copied();
     assert_eq!(meets(end_plate, beam), Some(Meets::BearsOn));
     assert_eq!(meets(end_plate, column), Some(Meets::BearsOn));

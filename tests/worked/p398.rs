@@ -56,6 +56,7 @@ pub fn example(rulebook: &Rulebook) -> EndPlateLayout {
             full: FullButts::default(),
         },
         stiffeners: Vec::new(),
+        strengthening: Default::default(),
         column_above: None,
         column_below: None,
         not_credited: Vec::new(),
@@ -72,11 +73,10 @@ fn hogging(both_sides: bool) -> std::sync::Arc<MomentResistance> {
 
 fn assessed(both_sides: bool, rulebook: &Rulebook) -> Assessment {
     let case = LoadCase {
-        name: "ULS".into(),
         moment: Some(knm(400.0)),
         shear: Some(kn(300.0)),
         axial: Some(kn(0.0)),
-        at: Place { file: "".into(), line: 0, column: 0 },
+        ..LoadCase::blank("ULS", Place { file: "".into(), line: 0, column: 0 })
     };
     let opposite = if both_sides { Opposite::Moment(knm(400.0)) } else { Opposite::None };
     let demands = [Demand { case: &case, opposite }];

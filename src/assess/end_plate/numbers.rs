@@ -9,12 +9,13 @@ use std::sync::Arc;
 pub use column_side::{ColumnSide, StiffenerPair};
 pub use noted::Noted;
 use noted::print_length;
-pub use plate_side::{PlateSide, Which};
+use plate_side::NOISE;
+pub use plate_side::PlateSide;
 
 use super::sound;
 use crate::assess::Input;
 use crate::eurocode::bolts;
-use crate::joints::{self, BoltedPlate, Held};
+use crate::joints::{self, BoltedPlate, Held, Which};
 use crate::origin::Ask;
 use crate::rulebook::{Category, Rulebook};
 use crate::units::{Area, Force, Length, Stress};
@@ -80,6 +81,9 @@ pub struct BoltNumbers {
     /// Whether the thread lies in the shear plane; `None` where the model does not show it.
     pub thread_in_plane: Option<bool>,
     pub washer: Length,
+    pub washer_thickness: Length,
+    pub head: Length,
+    pub nut: Length,
     /// Total thickness of the packing between the plies.
     pub packing: Length,
     /// Slip at the ultimate limit state, where the bolts are of category C and everything for it is known.
@@ -94,6 +98,8 @@ pub struct BoltNumbers {
 pub enum Support {
     Column(ColumnSide),
     Plate(PlateSide),
+    /// Another end plate and beam just like this one.
+    Twin,
 }
 
 /// Everything the formulas need, for tension at the top; [`Numbers::upside_down`] gives the other sense.
@@ -119,16 +125,16 @@ impl Numbers {
     /// Gathers the numbers; `None` if something is missing without which no resistance can be computed (the gaps in
     /// `noted` say what).
     pub fn gather(joint: BoltedPlate<'_>, rulebook: &Rulebook, noted: &mut Noted) -> Option<Self> {
-        let (which, ends, behind) = match joint.support {
+        let (ends, behind) = match joint.support {
             joints::Support::Column(layout) => {
                 let column = column_side::Member::gather(layout, rulebook, noted);
-                let ends = plate_side::Ends::gather(Which::Only, joint.side, rulebook, noted);
-                (Which::Only, ends, column.map(Behind::Column))
+                let ends = plate_side::Ends::gather(joint.side, rulebook, noted);
+                (ends, column.map(Behind::Column))
             }
             joints::Support::Plate(other) => {
-                let ends = plate_side::Ends::gather(Which::Supported, joint.side, rulebook, noted);
-                let other = plate_side::Ends::gather(Which::Supporting, other, rulebook, noted);
-                (Which::Supported, ends, other.map(Behind::Plate))
+                let ends = plate_side::Ends::gather(joint.side, rulebook, noted);
+                let other = plate_side::Ends::gather(other, rulebook, noted);
+                (ends, other.map(Behind::Plate))
             }
         };
         let bolts = BoltNumbers::gather(joint.bolts, joint.plies(), rulebook, noted);
@@ -143,17 +149,24 @@ impl Numbers {
             return None;
         }
         let mut w = Working::default();
-        let side = ends.with(which, joint.side, &bolts, rulebook, noted, &mut w);
+        let side = ends.with(joint.side, &bolts, rulebook, noted, &mut w);
         let support = match (behind, joint.support) {
             (Behind::Column(column), joints::Support::Column(layout)) => {
                 Some(Support::Column(column.with(layout, &bolts, rulebook, &mut w)))
             }
             (Behind::Plate(other), joints::Support::Plate(laid)) => {
-                other.with(Which::Supporting, laid, &bolts, rulebook, noted, &mut w).map(Support::Plate)
+                other.with(laid, &bolts, rulebook, noted, &mut w).map(Support::Plate)
             }
             _ => None,
         };
-        let (side, support) = (side?, support?);
+        let (mut side, mut support) = (side?, support?);
+        let same_edges = |row: &joints::BoltRow| (row.edge_plate - row.edge_column).abs() <= NOISE;
+        if let Support::Plate(other) = &support
+            && side.is_like(other)
+            && joint.bolts.rows.iter().all(same_edges)
+        {
+            (side.which, support) = (Which::Both, Support::Twin);
+        }
         Some(Self {
             side,
             support,
@@ -171,7 +184,7 @@ impl Numbers {
         })
     }
 
-    /// Every end plate with its beam.
+    /// Every end plate with its beam that is unlike the others.
     pub fn sides(&self) -> impl Iterator<Item = &PlateSide> + Clone {
         let other = if let Support::Plate(other) = &self.support { Some(other) } else { None };
         [Some(&self.side), other].into_iter().flatten()
@@ -187,6 +200,7 @@ impl Numbers {
         let behind = match &self.support {
             Support::Column(column) => column.B_p_Rd,
             Support::Plate(other) => other.B_p_Rd,
+            Support::Twin => self.side.B_p_Rd,
         };
         self.side.B_p_Rd.min(behind)
     }
@@ -209,6 +223,7 @@ impl Numbers {
             support: match &self.support {
                 Support::Column(column) => Support::Column(column.upside_down(h)),
                 Support::Plate(other) => Support::Plate(other.upside_down(h)),
+                Support::Twin => Support::Twin,
             },
             rows: self.rows.iter().rev().map(|row| Row { height: h - row.height, ..*row }).collect(),
             ..self.clone()
@@ -296,6 +311,9 @@ impl BoltNumbers {
             alpha_v: class.alpha_v,
             thread_in_plane,
             washer: size.washer,
+            washer_thickness: size.washer_thickness,
+            head: size.head,
+            nut: size.nut,
             packing,
             slip,
             F_t_Rd: tension.value,

@@ -23,6 +23,7 @@ fn thin_enough(n: &Numbers) -> bool {
     let behind = match &n.support {
         Support::Column(column) => column.section.t_f <= limit(column.strength.f_y_flange),
         Support::Plate(other) => other.t_p <= limit(other.strength.f_y),
+        Support::Twin => false,
     };
     n.side.t_p <= limit(n.side.strength.f_y) || behind
 }

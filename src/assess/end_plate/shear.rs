@@ -166,8 +166,9 @@ impl<'a> Ply<'a> {
             f_u: side.strength.f_u,
         };
         let behind = match &n.support {
-            Support::Plate(other) => plate(other),
-            Support::Column(column) => Self {
+            Support::Twin => None,
+            Support::Plate(other) => Some(plate(other)),
+            Support::Column(column) => Some(Self {
                 plate: None,
                 ends: [
                     n.rows.first().zip(column.above).map(|(row, above)| row.height + above),
@@ -175,9 +176,9 @@ impl<'a> Ply<'a> {
                 ],
                 t: column.section.t_f,
                 f_u: column.strength.f_u,
-            },
+            }),
         };
-        vec![plate(&n.side), behind]
+        [plate(&n.side)].into_iter().chain(behind).collect()
     }
 
     fn named(self) -> (&'static str, String) {
@@ -216,7 +217,7 @@ fn bearing(n: &Numbers, ply: Ply<'_>, up: bool, shear_left: &[Force], gamma_M2: 
         all += 2.0 * bearing.value;
         with_shear += 2.0 * bearing.value.min(shear_left[i]);
     }
-    let V_bearing = all;
-    step!(w, "sum over the rows", V_b_Rd = V_bearing);
+    let V_b_Rd = all;
+    given!(w, "two bolts a row, summed over the rows"; V_b_Rd);
     (V_b_Rd, with_shear, w)
 }

@@ -2,9 +2,10 @@
 #![allow(non_snake_case)]
 
 use super::limits::Limit;
-use super::numbers::{PlateSide, Which};
+use super::numbers::PlateSide;
 use crate::assess::{Component, RowForce};
 use crate::eurocode::welds;
+use crate::joints::Which;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length};
 use crate::{given, step};
@@ -44,9 +45,10 @@ pub fn at_flange_and_web(
         given!(w, "where the plate has room for it"; b_outer);
         step!(w, "faces of the flange, 4.5.1", l_w = b_outer + (b_fb.min(b_p) - t_wb - 2.0 * r));
         step!(w, "4.5.3.2", F_flange_w_Rd = F_w_Rd * l_w);
-        step!(w, "the most that the flange can bring", F_flange_most = F_flange);
+        step!(w, "the most that the flange can bring", F_flange_most = b_fb * t_fb * f_y);
         // A weaker weld than the flange gives way as the rows' force reaches it, whatever the flange could bring.
         let F_most = if F_flange_w_Rd >= F_flange_most { F_flange_most } else { F_rows };
+        given!(w, "the flange, or the rows where the weld is weaker than the flange"; F_most);
         step!(w, "6.2.3(4)", F_flange_Ed = F_rows.min(F_most));
         let a_min = rulebook.welds.min_throat;
         step!(w, "the throat that this needs, 4.5.2(2)", a_needed = (a * (F_flange_Ed / F_flange_w_Rd)).max(a_min));

@@ -3,42 +3,14 @@
 use super::noted::{Noted, R_MOST};
 use super::{BoltNumbers, MemberStrength};
 use crate::eurocode::{beam, bolts};
-use crate::joints::{FullButts, PlateSide as Laid};
+use crate::joints::{FullButts, PlateSide as Laid, Which};
 use crate::origin::{Ask, Known};
 use crate::rulebook::{Grade, Rulebook, Section, Strength};
-use crate::units::{Force, Length, Modulus};
+use crate::units::{Force, Length, Modulus, mm};
 use crate::working::Working;
 
-/// Which side of a joint an end plate with its beam is.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Which {
-    /// The only one: the other side is a column.
-    Only,
-    /// The supported member's half of a splice.
-    Supported,
-    /// The other half.
-    Supporting,
-}
-
-impl Which {
-    /// Before a part's name: "supported beam's ".
-    pub fn owner(self) -> &'static str {
-        match self {
-            Self::Only => "",
-            Self::Supported => "supported ",
-            Self::Supporting => "supporting ",
-        }
-    }
-
-    /// After a component's name: ", supported side".
-    pub fn suffix(self) -> &'static str {
-        match self {
-            Self::Only => "",
-            Self::Supported => ", supported side",
-            Self::Supporting => ", supporting side",
-        }
-    }
-}
+/// Lengths that differ by less, mm, differ by the noise of coordinates.
+pub(super) const NOISE: Length = mm(1e-6);
 
 /// A beam with its end plate and welds, for tension at the top.
 #[derive(Clone, Debug, PartialEq)]
@@ -85,7 +57,8 @@ pub(super) struct Ends {
 
 impl Ends {
     /// `None` if something is missing without which no resistance can be computed.
-    pub(super) fn gather(which: Which, laid: Laid<'_>, rulebook: &Rulebook, noted: &mut Noted) -> Option<Self> {
+    pub(super) fn gather(laid: Laid<'_>, rulebook: &Rulebook, noted: &mut Noted) -> Option<Self> {
+        let which = laid.which;
         let of = which.owner();
         let beam = noted.member(&format!("{of}beam"), laid.beam, rulebook);
         let plate = laid.plate;
@@ -135,7 +108,6 @@ impl Ends {
     /// With the bolts; punching is worked out in `w`. `None` for a beam of class 4.
     pub(super) fn with(
         self,
-        which: Which,
         laid: Laid<'_>,
         bolts: &BoltNumbers,
         rulebook: &Rulebook,
@@ -156,7 +128,7 @@ impl Ends {
         let punching = bolts::punching(bolts.d_m, laid.plate.thickness, strength.f_u, rulebook.annex.gamma_m2);
         w.absorb(punching.working);
         Some(PlateSide {
-            which,
+            which: laid.which,
             beam_strength,
             r_b,
             r_b_most: beam.r.unwrap_or(R_MOST),
@@ -206,6 +178,34 @@ impl PlateSide {
     /// V_pl,Rd of the beam, EN 1993-1-1 6.2.6 (6.18).
     pub fn shear_resistance(&self, gamma_m0: f64) -> Force {
         beam::shear_resistance(self.beam.a_v_z, self.beam_strength.f_y_flange, gamma_m0)
+    }
+
+    /// Whether two halves of a splice are the same but for the noise of their coordinates.
+    pub(super) fn is_like(&self, other: &Self) -> bool {
+        let lengths = |side: &Self| {
+            let throats = [side.a_tension, side.a_compression, side.a_web];
+            let sizes = [side.soffit, side.t_p, side.b_p, side.top, side.bottom, side.r_b, side.r_b_most];
+            sizes.into_iter().map(Some).chain(throats)
+        };
+        let rest = |side: &Self| Self {
+            which: Which::Both,
+            soffit: Length::ZERO,
+            t_p: Length::ZERO,
+            b_p: Length::ZERO,
+            top: Length::ZERO,
+            bottom: Length::ZERO,
+            // Follows from t_p.
+            B_p_Rd: Force::ZERO,
+            a_tension: None,
+            a_compression: None,
+            a_web: None,
+            ..side.clone()
+        };
+        let same = |(a, b): (Option<Length>, Option<Length>)| match (a, b) {
+            (Some(a), Some(b)) => (a - b).abs() <= NOISE,
+            (a, b) => a.is_none() && b.is_none(),
+        };
+        rest(self) == rest(other) && lengths(self).zip(lengths(other)).all(same)
     }
 
     /// The same upside down; `h` is the height that 0 is turned to.
