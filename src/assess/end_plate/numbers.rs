@@ -275,11 +275,14 @@ impl BoltNumbers {
             size.across_flats
         ));
         let thread_in_plane = laid.held.shank.zip(plies).map(|(shank, [a, b])| {
-            noted.given("shank without thread", shank, "the bolts' stated length less their thread's");
             // From under the head, which may be on either side, through a washer to the furthest shear plane.
             let packing: Length = laid.held.packing.iter().copied().sum();
             let plane = a.max(b) + packing + rulebook.distances.washers * size.washer_thickness;
-            !(shank >= plane)
+            let in_plane = !(shank >= plane);
+            if !in_plane {
+                noted.given("shank without thread", shank, "the bolts' stated length less their thread's");
+            }
+            in_plane
         });
         noted.assumptions.push(match thread_in_plane {
             Some(true) => "thread in the shear plane, by the bolts' length and thread".into(),
