@@ -4,10 +4,10 @@ use std::sync::Arc;
 
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
-use faying::intent::{IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
+use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
 use faying::joints::{
-    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, Joint, Kind, Layout, MemberAt, Stiffener,
-    WebPlate, Welds,
+    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, Held, Joint, Kind, Layout, MemberAt,
+    Stiffener, WebPlate, Welds,
 };
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
@@ -167,13 +167,14 @@ pub fn moment(sense: Sense, resistance: f64) -> Arc<MomentResistance> {
         governed_by: "column web in compression".into(),
         rows: Vec::new(),
         components: Vec::new(),
+        stiffness: None,
         notes: Vec::new(),
     })
 }
 
 pub fn load_case(name: &str, moment: Option<f64>, shear: Option<f64>, axial: Option<f64>, line: u32) -> LoadCase {
     let at = Place { file: "schedule.csv".into(), line, column: 1 };
-    LoadCase { name: name.into(), moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), at }
+    LoadCase { moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), ..LoadCase::blank(name, at) }
 }
 
 pub fn place(line: u32) -> Place {
@@ -247,6 +248,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
             class: known("8.8".into()),
             hole: known(mm(26.0)),
             rows: rows(&[560.0, 440.0, 350.0, 60.0]),
+            held: Held::default(),
         },
         welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
         stiffeners: vec![stiffener(8.0)],
@@ -341,6 +343,7 @@ fn scheduled() -> ScheduledJoint {
         end: Some("start".into()),
         cases: vec![load_case("W1", Some(300.0), Some(100.0), Some(0.0), 2)],
         detail: Some("E1".into()),
+        frame: InFrame::default(),
         at: Place { file: "schedule.csv".into(), line: 2, column: 1 },
     }
 }
@@ -374,6 +377,9 @@ fn intended() -> IntendedDetail {
         diagonals: None,
         diagonal_form: None,
         backing_plates: None,
+        exposed: None,
+        bolt_category: None,
+        friction: None,
         at: Some(Place { file: "details.toml".into(), line: 1, column: 1 }),
     }
 }

@@ -2,8 +2,8 @@
 
 mod column;
 
-use crate::intent::IntendedDetail;
-use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Layout, MemberAt, SpliceLayout, Welds};
+use crate::intent::{Friction, IntendedDetail};
+use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Layout, MemberAt, SpliceLayout, Welds};
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook};
 use crate::units::Length;
@@ -17,6 +17,21 @@ pub fn intended_layout(layout: &Layout, detail: &IntendedDetail, rulebook: &Rule
         Layout::EndPlate(layout) => intended(layout, detail, rulebook).map(Layout::EndPlate),
         Layout::Splice(layout) => splice(layout, detail, rulebook).map(Layout::Splice),
     }
+}
+
+/// The joint as detailed with what the schedule asks of its bolts and no model shows: their category and friction
+/// surfaces. `None` where the detail states neither.
+pub fn with_category(layout: &Layout, detail: &IntendedDetail, rulebook: &Rulebook) -> Option<Layout> {
+    if detail.bolt_category.is_none() && detail.friction.is_none() {
+        return None;
+    }
+    let mut asked = layout.clone();
+    let held = match &mut asked {
+        Layout::EndPlate(layout) => &mut layout.bolts.held,
+        Layout::Splice(layout) => &mut layout.bolts.held,
+    };
+    Stated { detail, rulebook }.category(held);
+    Some(asked)
 }
 
 /// The same for an end-plate splice: what is stated of plate and welds is meant for both halves.
@@ -125,7 +140,25 @@ impl Stated<'_> {
         if let Some(class) = &self.detail.bolt_class {
             bolts.class = Ok(Datum::new(class.clone(), self.by("bolt class")));
         }
+        self.category(&mut bolts.held);
         Ok(())
+    }
+
+    fn category(&self, held: &mut Held) {
+        if let Some(category) = self.detail.bolt_category {
+            held.category = Some(Datum::new(category, self.by("category")));
+        }
+        let stated = match &self.detail.friction {
+            Some(Friction::Class(class)) => {
+                let mu = self.rulebook.slip.friction.get(class);
+                mu.map(|mu| (*mu, format!("friction class {class} (Table 3.7)")))
+            }
+            Some(Friction::Factor(mu)) => Some((*mu, "slip factor".into())),
+            None => None,
+        };
+        if let Some((mu, what)) = stated {
+            held.slip_factor = Some(Datum::new(mu, self.by(&what)));
+        }
     }
 
     fn welds(&self, welds: &mut Welds) {

@@ -1,6 +1,7 @@
 //! What limits the sum of all rows: the compression side and the web panel in shear.
 #![allow(non_snake_case)]
 
+use super::Beside;
 use super::numbers::{ColumnSide, Numbers, PlateSide, StiffenerPair};
 use super::strengthening;
 use crate::eurocode::stiffeners::{self, Web};
@@ -33,8 +34,8 @@ impl Total {
     }
 }
 
-/// All total limits for tension at the top and one β, beside a shear `V_Ed` in the beam. `web_range`: the
-/// column's web in tension and compression.
+/// All total limits for tension at the top and one β, beside what else acts. `web_range`: the column's web in tension and
+/// compression.
 ///
 /// # Errors
 /// Why the web panel or a beam can't be assessed.
@@ -42,12 +43,12 @@ pub fn totals(
     n: &Numbers,
     rulebook: &Rulebook,
     beta: f64,
-    V_Ed: Force,
+    beside: Beside,
     web_range: Option<(Length, Length)>,
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
     let mut totals = match n.column() {
-        Some(column) => on_column(n, column, rulebook, beta, web_range.unwrap_or_default(), notes)?,
+        Some(column) => on_column(n, column, rulebook, beta, beside, web_range.unwrap_or_default(), notes)?,
         None => {
             level(n)?;
             Vec::new()
@@ -58,7 +59,7 @@ pub fn totals(
             id: "beam-flange-in-compression",
             title: format!("beam flange and web in compression{}", side.which.suffix()),
             clause: "EN 1993-1-8:2005 6.2.6.7",
-            resistance: flange(side, V_Ed, rulebook.annex.gamma_m0)?,
+            resistance: flange(side, beside.V_Ed, rulebook.annex.gamma_m0)?,
             share: 1.0,
         });
     }
@@ -105,13 +106,13 @@ fn pair_at(column: &ColumnSide, level: Length, t_fb: Length) -> Option<&Stiffene
     level.min_by(|a, b| off(a).get().total_cmp(&off(b).get()).then(a.height.get().total_cmp(&b.height.get())))
 }
 
-/// How far the column's lower end lies below a level.
+/// The column's lower end lies this far below a level.
 fn to_end(n: &Numbers, column: &ColumnSide, level: Length) -> Option<Length> {
     Some(level - n.rows.last()?.height + column.below?)
 }
 
-/// The column's web at the compression flange, without web plates.
-pub fn compression_web(n: &Numbers, own: &ColumnSide, rulebook: &Rulebook, beta: f64) -> column_web::Compression {
+/// The column's web at the compression flange, as if without stiffeners and web plates.
+pub fn web_in_compression(n: &Numbers, own: &ColumnSide, beta: f64, k_wc: f64) -> column_web::Compression {
     let (column, side) = (&own.section, &n.side);
     column_web::Compression {
         t_fb: side.beam.t_f,
@@ -126,8 +127,17 @@ pub fn compression_web(n: &Numbers, own: &ColumnSide, rulebook: &Rulebook, beta:
         f_y_wc: own.strength.f_y_web,
         A_vc: column.a_v_z,
         beta,
-        k_wc: rulebook.settings.k_wc,
+        k_wc,
     }
+}
+
+/// The pair that stiffens the column's web at the compression flange.
+pub fn stiffens(n: &Numbers, own: &ColumnSide) -> bool {
+    let pair = pair_at(own, n.side.compression(), n.side.beam.t_f);
+    pair.is_some_and(|pair| {
+        let plates = pair.plates(own);
+        plates.rigid(own.section.t_w, own.section.h - 2.0 * own.section.t_f) && plates.stocky()
+    })
 }
 
 /// The column's web in compression and its panel in shear.
@@ -136,6 +146,7 @@ fn on_column(
     own: &ColumnSide,
     rulebook: &Rulebook,
     beta: f64,
+    beside: Beside,
     web_range: (Length, Length),
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
@@ -149,11 +160,13 @@ fn on_column(
 
     let mut w = Working::default();
     let A_vc = strengthening::shear_area(own, web_range, rulebook, &mut w);
-    let added = w;
-    let plain_web = column_web::Compression { A_vc, ..compression_web(n, own, rulebook, beta) };
-    let half = 0.5 * column_web::effective_width(&mut Working::default(), &plain_web);
+    let added = w.clone();
+    let k_wc = beside.column.map_or(rulebook.settings.k_wc, |actions| {
+        column_web::k_wc(&mut w, actions, (column.area, column.i_y()), d_wc, strength.f_y_web)
+    });
+    let plain_web = column_web::Compression { A_vc, ..web_in_compression(n, own, beta, k_wc) };
+    let half = 0.5 * column_web::b_eff(&mut Working::default(), &plain_web);
     let level = side.compression();
-    let mut w = added.clone();
     let t_wc = strengthening::in_compression(own, (web_range.0.max(level - half), level + half), rulebook, &mut w);
     let (reinforced, _) = column_web::compression(&column_web::Compression { t_wc, ..plain_web }, gamma_M0, gamma_M1);
     w.absorb(reinforced.working);

@@ -4,7 +4,7 @@
 use super::{Limit, TensionSide, sum};
 use crate::assess::end_plate::numbers::{ColumnSide, Numbers, Row, StiffenerPair};
 use crate::assess::end_plate::{strengthening, totals};
-use crate::eurocode::effective_length::{self as el, RowPlace};
+use crate::eurocode::effective_length::{self as el, EffectiveLength, RowPlace};
 use crate::eurocode::t_stub::{TStub, t_stub};
 use crate::eurocode::{Resistance, column_web, stiffeners};
 use crate::units::Length;
@@ -89,17 +89,16 @@ impl TensionSide<'_> {
         (self.rows[last].height..self.rows[first].height).contains(&pair.height)
     }
 
-    /// The column flange's T-stub of a range of rows with a root radius, with the stiffeners beside them or as if there were
-    /// none.
-    fn column_stub(
+    /// Each row's share of the effective length of a range, on the column's flange with a root radius, with the stiffeners
+    /// beside them or as if there were none.
+    fn column_lengths(
         &self,
         column: &ColumnSide,
-        first: usize,
-        last: usize,
+        (first, last): (usize, usize),
         stiffened: bool,
         r: Length,
         w: &mut Working,
-    ) -> TStub {
+    ) -> Vec<EffectiveLength> {
         let mut lengths = Vec::new();
         for i in first..=last {
             let row = &self.rows[i];
@@ -122,6 +121,32 @@ impl TensionSide<'_> {
                 el::inner_in_group(0.5 * (self.pitch_below(i - 1) + self.pitch_below(i)))
             });
         }
+        lengths
+    }
+
+    /// The smallest effective length of one row, alone or as part of a group (Table 6.11), with a root radius.
+    pub(super) fn least_on_column(&self, column: &ColumnSide, row: usize, r: Length) -> Length {
+        let parted = |first, last| {
+            let pairs = self.pairs_at(column, first, last);
+            first != last && pairs.iter().any(|pair| self.parts(first, last, pair))
+        };
+        self.least_length(row, |first, last, w| {
+            (!parted(first, last)).then(|| self.column_lengths(column, (first, last), true, r, w))
+        })
+    }
+
+    /// The column flange's T-stub of a range of rows with a root radius, with the stiffeners beside them or as if there were
+    /// none.
+    fn column_stub(
+        &self,
+        column: &ColumnSide,
+        first: usize,
+        last: usize,
+        stiffened: bool,
+        r: Length,
+        w: &mut Working,
+    ) -> TStub {
+        let lengths = self.column_lengths(column, (first, last), stiffened, r, w);
         // A group of rows with unequal gauge takes the largest m and the smallest n.
         let m = self.over(first, last, |row| self.m_beside(column, row, r), Length::max);
         let n_e = self.over(first, last, Row::e_min, Length::min);
@@ -148,8 +173,8 @@ impl TensionSide<'_> {
         let stub = |i: usize| self.column_stub(column, i, i, false, column.r_most, &mut Working::default());
         let hi = (0..self.rows.len()).map(|i| self.rows[i].height + 0.5 * stub(i).l_eff_1);
         let hi = hi.fold(n.side.flange_top(), Length::max);
-        let web = totals::compression_web(n, column, self.rulebook, self.beta);
-        let lo = n.side.compression() - 0.5 * column_web::effective_width(&mut Working::default(), &web);
+        let web = totals::web_in_compression(n, column, self.beta, self.rulebook.settings.k_wc);
+        let lo = n.side.compression() - 0.5 * column_web::b_eff(&mut Working::default(), &web);
         let top = n.rows.first().zip(column.above).map(|(row, above)| row.height + above);
         let foot = n.rows.last().zip(column.below).map(|(row, below)| row.height - below);
         (foot.map_or(lo, |foot| lo.max(foot)), top.map_or(hi, |top| hi.min(top)))
