@@ -1,8 +1,8 @@
 //! Formulas against published values; every expected value carries its source.
 
-use faying::eurocode::alpha::{alpha, alpha_of_draft, lambda_1_on_curve};
 mod strengthening;
 
+use faying::eurocode::alpha::{alpha, alpha_of_draft, lambda_1_on_curve};
 use faying::eurocode::bolts::{self, BearingPlace};
 use faying::eurocode::effective_length::{self as el, RowPlace};
 use faying::eurocode::t_stub::{ModeOne, TStub, t_stub};

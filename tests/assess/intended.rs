@@ -125,8 +125,20 @@ fn the_stated_strengthening_counts_whatever_is_detailed() {
             length: None,
         }))
     };
-    let bare =
-        Sketch { column: "HEA 300", beam: "UKB 533x210x92", inner: 3, d: 24.0, t_p: 25.0, ..PLAIN }.layout(&RULES);
+    // Panel and column flange govern, the web in compression does not.
+    let bare = Sketch {
+        column: "HEA 300",
+        beam: "UKB 533x210x92",
+        inner: 3,
+        d: 30.0,
+        gauge: 150.0,
+        t_p: 40.0,
+        flange_weld: 15.0,
+        web_weld: 10.0,
+        bottom: Some(15.0),
+        ..PLAIN
+    };
+    let bare = bare.layout(&RULES);
     let plain = both(&bare);
     let short =
         IntendedStiffener { thickness: Some(mm(12.0)), throat: Some(mm(6.0)), length: Some(mm(160.0)), grade: None };
