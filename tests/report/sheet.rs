@@ -360,6 +360,11 @@ fn formulas_are_printed_as_they_were_computed() {
     let mut w = given();
     step!(w, "a", M_pl = m * F_T_Rd);
     cases.push((w, "M_pl = m · F_T,Rd [a] = 40.00 mm · 100.0 kN = 4.000 kNm"));
+    // What is no formula stands as it is.
+    let mut w = given();
+    let least = |of: &[f64]| of.iter().copied().fold(f64::INFINITY, f64::min);
+    step!(w, "a", x = least(&[beta, 2.0]));
+    cases.push((w, "x = least(&[beta, 2.0]) [a] = 0.500"));
     for (working, expected) in cases {
         let text = printed(working);
         assert!(text.contains(expected), "no {expected:?} in {text}");

@@ -156,13 +156,13 @@ pub(super) fn squared(product: &syn::ExprBinary) -> bool {
     matches!(product.op, BinOp::Mul(_)) && left.is_some() && left == right
 }
 
-/// What is no formula, as it stands in the code.
-pub(super) fn as_code(expr: &Expr) -> String {
+/// The name of a field; `None` for what can't stand in a formula.
+pub(super) fn field(expr: &Expr) -> Option<String> {
     match expr {
         Expr::Field(field) => match &field.member {
-            syn::Member::Named(name) => name.to_string(),
-            syn::Member::Unnamed(index) => index.index.to_string(),
+            syn::Member::Named(name) => Some(name.to_string()),
+            syn::Member::Unnamed(_) => None,
         },
-        _ => "…".to_owned(),
+        _ => None,
     }
 }

@@ -7,7 +7,7 @@
 use syn::{BinOp, Expr};
 
 use super::code::{
-    ALONE, Values, as_code, binding, call, evaluate, flat, least, literal, name_of, scale, squared, strip,
+    ALONE, Values, binding, call, evaluate, field, flat, least, literal, name_of, scale, squared, strip,
 };
 use crate::working::Step;
 
@@ -64,15 +64,18 @@ pub(in crate::report) fn symbol(code: &str) -> (String, String) {
 pub(in crate::report) fn printed(step: &Step, values: &Values<'_>) -> Option<(Line, Option<Line>)> {
     let code = step.expression?;
     let Ok(parsed) = syn::parse_str::<Expr>(code) else { return Some((text(code), None)) };
-    let mut symbols = Writer { values: None, out: Vec::new(), unknown: false };
+    let mut symbols = Writer { values: None, out: Vec::new(), unknown: false, foreign: false };
     symbols.write(&parsed, 0);
+    if symbols.foreign {
+        return Some((text(code), None));
+    }
     // A number or another symbol gives the value without an operation.
     let bare = matches!(strip(&parsed), Expr::Lit(_) | Expr::Path(_));
     let gives = evaluate(&parsed, values).zip(scale(step.value.unit)).is_some_and(|(got, per)| {
         let expected = step.value.value * per;
         (got - expected).abs() <= 1e-9 * expected.abs().max(1e-9)
     });
-    let mut numbers = Writer { values: Some(values), out: Vec::new(), unknown: false };
+    let mut numbers = Writer { values: Some(values), out: Vec::new(), unknown: false, foreign: false };
     numbers.write(&parsed, 0);
     let numbers = (gives && !bare && !numbers.unknown).then_some(numbers.out);
     Some((symbols.out, numbers))
@@ -84,6 +87,8 @@ struct Writer<'a> {
     out: Line,
     /// Whether something has no number.
     unknown: bool,
+    /// Whether something is no formula.
+    foreign: bool,
 }
 
 impl Writer<'_> {
@@ -146,7 +151,10 @@ impl Writer<'_> {
             },
             other => {
                 self.unknown = true;
-                self.put(&as_code(other));
+                match field(other) {
+                    Some(name) => self.put(&name),
+                    None => self.foreign = true,
+                }
             }
         }
     }
