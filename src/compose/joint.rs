@@ -203,7 +203,9 @@ fn resistance(assessment: &Assessment) -> Resistance {
         moment_knm: hogging.map(|m| m.moment.knm()),
         moment_reversed_knm: sagging.map(|m| m.moment.knm()),
         shear_kn: shear.map(|s| s.shear.kn()),
-        axial_kn: None,
+        axial_kn: (assessment.cases.iter().filter_map(|case| case.axial.as_ref()))
+            .map(|axial| axial.resistance.kn())
+            .min_by(f64::total_cmp),
         governed_by: governs,
     }
 }
@@ -282,6 +284,15 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         let required = verdict.and_then(|v| v.required);
         checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", shear.shear.kn(), required, "kN"));
         checks.extend(shear.components.iter().map(|c| component(c, required)));
+    }
+    // Moment and axial force together: its use is their sum, not the force's own share.
+    let together = (assessment.cases.iter())
+        .filter_map(|case| Some((case.axial.as_ref()?, use_of(&case.verdicts, About::Axial))))
+        .max_by(|a, b| a.1.total_cmp(&b.1));
+    if let Some((axial, used)) = together {
+        let result = component(axial, Some(axial.at_full.kn()));
+        let outcome = if used <= 1.0 { "met" } else { "unproven" };
+        checks.push(CheckResult { utilisation: Some(used), outcome, ..result });
     }
     Leading { rows, stiffness, checks }
 }
