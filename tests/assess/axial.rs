@@ -161,6 +161,16 @@ fn the_columns_own_stress_lowers_its_web() {
     // The strength of a flange of 19 mm: 345.
     assert!((loaded / plain - (1.7 - 300.0 / 345.0)).abs() < 1e-3, "{}", loaded / plain);
     assert_eq!(web(Some((-100.0, 0.0))).0, plain);
+    // A column that yields by its own forces: nothing is said of the joint.
+    let stated = LoadCase {
+        column_axial: Some(kn(-5200.0)),
+        column_moment: Some(knm(0.0)),
+        ..case(Some(10.0), Some(0.0), Some(0.0))
+    };
+    let beyond = assess(&layout, &[Demand { case: &stated, opposite: Opposite::None }], false, &RULES);
+    let moment = verdict(&beyond, About::Moment);
+    assert_eq!(moment.state, State::Unproven);
+    assert!(moment.reason.as_ref().unwrap().contains("above f_y"), "{:?}", moment.reason);
 }
 
 proptest! {

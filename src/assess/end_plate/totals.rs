@@ -35,7 +35,7 @@ impl Total {
 /// All total limits for tension at the top and one β, beside what else acts.
 ///
 /// # Errors
-/// Why the web panel or a beam can't be assessed.
+/// Why the column's web, its panel or a beam can't be assessed.
 pub fn totals(
     n: &Numbers,
     rulebook: &Rulebook,
@@ -158,6 +158,10 @@ fn on_column(
     let k_wc = beside.column.map_or(rulebook.settings.k_wc, |actions| {
         column_web::k_wc(&mut w, actions, (column.area, column.i_y()), d_wc, strength.f_y_web)
     });
+    // Beyond 1.7 − 1 the column yields by its own forces, which is no longer a matter of the joint.
+    if beside.column.is_some() && !(k_wc >= 0.7) {
+        return Err("N and M stated for the column stress its web above f_y (6.2.6.2(2))".into());
+    }
     let web = web_in_compression(n, own, beta, k_wc);
     let (mut plain, crushing) = column_web::compression(&web, gamma_M0, gamma_M1);
     w.absorb(plain.working);
