@@ -58,7 +58,7 @@ impl Bench {
             verdict(About::Weld, State::Met, 300.0, "kNm"),
             verdict(About::Axial, State::Met, 0.0, "kN"),
         ];
-        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None }];
+        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None, axial: None }];
         self.assessment = Some(Assessment { cases, ..Assessment::default() });
     }
 

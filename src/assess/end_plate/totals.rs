@@ -38,7 +38,7 @@ impl Total {
 /// and compression.
 ///
 /// # Errors
-/// Why the web panel or a beam can't be assessed.
+/// Why the column's web, its panel or a beam can't be assessed.
 pub fn totals(
     n: &Numbers,
     rulebook: &Rulebook,
@@ -161,6 +161,10 @@ fn on_column(
     let k_wc = beside.column.map_or(rulebook.settings.k_wc, |actions| {
         column_web::k_wc(&mut w, actions, (column.area, column.i_y()), d_wc, strength.f_y_web)
     });
+    // Beyond 1.7 − 1 the column yields by its own forces, which is no longer a matter of the joint.
+    if beside.column.is_some() && !(k_wc >= 0.7) {
+        return Err("N and M stated for the column stress its web above f_y (6.2.6.2(2))".into());
+    }
     let mut added = Working::default();
     let A_vc = strengthening::shear_area(own, web_range, rulebook, &mut added);
     w.absorb(added.clone());
