@@ -9,6 +9,7 @@ pub mod beam;
 pub mod bolts;
 pub mod column_web;
 pub mod effective_length;
+pub mod haunch;
 pub mod stiffeners;
 pub mod t_stub;
 pub mod web_panel;

@@ -9,6 +9,7 @@ mod draft;
 mod end_plate;
 mod frame;
 mod graph;
+mod haunch;
 mod layout;
 mod marks;
 mod near;
@@ -23,8 +24,8 @@ mod touch;
 mod welds;
 
 pub use layout::{
-    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Layout, MemberAt, PlateSide, SpliceLayout, Stiffener,
-    Support, Welds, Which,
+    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Haunch, Layout, MemberAt, PlateSide, SpliceLayout,
+    Stiffener, Support, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;
@@ -109,9 +110,9 @@ pub struct Joint {
     pub at_end: Option<bool>,
     /// Its bolts.
     pub bolts: Vec<usize>,
-    /// Its plates, with their role: "end-plate", "stiffener", "plate".
+    /// Its plates, with their role: "end-plate", "stiffener", "haunch", "plate".
     pub plates: Vec<(usize, &'static str)>,
-    /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "other".
+    /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "haunch", "other".
     pub welds: Vec<(usize, &'static str)>,
     /// The joint in its own frame, or why it could not be laid out.
     pub layout: Result<Layout, String>,

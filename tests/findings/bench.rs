@@ -246,6 +246,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
             rows: rows(&[560.0, 440.0, 350.0, 60.0]),
         },
         welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
+        haunch: None,
         stiffeners: vec![stiffener(8.0)],
         column_above: Some(mm(500.0)),
         column_below: None,

@@ -49,6 +49,7 @@ pub fn example(rulebook: &Rulebook) -> EndPlateLayout {
             rows: [0.0, 100.0, 190.0, 460.0].map(|below| row(height_of_row_1 - below)).to_vec(),
         },
         welds: Welds { flange_top: known(throat(12.0)), flange_bottom: known(throat(12.0)), web: known(throat(8.0)) },
+        haunch: None,
         stiffeners: Vec::new(),
         column_above: None,
         column_below: None,

@@ -1,5 +1,6 @@
 //! The numbers of a beam with its end plate.
 
+use super::haunch_side::HaunchSide;
 use super::noted::{Noted, R_MOST};
 use super::{BoltNumbers, MemberStrength};
 use crate::eurocode::{beam, bolts};
@@ -38,12 +39,14 @@ pub struct PlateSide {
     pub a_tension: Option<Length>,
     pub a_compression: Option<Length>,
     pub a_web: Option<Length>,
+    /// The haunch below, on the compression side.
+    pub haunch: Option<HaunchSide>,
 }
 
 /// The numbers of a beam and its plate that do not depend on the bolts.
 pub(super) struct Ends {
     pub(super) beam: Section,
-    beam_strength: MemberStrength,
+    pub(super) beam_strength: MemberStrength,
     r_b: Length,
     plate_grade: Grade,
     strength: Strength,
@@ -81,6 +84,7 @@ impl Ends {
     pub(super) fn with(
         self,
         laid: Laid<'_>,
+        haunch: Option<HaunchSide>,
         bolts: &BoltNumbers,
         rulebook: &Rulebook,
         noted: &mut Noted,
@@ -118,6 +122,7 @@ impl Ends {
             a_tension: a_top,
             a_compression: a_bottom,
             a_web,
+            haunch,
             beam,
         })
     }
@@ -129,9 +134,25 @@ impl PlateSide {
         self.soffit + self.beam.h
     }
 
-    /// Height of the centre of compression, the middle of the compression flange (6.2.7.1, Figure 6.15).
+    /// Height of the centre of compression, the middle of the compression flange (6.2.7.1, Figure 6.15), the haunch's if
+    /// there is one.
     pub fn compression(&self) -> Length {
-        self.soffit + 0.5 * self.beam.t_f
+        self.lowest() + 0.5 * self.compression_flange()
+    }
+
+    /// Thickness of the compression flange, measured along the end plate.
+    pub fn compression_flange(&self) -> Length {
+        self.haunch.as_ref().map_or(self.beam.t_f, HaunchSide::upright)
+    }
+
+    /// Height of the outer face of the compression flange.
+    pub fn lowest(&self) -> Length {
+        self.soffit - self.haunch.as_ref().map_or(Length::ZERO, |haunch| haunch.depth)
+    }
+
+    /// Depth of the beam, with its haunch.
+    pub fn depth(&self) -> Length {
+        self.flange_top() - self.lowest()
     }
 
     /// V_pl,Rd of the beam, EN 1993-1-1 6.2.6 (6.18).
@@ -167,7 +188,7 @@ impl PlateSide {
         rest(self) == rest(other) && lengths(self).zip(lengths(other)).all(same)
     }
 
-    /// The same upside down; `h` is the height that 0 is turned to.
+    /// The same upside down, without its haunch; `h` is the height that 0 is turned to.
     pub(super) fn upside_down(&self, h: Length) -> Self {
         Self {
             soffit: h - self.flange_top(),
@@ -175,6 +196,7 @@ impl PlateSide {
             bottom: h - self.top,
             a_tension: self.a_compression,
             a_compression: self.a_tension,
+            haunch: None,
             ..self.clone()
         }
     }
