@@ -7,6 +7,7 @@ mod progress;
 mod rules;
 mod sheet;
 
+use std::io::{self, Write};
 use std::path::{Path, PathBuf};
 use std::process::ExitCode;
 
@@ -118,6 +119,9 @@ struct Common {
     /// A folder of rule files that stand in for the built-in ones of the same name.
     #[arg(long, value_name = "FOLDER")]
     rules: Option<PathBuf>,
+    /// The partial factors and choices of a national annex: a file of annexes/ in the rules, without ".toml".
+    #[arg(long, value_name = "NAME")]
+    annex: Option<String>,
     /// How to write the report.
     #[arg(long, value_enum, default_value_t = Format::Text)]
     format: Format,
@@ -143,13 +147,19 @@ enum Format {
 /// Where rules come from and a report goes.
 struct Places<'a> {
     rules: Option<&'a Path>,
+    annex: Option<&'a str>,
     output: Option<&'a Path>,
     color: Colour,
 }
 
 impl Common {
     fn places(&self) -> Places<'_> {
-        Places { rules: self.rules.as_deref(), output: self.output.as_deref(), color: self.color }
+        Places {
+            rules: self.rules.as_deref(),
+            annex: self.annex.as_deref(),
+            output: self.output.as_deref(),
+            color: self.color,
+        }
     }
 }
 
@@ -159,7 +169,7 @@ pub fn main() -> ExitCode {
         Command::Review(args) => review(&args),
         Command::Survey(args) => survey(&args),
         Command::Sheet(args) => sheet_of(&args),
-        Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::to_stdout(&text)).map(|()| 0),
+        Command::Rules { id } => rules::text(id.as_deref()).and_then(|text| output::text_to_stdout(&text)).map(|()| 0),
         Command::Completions { shell } => completions(shell).map(|()| 0),
     };
     ExitCode::from(done.unwrap_or_else(|failure| failure.tell()))
@@ -167,8 +177,8 @@ pub fn main() -> ExitCode {
 
 fn review(args: &ReviewArgs) -> Result<u8, Failure> {
     let draw = |review: &Review, output: &Output, model: &[u8]| match args.common.format {
-        Format::Text => Ok(text::render(review, &output.options(args.common.all), Some(model))),
-        Format::Json => json::review(review).map_err(no_json),
+        Format::Text => Ok(Drawn::Whole(text::render(review, &output.options(args.common.all), Some(model)))),
+        Format::Json => Ok(Drawn::Written(|review, to| json::write_review(review, to))),
     };
     let review = report(&args.path, Some(&args.schedule), &args.common.places(), draw)?;
     Ok(match review.exit_code() {
@@ -179,17 +189,28 @@ fn review(args: &ReviewArgs) -> Result<u8, Failure> {
 
 fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
     let draw = |review: &Review, output: &Output, _: &[u8]| match args.common.format {
-        Format::Text => Ok(survey::render(review, &output.options(args.common.all))),
-        Format::Json => json::survey(review).map_err(no_json),
+        Format::Text => Ok(Drawn::Whole(survey::render(review, &output.options(args.common.all)))),
+        Format::Json => Ok(Drawn::Written(|review, to| json::write_survey(review, to))),
     };
     report(&args.path, None, &args.common.places(), draw).map(|_| 0)
 }
 
 fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {
-    let places = Places { rules: args.rules.as_deref(), output: args.output.as_deref(), color: args.color };
-    let draw = |review: &Review, output: &Output, _: &[u8]| sheet::draw(args, review, output);
+    let places = Places {
+        rules: args.rules.as_deref(),
+        annex: args.annex.as_deref(),
+        output: args.output.as_deref(),
+        color: args.color,
+    };
+    let draw = |review: &Review, output: &Output, _: &[u8]| sheet::draw(args, review, output).map(Drawn::Whole);
     let review = report(&args.path, Some(&args.schedule), &places, draw)?;
     sheet::exit_code(args, &review)
+}
+
+/// A report: in full, or how it is written without ever holding all of it.
+enum Drawn {
+    Whole(String),
+    Written(fn(&Review, &mut dyn Write) -> io::Result<()>),
 }
 
 /// Reads, runs, draws and writes; `schedules` is `None` where none is wanted, not even the folder's own.
@@ -197,23 +218,22 @@ fn report(
     path: &Path,
     schedules: Option<&[PathBuf]>,
     places: &Places<'_>,
-    draw: impl FnOnce(&Review, &Output, &[u8]) -> Result<String, Failure>,
+    draw: impl FnOnce(&Review, &Output, &[u8]) -> Result<Drawn, Failure>,
 ) -> Result<Review, Failure> {
     let given = Given::gather(path, schedules, places.rules)?;
     // Before the work is done, so that nobody waits for a report that can't be written.
     let output = Output::open(places.output, places.color, &given.paths)?;
-    let review = progress::watched("reading and checking the model", || run::run(&given.inputs()))?;
+    let review = progress::watched("reading and checking the model", || run::run_by(&given.inputs(), places.annex))?;
     let drawn = draw(&review, &output, &given.model.bytes)?;
-    output.write(&drawn)?;
+    output.write(|to| match drawn {
+        Drawn::Whole(text) => to.write_all(text.as_bytes()),
+        Drawn::Written(write) => write(&review, to),
+    })?;
     Ok(review)
-}
-
-fn no_json(why: serde_json::Error) -> Failure {
-    Failure::because("can't write JSON", why)
 }
 
 fn completions(shell: clap_complete::Shell) -> Result<(), Failure> {
     let mut script = Vec::new();
     clap_complete::generate(shell, &mut Cli::command(), "faying", &mut script);
-    output::to_stdout(&String::from_utf8_lossy(&script))
+    output::text_to_stdout(&String::from_utf8_lossy(&script))
 }

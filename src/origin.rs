@@ -47,6 +47,20 @@ pub enum Origin {
     Assumed(String),
 }
 
+impl Origin {
+    /// As it is printed, in a text of its own.
+    pub fn printed(&self) -> String {
+        use fmt::Write;
+        let words = match self {
+            Self::Modelled { by, at } => by.len() + at.as_ref().map_or(0, |at| at.file.len() + 24),
+            Self::Derived(words) | Self::LookedUp(words) | Self::Assumed(words) => words.len(),
+        };
+        let mut text = String::with_capacity("looked up: ".len() + words);
+        let _ = write!(text, "{self}");
+        text
+    }
+}
+
 impl fmt::Display for Origin {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {

@@ -177,6 +177,41 @@ pub struct RowBasis {
     pub notes: Vec<String>,
 }
 
+/// A joint's rotational stiffness at the leading case, or in its own right.
+#[derive(Clone, Debug)]
+pub struct StiffnessResult {
+    /// "tension at the top" or "tension at the bottom".
+    pub sense: &'static str,
+    /// β.
+    pub beta: f64,
+    /// S_j,ini, kNm/rad.
+    pub initial: f64,
+    /// S_j beside the required moment, kNm/rad.
+    pub at_required: Option<f64>,
+    /// Whether something that is not known might make it stiffer.
+    pub lower_bound: bool,
+    /// z, mm.
+    pub lever_arm_mm: f64,
+    /// Springs in a row: in words, and k in mm (`None`: infinitely stiff).
+    pub springs: Vec<(String, Option<f64>)>,
+    /// Rigid from here on, kNm/rad; `None` where span or bracing is not stated.
+    pub rigid_from: Option<f64>,
+    /// Nominally pinned up to here, kNm/rad.
+    pub pinned_up_to: Option<f64>,
+    /// "rigid", "semi-rigid", "pinned", or "not stated: …".
+    pub class: String,
+    /// What the analysis takes it for, if the schedule says so.
+    pub assumed: Option<&'static str>,
+    /// "full-strength", "partial-strength" or "nominally pinned by strength".
+    pub strength: &'static str,
+    /// What may be assumed of the rotation capacity.
+    pub rotation: String,
+    /// What stands behind the class and is not checked.
+    pub notes: Vec<String>,
+    /// The working.
+    pub working: Arc<Working>,
+}
+
 /// A check's result.
 #[derive(Clone, Debug)]
 pub struct CheckResult {
@@ -196,6 +231,8 @@ pub struct CheckResult {
     pub utilisation: Option<f64>,
     /// "met", "not met" or "unproven".
     pub outcome: &'static str,
+    /// For a weld: the throat that the action needs, or what the joint's full resistance needs where none is stated, mm.
+    pub needed_throat_mm: Option<f64>,
     /// The working.
     pub working: Arc<Working>,
 }
@@ -235,8 +272,10 @@ pub struct JointReview {
     pub row_basis: Option<RowBasis>,
     /// The load case that the checks of the shear stand for.
     pub shear_case: Option<String>,
-    /// Checks.
-    pub checks: Vec<CheckResult>,
+    /// Rotational stiffness and class.
+    pub stiffness: Option<StiffnessResult>,
+    /// Checks; like joints share theirs.
+    pub checks: Arc<[CheckResult]>,
     /// Findings, worst first.
     pub findings: Vec<Finding>,
     /// What is missing for a proof.

@@ -32,6 +32,9 @@ pub enum Failed {
     #[error("{0}")]
     #[diagnostic(transparent)]
     Rules(Box<dyn Diagnostic + Send + Sync>),
+    /// No such annex.
+    #[error("{0}")]
+    Annex(String),
 }
 
 /// Reviews a model.
@@ -39,11 +42,24 @@ pub enum Failed {
 /// # Errors
 /// [`Failed`] where an input can't be read at all; whatever else is odd is a problem in the review.
 pub fn run(inputs: &Inputs<'_>) -> Result<Review, Failed> {
-    let rulebook = Rulebook::with_overrides(&inputs.rules).map_err(|e| Failed::Rules(Box::new(e)))?;
+    run_by(inputs, None)
+}
+
+/// The same by an annex of the rules; `None` for the one that the rules choose.
+///
+/// # Errors
+/// As [`run`].
+pub fn run_by(inputs: &Inputs<'_>, annex: Option<&str>) -> Result<Review, Failed> {
+    let mut rulebook = Rulebook::with_overrides(&inputs.rules).map_err(|e| Failed::Rules(Box::new(e)))?;
+    if let Some(annex) = annex {
+        rulebook.use_annex(annex).map_err(Failed::Annex)?;
+    }
     let intent = intent::read_all(&inputs.schedules).map_err(|e| Failed::Schedule(Box::new(e)))?;
     let (file, bytes) = inputs.model;
-    let exchange = exchange::read(bytes, file)?;
+    let mut exchange = exchange::read(bytes, file)?;
     let steelwork = shop::take_up(&exchange, &rulebook);
+    // Nobody asks the graph any more: its memory is better used for what follows.
+    exchange.entities = exchange::Entities::default();
     let joints = joints::recognise(&steelwork, &rulebook);
     let pairing = intent::pair(&intent, &joints, &steelwork);
     let sources = Sources {

@@ -178,6 +178,14 @@ quantity!(
     Moment, "Nmm", "kNm", 1e6
 );
 quantity!(
+    /// A second moment of area, mm⁴.
+    SecondMoment, "mm4", "cm⁴", 1e4
+);
+quantity!(
+    /// A rotational stiffness, N·mm/rad; printed in kNm/rad.
+    Stiffness, "Nmm/rad", "kNm/rad", 1e6
+);
+quantity!(
     /// A force per length (of weld), N/mm.
     LineForce, "N/mm", "N/mm", 1.0
 );
@@ -208,6 +216,7 @@ product! {
     Length * Length = Area;
     Length * Area = Modulus;
     Area * Length = Modulus;
+    Modulus * Length = SecondMoment;
     Area * Stress = Force;
     Stress * Area = Force;
     Modulus * Stress = Moment;
@@ -223,6 +232,7 @@ product! {
 quotient! {
     Area / Length = Length;
     Modulus / Length = Area;
+    SecondMoment / Length = Modulus;
     Modulus / Area = Length;
     Force / Area = Stress;
     Force / Stress = Area;
@@ -266,6 +276,18 @@ impl Force {
 impl Moment {
     /// The moment in kNm.
     pub const fn knm(self) -> f64 {
+        self.0 / 1e6
+    }
+}
+
+impl Stiffness {
+    /// The stiffness against which this moment turns by one radian.
+    pub const fn per_radian(moment: Moment) -> Self {
+        Self(moment.0)
+    }
+
+    /// The stiffness in kNm/rad.
+    pub const fn knm_per_rad(self) -> f64 {
         self.0 / 1e6
     }
 }

@@ -1,10 +1,10 @@
 //! Formulas against published values; every expected value carries its source.
 
-use faying::eurocode::alpha::{alpha, lambda_1_on_curve};
+use faying::eurocode::alpha::{alpha, alpha_of_draft, lambda_1_on_curve};
 use faying::eurocode::bolts::{self, BearingPlace};
 use faying::eurocode::effective_length::{self as el, RowPlace};
 use faying::eurocode::t_stub::{ModeOne, TStub, t_stub};
-use faying::eurocode::{column_web, welds};
+use faying::eurocode::{column_web, slip, welds};
 use faying::rulebook::Rulebook;
 use faying::units::{Area, Force, kn, mm, mpa};
 use proptest::prelude::*;
@@ -39,6 +39,42 @@ fn bolts_in_tension_and_shear() {
     // M12 8.8 in a 2 mm clearance hole, 3.6.1(5): 27.5 (published table).
     let (m12, c88) = (rulebook.bolt_size(mm(12.0)).unwrap(), rulebook.bolt_class("8.8").unwrap());
     close(bolts::shear(c88.alpha_v, c88.f_ub, m12.a_s, 0.85, 1.25).value.kn(), 27.5, 0.06);
+}
+
+/// Own arithmetic: 0.7 · 800 · 245 = 137.2 kN; without tension μ = 0.5, γM3 1.25: 54.88 kN; beside 100 kN of tension
+/// 0.5 · (137.2 − 80)/1.25 = 22.88 kN. Published tables print 137 and 54.9 (from memory).
+#[test]
+fn preload_and_slip() {
+    let preload = slip::preload(mpa(800.0), Area(245.0)).value;
+    close(preload.kn(), 137.2, 1e-9);
+    let one = |tension: f64| slip::slip(1.0, 1.0, 0.5, preload, kn(tension), 1.25).value.kn();
+    close(one(0.0), 54.88, 1e-9);
+    close(one(100.0), 22.88, 1e-9);
+    close(one(200.0), 0.0, 1e-9);
+    assert!(one(f64::NAN).is_nan());
+}
+
+/// (3.3), own arithmetic: M20 through 10 mm, 180/190; through a third of the diameter nothing is taken off.
+#[test]
+fn bolts_through_packing() {
+    let beta = |d: f64, t_p: f64| slip::packing(mm(d), mm(t_p)).0;
+    close(beta(20.0, 10.0), 180.0 / 190.0, 1e-12);
+    assert_eq!((beta(24.0, 8.0), beta(24.0, 0.0)), (1.0, 1.0));
+}
+
+proptest! {
+    #[test]
+    fn packing_never_strengthens(d in 12.0..36.0f64, t_p in 0.0..200.0f64, more in 0.0..50.0f64) {
+        let beta = |t_p: f64| slip::packing(mm(d), mm(t_p)).0;
+        prop_assert!(beta(t_p) <= 1.0 && beta(t_p + more) <= beta(t_p) && beta(t_p) > 0.0);
+    }
+
+    #[test]
+    fn slip_falls_with_tension(f_ub in 800.0..1000.0f64, a_s in 80.0..900.0f64, mu in 0.2..0.5f64, n in 0.0..500.0f64, more in 0.0..50.0f64) {
+        let preload = slip::preload(mpa(f_ub), Area(a_s)).value;
+        let one = |tension: f64| slip::slip(1.0, 1.0, mu, preload, kn(tension), 1.25).value;
+        prop_assert!(one(n + more) <= one(n) && one(n) <= one(0.0) && one(n) >= Force::ZERO);
+    }
 }
 
 #[test]
@@ -83,6 +119,11 @@ fn alpha_on_the_chart() {
             close(alpha(lambda_1, lambda_2, 8.0), expected, 0.006);
         }
     }
+    // The draft's formula: own arithmetic at e = m = m_2 (4 + 1.67), far from the stiffener (4 + 1.25), close to it.
+    close(alpha_of_draft(0.5, 0.5), 5.67, 1e-9);
+    close(alpha_of_draft(0.5, 5.0), 5.25, 1e-9);
+    close(alpha_of_draft(0.3, 0.05), 8.0, 1e-9);
+    assert!(alpha_of_draft(f64::NAN, 0.5).is_nan() && alpha_of_draft(0.5, f64::NAN).is_nan());
     assert!(alpha(f64::NAN, 0.5, 8.0).is_nan());
 }
 

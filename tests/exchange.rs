@@ -6,6 +6,7 @@ mod forms;
 mod hostile;
 mod limits;
 mod part28;
+mod parts;
 mod problems;
 mod step;
 mod unreadable;

@@ -1,11 +1,12 @@
 //! One room a joint kind: which checks, in which order; row forces, moment and shear.
 
+pub mod classification;
 pub mod end_plate;
 
 use std::sync::Arc;
 
 use crate::origin::{Datum, Missing, Origin};
-use crate::units::{Force, Length, Moment};
+use crate::units::{Force, Length, Moment, SecondMoment, Stiffness};
 use crate::working::Working;
 
 /// Which way the moment bends the joint.
@@ -51,6 +52,49 @@ pub struct Component {
     pub working: Arc<Working>,
 }
 
+impl Component {
+    /// For a weld: the throat that `force` needs on it, which is in proportion, at least `least`.
+    pub fn needed_throat(&self, force: Force, least: Length) -> Option<Length> {
+        if !self.id.contains("-weld") {
+            return None;
+        }
+        let throat = self.working.steps.iter().find(|step| step.symbol == "a")?.value.value;
+        let needed = Length(throat) * (force.abs() / self.resistance);
+        needed.get().is_finite().then(|| needed.max(least))
+    }
+}
+
+/// A spring of the joint's rotational stiffness, Table 6.11.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Spring {
+    /// In words: "column web panel in shear, k1".
+    pub title: String,
+    /// k; `None` where it is infinitely stiff.
+    pub k: Option<Length>,
+}
+
+/// The rotational stiffness in one sense and for one β, and what classifies a joint besides.
+#[derive(Clone, Debug)]
+#[allow(non_snake_case, reason = "the standard's symbols")]
+pub struct JointStiffness {
+    /// S_j,ini.
+    pub initial: Stiffness,
+    /// z.
+    pub lever_arm: Length,
+    /// The springs in a row that make it.
+    pub springs: Vec<Spring>,
+    /// Whether the supporting side is a column.
+    pub to_column: bool,
+    /// I_b of the supported member.
+    pub I_b: SecondMoment,
+    /// The moment from which the joint is of full strength, 5.2.3.3.
+    pub full_strength: Moment,
+    /// What 6.4.2 lets assume of the rotation capacity, one sentence.
+    pub rotation: String,
+    /// The working.
+    pub working: Arc<Working>,
+}
+
 /// The moment resistance in one sense and for one β.
 #[derive(Clone, Debug)]
 pub struct MomentResistance {
@@ -70,6 +114,8 @@ pub struct MomentResistance {
     pub rows: Vec<RowForce>,
     /// Every component.
     pub components: Vec<Component>,
+    /// Its rotational stiffness; `None` where no row is in tension.
+    pub stiffness: Option<Arc<JointStiffness>>,
     /// Notes that the reader needs: "row 1 passes 1.9 Ft,Rd: lower rows limited in proportion".
     pub notes: Vec<String>,
 }
@@ -156,7 +202,7 @@ pub struct CaseResult {
     /// The moment resistance of this case (its sense and β); `None` if M is not stated or nothing could be computed.
     pub moment: Option<Arc<MomentResistance>>,
     /// The shear resistance beside this case's bolt tensions; `None` if V is not stated.
-    pub shear: Option<ShearResistance>,
+    pub shear: Option<Arc<ShearResistance>>,
 }
 
 /// The shear resistance of a joint, with the bolts' tension at its full moment resistance.
@@ -178,7 +224,7 @@ pub struct Assessment {
     /// M_j,Rd with tension at the bottom.
     pub sagging: Option<Arc<MomentResistance>>,
     /// V_Rd.
-    pub shear: Option<ShearResistance>,
+    pub shear: Option<Arc<ShearResistance>>,
     /// Results for each load case.
     pub cases: Vec<CaseResult>,
     /// What keeps it from being a proof.
@@ -190,6 +236,11 @@ pub struct Assessment {
 }
 
 impl Assessment {
+    /// Whether something that is not known might make the joint stronger or stiffer than it was computed.
+    pub fn at_bound(&self) -> bool {
+        self.gaps.iter().any(|gap| matches!(gap, Gap::LowerBound(_)))
+    }
+
     /// Whether the joint carries everything that is required of it.
     pub fn carries(&self) -> State {
         let verdicts = || self.cases.iter().flat_map(|case| &case.verdicts);

@@ -67,6 +67,7 @@ impl From<Failed> for Failure {
         match failed {
             Failed::Exchange(unreadable) => Self::Sentence(unreadable.to_string()),
             Failed::Schedule(diagnostic) | Failed::Rules(diagnostic) => Self::Excerpt(diagnostic),
+            Failed::Annex(why) => Self::new(why),
         }
     }
 }

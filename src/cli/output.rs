@@ -77,16 +77,16 @@ impl Output {
         Options { width, colour, all }
     }
 
-    /// Writes the report.
-    pub fn write(self, report: &str) -> Result<(), Failure> {
+    /// Lets the report write itself.
+    pub fn write(self, report: impl FnOnce(&mut dyn Write) -> io::Result<()>) -> Result<(), Failure> {
         match self.to {
             To::Stdout => to_stdout(report),
             To::Device(path) => {
                 let written = fs::OpenOptions::new().write(true).open(&path);
-                written.and_then(|mut file| file.write_all(report.as_bytes())).map_err(|why| failed(&path, &why))
+                written.and_then(|mut file| report(&mut file)).map_err(|why| failed(&path, &why))
             }
             To::File { mut beside, path } => {
-                beside.write_all(report.as_bytes()).map_err(|why| failed(&path, &why))?;
+                report(&mut beside).map_err(|why| failed(&path, &why))?;
                 beside.persist(&path).map(|_| ()).map_err(|why| failed(&path, &why.error))
             }
         }
@@ -114,10 +114,15 @@ fn failed(path: &Path, why: &io::Error) -> Failure {
     Failure::io("write", path, why)
 }
 
+/// Writes a text to stdout.
+pub fn text_to_stdout(text: &str) -> Result<(), Failure> {
+    to_stdout(|to| to.write_all(text.as_bytes()))
+}
+
 /// Writes to stdout; a reader who has seen enough and closed the pipe is no failure.
-pub fn to_stdout(text: &str) -> Result<(), Failure> {
+fn to_stdout(report: impl FnOnce(&mut dyn Write) -> io::Result<()>) -> Result<(), Failure> {
     let mut stdout = io::stdout().lock();
-    match stdout.write_all(text.as_bytes()).and_then(|()| stdout.flush()) {
+    match report(&mut stdout).and_then(|()| stdout.flush()) {
         Err(why) if why.kind() != io::ErrorKind::BrokenPipe => Err(Failure::because("can't write the report", why)),
         _ => Ok(()),
     }

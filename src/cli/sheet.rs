@@ -26,6 +26,9 @@ pub struct SheetArgs {
     /// A folder of rule files that stand in for the built-in ones of the same name.
     #[arg(long, value_name = "FOLDER")]
     pub rules: Option<PathBuf>,
+    /// The partial factors and choices of a national annex: a file of annexes/ in the rules, without ".toml".
+    #[arg(long, value_name = "NAME")]
+    pub annex: Option<String>,
     /// How to write the sheet.
     #[arg(long, value_enum, default_value_t = Format::Text)]
     format: Format,

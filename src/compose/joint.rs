@@ -1,31 +1,40 @@
 //! One joint's review: resistance, required actions, checks, findings, outcome.
 
+use std::collections::HashMap;
+use std::sync::{Arc, Mutex, MutexGuard, PoisonError};
+
 use super::{Computed, Sources, brief, sketch};
+use crate::assess::classification::classify;
 use crate::assess::end_plate::{BOUND_BY_OPPOSITE, BOUND_BY_TENSION};
-use crate::assess::{About, Assessment, Component, Gap, Sense, State, Verdict};
-use crate::intent::ScheduledJoint;
+use crate::assess::{About, Assessment, Component, Gap, MomentResistance, Sense, ShearResistance, State, Verdict};
+use crate::intent::{JointClass, ScheduledJoint};
 use crate::joints::Joint;
 use crate::origin::{Ask, Missing};
 use crate::review::{
     CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowBasis, RowResult,
+    StiffnessResult,
 };
+use crate::units::{Length, Moment, kn};
 
 /// A joint of the steel.
 pub fn review(
     sources: &Sources<'_>,
+    checks: &Checks,
     joint: &Joint,
     scheduled: Option<&ScheduledJoint>,
-    computed: &Computed,
+    mut computed: Computed,
     mut findings: Vec<Finding>,
 ) -> JointReview {
     let steel = sources.steelwork;
+    let inputs = computed.detailed.as_mut().map(|a| std::mem::take(&mut a.inputs)).unwrap_or_default();
+    let computed = &computed;
     let assessment = computed.detailed.as_ref();
     let member = |index: Option<usize>| index.and_then(|i| steel.members.get(i)).map(brief::member);
     let missing = missing(sources, joint, scheduled, computed);
     findings.sort_by_key(|finding| finding.severity);
     let outcome = outcome(assessment, &findings, &missing);
     let intended = computed.intended.as_ref().and_then(|i| i.as_ref().ok());
-    let leading = assessment.map(|a| leading(a, scheduled)).unwrap_or_default();
+    let leading = assessment.map(|a| leading(a, scheduled, checks)).unwrap_or_default();
     JointReview {
         mark: scheduled.and_then(|s| s.mark.clone()).unwrap_or_else(|| joint.mark.clone()),
         kind: joint.kind.word().into(),
@@ -43,14 +52,12 @@ pub fn review(
         rows: leading.rows,
         row_basis: leading.row_basis,
         shear_case: leading.shear_case,
+        stiffness: leading.stiffness,
         checks: leading.checks,
         findings,
         missing,
         assumptions: assessment.map(assumptions).unwrap_or_default(),
-        inputs: (assessment.iter())
-            .flat_map(|a| &a.inputs)
-            .map(|i| (i.name.clone(), i.value.clone(), i.origin.to_string()))
-            .collect(),
+        inputs: inputs.into_iter().map(|i| (i.name, i.value, i.origin.printed())).collect(),
         difference: intended
             .and_then(|(meant, _)| Some((brief::lines(meant), brief::lines(joint.layout.as_ref().ok()?)))),
         sketch: sketch::sketch(steel, joint),
@@ -90,7 +97,8 @@ pub fn without_steel(scheduled: &ScheduledJoint, kind: &str, findings: Vec<Findi
         rows: Vec::new(),
         row_basis: None,
         shear_case: None,
-        checks: Vec::new(),
+        stiffness: None,
+        checks: Arc::default(),
         findings,
         missing: Vec::new(),
         assumptions: Vec::new(),
@@ -239,10 +247,82 @@ struct Leading {
     rows: Vec<RowResult>,
     row_basis: Option<RowBasis>,
     shear_case: Option<String>,
-    checks: Vec<CheckResult>,
+    stiffness: Option<StiffnessResult>,
+    checks: Arc<[CheckResult]>,
 }
 
-fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leading {
+/// Checks of like joints: the same resistances held against the same actions.
+pub struct Checks {
+    /// Of a fillet.
+    least_throat: Length,
+    known: Mutex<Known>,
+}
+
+/// By the addresses of the resistances.
+type Known = HashMap<(usize, usize), Vec<(Held, Arc<[CheckResult]>)>>;
+
+/// What checks are made from. Resistances are the same if they are one; they are kept here, so that no other takes its
+/// address.
+struct Held {
+    moment: Option<Arc<MomentResistance>>,
+    shear: Option<Arc<ShearResistance>>,
+    /// The share of the moment resistance that is used; the required moment, kNm, and shear, kN.
+    actions: [Option<f64>; 3],
+}
+
+impl Checks {
+    /// None yet.
+    pub fn new(least_throat: Length) -> Self {
+        Self { least_throat, known: Mutex::default() }
+    }
+
+    fn of(&self, held: Held) -> Arc<[CheckResult]> {
+        let bits = |held: &Held| held.actions.map(|action| action.map(f64::to_bits));
+        let same = |(other, _): &&(Held, _)| bits(other) == bits(&held);
+        let key = (held.moment.as_ref().map_or(0, address), held.shear.as_ref().map_or(0, address));
+        if let Some((_, checks)) = self.locked().get(&key).and_then(|entries| entries.iter().find(same)) {
+            return checks.clone();
+        }
+        let checks = held.checks(self.least_throat);
+        self.locked().entry(key).or_default().push((held, checks.clone()));
+        checks
+    }
+
+    fn locked(&self) -> MutexGuard<'_, Known> {
+        // A panic elsewhere leaves the entries whole: each is pushed in one piece.
+        self.known.lock().unwrap_or_else(PoisonError::into_inner)
+    }
+}
+
+fn address<T>(of: &Arc<T>) -> usize {
+    Arc::as_ptr(of).addr()
+}
+
+impl Held {
+    fn checks(&self, least_throat: Length) -> Arc<[CheckResult]> {
+        let [share, moment_knm, shear_kn] = self.actions;
+        let mut checks = Vec::new();
+        if let Some(moment) = &self.moment {
+            let title = match moment.sense {
+                Sense::Hogging => "moment, tension at the top",
+                Sense::Sagging => "moment, tension at the bottom",
+            };
+            checks.push(check("moment", title, "EN 1993-1-8:2005 6.2.7", moment.moment.knm(), moment_knm, "kNm"));
+            // At a smaller moment each component carries its share of what it carries at the full one.
+            checks.extend(
+                moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()), least_throat)),
+            );
+        }
+        if let Some(shear) = &self.shear {
+            let resistance = shear.shear.kn();
+            checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", resistance, shear_kn, "kN"));
+            checks.extend(shear.components.iter().map(|c| component(c, shear_kn, least_throat)));
+        }
+        checks.into()
+    }
+}
+
+fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>, checks: &Checks) -> Leading {
     let use_of = |verdicts: &[Verdict], about: About| {
         verdicts.iter().find(|v| v.about == about).and_then(|v| v.utilisation).unwrap_or(0.0)
     };
@@ -271,35 +351,62 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>) -> Leadi
         notes: m.notes.clone(),
     });
 
-    let mut checks = Vec::new();
+    let stated = by_moment.and_then(|case| scheduled?.cases.get(case.case)?.moment);
+    let stiffness = moment.and_then(|moment| stiffness(assessment, moment, scheduled, stated));
     let share = by_moment.map(|case| use_of(&case.verdicts, About::Moment));
-    if let Some(moment) = moment {
-        let required = by_moment.and_then(|case| scheduled?.cases.get(case.case)?.moment).map(|m| m.knm().abs());
-        let title = match moment.sense {
-            Sense::Hogging => "moment, tension at the top",
-            Sense::Sagging => "moment, tension at the bottom",
-        };
-        checks.push(check("moment", title, "EN 1993-1-8:2005 6.2.7", moment.moment.knm(), required, "kNm"));
-        // At a smaller moment each component carries its share of what it carries at the full one.
-        checks.extend(moment.components.iter().map(|c| component(c, share.map(|s| s * c.at_full.kn()))));
-    }
+    let moment_knm = stated.map(|m| m.knm().abs());
     let shear_case = assessment
         .cases
         .iter()
         .max_by(|a, b| use_of(&a.verdicts, About::Shear).total_cmp(&use_of(&b.verdicts, About::Shear)));
-    if let Some(shear) = shear_case.and_then(|case| case.shear.as_ref()).or(assessment.shear.as_ref()) {
-        let verdict = shear_case.and_then(|case| case.verdicts.iter().find(|v| v.about == About::Shear));
-        let required = verdict.and_then(|v| v.required);
-        checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", shear.shear.kn(), required, "kN"));
-        checks.extend(shear.components.iter().map(|c| component(c, required)));
-    }
+    let shear = shear_case.and_then(|case| case.shear.as_ref()).or(assessment.shear.as_ref());
+    let verdict = shear_case.and_then(|case| case.verdicts.iter().find(|v| v.about == About::Shear));
+    let actions = [share, moment_knm, verdict.and_then(|v| v.required)];
+    let checks = checks.of(Held { moment: moment.cloned(), shear: shear.cloned(), actions });
     let shear_case = shear_case.filter(|case| case.shear.is_some()).and_then(|case| named(case.case));
-    Leading { rows, row_basis, shear_case, checks }
+    Leading { rows, row_basis, shear_case, stiffness, checks }
 }
 
-fn component(component: &Component, action: Option<f64>) -> CheckResult {
+fn stiffness(
+    assessment: &Assessment,
+    moment: &MomentResistance,
+    scheduled: Option<&ScheduledJoint>,
+    required: Option<Moment>,
+) -> Option<StiffnessResult> {
+    let joint = moment.stiffness.as_ref()?;
+    let frame = scheduled.map(|s| s.frame).unwrap_or_default();
+    let classified = classify(moment, joint, &frame, required);
+    Some(StiffnessResult {
+        sense: match moment.sense {
+            Sense::Hogging => "tension at the top",
+            Sense::Sagging => "tension at the bottom",
+        },
+        beta: moment.beta,
+        initial: joint.initial.knm_per_rad(),
+        at_required: classified.at_required.map(|s| s.knm_per_rad()),
+        lower_bound: assessment.at_bound(),
+        lever_arm_mm: joint.lever_arm.get(),
+        springs: joint.springs.iter().map(|spring| (spring.title.clone(), spring.k.map(|k| k.get()))).collect(),
+        rigid_from: classified.limits.map(|(rigid, _)| rigid.knm_per_rad()),
+        pinned_up_to: classified.limits.map(|(_, pinned)| pinned.knm_per_rad()),
+        class: match classified.by_stiffness {
+            Ok(class) => class.word().into(),
+            Err(why) => format!("not stated: {why}"),
+        },
+        assumed: frame.class.map(JointClass::word),
+        strength: classified.by_strength,
+        rotation: joint.rotation.clone(),
+        notes: classified.notes,
+        working: classified.working.into(),
+    })
+}
+
+fn component(component: &Component, action: Option<f64>, least_throat: Length) -> CheckResult {
     let mut result = check(&component.id, &component.title, component.clause, component.resistance.kn(), action, "kN");
     result.working = component.working.clone();
+    let force = action.map_or(component.at_full, kn);
+    result.needed_throat_mm =
+        component.needed_throat(force, least_throat).map(Length::get).filter(|_| force.get() > 0.0);
     result
 }
 
@@ -318,6 +425,7 @@ fn check(id: &str, title: &str, clause: &str, resistance: f64, action: Option<f6
             Some(_) => "not met",
             None => "unproven",
         },
+        needed_throat_mm: None,
         working: Default::default(),
     }
 }

@@ -15,7 +15,7 @@ use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
 use crate::joints::{Joint, Joints, Layout};
 use crate::origin::{Missing, Problem};
 use crate::review::{Basis, Counts, JointReview, Outcome, Review, Survey};
-use crate::rulebook::{ModeOne, RowForces, Rulebook};
+use crate::rulebook::{Alpha, ModeOne, RowForces, Rulebook};
 use crate::shop::Steelwork;
 
 /// Everything that was read and recognised.
@@ -38,13 +38,16 @@ pub struct Sources<'a> {
 
 /// The review of everything.
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
-    let solver = Solver::new(sources.rulebook);
+    let (solver, checks) = (Solver::new(sources.rulebook), joint::Checks::new(sources.rulebook.welds.min_throat));
     let found = (0..sources.joints.joints.len()).into_par_iter();
-    let mut joints: Vec<JointReview> = found.map(|index| sources.found(&solver, index)).collect();
+    let (mut joints, sha256) = rayon::join(
+        || found.map(|index| sources.found(&solver, &checks, index)).collect::<Vec<JointReview>>(),
+        || Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect(),
+    );
     let pairing = sources.pairing;
     joints.extend(pairing.not_found.iter().filter_map(|&index| sources.without_steel(index, false)));
     joints.extend(pairing.unclear.iter().filter_map(|&index| sources.without_steel(index, true)));
-    joints.sort_by_cached_key(|joint| natural(&joint.mark));
+    joints.par_sort_by_cached_key(|joint| natural(&joint.mark));
 
     let ends = |outcome| joints.iter().filter(|joint| joint.outcome == outcome).count();
     let resistance = |joint: &&JointReview| {
@@ -69,7 +72,7 @@ pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
     Review {
         file: file.to_owned(),
         exchange: sources.exchange.form.clone(),
-        sha256: Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect(),
+        sha256,
         schedule: (!sources.schedules.is_empty()).then(|| sources.schedules.join(", ")),
         basis: basis(sources.rulebook),
         counts,
@@ -125,9 +128,18 @@ fn basis(rulebook: &Rulebook) -> Basis {
                 }
                 .into(),
             ),
+            said("table of steel strengths", rulebook.steel_table().to_owned()),
             said(
                 "strength of rolled sections",
                 if settings.strength_by_flange { "by flange thickness" } else { "by each element's thickness" }.into(),
+            ),
+            said(
+                "α beside stiffeners and flanges",
+                match settings.alpha {
+                    Alpha::Chart => "Figure 6.11",
+                    Alpha::Draft2024 => "formula of a draft of EN 1993-1-8:2024, at most 8",
+                }
+                .into(),
             ),
             said("α of Figure 6.11, at most", format!("{}", settings.alpha_max)),
             said("rows carry shear only below", format!("{} of the beam's depth", settings.shear_only_below)),
@@ -205,10 +217,11 @@ impl<'a> Sources<'a> {
             let assessment = assess(&meant);
             Ok((meant, assessment))
         });
-        Computed { detailed: Some(assess(layout)), intended }
+        let asked = self.detail(scheduled).and_then(|detail| end_plate::with_category(layout, detail, self.rulebook));
+        Computed { detailed: Some(assess(asked.as_ref().unwrap_or(layout))), intended }
     }
 
-    fn found(&self, solver: &Solver<'_>, index: usize) -> JointReview {
+    fn found(&self, solver: &Solver<'_>, checks: &joint::Checks, index: usize) -> JointReview {
         let joint = &self.joints.joints[index];
         let scheduled = self.scheduled(index);
         let computed = self.compute(solver, joint, scheduled);
@@ -225,7 +238,7 @@ impl<'a> Sources<'a> {
             unclear: false,
         };
         let findings = findings::look(&context);
-        joint::review(self, joint, scheduled, &computed, findings)
+        joint::review(self, checks, joint, scheduled, computed, findings)
     }
 
     fn without_steel(&self, index: usize, unclear: bool) -> Option<JointReview> {

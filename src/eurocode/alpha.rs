@@ -38,3 +38,14 @@ pub fn alpha(lambda_1: f64, lambda_2: f64, alpha_max: f64) -> f64 {
     }
     low
 }
+
+/// α by the formula of a draft of EN 1993-1-8:2024 (the published standard not seen):
+/// 4 + 1.67 (e/m) (m/m_2)^0.67, at least 4 + 1.25 e/m, at most 8. NaN in, NaN out.
+pub fn alpha_of_draft(lambda_1: f64, lambda_2: f64) -> f64 {
+    if !(lambda_1 > 0.0 && lambda_2 > 0.0) {
+        return f64::NAN;
+    }
+    let (e_by_m, m_by_m_2) = (1.0 / lambda_1 - 1.0, lambda_1 / lambda_2);
+    let alpha = (4.0 + 1.67 * e_by_m * m_by_m_2.powf(0.67)).max(4.0 + 1.25 * e_by_m);
+    alpha.min(8.0)
+}

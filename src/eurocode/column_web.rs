@@ -1,7 +1,7 @@
 //! Column web in transverse tension and compression: EN 1993-1-8:2005 6.2.6.2, 6.2.6.3, Table 6.3.
 
 use super::{E, Resistance};
-use crate::units::{Area, Length, Stress};
+use crate::units::{Area, Force, Length, Moment, SecondMoment, Stress};
 use crate::working::Working;
 use crate::{given, step};
 
@@ -63,11 +63,29 @@ pub struct Compression {
     pub k_wc: f64,
 }
 
-/// F_c,wc,Rd: crushing and buckling of the unstiffened web, 6.2.6.2 (6.9); the first value is the smaller, the second is
-/// crushing alone (for a stiffened web).
-pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance, Resistance) {
-    let mut w = Working::default();
-    let Compression { t_fb, a_p, t_fc, s, t_p, projection, to_end, t_wc, d_wc, f_y_wc, A_vc, beta, k_wc } = *c;
+/// k_wc, 6.2.6.2(2) (6.14), from the column's axial force (positive in tension) and moment at the joint: the largest
+/// compression in the web beside the root radius, d_wc/2 from the column's axis.
+pub fn k_wc(
+    w: &mut Working,
+    (N_col_Ed, M_col_Ed): (Force, Moment),
+    (A_c, I_c): (Area, SecondMoment),
+    d_wc: Length,
+    f_y_wc: Stress,
+) -> f64 {
+    given!(w, "stress along the column"; N_col_Ed, M_col_Ed, A_c, I_c, d_wc, f_y_wc);
+    step!(w, "6.2.6.2(2)", sigma_com_Ed = M_col_Ed.abs() / (I_c / (0.5 * d_wc)) - N_col_Ed / A_c);
+    if sigma_com_Ed <= 0.7 * f_y_wc {
+        step!(w, "6.2.6.2(2), (6.14)", k_wc = 1.0);
+        k_wc
+    } else {
+        step!(w, "6.2.6.2(2), (6.14)", k_wc = (1.7 - sigma_com_Ed / f_y_wc).max(0.0));
+        k_wc
+    }
+}
+
+/// b_eff,c,wc of (6.11), no further than the column's end.
+pub fn b_eff(w: &mut Working, c: &Compression) -> Length {
+    let Compression { t_fb, a_p, t_fc, s, t_p, projection, to_end, .. } = *c;
     given!(w, "column web at the compression flange"; t_fb, a_p, t_fc, s, t_p, projection);
     // 45° through the end plate, both ways; below the flange no further than the plate reaches.
     step!(w, "leg of the fillets", leg = 2.0_f64.sqrt() * a_p);
@@ -75,6 +93,15 @@ pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance
     step!(w, "6.2.6.2, (6.11)", b_eff_full = t_fb + spread + 5.0 * (t_fc + s));
     let past_end = to_end.map_or(Length::ZERO, |to_end| (0.5 * b_eff_full - to_end).max(Length::ZERO));
     step!(w, "no web past the column's end", b_eff = (b_eff_full - past_end).max(0.5 * b_eff_full));
+    b_eff
+}
+
+/// F_c,wc,Rd: crushing and buckling of the unstiffened web, 6.2.6.2 (6.9); the first value is the smaller, the second is
+/// crushing alone (for a stiffened web).
+pub fn compression(c: &Compression, gamma_M0: f64, gamma_M1: f64) -> (Resistance, Resistance) {
+    let mut w = Working::default();
+    let Compression { t_wc, d_wc, f_y_wc, A_vc, beta, k_wc, .. } = *c;
+    let b_eff = b_eff(&mut w, c);
     let omega = omega(&mut w, beta, b_eff, t_wc, A_vc);
     given!(w, "column web"; t_wc, d_wc, f_y_wc, k_wc);
     step!(w, "6.2.6.2, (6.13c)", lambda_p = 0.932 * ((b_eff / t_wc) * (d_wc / t_wc) * (f_y_wc / E)).sqrt());

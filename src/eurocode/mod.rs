@@ -7,10 +7,13 @@
 pub mod alpha;
 pub mod beam;
 pub mod bolts;
+pub mod classification;
 pub mod column_web;
 pub mod effective_length;
 pub mod haunch;
+pub mod slip;
 pub mod stiffeners;
+pub mod stiffness;
 pub mod t_stub;
 pub mod web_panel;
 pub mod welds;

@@ -1,15 +1,37 @@
 //! What the schema asks of a graph as a whole, whatever form it was read from.
 
+use std::collections::HashSet;
+use std::ops::Range;
+
+use foldhash::fast::RandomState;
+use rayon::prelude::*;
+
 use super::problems::Problems;
 use super::scalar::quoted;
 use super::schema::{Attribute, Base, Kind};
 use super::store::Cell;
-use super::{Entities, Entity};
+use super::{Entities, Entity, Id};
 
 /// Notes what contradicts the schema and would mislead whoever follows the graph; the graph stays as it is.
 pub(super) fn check(entities: &Entities, problems: &mut Problems) {
+    let some = || problems.without_any();
+    let all = entities.len();
+    let parts = rayon::current_num_threads().clamp(1, all / 10_000 + 1);
+    let bound = |part: usize| (all / parts * part) as u32;
+    let part = |part: usize| {
+        let end = if part + 1 == parts { all as u32 } else { bound(part + 1) };
+        let mut problems = some();
+        check_values(entities, bound(part)..end, &mut problems);
+        problems
+    };
+    let values: Vec<Problems> = (0..parts).into_par_iter().map(part).collect();
+    values.into_iter().for_each(|more| problems.absorb(more));
+    check_global_ids(entities, problems);
+}
+
+fn check_values(entities: &Entities, ids: Range<u32>, problems: &mut Problems) {
     let relationship = entities.schema().find("IfcRelationship");
-    for entity in entities.all() {
+    for entity in ids.map(|id| entities.get(Id(id))) {
         let is_relation = relationship.is_some_and(|asked| entities.schema().is_subtype(entity.class_id(), asked));
         for (attribute, cell) in entity.known_cells() {
             if !cell.is_absent() {
@@ -22,7 +44,6 @@ pub(super) fn check(entities: &Entities, problems: &mut Problems) {
             }
         }
     }
-    check_global_ids(entities, problems);
 }
 
 fn is_end(attribute: &Attribute) -> bool {
@@ -67,9 +88,14 @@ fn check_value(entity: Entity, attribute: &Attribute, kind: Kind, cell: Cell, pr
 /// hand-made files often lack it, and nothing here needs theirs.
 fn check_global_ids(entities: &Entities, problems: &mut Problems) {
     let mut given: Vec<(&str, Entity)> = Vec::new();
+    let mut known: HashSet<&str, RandomState> = HashSet::default();
+    let mut is_repeated = false;
     for entity in entities.of_class("IfcRoot") {
         match entity.text("GlobalId") {
-            Some(guid) if is_global_id(guid) => given.push((guid, entity)),
+            Some(guid) if is_global_id(guid) => {
+                given.push((guid, entity));
+                is_repeated |= !known.insert(guid);
+            }
             Some(guid) => problems.add("GlobalId that is none", entity.spot(), || {
                 format!(
                     "the GlobalId {} of {} is not 22 characters of 0-9 A-Z a-z _ $ from 0 to 3",
@@ -83,6 +109,9 @@ fn check_global_ids(entities: &Entities, problems: &mut Problems) {
             }
             None => {}
         }
+    }
+    if !is_repeated {
+        return;
     }
     given.sort_by_key(|(guid, entity)| (*guid, entity.id));
     for same in given.chunk_by(|(a, _), (b, _)| a == b) {

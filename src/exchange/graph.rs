@@ -166,14 +166,53 @@ impl Entities {
         self.extras.entry(id).or_default().push((name.into(), value));
     }
 
-    /// Replaces waiting references by their targets.
-    pub(super) fn settle(&mut self, targets: &[Option<Id>]) {
-        self.store.settle(targets);
+    /// Replaces waiting references by their targets; whether some have none, which are left as they are.
+    pub(super) fn settle(&mut self, target: impl Fn(Id) -> Option<Id>) -> bool {
+        let mut is_missing = self.store.settle(&target);
         for (_, value) in self.extras.values_mut().flatten() {
-            super::store::settle(value, targets);
+            is_missing |= !value.settle(&target);
+        }
+        is_missing
+    }
+
+    /// Makes the references absent that still wait, or takes them out of the list they stand in.
+    pub(super) fn drop_waiting(&mut self) {
+        self.store.drop_waiting();
+        for (_, value) in self.extras.values_mut().flatten() {
+            value.drop_waiting();
             if value.is_list() {
                 *value = self.store.without_gaps(*value);
             }
+        }
+    }
+
+    /// Calls with each reference that an entity holds.
+    pub(super) fn each_reference(&self, from: Id, with: &mut impl FnMut(Id)) {
+        let cells = self.cells(from).iter().chain(self.extras(from).iter().map(|(_, cell)| cell));
+        cells.for_each(|cell| self.store.each_entity(*cell, with));
+    }
+
+    /// Takes over all entities of another graph of the same schema behind its own; what they refer to becomes what `id`
+    /// makes of it.
+    pub(super) fn absorb(&mut self, other: Self, id: impl Fn(Id) -> Id) {
+        self.pointers.take();
+        let base = self.nodes.len() as u32;
+        let classes: Vec<ClassId> = other.strangers.iter().map(|name| self.class_id(name)).collect();
+        let (cells, labels) = (self.store.next() as u32, self.labels.len() as u32);
+        let moved = self.store.absorb(&other.store, &id);
+        self.labels.reserve_exact(other.labels.len());
+        self.labels.push_str(&other.labels);
+        self.nodes.reserve_exact(other.nodes.len());
+        self.nodes.extend(other.nodes.into_iter().map(|node| {
+            let stranger = usize::from(node.class).checked_sub(self.schema.len()).and_then(|index| classes.get(index));
+            let class = stranger.copied().unwrap_or(node.class);
+            Node { class, label: node.label + labels, values: node.values + cells, ..node }
+        }));
+        for (of, extras) in other.extras {
+            let store = &mut self.store;
+            let extras = extras.into_iter().map(|(name, cell)| (name, store.moved(&other.store, cell, &moved, &id)));
+            let extras = extras.collect();
+            self.extras.insert(Id(of.0 + base), extras);
         }
     }
 

@@ -23,6 +23,8 @@ pub struct Limits {
     pub record: usize,
     /// Bytes of one string of STEP as it is written (1 MiB): a longer one has lost its closing quote.
     pub string: usize,
+    /// Bytes that are worth a thread of their own (512 KiB). What is read does not depend on it.
+    pub part: usize,
 }
 
 impl Default for Limits {
@@ -35,6 +37,7 @@ impl Default for Limits {
             nesting: 64,
             record: 1 << 26,
             string: 1 << 20,
+            part: 1 << 19,
         }
     }
 }
@@ -51,7 +54,13 @@ impl Limits {
             nesting: self.nesting.min(most.nesting),
             record: self.record.min(most.record),
             string: self.string.min(most.string),
+            part: self.part.min(most.part),
         }
+    }
+
+    /// Into how many parts so many bytes are cut, to be read at the same time.
+    pub(super) fn parts(self, bytes: usize) -> usize {
+        (bytes / self.part.max(1)).min(rayon::current_num_threads().clamp(2, 16)).max(1)
     }
 
     /// Why a file is not read.

@@ -11,6 +11,7 @@ mod problems;
 mod scalar;
 mod schema;
 mod sniff;
+mod source;
 mod step;
 mod store;
 mod value;

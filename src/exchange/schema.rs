@@ -121,6 +121,8 @@ pub(super) struct Schema {
     classes: Vec<Class>,
     by_name: HashTable<(&'static str, ClassId)>,
     by_exact_name: HashTable<(&'static str, ClassId)>,
+    /// As STEP spells them.
+    by_upper_name: HashTable<(Box<str>, ClassId)>,
     types: Vec<(&'static str, Kind)>,
     types_by_name: HashTable<(&'static str, TypeId)>,
 }
@@ -146,6 +148,11 @@ impl Schema {
 
     /// The entity of that name, in whatever case.
     pub fn find(&self, name: &str) -> Option<ClassId> {
+        // the two usual spellings first, because they are found sooner
+        let upper = || self.by_upper_name.find(exact_hash(name), |(known, _)| **known == *name);
+        if let Some(class) = self.find_exact(name).or_else(|| upper().map(|(_, class)| *class)) {
+            return Some(class);
+        }
         self.by_name.find(hash(name), |(known, _)| known.eq_ignore_ascii_case(name)).map(|(_, class)| *class)
     }
 
@@ -157,11 +164,10 @@ impl Schema {
 
     /// The entity or the defined type of that name, in whatever case.
     pub fn named(&self, name: &str) -> Named {
-        let hash = hash(name);
-        if let Some((_, class)) = self.by_name.find(hash, |(known, _)| known.eq_ignore_ascii_case(name)) {
-            return Named::Class(*class);
+        if let Some(class) = self.find(name) {
+            return Named::Class(class);
         }
-        let known = self.types_by_name.find(hash, |(known, _)| known.eq_ignore_ascii_case(name));
+        let known = self.types_by_name.find(hash(name), |(known, _)| known.eq_ignore_ascii_case(name));
         known.and_then(|(_, id)| Some(Named::Type(*id, self.types.get(usize::from(*id))?.1))).unwrap_or(Named::Neither)
     }
 
@@ -217,6 +223,7 @@ impl Schema {
             classes: Vec::new(),
             by_name: HashTable::new(),
             by_exact_name: HashTable::new(),
+            by_upper_name: HashTable::new(),
             types: Vec::new(),
             types_by_name: HashTable::new(),
         };
@@ -227,6 +234,9 @@ impl Schema {
             let entry = (name, number as ClassId);
             schema.by_name.insert_unique(hash(name), entry, |(name, _)| hash(name));
             schema.by_exact_name.insert_unique(exact_hash(name), entry, |(name, _)| exact_hash(name));
+            let (upper, hash) =
+                (Box::<str>::from(name.to_ascii_uppercase()), |(name, _): &(Box<str>, _)| exact_hash(name));
+            schema.by_upper_name.insert_unique(exact_hash(&upper), (upper, number as ClassId), hash);
         }
         for line in lines().filter_map(|line| line.strip_prefix('=')) {
             let (name, kind) = line.split_once(':').expect("a defined type and its kind");

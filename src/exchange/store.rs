@@ -3,9 +3,10 @@
 
 use std::collections::HashMap;
 
+use super::Id;
 use super::schema::{Schema, TypeId};
 use super::value::{Inner, List, Value, View};
-use super::{Id, waiting};
+use super::waiting::WAITING;
 
 /// A value in a [`Store`].
 ///
@@ -61,6 +62,25 @@ impl Cell {
         (self.case() == Some(Case::Entity)).then(|| Id(self.index()))
     }
 
+    /// Replaces a waiting reference by its target; whether it has one.
+    pub fn settle(&mut self, target: impl Fn(Id) -> Option<Id>) -> bool {
+        match self.to_entity() {
+            Some(id) if id.0 >= WAITING => match target(id) {
+                Some(target) => *self = Self::entity(target),
+                None => return false,
+            },
+            _ => {}
+        }
+        true
+    }
+
+    /// Makes it absent if it is a reference that still waits.
+    pub fn drop_waiting(&mut self) {
+        if self.to_entity().is_some_and(|id| id.0 >= WAITING) {
+            *self = Self::ABSENT;
+        }
+    }
+
     pub fn is_list(self) -> bool {
         matches!(self.case(), Some(Case::List | Case::WideList))
     }
@@ -101,6 +121,14 @@ impl Cell {
     fn index(self) -> u32 {
         self.0 as u32
     }
+}
+
+/// Where the values of another store are that was taken over.
+pub(super) struct Moved {
+    cells: usize,
+    text: usize,
+    /// The numbers of the types that the schema does not know.
+    types: Vec<TypeId>,
 }
 
 /// All values.
@@ -286,17 +314,66 @@ impl Store {
         }
     }
 
-    /// Replaces waiting references by their targets; those to nothing become absent, or leave the list they stood in.
-    pub fn settle(&mut self, targets: &[Option<Id>]) {
+    /// Replaces waiting references by their targets; whether some have none, which are left as they are.
+    pub fn settle(&mut self, target: impl Fn(Id) -> Option<Id>) -> bool {
+        let mut all = true;
         for cell in &mut self.cells {
-            settle(cell, targets);
+            all &= cell.settle(&target);
         }
-        if targets.iter().any(Option::is_none) {
-            for at in 0..self.cells.len() {
-                let list = self.cells[at];
-                if list.is_list() {
-                    self.cells[at] = self.without_gaps(list);
-                }
+        !all
+    }
+
+    /// Makes the references absent that still wait, or takes them out of the list they stand in.
+    pub fn drop_waiting(&mut self) {
+        for cell in &mut self.cells {
+            cell.drop_waiting();
+        }
+        for at in 0..self.cells.len() {
+            let list = self.cells[at];
+            if list.is_list() {
+                self.cells[at] = self.without_gaps(list);
+            }
+        }
+    }
+
+    /// Takes over all values of another store, whose references become what `id` makes of them; where they are then.
+    pub fn absorb(&mut self, other: &Self, id: &impl Fn(Id) -> Id) -> Moved {
+        let types = other.strangers.iter().map(|name| self.type_id(name)).collect();
+        let moved = Moved { cells: self.cells.len(), text: self.text.len(), types };
+        self.text.reserve_exact(other.text.len());
+        self.text.push_str(&other.text);
+        self.cells.reserve_exact(other.cells.len());
+        for cell in &other.cells {
+            let cell = self.moved(other, *cell, &moved, id);
+            self.cells.push(cell);
+        }
+        moved
+    }
+
+    /// A cell of a store that was taken over.
+    pub fn moved(&mut self, other: &Self, cell: Cell, to: &Moved, id: &impl Fn(Id) -> Id) -> Cell {
+        use Case::*;
+        let Some(case) = cell.case() else { return cell };
+        let range = |wide| other.range_of(cell, wide);
+        match case {
+            Absent | Truth | Integer => cell,
+            Entity => Cell::entity(id(Id(cell.index()))),
+            WideInteger | WideNumber => self.wide(case, &[other.out(cell, 0)]),
+            Text | WideText => {
+                let (start, length) = range(WideText);
+                self.range(to.text + start, length, Text, WideText)
+            }
+            Token | WideToken => {
+                let (start, length) = range(WideToken);
+                self.range(to.text + start, length, Token, WideToken)
+            }
+            List | WideList => {
+                let (start, length) = range(WideList);
+                self.range(to.cells + start, length, List, WideList)
+            }
+            Typed => {
+                let name = cell.length().checked_sub(self.schema.types()).and_then(|name| to.types.get(name));
+                Cell::of(Typed, name.map_or(cell.length() as TypeId, |name| *name), cell.index() + to.cells as u32)
             }
         }
     }
@@ -361,12 +438,5 @@ impl Store {
                 .and_then(|index| self.strangers.get(index))
                 .map_or("", |name| name),
         }
-    }
-}
-
-/// Replaces a waiting reference.
-pub(super) fn settle(cell: &mut Cell, targets: &[Option<Id>]) {
-    if let Some(id) = cell.to_entity() {
-        *cell = waiting::target(id, targets).map_or(Cell::ABSENT, Cell::entity);
     }
 }

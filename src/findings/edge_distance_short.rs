@@ -5,22 +5,18 @@ use super::say::mm;
 use super::{Context, Rule};
 use crate::joints::{Layout, PlateSide};
 use crate::review::{Finding, Outcome};
+use crate::rulebook::Distances;
 use crate::units::Length;
 
 const ID: &str = "edge-distance-short";
 pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rules/findings/edge-distance-short.md") };
-
-/// Least distances in hole diameters, EN 1993-1-8:2005 Table 3.3 (round holes, rows not staggered).
-const E_MIN: f64 = 1.2;
-const P_1_MIN: f64 = 2.2;
-const P_2_MIN: f64 = 2.4;
 
 /// Needs no intention and no required action: below these distances the formulas of the standard do not hold. Of each
 /// sort the shortest is told.
 fn look(context: &Context<'_>) -> Vec<Finding> {
     let Some(layout) = context.layout else { return Vec::new() };
     let Ok(hole) = &layout.bolts().hole else { return Vec::new() };
-    let findings = distances(layout).into_iter().filter_map(|(what, factor, all)| {
+    let findings = distances(layout, &context.rulebook.distances).into_iter().filter_map(|(what, factor, all)| {
         let shortest = all.into_iter().reduce(Length::min)?;
         let least = factor * hole.value;
         if !less(shortest, least, context.rulebook.tolerances.size) {
@@ -36,8 +32,8 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     findings.collect()
 }
 
-/// What, its least in hole diameters, all of its sort.
-fn distances(layout: &Layout) -> Vec<(&'static str, f64, Vec<Length>)> {
+/// What, its least in hole diameters (round holes, rows not staggered: the layout takes no others), all of its sort.
+fn distances(layout: &Layout, least: &Distances) -> Vec<(&'static str, f64, Vec<Length>)> {
     let rows = &layout.bolts().rows;
     let (top, bottom) = (rows.first(), rows.last());
     let ends = |side: &PlateSide<'_>| {
@@ -54,11 +50,11 @@ fn distances(layout: &Layout) -> Vec<(&'static str, f64, Vec<Length>)> {
         Layout::Splice(_) => (of_plate.chain(behind).collect(), Vec::new(), Vec::new()),
     };
     vec![
-        ("the end distance e1 of the bolts in the end plate", E_MIN, ends),
-        ("the end distance e1 of the bolts in the column", E_MIN, column_ends),
-        ("the edge distance e2 of the bolts in the end plate", E_MIN, plates),
-        ("the edge distance e2 of the bolts in the column flange", E_MIN, flange),
-        ("the spacing p1 of the bolt rows", P_1_MIN, pitches.collect()),
-        ("the gauge p2 of the bolts", P_2_MIN, rows.iter().map(|row| row.gauge).collect()),
+        ("the end distance e1 of the bolts in the end plate", least.end, ends),
+        ("the end distance e1 of the bolts in the column", least.end, column_ends),
+        ("the edge distance e2 of the bolts in the end plate", least.edge, plates),
+        ("the edge distance e2 of the bolts in the column flange", least.edge, flange),
+        ("the spacing p1 of the bolt rows", least.pitch, pitches.collect()),
+        ("the gauge p2 of the bolts", least.gauge, rows.iter().map(|row| row.gauge).collect()),
     ]
 }

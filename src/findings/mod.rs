@@ -9,11 +9,15 @@ mod bolt_count_differs;
 mod bolt_larger;
 mod bolt_size_unknown;
 mod bolt_smaller;
+mod bolt_too_short;
 mod compare;
 mod context;
+mod distance_beyond_greatest;
 mod edge_distance_short;
 mod gauge_differs;
 mod grade_unknown;
+mod haunch_differs;
+mod head_without_room;
 mod joint_handed_wrong;
 mod joint_not_found;
 mod joint_not_paired;
@@ -26,6 +30,8 @@ mod plate_grade_unknown;
 mod plate_size_differs;
 mod plate_thicker;
 mod plate_thinner;
+mod plate_wider_than_flange;
+mod room;
 mod row_missing;
 mod row_moved;
 mod rows;
@@ -35,8 +41,11 @@ mod section_unknown;
 mod shear_short;
 mod shortfall;
 mod stiffener_added;
+mod stiffener_in_root;
 mod stiffener_missing;
 mod stiffeners;
+mod stiffness_differs;
+mod tool_without_room;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;
@@ -66,18 +75,22 @@ pub const RULES: &[Rule] = &[
     shear_short::RULE,
     joint_handed_wrong::RULE,
     edge_distance_short::RULE,
+    head_without_room::RULE,
+    bolt_too_short::RULE,
     row_missing::RULE,
     bolt_class_lower::RULE,
     bolt_smaller::RULE,
     plate_thinner::RULE,
     weld_thinner::RULE,
     stiffener_missing::RULE,
+    haunch_differs::RULE,
     section_differs::RULE,
     plate_grade_lower::RULE,
     row_moved::RULE,
     gauge_differs::RULE,
     plate_size_differs::RULE,
     axial_force_beyond_limit::RULE,
+    stiffness_differs::RULE,
     kind_not_assessed::RULE,
     joint_not_scheduled::RULE,
     joint_not_paired::RULE,
@@ -93,6 +106,10 @@ pub const RULES: &[Rule] = &[
     plate_thicker::RULE,
     bolt_class_higher::RULE,
     bolt_larger::RULE,
+    distance_beyond_greatest::RULE,
+    plate_wider_than_flange::RULE,
+    stiffener_in_root::RULE,
+    tool_without_room::RULE,
     stiffener_added::RULE,
     not_credited::RULE,
 ];

@@ -10,6 +10,8 @@ pub(super) enum Action {
     Moment,
     Shear,
     Axial,
+    ColumnAxial,
+    ColumnMoment,
 }
 
 /// Units of a moment with their size in N·mm.
@@ -19,7 +21,7 @@ const MOMENTS: &[(&str, f64)] = &[("Nmm", 1.0), ("Nm", 1e3), ("kNmm", 1e3), ("kN
 const FORCES: &[(&str, f64)] = &[("N", 1.0), ("kN", 1e3), ("MN", 1e6)];
 
 /// What may stand between the letters of a symbol or round a unit.
-const BETWEEN: &[char] = &[' ', '_', ',', '.', '-', ':', '(', ')', '[', ']', '{', '}'];
+pub(super) const BETWEEN: &[char] = &[' ', '_', ',', '.', '-', ':', '(', ')', '[', ']', '{', '}'];
 
 /// What may stand between the factors of a unit. No slash: `kN/m` is no moment.
 const TIMES: &[char] = &['·', '⋅', '×', '*', '.', '-', '_', ' '];
@@ -31,11 +33,13 @@ impl Action {
             Self::Moment => "M_Ed",
             Self::Shear => "V_Ed",
             Self::Axial => "N_Ed",
+            Self::ColumnAxial => "N_col_Ed",
+            Self::ColumnMoment => "M_col_Ed",
         }
     }
 
     fn units(self) -> &'static [(&'static str, f64)] {
-        if self == Self::Moment { MOMENTS } else { FORCES }
+        if matches!(self, Self::Moment | Self::ColumnMoment) { MOMENTS } else { FORCES }
     }
 
     /// Writes a value (in N·mm or N) into a load case.
@@ -44,6 +48,8 @@ impl Action {
             Self::Moment => case.moment = Some(Moment(value)),
             Self::Shear => case.shear = Some(Force(value)),
             Self::Axial => case.axial = Some(Force(value)),
+            Self::ColumnAxial => case.column_axial = Some(Force(value)),
+            Self::ColumnMoment => case.column_moment = Some(Moment(value)),
         }
     }
 }
@@ -59,6 +65,16 @@ pub(super) fn action(heading: &str) -> Option<Result<(Action, f64), String>> {
         'N' => Action::Axial,
         _ => return None,
     };
+    let mut after = letters.clone();
+    let column =
+        ["c", "o", "l"].iter().all(|want| after.next().is_some_and(|(_, c)| want.starts_with(c.to_ascii_lowercase())));
+    let action = match action {
+        Action::Moment if column => Action::ColumnMoment,
+        Action::Axial if column => Action::ColumnAxial,
+        _ if column => return None,
+        own => own,
+    };
+    let mut letters = if column { after } else { letters };
     let (_, e) = letters.next()?;
     let (at, d) = letters.next()?;
     if !e.eq_ignore_ascii_case(&'e') || !d.eq_ignore_ascii_case(&'d') {

@@ -3,10 +3,12 @@
 use super::actions::{Action, action, decimal};
 use super::csv_cells::{Cell, Records};
 use super::fault::Faults;
-use super::gather::{Line, Stated};
+use super::frame::{Word, span};
+use super::gather::{Line, Stated, written};
 use super::source::{Source, given, tidy};
 use super::{LoadCase, MAX_JOINTS};
 use crate::origin::Place;
+use crate::units::mm;
 
 /// What a column holds.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -17,6 +19,10 @@ enum Column {
     End,
     Case,
     Detail,
+    /// A word about the joint in its frame.
+    Frame(Word),
+    /// The span of the supported member; its unit's size in mm.
+    Span(f64),
     /// An action; its unit's size in N·mm or N.
     Action(Action, f64),
     /// Remarks.
@@ -38,11 +44,13 @@ const HEADINGS: &[(Column, &[&str])] = &[
     (Column::End, &["end", "memberend", "supportedend", "supportedmemberend"]),
     (Column::Case, &["case", "loadcase", "combination", "loadcombination"]),
     (Column::Detail, &["detail", "detailtype", "intendeddetail"]),
+    (Column::Frame(Word::Braced), &["frame", "bracing", "framebracing"]),
+    (Column::Frame(Word::Class), &["class", "jointclass", "assumedclass", "assumedas"]),
 ];
 
 /// What the reader is told when a heading is not known.
 const KNOWN: &str = "joint, supporting, supported, end, case, M_Ed, V_Ed and N_Ed with their units (M_Ed_kNm, V_Ed_kN, \
-                     N_Ed_kN), detail, and remarks (a heading that starts with note, remark or comment)";
+                     N_Ed_kN), N_col_Ed and M_col_Ed likewise, detail, span_m, frame, class, and remarks (a heading that starts with note, remark or comment)";
 
 /// Reads the lines of a schedule.
 pub(super) fn lines(source: &Source, faults: &mut Faults) -> Vec<Line> {
@@ -94,10 +102,15 @@ fn columns(headings: &[Cell], source: &Source, faults: &mut Faults) -> Vec<Colum
             (Some((column, _)), _) => *column,
             (None, Some(Ok((action, size)))) => Column::Action(action, size),
             (None, Some(Err(message))) => faulty(message),
-            (None, None) => faulty(format!("no known column: given {}; allowed are {KNOWN}", given(&cell.value))),
+            (None, None) => match span(&cell.value) {
+                Some(Ok(size)) => Column::Span(size),
+                Some(Err(message)) => faulty(message),
+                None => faulty(format!("no known column: given {}; allowed are {KNOWN}", given(&cell.value))),
+            },
         };
         let twice = |other: &Column| match (column, *other) {
             (Column::Action(a, _), Column::Action(b, _)) => a == b,
+            (Column::Span(_), Column::Span(_)) => true,
             (Column::Ignored | Column::Blank | Column::Faulty, _) => false,
             (a, b) => a == b,
         };
@@ -145,8 +158,7 @@ impl Table<'_> {
         let mut line = Line::new(at.clone());
         let mut name = None;
         let mut stated = false;
-        let mut case =
-            LoadCase { name: super::UNNAMED_CASE.into(), moment: None, shear: None, axial: None, at: at.clone() };
+        let mut case = LoadCase::blank(super::UNNAMED_CASE, at.clone());
         for (index, cell) in cells.iter().enumerate() {
             if cell.value.trim().is_empty() {
                 continue;
@@ -158,8 +170,25 @@ impl Table<'_> {
                 Column::End => line.end = self.end(index, cell),
                 Column::Detail => line.detail = self.text(index, cell),
                 Column::Case => name = self.text(index, cell),
+                Column::Frame(word) => {
+                    let stated = self.word(word, index, cell);
+                    match word {
+                        Word::Braced => line.braced = stated,
+                        Word::Class => line.class = stated,
+                    }
+                }
+                Column::Span(size) => {
+                    let number = self.number("span", size, cell);
+                    if number.is_some_and(|span| !(span > 0.0)) {
+                        let message =
+                            format!("span: given {}; allowed is a number above 0, or blank", given(&cell.value));
+                        self.fault(cell, message);
+                    }
+                    line.span =
+                        number.and_then(|span| Some(Stated { text: written(mm(span)), ..self.text(index, cell)? }));
+                }
                 Column::Action(action, size) => {
-                    if let Some(value) = self.number(action, size, cell) {
+                    if let Some(value) = self.number(action.symbol(), size, cell) {
                         action.put(value, &mut case);
                         stated = true;
                     }
@@ -212,11 +241,22 @@ impl Table<'_> {
         Some(end)
     }
 
-    /// A number in N·mm or N.
-    fn number(&mut self, action: Action, size: f64, cell: &Cell) -> Option<f64> {
+    /// A word about the joint in its frame.
+    fn word(&mut self, word: Word, index: usize, cell: &Cell) -> Option<Stated> {
+        let stated = self.text(index, cell)?;
+        match word.read(&stated.text) {
+            Ok(read) => Some(Stated { text: read.into(), ..stated }),
+            Err(message) => {
+                self.fault(cell, message + ", or blank");
+                None
+            }
+        }
+    }
+
+    /// A number in N·mm, N or mm.
+    fn number(&mut self, symbol: &str, size: f64, cell: &Cell) -> Option<f64> {
         let text = cell.value.trim();
         let value = decimal(text, self.commas).map(|value| value * size).filter(|value| value.is_finite());
-        let symbol = action.symbol();
         let Some(value) = value else {
             let example = if self.commas { "-185.5 or -185,5" } else { "-185.5" };
             let given = given(text);

@@ -3,9 +3,11 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use super::fault::{Faults, ScheduleError};
+use super::frame::in_frame;
 use super::source::{Source, fold, given, member_key};
 use super::{IntendedDetail, Intent, LoadCase, ScheduledJoint, csv_form, toml_form};
 use crate::origin::{Place, Problem};
+use crate::units::Length;
 
 /// A text of the schedule with its place and its width in characters.
 #[derive(Clone, Debug)]
@@ -24,12 +26,27 @@ pub(super) struct Line {
     pub supported: Option<Stated>,
     pub end: Option<Stated>,
     pub detail: Option<Stated>,
+    /// "7200 mm".
+    pub span: Option<Stated>,
+    pub braced: Option<Stated>,
+    pub class: Option<Stated>,
     pub case: Option<LoadCase>,
 }
 
 impl Line {
     pub fn new(at: Place) -> Self {
-        Self { at, mark: None, supporting: None, supported: None, end: None, detail: None, case: None }
+        Self {
+            at,
+            mark: None,
+            supporting: None,
+            supported: None,
+            end: None,
+            detail: None,
+            span: None,
+            braced: None,
+            class: None,
+            case: None,
+        }
     }
 
     /// What tells its joint from others: the mark, else the members and the end.
@@ -124,6 +141,11 @@ fn is_toml(source: &Source) -> bool {
     }
 }
 
+/// A span as its lines hold it.
+pub(super) fn written(span: Length) -> String {
+    format!("{} mm", span.get())
+}
+
 /// A joint as lines again, for joining it with those of another file.
 fn lines_of(joint: ScheduledJoint) -> Vec<Line> {
     let stated = |text: Option<String>| text.map(|text| Stated { text, at: joint.at.clone(), width: 1 });
@@ -133,6 +155,9 @@ fn lines_of(joint: ScheduledJoint) -> Vec<Line> {
         supported: stated(joint.supported),
         end: stated(joint.end),
         detail: stated(joint.detail),
+        span: stated(joint.frame.span.map(written)),
+        braced: stated(joint.frame.braced.map(|braced| if braced { "braced" } else { "unbraced" }.into())),
+        class: stated(joint.frame.class.map(|class| class.word().into())),
         ..Line::new(joint.at.clone())
     };
     let cases = joint.cases.into_iter().map(|case| Line { case: Some(case), ..line.clone() });
@@ -201,6 +226,9 @@ fn joints(lines: Vec<Line>, faults: &mut Faults) -> Vec<ScheduledJoint> {
         agree("supported", &mut joint.line.supported, line.supported.take(), member_key, faults);
         agree("end", &mut joint.line.end, line.end.take(), fold, faults);
         agree("detail", &mut joint.line.detail, line.detail.take(), fold, faults);
+        agree("span", &mut joint.line.span, line.span.take(), fold, faults);
+        agree("frame", &mut joint.line.braced, line.braced.take(), fold, faults);
+        agree("class", &mut joint.line.class, line.class.take(), fold, faults);
         let Some(case) = line.case.take() else { continue };
         match joint.names.get(&case.name.to_uppercase()).and_then(|index| joint.cases.get(*index)) {
             Some(first) => {
@@ -222,6 +250,7 @@ fn joints(lines: Vec<Line>, faults: &mut Faults) -> Vec<ScheduledJoint> {
         end: text(held.line.end),
         cases: held.cases,
         detail: text(held.line.detail),
+        frame: in_frame(text(held.line.span), text(held.line.braced), text(held.line.class)),
         at: held.line.at,
     };
     held.into_iter().map(finish).collect()

@@ -6,6 +6,7 @@ mod actions;
 mod csv_cells;
 mod csv_form;
 mod fault;
+mod frame;
 mod gather;
 mod pairing;
 mod source;
@@ -19,6 +20,7 @@ pub(crate) use source::fold;
 pub use source::{MAX_BYTES, MAX_LINE_BYTES};
 
 use crate::origin::{Place, Problem};
+use crate::rulebook::Category;
 use crate::units::{Force, Length, Moment};
 
 /// One concurrent set of actions. M is positive when it puts the top of the joint in tension, N positive in tension,
@@ -33,8 +35,55 @@ pub struct LoadCase {
     pub shear: Option<Force>,
     /// N_Ed.
     pub axial: Option<Force>,
+    /// N_col,Ed of the supporting member at the joint, positive in tension.
+    pub column_axial: Option<Force>,
+    /// M_col,Ed of the supporting member at the joint, by magnitude.
+    pub column_moment: Option<Moment>,
     /// The line that states it.
     pub at: Place,
+}
+
+impl LoadCase {
+    /// One that states nothing yet.
+    pub fn blank(name: &str, at: Place) -> Self {
+        Self { name: name.into(), moment: None, shear: None, axial: None, column_axial: None, column_moment: None, at }
+    }
+}
+
+/// How a joint is taken in the frame's analysis, EN 1993-1-8 5.2.2.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum JointClass {
+    /// It keeps the angle between its members.
+    Rigid,
+    /// Its stiffness counts in the analysis.
+    SemiRigid,
+    /// It turns freely.
+    Pinned,
+}
+
+impl JointClass {
+    /// Every class.
+    pub const ALL: [Self; 3] = [Self::Rigid, Self::SemiRigid, Self::Pinned];
+
+    /// The word in schedules and reports.
+    pub fn word(self) -> &'static str {
+        match self {
+            Self::Rigid => "rigid",
+            Self::SemiRigid => "semi-rigid",
+            Self::Pinned => "pinned",
+        }
+    }
+}
+
+/// What the analysis of the frame takes a joint for; what is not stated is not compared.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub struct InFrame {
+    /// L_b: the supported member from column to column (axes).
+    pub span: Option<Length>,
+    /// Whether a bracing takes at least 80 % off the frame's sway, 5.2.2.5.
+    pub braced: Option<bool>,
+    /// The class that the analysis assumes.
+    pub class: Option<JointClass>,
 }
 
 /// One scheduled joint with all its load cases.
@@ -52,8 +101,19 @@ pub struct ScheduledJoint {
     pub cases: Vec<LoadCase>,
     /// Name of the intended detail it uses.
     pub detail: Option<String>,
+    /// What the analysis of the frame takes it for.
+    pub frame: InFrame,
     /// Its first line.
     pub at: Place,
+}
+
+/// What is stated of friction surfaces.
+#[derive(Clone, Debug, PartialEq)]
+pub enum Friction {
+    /// A class of EN 1993-1-8 Table 3.7, as written.
+    Class(String),
+    /// μ by test.
+    Factor(f64),
 }
 
 /// An intended pair of transverse stiffeners.
@@ -63,6 +123,21 @@ pub struct IntendedStiffener {
     pub thickness: Option<Length>,
     /// Grade as written.
     pub grade: Option<String>,
+}
+
+/// An intended haunch below the beam; what is not stated is not compared.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct IntendedHaunch {
+    /// From the beam's soffit down to the underside of its flange at the end plate.
+    pub depth: Option<Length>,
+    /// From the end plate to where its flange ends.
+    pub length: Option<Length>,
+    /// Thickness of its flange.
+    pub flange_thickness: Option<Length>,
+    /// Width of its flange.
+    pub flange_width: Option<Length>,
+    /// Thickness of its web.
+    pub web_thickness: Option<Length>,
 }
 
 /// An intended detail; what is not stated is not compared.
@@ -82,6 +157,10 @@ pub struct IntendedDetail {
     pub bolt_diameter: Option<Length>,
     /// Bolt class: "8.8".
     pub bolt_class: Option<String>,
+    /// Category of Table 3.2.
+    pub bolt_category: Option<Category>,
+    /// The friction surfaces of slip-resistant bolts.
+    pub friction: Option<Friction>,
     /// Heights of the rows above the soffit of the supported member, top down.
     pub rows: Option<Vec<Length>>,
     /// w.
@@ -104,6 +183,10 @@ pub struct IntendedDetail {
     pub stiffener_top: Option<Option<IntendedStiffener>>,
     /// The same at the bottom flange.
     pub stiffener_bottom: Option<Option<IntendedStiffener>>,
+    /// Whether the steel is exposed to weather or to other corrosive influences.
+    pub exposed: Option<bool>,
+    /// The haunch below the beam: `Some(None)` means "none intended".
+    pub haunch: Option<Option<IntendedHaunch>>,
     /// Where it is written.
     pub at: Option<Place>,
 }

@@ -8,7 +8,8 @@ use toml::de::DeValue;
 use super::actions::decimal;
 use super::source::tidy;
 use super::toml_form::{Reader, Sign, Table};
-use super::{IntendedDetail, IntendedStiffener};
+use super::{Friction, IntendedDetail, IntendedHaunch, IntendedStiffener};
+use crate::rulebook::Category;
 use crate::units::{Length, mm};
 
 impl Reader<'_> {
@@ -19,17 +20,19 @@ impl Reader<'_> {
             return None;
         };
         let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
-        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members"]);
+        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "haunch", "members", "exposed"]);
         let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
         match tidy(name.get_ref()) {
             Ok(name) if !name.is_empty() => detail.name = name,
             Ok(_) => self.fault(name.span(), "a detail has no name; allowed is [detail.NAME]".into()),
             Err(message) => self.fault(name.span(), format!("detail: {message}")),
         }
+        detail.exposed = self.truth(&table, "exposed");
         if let Some(bolts) = self.inner(&table, "bolts") {
-            self.known(&bolts, &["size", "class", "rows_mm", "gauge_mm"]);
+            self.known(&bolts, &["size", "class", "rows_mm", "gauge_mm", "category", "friction_class", "slip_factor"]);
             detail.bolt_diameter = self.bolt_size(&bolts);
             detail.bolt_class = self.text(&bolts, "class");
+            (detail.bolt_category, detail.friction) = self.category(&bolts);
             detail.rows = self.rows(&bolts);
             detail.gauge = self.length(&bolts, "gauge_mm", Sign::Positive);
         }
@@ -56,6 +59,7 @@ impl Reader<'_> {
             detail.stiffener_top = self.stiffener(&stiffeners, "top");
             detail.stiffener_bottom = self.stiffener(&stiffeners, "bottom");
         }
+        detail.haunch = self.haunch(&table);
         if let Some(members) = self.inner(&table, "members") {
             self.known(&members, &["supporting_section", "supported_section", "supporting_grade", "supported_grade"]);
             detail.supporting_section = self.text(&members, "supporting_section");
@@ -76,6 +80,33 @@ impl Reader<'_> {
         diameter.map(mm)
     }
 
+    /// The category, and the friction surfaces: their class or their slip factor.
+    fn category(&mut self, bolts: &Table<'_>) -> (Option<Category>, Option<Friction>) {
+        let category = self.text(bolts, "category").and_then(|text| {
+            let category = Category::named(&text);
+            if let (None, Some(value)) = (category, bolts.table.get("category")) {
+                self.wrong(value, "category", "A, B, C, D or E of EN 1993-1-8 Table 3.2");
+            }
+            category
+        });
+        let class = self.text(bolts, "friction_class").and_then(|class| {
+            let class = class.to_uppercase();
+            if !matches!(class.as_str(), "A" | "B" | "C" | "D")
+                && let Some(value) = bolts.table.get("friction_class")
+            {
+                self.wrong(value, "friction_class", "A, B, C or D of EN 1993-1-8 Table 3.7");
+                return None;
+            }
+            Some(Friction::Class(class))
+        });
+        let Some(value) = bolts.table.get("slip_factor") else { return (category, class) };
+        let factor = self.number(value, "slip_factor", 1.0, Sign::Positive).filter(|mu| *mu <= 1.0);
+        if factor.is_none() || class.is_some() {
+            self.wrong(value, "slip_factor", "a number above 0 up to 1, without a friction_class beside it");
+        }
+        (category, factor.map(Friction::Factor).or(class))
+    }
+
     fn rows(&mut self, bolts: &Table<'_>) -> Option<Vec<Length>> {
         let value = bolts.table.get("rows_mm")?;
         let allowed = "a list of heights above the soffit in mm, from the top row down";
@@ -93,6 +124,25 @@ impl Reader<'_> {
             return None;
         }
         Some(rows)
+    }
+
+    fn haunch(&mut self, detail: &Table<'_>) -> Option<Option<IntendedHaunch>> {
+        let value = detail.table.get("haunch")?;
+        match value.get_ref() {
+            DeValue::String(text) if text == "none" => Some(None),
+            DeValue::Table(_) => {
+                let table = self.inner(detail, "haunch")?;
+                let keys = ["depth_mm", "length_mm", "flange_thickness_mm", "flange_width_mm", "web_thickness_mm"];
+                self.known(&table, &keys);
+                let [depth, length, flange_thickness, flange_width, web_thickness] =
+                    keys.map(|key| self.length(&table, key, Sign::Positive));
+                Some(Some(IntendedHaunch { depth, length, flange_thickness, flange_width, web_thickness }))
+            }
+            _ => {
+                self.wrong(value, "haunch", "\"none\" or a table such as { depth_mm = 300, length_mm = 700 }");
+                None
+            }
+        }
     }
 
     fn stiffener(&mut self, stiffeners: &Table<'_>, key: &str) -> Option<Option<IntendedStiffener>> {

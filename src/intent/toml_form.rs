@@ -7,7 +7,8 @@ use toml::de::{DeTable, DeValue};
 
 use super::actions::{action, decimal};
 use super::fault::Faults;
-use super::gather::{Line, Stated};
+use super::frame::Word;
+use super::gather::{Line, Stated, written};
 use super::source::{Source, given, tidy};
 use super::{IntendedDetail, LoadCase, MAX_JOINTS, UNNAMED_CASE};
 use crate::units::{Length, mm};
@@ -137,6 +138,16 @@ impl<'a> Reader<'a> {
         self.stated(table, key).map(|stated| stated.text)
     }
 
+    /// True or false, if stated.
+    pub fn truth(&mut self, table: &Table<'_>, key: &str) -> Option<bool> {
+        let value = table.table.get(key)?;
+        let truth = value.get_ref().as_bool();
+        if truth.is_none() {
+            self.wrong(value, key, "true or false");
+        }
+        truth
+    }
+
     /// A finite number times `size`.
     pub fn number(&mut self, value: &Spanned<DeValue<'_>>, key: &str, size: f64, sign: Sign) -> Option<f64> {
         let number = match value.get_ref() {
@@ -159,13 +170,19 @@ impl<'a> Reader<'a> {
     }
 
     fn joint(&mut self, joint: &Table<'_>, lines: &mut Vec<Line>) {
-        self.known(joint, &["mark", "supporting", "supported", "end", "detail", "case"]);
+        self.known(
+            joint,
+            &["mark", "supporting", "supported", "end", "detail", "span_m", "span_mm", "frame", "class", "case"],
+        );
         let mut line = Line::new(self.source.place(joint.span.start));
         line.mark = self.stated(joint, "mark");
         line.supporting = self.stated(joint, "supporting");
         line.supported = self.stated(joint, "supported");
         line.end = self.stated(joint, "end");
         line.detail = self.stated(joint, "detail");
+        line.span = self.span(joint);
+        line.braced = self.word(joint, Word::Braced);
+        line.class = self.word(joint, Word::Class);
         if let (Some(end), Some(value)) = (&line.end, joint.table.get("end"))
             && super::pairing::end(&end.text).is_none()
         {
@@ -186,10 +203,36 @@ impl<'a> Reader<'a> {
         }
     }
 
+    /// The span as its lines hold it.
+    fn span(&mut self, joint: &Table<'_>) -> Option<Stated> {
+        let keys: Vec<_> =
+            [("span_m", 1e3), ("span_mm", 1.0)].into_iter().filter(|(key, _)| joint.table.contains_key(*key)).collect();
+        if keys.len() > 1 {
+            self.fault(joint.span.clone(), "span_m and span_mm mean the same; allowed is one of them".into());
+        }
+        let (key, size) = *keys.first()?;
+        let value = joint.table.get(key)?;
+        let text = written(mm(self.number(value, key, size, Sign::Positive)?));
+        Some(Stated { text, at: self.source.place(value.span().start), width: self.source.width(value.span()) })
+    }
+
+    /// A word about the joint in its frame.
+    fn word(&mut self, joint: &Table<'_>, word: Word) -> Option<Stated> {
+        let stated = self.stated(joint, word.key())?;
+        match word.read(&stated.text) {
+            Ok(read) => Some(Stated { text: read.into(), ..stated }),
+            Err(message) => {
+                let span = joint.table.get(word.key()).map_or(joint.span.clone(), Spanned::span);
+                self.fault(span, message);
+                None
+            }
+        }
+    }
+
     fn case(&mut self, table: &Table<'_>) -> LoadCase {
         let at = self.source.place(table.span.start);
         let name = self.text(table, "name").unwrap_or_else(|| UNNAMED_CASE.into());
-        let mut case = LoadCase { name, moment: None, shear: None, axial: None, at };
+        let mut case = LoadCase::blank(&name, at);
         let mut entries: Vec<_> = table.table.iter().filter(|(key, _)| key.get_ref() != "name").collect();
         entries.sort_by_key(|(key, _)| key.span().start);
         let mut seen = Vec::new();
@@ -198,7 +241,7 @@ impl<'a> Reader<'a> {
             match action(name) {
                 None => {
                     let given = given(name);
-                    let allowed = "name, M_Ed, V_Ed and N_Ed with their units (M_Ed_kNm, V_Ed_kN, N_Ed_kN)";
+                    let allowed = "name, M_Ed, V_Ed and N_Ed with their units (M_Ed_kNm, V_Ed_kN, N_Ed_kN), N_col_Ed and M_col_Ed likewise";
                     let message = format!("no known key of {}: given {given}; allowed are {allowed}", table.name);
                     self.fault(key.span(), message);
                 }

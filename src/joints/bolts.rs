@@ -4,7 +4,7 @@ use glam::{DVec2, DVec3};
 
 use super::draft::Draft;
 use super::frame::Frame;
-use super::layout::{BoltRow, Bolts};
+use super::layout::{BoltRow, Bolts, Held};
 use super::scene::Scene;
 use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use crate::shop::{Bolt, Part};
@@ -111,7 +111,7 @@ pub(super) fn lay_out(
         Behind::Plate(other) => vec![end_plate, other],
     };
     let hole = hole(scene, draft, &plates, &placed, &diameter)?;
-    Ok(Bolts { diameter, class, hole, rows: laid })
+    Ok(Bolts { diameter, class, hole, rows: laid, held: Held::default() })
 }
 
 /// From a bolt to the outline's side edge on its own side of the web, at the bolt's height.

@@ -103,14 +103,14 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
         return Err(format!("beam is eccentric to the column's web by {eccentric:.1} mm: not assessed"));
     }
     let face = column.start + column.depth * case.ply.sign() * column.extents.y / 2.0;
-    let gap = -plate.thickness.get() - case.frame.outward(face);
-    let packed = bolted.iter().copied().filter(|other| *other != case.plate).find(|other| {
-        let out = case.frame.outward(scene.steel.plates[*other].centre);
-        out < -plate.thickness.get() && out > case.frame.outward(face)
-    });
-    if let Some(packing) = packed {
-        let thickness = scene.steel.plates[packing].thickness;
-        return Err(format!("{:.1} mm of packing under the end plate: not assessed yet", thickness.get()));
+    let packing = packing(scene, case, bolted);
+    let packed: f64 = packing.iter().map(|pack| scene.steel.plates[*pack].thickness.get()).sum();
+    let gap = -plate.thickness.get() - packed - case.frame.outward(face);
+    for pack in &packing {
+        if let Some(why) = not_rigid(scene, case, *pack, outline) {
+            let thickness = scene.steel.plates[*pack].thickness.get();
+            return Err(format!("{thickness:.1} mm of packing under the end plate {why}: not assessed yet"));
+        }
     }
     if !(gap.abs() <= touch) {
         let how = if gap > 0.0 { "stands off" } else { "runs into" };
@@ -120,6 +120,36 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
         return Err("the end plate is no upright rectangle: not assessed yet".into());
     }
     Ok(())
+}
+
+/// Bolted plates between the end plate and the column's flange, from the end plate on.
+pub(super) fn packing(scene: &Scene, case: &Case, bolted: &[usize]) -> Vec<usize> {
+    let column = &scene.steel.members[case.column];
+    let face = case.frame.outward(column.start + column.depth * case.ply.sign() * column.extents.y / 2.0);
+    let end_plate = -scene.steel.plates[case.plate].thickness.get();
+    let out = |plate: &usize| case.frame.outward(scene.steel.plates[*plate].centre);
+    let between = |plate: &usize| *plate != case.plate && out(plate) < end_plate && out(plate) > face;
+    let mut packing: Vec<usize> = bolted.iter().copied().filter(between).collect();
+    packing.sort_by(|a, b| out(b).total_cmp(&out(a)).then(a.cmp(b)));
+    packing
+}
+
+/// Why a packing plate is no rigid one under all of the end plate, in a clause.
+fn not_rigid(scene: &Scene, case: &Case, pack: usize, outline: &[DVec2]) -> Option<&'static str> {
+    let (position, angle) = (scene.tolerances().position.get(), scene.tolerances().angle);
+    let plate = &scene.steel.plates[pack];
+    if !are_parallel(case.frame.out, plate.normal, angle) {
+        return Some("is not parallel to it");
+    }
+    let own = case.frame.outline(plate);
+    let (x, y) = Span::of(own.iter().map(|p| p.x)).zip(Span::of(own.iter().map(|p| p.y)))?;
+    let covers = |p: &DVec2| {
+        p.x >= x.lo - position && p.x <= x.hi + position && p.y >= y.lo - position && p.y <= y.hi + position
+    };
+    if !is_rectangular(&own, position) || !outline.iter().all(covers) {
+        return Some("does not reach under all of it");
+    }
+    None
 }
 
 /// A haunch belongs to the joint: its plates and welds, and how far down it sits on the column.
@@ -168,7 +198,22 @@ fn laid_out(
 ) -> Result<EndPlateLayout, String> {
     let column = &scene.steel.members[case.column];
     let plate = plate_at(scene, case.plate, outline)?;
-    let bolts = bolts::lay_out(scene, draft, &case.frame, case.plate, Behind::Column(case.column))?;
+    let mut bolts = bolts::lay_out(scene, draft, &case.frame, case.plate, Behind::Column(case.column))?;
+    let bolted: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
+    let packing = packing(scene, case, &bolted);
+    for pack in &packing {
+        let holds = |bolt: &&usize| scene.touches.passes[**bolt].contains(&Pass::Plate(*pack));
+        let (through, all) = (draft.joint.bolts.iter().filter(holds).count(), draft.joint.bolts.len());
+        if through < all {
+            return Err(format!("{through} of {all} bolts pass through the packing: not assessed"));
+        }
+    }
+    bolts.held.packing = packing.iter().map(|pack| scene.steel.plates[*pack].thickness).collect();
+    for (plate, role) in &mut draft.joint.plates {
+        if packing.contains(plate) {
+            *role = "packing";
+        }
+    }
     let rows = Span::of(bolts.rows.iter().map(|row| row.height.get())).ok_or("the joint has no bolts")?;
     let ends = [column.start, column.end].map(|end| case.frame.height(end));
     let (above, below) = (ends[0].max(ends[1]) - rows.hi, rows.lo - ends[0].min(ends[1]));

@@ -3,8 +3,8 @@
 //! Heights are measured up from the soffit of the supported member's lower flange, in the direction of the member's
 //! depth that points to the sky; sides are measured across, from the supported member's web.
 
-use crate::origin::Known;
-use crate::rulebook::{Grade, Section};
+use crate::origin::{Datum, Known};
+use crate::rulebook::{Category, Grade, Section};
 use crate::units::Length;
 
 /// A member as it stands in a joint.
@@ -61,6 +61,19 @@ pub struct Bolts {
     pub hole: Known<Length>,
     /// Rows from the top down.
     pub rows: Vec<BoltRow>,
+    /// What else they hold, and how.
+    pub held: Held,
+}
+
+/// What bolts hold besides the two plies, and how, as far as anybody says.
+#[derive(Clone, Debug, Default)]
+pub struct Held {
+    /// Thickness of each rigid packing plate between the plies; as large as the end plate.
+    pub packing: Vec<Length>,
+    /// Category of Table 3.2; `None` where nobody states one.
+    pub category: Option<Datum<Category>>,
+    /// Slip factor μ of the friction surfaces; `None` where nobody states one.
+    pub slip_factor: Option<Datum<f64>>,
 }
 
 /// Throats a of the fillets between beam and end plate; each both sides of its plate.
@@ -199,6 +212,11 @@ pub enum Which {
 }
 
 impl Which {
+    /// How many end plates it stands for.
+    pub fn count(self) -> usize {
+        if self == Self::Both { 2 } else { 1 }
+    }
+
     /// Before a part's name: "supported ".
     pub fn owner(self) -> &'static str {
         match self {
@@ -318,6 +336,20 @@ impl Layout {
             Self::EndPlate(layout) => &layout.column,
             Self::Splice(layout) => &layout.supporting.beam,
         }
+    }
+
+    /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
+    pub fn plies(&self) -> Option<[Length; 2]> {
+        let behind = match self {
+            Self::EndPlate(layout) => layout.column.section.as_ref().ok()?.value.t_f,
+            Self::Splice(layout) => layout.supporting.plate.thickness,
+        };
+        Some([self.side().plate.thickness, behind])
+    }
+
+    /// All that the bolts hold together: both plies and the packing between them.
+    pub fn grip(&self) -> Option<Length> {
+        Some(self.plies()?.into_iter().chain(self.bolts().held.packing.iter().copied()).sum())
     }
 
     /// The joint on a column's flange, if it is one.

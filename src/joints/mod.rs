@@ -24,8 +24,8 @@ mod touch;
 mod welds;
 
 pub use layout::{
-    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Haunch, Layout, MemberAt, PlateSide, SpliceLayout,
-    Stiffener, Support, Welds, Which,
+    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Haunch, Held, Layout, MemberAt, PlateSide,
+    SpliceLayout, Stiffener, Support, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;
@@ -110,7 +110,7 @@ pub struct Joint {
     pub at_end: Option<bool>,
     /// Its bolts.
     pub bolts: Vec<usize>,
-    /// Its plates, with their role: "end-plate", "stiffener", "haunch", "plate".
+    /// Its plates, with their role: "end-plate", "packing", "stiffener", "haunch", "plate".
     pub plates: Vec<(usize, &'static str)>,
     /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "haunch", "other".
     pub welds: Vec<(usize, &'static str)>,
@@ -129,18 +129,20 @@ pub struct Joint {
 /// All joints of the steelwork.
 #[derive(Debug, Default)]
 pub struct Joints {
-    /// Who touches whom.
-    pub graph: JointGraph,
     /// The joints, sorted by mark.
     pub joints: Vec<Joint>,
     /// Bolts that pass through fewer than two plies: indices.
     pub loose_bolts: Vec<usize>,
 }
 
-/// Builds the graph and cuts it into joints. Geometry is the first witness, relations and names are the second.
+/// Who touches whom, as a graph; for those who want to look at it: [`recognise`] goes by the contacts themselves.
+pub fn graph(steelwork: &Steelwork, rulebook: &Rulebook) -> JointGraph {
+    graph::build(steelwork, &touch::Touches::find(steelwork, &rulebook.tolerances))
+}
+
+/// Finds who touches whom and cuts the steel into joints. Geometry is the first witness, relations and names are the second.
 pub fn recognise(steelwork: &Steelwork, rulebook: &Rulebook) -> Joints {
     let scene = scene::Scene::new(steelwork, rulebook);
-    let graph = graph::build(steelwork, &scene.touches);
     let mut drafts = recognise::name_kinds(&scene, cut::cut(&scene));
     told::hear(&scene, &mut drafts);
     marks::mark(&scene, &mut drafts);
@@ -152,5 +154,5 @@ pub fn recognise(steelwork: &Steelwork, rulebook: &Rulebook) -> Joints {
     let joints = (drafts.into_iter().zip(opposites))
         .map(|(draft, (opposite, opposite_unclear))| Joint { opposite, opposite_unclear, ..draft.joint })
         .collect();
-    Joints { graph, joints, loose_bolts: (0..loose.len()).filter(|bolt| loose[*bolt]).collect() }
+    Joints { joints, loose_bolts: (0..loose.len()).filter(|bolt| loose[*bolt]).collect() }
 }

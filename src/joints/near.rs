@@ -2,6 +2,7 @@
 
 use std::collections::HashMap;
 
+use foldhash::fast::RandomState;
 use glam::DVec3;
 
 use super::boxes::Slab;
@@ -17,7 +18,7 @@ type Cell = [i64; 3];
 /// Which parts lie in which cell. The map is only looked up, never walked, so that its order shows nowhere.
 #[derive(Default)]
 pub(super) struct Grid {
-    cells: HashMap<Cell, Vec<usize>>,
+    cells: HashMap<Cell, Vec<usize>, RandomState>,
     wide: Vec<usize>,
     count: usize,
 }
@@ -57,16 +58,16 @@ impl Grid {
         }
     }
 
-    /// Indices of the boxes that may reach into the given extents, ascending.
-    pub(super) fn near(&self, lo: DVec3, hi: DVec3) -> Vec<usize> {
-        let Some(cells) = cells(lo, hi) else { return (0..self.count).collect() };
-        let mut found = self.wide.clone();
+    /// Puts the indices of the boxes that may reach into the given extents, ascending, in place of what is in `found`.
+    pub(super) fn near(&self, lo: DVec3, hi: DVec3, found: &mut Vec<usize>) {
+        found.clear();
+        let Some(cells) = cells(lo, hi) else { return found.extend(0..self.count) };
+        found.extend(&self.wide);
         for cell in cells {
             found.extend(self.cells.get(&cell).into_iter().flatten());
         }
         found.sort_unstable();
         found.dedup();
-        found
     }
 }
 

@@ -2,6 +2,8 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
+use rayon::prelude::*;
+
 use super::Kind;
 use super::boxes::{Ply, Slab, thicknesses};
 use super::cut::{self, Cluster};
@@ -20,16 +22,12 @@ const STANDS: f64 = 0.5;
 
 /// All clusters as joints, without marks.
 pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
-    let mut drafts = Vec::new();
-    for cluster in clusters {
-        match cluster {
-            Cluster::EndPlates { plates, bolts } if plates.len() > 1 => drafts.push(splice(scene, &plates, bolts)),
-            Cluster::EndPlates { plates, bolts } => {
-                drafts.extend(plates.first().and_then(|plate| end_plate(scene, *plate, bolts)));
-            }
-            Cluster::Other { bolts } => drafts.push(other(scene, bolts)),
-        }
-    }
+    let draft = |cluster| match cluster {
+        Cluster::EndPlates { plates, bolts } if plates.len() > 1 => Some(splice(scene, &plates, bolts)),
+        Cluster::EndPlates { plates, bolts } => end_plate(scene, *plates.first()?, bolts),
+        Cluster::Other { bolts } => Some(other(scene, bolts)),
+    };
+    let mut drafts: Vec<Draft> = clusters.into_par_iter().filter_map(draft).collect();
     drafts.extend((0..scene.steel.plates.len()).filter_map(|plate| base_without_bolts(scene, plate)));
     drafts.iter_mut().for_each(|draft| say_what_is_not_assessed(scene, draft));
     drafts

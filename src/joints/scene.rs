@@ -1,7 +1,5 @@
 //! What every step of the recognition looks at: the steel, what touches, and the second witnesses by part.
 
-use std::collections::BTreeMap;
-
 use super::touch::{Pass, Touches};
 use crate::origin::Place;
 use crate::rulebook::{Rulebook, Tolerances};
@@ -12,18 +10,18 @@ pub(super) struct Scene<'a> {
     pub(super) steel: &'a Steelwork,
     pub(super) rules: &'a Rulebook,
     pub(super) touches: Touches,
-    pieces_of: BTreeMap<Part, Vec<usize>>,
-    told_of: BTreeMap<Part, Vec<usize>>,
-    welds_of: BTreeMap<Part, Vec<usize>>,
+    pieces_of: ByPart,
+    told_of: ByPart,
+    welds_of: ByPart,
     bolted: Vec<bool>,
 }
 
 impl<'a> Scene<'a> {
     pub(super) fn new(steel: &'a Steelwork, rules: &'a Rulebook) -> Self {
         let touches = Touches::find(steel, &rules.tolerances);
-        let pieces_of = by_part(steel.pieces.iter().map(|piece| piece.parts.iter()));
-        let told_of = by_part(steel.told.iter().map(|told| told.between.iter().chain(&told.by)));
-        let welds_of = by_part(touches.welded.iter().map(|parts| parts.iter()));
+        let pieces_of = ByPart::of(steel.pieces.iter().map(|piece| piece.parts.iter()));
+        let told_of = ByPart::of(steel.told.iter().map(|told| told.between.iter().chain(&told.by)));
+        let welds_of = ByPart::of(touches.welded.iter().map(|parts| parts.iter()));
         let mut bolted = vec![false; steel.plates.len()];
         for pass in touches.passes.iter().flatten() {
             if let Pass::Plate(plate) = pass {
@@ -39,12 +37,12 @@ impl<'a> Scene<'a> {
 
     /// Welds that lie at a part, ascending.
     pub(super) fn welds_at(&self, part: Part) -> &[usize] {
-        self.welds_of.get(&part).map_or(&[], Vec::as_slice)
+        self.welds_of.get(part)
     }
 
     /// Relations that name a part, ascending.
     pub(super) fn told_of(&self, part: Part) -> &[usize] {
-        self.told_of.get(&part).map_or(&[], Vec::as_slice)
+        self.told_of.get(part)
     }
 
     /// Welds without a place of their own that a relation gives to both parts.
@@ -66,7 +64,7 @@ impl<'a> Scene<'a> {
 
     /// Whether a weld or a piece holds two parts together.
     pub(super) fn are_one_piece(&self, a: Part, b: Part) -> bool {
-        let pieces = |part| self.pieces_of.get(&part).map_or(&[][..], Vec::as_slice);
+        let pieces = |part| self.pieces_of.get(part);
         shared(self.welds_at(a), self.welds_at(b)).next().is_some() || shared(pieces(a), pieces(b)).next().is_some()
     }
 
@@ -108,15 +106,39 @@ pub(super) fn shared<'l>(a: &'l [usize], b: &'l [usize]) -> impl Iterator<Item =
     a.iter().copied().filter(|x| b.binary_search(x).is_ok())
 }
 
-fn by_part<'p>(lists: impl Iterator<Item = impl Iterator<Item = &'p Part>>) -> BTreeMap<Part, Vec<usize>> {
-    let mut index: BTreeMap<Part, Vec<usize>> = BTreeMap::new();
-    for (i, parts) in lists.enumerate() {
-        for part in parts {
-            let list = index.entry(*part).or_default();
-            if list.last() != Some(&i) {
-                list.push(i);
+/// Lists by part: ascending indices of what names it. One list for each sort of part, by the part's own index.
+#[derive(Default)]
+struct ByPart([Vec<Vec<usize>>; 4]);
+
+impl ByPart {
+    fn of<'p>(lists: impl Iterator<Item = impl Iterator<Item = &'p Part>>) -> Self {
+        let mut all = Self::default();
+        for (i, parts) in lists.enumerate() {
+            for part in parts {
+                let (sort, at) = slot(*part);
+                let lists = &mut all.0[sort];
+                if lists.len() <= at {
+                    lists.resize_with(at + 1, Vec::new);
+                }
+                if lists[at].last() != Some(&i) {
+                    lists[at].push(i);
+                }
             }
         }
+        all
     }
-    index
+
+    fn get(&self, part: Part) -> &[usize] {
+        let (sort, at) = slot(part);
+        self.0[sort].get(at).map_or(&[], Vec::as_slice)
+    }
+}
+
+fn slot(part: Part) -> (usize, usize) {
+    match part {
+        Part::Member(i) => (0, i),
+        Part::Plate(i) => (1, i),
+        Part::Bolt(i) => (2, i),
+        Part::Weld(i) => (3, i),
+    }
 }

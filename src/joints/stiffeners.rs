@@ -39,6 +39,7 @@ struct Half {
 /// Everything on the column between `BEYOND` below and above the end plate, whose heights are given.
 pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) -> OnColumn {
     let column = &scene.steel.members[case.column];
+    let packing = super::end_plate::packing(scene, case, bolted);
     let mut found = OnColumn::default();
     let mut halves = Vec::new();
     let mut others: BTreeMap<&str, usize> = BTreeMap::new();
@@ -48,7 +49,7 @@ pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) 
             .is_some_and(|own| own.hi >= heights.lo - BEYOND && own.lo <= heights.hi + BEYOND);
         let end_plate =
             index == case.plate || !is_transverse(scene, column, plate) && !cut::ends_on(scene, index).is_empty();
-        if !near || end_plate {
+        if !near || end_plate || packing.contains(&index) {
             continue;
         }
         match half(scene, case, index).filter(|_| !bolted.contains(&index)) {

@@ -1,6 +1,7 @@
 //! Touch: which bolt passes through what, what bears on what, which weld joins what. Geometry alone.
 
 use glam::{DVec2, DVec3};
+use rayon::prelude::*;
 
 use super::boxes::{Ply, Slab, plies};
 use super::near::Grid;
@@ -63,19 +64,21 @@ impl Touches {
         let member_plies: Vec<_> = steel.members.iter().map(plies).collect();
         let (near_plates, near_members) = (Grid::of(&plate_boxes), Grid::of(&member_boxes));
 
-        let passes = steel.bolts.iter().map(|bolt| {
+        let passes = steel.bolts.par_iter().map_init(Vec::new, |near, bolt| {
             // A shank modelled as the grip ends at the plies' faces, one modelled as the plate's thickness at the
             // faying surface: it is lengthened by the gap that still counts as touching and as much again.
             let Some((a, b)) = lengthened(bolt, 2.0 * touch) else { return Vec::new() };
             let (lo, hi) = (a.min(b), a.max(b));
             let axis = (b - a).normalize();
             let mut through = Vec::new();
-            for i in near_plates.near(lo, hi) {
+            near_plates.near(lo, hi, near);
+            for &i in near.iter() {
                 if plate_boxes[i].is_some_and(|slab| passes_plate(&steel.plates[i], &slab, a, b, axis)) {
                     through.push(Pass::Plate(i));
                 }
             }
-            for i in near_members.near(lo, hi) {
+            near_members.near(lo, hi, near);
+            for &i in near.iter() {
                 for (ply, slab) in &member_plies[i] {
                     let crosses = match ply {
                         Ply::Web => slab.axes[0].dot(axis).abs() >= CROSSES,
@@ -91,42 +94,47 @@ impl Touches {
         });
         let passes = passes.collect();
 
-        let mut ends = vec![Vec::new(); steel.plates.len()];
-        let mut members = vec![Vec::new(); steel.plates.len()];
-        let mut plates = vec![Vec::new(); steel.plates.len()];
-        let mut plates_of = vec![Vec::new(); steel.members.len()];
-        for (i, slab) in plate_boxes.iter().enumerate() {
-            let Some(slab) = slab else { continue };
+        let at_plate = plate_boxes.par_iter().enumerate().map_init(Vec::new, |near, (i, slab)| {
+            let (mut ends, mut members, mut plates) = (Vec::new(), Vec::new(), Vec::new());
+            let Some(slab) = slab else { return (ends, members, plates) };
             let (lo, hi) = grown(slab.bounds(), STANDS_OFF);
-            for m in near_members.near(lo, hi) {
+            near_members.near(lo, hi, near);
+            for &m in near.iter() {
                 if member_plies[m].iter().any(|(_, ply)| ply.gap(slab) <= touch) {
-                    members[i].push(m);
-                    plates_of[m].push(i);
+                    members.push(m);
                 }
-                ends[i].extend(end_on(steel, m, &steel.plates[i], slab, touch));
+                ends.extend(end_on(steel, m, &steel.plates[i], slab, touch));
             }
-            for other in near_plates.near(lo, hi) {
-                if other != i && plate_boxes[other].is_some_and(|b| b.gap(slab) <= touch) {
-                    plates[i].push(other);
-                }
-            }
+            near_plates.near(lo, hi, near);
+            let touches = |&other: &usize| other != i && plate_boxes[other].is_some_and(|b| b.gap(slab) <= touch);
+            plates.extend(near.iter().copied().filter(touches));
+            (ends, members, plates)
+        });
+        let at_plate: Vec<_> = at_plate.collect();
+        let (mut ends, mut members, mut plates) = (Vec::new(), Vec::new(), Vec::new());
+        let mut plates_of = vec![Vec::new(); steel.members.len()];
+        for (plate, (its_ends, its_members, its_plates)) in at_plate.into_iter().enumerate() {
+            its_members.iter().for_each(|member: &usize| plates_of[*member].push(plate));
+            ends.push(its_ends);
+            members.push(its_members);
+            plates.push(its_plates);
         }
 
-        let welded = steel.welds.iter().map(|weld| {
-            let points: Vec<DVec3> = weld.points.iter().copied().filter(|p| p.is_finite()).collect();
-            let Some(first) = points.first() else { return Vec::new() };
+        let welded = steel.welds.par_iter().map_init(Vec::new, |near, weld| {
+            let points = || weld.points.iter().copied().filter(|p| p.is_finite());
+            let Some(first) = points().next() else { return Vec::new() };
             let throat = weld.throat.as_ref().map_or(0.0, |a| a.value.get().clamp(0.0, 50.0));
             // A weld given as an axis runs in the root or in the middle of the throat.
             let reach = touch + throat;
-            let bounds = points.iter().fold((*first, *first), |(lo, hi), p| (lo.min(*p), hi.max(*p)));
-            let (lo, hi) = grown(bounds, reach);
-            let at_plates = near_plates.near(lo, hi).into_iter().filter_map(|i| {
-                plate_boxes[i].is_some_and(|slab| lies_at(&points, &slab, reach)).then_some(Part::Plate(i))
-            });
-            let at_members = near_members.near(lo, hi).into_iter().filter_map(|i| {
-                member_plies[i].iter().any(|(_, slab)| lies_at(&points, slab, reach)).then_some(Part::Member(i))
-            });
-            at_members.chain(at_plates).collect()
+            let (lo, hi) = grown(points().fold((first, first), |(lo, hi), p| (lo.min(p), hi.max(p))), reach);
+            let mut parts = Vec::new();
+            near_members.near(lo, hi, near);
+            let at_member = |i: &&usize| member_plies[**i].iter().any(|(_, slab)| lies_at(points(), slab, reach));
+            parts.extend(near.iter().filter(at_member).map(|i| Part::Member(*i)));
+            near_plates.near(lo, hi, near);
+            let at_plate = |i: &&usize| plate_boxes[**i].is_some_and(|slab| lies_at(points(), &slab, reach));
+            parts.extend(near.iter().filter(at_plate).map(|i| Part::Plate(*i)));
+            parts
         });
         let welded = welded.collect();
         Self { passes, ends, members, plates, plates_of, welded }
@@ -170,19 +178,20 @@ fn is_inside(outline: &[DVec2], p: DVec2) -> bool {
         == 1
 }
 
-fn lies_at(points: &[DVec3], slab: &Slab, reach: f64) -> bool {
-    let local: Vec<DVec3> = points.iter().map(|p| slab.local(*p)).collect();
-    (0..3).all(|i| {
-        let lo = local.iter().map(|p| p[i]).fold(f64::INFINITY, f64::min);
-        let hi = local.iter().map(|p| p[i]).fold(f64::NEG_INFINITY, f64::max);
-        lo <= slab.half[i] + reach && hi >= -slab.half[i] - reach
-    })
+fn lies_at(points: impl Iterator<Item = DVec3>, slab: &Slab, reach: f64) -> bool {
+    let (mut lo, mut hi) = (DVec3::INFINITY, DVec3::NEG_INFINITY);
+    for point in points.map(|p| slab.local(p)) {
+        lo = lo.min(point);
+        hi = hi.max(point);
+    }
+    (0..3).all(|i| lo[i] <= slab.half[i] + reach && hi[i] >= -slab.half[i] - reach)
 }
 
-fn end_on(steel: &Steelwork, m: usize, plate: &Plate, slab: &Slab, touch: f64) -> Vec<EndOn> {
+fn end_on(steel: &Steelwork, m: usize, plate: &Plate, slab: &Slab, touch: f64) -> impl Iterator<Item = EndOn> + use<> {
     let member = &steel.members[m];
-    let Some(body) = Slab::of_member(member) else { return Vec::new() };
+    let body = Slab::of_member(member);
     let at = |at_end: bool| {
+        let body = body?;
         let (point, outward) = if at_end { (member.end, member.along) } else { (member.start, -member.along) };
         let slope = outward.dot(plate.normal).abs().min(1.0).acos().to_degrees();
         if !(slope <= STEEPEST) {
@@ -201,5 +210,5 @@ fn end_on(steel: &Steelwork, m: usize, plate: &Plate, slab: &Slab, touch: f64) -
             local.x.abs() <= slab.half.x + reach(slab.axes[0]) && local.y.abs() <= slab.half.y + reach(slab.axes[1]);
         (seated && over).then_some(EndOn { member: m, at_end, gap, slope })
     };
-    [at(false), at(true)].into_iter().flatten().collect()
+    [at(false), at(true)].into_iter().flatten()
 }

@@ -11,9 +11,6 @@ use crate::units::Length;
 /// a fillet's leg and the slackness with which welds are drawn.
 const BESIDE: f64 = 30.0;
 
-/// A weld that runs over less than this share of its flange or web is not taken as welding it.
-const COVERS: f64 = 0.5;
-
 /// The place of a weld in an end-plate joint.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
 pub(super) enum Role {
@@ -103,7 +100,8 @@ pub(super) fn say_where_names_disagree(scene: &Scene, roles: &[(usize, Role)], s
     }
 }
 
-/// The throat for one role: the least of its welds if every one states it, else why there is none.
+/// The throat for one role: the least of its welds if every one states it and they run along the whole of the flange or
+/// web, else why there is none.
 pub(super) fn throat(
     scene: &Scene,
     frame: &Frame,
@@ -114,30 +112,94 @@ pub(super) fn throat(
 ) -> Known<Length> {
     let welds: Vec<usize> = roles.iter().filter(|(_, r)| *r == role).map(|(weld, _)| *weld).collect();
     let least = least_throat(scene, &welds, what)?;
+    match short(scene, frame, member, &welds, role).or_else(|| one_sided(scene, frame, member, &welds, role)) {
+        None => Ok(least),
+        Some(reason) => Err(Missing {
+            what: what.into(),
+            reason,
+            at: welds.first().map(|weld| scene.place(Part::Weld(*weld))),
+            ask: Ask::Fabricator,
+        }),
+    }
+}
+
+/// Why welds do not run along the whole of what they weld, if they do not. A seam is often drawn in pieces, so their union
+/// counts: of each piece no more than its stated length (an intermittent seam is drawn from end to end), and none that is
+/// too short to be counted (EN 1993-1-8 4.5.1(2)).
+fn short(scene: &Scene, frame: &Frame, member: usize, welds: &[usize], role: Role) -> Option<String> {
     let beam = &scene.steel.members[member];
-    let full = if role == Role::Web { beam.extents.y } else { beam.extents.x };
-    // The union of the welds' runs: a seam is often drawn in pieces.
-    let mut runs: Vec<Span> = welds
-        .iter()
-        .filter_map(|weld| spans(scene, frame, *weld))
-        .map(|(across, heights)| if role == Role::Web { heights } else { across })
-        .collect();
+    let full = match (&beam.section, role) {
+        (Ok(section), Role::Web) => {
+            let r = section.value.r.unwrap_or(Length::ZERO);
+            (section.value.h - 2.0 * (section.value.t_f + r)).get()
+        }
+        (Err(_), Role::Web) => beam.extents.y,
+        _ => beam.extents.x,
+    };
+    let rules = &scene.rules.welds;
+    let mut runs: Vec<Span> = Vec::new();
+    let mut placeless = 0.0_f64;
+    for index in welds {
+        let weld = &scene.steel.welds[*index];
+        let stated = weld.length.as_ref().ok().map(|length| length.value.get());
+        let throat = weld.throat.as_ref().map_or(0.0, |throat| throat.value.get());
+        let least = rules.min_length.get().max(rules.min_length_in_throats * throat);
+        let run = match spans(scene, frame, *index) {
+            Some((across, heights)) => {
+                let run = if role == Role::Web { heights } else { across };
+                Span { hi: run.hi.min(run.lo + stated.unwrap_or(f64::INFINITY)), ..run }
+            }
+            None => {
+                placeless = placeless.max(stated.unwrap_or(0.0));
+                continue;
+            }
+        };
+        if run.size() >= least {
+            runs.push(run);
+        }
+    }
     runs.sort_by(|a, b| a.lo.total_cmp(&b.lo));
-    let mut covered = 0.0;
-    let mut reached = f64::NEG_INFINITY;
+    let (mut covered, mut reached) = (0.0, f64::NEG_INFINITY);
     for run in &runs {
         covered += (run.hi - run.lo.max(reached)).max(0.0);
         reached = reached.max(run.hi);
     }
-    if !runs.is_empty() && !(covered >= COVERS * full) {
-        return Err(Missing {
-            what: what.into(),
-            reason: format!("the welds modelled there run over {covered:.0} mm of {full:.0} mm"),
-            at: welds.first().map(|weld| scene.place(Part::Weld(*weld))),
-            ask: Ask::Fabricator,
-        });
+    let covered = placeless.max(covered);
+    if covered >= full - 2.0 * scene.tolerances().position.get() {
+        return None;
     }
-    Ok(least)
+    let nowhere = welds.iter().all(|weld| scene.steel.welds[*weld].points.is_empty());
+    Some(if nowhere && covered == 0.0 {
+        "the welds there have neither a place nor a length".into()
+    } else {
+        format!(
+            "the welds modelled there run over {covered:.0} mm of {full:.0} mm; shorter or intermittent ones are not counted"
+        )
+    })
+}
+
+/// Says so where every weld has a body and all lie on one side of the flange or web: the other side has none.
+fn one_sided(scene: &Scene, frame: &Frame, member: usize, welds: &[usize], role: Role) -> Option<String> {
+    let beam = &scene.steel.members[member];
+    let (t_f, t_w) = thicknesses(beam);
+    let touch = scene.tolerances().touch.get();
+    let (low, high) = match role {
+        Role::FlangeTop => (beam.extents.y - t_f, beam.extents.y),
+        Role::FlangeBottom => (0.0, t_f),
+        _ => (-t_w / 2.0, t_w / 2.0),
+    };
+    let mut sides = (false, false);
+    for weld in welds {
+        // A line tells no side, nor does a box that reaches into the steel.
+        let (across, heights) = spans(scene, frame, *weld).filter(|_| scene.steel.welds[*weld].points.len() > 2)?;
+        let own = if role == Role::Web { across } else { heights };
+        match (own.hi <= low + touch, own.lo >= high - touch) {
+            (true, false) => sides.0 = true,
+            (false, true) => sides.1 = true,
+            _ => return None,
+        }
+    }
+    (sides.0 != sides.1).then(|| "the welds modelled there lie on one side only; the other side has none".into())
 }
 
 /// The least throat of some welds if every one is a fillet with a known throat.

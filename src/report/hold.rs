@@ -8,7 +8,7 @@ use super::page::{Page, Tone};
 
 use super::window::Source;
 use crate::origin::Place;
-use crate::review::{Finding, JointReview, MemberBrief, Outcome, Required, Resistance};
+use crate::review::{Finding, JointReview, MemberBrief, Outcome, Required, Resistance, StiffnessResult};
 
 /// Findings and reasons a joint that are not written out.
 const FINDINGS: usize = 8;
@@ -40,6 +40,9 @@ pub(super) fn draw(
     if let Some(intended) = &joint.intended_resistance {
         page.line(3, &format!("as intended it would resist {}", resistance(intended)));
     }
+    if let Some(stiffness) = &joint.stiffness {
+        page.line(3, &turning(stiffness));
+    }
     findings(page, joint, at);
     for missing in &joint.missing {
         page.line(3, &format!("not known either: {missing}"));
@@ -55,6 +58,14 @@ pub(super) fn draw(
         let list = page.listed(alike.iter().map(|other| brief(other)));
         page.line(3, &format!("the same faults at {}: {list}", count(alike.len(), "more joint", "more joints")));
     }
+}
+
+/// "stiffness: Sj,ini 24310 kNm/rad, semi-rigid (rigid from 48500); partial-strength".
+fn turning(s: &StiffnessResult) -> String {
+    let least = if s.lower_bound { "at least " } else { "" };
+    let from = s.rigid_from.map_or(String::new(), |rigid| format!(" (rigid from {rigid:.0})"));
+    let class = if s.class.starts_with("not stated") { format!("class {}", s.class) } else { s.class.clone() };
+    format!("stiffness: Sj,ini {least}{:.0} kNm/rad, {class}{from}; {}", s.initial, s.strength)
 }
 
 /// "B2 (1.02, part P2)".

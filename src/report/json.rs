@@ -7,8 +7,13 @@ pub mod document;
 
 use document::{
     Basis, BoltRow, Bolts, Check, Counts, Difference, Finding, Input, Joint, Kind, Lack, LackReason, Member, Missing,
-    Model, Part, Place, Plate, Problem, Question, Recognised, Rejected, Required, Resistance, Row, Setting, Tool, Weld,
+    Model, Part, Place, Plate, Problem, Question, Recognised, Rejected, Required, Resistance, Row, Setting, Spring,
+    Stiffness, Tool, Weld,
 };
+
+use std::io::{self, Write};
+
+use serde::{Serialize, Serializer};
 
 use super::{group, survey as drawn};
 use crate::origin;
@@ -25,17 +30,7 @@ pub const SURVEY_SCHEMA: &str = "faying-survey/1";
 /// # Errors
 /// Only where serde_json can't write, which these structs give no cause for.
 pub fn review(review: &Review) -> serde_json::Result<String> {
-    written(&document::Review {
-        schema: REVIEW_SCHEMA.into(),
-        tool: this_tool(),
-        model: model(review),
-        schedule: review.schedule.clone(),
-        basis: basis(&review.basis),
-        counts: counts(&review.counts),
-        joints: review.joints.iter().map(joint).collect(),
-        problems: review.problems.iter().map(problem).collect(),
-        caution: CAUTION.into(),
-    })
+    written(&document(review))
 }
 
 /// The survey as a JSON document that ends with a line end; the same bytes for the same review.
@@ -43,6 +38,49 @@ pub fn review(review: &Review) -> serde_json::Result<String> {
 /// # Errors
 /// Only where serde_json can't write, which these structs give no cause for.
 pub fn survey(review: &Review) -> serde_json::Result<String> {
+    written(&surveyed(review))
+}
+
+/// Writes what [`fn@review`] gives without ever holding all of it.
+///
+/// # Errors
+/// Whatever the writer says.
+pub fn write_review(review: &Review, to: impl Write) -> io::Result<()> {
+    write(&document(review), to)
+}
+
+/// Writes what [`survey`] gives without ever holding all of it.
+///
+/// # Errors
+/// Whatever the writer says.
+pub fn write_survey(review: &Review, to: impl Write) -> io::Result<()> {
+    write(&surveyed(review), to)
+}
+
+/// Items that are put into the form of the document one by one, as they are written.
+struct Each<'a, T, F>(&'a [T], F);
+
+impl<T, U: Serialize, F: Fn(&T) -> U> Serialize for Each<'_, T, F> {
+    fn serialize<S: Serializer>(&self, serializer: S) -> Result<S::Ok, S::Error> {
+        serializer.collect_seq(self.0.iter().map(&self.1))
+    }
+}
+
+fn document(review: &Review) -> document::Review<impl Serialize, impl Serialize> {
+    document::Review {
+        schema: REVIEW_SCHEMA.into(),
+        tool: this_tool(),
+        model: model(review),
+        schedule: review.schedule.clone(),
+        basis: basis(&review.basis),
+        counts: counts(&review.counts),
+        joints: Each(&review.joints, joint),
+        problems: Each(&review.problems, problem),
+        caution: CAUTION.into(),
+    }
+}
+
+fn surveyed(review: &Review) -> document::Survey {
     let s = &review.survey;
     let strings = |marks: Vec<&str>| marks.into_iter().map(str::to_owned).collect::<Vec<String>>();
     let kind = |(kind, joints): (&str, Vec<&review::JointReview>)| Kind {
@@ -65,7 +103,7 @@ pub fn survey(review: &Review) -> serde_json::Result<String> {
             })
             .collect(),
     };
-    written(&document::Survey {
+    document::Survey {
         schema: SURVEY_SCHEMA.into(),
         tool: this_tool(),
         model: model(review),
@@ -93,11 +131,18 @@ pub fn survey(review: &Review) -> serde_json::Result<String> {
             .collect(),
         problems: review.problems.iter().map(problem).collect(),
         caution: CAUTION.into(),
-    })
+    }
 }
 
-fn written(document: &impl serde::Serialize) -> serde_json::Result<String> {
+fn written(document: &impl Serialize) -> serde_json::Result<String> {
     serde_json::to_string_pretty(document).map(|text| text + "\n")
+}
+
+fn write(document: &impl Serialize, to: impl Write) -> io::Result<()> {
+    let mut to = io::BufWriter::with_capacity(1 << 16, to);
+    serde_json::to_writer_pretty(&mut to, document)?;
+    to.write_all(b"\n")?;
+    to.flush()
 }
 
 /// Rounded to 0.001; `None` where it is not finite.
@@ -167,6 +212,7 @@ fn joint(j: &review::JointReview) -> Joint {
         intended_resistance: j.intended_resistance.as_ref().map(resistance),
         required: j.required.iter().map(required).collect(),
         rows: j.rows.iter().map(row).collect(),
+        stiffness: j.stiffness.as_ref().map(stiffness),
         checks: j.checks.iter().map(check).collect(),
         findings: j.findings.iter().map(finding).collect(),
         missing: j.missing.iter().map(missing).collect(),
@@ -239,6 +285,26 @@ fn row(r: &review::RowResult) -> Row {
     }
 }
 
+fn stiffness(s: &review::StiffnessResult) -> Stiffness {
+    let spring = |(title, k): &(String, Option<f64>)| Spring { title: title.clone(), k_mm: k.and_then(thousandth) };
+    Stiffness {
+        sense: s.sense.into(),
+        beta: ratio(s.beta),
+        initial_knm_per_rad: thousandth(s.initial),
+        at_required_knm_per_rad: s.at_required.and_then(thousandth),
+        lower_bound: s.lower_bound,
+        lever_arm_mm: thousandth(s.lever_arm_mm),
+        springs: s.springs.iter().map(spring).collect(),
+        rigid_from_knm_per_rad: s.rigid_from.and_then(thousandth),
+        pinned_up_to_knm_per_rad: s.pinned_up_to.and_then(thousandth),
+        class: s.class.clone(),
+        assumed: s.assumed.map(Into::into),
+        strength: s.strength.into(),
+        rotation: s.rotation.clone(),
+        notes: s.notes.clone(),
+    }
+}
+
 fn check(c: &review::CheckResult) -> Check {
     Check {
         id: c.id.clone(),
@@ -249,6 +315,7 @@ fn check(c: &review::CheckResult) -> Check {
         unit: c.unit.into(),
         utilisation: c.utilisation.and_then(ratio),
         outcome: c.outcome.into(),
+        needed_throat_mm: c.needed_throat_mm.and_then(thousandth),
     }
 }
 

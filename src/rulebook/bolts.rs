@@ -1,11 +1,13 @@
 //! Bolt sizes, strength classes and hole clearances.
 
+use std::collections::BTreeMap;
+
 use serde::Deserialize;
 use toml::Spanned;
 
 use super::error::RuleError;
 use super::load::RuleFile;
-use super::tables::{BoltClass, BoltSize, Clearance};
+use super::tables::{BoltClass, BoltSize, Clearance, SlipRules};
 use crate::units::{Area, Length};
 
 /// What `bolts.toml` holds.
@@ -15,6 +17,7 @@ pub(super) struct Bolts {
     pub classes: Vec<BoltClass>,
     pub clearances: Vec<Clearance>,
     pub sizes: Vec<BoltSize>,
+    pub slip: SlipRules,
 }
 
 impl Bolts {
@@ -40,6 +43,7 @@ impl Bolts {
         #[serde(deny_unknown_fields)]
         struct Size {
             d: Spanned<f64>,
+            pitch: Spanned<f64>,
             a_s: Spanned<f64>,
             across_flats: Spanned<f64>,
             across_corners: Spanned<f64>,
@@ -48,11 +52,20 @@ impl Bolts {
             washer_thickness: Spanned<f64>,
             head: Spanned<f64>,
             nut: Spanned<f64>,
+            nut_preloaded: Spanned<f64>,
+        }
+        #[derive(Deserialize)]
+        #[serde(deny_unknown_fields)]
+        struct Slip {
+            preloaded: Vec<String>,
+            friction: BTreeMap<String, Spanned<f64>>,
+            reduced_by_tension: bool,
         }
         #[derive(Deserialize)]
         #[serde(deny_unknown_fields)]
         struct File {
             alpha_v_shank: Spanned<f64>,
+            slip: Slip,
             class: Vec<Class>,
             clearance: Vec<Gap>,
             size: Vec<Size>,
@@ -60,6 +73,11 @@ impl Bolts {
         let file: File = rules.parse()?;
         let mut bolts =
             Bolts { alpha_v_shank: rules.within("alpha_v_shank", &file.alpha_v_shank, 0.1..=0.7)?, ..Self::default() };
+        bolts.slip.preloaded = file.slip.preloaded;
+        bolts.slip.reduced_by_tension = file.slip.reduced_by_tension;
+        for (class, mu) in &file.slip.friction {
+            bolts.slip.friction.insert(class.clone(), rules.within("friction", mu, 0.05..=0.8)?);
+        }
         for class in &file.class {
             let name = rules.text("name", &class.name)?;
             if bolts.classes.iter().any(|other| other.name == name) {
@@ -106,6 +124,7 @@ impl Bolts {
             let across_flats = rules.length("across_flats", &size.across_flats)?;
             bolts.sizes.push(BoltSize {
                 d,
+                pitch: Length(rules.within("pitch", &size.pitch, 0.5..=10.0)?),
                 a,
                 a_s,
                 d_0: d + clearance.round,
@@ -120,6 +139,7 @@ impl Bolts {
                 washer_thickness: rules.length("washer_thickness", &size.washer_thickness)?,
                 head: rules.length("head", &size.head)?,
                 nut: rules.length("nut", &size.nut)?,
+                nut_preloaded: rules.length("nut_preloaded", &size.nut_preloaded)?,
             });
         }
         Ok(bolts)

@@ -8,15 +8,21 @@ use serde::de::DeserializeOwned;
 use toml::Spanned;
 
 use super::error::RuleError;
-use super::{Annex, ModeOne, RowForces, Settings, Tolerances, WeldRules};
+use super::{Alpha, Annex, ModeOne, RowForces, Settings, Tolerances, WeldRules};
 use crate::units::{Length, Stress};
 
 /// Every rule file that the program carries.
 pub(super) const EMBEDDED: &[(&str, &str)] = &[
+    ("annexes/de.toml", include_str!("../../rules/annexes/de.toml")),
+    ("annexes/es.toml", include_str!("../../rules/annexes/es.toml")),
+    ("annexes/fr.toml", include_str!("../../rules/annexes/fr.toml")),
+    ("annexes/it.toml", include_str!("../../rules/annexes/it.toml")),
+    ("annexes/nl.toml", include_str!("../../rules/annexes/nl.toml")),
     ("annexes/recommended.toml", include_str!("../../rules/annexes/recommended.toml")),
     ("annexes/uk.toml", include_str!("../../rules/annexes/uk.toml")),
     ("bolts.toml", include_str!("../../rules/bolts.toml")),
     ("detailing.toml", include_str!("../../rules/detailing.toml")),
+    ("distances.toml", include_str!("../../rules/distances.toml")),
     ("sections/hea.csv", include_str!("../../rules/sections/hea.csv")),
     ("sections/heb.csv", include_str!("../../rules/sections/heb.csv")),
     ("sections/hem.csv", include_str!("../../rules/sections/hem.csv")),
@@ -38,6 +44,26 @@ pub(super) struct RuleFile<'a> {
 
 type Parsed<T> = Result<T, RuleError>;
 type Number = Spanned<f64>;
+
+#[derive(Clone, Copy, Deserialize)]
+enum Rows {
+    #[serde(rename = "by-annex")]
+    ByAnnex,
+    #[serde(rename = "linear-beyond-1.9")]
+    Linear,
+    #[serde(rename = "thin-plate-or-linear")]
+    Thin,
+}
+
+impl Rows {
+    fn choice(self) -> Option<RowForces> {
+        match self {
+            Self::ByAnnex => None,
+            Self::Linear => Some(RowForces::LinearBeyond19),
+            Self::Thin => Some(RowForces::ThinPlateOrLinear),
+        }
+    }
+}
 
 impl RuleFile<'_> {
     pub(super) fn error<T>(&self, spanned: &Spanned<T>, message: impl Into<String>) -> RuleError {
@@ -92,12 +118,22 @@ impl RuleFile<'_> {
         }
         #[derive(Deserialize)]
         #[serde(deny_unknown_fields)]
+        struct Choice {
+            choice: Rows,
+            source: Spanned<String>,
+        }
+        #[derive(Deserialize)]
+        #[serde(deny_unknown_fields)]
         #[allow(non_snake_case, reason = "the standard's symbols are the keys of the file")]
         struct File {
             name: Spanned<String>,
             gamma_M0: Factor,
             gamma_M1: Factor,
             gamma_M2: Factor,
+            gamma_Mu: Option<Factor>,
+            row_forces: Option<Choice>,
+            gamma_M3: Option<Factor>,
+            gamma_M3_ser: Option<Factor>,
         }
         let file: File = self.parse()?;
         let mut sources: Vec<String> = Vec::new();
@@ -105,10 +141,24 @@ impl RuleFile<'_> {
             sources.push(format!("{what}: {}", self.text("source", &factor.source)?));
             self.within(what, &factor.value, 1.0..=2.0)
         };
+        let gamma_m0 = factor("gamma_M0", &file.gamma_M0)?;
+        let gamma_m1 = factor("gamma_M1", &file.gamma_M1)?;
+        let gamma_m2 = factor("gamma_M2", &file.gamma_M2)?;
+        let gamma_mu = file.gamma_Mu.as_ref().map(|given| factor("gamma_Mu", given)).transpose()?;
+        let gamma_m3 = match (&file.gamma_M3, &file.gamma_M3_ser) {
+            (Some(ultimate), Some(service)) => Some((factor("gamma_M3", ultimate)?, factor("gamma_M3_ser", service)?)),
+            _ => None,
+        };
+        if let Some(rows) = &file.row_forces {
+            sources.push(format!("row forces: {}", self.text("source", &rows.source)?));
+        }
         Ok(Annex {
-            gamma_m0: factor("gamma_M0", &file.gamma_M0)?,
-            gamma_m1: factor("gamma_M1", &file.gamma_M1)?,
-            gamma_m2: factor("gamma_M2", &file.gamma_M2)?,
+            gamma_m0,
+            gamma_m1,
+            gamma_m2,
+            gamma_mu,
+            row_forces: file.row_forces.and_then(|rows| rows.choice.choice()),
+            gamma_m3,
             name: self.text("name", &file.name)?,
             source: sources.join("; "),
         })
@@ -117,11 +167,11 @@ impl RuleFile<'_> {
     /// The settings, and the annex they choose.
     pub fn settings(&self) -> Parsed<(Settings, Spanned<String>)> {
         #[derive(Deserialize)]
-        enum Rows {
-            #[serde(rename = "linear-beyond-1.9")]
-            Linear,
-            #[serde(rename = "thin-plate-or-linear")]
-            Thin,
+        enum From {
+            #[serde(rename = "chart")]
+            Chart,
+            #[serde(rename = "draft-2024")]
+            Draft,
         }
         #[derive(Deserialize)]
         enum Mode {
@@ -135,6 +185,7 @@ impl RuleFile<'_> {
         struct File {
             annex: Spanned<String>,
             row_forces: Rows,
+            alpha: From,
             mode_one: Mode,
             strength_by_flange: bool,
             alpha_max: Number,
@@ -146,9 +197,12 @@ impl RuleFile<'_> {
         }
         let file: File = self.parse()?;
         let settings = Settings {
-            row_forces: match file.row_forces {
-                Rows::Linear => RowForces::LinearBeyond19,
-                Rows::Thin => RowForces::ThinPlateOrLinear,
+            // By annex: set when the annex is taken.
+            row_forces: file.row_forces.choice().unwrap_or(RowForces::LinearBeyond19),
+            row_forces_by_annex: file.row_forces.choice().is_none(),
+            alpha: match file.alpha {
+                From::Chart => Alpha::Chart,
+                From::Draft => Alpha::Draft2024,
             },
             mode_one: match file.mode_one {
                 Mode::One => ModeOne::Method1,

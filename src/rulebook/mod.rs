@@ -2,6 +2,7 @@
 
 mod bolts;
 mod catalogue;
+mod distances;
 mod error;
 mod load;
 mod names;
@@ -15,8 +16,8 @@ use std::sync::OnceLock;
 
 pub use error::RuleError;
 pub use tables::{
-    Annex, BoltClass, BoltSize, Clearance, Grade, ModeOne, RowForces, Section, Settings, Strength, Tolerances,
-    WeldRules,
+    Alpha, Annex, BoltClass, BoltSize, Category, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings,
+    SlipRules, Strength, Tolerances, WeldRules,
 };
 
 use crate::origin::Known;
@@ -45,6 +46,10 @@ pub struct Rulebook {
     pub alpha_v_shank: f64,
     /// Hole clearances by bolt diameter.
     pub clearances: Vec<Clearance>,
+    /// Slip of preloaded bolts.
+    pub slip: SlipRules,
+    /// Distances and room of bolts.
+    pub distances: Distances,
     /// Rules for fillet welds.
     pub welds: WeldRules,
     annexes: Vec<(String, Annex)>,
@@ -116,6 +121,7 @@ impl Rulebook {
             EMBEDDED.iter().find(|(name, _)| *name == "vocabulary.toml").map(|(_, text)| *text).unwrap_or_default();
         let mut vocabulary = Vocabulary::load(RuleFile { name: "vocabulary.toml", text: own })?;
         vocabulary.add(file("vocabulary.toml"))?;
+        let settings = by_annex(settings, annex);
         Ok(Self {
             annex: annex.clone(),
             settings,
@@ -124,6 +130,8 @@ impl Rulebook {
             bolt_classes: bolts.classes,
             alpha_v_shank: bolts.alpha_v_shank,
             clearances: bolts.clearances,
+            slip: bolts.slip,
+            distances: file("distances.toml").distances()?,
             welds: file("welds.toml").welds()?,
             annexes,
             steel: Steel::load(file("steel.toml"))?,
@@ -137,7 +145,7 @@ impl Rulebook {
         self.annexes.iter().map(|(id, _)| id.as_str())
     }
 
-    /// Takes the partial factors of another annex.
+    /// Takes the partial factors of another annex, and what it chooses where the settings leave that to the annex.
     ///
     /// # Errors
     /// A sentence with the annexes there are.
@@ -147,6 +155,7 @@ impl Rulebook {
             return Err(format!("annex \"{id}\"; allowed is {}", known.join(", ")));
         };
         self.annex = annex.clone();
+        self.settings = by_annex(self.settings.clone(), &self.annex);
         Ok(())
     }
 
@@ -245,4 +254,13 @@ impl Rulebook {
     pub fn vocabulary(&self, concept: &str) -> impl Iterator<Item = &str> {
         self.vocabulary.words(concept)
     }
+}
+
+/// The settings with what the annex chooses.
+fn by_annex(settings: Settings, annex: &Annex) -> Settings {
+    let row_forces = match settings.row_forces_by_annex {
+        true => annex.row_forces.unwrap_or(RowForces::LinearBeyond19),
+        false => settings.row_forces,
+    };
+    Settings { row_forces, ..settings }
 }

@@ -3,9 +3,14 @@
 use std::f64::consts::PI;
 
 use super::Section;
-use crate::units::{Area, Length, Modulus};
+use crate::units::{Area, Length, Modulus, SecondMoment};
 
 impl Section {
+    /// I_y.
+    pub fn i_y(&self) -> SecondMoment {
+        0.5 * (self.w_el_y * self.h)
+    }
+
     /// A doubly symmetric I or H section from its sizes (overall depth, flange width, web and flange thickness, root
     /// radius): every property is computed here and nowhere else, for catalogue sections too.
     ///

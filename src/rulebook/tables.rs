@@ -50,6 +50,8 @@ pub struct Section {
 pub struct BoltSize {
     /// d.
     pub d: Length,
+    /// p: pitch of the coarse thread.
+    pub pitch: Length,
     /// A: gross area of the shank.
     pub a: Area,
     /// A_s: tensile stress area.
@@ -70,6 +72,8 @@ pub struct BoltSize {
     pub head: Length,
     /// m: nut height.
     pub nut: Length,
+    /// m of EN 14399-4: no nut of class 10.9 is lower.
+    pub nut_preloaded: Length,
 }
 
 /// A bolt strength class.
@@ -85,6 +89,51 @@ pub struct BoltClass {
     pub alpha_v: f64,
 }
 
+/// Category of a bolted connection, EN 1993-1-8:2005 3.4, Table 3.2.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Category {
+    /// Bearing type.
+    A,
+    /// Slip-resistant at serviceability.
+    B,
+    /// Slip-resistant at the ultimate limit state.
+    C,
+    /// In tension, not preloaded.
+    D,
+    /// In tension, preloaded.
+    E,
+}
+
+impl Category {
+    /// By its letter.
+    pub fn named(letter: &str) -> Option<Self> {
+        match letter.trim() {
+            "A" | "a" => Some(Self::A),
+            "B" | "b" => Some(Self::B),
+            "C" | "c" => Some(Self::C),
+            "D" | "d" => Some(Self::D),
+            "E" | "e" => Some(Self::E),
+            _ => None,
+        }
+    }
+
+    /// Whether its bolts are preloaded.
+    pub fn preloaded(self) -> bool {
+        matches!(self, Self::B | Self::C | Self::E)
+    }
+}
+
+/// Slip of preloaded bolts.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct SlipRules {
+    /// Bolt classes that may be preloaded, 3.1.2.
+    pub preloaded: Vec<String>,
+    /// μ by class of friction surface, Table 3.7.
+    pub friction: BTreeMap<String, f64>,
+    /// Whether a bolt's own tension takes off its slip resistance (3.8), or is counterbalanced by 3.9.2(3).
+    pub reduced_by_tension: bool,
+}
+
 /// What a hole is larger than the bolt, EN 1090-2.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Clearance {
@@ -98,6 +147,35 @@ pub struct Clearance {
     pub short_slot: Length,
     /// Long slotted hole: its overall length in bolt diameters.
     pub long_slot: f64,
+}
+
+/// Distances and room of bolts: what the detailing rules ask for.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Distances {
+    /// Least e_1 in d_0.
+    pub end: f64,
+    /// Least e_2 in d_0.
+    pub edge: f64,
+    /// Least p_1 in d_0.
+    pub pitch: f64,
+    /// Least p_2 in d_0.
+    pub gauge: f64,
+    /// Greatest e_1 and e_2 of exposed steel: so many t …
+    pub greatest_edge: f64,
+    /// … and this.
+    pub greatest_edge_beside: Length,
+    /// Greatest p_1 and p_2 of exposed steel: so many t …
+    pub greatest_spacing: f64,
+    /// … and at most this.
+    pub greatest_spacing_most: Length,
+    /// Whether steel is exposed where the schedule does not say.
+    pub exposed: bool,
+    /// Threads that a bolt shows past its nut.
+    pub threads_past_nut: f64,
+    /// Washers on a bolt where nobody counts them.
+    pub washers: f64,
+    /// A socket's outer diameter in widths across flats.
+    pub socket: f64,
 }
 
 /// Rules for fillet welds, EN 1993-1-8 section 4; throats a and lengths.
@@ -126,6 +204,12 @@ pub struct Annex {
     pub gamma_m1: f64,
     /// γ_M2.
     pub gamma_m2: f64,
+    /// γ_Mu, for the resistance to tying; `None` where the annex states none.
+    pub gamma_mu: Option<f64>,
+    /// What "by-annex" means for [`Settings::row_forces`].
+    pub row_forces: Option<RowForces>,
+    /// γ_M3 and γ_M3,ser, for slip; `None` where the annex does not state both.
+    pub gamma_m3: Option<(f64, f64)>,
     /// Where the values come from.
     pub source: String,
 }
@@ -137,6 +221,15 @@ pub enum RowForces {
     LinearBeyond19,
     /// UK practice: plastic if the plate or the flange is thin enough, else linear.
     ThinPlateOrLinear,
+}
+
+/// Where α comes from.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Alpha {
+    /// EN 1993-1-8:2005 Figure 6.11.
+    Chart,
+    /// The formula of a draft of EN 1993-1-8:2024.
+    Draft2024,
 }
 
 /// Which formula of Table 6.2 is used for mode 1.
@@ -153,6 +246,10 @@ pub enum ModeOne {
 pub struct Settings {
     /// See [`RowForces`].
     pub row_forces: RowForces,
+    /// Whether the annex in use chooses it.
+    pub row_forces_by_annex: bool,
+    /// See [`Alpha`].
+    pub alpha: Alpha,
     /// See [`ModeOne`].
     pub mode_one: ModeOne,
     /// A rolled section's strength by its flange thickness (true) or each element by its own (false).

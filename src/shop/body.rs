@@ -33,8 +33,8 @@ impl<'a> Reading<'a> {
         let body = |r: &&Entity<'_>| {
             r.text("RepresentationIdentifier").is_some_and(|identifier| identifier.eq_ignore_ascii_case("Body"))
         };
-        let bodies: Vec<Vec<_>> = representations.iter().filter(body).map(|r| r.entities("Items")).collect();
-        let mut bodies = bodies.into_iter().filter(|items| !items.is_empty());
+        let mut bodies =
+            representations.iter().filter(body).map(|r| r.entities("Items")).filter(|items| !items.is_empty());
         let mut items = bodies.next().unwrap_or_default();
         if bodies.next().is_some() {
             self.problem(product, "It has several bodies; only the first is looked at.");
@@ -90,18 +90,23 @@ impl<'a> Reading<'a> {
             }
         } else {
             let straight = self.straight();
-            let solids = self.own_solids(item, depth > 0);
+            // A plain sweep of one part's own is nobody else's.
+            if depth == 0 && item.is_a("IfcSweptAreaSolid") && !self.solids_of.borrow().contains_key(&item.id) {
+                let solids = self.compose(item, 0);
+                if solids.len() >= *budget || !self.spend(solids.len()) {
+                    *budget = 0;
+                    return into.push(Err(format!("its body has more than {ITEMS} solids")));
+                }
+                *budget -= solids.len();
+                return into.extend(solids.into_iter().map(|solid| solid?.moved(map, straight)));
+            }
+            let solids = self.own_solids(item);
             if solids.len() >= *budget || !self.spend(solids.len()) {
                 *budget = 0;
                 return into.push(Err(format!("its body has more than {ITEMS} solids")));
             }
             *budget -= solids.len();
-            match Rc::try_unwrap(solids) {
-                Ok(own) => into.extend(own.into_iter().map(|solid| solid?.moved(map, straight))),
-                Err(shared) => into.extend(
-                    shared.iter().map(|solid| solid.as_ref().map_err(Clone::clone)?.clone().moved(map, straight)),
-                ),
-            }
+            into.extend(solids.iter().map(|solid| solid.as_ref().map_err(Clone::clone)?.clone().moved(map, straight)));
         }
     }
 
@@ -120,15 +125,13 @@ impl<'a> Reading<'a> {
         Ok((target * origin, items))
     }
 
-    /// The solids of an item in its own coordinates; what many may share is kept.
-    fn own_solids(&self, item: Entity<'a>, shared: bool) -> Rc<Vec<Solid>> {
+    /// The solids of an item in its own coordinates, kept: many may share it.
+    fn own_solids(&self, item: Entity<'a>) -> Rc<Vec<Solid>> {
         if let Some(known) = self.solids_of.borrow().get(&item.id) {
             return known.clone();
         }
         let solids = Rc::new(self.compose(item, 0));
-        if shared || !item.is_a("IfcSweptAreaSolid") {
-            self.solids_of.borrow_mut().insert(item.id, solids.clone());
-        }
+        self.solids_of.borrow_mut().insert(item.id, solids.clone());
         solids
     }
 
@@ -136,6 +139,12 @@ impl<'a> Reading<'a> {
     fn compose(&self, item: Entity<'a>, depth: usize) -> Vec<Solid> {
         if depth > NESTED {
             return vec![Err(format!("its body is of unions nested deeper than {NESTED} levels"))];
+        }
+        if !item.is_a("IfcCsgSolid") && !item.is_a("IfcBooleanResult") {
+            return match self.spend(1) {
+                true => self.single(item),
+                false => vec![Err("the exchange has more cut bodies than can be read".into())],
+            };
         }
         let (mut cutters, mut joined) = (Vec::new(), Vec::new());
         let mut item = item;

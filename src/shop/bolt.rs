@@ -1,12 +1,16 @@
 //! Bolts: one for each shank, however the exchange grouped them, and what is no bolt although it is a fastener.
 
+use std::cell::OnceCell;
+use std::rc::Rc;
+
 use glam::DVec3;
 
 use super::Bolt;
+use super::kin::said_of;
 use super::material::said_by;
 use super::properties::{By, Plausible, Property};
 use super::reading::Reading;
-use super::shank::{Cluster, Shank, round};
+use super::shank::{Shanks, round};
 use super::solid::Prism;
 use super::statement::{Statement, first_text};
 use super::words::Word;
@@ -36,6 +40,21 @@ pub(super) enum Says {
     Anchor,
     /// Only that it is round and of a bolt's size: a nut or a washer on it must say more.
     Shape,
+}
+
+/// What is said of a bolt apart from its body, the same for all its kin.
+pub(super) struct BoltSaid<'a> {
+    stated: Vec<Statement<'a, f64>>,
+    length: Known<Length>,
+    class: Known<String>,
+    hole: Option<Length>,
+    slot: Option<Length>,
+    /// Whether nuts or washers are counted.
+    held: bool,
+    /// Whether bolts are counted.
+    counts: bool,
+    /// A diameter that was worked out: for whom, and for which shank, mm.
+    diameter: OnceCell<(Entity<'a>, f64, Datum<Length>)>,
 }
 
 impl<'a> Reading<'a> {
@@ -84,7 +103,7 @@ impl<'a> Reading<'a> {
         }
     }
 
-    /// The bolts of a fastener; `nutted` says whether a nut or washer of its own sits on a line.
+    /// Adds the bolts of a fastener, on an error perhaps some of them; `nutted` says whether a nut or washer of its own sits on a line.
     ///
     /// # Errors
     /// Why it holds none, readable.
@@ -92,36 +111,34 @@ impl<'a> Reading<'a> {
         &self,
         element: Entity<'a>,
         says: Says,
-        prisms: &[&Prism],
+        shanks: &Shanks,
         nutted: impl Fn(DVec3, DVec3) -> bool,
-    ) -> Result<Vec<Bolt>, String> {
-        if let Some(why) = prisms.iter().find_map(|p| p.beyond.as_ref()).filter(|_| says != Says::Anchor) {
+        bolts: &mut Vec<Bolt>,
+    ) -> Result<(), String> {
+        if let Some(why) = shanks.beyond.as_ref().filter(|_| says != Says::Anchor) {
             return Err(format!("it is no straight bolt: {why}"));
         }
-        let clusters = self.clusters(prisms);
-        let shanks: Vec<(&Cluster<'_>, Shank)> = clusters.iter().filter_map(|c| Some((c, c.shank()?))).collect();
-        if shanks.is_empty() {
+        if shanks.found.is_empty() {
             return Err("its body has no round shank longer than its diameter".into());
         }
-        if shanks.len() < clusters.len() {
-            let left = clusters.len() - shanks.len();
+        if shanks.found.len() < shanks.clusters {
+            let left = shanks.clusters - shanks.found.len();
             self.problem(
                 element,
-                format!("{left} of its {} solids apart have no round shank and are no bolts", clusters.len()),
+                format!("{left} of its {} solids apart have no round shank and are no bolts", shanks.clusters),
             );
         }
-        let properties = self.properties_of(element);
-        let stated = self.diameters(element, &properties);
-        let length = self.length(element, &properties);
-        let class = self.class(element, &properties);
-        let hole = self.hole(element, &properties);
-        let slot = self.slot(element, &properties);
-        self.count(element, &properties, shanks.len());
-        let counted = |concept: &str| properties.iter().any(|p| p.means(concept) && p.count().is_some_and(|n| n > 0.0));
-        let said = counted("nut-count") || counted("washer-count");
-        let mut bolts = Vec::new();
-        for (cluster, shank) in shanks {
-            let held = said || cluster.headed(&shank) || nutted(shank.start, shank.end);
+        let (with, said) = match element.text("Name") {
+            Some(_) => self.once(element, &self.kin(element).bolt, || Rc::new(self.bolt_said(element))),
+            // Who has no name is called by its label, which is its own.
+            None => (element, Rc::new(self.bolt_said(element))),
+        };
+        let length = said_of(&said.length, with, element);
+        if said.counts {
+            self.count(element, &self.properties_of(element), shanks.found.len());
+        }
+        for (shank, headed) in &shanks.found {
+            let held = said.held || *headed || nutted(shank.start, shank.end);
             if says == Says::Shape && !held {
                 let length = shank.start.distance(shank.end);
                 return Err(format!(
@@ -129,7 +146,7 @@ impl<'a> Reading<'a> {
                     shank.diameter
                 ));
             }
-            let diameter = self.diameter(element, &stated, shank.diameter)?;
+            let diameter = self.diameter_once(element, with, &said, shank.diameter)?;
             let d = diameter.value.get();
             if !(d >= DIAMETERS.0 && d <= DIAMETERS.1) {
                 return Err(format!("{d:.1} mm is no bolt diameter ({} to {} mm)", DIAMETERS.0, DIAMETERS.1));
@@ -153,13 +170,53 @@ impl<'a> Reading<'a> {
                 end: shank.end,
                 diameter: Ok(diameter),
                 length: length.clone(),
-                class: class.clone(),
-                hole,
-                slot,
+                class: said_of(&said.class, with, element),
+                hole: said.hole,
+                slot: said.slot,
                 anchor: says == Says::Anchor,
             });
         }
-        Ok(bolts)
+        Ok(())
+    }
+
+    /// What is said of a bolt apart from its body.
+    fn bolt_said(&self, element: Entity<'a>) -> BoltSaid<'a> {
+        let properties = self.properties_of(element);
+        let counted = |concept: &str| properties.iter().any(|p| p.means(concept) && p.count().is_some_and(|n| n > 0.0));
+        BoltSaid {
+            stated: self.diameters(element, &properties),
+            length: self.length(element, &properties),
+            class: self.class(element, &properties),
+            hole: self.hole(element, &properties),
+            slot: self.slot(element, &properties),
+            held: counted("nut-count") || counted("washer-count"),
+            counts: properties.iter().any(|p| p.means("bolt-count")),
+            diameter: OnceCell::new(),
+        }
+    }
+
+    /// The diameter of a shank drawn with one; as it was worked out for kin, where nobody contradicts.
+    fn diameter_once(
+        &self,
+        element: Entity<'a>,
+        with: Entity<'a>,
+        said: &BoltSaid<'a>,
+        drawn: f64,
+    ) -> Result<Datum<Length>, String> {
+        if let Some((of, as_drawn, known)) = said.diameter.get()
+            && as_drawn.to_bits() == drawn.to_bits()
+        {
+            return said_of(&Ok(known.clone()), *of, element).map_err(|missing| missing.reason);
+        }
+        let own = |s: &Statement<'a, f64>| Statement { at: if s.at.id == with.id { element } else { s.at }, ..*s };
+        let stated: Vec<_> = said.stated.iter().map(own).collect();
+        let problems = self.problems_met();
+        let diameter = self.diameter(element, &stated, drawn)?;
+        // Without a statement the origin names the place in words.
+        if self.problems_met() == problems && !stated.is_empty() {
+            let _ = said.diameter.set((element, drawn, diameter.clone()));
+        }
+        Ok(diameter)
     }
 
     /// All that is said of the diameter: attributes, properties, names.

@@ -2,6 +2,7 @@
 
 use std::collections::HashMap;
 
+use foldhash::fast::RandomState;
 use glam::DVec3;
 
 use super::Rejected;
@@ -30,7 +31,7 @@ pub(super) struct Hardware {
 #[derive(Default)]
 pub(super) struct Lines {
     lines: Vec<(DVec3, DVec3)>,
-    cells: HashMap<[i64; 3], Vec<usize>>,
+    cells: HashMap<[i64; 3], Vec<usize>, RandomState>,
     long: Vec<usize>,
 }
 
@@ -53,6 +54,9 @@ impl Lines {
     /// Whether a nut or washer sits on one of the lines; `aside` is how far off its axis it may lie, `parallel` the
     /// sine of the angle it may lean, mm.
     pub fn hold(&self, at: DVec3, axis: DVec3, aside: f64, parallel: f64) -> bool {
+        if self.lines.is_empty() {
+            return false;
+        }
         let [x, y, z] = cell(at);
         let near = (-1..=1).flat_map(|i| (-1..=1).flat_map(move |j| (-1..=1).map(move |k| [x + i, y + j, z + k])));
         let bolts = near.filter_map(|cell| self.cells.get(&cell)).flatten().take(ASKED);

@@ -2,6 +2,7 @@
 
 use std::borrow::Cow;
 
+use super::kin::said_of;
 use super::profile::Profile;
 use super::properties::{By, Property};
 use super::reading::Reading;
@@ -84,6 +85,10 @@ impl<'a> Reading<'a> {
 
     /// Whether a material says that the part is of no steel.
     pub fn not_of_steel(&self, element: Entity<'a>) -> Option<String> {
+        self.kin(element).not_of_steel.get_or_init(|| self.no_steel(element)).clone()
+    }
+
+    fn no_steel(&self, element: Entity<'a>) -> Option<String> {
         let concrete = |text: &str| {
             // A concrete class: C25/30.
             text.split_whitespace().any(|word| {
@@ -99,6 +104,11 @@ impl<'a> Reading<'a> {
 
     /// The steel grade of a part, from its materials and its properties; never from other parts.
     pub fn grade(&self, element: Entity<'a>) -> Known<Grade> {
+        let (with, grade) = self.once(element, &self.kin(element).grade, || self.find_grade(element));
+        said_of(&grade, with, element)
+    }
+
+    fn find_grade(&self, element: Entity<'a>) -> Known<Grade> {
         let missing = |reason: String| Missing {
             what: "steel grade".into(),
             reason,

@@ -14,6 +14,7 @@ mod bolt_name;
 mod curve;
 mod faces;
 mod hardware;
+mod kin;
 mod levels;
 mod links;
 mod material;

@@ -3,7 +3,7 @@
 //! Axes are completed and made orthogonal by the functions of the IFC schema (`IfcBuildAxes`, `IfcFirstProjAxis`,
 //! `IfcBaseAxis`); where those yield nothing (zero or parallel directions) the map is refused with a reason.
 
-use glam::{DAffine2, DAffine3, DMat2, DMat3, DVec2, DVec3};
+use glam::{DAffine2, DAffine3, DMat2, DMat3, DVec3};
 
 use super::reading::Reading;
 use crate::exchange::Entity;
@@ -88,8 +88,7 @@ impl Reading<'_> {
     /// A cartesian point in mm, z = 0 for one of two coordinates.
     pub fn point(&self, point: Option<Entity<'_>>) -> Result<DVec3, String> {
         let Some(point) = point else { return Err("a placement or curve lacks a point".into()) };
-        let coordinates = point.numbers("Coordinates").unwrap_or_default();
-        vector(&coordinates)
+        vector(point, "Coordinates")
             .map(|p| p * self.units.length)
             .filter(|p| p.is_finite())
             .ok_or_else(|| format!("the point at {} has no two or three finite coordinates", point.place()))
@@ -102,10 +101,13 @@ pub(super) fn lift(map: DAffine2) -> DAffine3 {
     DAffine3::from_mat3_translation(DMat3::from_cols(x, y, DVec3::Z), map.translation.extend(0.0))
 }
 
-fn vector(ratios: &[f64]) -> Option<DVec3> {
-    match *ratios {
-        [x, y] => Some(DVec2::new(x, y).extend(0.0)),
-        [x, y, z] => Some(DVec3::new(x, y, z)),
+/// Two or three numbers of a list attribute, z = 0 for one of two.
+fn vector(of: Entity<'_>, attribute: &str) -> Option<DVec3> {
+    let list = of.value(attribute).list()?;
+    let at = |index| list.get(index)?.number();
+    match list.len() {
+        2 => Some(DVec3::new(at(0)?, at(1)?, 0.0)),
+        3 => Some(DVec3::new(at(0)?, at(1)?, at(2)?)),
         _ => None,
     }
 }
@@ -113,8 +115,10 @@ fn vector(ratios: &[f64]) -> Option<DVec3> {
 /// A unit direction; an error if it is given but has no length.
 pub(super) fn direction(of: Entity<'_>, attribute: &str) -> Result<Option<DVec3>, String> {
     let Some(direction) = of.entity(attribute) else { return Ok(None) };
-    let ratios = direction.numbers("DirectionRatios").unwrap_or_default();
-    vector(&ratios).and_then(DVec3::try_normalize).map(Some).ok_or_else(|| degenerate(of, attribute))
+    vector(direction, "DirectionRatios")
+        .and_then(DVec3::try_normalize)
+        .map(Some)
+        .ok_or_else(|| degenerate(of, attribute))
 }
 
 /// `IfcFirstProjAxis`: the x axis at right angles to z; `None` where the given one is parallel to z.

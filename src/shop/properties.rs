@@ -71,14 +71,7 @@ pub(super) struct Plausible(pub f64, pub f64);
 impl<'a> Reading<'a> {
     /// A part's own properties, then those of its type that the part does not override.
     pub fn properties_of(&self, element: Entity<'_>) -> Rc<Vec<Property<'a>>> {
-        if let Some((id, known)) = &*self.last_properties.borrow()
-            && *id == element.id
-        {
-            return known.clone();
-        }
-        let properties = Rc::new(self.collect_properties(element));
-        *self.last_properties.borrow_mut() = Some((element.id, properties.clone()));
-        properties
+        self.kin(element).properties.get_or_init(|| Rc::new(self.collect_properties(element))).clone()
     }
 
     fn collect_properties(&self, element: Entity<'_>) -> Vec<Property<'a>> {

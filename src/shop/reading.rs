@@ -5,9 +5,12 @@ use std::collections::HashMap;
 use std::rc::Rc;
 use std::sync::Arc;
 
+use foldhash::fast::RandomState;
 use glam::DAffine3;
+use hashbrown::HashTable;
 
 use super::Identity;
+use super::kin::Kin;
 use super::links::{Link, Links};
 use super::properties::Property;
 use super::solid::Solid;
@@ -27,14 +30,15 @@ pub(super) struct Reading<'a> {
     pub units: Units,
     pub links: Arc<Links>,
     /// World placements that were already computed.
-    pub placements: RefCell<HashMap<Id, DAffine3>>,
+    pub placements: RefCell<HashMap<Id, DAffine3, RandomState>>,
     /// Solids of items that more than one part may use.
-    pub solids_of: RefCell<HashMap<Id, Rc<Vec<Solid>>>>,
+    pub solids_of: RefCell<HashMap<Id, Rc<Vec<Solid>>, RandomState>>,
     /// Texts that were already looked up.
-    pub texts: RefCell<HashMap<Box<str>, Rc<Text<'a>>>>,
-    /// The properties of the part that was asked last, and its names: they are asked for again and again.
-    pub last_properties: RefCell<Option<(Id, Rc<Vec<Property<'a>>>)>>,
-    last_names: RefCell<Option<(Id, Names<'a>)>>,
+    pub texts: RefCell<HashMap<Box<str>, Rc<Text<'a>>, RandomState>>,
+    /// Kin that were already met, and the part that was asked last with its kin: it is asked for again and again.
+    pub kins: RefCell<HashTable<Rc<Kin<'a>>>>,
+    pub last_kin: RefCell<Option<(Id, Rc<Kin<'a>>)>>,
+    pub hasher: RandomState,
     problems: RefCell<Vec<Problem>>,
 }
 
@@ -64,8 +68,9 @@ impl<'a> Common<'a> {
             placements: RefCell::default(),
             solids_of: RefCell::default(),
             texts: RefCell::default(),
-            last_properties: RefCell::default(),
-            last_names: RefCell::default(),
+            kins: RefCell::default(),
+            last_kin: RefCell::default(),
+            hasher: RandomState::default(),
             problems: RefCell::default(),
         }
     }
@@ -80,6 +85,11 @@ impl<'a> Reading<'a> {
     /// All problems, as they were met.
     pub fn into_problems(self) -> Vec<Problem> {
         self.problems.into_inner()
+    }
+
+    /// How many problems were met.
+    pub fn problems_met(&self) -> usize {
+        self.problems.borrow().len()
     }
 
     /// Takes some solids off what may still be read; false once too many were asked for.
@@ -122,38 +132,37 @@ impl<'a> Reading<'a> {
 
     /// The names that a part bears, with what bears them; the part's own first.
     pub fn names_of(&self, element: Entity<'_>) -> Names<'a> {
-        if let Some((id, known)) = &*self.last_names.borrow()
-            && *id == element.id
-        {
-            return known.clone();
-        }
-        let own = self.entities.get(element.id);
-        let of_own = ["Name", "ObjectType", "Description"].map(|attribute| (attribute, own.text(attribute)));
-        let of_type = self.type_of(element).into_iter().flat_map(|t| {
+        self.kin(element).names.clone()
+    }
+
+    pub(super) fn names(&self, element: Entity<'a>, of_type: Option<Entity<'a>>) -> Names<'a> {
+        let of_own = ["Name", "ObjectType", "Description"].map(|attribute| (attribute, element.text(attribute)));
+        let of_type = of_type.into_iter().flat_map(|t| {
             [
                 ("Name of its type", t.text("Name")),
                 ("ElementType of its type", t.text("ElementType")),
                 ("Description of its type", t.text("Description")),
             ]
         });
-        let names: Names<'a> =
-            Rc::new(of_own.into_iter().chain(of_type).filter_map(|(by, text)| Some((by, text?))).collect());
-        *self.last_names.borrow_mut() = Some((element.id, names.clone()));
-        names
+        Rc::new(of_own.into_iter().chain(of_type).filter_map(|(by, text)| Some((by, text?))).collect())
     }
 
     /// `PredefinedType` of the part, or of its type where the part leaves it open.
     pub fn predefined(&self, element: Entity<'_>) -> Option<&'a str> {
-        let own = self.entities.get(element.id).token("PredefinedType");
-        own.filter(|t| *t != "NOTDEFINED").or_else(|| self.type_of(element)?.token("PredefinedType")).or(own)
+        self.kin(element).predefined
     }
 
     /// Who a part is. The mark is its Tag, else a property that means one; the tag of a type marks nothing.
     pub fn identity(&self, element: Entity<'_>) -> Identity {
         let mark = element.text("Tag").map(str::to_owned).or_else(|| {
-            let properties = self.properties_of(element);
-            let marks = |p: &&Property<'_>| p.means("mark") || (p.name == "Reference" && p.set.starts_with("Pset_"));
-            properties.iter().filter(|p| !p.of_type).find(marks).and_then(|p| p.text()).map(|text| text.into_owned())
+            let by_property = || {
+                let properties = self.properties_of(element);
+                let marks =
+                    |p: &&Property<'_>| p.means("mark") || (p.name == "Reference" && p.set.starts_with("Pset_"));
+                let mark = properties.iter().filter(|p| !p.of_type).find(marks)?.text()?;
+                Some(mark.into_owned())
+            };
+            self.kin(element).mark.get_or_init(by_property).clone()
         });
         Identity {
             guid: element.text("GlobalId").unwrap_or_default().to_owned(),

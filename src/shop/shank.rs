@@ -41,10 +41,38 @@ pub(super) struct Shank {
     pub diameter: f64,
 }
 
+/// What of a part's solids matters to its bolts, without the solids.
+pub(super) struct Shanks {
+    /// Why one of the solids is no straight prism.
+    pub beyond: Option<String>,
+    /// How many bolts the solids may be.
+    pub clusters: usize,
+    /// The shanks among them, and whether something wider sits on each.
+    pub found: Vec<(Shank, bool)>,
+}
+
 impl Reading<'_> {
+    /// What of some solids matters to bolts.
+    pub fn shanks(&self, prisms: &[&Prism]) -> Shanks {
+        let clusters = self.clusters(prisms);
+        let found = clusters.iter().filter_map(|cluster| {
+            let shank = cluster.shank()?;
+            let headed = cluster.headed(&shank);
+            Some((shank, headed))
+        });
+        Shanks {
+            beyond: prisms.iter().find_map(|p| p.beyond.clone()),
+            clusters: clusters.len(),
+            found: found.collect(),
+        }
+    }
+
     /// Solids on one axis that touch belong to one bolt; bolts come in the order of their first solid.
     pub fn clusters<'p>(&self, prisms: &[&'p Prism]) -> Vec<Cluster<'p>> {
         let parts: Vec<OnAxis<'p>> = prisms.iter().map(|prism| OnAxis::of(prism)).collect();
+        if parts.len() == 1 {
+            return vec![Cluster { parts }];
+        }
         // Only what overlaps along the direction in which they spread most is held against each other.
         let spread = |i: usize| {
             let all = parts.iter().map(|part| part.from[i]);

@@ -13,7 +13,7 @@ use super::profile::Kind;
 use super::reading::{Common, Reading};
 use super::section::{extent, see};
 use super::several::SOLIDS;
-use super::shank::{SMALL, round, small_part};
+use super::shank::{SMALL, Shanks, round, small_part};
 use super::solid::Prism;
 use super::words::Word;
 use super::{Bolt, Part, Rejected, Shape, Steelwork};
@@ -53,8 +53,8 @@ const NO_STEELWORK: [&str; 20] = [
 /// What an element is, once it is known to be none of the parts that are told apart only by others.
 enum Found {
     Parts(Vec<Part>),
-    /// Perhaps a bolt: what says so, and its solids.
-    Bolt(Says, Vec<Prism>),
+    /// Perhaps a bolt: what says so, and what its solids show.
+    Bolt(Says, Shanks),
     /// A nut or a washer.
     Hardware(Word, Vec<Prism>),
 }
@@ -68,7 +68,7 @@ struct Taken<'a> {
     steelwork: Steelwork,
     parts: Vec<(Id, Vec<Part>)>,
     wholes: Vec<Entity<'a>>,
-    bolts: Vec<(Entity<'a>, Says, Vec<Prism>)>,
+    bolts: Vec<(Entity<'a>, Says, Shanks)>,
     hardware: Vec<Hardware>,
 }
 
@@ -84,6 +84,9 @@ pub fn take_up(exchange: &Exchange, rulebook: &Rulebook) -> Steelwork {
         taken = vec![Taken::of(&common, elements)];
     }
     let mut steelwork = Steelwork { problems, ..Steelwork::default() };
+    steelwork.members.reserve_exact(taken.iter().map(|some| some.steelwork.members.len()).sum());
+    steelwork.plates.reserve_exact(taken.iter().map(|some| some.steelwork.plates.len()).sum());
+    steelwork.welds.reserve_exact(taken.iter().map(|some| some.steelwork.welds.len()).sum());
     let mut parts: BTreeMap<Id, Vec<Part>> = BTreeMap::new();
     let (mut wholes, mut bolts, mut hardware) = (Vec::new(), Vec::new(), Vec::new());
     for some in taken {
@@ -134,7 +137,7 @@ impl<'a> Taken<'a> {
             }
             match reading.take(element, &mut all.steelwork) {
                 Ok(Found::Parts(taken)) => all.parts.push((element.id, taken)),
-                Ok(Found::Bolt(says, prisms)) => all.bolts.push((element, says, prisms)),
+                Ok(Found::Bolt(says, shanks)) => all.bolts.push((element, says, shanks)),
                 Ok(Found::Hardware(what, prisms)) => all.hardware.extend(reading.hardware(element, what, &prisms)),
                 Err(reason) => {
                     all.steelwork.rejected.push(Rejected { identity: reading.identity(element), reason });
@@ -146,13 +149,13 @@ impl<'a> Taken<'a> {
     }
 }
 
-/// The bolts of a fastener, or why it holds none.
-type Asked = Result<Vec<Bolt>, String>;
+/// The bolts of some fasteners, how many of each or why it holds none, and what could not be understood.
+type Asked = (Vec<Bolt>, Vec<Result<usize, String>>, Vec<Problem>);
 
 /// Decides on bolts, with the nuts and washers that lie apart from them as evidence.
 fn tell_bolts<'a>(
     common: &Common<'a>,
-    bolts: Vec<(Entity<'a>, Says, Vec<Prism>)>,
+    bolts: Vec<(Entity<'a>, Says, Shanks)>,
     hardware: Vec<Hardware>,
     steelwork: &mut Steelwork,
     parts: &mut BTreeMap<Id, Vec<Part>>,
@@ -169,31 +172,39 @@ fn tell_bolts<'a>(
         let steps = (from.distance(to) / 50.0).ceil().clamp(1.0, 64.0);
         (0..=steps as usize).any(|i| nuts.hold(from.lerp(to, i as f64 / steps), axis, aside, straight))
     };
-    let told: Vec<(Vec<Asked>, Vec<Problem>)> = bolts
+    let told: Vec<Asked> = bolts
         .par_chunks(GO)
         .map(|some| {
             let reading = common.reading();
-            let tell = |(element, says, prisms): &(Entity<'a>, Says, Vec<Prism>)| {
-                let all: Vec<&Prism> = prisms.iter().collect();
-                reading.bolts(*element, *says, &all, nutted)
+            let mut found = Vec::with_capacity(some.len());
+            let mut tell = |(element, says, shanks): &(Entity<'a>, Says, Shanks)| {
+                let first = found.len();
+                let told = reading.bolts(*element, *says, shanks, nutted, &mut found);
+                told.map(|()| found.len() - first).inspect_err(|_| found.truncate(first))
             };
-            (some.iter().map(tell).collect(), reading.into_problems())
+            let counts = some.iter().map(&mut tell).collect();
+            (found, counts, reading.into_problems())
         })
         .collect();
     let reading = common.reading();
-    let mut shanks = Lines::default();
-    let (found, problems): (Vec<_>, Vec<_>) = told.into_iter().unzip();
-    steelwork.problems.extend(problems.into_iter().flatten());
-    for ((element, ..), found) in bolts.iter().zip(found.into_iter().flatten()) {
-        match found {
-            Ok(found) => {
-                let first = steelwork.bolts.len();
-                found.iter().for_each(|bolt| shanks.put(bolt.start, bolt.end));
-                steelwork.bolts.extend(found);
-                parts.insert(element.id, (first..steelwork.bolts.len()).map(Part::Bolt).collect());
+    steelwork.bolts.reserve_exact(told.iter().map(|(found, ..)| found.len()).sum());
+    for (some, (found, counts, problems)) in bolts.chunks(GO).zip(told) {
+        let mut first = steelwork.bolts.len();
+        steelwork.bolts.extend(found);
+        steelwork.problems.extend(problems);
+        for ((element, ..), count) in some.iter().zip(counts) {
+            match count {
+                Ok(count) => {
+                    parts.insert(element.id, (first..first + count).map(Part::Bolt).collect());
+                    first += count;
+                }
+                Err(reason) => steelwork.rejected.push(Rejected { identity: reading.identity(*element), reason }),
             }
-            Err(reason) => steelwork.rejected.push(Rejected { identity: reading.identity(*element), reason }),
         }
+    }
+    let mut shanks = Lines::default();
+    if !hardware.is_empty() {
+        steelwork.bolts.iter().for_each(|bolt| shanks.put(bolt.start, bolt.end));
     }
     for mut piece in hardware {
         let held = shanks.hold(piece.at, piece.axis, aside, straight);
@@ -242,7 +253,7 @@ impl<'a> Reading<'a> {
                     format!("{count} of the fastener's solids can't be read ({reason}); the others are."),
                 );
             }
-            return Ok(Found::Bolt(says, prisms));
+            return Ok(Found::Bolt(says, self.shanks(&seen)));
         }
         if let Some(material) = self.not_of_steel(element) {
             return Err(format!("its material \"{material}\" is no steel"));

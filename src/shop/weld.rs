@@ -1,9 +1,11 @@
 //! Welds and their sizes by the letters of ISO 2553: a throat, z leg, s penetration, l length.
 
 use std::f64::consts::SQRT_2;
+use std::rc::Rc;
 
 use glam::DVec3;
 
+use super::kin::said_of;
 use super::properties::{Plausible, Property};
 use super::reading::Reading;
 use super::solid::Prism;
@@ -22,10 +24,21 @@ const SIZE: Plausible = Plausible(1.0, 60.0);
 /// Lengths of a seam, mm.
 const LENGTH: Plausible = Plausible(5.0, 50_000.0);
 
+/// What is said of a weld.
+pub(super) struct WeldSaid {
+    sort: WeldSort,
+    throat: Known<Length>,
+    length: Option<Known<Length>>,
+}
+
 impl<'a> Reading<'a> {
     /// Whether a part is a weld: by type, by the standard's property set, or by name. Of other classes than a
     /// fastener only what is called a weld and nothing else: a "weld plate" is a plate.
     pub fn is_weld(&self, element: Entity<'a>) -> bool {
+        *self.kin(element).is_weld.get_or_init(|| self.calls_it_a_weld(element))
+    }
+
+    fn calls_it_a_weld(&self, element: Entity<'a>) -> bool {
         let has_set = || self.properties_of(element).iter().any(|p| p.set == SET);
         let names = self.names_of(element);
         if element.is_a("IfcFastener") && !element.is_a("IfcMechanicalFastener") {
@@ -46,14 +59,21 @@ impl<'a> Reading<'a> {
 
     /// A weld.
     pub fn weld(&self, element: Entity<'a>) -> Weld {
-        let properties = self.properties_of(element);
-        let sort = self.weld_sort(element, &properties);
         let axis = self.axis_line(element);
+        let (with, said) = self.once(element, &self.kin(element).weld, || {
+            let properties = self.properties_of(element);
+            let sort = self.weld_sort(element, &properties);
+            let (throat, length) = (self.throat(element, &properties, sort), self.stated_length(element, &properties));
+            Rc::new(WeldSaid { sort, throat, length })
+        });
         Weld {
             identity: self.identity(element),
-            sort,
-            throat: self.throat(element, &properties, sort),
-            length: self.seam_length(element, &properties, axis.as_deref()),
+            sort: said.sort,
+            throat: said_of(&said.throat, with, element),
+            length: match &said.length {
+                Some(length) => said_of(length, with, element),
+                None => seam_length(element, axis.as_deref()),
+            },
             points: self.weld_points(element).or(axis).unwrap_or_default(),
         }
     }
@@ -135,29 +155,17 @@ impl<'a> Reading<'a> {
         }
     }
 
-    fn seam_length(&self, element: Entity<'a>, properties: &[Property<'a>], axis: Option<&[DVec3]>) -> Known<Length> {
-        let missing = |reason: String| Missing {
-            what: "weld length".into(),
-            reason,
-            at: Some(element.place()),
-            ask: Ask::Fabricator,
-        };
+    /// The length of the seam, if its properties state any.
+    fn stated_length(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Option<Known<Length>> {
         let stated = self.sizes(element, properties, "l", "WeldElementLength", "weld-length", LENGTH);
-        if let [first, rest @ ..] = stated.as_slice() {
-            return match rest.iter().find(|s| !((s.value - first.value).abs() <= 1.0)) {
-                Some(other) => Err(missing(format!(
-                    "{} says {:.1} mm, {} says {:.1} mm",
-                    first.by, first.value, other.by, other.value
-                ))),
-                None => Ok(Datum::new(mm(first.value), first.origin("weld"))),
-            };
-        }
-        match axis {
-            Some([a, b]) if a.distance(*b) > 0.0 => {
-                Ok(Datum::new(mm(a.distance(*b)), Origin::Derived("distance of the ends of the weld's axis".into())))
-            }
-            _ => Err(missing("no length above zero is stated by the weld's properties or its axis".into())),
-        }
+        let [first, rest @ ..] = stated.as_slice() else { return None };
+        Some(match rest.iter().find(|s| !((s.value - first.value).abs() <= 1.0)) {
+            Some(other) => Err(no_length(
+                element,
+                format!("{} says {:.1} mm, {} says {:.1} mm", first.by, first.value, other.by, other.value),
+            )),
+            None => Ok(Datum::new(mm(first.value), first.origin("weld"))),
+        })
     }
 
     /// The corners of the box of the weld's body, along its placement; of the prism itself if it is one.
@@ -192,4 +200,18 @@ impl<'a> Reading<'a> {
         };
         Some((0..8).map(corner).collect())
     }
+}
+
+/// The length of a seam of which no property states one.
+fn seam_length(element: Entity<'_>, axis: Option<&[DVec3]>) -> Known<Length> {
+    match axis {
+        Some([a, b]) if a.distance(*b) > 0.0 => {
+            Ok(Datum::new(mm(a.distance(*b)), Origin::Derived("distance of the ends of the weld's axis".into())))
+        }
+        _ => Err(no_length(element, "no length above zero is stated by the weld's properties or its axis".into())),
+    }
+}
+
+fn no_length(element: Entity<'_>, reason: String) -> Missing {
+    Missing { what: "weld length".into(), reason, at: Some(element.place()), ask: Ask::Fabricator }
 }

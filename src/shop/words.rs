@@ -34,9 +34,13 @@ impl Word {
 impl<'a> Reading<'a> {
     /// What the first of its names that says anything calls a part.
     pub fn called(&self, element: Entity<'a>) -> Option<Word> {
-        self.names_of(element).iter().find_map(|(_, text)| {
-            let text = self.text(text);
-            Word::ALL.into_iter().find(|word| text.words().says(word.concept()))
-        })
+        let kin = self.kin(element);
+        let first = || {
+            kin.names.iter().find_map(|(_, text)| {
+                let text = self.text(text);
+                Word::ALL.into_iter().find(|word| text.words().says(word.concept()))
+            })
+        };
+        *kin.called.get_or_init(first)
     }
 }

@@ -5,7 +5,7 @@ use std::sync::LazyLock;
 use faying::assess::end_plate::{Demand, Opposite, assess};
 use faying::assess::{About, Assessment, MomentResistance, Sense, State, Verdict};
 use faying::intent::LoadCase;
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, MemberAt, Stiffener, Welds};
+use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, MemberAt, Stiffener, Welds};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::rulebook::{Rulebook, Section};
 use faying::units::{Length, kn, knm, mm};
@@ -129,6 +129,7 @@ impl Sketch {
                 class: known(self.class.into()),
                 hole: known(rulebook.bolt_size(mm(self.d)).unwrap().d_0),
                 rows,
+                held: Held::default(),
             },
             welds: Welds {
                 flange_top: known(mm(self.flange_weld)),
@@ -182,7 +183,7 @@ pub fn sketches() -> impl Strategy<Value = Sketch> {
 
 pub fn case(moment: Option<f64>, shear: Option<f64>, axial: Option<f64>) -> LoadCase {
     let at = Place { file: "".into(), line: 0, column: 0 };
-    LoadCase { name: "ULS".into(), moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), at }
+    LoadCase { moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), ..LoadCase::blank("ULS", at) }
 }
 
 /// The joint alone, with one load case.

@@ -35,6 +35,8 @@ fn scaled_rules(rulebook: &Rulebook, k: f64) -> Rulebook {
             &mut size.washer_thickness,
             &mut size.head,
             &mut size.nut,
+            &mut size.nut_preloaded,
+            &mut size.pitch,
         ] {
             *length = k * *length;
         }
@@ -243,6 +245,8 @@ proptest! {
             let b = resistance(&larger, sense, beta, &rules).unwrap();
             prop_assert!(same(k.powi(3) * a.without_welds.get(), b.without_welds.get()), "{} {}", a.without_welds, b.without_welds);
             prop_assert!(same(k.powi(3) * a.moment.get(), b.moment.get()));
+            let stiffness = |of: &MomentResistance| of.stiffness.as_ref().map_or(0.0, |s| s.initial.get());
+            prop_assert!(same(k.powi(3) * stiffness(&a), stiffness(&b)), "{} {}", stiffness(&a), stiffness(&b));
         }
         let shear = |layout: &EndPlateLayout, rules: &Rulebook| assess(layout, &[], false, rules).shear.unwrap().shear.get();
         prop_assert!(same(k * k * shear(&layout, rulebook), shear(&larger, &rules)));

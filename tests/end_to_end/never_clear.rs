@@ -6,7 +6,7 @@ use super::bench::{
     SCHEDULE, axes, is, j1, joint, long_shed, many, one_case, origin, owned, plain, profile, review, shed, simple,
     told, written,
 };
-use crate::writer::building::{Building, ClassIn, Section};
+use crate::writer::building::{Building, ClassIn, End, Section};
 use crate::writer::entity::{Declared::*, Entity, Field, Link, Simple};
 
 enum How {
@@ -54,7 +54,7 @@ fn cases() -> Vec<Case> {
         ("one bolt at a slant", Written(|e| { if is(e, BOLT) { turn(e, [-1.0, 0.0, 0.3], [0.3, 0.0, 1.0]) } true }), Unproven, ""),
         ("one bolt of no place", Written(|e| { if is(e, BOLT) { origin(e)[0] = f64::NAN } true }), Unproven, ""),
         ("no bolt at all", Written(|e| !(e.class == "IfcMechanicalFastener" && is_of_j1(e))), Hold, "no bolted joint"),
-        ("a row in the flange", Drawn(|b| j1(b).bolts.rows = vec![518.0, 449.0, 302.0, 70.0]), Unproven, "row 2 lies in the beam's flange"),
+        ("a row in the flange", Drawn(|b| j1(b).bolts.rows = vec![518.0, 449.0, 302.0, 70.0]), Hold, "row 2 lies in the beam's flange"),
         ("two rows beyond the flange", Drawn(|b| { j1(b).bolts.rows = vec![590.0, 502.0, 392.0, 70.0]; j1(b).plate.top = 640.0 }), Unproven, "beyond the tension flange"),
         ("countersunk bolts", Written(|e| { if e.class.starts_with("IfcMechanicalFastener") { name(e, "M24 x 80 countersunk") } true }), Unproven, "countersunk"),
         ("bolts drawn thinner than they are called", Written(|e| { if e.class == "IfcCircleProfileDef" { real(e, "Radius", 8.0) } true }), Unproven, "normal round holes"),
@@ -83,7 +83,7 @@ fn cases() -> Vec<Case> {
         ("the weld of the bottom flange left out", Written(|e| !is(e, "beam B1/start/weld lower flange")), Unproven, "no weld is modelled there"),
         ("the weld of the web left out", Written(|e| !is(e, "beam B1/start/weld web")), Unproven, "no weld is modelled there"),
         ("a weld below the least throat", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 2.0), Unproven, "3.000 mm is the least"),
-        ("a weld thinner than needed", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 3.0), Hold, "weld"),
+        ("a weld thinner than needed", Drawn(|b| j1(b).welds.as_mut().expect("welds").flange = 3.0), Hold, "it needs a throat of"),
         // ---- plate
         ("no plate", Written(|e| !is(e, PLATE)), Hold, "no bolted joint"),
         ("a plate 5 mm off the column", Written(|e| { if is(e, PLATE) { origin(e)[0] += 5.0 } true }), Unproven, ""),
@@ -212,6 +212,13 @@ fn a_joint_whose_opposite_is_not_known_is_not_clear_by_it() {
     type Other = (&'static str, fn(&mut Building), fn(&mut Entity) -> bool, f64, Outcome, &'static str);
     let same = |_: &mut Building| {};
     let all = |_: &mut Entity| true;
+    // Without its stiffeners, which would stand in the way of J2's lowest nuts.
+    let shallower = |b: &mut Building| {
+        b.beams[1].section = Section { name: "UKB 406x178x60".into(), h: 406.4, b: 177.9, t_w: 7.9, t_f: 12.8, r: 10.2 };
+        if let End::Joint { joint, .. } = &mut b.beams[1].ends[0] {
+            joint.detail.stiffeners.clear();
+        }
+    };
     // J2 takes 300 kNm with tension at the top: clear beside as much on the other side (β = 0), too much with β = 1.
     let cases: [Other; 9] = [
         ("as drawn", same, all, 300.0, Clear, ""),
@@ -219,7 +226,7 @@ fn a_joint_whose_opposite_is_not_known_is_not_clear_by_it() {
         ("nothing on the other side", same, all, 0.0, Hold, "moment"),
         ("tension at the bottom on the other side", same, all, -90.0, Hold, "moment"),
         ("a beam 150 mm lower", |b| b.beams[1].top -= 150.0, all, 300.0, Unproven, "lower bound"),
-        ("a shallower beam, level at the top", |b| b.beams[1].section = Section { name: "UKB 406x178x60".into(), h: 406.4, b: 177.9, t_w: 7.9, t_f: 12.8, r: 10.2 }, all, 300.0, Unproven, "lower bound"),
+        ("a shallower beam, level at the top", shallower, all, 300.0, Unproven, "lower bound"),
         ("a slotted hole on the other side", same, |e| { if is(e, "beam B2/start/plate B2-1") { slot(e) } true }, 300.0, Clear, ""),
         ("no bolts on the other side", same, |e| !(e.class == "IfcMechanicalFastener" && (6500.0..9000.0).contains(&origin(e)[0])), 300.0, Unproven, "lower bound"),
         ("no plate and bolts on the other side", same, |e| !(is(e, "beam B2/start/plate B2-1") || e.class == "IfcMechanicalFastener" && (6500.0..9000.0).contains(&origin(e)[0])), 300.0, Unproven, "lower bound"),

@@ -4,8 +4,8 @@ use std::sync::Arc;
 
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
-use faying::intent::{IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
+use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
+use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
 use faying::rulebook::{Grade, Rulebook, Section};
@@ -164,13 +164,14 @@ pub fn moment(sense: Sense, resistance: f64) -> Arc<MomentResistance> {
         governed_by: "column web in compression".into(),
         rows: Vec::new(),
         components: Vec::new(),
+        stiffness: None,
         notes: Vec::new(),
     })
 }
 
 pub fn load_case(name: &str, moment: Option<f64>, shear: Option<f64>, axial: Option<f64>, line: u32) -> LoadCase {
     let at = Place { file: "schedule.csv".into(), line, column: 1 };
-    LoadCase { name: name.into(), moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), at }
+    LoadCase { moment: moment.map(knm), shear: shear.map(kn), axial: axial.map(kn), ..LoadCase::blank(name, at) }
 }
 
 pub fn place(line: u32) -> Place {
@@ -244,6 +245,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
             class: known("8.8".into()),
             hole: known(mm(26.0)),
             rows: rows(&[560.0, 440.0, 350.0, 60.0]),
+            held: Held::default(),
         },
         welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
         haunch: None,
@@ -338,12 +340,14 @@ fn scheduled() -> ScheduledJoint {
         end: Some("start".into()),
         cases: vec![load_case("W1", Some(300.0), Some(100.0), Some(0.0), 2)],
         detail: Some("E1".into()),
+        frame: InFrame::default(),
         at: Place { file: "schedule.csv".into(), line: 2, column: 1 },
     }
 }
 
 fn intended() -> IntendedDetail {
     IntendedDetail {
+        haunch: None,
         name: "E1".into(),
         supporting_section: Some("HEB 300".into()),
         supported_section: Some("IPE 500".into()),
@@ -362,6 +366,9 @@ fn intended() -> IntendedDetail {
         web_weld: Some(mm(5.0)),
         stiffener_top: Some(None),
         stiffener_bottom: Some(Some(IntendedStiffener { thickness: Some(mm(12.0)), grade: Some("S355".into()) })),
+        exposed: None,
+        bolt_category: None,
+        friction: None,
         at: Some(Place { file: "details.toml".into(), line: 1, column: 1 }),
     }
 }

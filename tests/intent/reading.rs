@@ -162,3 +162,74 @@ fn the_example_on_the_page_is_read() {
     assert_eq!(intent.joints[0].cases[1].axial, None);
     assert_eq!(intent.joints[1].cases[0].moment.map(|m| m.knm()), Some(185.5));
 }
+
+/// One joint of CSV, and its frame.
+fn framed(heading: &str, cell: &str) -> faying::intent::InFrame {
+    sound("s.csv", &format!("joint;{heading}\nJ1;{cell}\n")).joints[0].frame
+}
+
+#[test]
+fn the_joint_in_its_frame_is_read() {
+    use faying::intent::{InFrame, JointClass};
+    for (heading, cell, expected) in [
+        ("span_m", "7.2", 7200.0),
+        ("Span [m]", "7,2", 7200.0),
+        ("beam span / mm", "7200", 7200.0),
+        ("span (mm)", "7200.5", 7200.5),
+    ] {
+        assert_eq!(framed(heading, cell).span.map(|l| l.get()), Some(expected), "{heading} {cell}");
+    }
+    for (heading, cell, expected) in [("frame", "braced", true), ("Bracing", "Unbraced", false)] {
+        assert_eq!(framed(heading, cell).braced, Some(expected), "{heading} {cell}");
+    }
+    for (cell, expected) in
+        [("rigid", JointClass::Rigid), ("Semi rigid", JointClass::SemiRigid), ("PINNED", JointClass::Pinned)]
+    {
+        assert_eq!(framed("class", cell).class, Some(expected), "{cell}");
+    }
+    assert_eq!(framed("span_m", ""), InFrame::default());
+    let toml = "[[joint]]\nmark = \"J1\"\nspan_m = 7.2\nframe = \"braced\"\nclass = \"semi-rigid\"\n";
+    let stated =
+        InFrame { span: Some(faying::units::mm(7200.0)), braced: Some(true), class: Some(JointClass::SemiRigid) };
+    assert_eq!(sound("s.toml", toml).joints[0].frame, stated);
+    // What another file states of the joint stays with it.
+    let csv = read("joint,M_Ed_kNm\nJ1,12\n".as_bytes(), "s.csv").unwrap();
+    let merged = merge(vec![csv, read(toml.as_bytes(), "s.toml").unwrap()]).unwrap();
+    assert_eq!(merged.joints[0].frame, stated);
+}
+
+#[test]
+fn the_frame_of_a_joint_is_stated_in_allowed_words_and_once() {
+    for (file, text, part) in [
+        ("s.csv", "joint,span\nJ1,7\n", "span has no unit; allowed are m, mm"),
+        ("s.csv", "joint,span_ft\nJ1,7\n", "span has the unit \"ft\"; allowed are m, mm"),
+        ("s.csv", "joint,span_m\nJ1,0\n", "allowed is a number above 0"),
+        ("s.csv", "joint,spanner_m\nJ1,7\n", "no known column"),
+        ("s.csv", "joint,span_m,span_mm\nJ1,7,7000\n", "mean the same"),
+        ("s.csv", "joint,frame\nJ1,sway\n", "allowed are braced, unbraced"),
+        ("s.csv", "joint,class\nJ1,stiff\n", "allowed are rigid, semi-rigid, pinned"),
+        ("s.csv", "joint,case,class\nJ1,a,rigid\nJ1,b,pinned\n", "its lines must agree"),
+        ("s.csv", "joint,case,span_m\nJ1,a,7\nJ1,b,8\n", "given \"8000 mm\", but the same joint has \"7000 mm\""),
+        ("s.toml", "[[joint]]\nmark = \"J1\"\nspan_m = -1\n", "a finite number above 0"),
+        ("s.toml", "[[joint]]\nmark = \"J1\"\nspan_m = 7\nspan_mm = 7000\n", "mean the same"),
+        ("s.toml", "[[joint]]\nmark = \"J1\"\nclass = \"stiff\"\n", "allowed are rigid, semi-rigid, pinned"),
+    ] {
+        let error = read(text.as_bytes(), file).unwrap_err().to_string();
+        let detail = format!("{:?}", read(text.as_bytes(), file).unwrap_err());
+        assert!(error.contains(part) || detail.contains(part), "{text}: {error} {detail}");
+    }
+}
+
+#[test]
+fn the_actions_in_the_column_are_read_beside_those_of_the_beam() {
+    let text = "joint,N_Ed_kN,N_col_Ed_kN,M_col_Ed [kNm]\nJ1,1,-850,42\n";
+    let case = &sound("s.csv", text).joints[0].cases[0];
+    let found = (case.axial.map(|n| n.kn()), case.column_axial.map(|n| n.kn()), case.column_moment.map(|m| m.knm()));
+    assert_eq!(found, (Some(1.0), Some(-850.0), Some(42.0)));
+    assert_eq!(case.moment, None);
+    let toml = "[[joint]]\nmark = \"J1\"\n[[joint.case]]\nN_col_Ed_kN = -850\nM_col_Ed_kNm = 42\n";
+    let case = &sound("s.toml", toml).joints[0].cases[0];
+    assert_eq!((case.column_axial.map(|n| n.kn()), case.column_moment.map(|m| m.knm())), (Some(-850.0), Some(42.0)));
+    assert!(read(b"joint,V_col_Ed_kN\nJ1,1\n", "s.csv").is_err());
+    assert!(read(b"joint,N_col_Ed\nJ1,1\n", "s.csv").is_err());
+}

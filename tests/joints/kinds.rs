@@ -1,6 +1,6 @@
 //! The other kinds: listed with their parts, not laid out.
 
-use faying::joints::{Joint, Kind, Meets};
+use faying::joints::{self, Joint, Kind, Meets};
 use faying::shop::{Part, Shape, Steelwork};
 use glam::DVec3;
 
@@ -280,7 +280,7 @@ fn the_graph_keeps_the_strongest_witness() {
     let mut steel = frame(&[Detail::default()]);
     let (column, beam, end_plate) = (Part::Member(0), Part::Member(1), Part::Plate(0));
     steel.told.push(told("T1", &[column, beam], &[end_plate, Part::Bolt(0)]));
-    let graph = find(&steel).graph;
+    let graph = joints::graph(&steel, &rulebook());
     let meets = |a, b| graph.edge_weight(a, b).copied();
     assert_eq!(meets(end_plate, beam), Some(Meets::BearsOn));
     assert_eq!(meets(end_plate, column), Some(Meets::BearsOn));

@@ -3,7 +3,7 @@
 use faying::joints::{EndPlateLayout, Joint, Joints, Kind, Layout, recognise};
 use faying::origin::Origin;
 use faying::rulebook::Grade;
-use faying::shop::{Steelwork, WeldSort};
+use faying::shop::{Steelwork, Weld, WeldSort};
 use faying::units::mm;
 use glam::DVec3;
 
@@ -92,13 +92,85 @@ fn what_no_weld_states_is_missing() {
     assert_eq!((top.what.as_str(), top.reason.as_str()), ("weld at the top flange", "no weld is modelled there"));
 }
 
-#[test]
-fn a_weld_over_a_short_part_of_the_flange_is_no_flange_weld() {
-    let mut steel = frame(&[Detail::default()]);
-    for point in &mut steel.welds[0].points {
-        point.y *= 0.3;
+/// Draws a weld's body over a share of its length, about its middle.
+fn shorten(weld: &mut Weld, along: DVec3, share: f64) {
+    let middle = weld.points.iter().sum::<DVec3>() / weld.points.len() as f64;
+    for point in &mut weld.points {
+        let from_middle = (*point - middle).dot(along);
+        *point += along * from_middle * (share - 1.0);
     }
-    assert!(layout(&steel).welds.flange_top.is_err());
+}
+
+/// Welds 0, 1 and 2 are top, bottom and web.
+#[test]
+fn a_weld_over_a_part_of_the_flange_or_web_is_not_counted_at_full_length() {
+    for share in [0.3, 0.6, 0.9] {
+        for (weld, along) in [(0, DVec3::Y), (1, DVec3::Y), (2, DVec3::Z)] {
+            let mut steel = frame(&[Detail::default()]);
+            shorten(&mut steel.welds[weld], along, share);
+            let welds = layout(&steel).welds;
+            let all = [welds.flange_top, welds.flange_bottom, welds.web];
+            for (i, known) in all.iter().enumerate() {
+                assert_eq!(known.is_ok(), i != weld, "{share} of weld {weld}: {known:?}");
+            }
+            let reason = &all[weld].as_ref().unwrap_err().reason;
+            assert!(share == 0.3 || reason.contains("shorter or intermittent ones are not counted"), "{reason}");
+        }
+    }
+}
+
+/// The weld between two shares of its length.
+fn piece(weld: &Weld, from: f64, to: f64) -> Weld {
+    let mut piece = weld.clone();
+    let ys = || weld.points.iter().map(|point| point.y);
+    let (lo, hi) = (ys().fold(f64::MAX, f64::min), ys().fold(f64::MIN, f64::max));
+    for point in &mut piece.points {
+        point.y = lo + (hi - lo) * if point.y == lo { from } else { to };
+    }
+    piece
+}
+
+#[test]
+fn a_seam_may_be_drawn_in_pieces_that_meet() {
+    let throat = |pieces: &[(f64, f64)]| {
+        let mut steel = frame(&[Detail::default()]);
+        let whole = steel.welds.remove(0);
+        steel.welds.extend(pieces.iter().map(|(from, to)| piece(&whole, *from, *to)));
+        length(&layout(&steel).welds.flange_top)
+    };
+    assert_eq!(throat(&[(0.0, 0.5), (0.5, 1.0)]), Some(7.0));
+    assert_eq!(throat(&[(0.0, 0.6), (0.4, 1.0)]), Some(7.0));
+    assert_eq!(throat(&[(0.0, 0.4), (0.6, 1.0)]), None);
+    // 0.2 of 191 mm is less than 6a = 42 mm, EN 1993-1-8:2005 4.5.1(2).
+    assert_eq!(throat(&[(0.0, 0.8), (0.8, 1.0)]), None);
+}
+
+/// An intermittent seam is drawn from end to end and states the length of one piece.
+#[test]
+fn a_stated_length_shorter_than_what_is_drawn_counts() {
+    let mut steel = frame(&[Detail::default()]);
+    steel.welds[0].length = known(mm(50.0));
+    let reason = layout(&steel).welds.flange_top.unwrap_err().reason;
+    assert!(reason.starts_with("the welds modelled there run over 50 mm of"), "{reason}");
+    steel.welds[0].length = known(mm(400.0));
+    assert_eq!(length(&layout(&steel).welds.flange_top), Some(7.0), "both sides added up");
+}
+
+#[test]
+fn bodies_on_one_side_only_are_no_weld_on_both() {
+    let mut steel = frame(&[Detail::default()]);
+    let face = steel.welds[0].points.iter().map(|p| p.z).sum::<f64>() / 8.0;
+    for point in &mut steel.welds[0].points {
+        point.z = if point.z > face { face + 10.0 } else { face };
+    }
+    let reason = layout(&steel).welds.flange_top.unwrap_err().reason;
+    assert_eq!(reason, "the welds modelled there lie on one side only; the other side has none");
+    // As a line it tells no side.
+    let points = &mut steel.welds[0].points;
+    *points = vec![points[0], points[7]];
+    points[0].z = face;
+    points[1].z = face;
+    assert_eq!(length(&layout(&steel).welds.flange_top), Some(7.0));
 }
 
 #[test]

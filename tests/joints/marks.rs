@@ -146,6 +146,9 @@ fn a_weld_without_a_place_is_placed_by_its_name_and_says_so() {
     steel.welds[0].points.clear();
     steel.welds[0].identity.name = "Flange top".into();
     steel.told.push(told("T1", &[Part::Member(0), Part::Member(1)], &[Part::Plate(0), Part::Weld(0)]));
+    let reason = on_column(&only(&steel)).welds.clone().flange_top.unwrap_err().reason;
+    assert_eq!(reason, "the welds there have neither a place nor a length");
+    steel.welds[0].length = known(faying::units::mm(400.0));
     let joint = only(&steel);
     assert_eq!(length(&on_column(&joint).welds.flange_top), Some(7.0));
     assert_eq!(joint.disagreements, ["a weld has no place: its name alone makes it \"flange-top\""]);

@@ -129,15 +129,43 @@ fn gaps_and_packing() {
     let mut into = plain();
     into.members[1].start.x -= 15.0;
     refused(&into, "the beam runs 15.0 mm into the end plate");
-    let mut packed = plain();
-    for part in packed.members[0..1].iter_mut() {
-        part.start.x -= 6.0;
-        part.end.x -= 6.0;
+    let packed = |size: (f64, f64), t: f64| {
+        let mut steel = plain();
+        for part in steel.members[0..1].iter_mut() {
+            part.start.x -= 6.0;
+            part.end.x -= 6.0;
+        }
+        let middle = steel.plates[0].centre - DVec3::X * (7.5 + t / 2.0);
+        steel.plates.push(plate("PK", middle, DVec3::Y, DVec3::Z, size, t));
+        steel.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 6.0);
+        steel
+    };
+    for size in [(150.0, 502.0), (200.0, 440.0)] {
+        refused(&packed(size, 6.0), "6.0 mm of packing under the end plate does not reach under all of it");
     }
-    let middle = packed.plates[0].centre - DVec3::X * (7.5 + 3.0);
-    packed.plates.push(plate("PK", middle, DVec3::Y, DVec3::Z, (200.0, 500.0), 6.0));
-    packed.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 6.0);
-    refused(&packed, "6.0 mm of packing under the end plate");
+    refused(&packed((200.0, 502.0), 2.0), "stands off the column's flange by 4.0 mm");
+}
+
+/// A pack of the end plate's size or more carries compression and prying through: only the bolts' shear pays for it.
+#[test]
+fn rigid_packing_is_laid_out() {
+    let mut steel = plain();
+    for part in steel.members[0..1].iter_mut() {
+        part.start.x -= 10.0;
+        part.end.x -= 10.0;
+    }
+    let face = steel.plates[0].centre - DVec3::X * 7.5;
+    for (mark, from, t) in [("PK1", 0.0, 4.0), ("PK2", 4.0, 6.0)] {
+        let middle = face - DVec3::X * (from + t / 2.0);
+        steel.plates.push(plate(mark, middle, DVec3::Y, DVec3::Z, (210.0, 520.0), t));
+    }
+    steel.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 10.0);
+    let joint = only(&steel);
+    let layout = joint.layout.as_ref().unwrap();
+    assert_eq!(layout.bolts().held.packing, [mm(4.0), mm(6.0)]);
+    assert_eq!(layout.on_column().unwrap().not_credited, Vec::<String>::new());
+    assert_eq!(joint.plates.iter().filter(|(_, role)| *role == "packing").count(), 2);
+    assert!((layout.grip().unwrap() - layout.plies().unwrap().into_iter().sum()).get() - 10.0 < 1e-9);
 }
 
 #[test]

@@ -36,7 +36,8 @@ pub fn joint(n: usize, outcome: Outcome) -> JointReview {
         rows: Vec::new(),
         row_basis: None,
         shear_case: None,
-        checks: Vec::new(),
+        stiffness: None,
+        checks: Default::default(),
         findings: Vec::new(),
         missing: Vec::new(),
         assumptions: Vec::new(),
@@ -199,7 +200,7 @@ pub fn small() -> Review {
         force_kn: 196.4,
         governed_by: "end plate in bending (mode 2)".into(),
     }];
-    clear.checks = vec![CheckResult {
+    clear.checks = [CheckResult {
         id: "column-web-in-compression".into(),
         title: "column web in compression".into(),
         clause: "EN 1993-1-8:2005 6.2.6.2".into(),
@@ -208,8 +209,10 @@ pub fn small() -> Review {
         unit: "kN",
         utilisation: Some(437.3 / 885.6),
         outcome: "met",
+        needed_throat_mm: None,
         working: Working::default().into(),
-    }];
+    }]
+    .into();
     clear.assumptions = vec!["thread in the shear plane (rule file)".into()];
     clear.inputs = vec![("bolt class".into(), "8.8".into(), "modelled: name of the bolts".into())];
     let mut review = review(vec![thin(1, 262.0), thin(2, 205.0), unproven, bare, unscheduled, comment, clear]);

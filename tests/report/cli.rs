@@ -143,3 +143,49 @@ fn a_closed_pipe_is_no_failure() {
     let out = command.spawn().unwrap().wait_with_output().unwrap();
     assert_eq!((out.status.code(), String::from_utf8_lossy(&out.stderr).as_ref()), (Some(0), ""));
 }
+
+/// The factors of each annex reach the report, and the strength table, the rule for row forces and α follow the rules.
+#[test]
+fn annexes_and_readings_come_by_the_command_line() {
+    let root = Path::new(env!("CARGO_MANIFEST_DIR"));
+    let sample = root.join("sample-exchange");
+    let basis = |more: &[&str]| {
+        let out = faying([&["review", text(&sample), "--format", "json"], more].concat());
+        let json: serde_json::Value = serde_json::from_slice(&out.stdout).unwrap();
+        (json["basis"].clone(), json["joints"][0]["resistance"]["moment_knm"].as_f64())
+    };
+    let setting = |basis: &serde_json::Value, name: &str| {
+        let all = basis["settings"].as_array().unwrap();
+        all.iter().find(|s| s["name"] == name).unwrap_or_else(|| panic!("{name}"))["value"].as_str().unwrap().to_owned()
+    };
+    let (plain, as_it_is) = basis(&[]);
+    assert_eq!(setting(&plain, "table of steel strengths"), "EN 10025-2");
+    for (id, name, gamma_m0, gamma_m1) in [
+        ("recommended", "recommended values", 1.0, 1.0),
+        ("uk", "United Kingdom", 1.0, 1.0),
+        ("de", "Germany", 1.0, 1.1),
+        ("fr", "France", 1.0, 1.0),
+        ("nl", "Netherlands", 1.0, 1.0),
+        ("it", "Italy", 1.05, 1.05),
+        ("es", "Spain", 1.05, 1.05),
+    ] {
+        let (basis, moment) = basis(&["--annex", id]);
+        assert_eq!(basis["annex"], name);
+        assert_eq!((basis["gamma_M0"].as_f64(), basis["gamma_M1"].as_f64()), (Some(gamma_m0), Some(gamma_m1)), "{id}");
+        assert_eq!(setting(&basis, "row forces").contains("UK practice"), id == "uk", "{id}");
+        assert!(gamma_m0 == 1.0 || moment < as_it_is, "{id}: {moment:?} {as_it_is:?}");
+    }
+    let rules = tempfile::tempdir().unwrap();
+    let detailing = fs::read_to_string(root.join("rules/detailing.toml")).unwrap();
+    let steel = fs::read_to_string(root.join("rules/steel.toml")).unwrap();
+    let detailing = detailing.replace("alpha = \"chart\"", "alpha = \"draft-2024\"");
+    fs::write(rules.path().join("detailing.toml"), detailing).unwrap();
+    let steel = steel.replace("\ntable = \"EN 10025-2\"", "\ntable = \"EN 1993-1-1:2005 Table 3.1\"");
+    fs::write(rules.path().join("steel.toml"), steel).unwrap();
+    let (own, other) = basis(&["--rules", text(rules.path())]);
+    assert_eq!(setting(&own, "table of steel strengths"), "EN 1993-1-1:2005 Table 3.1");
+    assert!(setting(&own, "α beside stiffeners and flanges").contains("draft"));
+    assert_ne!(other, as_it_is);
+    let told = refused(&["review", text(&sample), "--annex", "xx"]);
+    assert!(told.contains("annex \"xx\"; allowed is de, es, fr, it, nl, recommended, uk"), "{told}");
+}

@@ -50,7 +50,7 @@ fn words_of_ones_own_come_beside_the_embedded_ones() {
 
 #[test]
 fn single_files_can_be_changed() {
-    let detailing = with(DETAILING, "\"linear-beyond-1.9\"\n", "\"thin-plate-or-linear\"\n");
+    let detailing = with(DETAILING, "\"by-annex\"\n", "\"thin-plate-or-linear\"\n");
     let detailing = with(&detailing, "\"method-1\"\n", "\"method-2\"\n");
     let detailing = with(&detailing, "annex = \"recommended\"", "annex = \"own\"");
     let annex = with(RECOMMENDED, "value = 1.25", "value = 1.30");
@@ -134,7 +134,7 @@ fn every_error_says_what_was_given_and_what_is_allowed() {
         (
             "detailing.toml",
             with(DETAILING, "annex = \"recommended\"", "annex = \"zz\""),
-            "annex = \"zz\"; allowed is \"recommended\", \"uk\"",
+            "annex = \"zz\"; allowed is \"de\", \"es\", \"fr\", \"it\", \"nl\", \"recommended\", \"uk\"",
             Some("\"zz\""),
         ),
         (

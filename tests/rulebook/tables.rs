@@ -1,7 +1,7 @@
 //! Facts of the tables, each with its source.
 
 use faying::origin::Origin;
-use faying::rulebook::{Grade, Rulebook};
+use faying::rulebook::{Grade, RowForces, Rulebook};
 use faying::units::mm;
 use proptest::prelude::*;
 
@@ -170,10 +170,27 @@ fn annexes() {
     let annex = &rules.annex;
     assert_eq!((annex.gamma_m0, annex.gamma_m1, annex.gamma_m2), (1.0, 1.0, 1.25));
     assert!(annex.source.contains("gamma_M2: EN 1993-1-8:2005 Table 2.1"), "{}", annex.source);
-    assert_eq!(rules.annexes().collect::<Vec<_>>(), ["recommended", "uk"]);
+    assert_eq!(rules.annexes().collect::<Vec<_>>(), ["de", "es", "fr", "it", "nl", "recommended", "uk"]);
+    assert_eq!(rules.settings.row_forces, RowForces::LinearBeyond19);
     rules.use_annex("uk").unwrap();
     assert!(rules.annex.source.contains("from memory, confirm with the annex"));
-    assert_eq!(rules.use_annex("xx").unwrap_err(), "annex \"xx\"; allowed is recommended, uk");
+    assert_eq!(rules.use_annex("xx").unwrap_err(), "annex \"xx\"; allowed is de, es, fr, it, nl, recommended, uk");
+    assert_eq!((rules.annex.gamma_mu, rules.settings.row_forces), (Some(1.1), RowForces::ThinPlateOrLinear));
+    // From memory, confirm with the annexes.
+    for (id, gamma_m0, gamma_m1) in
+        [("de", 1.0, 1.1), ("fr", 1.0, 1.0), ("nl", 1.0, 1.0), ("it", 1.05, 1.05), ("es", 1.05, 1.05)]
+    {
+        rules.use_annex(id).unwrap();
+        let annex = &rules.annex;
+        assert_eq!((annex.gamma_m0, annex.gamma_m1, annex.gamma_m2), (gamma_m0, gamma_m1, 1.25), "{id}");
+        assert_eq!(annex.source.matches("from memory").count(), 4, "{id}");
+        assert_eq!(rules.settings.row_forces, RowForces::LinearBeyond19, "{id}");
+    }
+    // A choice in the settings stands whatever the annex.
+    let detailing = include_str!("../../rules/detailing.toml").replace("\"by-annex\"\n", "\"linear-beyond-1.9\"\n");
+    let mut own = Rulebook::with_overrides(&[("detailing.toml", &detailing)]).unwrap();
+    own.use_annex("uk").unwrap();
+    assert_eq!(own.settings.row_forces, RowForces::LinearBeyond19);
 }
 
 proptest! {

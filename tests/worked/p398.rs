@@ -5,7 +5,7 @@
 use faying::assess::end_plate::{Demand, Opposite, assess};
 use faying::assess::{Assessment, Component, MomentResistance};
 use faying::intent::LoadCase;
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, MemberAt, Welds};
+use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, MemberAt, Welds};
 use faying::origin::{Datum, Known, Origin, Place};
 use faying::rulebook::Rulebook;
 use faying::units::{Length, kn, knm, mm};
@@ -47,6 +47,7 @@ pub fn example(rulebook: &Rulebook) -> EndPlateLayout {
             class: known("8.8".into()),
             hole: known(mm(26.0)),
             rows: [0.0, 100.0, 190.0, 460.0].map(|below| row(height_of_row_1 - below)).to_vec(),
+            held: Held::default(),
         },
         welds: Welds { flange_top: known(throat(12.0)), flange_bottom: known(throat(12.0)), web: known(throat(8.0)) },
         haunch: None,
@@ -67,11 +68,10 @@ fn hogging(both_sides: bool) -> std::sync::Arc<MomentResistance> {
 
 fn assessed(both_sides: bool, rulebook: &Rulebook) -> Assessment {
     let case = LoadCase {
-        name: "ULS".into(),
         moment: Some(knm(400.0)),
         shear: Some(kn(300.0)),
         axial: Some(kn(0.0)),
-        at: Place { file: "".into(), line: 0, column: 0 },
+        ..LoadCase::blank("ULS", Place { file: "".into(), line: 0, column: 0 })
     };
     let opposite = if both_sides { Opposite::Moment(knm(400.0)) } else { Opposite::None };
     let demands = [Demand { case: &case, opposite }];

@@ -1,7 +1,9 @@
 //! The intended detail as a layout: what the schedule states, on the joint as detailed for everything it does not state.
 
-use crate::intent::{IntendedDetail, IntendedStiffener};
-use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Layout, MemberAt, SpliceLayout, Stiffener, Welds};
+use crate::intent::{Friction, IntendedDetail, IntendedStiffener};
+use crate::joints::{
+    BoltRow, Bolts, EndPlate, EndPlateLayout, Haunch, Held, Layout, MemberAt, SpliceLayout, Stiffener, Welds,
+};
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook};
 use crate::units::Length;
@@ -15,6 +17,21 @@ pub fn intended_layout(layout: &Layout, detail: &IntendedDetail, rulebook: &Rule
         Layout::EndPlate(layout) => intended(layout, detail, rulebook).map(Layout::EndPlate),
         Layout::Splice(layout) => splice(layout, detail, rulebook).map(Layout::Splice),
     }
+}
+
+/// The joint as detailed with what the schedule asks of its bolts and no model shows: their category and friction
+/// surfaces. `None` where the detail states neither.
+pub fn with_category(layout: &Layout, detail: &IntendedDetail, rulebook: &Rulebook) -> Option<Layout> {
+    if detail.bolt_category.is_none() && detail.friction.is_none() {
+        return None;
+    }
+    let mut asked = layout.clone();
+    let held = match &mut asked {
+        Layout::EndPlate(layout) => &mut layout.bolts.held,
+        Layout::Splice(layout) => &mut layout.bolts.held,
+    };
+    Stated { detail, rulebook }.category(held);
+    Some(asked)
 }
 
 /// The same for an end-plate splice: what is stated of plate and welds is meant for both halves.
@@ -59,6 +76,7 @@ pub fn intended(
     meant.column_above = layout.column_above.map(|above| above - up);
     meant.column_below = layout.column_below.map(|below| below + down);
     stated.welds(&mut meant.welds);
+    stated.haunch(&mut meant.haunch)?;
 
     if let (Ok(beam), Ok(column)) = (&meant.beam.section, &meant.column.section) {
         let (h, t_f) = (beam.value.h, beam.value.t_f);
@@ -145,6 +163,50 @@ impl Stated<'_> {
         if let Some(class) = &self.detail.bolt_class {
             bolts.class = Ok(Datum::new(class.clone(), self.by("bolt class")));
         }
+        self.category(&mut bolts.held);
+        Ok(())
+    }
+
+    fn category(&self, held: &mut Held) {
+        if let Some(category) = self.detail.bolt_category {
+            held.category = Some(Datum::new(category, self.by("category")));
+        }
+        let stated = match &self.detail.friction {
+            Some(Friction::Class(class)) => {
+                let mu = self.rulebook.slip.friction.get(class);
+                mu.map(|mu| (*mu, format!("friction class {class} (Table 3.7)")))
+            }
+            Some(Friction::Factor(mu)) => Some((*mu, "slip factor".into())),
+            None => None,
+        };
+        if let Some((mu, what)) = stated {
+            held.slip_factor = Some(Datum::new(mu, self.by(&what)));
+        }
+    }
+
+    /// What is stated over the haunch as detailed.
+    fn haunch(&self, haunch: &mut Option<Haunch>) -> Result<(), Missing> {
+        let Some(stated) = &self.detail.haunch else { return Ok(()) };
+        let Some(stated) = stated else {
+            *haunch = None;
+            return Ok(());
+        };
+        let Some(own) = haunch else {
+            let why = "a haunch is intended where none is detailed: what it would carry is not computed";
+            return Err(missing("intended haunch", why.into(), self.detail));
+        };
+        let angle = own.angle;
+        let changed = stated.depth.is_some() || stated.length.is_some();
+        for (value, stated) in [
+            (&mut own.depth, stated.depth),
+            (&mut own.length, stated.length),
+            (&mut own.flange_thickness, stated.flange_thickness),
+            (&mut own.flange_width, stated.flange_width),
+            (&mut own.web_thickness, stated.web_thickness),
+        ] {
+            *value = stated.unwrap_or(*value);
+        }
+        own.angle = if changed { (own.depth / own.length).atan().to_degrees() } else { angle };
         Ok(())
     }
 

@@ -3,13 +3,14 @@
 
 mod column;
 mod plate;
+mod springs;
 
 use super::numbers::{Numbers, PlateSide, Row};
 use crate::eurocode::effective_length::EffectiveLength;
 use crate::eurocode::t_stub::{ModeOne, TStub, t_stub};
 use crate::eurocode::{Resistance, alpha};
 use crate::joints::Which;
-use crate::rulebook::{self, Rulebook};
+use crate::rulebook::{self, Alpha, Rulebook};
 use crate::units::{Force, Length};
 use crate::working::Working;
 
@@ -120,11 +121,28 @@ impl<'a> TensionSide<'a> {
         limits
     }
 
+    /// The least share that a row has in the ranges it belongs to; `lengths` of a range, `None` where it is no group.
+    fn least_length(
+        &self,
+        row: usize,
+        lengths: impl Fn(usize, usize, &mut Working) -> Option<Vec<EffectiveLength>>,
+    ) -> Length {
+        let ranges = (0..=row).flat_map(|first| (row..self.rows.len()).map(move |last| (first, last)));
+        let shares = ranges.filter_map(|(first, last)| {
+            let share = lengths(first, last, &mut Working::default())?.into_iter().nth(row - first)?;
+            Some(share.cp.min(share.nc))
+        });
+        shares.reduce(Length::min).unwrap_or(Length::ZERO)
+    }
+
     fn alpha(&self, m: Length, e: Length, m_2: Length, w: &mut Working) -> f64 {
         crate::given!(w, "beside flange or stiffener"; m, e, m_2);
         crate::step!(w, "Figure 6.11", lambda_1 = m / (m + e));
         crate::step!(w, "Figure 6.11", lambda_2 = m_2 / (m + e));
-        alpha::alpha(lambda_1, lambda_2, self.rulebook.settings.alpha_max)
+        match self.rulebook.settings.alpha {
+            Alpha::Chart => alpha::alpha(lambda_1, lambda_2, self.rulebook.settings.alpha_max),
+            Alpha::Draft2024 => alpha::alpha_of_draft(lambda_1, lambda_2),
+        }
     }
 
     #[allow(clippy::too_many_arguments)]

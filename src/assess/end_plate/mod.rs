@@ -9,9 +9,10 @@ mod shear;
 mod solver;
 mod sound;
 mod totals;
+mod turning;
 mod weld_checks;
 
-pub use intended::{intended, intended_layout};
+pub use intended::{intended, intended_layout, with_category};
 use numbers::{Noted, Numbers};
 use shear::Tension;
 use solver::Solved;
@@ -44,6 +45,24 @@ pub struct Demand<'a> {
     pub case: &'a LoadCase,
     /// The other side.
     pub opposite: Opposite,
+}
+
+/// What acts beside the moment and lowers its resistance.
+#[derive(Clone, Copy, Debug, PartialEq)]
+#[allow(non_snake_case, reason = "the standard's symbol")]
+struct Beside {
+    /// The beam's shear; 0 where none is stated.
+    V_Ed: Force,
+    /// N_col,Ed (positive in tension) and M_col,Ed at the joint, where both are stated.
+    column: Option<(Force, Moment)>,
+}
+
+impl Beside {
+    const NOTHING: Self = Self { V_Ed: Force::ZERO, column: None };
+
+    fn of(case: &LoadCase) -> Self {
+        Self { V_Ed: case.shear.map_or(Force::ZERO, Force::abs), column: case.column_axial.zip(case.column_moment) }
+    }
 }
 
 /// The upper bound of β, 5.3(9).
@@ -118,9 +137,13 @@ pub fn assess_with<'l>(
     let numbers = Numbers::gather(layout.into(), rulebook, &mut noted);
     let mut assessment = Assessment { ..Assessment::default() };
     if let Some(n) = &numbers {
-        if n.column().is_some() {
+        let without: Vec<&LoadCase> =
+            demands.iter().map(|demand| demand.case).filter(|case| Beside::of(case).column.is_none()).collect();
+        if n.column().is_some() && (demands.is_empty() || !without.is_empty()) {
+            let names: Vec<&str> = without.iter().map(|case| case.name.as_str()).collect();
+            let at = if without.len() < demands.len() { format!(" in {}", names.join(", ")) } else { String::new() };
             noted.assumptions.push(format!(
-                "k_wc = {}: the column's axial stress is not stated (6.2.6.2(2))",
+                "k_wc = {}{at}: the column's axial stress is not stated (6.2.6.2(2))",
                 rulebook.settings.k_wc
             ));
         }
@@ -130,13 +153,13 @@ pub fn assess_with<'l>(
             noted.assumptions.push("with tension at the bottom the haunch and the rows beside it are left out".into());
         }
         let turned = n.upside_down();
-        let solve = |sense: Sense, beta: f64, shear: Force, rule: Option<RowForces>| {
-            solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, shear, rule)
+        let solve = |sense: Sense, beta: f64, beside: Beside, rule: Option<RowForces>| {
+            solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, beside, rule)
         };
         let at_rest = |sense, noted: &mut Noted| match solve(
             sense,
             plain_beta,
-            Force::ZERO,
+            Beside::NOTHING,
             Some(rulebook.settings.row_forces),
         ) {
             Ok(resistance) => Some(resistance),
@@ -169,7 +192,7 @@ pub fn assess_with<'l>(
                 .map(|reach| reach.unwrap_or(n.side.beam.h))
                 .fold(Length::ZERO, Length::max),
         };
-        let context = Cases { n, rulebook, n_pl, lower_bound, unknown, solve: &solve };
+        let context = Cases { n, solver, rulebook, n_pl, lower_bound, unknown, solve: &solve };
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(context.result(case, demand));
         }
@@ -177,7 +200,7 @@ pub fn assess_with<'l>(
         noted.assumptions.extend(at_upper_bound(&assessment, demands, two_sided));
         let tension = assessment.hogging.as_ref().or(assessment.sagging.as_ref());
         let tension = tension.map_or(unknown, |moment| Tension::Rows(moment, 1.0));
-        assessment.shear = Some(shear::resistance(n, tension, rulebook));
+        assessment.shear = Some(solver.shear(n, tension));
     } else {
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None, shear: None });
@@ -270,6 +293,7 @@ fn not_computed(case: &LoadCase) -> Vec<Verdict> {
 
 struct Cases<'a, F> {
     n: &'a Numbers,
+    solver: &'a Solver<'a>,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,
     /// Why the resistances are a lower bound, if they are: then "not met" is not proven.
@@ -279,22 +303,22 @@ struct Cases<'a, F> {
     solve: &'a F,
 }
 
-impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Solved> Cases<'_, F> {
+impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
     /// The moment resistance of a case. Where an unknown makes it a lower bound, it must be one beyond the cliff of
     /// 6.2.7.2(9) too: what is unknown may raise a row above 1.9 F_t,Rd and so lower the rows below it.
-    fn moment(&self, m: Moment, opposite: Opposite, shear: Force) -> Solved {
+    fn moment(&self, m: Moment, opposite: Opposite, beside: Beside) -> Solved {
         let sense = sense_of(m);
         let rule = self.rulebook.settings.row_forces;
-        let solved = (self.solve)(sense, beta(m, opposite), shear, Some(rule))?;
+        let solved = (self.solve)(sense, beta(m, opposite), beside, Some(rule))?;
         let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.bolts.F_t_Rd);
         let unknown = rule == RowForces::LinearBeyond19
             && (self.lower_bound.is_some()
                 || self.without_haunch(sense).is_some()
-                || at_bound(opposite) && (self.solve)(sense, 0.0, shear, Some(rule))?.rows.iter().any(steep));
+                || at_bound(opposite) && (self.solve)(sense, 0.0, beside, Some(rule))?.rows.iter().any(steep));
         if !unknown || solved.rows.first().is_some_and(steep) {
             return Ok(solved);
         }
-        let linear = (self.solve)(sense, solved.beta, shear, None)?;
+        let linear = (self.solve)(sense, solved.beta, beside, None)?;
         Ok(if linear.without_welds < solved.without_welds { linear } else { solved })
     }
 
@@ -306,7 +330,7 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Solved> Cases<'_, F> {
     fn result(&self, case: usize, demand: &Demand<'_>) -> CaseResult {
         let LoadCase { moment, shear, axial, .. } = demand.case;
         let mut verdicts = Vec::new();
-        let beside = shear.map_or(Force::ZERO, Force::abs);
+        let beside = Beside::of(demand.case);
         let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
         let bound = at_bound(demand.opposite).then_some(BOUND_BY_OPPOSITE);
         let bound = bound.or(moment.and_then(|m| self.without_haunch(sense_of(m))));
@@ -340,14 +364,14 @@ impl<F: Fn(Sense, f64, Force, Option<RowForces>) -> Solved> Cases<'_, F> {
             }
             _ => self.unknown,
         };
-        let shear_resistance = shear.map(|_| shear::resistance(self.n, tension, self.rulebook));
+        let shear_resistance = shear.map(|_| self.solver.shear(self.n, tension));
         verdicts.push(match (shear, &shear_resistance) {
             (Some(v), Some(resistance)) => {
                 let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
                 let bound = solved.is_none().then_some(BOUND_BY_TENSION);
                 let mut verdict = self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, bound);
                 // More than the bolts carry without any tension is proven not to be carried, whatever is not known.
-                let most = || shear::resistance(self.n, Tension::None, self.rulebook).shear;
+                let most = || self.solver.shear(self.n, Tension::None).shear;
                 if verdict.state == State::Unproven && v.get().is_finite() && v.abs() > most() {
                     (verdict.state, verdict.reason) = (State::NotMet, None);
                 }

@@ -1,30 +1,30 @@
 //! M_j,Rd of one sense and one β: limits, row forces, lever arms, welds.
 
+use std::sync::Arc;
+
 use super::limits::TensionSide;
 use super::numbers::{Numbers, PlateSide, Support};
-use super::{rows, totals, weld_checks};
+use super::{Beside, rows, totals, turning, weld_checks};
 use crate::assess::{Component, MomentResistance, Sense};
 use crate::rulebook::{RowForces, Rulebook};
 use crate::units::{Force, Length, Moment};
 
-/// M_j,Rd with `n` turned so that the tension side is up, beside a shear `V_Ed` (0 where none is stated), the row forces by
-/// `rule` (see [`rows::forces`]).
+/// M_j,Rd with `n` turned so that the tension side is up, `beside` what else acts, the row forces by `rule` (see [`rows::forces`]).
 ///
 /// # Errors
 /// Why it can't be assessed: one sentence.
-#[allow(non_snake_case, reason = "the standard's symbol")]
 pub fn resistance(
     n: &Numbers,
     sense: Sense,
     beta: f64,
-    V_Ed: Force,
+    beside: Beside,
     rule: Option<RowForces>,
     rulebook: &Rulebook,
 ) -> Result<MomentResistance, String> {
     let mut notes = Vec::new();
     let side = TensionSide::new(n, rulebook, beta)?;
     let limits = side.limits();
-    let totals = totals::totals(n, rulebook, beta, V_Ed, &mut notes)?;
+    let totals = totals::totals(n, rulebook, beta, beside, &mut notes)?;
     let arms: Vec<Length> = side.rows.iter().map(|row| n.lever_arm(row)).collect();
     let heights: Vec<Length> = side.rows.iter().map(|row| row.height).collect();
     let numbers: Vec<usize> = side.rows.iter().map(|row| row.number).collect();
@@ -94,6 +94,8 @@ pub fn resistance(
             notes.push(format!("the {of}beam is of class 3: its flange in compression is taken with W_el"));
         }
     }
+    let moment = without_welds * share;
+    let stiffness = turning::stiffness(n, &side, beta, rulebook, moment, &governed_by, &components).map(Arc::new);
     let last_used = forces.iter().rposition(|row| row.force > Force::ZERO);
     let reach = |side: &PlateSide, i: usize| {
         let below = side.flange_top() - side.beam.t_f - side.r_b - heights[i];
@@ -104,12 +106,13 @@ pub fn resistance(
     Ok(MomentResistance {
         sense,
         beta,
-        moment: without_welds * share,
+        moment,
         without_welds,
         governed_by,
         web_in_tension,
         rows: forces,
         components,
+        stiffness,
         notes,
     })
 }

@@ -15,12 +15,17 @@ use plate_side::NOISE;
 pub use plate_side::PlateSide;
 
 use super::sound;
+use crate::assess::Input;
 use crate::eurocode::bolts;
-use crate::joints::{self, BoltedPlate, Which};
+use crate::joints::{self, BoltedPlate, Held, Which};
 use crate::origin::Ask;
-use crate::rulebook::Rulebook;
+use crate::rulebook::{Category, Rulebook};
 use crate::units::{Area, Force, Length, Stress};
 use crate::working::Working;
+
+/// What is assumed of packing.
+const PACKING: &str = "packing lies loose between the plies and bears no shear of its own: the bolts' shear is reduced by \
+                       3.6.1(12), compression and prying go through it";
 
 /// Strengths of a rolled section's flange and web, and the smaller f_u.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -55,6 +60,14 @@ impl Row {
     }
 }
 
+/// What slip resistance needs.
+#[derive(Clone, Copy, Debug, PartialEq)]
+#[allow(non_snake_case)]
+pub struct Slip {
+    pub mu: f64,
+    pub gamma_M3: f64,
+}
+
 /// The bolts, all alike.
 #[derive(Clone, Debug, PartialEq)]
 #[allow(non_snake_case)]
@@ -67,6 +80,13 @@ pub struct BoltNumbers {
     pub A: Area,
     pub alpha_v: f64,
     pub washer: Length,
+    pub washer_thickness: Length,
+    pub head: Length,
+    pub nut: Length,
+    /// Total thickness of the packing between the plies.
+    pub packing: Length,
+    /// Slip at the ultimate limit state, where the bolts are of category C and everything for it is known.
+    pub slip: Option<Slip>,
     pub F_t_Rd: Force,
     pub tension_working: Arc<Working>,
 }
@@ -261,6 +281,14 @@ impl BoltNumbers {
             "head and nut across flats {}, the smallest that the product standards allow, for punching",
             size.across_flats
         ));
+        let slip = slip(&laid.held, &class.name, rulebook, noted);
+        let packing: Length = laid.held.packing.iter().copied().sum();
+        for t_p in &laid.held.packing {
+            noted.given("packing thickness", *t_p, "the packing plate's body");
+        }
+        if packing > Length::ZERO {
+            noted.assumptions.push(PACKING.into());
+        }
         let tension = bolts::tension(class.f_ub, size.a_s, rulebook.annex.gamma_m2);
         Some(Self {
             d: size.d,
@@ -271,8 +299,67 @@ impl BoltNumbers {
             A: size.a,
             alpha_v: class.alpha_v,
             washer: size.washer,
+            washer_thickness: size.washer_thickness,
+            head: size.head,
+            nut: size.nut,
+            packing,
+            slip,
             F_t_Rd: tension.value,
             tension_working: Arc::new(tension.working),
         })
+    }
+}
+
+/// Slip by the category that the schedule states; what keeps it from being checked is noted.
+#[allow(non_snake_case, reason = "the standard's symbol")]
+fn slip(held: &Held, class: &str, rulebook: &Rulebook, noted: &mut Noted) -> Option<Slip> {
+    let Some(category) = &held.category else {
+        noted.assumptions.push("bolts of category A, bearing type (Table 3.2): the schedule states no category".into());
+        return None;
+    };
+    noted.inputs.push(Input::of("bolt category", category, |category| format!("{category:?}")));
+    let category = category.value;
+    if category.preloaded() && !rulebook.slip.preloaded.iter().any(|own| own == class) {
+        let allowed = rulebook.slip.preloaded.join(" and ");
+        let reason =
+            format!("category {category:?} asks for preloaded bolts of class {allowed}, these are {class} (3.1.2)");
+        noted.not_checked("preloaded bolts", reason, Ask::Fabricator);
+        return None;
+    }
+    match category {
+        Category::A | Category::D => None,
+        Category::E => {
+            noted
+                .assumptions
+                .push("bolts of category E: their preload is controlled (EN 1090-2); it adds no resistance".into());
+            None
+        }
+        Category::B => {
+            let reason =
+                "category B asks for it at serviceability (3.4.1(4)), and the schedule states no actions there";
+            noted.not_checked("slip of the bolts", reason.into(), Ask::Engineer);
+            None
+        }
+        Category::C => {
+            let (mu, gamma_M3) = match (&held.slip_factor, rulebook.annex.gamma_m3) {
+                (Some(mu), Some((gamma_M3, _))) => (mu, gamma_M3),
+                (None, _) => {
+                    let reason =
+                        "category C asks for it, and the schedule states neither friction class nor slip factor";
+                    noted.not_checked("slip of the bolts", reason.into(), Ask::Engineer);
+                    return None;
+                }
+                (_, None) => {
+                    let reason = "category C asks for it, and the annex states no gamma_M3";
+                    noted.not_checked("slip of the bolts", reason.into(), Ask::Method);
+                    return None;
+                }
+            };
+            noted.inputs.push(Input::of("slip factor", mu, f64::to_string));
+            noted
+                .assumptions
+                .push("bolts of category C: their preload of 0.7 fub As is controlled (3.9.1(2), EN 1090-2)".into());
+            Some(Slip { mu: mu.value, gamma_M3 })
+        }
     }
 }

@@ -1,14 +1,15 @@
 //! V_Rd: bolts in shear beside their tension, bearing in plate and column flange, the web's weld.
 #![allow(non_snake_case)]
 
-use super::numbers::{Numbers, PlateSide, Row, Support};
+use super::numbers::{Numbers, PlateSide, Row, Slip, Support};
 use super::weld_checks;
 use crate::assess::{Component, MomentResistance, ShearResistance};
 use crate::eurocode::bolts::{self, BearingPlace};
-use crate::given;
+use crate::eurocode::slip;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length, Stress, mm};
 use crate::working::Working;
+use crate::{given, step};
 
 /// M12 and M14 in holes with 2 mm clearance carry 0.85 of their shear, 3.6.1(5).
 fn beta_hole(n: &Numbers) -> f64 {
@@ -36,11 +37,19 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
     let (alpha_v, area) =
         if rulebook.settings.thread_in_shear_plane { (n.bolts.alpha_v, n.bolts.A_s) } else { (0.6, n.bolts.A) };
     let shear = bolts::shear(alpha_v, n.bolts.f_ub, area, beta_hole(n), gamma_M2);
+    let (beta_p, packing) = slip::packing(n.bolts.d, n.bolts.packing);
 
     let mut in_shear = Force::ZERO;
     let mut w = Working::default();
     w.absorb(shear.working);
+    let mut F_v_Rd = shear.value;
+    if n.bolts.packing > Length::ZERO {
+        w.absorb(packing);
+        step!(w, "3.6.1(12)", F_v_Rd_p = beta_p * F_v_Rd);
+        F_v_Rd = F_v_Rd_p;
+    }
     let mut per_row = Vec::new();
+    let mut tensions = Vec::new();
     for row in &n.rows {
         let used = match tension {
             Tension::Unknown { .. } => 1.0,
@@ -56,10 +65,11 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
             }
         };
         w.heading(format!("row {}", row.number));
-        let left = bolts::shear_beside_tension(shear.value, used * n.bolts.F_t_Rd, n.bolts.F_t_Rd);
+        let left = bolts::shear_beside_tension(F_v_Rd, used * n.bolts.F_t_Rd, n.bolts.F_t_Rd);
         w.absorb(left.working);
         in_shear += 2.0 * left.value;
         per_row.push(left.value);
+        tensions.push((row.number, used * n.bolts.F_t_Rd));
     }
     let V_bolts = in_shear;
     given!(w, "all bolts in shear"; V_bolts);
@@ -89,6 +99,12 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
             working: worst.2.into(),
         });
     }
+    if let Some(slip) = in_slip(n, &tensions, rulebook) {
+        if !(slip.resistance >= least.0) {
+            least = (slip.resistance, slip.title.clone());
+        }
+        components.push(slip);
+    }
     let reach = match tension {
         Tension::Unknown { web_in_tension } => web_in_tension,
         Tension::None => Length::ZERO,
@@ -101,6 +117,33 @@ pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> She
         components.push(weld);
     }
     ShearResistance { shear: least.0, governed_by: least.1, components }
+}
+
+/// Slip of the group beside its bolts' tension, 3.9.2; `None` unless the bolts are of category C and all is known. The one
+/// friction surface counts once, also where packing makes it several in a row.
+fn in_slip(n: &Numbers, tensions: &[(usize, Force)], rulebook: &Rulebook) -> Option<Component> {
+    let Slip { mu, gamma_M3 } = n.bolts.slip?;
+    let preload = slip::preload(n.bolts.f_ub, n.bolts.A_s);
+    let mut w = preload.working;
+    let mut group = Force::ZERO;
+    for (number, tension) in tensions {
+        w.heading(format!("row {number}"));
+        let F_t_Ed = if rulebook.slip.reduced_by_tension { *tension } else { Force::ZERO };
+        // Normal round holes only: k_s = 1.0, Table 3.6.
+        let one = slip::slip(1.0, 1.0, mu, preload.value, F_t_Ed, gamma_M3);
+        w.absorb(one.working);
+        group += 2.0 * one.value;
+    }
+    let V_slip = group;
+    step!(w, "sum over the bolts", V_s_Rd = V_slip);
+    Some(Component {
+        id: "bolts-in-slip".into(),
+        title: "bolts in slip with their tension".into(),
+        clause: "EN 1993-1-8:2005 3.9",
+        resistance: V_s_Rd,
+        at_full: Force::ZERO,
+        working: w.into(),
+    })
 }
 
 /// What the bolts bear on.

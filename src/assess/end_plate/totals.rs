@@ -2,12 +2,13 @@
 #![allow(non_snake_case)]
 
 use super::numbers::{ColumnSide, HaunchSide, Numbers, PlateSide, StiffenerPair};
-use super::weld_checks;
+use super::{Beside, weld_checks};
 use crate::eurocode::stiffeners::{self, Web};
 use crate::eurocode::web_panel::{self, FrameAction};
 use crate::eurocode::{Resistance, beam, column_web, haunch};
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length};
+use crate::working::Working;
 
 /// A component that limits Σ F over all rows.
 #[derive(Clone, Debug)]
@@ -31,7 +32,7 @@ impl Total {
     }
 }
 
-/// All total limits for tension at the top and one β, beside a shear `V_Ed` in the beam.
+/// All total limits for tension at the top and one β, beside what else acts.
 ///
 /// # Errors
 /// Why the web panel or a beam can't be assessed.
@@ -39,11 +40,11 @@ pub fn totals(
     n: &Numbers,
     rulebook: &Rulebook,
     beta: f64,
-    V_Ed: Force,
+    beside: Beside,
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
     let mut totals = match n.column() {
-        Some(column) => on_column(n, column, rulebook, beta, notes)?,
+        Some(column) => on_column(n, column, rulebook, beta, beside, notes)?,
         None => {
             level(n)?;
             Vec::new()
@@ -51,14 +52,14 @@ pub fn totals(
     };
     for side in n.sides() {
         if let Some(haunch) = &side.haunch {
-            totals.extend(of_haunch(side, haunch, V_Ed, rulebook)?);
+            totals.extend(of_haunch(side, haunch, beside.V_Ed, rulebook)?);
             continue;
         }
         totals.push(Total {
             id: "beam-flange-in-compression",
             title: format!("beam flange and web in compression{}", side.which.suffix()),
             clause: "EN 1993-1-8:2005 6.2.6.7",
-            resistance: flange(side, V_Ed, rulebook.annex.gamma_m0)?,
+            resistance: flange(side, beside.V_Ed, rulebook.annex.gamma_m0)?,
             share: 1.0,
         });
     }
@@ -163,12 +164,51 @@ fn pair_at(column: &ColumnSide, level: Length, t_fb: Length) -> Option<&Stiffene
     level.min_by(|a, b| off(a).get().total_cmp(&off(b).get()).then(a.height.get().total_cmp(&b.height.get())))
 }
 
+/// The column's lower end lies this far below a level.
+fn to_end(n: &Numbers, column: &ColumnSide, level: Length) -> Option<Length> {
+    Some(level - n.rows.last()?.height + column.below?)
+}
+
+/// The column's web at the compression flange, as if without stiffeners.
+pub fn web_in_compression(n: &Numbers, own: &ColumnSide, beta: f64, k_wc: f64) -> column_web::Compression {
+    let (column, side) = (&own.section, &n.side);
+    let a_p = match &side.haunch {
+        Some(haunch) => haunch.a_flange,
+        None => side.a_compression,
+    };
+    column_web::Compression {
+        t_fb: side.compression_flange(),
+        a_p: a_p.unwrap_or(Length::ZERO),
+        t_fc: column.t_f,
+        s: own.r,
+        t_p: side.t_p,
+        projection: (side.lowest() - side.bottom).max(Length::ZERO),
+        to_end: to_end(n, own, side.compression()),
+        t_wc: column.t_w,
+        d_wc: column.h - 2.0 * (column.t_f + own.r),
+        f_y_wc: own.strength.f_y_web,
+        A_vc: column.a_v_z,
+        beta,
+        k_wc,
+    }
+}
+
+/// The pair that stiffens the column's web at the compression flange.
+pub fn stiffens(n: &Numbers, own: &ColumnSide) -> bool {
+    let pair = pair_at(own, n.side.compression(), n.side.compression_flange());
+    pair.is_some_and(|pair| {
+        let plates = pair.plates(own);
+        plates.rigid(own.section.t_w, own.section.h - 2.0 * own.section.t_f) && plates.stocky()
+    })
+}
+
 /// The column's web in compression and its panel in shear.
 fn on_column(
     n: &Numbers,
     own: &ColumnSide,
     rulebook: &Rulebook,
     beta: f64,
+    beside: Beside,
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
     let (gamma_M0, gamma_M1) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1);
@@ -179,29 +219,15 @@ fn on_column(
     let compression_pair = pair_at(own, side.compression(), t_fb);
     let tension_pair = pair_at(own, side.flange_top() - 0.5 * side.beam.t_f, side.beam.t_f);
 
-    let a_p = match &side.haunch {
-        Some(haunch) => haunch.a_flange,
-        None => side.a_compression,
-    };
-    let a_p = a_p.unwrap_or(Length::ZERO);
-    // The column's lower end lies this far below a level.
-    let to_end = |level: Length| Some(level - n.rows.last()?.height + own.below?);
-    let web = column_web::Compression {
-        t_fb,
-        a_p,
-        t_fc: column.t_f,
-        s: own.r,
-        t_p: side.t_p,
-        projection: (side.lowest() - side.bottom).max(Length::ZERO),
-        to_end: to_end(side.compression()),
-        t_wc: column.t_w,
-        d_wc,
-        f_y_wc: strength.f_y_web,
-        A_vc: column.a_v_z,
-        beta,
-        k_wc: rulebook.settings.k_wc,
-    };
-    let (plain, crushing) = column_web::compression(&web, gamma_M0, gamma_M1);
+    let to_end = |level: Length| to_end(n, own, level);
+    let mut w = Working::default();
+    let k_wc = beside.column.map_or(rulebook.settings.k_wc, |actions| {
+        column_web::k_wc(&mut w, actions, (column.area, column.i_y()), d_wc, strength.f_y_web)
+    });
+    let web = web_in_compression(n, own, beta, k_wc);
+    let (mut plain, crushing) = column_web::compression(&web, gamma_M0, gamma_M1);
+    w.absorb(plain.working);
+    plain.working = w;
     let (mut title, mut compression) = ("column web in compression", plain);
     if let Some(pair) = compression_pair {
         let plates = pair.plates(own);

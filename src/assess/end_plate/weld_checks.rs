@@ -50,6 +50,8 @@ pub fn at_flange_and_web(
         let F_most = if F_flange_w_Rd >= F_flange_most { F_flange_most } else { F_rows };
         given!(w, "the flange, or the rows where the weld is weaker than the flange"; F_most);
         step!(w, "6.2.3(4)", F_flange_Ed = F_rows.min(F_most));
+        let a_min = rulebook.welds.min_throat;
+        step!(w, "the throat that this needs, 4.5.2(2)", a_needed = (a * (F_flange_Ed / F_flange_w_Rd)).max(a_min));
         Component {
             id: "flange-weld".into(),
             title: format!("weld at the tension flange{}", n.which.suffix()),
@@ -67,6 +69,8 @@ pub fn at_flange_and_web(
             let (F_w_Rd, F_row, b_eff) = (fillet.per_length, force, limit.length);
             given!(w, "rows beside the web"; F_row, b_eff);
             step!(w, "both sides of the web, 4.5.3.2", F_web_w_Rd = 2.0 * F_w_Rd * b_eff);
+            let a_min = rulebook.welds.min_throat;
+            step!(w, "the throat that this needs, 4.5.2(2)", a_needed = (a * (F_row / F_web_w_Rd)).max(a_min));
             Component {
                 id: "web-weld".into(),
                 title: format!(

@@ -5,6 +5,7 @@ use std::borrow::Cow;
 use quick_xml::events::BytesStart;
 
 use super::super::problems::{Problems, Spot};
+use super::super::source::Source;
 
 /// One element's start; all of it stands in the document, of which nothing is copied that has no escapes.
 #[derive(Default)]
@@ -35,41 +36,60 @@ impl<'x> Head<'x> {
     /// What is not well-formed about it.
     pub fn read(
         &mut self,
-        document: &'x [u8],
+        document: Source<'x>,
         start: &BytesStart,
         spot: Spot,
         problems: &mut Problems,
     ) -> Result<(), String> {
         let lasting = |piece: &[u8]| within(document, piece).ok_or_else(|| "it can't be followed".to_owned());
-        self.name = local(lasting(start.name().as_ref())?, spot, problems);
+        // repeated attributes are found where they are set: the library's own check takes quadratic time
+        let mut attributes = start.attributes();
+        let attributes = attributes.with_checks(false).map(|attribute| {
+            let attribute = attribute.map_err(|e| e.to_string())?;
+            Ok((lasting(attribute.key.as_ref())?, lasting(&attribute.value)?))
+        });
+        self.fill(document, lasting(start.name().as_ref())?, attributes, spot, problems)
+    }
+
+    /// Tells a start tag's attributes apart; in what was another one's head.
+    ///
+    /// # Errors
+    /// The first of an attribute.
+    pub fn fill<E>(
+        &mut self,
+        document: Source<'x>,
+        name: &'x [u8],
+        attributes: impl Iterator<Item = Result<(&'x [u8], &'x [u8]), E>>,
+        spot: Spot,
+        problems: &mut Problems,
+    ) -> Result<(), E> {
+        self.name = local(document, name, spot, problems);
         self.spot = spot;
         (self.id, self.reference, self.elsewhere, self.class) = (None, None, None, None);
         (self.nil, self.pos) = (false, None);
         self.rest.clear();
-        // repeated attributes are found where they are set: the library's own check takes quadratic time
-        for attribute in start.attributes().with_checks(false) {
-            let attribute = attribute.map_err(|e| e.to_string())?;
-            let key = lasting(attribute.key.as_ref())?;
+        for attribute in attributes {
+            let (key, raw) = attribute?;
             if key.starts_with(b"xml")
                 && (key.len() == 5 && key == b"xmlns" || matches!(&key[3..], [b'n', b's', b':', ..] | [b':', ..]))
             {
                 continue;
             }
-            let raw = lasting(&attribute.value)?;
-            let name = local(key, spot, problems);
+            let name = local(document, key, spot, problems);
             match &*name {
-                "id" => self.id = Some(text(raw, spot, problems)),
-                "ref" => self.reference = Some(text(raw, spot, problems)),
-                "href" => match cut(text(raw, spot, problems), |href| href.strip_prefix('#')) {
+                "id" => self.id = Some(text(document, raw, spot, problems)),
+                "ref" => self.reference = Some(text(document, raw, spot, problems)),
+                "href" => match cut(text(document, raw, spot, problems), |href| href.strip_prefix('#')) {
                     Ok(label) => self.reference = Some(label),
                     Err(href) => self.elsewhere = Some(href),
                 },
                 "nil" => self.nil = matches!(raw.trim_ascii(), b"true" | b"1"),
                 "type" => {
-                    let class = cut(text(raw, spot, problems), |class| class.rsplit(':').next().map(str::trim));
+                    let class =
+                        cut(text(document, raw, spot, problems), |class| class.rsplit(':').next().map(str::trim));
                     self.class = Some(class.unwrap_or_else(|class| class));
                 }
-                "pos" => self.pos = self.position(&text(raw, spot, problems), problems),
+                "pos" => self.pos = self.position(&text(document, raw, spot, problems), problems),
                 // written for people and schema processors only
                 "cType" | "itemType" | "arraySize" | "path" | "extraBits" => {}
                 "schemaLocation" | "noNamespaceSchemaLocation" => {}
@@ -101,18 +121,18 @@ impl<'x> Head<'x> {
 }
 
 /// The same bytes, seen as part of the document in which they lie: the library's events do not outlast themselves.
-pub(super) fn within<'x>(document: &'x [u8], piece: &[u8]) -> Option<&'x [u8]> {
-    let start = (piece.as_ptr() as usize).checked_sub(document.as_ptr() as usize)?;
-    document.get(start..start.checked_add(piece.len())?)
+pub(super) fn within<'x>(document: Source<'x>, piece: &[u8]) -> Option<&'x [u8]> {
+    let start = document.offset(piece)?;
+    document.bytes.get(start..start + piece.len())
 }
 
 /// A part of a text without a copy where it is borrowed; the text itself where it has no such part.
-fn cut<'x>(text: Cow<'x, str>, part: impl Fn(&str) -> Option<&str>) -> Result<Cow<'x, str>, Cow<'x, str>> {
+fn cut<'x>(
+    text: Cow<'x, str>,
+    part: impl for<'a> Fn(&'a str) -> Option<&'a str>,
+) -> Result<Cow<'x, str>, Cow<'x, str>> {
     match text {
-        Cow::Borrowed(text) => match part(text).and_then(|part| within(text.as_bytes(), part.as_bytes())) {
-            Some(part) => Ok(String::from_utf8_lossy(part)),
-            None => Err(text.into()),
-        },
+        Cow::Borrowed(text) => part(text).map(Cow::Borrowed).ok_or(text.into()),
         Cow::Owned(text) => match part(&text) {
             Some(part) => Ok(part.to_owned().into()),
             None => Err(text.into()),
@@ -121,12 +141,12 @@ fn cut<'x>(text: Cow<'x, str>, part: impl Fn(&str) -> Option<&str>) -> Result<Co
 }
 
 /// The name without its prefix.
-fn local<'x>(name: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str> {
+fn local<'x>(document: Source<'x>, name: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str> {
     let local = match name.iter().rposition(|&b| b == b':') {
         Some(colon) => &name[colon + 1..],
         None => name,
     };
-    if let Ok(local) = std::str::from_utf8(local) {
+    if let Some(local) = document.text(local) {
         return local.into();
     }
     not_utf8(spot, problems);
@@ -134,14 +154,19 @@ fn local<'x>(name: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str
 }
 
 /// The text of a piece of XML that needs no decoding; `None` where it may need some.
-pub(super) fn plain(raw: &[u8]) -> Option<&str> {
+pub(super) fn plain<'b, 'x: 'b>(document: Source<'x>, raw: &'b [u8]) -> Option<&'b str> {
     // EF starts the replacement character
-    if raw.iter().any(|b| matches!(b, b'&' | 0xEF)) { None } else { std::str::from_utf8(raw).ok() }
+    if raw.iter().any(|b| matches!(b, b'&' | 0xEF)) { None } else { document.text(raw) }
 }
 
 /// The text of a piece of XML: decoded, escapes resolved.
-pub(super) fn text<'x>(raw: &'x [u8], spot: Spot, problems: &mut Problems) -> Cow<'x, str> {
-    if let Some(text) = plain(raw) {
+pub(super) fn text<'b, 'x: 'b>(
+    document: Source<'x>,
+    raw: &'b [u8],
+    spot: Spot,
+    problems: &mut Problems,
+) -> Cow<'b, str> {
+    if let Some(text) = plain(document, raw) {
         return text.into();
     }
     let decoded = decode(raw, spot, problems);

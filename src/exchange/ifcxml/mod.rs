@@ -9,7 +9,9 @@ mod dialect;
 mod head;
 mod memory;
 mod parser;
+mod plain;
 mod resolve;
+mod scan;
 mod slot;
 
 use std::sync::Arc;
@@ -24,16 +26,26 @@ use self::parser::Parser;
 use super::Exchange;
 use super::limits::Limits;
 use super::problems::{Problems, Ruler, Spot};
+use super::source::Source;
 
 /// Reads a document.
 ///
 /// # Errors
 /// Why it is no ifcXML at all, in one sentence.
 pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) -> Result<Exchange, String> {
+    match plain::read(bytes, &problems, &file, limits) {
+        Ok(exchange) => Ok(exchange),
+        Err(scan::Unusual) => read_any(bytes, problems, file, limits),
+    }
+}
+
+/// As [`read`], whatever of XML the document makes use of.
+fn read_any(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Limits) -> Result<Exchange, String> {
+    let document = Source::new(bytes);
     let mut xml = Reader::from_reader(bytes);
     xml.config_mut().allow_dangling_amp = true; // one badly written name must not lose the file
     let mut ruler = Ruler::new(bytes);
-    let mut parser = Parser::new(file, problems, limits);
+    let mut parser = Parser::new(document, file, problems, limits);
     let mut dialect = Dialect::default();
     let mut started = false;
     let mut head = Head::default();
@@ -83,7 +95,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
                     }
                     started = true;
                 } else {
-                    head.read(bytes, start, spot, &mut parser.problems).map_err(|error| {
+                    head.read(document, start, spot, &mut parser.problems).map_err(|error| {
                         format!("is not well-formed XML at line {}, column {}: {error}", spot.line, spot.column)
                     })?;
                     parser.start(&head);
@@ -99,18 +111,18 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
             _ if parser.is_skipping() && !matches!(event, Event::End(_) | Event::DocType(_)) => {}
             Event::Text(_) if is_blank => {}
             Event::Text(text) => {
-                let raw = head::within(bytes, &text).unwrap_or_default();
-                let text = head::text(raw, spot, &mut parser.problems);
+                let raw = head::within(document, &text).unwrap_or_default();
+                let text = head::text(document, raw, spot, &mut parser.problems);
                 parser.text(text, spot);
             }
             Event::CData(data) => {
-                let raw = head::within(bytes, &data).unwrap_or_default();
+                let raw = head::within(document, &data).unwrap_or_default();
                 let text = head::decode(raw, spot, &mut parser.problems);
                 parser.text(text, spot);
             }
             Event::GeneralRef(reference) => {
                 let escape = [b"&", &reference[..], b";"].concat();
-                let text = head::text(&escape, spot, &mut parser.problems).into_owned();
+                let text = head::text(document, &escape, spot, &mut parser.problems).into_owned();
                 parser.text(text.into(), spot);
             }
             Event::DocType(_) => {

@@ -8,11 +8,13 @@ use super::super::limits::Limits;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Attribute, Base, ClassId, Kind, Named, Schema};
+use super::super::source::Source;
 use super::super::store::Cell;
 use super::super::waiting::WAITING;
 use super::super::{Entities, Id};
 use super::head::{self, Head, Pos};
 use super::memory::Memory;
+use super::scan::Unusual;
 use super::slot::{Item, Slot, Target, stray_text, untyped};
 
 /// What an open element is.
@@ -48,6 +50,7 @@ pub(super) struct Link {
 }
 
 pub(super) struct Parser<'x> {
+    document: Source<'x>,
     schema: &'static Schema,
     pub entities: Entities,
     pub labels: Labels,
@@ -66,9 +69,10 @@ pub(super) struct Parser<'x> {
 }
 
 impl<'x> Parser<'x> {
-    pub fn new(file: Arc<str>, problems: Problems, limits: Limits) -> Self {
+    pub fn new(document: Source<'x>, file: Arc<str>, problems: Problems, limits: Limits) -> Self {
         let schema = Schema::ifc4(); // until the document says which
         Self {
+            document,
             schema,
             entities: Entities::new(schema, file),
             labels: Labels::default(),
@@ -82,6 +86,49 @@ impl<'x> Parser<'x> {
             skipping: 0,
             limits,
         }
+    }
+
+    /// One for a later part of the document, which starts where this one stands among elements that hold entities.
+    pub fn further_on(&self) -> Self {
+        let mut part = Self::new(self.document, self.entities.file(), self.problems.without_any(), self.limits);
+        part.start_document(self.schema);
+        part.stack.clear();
+        part.stack.extend(self.stack.iter().map(|frame| match frame {
+            Frame::Envelope => Frame::Envelope,
+            _ => Frame::Document,
+        }));
+        part
+    }
+
+    /// Whether it stands among elements that hold entities, that many of them within one another.
+    pub fn is_among_entities(&self, depth: usize) -> bool {
+        matches!(self.stack.last(), Some(Frame::Document)) && self.stack.len() == depth && self.skipping == 0
+    }
+
+    /// Takes over what was read of a later part of the document.
+    ///
+    /// # Errors
+    /// An id is given in both of them, so that references in the later part may mean another entity.
+    pub fn absorb(&mut self, part: Self) -> Result<(), Unusual> {
+        if part.labels.find("", &part.entities).is_some() {
+            return Err(Unusual); // it can't be told from those that have no id
+        }
+        let (ids, waiting) = (self.entities.len() as u32, self.waiting.len() as u32);
+        let moved = |id: Id| Id(id.0 + if id.0 < WAITING { ids } else { waiting });
+        self.entities.absorb(part.entities, moved);
+        for id in (ids..self.entities.len() as u32).map(Id).filter(|id| !self.entities.label(*id).is_empty()) {
+            if self.labels.enter(id, &self.entities) != id {
+                return Err(Unusual);
+            }
+        }
+        self.waiting.extend(part.waiting);
+        self.links.extend(part.links.into_iter().map(|link| Link {
+            relation: moved(link.relation),
+            parent: moved(link.parent),
+            ..link
+        }));
+        self.problems.absorb(part.problems);
+        Ok(())
     }
 
     /// Whether the open element is passed over with all that it holds.
@@ -154,9 +201,8 @@ impl<'x> Parser<'x> {
 
     /// An attribute's element inside an entity.
     fn start_attribute(&mut self, head: &Head<'x>, class: ClassId) {
-        let attributes = self.attributes(class);
-        let (target, kind) = if let Some(index) = attributes.iter().position(|a| a.name == head.name) {
-            (Target::Attribute(index), attributes[index].kind)
+        let (target, kind) = if let Some((index, kind)) = self.attribute(class, &head.name) {
+            (Target::Attribute(index), kind)
         } else if let Some(inverse) = self.schema.inverse(class, &head.name) {
             (Target::Inverse(inverse.attribute), Kind { depth: 1, ..Kind::one(Base::Entity(inverse.class)) })
         } else {
@@ -295,16 +341,14 @@ impl<'x> Parser<'x> {
                 });
             }
         }
-        let attributes = self.attributes(class);
         for (name, raw) in &head.rest {
-            let Some(index) = attributes.iter().position(|a| a.name == name) else {
+            let Some((index, kind)) = self.attribute(class, name) else {
                 self.unknown_attribute(class, name, head.spot);
-                let text = head::text(raw, head.spot, &mut self.problems);
+                let text = head::text(self.document, raw, head.spot, &mut self.problems);
                 let text = self.entities.store.text(&text);
                 self.entities.add_extra(id, name, text);
                 continue;
             };
-            let kind = attributes[index].kind;
             match self.scalar(kind, raw, head.spot) {
                 Ok(value) if self.entities.cell(id, index).is_absent() => {
                     if kind.base == Base::Select {
@@ -333,14 +377,14 @@ impl<'x> Parser<'x> {
     /// # Errors
     /// What is wrong with it, in words that follow "…: ".
     fn scalar(&mut self, kind: Kind, raw: &'x [u8], spot: Spot) -> Result<Cell, String> {
-        let Some(text) = head::plain(raw) else {
-            let text = head::text(raw, spot, &mut self.problems);
-            return scalar::parse(&mut self.entities.store, kind, &text);
-        };
         let (known, place) = self.memory.recall(kind, raw);
         if let Some(cell) = known {
             return Ok(cell);
         }
+        let Some(text) = head::plain(self.document, raw) else {
+            let text = head::text(self.document, raw, spot, &mut self.problems);
+            return scalar::parse(&mut self.entities.store, kind, &text);
+        };
         let cell = scalar::parse(&mut self.entities.store, kind, text)?;
         if let Some(place) = place {
             self.memory.remember(place, kind, raw, cell);
@@ -454,6 +498,13 @@ impl<'x> Parser<'x> {
             }
             Some(Frame::Document | Frame::Envelope) | None => {}
         }
+    }
+
+    /// The position and kind of an attribute.
+    fn attribute(&self, class: ClassId, name: &str) -> Option<(usize, Kind)> {
+        let class = self.schema.class(class)?;
+        let index = class.position(name)?;
+        Some((index, class.attributes.get(index)?.kind))
     }
 
     fn attributes(&self, class: ClassId) -> &'static [Attribute] {

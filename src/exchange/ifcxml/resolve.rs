@@ -3,7 +3,7 @@
 use std::collections::HashSet;
 
 use super::super::store::Cell;
-use super::super::waiting::target;
+use super::super::waiting::WAITING;
 use super::super::{Exchange, Id, conform};
 use super::parser::{Link, Parser};
 
@@ -16,9 +16,15 @@ pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
             .problems
             .add("reference to nothing", waiting.spot, || format!("refers to {label}, but no entity has that id"));
     }
-    parser.entities.settle(&targets);
+    let target = |id: Id| match id.0.checked_sub(WAITING) {
+        Some(index) => targets.get(index as usize).copied().flatten(),
+        None => Some(id),
+    };
+    if parser.entities.settle(target) {
+        parser.entities.drop_waiting();
+    }
     let mut links = std::mem::take(&mut parser.links);
-    links.retain_mut(|link| match target(link.relation, &targets) {
+    links.retain_mut(|link| match target(link.relation) {
         Some(id) => {
             link.relation = id;
             true

@@ -1,10 +1,15 @@
 //! The bytes of a STEP file and where in them the reading stands: blanks, words, strings, and the way back after
 //! something broken.
 
+use std::borrow::Cow;
+
 use memchr::memmem;
+
+use super::super::source::Source;
 
 pub(super) struct Cursor<'a> {
     pub bytes: &'a [u8],
+    pub source: Source<'a>,
     pub at: usize,
     /// In bytes as written.
     longest_string: usize,
@@ -14,7 +19,12 @@ pub(super) struct Cursor<'a> {
 
 impl<'a> Cursor<'a> {
     pub fn new(bytes: &'a [u8], longest_string: usize) -> Self {
-        Self { bytes, at: 0, longest_string, no_comment_ends: false }
+        Self { bytes, source: Source::new(bytes), at: 0, longest_string, no_comment_ends: false }
+    }
+
+    /// One that stands further on.
+    pub fn further_on(&self, at: usize) -> Self {
+        Self { at, ..*self }
     }
 
     pub fn rest(&self) -> &'a [u8] {
@@ -22,7 +32,15 @@ impl<'a> Cursor<'a> {
     }
 
     /// The next byte that is neither blank nor comment; `None` at the end of the file.
+    #[inline]
     pub fn peek(&mut self) -> Option<u8> {
+        match self.bytes.get(self.at) {
+            Some(byte @ (b'!'..=b'.' | b'0'..=b'~')) => Some(*byte), // nothing that starts a blank or a comment
+            _ => self.peek_on(),
+        }
+    }
+
+    fn peek_on(&mut self) -> Option<u8> {
         loop {
             match self.rest() {
                 [] => return None,
@@ -39,6 +57,7 @@ impl<'a> Cursor<'a> {
     }
 
     /// Takes the byte if it comes next, blanks and comments aside.
+    #[inline]
     pub fn eat(&mut self, byte: u8) -> bool {
         let comes = self.peek() == Some(byte);
         self.at += usize::from(comes);
@@ -46,6 +65,7 @@ impl<'a> Cursor<'a> {
     }
 
     /// The bytes that come next, blanks and comments aside, as long as `is` holds.
+    #[inline]
     pub fn take_while(&mut self, is: impl Fn(u8) -> bool) -> &'a [u8] {
         self.peek();
         let rest = self.rest();
@@ -75,6 +95,13 @@ impl<'a> Cursor<'a> {
         let start = self.bytes.len().min(self.at + 1);
         let window = &self.bytes[start..self.bytes.len().min(start + self.longest_string + 1)];
         let mut is_doubled = true;
+        // the usual string: short, on one line, a mark right after its quote
+        if let Some(length) = window.iter().take(64).position(|byte| matches!(byte, b'\'' | b'\n' | b'\r'))
+            && let [b'\'', b',' | b')', ..] = window[length..]
+        {
+            self.at = start + length + 1;
+            return Some(Quoted { raw: &window[..length], is_doubled });
+        }
         let mut at = 0; // up to where each piece between quotes has been looked at
         while let Some(length) = memchr::memchr(b'\'', &window[at..]) {
             let (piece, quote) = (&window[at..at + length], at + length);
@@ -97,6 +124,30 @@ impl<'a> Cursor<'a> {
         let rest = start + at;
         self.at = record_end(&self.bytes[rest..]).map_or(self.bytes.len(), |lost| rest + lost);
         None
+    }
+
+    /// The number of a reference that comes next, if it is written in the usual way: `#12` and a mark at once.
+    #[inline]
+    pub fn reference(&mut self) -> Option<u64> {
+        let digits = self.rest().strip_prefix(b"#")?;
+        let mut number = 0;
+        for (length, byte) in digits.iter().take(19).enumerate() {
+            match byte {
+                b'0'..=b'9' => number = number * 10 + u64::from(byte - b'0'),
+                b',' | b')' if length > 0 => {
+                    self.at += 1 + length;
+                    return Some(number);
+                }
+                _ => return None,
+            }
+        }
+        None
+    }
+
+    /// A piece as text; what is not UTF-8 is replaced.
+    #[inline]
+    pub fn text(&self, piece: &'a [u8]) -> Cow<'a, str> {
+        self.source.text(piece).map_or_else(|| String::from_utf8_lossy(piece), Cow::Borrowed)
     }
 
     /// Leaves a record: past the `;` that ends it, or up to where another record plainly starts.

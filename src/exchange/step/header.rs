@@ -18,7 +18,7 @@ impl Reader<'_> {
                 self.cursor.at += 1;
             } else if let Some(text) = self.cursor.string() {
                 // an object identifier may follow: 'IFC4 {1 0 10303 …}'
-                let name = super::text::decode(text.raw).text;
+                let name = super::text::decode(text.raw, self.cursor.source.text(text.raw)).text;
                 names.push(name.split_whitespace().next().unwrap_or_default().to_ascii_uppercase());
             }
         }

@@ -4,6 +4,8 @@
 
 mod cursor;
 mod header;
+mod numbers;
+mod parts;
 mod record;
 mod text;
 mod value;
@@ -11,6 +13,7 @@ mod value;
 use std::sync::Arc;
 
 use self::cursor::Cursor;
+use self::numbers::Numbers;
 use super::limits::Limits;
 use super::problems::{Problems, Ruler, Spot};
 use super::schema::Schema;
@@ -36,12 +39,8 @@ struct Reader<'a> {
     problems: Problems,
     /// The items of the lists that are being read, those of the innermost last.
     items: Vec<Cell>,
-    /// The records by the numbers that the file gives them.
-    numbers: Vec<(u64, Id)>,
-    /// Whether each of these was larger than the one before.
-    is_ascending: bool,
-    /// References by number, and who refers.
-    references: Vec<(u64, Id)>,
+    /// The numbers in references that have no room in one.
+    large: Vec<u64>,
     /// Where the first text that is not UTF-8 stands, and how many there are.
     latin1: Option<(Spot, usize)>,
     limits: Limits,
@@ -61,9 +60,7 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
         entities: Entities::new(Schema::ifc4(), file),
         problems,
         items: Vec::new(),
-        numbers: Vec::new(),
-        is_ascending: true,
-        references: Vec::new(),
+        large: Vec::new(),
         latin1: None,
         limits,
         started: 0,
@@ -120,6 +117,9 @@ impl Reader<'_> {
                         named = true;
                         self.problems.add("no schema", spot, || "FILE_SCHEMA is missing: read as IFC4".into());
                     }
+                    self.cursor.skip_record();
+                    self.parts();
+                    continue;
                 }
                 (_, "ANCHOR" | "REFERENCE" | "SIGNATURE") => {
                     section = Section::Other;
@@ -172,42 +172,26 @@ impl Reader<'_> {
                 format!("texts with bytes that are not UTF-8, {count} from here on, are read as Windows-1252")
             });
         }
-        self.numbers.sort(); // of two with the same number the first comes first
-        for pair in self.numbers.chunk_by(|(a, _), (b, _)| a == b) {
-            for (number, id) in pair.iter().skip(1) {
-                let (at, spot) = (self.entities.get(pair[0].1).place(), self.entities.spot(*id));
-                self.problems.add("id given twice", spot, || {
-                    format!("the id #{number} is given a second time; references to it mean the one at {at}")
+        let numbers = Numbers::of(&self.entities, &mut self.problems);
+        let large = self.large;
+        let number = |id: Id| numbers::number(id, &large);
+        if self.entities.settle(|id| numbers.find(number(id)?)) {
+            for from in (0..self.entities.len() as u32).map(Id) {
+                let entity = self.entities.get(from);
+                self.entities.each_reference(from, &mut |id| {
+                    let Some(number) = number(id) else { return };
+                    self.problems.add("reference to nothing", entity.spot(), || {
+                        format!("{} {} refers to #{number}, but no entity has that id", entity.class(), entity.label())
+                    });
                 });
             }
+            self.entities.drop_waiting();
         }
-        self.numbers.dedup_by_key(|(number, _)| *number);
-        let targets: Vec<Option<Id>> = self.references.iter().map(|(number, _)| self.target(*number)).collect();
-        for ((number, from), _) in self.references.iter().zip(&targets).filter(|(_, target)| target.is_none()) {
-            let entity = self.entities.get(*from);
-            self.problems.add("reference to nothing", entity.spot(), || {
-                format!("{} {} refers to #{number}, but no entity has that id", entity.class(), entity.label())
-            });
-        }
-        self.entities.settle(&targets);
         conform::check(&self.entities, &mut self.problems);
         Exchange {
             form: format!("{} STEP", self.schema.name),
             entities: self.entities,
             problems: self.problems.finish(),
-        }
-    }
-
-    fn target(&self, number: u64) -> Option<Id> {
-        // numbers grow by one at least, so that none lies further on than its distance from the first
-        let first = self.numbers.first()?.0;
-        let last = usize::try_from(number.checked_sub(first)?).unwrap_or(usize::MAX);
-        match self.numbers.get(last) {
-            Some((same, id)) if *same == number => Some(*id),
-            _ => {
-                let among = &self.numbers[..last.min(self.numbers.len())];
-                among.binary_search_by_key(&number, |(number, _)| *number).ok().map(|index| among[index].1)
-            }
         }
     }
 }

@@ -26,11 +26,15 @@ impl Reader<'_> {
         let spot = self.spot();
         self.started = self.cursor.at;
         self.cursor.at += 1;
-        let digits = String::from_utf8_lossy(self.cursor.take_while(|b| b.is_ascii_digit()));
+        let digits = self.cursor.take_while(|b| b.is_ascii_digit());
+        let digits = self.cursor.text(digits);
         if digits.is_empty() || !self.cursor.eat(b'=') {
             return self.give_up("record that is not understood", spot, format!("#{digits} starts no record #1=…"));
         }
-        let label = format!("#{digits}");
+        let label = match self.cursor.bytes.get(self.started..self.started + 1 + digits.len()) {
+            Some(label) if label.ends_with(digits.as_bytes()) => self.cursor.text(label),
+            _ => format!("#{digits}").into(), // blanks stand between
+        };
         if self.cursor.peek() == Some(b'(') {
             let class = self.entities.class_id(COMPLEX);
             self.open(class, &label, &digits, spot);
@@ -40,7 +44,8 @@ impl Reader<'_> {
                 format!("{label} is of several classes at once; it is kept, but nothing of it is understood"),
             );
         }
-        let name = String::from_utf8_lossy(self.cursor.keyword());
+        let name = self.cursor.keyword();
+        let name = self.cursor.text(name);
         if name.is_empty() {
             return self.give_up("record that is not understood", spot, format!("{label} names no entity after its ="));
         }
@@ -60,14 +65,10 @@ impl Reader<'_> {
 
     fn open(&mut self, class: u16, label: &str, digits: &str, spot: Spot) -> Id {
         let id = self.entities.open(class, label, spot);
-        match digits.parse() {
-            Ok(number) => {
-                self.is_ascending &= self.numbers.last().is_none_or(|(last, _)| *last < number);
-                self.numbers.push((number, id));
-            }
-            Err(_) => self.problems.add("id that is too large", spot, || {
+        if digits.parse::<u64>().is_err() {
+            self.problems.add("id that is too large", spot, || {
                 format!("the id {label} is larger than {}: nothing can refer to it", u64::MAX)
-            }),
+            });
         }
         id
     }

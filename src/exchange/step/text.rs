@@ -1,10 +1,12 @@
 //! Strings of ISO 10303-21 into text.
 
+use std::borrow::Cow;
+
 use encoding_rs as enc;
 
 /// The text of a string, and what is wrong with it, in words that follow "…: ".
-pub(super) struct Text {
-    pub text: String,
+pub(super) struct Text<'a> {
+    pub text: Cow<'a, str>,
     pub wrong: Option<String>,
     /// Whether it holds bytes that are not UTF-8, which are read as Windows-1252: ISO 8859-1 and what programs add to it.
     pub is_latin1: bool,
@@ -13,33 +15,34 @@ pub(super) struct Text {
 /// Decodes what stands between the quotes: doubled quotes and backslashes, `\X\`, `\X2\`, `\X4\`, `\S\` with `\P.\`.
 /// A backslash that starts none of these stands for itself, because file names are often written so. Control
 /// characters are left out: only the line breaks of long strings are such.
-pub(super) fn decode(raw: &[u8]) -> Text {
-    let (written, is_latin1) = match std::str::from_utf8(raw) {
-        Ok(text) => (text.to_owned(), false),
-        Err(_) => (enc::WINDOWS_1252.decode_without_bom_handling(raw).0.into_owned(), true),
+///
+/// `text` are the same bytes where they are UTF-8.
+pub(super) fn decode<'a>(raw: &'a [u8], text: Option<&'a str>) -> Text<'a> {
+    let (written, is_latin1) = match text {
+        Some(text) => (Cow::Borrowed(text), false),
+        None => (enc::WINDOWS_1252.decode_without_bom_handling(raw).0, true),
     };
-    let mut decoded = Text { text: String::new(), wrong: None, is_latin1 };
-    if !written.contains(|c: char| c == '\\' || c == '\'' || c.is_control()) {
-        decoded.text = written;
-        return decoded;
+    let is_plain = |byte: u8| matches!(byte, b' '..=b'~') && byte != b'\\' && byte != b'\'';
+    if raw.iter().all(|byte| is_plain(*byte)) || !written.contains(|c: char| c == '\\' || c == '\'' || c.is_control()) {
+        return Text { text: written, wrong: None, is_latin1 };
     }
-    decoded.text.reserve(written.len());
-    let mut rest = written.as_str();
+    let mut decoded = Text { text: String::with_capacity(written.len()).into(), wrong: None, is_latin1 };
+    let mut rest = &*written;
     let mut page = 'A';
     while let Some(at) = rest.find(|c: char| c == '\\' || c == '\'' || c.is_control()) {
-        decoded.text.push_str(&rest[..at]);
+        decoded.text.to_mut().push_str(&rest[..at]);
         rest = &rest[at..];
         let taken = escape(rest, &mut page, &mut decoded);
         rest = &rest[taken..];
     }
-    decoded.text.push_str(rest);
+    decoded.text.to_mut().push_str(rest);
     decoded
 }
 
 /// Adds what an escape at the start of `rest` stands for; how many bytes it takes.
 fn escape(rest: &str, page: &mut char, into: &mut Text) -> usize {
     if rest.starts_with("''") || rest.starts_with("\\\\") {
-        into.text.push_str(&rest[..1]);
+        into.text.to_mut().push_str(&rest[..1]);
         return 2;
     }
     if let Some(after) = rest.strip_prefix("\\X2\\") {
@@ -49,15 +52,15 @@ fn escape(rest: &str, page: &mut char, into: &mut Text) -> usize {
         return wide(rest, after, 8, into);
     }
     if let Some(byte) = rest.strip_prefix("\\X\\").and_then(|after| hex(after.get(..2)?)) {
-        into.text.push(char::from_u32(byte).unwrap_or_default());
+        into.text.to_mut().push(char::from_u32(byte).unwrap_or_default());
         return 5;
     }
     if let Some(c) = rest.strip_prefix("\\S\\").and_then(|after| after.chars().next()).filter(char::is_ascii) {
         let byte = c as u8 | 0x80;
         match in_page(*page, byte) {
-            Some(text) => into.text.push(text),
+            Some(text) => into.text.to_mut().push(text),
             None => {
-                into.text.push(char::REPLACEMENT_CHARACTER);
+                into.text.to_mut().push(char::REPLACEMENT_CHARACTER);
                 into.wrong = Some(format!("holds \\S\\{c}, which the code page \\P{page}\\ does not have"));
             }
         }
@@ -69,7 +72,7 @@ fn escape(rest: &str, page: &mut char, into: &mut Text) -> usize {
     }
     let first = rest.chars().next().unwrap_or_default();
     if !first.is_control() {
-        into.text.push(first);
+        into.text.to_mut().push(first);
     }
     first.len_utf8()
 }
@@ -108,7 +111,7 @@ fn wide(rest: &str, after: &str, digits: usize, into: &mut Text) -> usize {
     });
     match text {
         Some(text) => {
-            into.text.push_str(&text);
+            into.text.to_mut().push_str(&text);
             4 + end + 4
         }
         None => {
@@ -116,7 +119,7 @@ fn wide(rest: &str, after: &str, digits: usize, into: &mut Text) -> usize {
             into.wrong = Some(format!(
                 "holds {name} without groups of {digits} hexadecimal digits and \\X0\\ after it; it is kept as it stands"
             ));
-            into.text.push_str(name);
+            into.text.to_mut().push_str(name);
             4
         }
     }

@@ -1,13 +1,12 @@
 //! The values in a record, by the kinds that the schema asks for.
 
-use super::super::Id;
 use super::super::scalar::{self, quoted};
 use super::super::schema::{Base, Kind};
 use super::super::store::{Cell, Store};
 use super::super::value::View;
-use super::super::waiting::WAITING;
 use super::Reader;
 use super::cursor::starts_record;
+use super::numbers;
 use super::record::At;
 use super::text;
 
@@ -62,7 +61,7 @@ impl Reader<'_> {
                 });
                 Ok(self.entities.store.list(&[value]))
             }
-            Some(b'#') => self.reference(at.id),
+            Some(b'#') => self.reference(),
             Some(b'\'') => self.text(kind.base, at),
             Some(b'"') => self.binary(kind.base),
             Some(b'a'..=b'z' | b'A'..=b'Z' | b'!') => self.typed(kind, at, level),
@@ -122,29 +121,32 @@ impl Reader<'_> {
         Ok(())
     }
 
-    fn reference(&mut self, from: Id) -> Read<Cell> {
+    fn reference(&mut self) -> Read<Cell> {
+        let number = match self.cursor.reference() {
+            Some(number) => number,
+            None => self.odd_reference()?,
+        };
+        Ok(Cell::entity(numbers::reference(number, &mut self.large)))
+    }
+
+    /// The number of a reference in whatever way it is written.
+    fn odd_reference(&mut self) -> Read<u64> {
         if starts_record(self.cursor.rest()) {
             return Err(Trouble::Broken(self.unexpected("a value")));
         }
         self.cursor.at += 1;
-        let digits = String::from_utf8_lossy(self.cursor.word());
+        let digits = self.cursor.word();
+        let digits = self.cursor.text(digits);
         let number = digits.parse().ok().filter(|_| digits.bytes().all(|b| b.is_ascii_digit()));
-        let Some(number) = number else {
+        number.ok_or_else(|| {
             let shown = quoted(&format!("#{digits}"));
-            return Err(Trouble::Wrong(format!("refers to {shown}, which is no id")));
-        };
-        if self.is_ascending
-            && let Some(known) = self.target(number)
-        {
-            return Ok(Cell::entity(known));
-        }
-        self.references.push((number, from));
-        Ok(Cell::entity(Id(WAITING + (self.references.len() - 1) as u32)))
+            Trouble::Wrong(format!("refers to {shown}, which is no id"))
+        })
     }
 
     fn text(&mut self, base: Base, at: At) -> Read<Cell> {
         let string = self.cursor.string().ok_or_else(|| Trouble::Broken(self.limits.string_not_closed()))?;
-        let decoded = text::decode(string.raw);
+        let decoded = text::decode(string.raw, self.cursor.source.text(string.raw));
         if !string.is_doubled {
             let text = quoted(&decoded.text);
             self.note("quote that is not doubled", at, |named| {
@@ -172,7 +174,7 @@ impl Reader<'_> {
         if !self.cursor.eat(b'"') {
             return Err(Trouble::Broken(self.unexpected("the end of a binary")));
         }
-        let digits = String::from_utf8_lossy(digits);
+        let digits = self.cursor.text(digits);
         match base {
             Base::Binary | Base::Any | Base::Select => Ok(self.entities.store.text(&digits)),
             _ => Err(Trouble::Wrong(format!("is the binary {}, {}", quoted(&digits), required(base)))),
@@ -182,7 +184,8 @@ impl Reader<'_> {
     /// `IFCLABEL('x')`; the type is kept only where the schema leaves a choice.
     fn typed(&mut self, kind: Kind, at: At, level: usize) -> Read<Cell> {
         let start = self.cursor.at;
-        let name = String::from_utf8_lossy(self.cursor.keyword());
+        let name = self.cursor.keyword();
+        let name = self.cursor.text(name);
         if !self.cursor.eat(b'(') {
             self.cursor.at = start;
             return self.word(kind.base, at);
@@ -225,7 +228,8 @@ impl Reader<'_> {
     /// A number, or a token between dots.
     fn word(&mut self, base: Base, at: At) -> Read<Cell> {
         let start = self.cursor.at;
-        let word = String::from_utf8_lossy(self.cursor.word());
+        let word = self.cursor.word();
+        let word = self.cursor.text(word);
         if word.is_empty() && !matches!(self.cursor.peek(), Some(b',' | b')')) {
             self.cursor.at = start;
             return Err(Trouble::Broken(self.unexpected("a value")));

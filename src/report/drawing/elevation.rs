@@ -198,7 +198,8 @@ impl View<'_> {
         let flange = if at_top { h - t_b } else { 0.0 };
         let tension = if at_top { 0.0 } else { h - t_b };
         let spread = 0.12 * h;
-        let places: [(&[&str], (f64, f64), (f64, f64)); 10] = [
+        type Corner = (f64, f64);
+        let places: [(&[&str], Corner, Corner); 10] = [
             (&["column-web-panel"], (t_c - h_c, 0.0), (-t_c, h)),
             (&["column-web-in-compression"], (t_c - h_c, flange - spread), (-t_c, flange + t_b + spread)),
             (&["column-web", "column-stiffener", "stiffener"], (t_c - h_c, lower), (-t_c, upper)),

@@ -2,9 +2,9 @@
 
 use serde::{Deserialize, Serialize};
 
-/// The whole review document.
+/// The whole review document; what may be many comes in lists, or in what is written like one.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
-pub struct Review {
+pub struct Review<J = Vec<Joint>, P = Vec<Problem>> {
     /// [`REVIEW_SCHEMA`](super::REVIEW_SCHEMA).
     pub schema: String,
     /// Who wrote it.
@@ -18,9 +18,9 @@ pub struct Review {
     /// Counts.
     pub counts: Counts,
     /// Joints sorted by mark.
-    pub joints: Vec<Joint>,
+    pub joints: J,
     /// Problems of model and schedule.
-    pub problems: Vec<Problem>,
+    pub problems: P,
     /// The caution.
     pub caution: String,
 }
@@ -130,6 +130,9 @@ pub struct Joint {
     pub required: Vec<Required>,
     /// Row forces of the governing sense.
     pub rows: Vec<Row>,
+    /// Rotational stiffness and class; absent from documents of older versions.
+    #[serde(default)]
+    pub stiffness: Option<Stiffness>,
     /// Checks.
     pub checks: Vec<Check>,
     /// Findings, worst first.
@@ -260,6 +263,48 @@ pub struct Row {
     pub governed_by: String,
 }
 
+/// Rotational stiffness of the leading case, or in the joint's own right.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+pub struct Stiffness {
+    /// "tension at the top" or "tension at the bottom".
+    pub sense: String,
+    /// β.
+    pub beta: Option<f64>,
+    /// S_j,ini.
+    pub initial_knm_per_rad: Option<f64>,
+    /// S_j beside the required moment.
+    pub at_required_knm_per_rad: Option<f64>,
+    /// Whether something that is not known might make it stiffer.
+    pub lower_bound: bool,
+    /// z.
+    pub lever_arm_mm: Option<f64>,
+    /// Springs in a row.
+    pub springs: Vec<Spring>,
+    /// Rigid from here on; `null` where span or bracing is not stated.
+    pub rigid_from_knm_per_rad: Option<f64>,
+    /// Nominally pinned up to here.
+    pub pinned_up_to_knm_per_rad: Option<f64>,
+    /// "rigid", "semi-rigid", "pinned", or "not stated: …".
+    pub class: String,
+    /// What the analysis takes it for.
+    pub assumed: Option<String>,
+    /// "full-strength", "partial-strength" or "nominally pinned by strength".
+    pub strength: String,
+    /// What may be assumed of the rotation capacity.
+    pub rotation: String,
+    /// What is not checked.
+    pub notes: Vec<String>,
+}
+
+/// A spring of the stiffness.
+#[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
+pub struct Spring {
+    /// In words.
+    pub title: String,
+    /// k; `null` where it is infinitely stiff.
+    pub k_mm: Option<f64>,
+}
+
 /// A check.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]
 pub struct Check {
@@ -279,6 +324,9 @@ pub struct Check {
     pub utilisation: Option<f64>,
     /// "met", "not met" or "unproven".
     pub outcome: String,
+    /// For a weld: the throat that the action needs, or that the joint's full resistance needs where none is stated.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub needed_throat_mm: Option<f64>,
 }
 
 /// A finding.

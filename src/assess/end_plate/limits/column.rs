@@ -3,7 +3,7 @@
 
 use super::{Limit, TensionSide, sum};
 use crate::assess::end_plate::numbers::{ColumnSide, Numbers, Row, StiffenerPair};
-use crate::eurocode::effective_length::{self as el, RowPlace};
+use crate::eurocode::effective_length::{self as el, EffectiveLength, RowPlace};
 use crate::eurocode::t_stub::{TStub, t_stub};
 use crate::eurocode::{Resistance, column_web, stiffeners};
 use crate::units::Length;
@@ -88,17 +88,16 @@ impl TensionSide<'_> {
         (self.rows[last].height..self.rows[first].height).contains(&pair.height)
     }
 
-    /// The column flange's T-stub of a range of rows with a root radius, with the stiffeners beside them or as if there were
-    /// none.
-    fn column_stub(
+    /// Each row's share of the effective length of a range, on the column's flange with a root radius, with the stiffeners
+    /// beside them or as if there were none.
+    fn column_lengths(
         &self,
         column: &ColumnSide,
-        first: usize,
-        last: usize,
+        (first, last): (usize, usize),
         stiffened: bool,
         r: Length,
         w: &mut Working,
-    ) -> TStub {
+    ) -> Vec<EffectiveLength> {
         let mut lengths = Vec::new();
         for i in first..=last {
             let row = &self.rows[i];
@@ -121,6 +120,32 @@ impl TensionSide<'_> {
                 el::inner_in_group(0.5 * (self.pitch_below(i - 1) + self.pitch_below(i)))
             });
         }
+        lengths
+    }
+
+    /// The smallest effective length of one row, alone or as part of a group (Table 6.11), with a root radius.
+    pub(super) fn least_on_column(&self, column: &ColumnSide, row: usize, r: Length) -> Length {
+        let parted = |first, last| {
+            let pairs = self.pairs_at(column, first, last);
+            first != last && pairs.iter().any(|pair| self.parts(first, last, pair))
+        };
+        self.least_length(row, |first, last, w| {
+            (!parted(first, last)).then(|| self.column_lengths(column, (first, last), true, r, w))
+        })
+    }
+
+    /// The column flange's T-stub of a range of rows with a root radius, with the stiffeners beside them or as if there were
+    /// none.
+    fn column_stub(
+        &self,
+        column: &ColumnSide,
+        first: usize,
+        last: usize,
+        stiffened: bool,
+        r: Length,
+        w: &mut Working,
+    ) -> TStub {
+        let lengths = self.column_lengths(column, (first, last), stiffened, r, w);
         // A group of rows with unequal gauge takes the largest m and the smallest n.
         let m = self.over(first, last, |row| self.m_beside(column, row, r), Length::max);
         let n_e = self.over(first, last, Row::e_min, Length::min);

@@ -3,7 +3,7 @@
 
 use super::{Limit, OnPlate, PlateRows, TensionSide, sum};
 use crate::assess::end_plate::numbers::{Numbers, Row};
-use crate::eurocode::effective_length::{self as el, RowPlace};
+use crate::eurocode::effective_length::{self as el, EffectiveLength, RowPlace};
 use crate::eurocode::t_stub::TStub;
 use crate::eurocode::{Resistance, beam};
 use crate::units::Length;
@@ -82,6 +82,18 @@ impl TensionSide<'_> {
         a: Option<Length>,
         w: &mut Working,
     ) -> (Length, Length) {
+        sum(&self.plate_row_lengths(plate, first, last, a, w), w)
+    }
+
+    /// Each row's share of them.
+    fn plate_row_lengths(
+        &self,
+        plate: &PlateRows<'_>,
+        first: usize,
+        last: usize,
+        a: Option<Length>,
+        w: &mut Working,
+    ) -> Vec<EffectiveLength> {
         let mut lengths = Vec::new();
         for i in first..=last {
             let row = &self.rows[i];
@@ -101,7 +113,21 @@ impl TensionSide<'_> {
                 el::inner_in_group(0.5 * (self.pitch_below(i - 1) + self.pitch_below(i)))
             });
         }
-        sum(&lengths, w)
+        lengths
+    }
+
+    /// The smallest effective length of one row, alone or as part of a group (Table 6.11), and its m or m_x.
+    pub(super) fn least_on_plate(&self, plate: &PlateRows<'_>, i: usize) -> (Length, Length) {
+        let (row, side) = (&self.rows[i], plate.side);
+        if plate.places[i] == OnPlate::Outside {
+            let (m_x, e_x) = (plate.m_x(row), side.top - row.height);
+            let length = el::outside_tension_flange(m_x, e_x, row.edge(side), row.gauge, side.b_p);
+            return (length.cp.min(length.nc), m_x);
+        }
+        let least = self.least_length(i, |first, last, w| {
+            (plate.places[first] != OnPlate::Outside).then(|| self.plate_row_lengths(plate, first, last, side.a_web, w))
+        });
+        (least, plate.m(row))
     }
 
     fn plate_stub(&self, plate: &PlateRows<'_>, l_eff_1: Length, l_eff_2: Length, first: usize, last: usize) -> TStub {
