@@ -1,9 +1,10 @@
 //! Haunched beams: laws on invented ones, and own arithmetic.
 #![allow(non_snake_case)]
 
-use faying::assess::end_plate::Opposite;
+use faying::assess::end_plate::{Opposite, intended};
 use faying::assess::{About, Gap, MomentResistance, Sense, State};
 use faying::eurocode::haunch::{AtEnd, Compression, compression, web_at_end};
+use faying::intent::{IntendedDetail, IntendedHaunch};
 use faying::joints::{EndPlateLayout, Haunch};
 use faying::units::{Area, Length, mm, mpa};
 use proptest::prelude::*;
@@ -183,4 +184,23 @@ fn a_haunch_that_the_clause_does_not_allow_is_unproven() {
     // A weld that nobody states leaves the moment, and keeps the proof back.
     let (assessed, said) = gaps(&|h| h.flange_weld = unknown("weld at the haunch's flange"));
     assert!(assessed && said.contains("weld at the haunch's flange"), "{said}");
+}
+
+/// What the schedule states of a haunch is laid over the detailed one; what it doesn't state stays.
+#[test]
+fn the_intended_haunch() {
+    let meant = |detailed: &EndPlateLayout, haunch: Option<IntendedHaunch>| {
+        intended(detailed, &IntendedDetail { haunch: Some(haunch), ..IntendedDetail::default() }, &RULES)
+    };
+    let detailed = haunched(&PLAIN, 240.0, 700.0);
+    let deeper = IntendedHaunch { depth: Some(mm(300.0)), ..IntendedHaunch::default() };
+    let haunch = meant(&detailed, Some(deeper.clone())).unwrap().haunch.unwrap();
+    let wanted = haunched(&PLAIN, 300.0, 700.0).haunch.unwrap();
+    assert_eq!((haunch.depth, haunch.length), (wanted.depth, wanted.length));
+    assert!((haunch.angle - wanted.angle).abs() < 1e-9);
+    assert_eq!(haunch.flange_thickness, wanted.flange_thickness);
+    assert!(meant(&detailed, None).unwrap().haunch.is_none());
+    // Where none is detailed nothing of it is known but what is stated: not computed, and said.
+    let why = meant(&PLAIN.layout(&RULES), Some(deeper)).unwrap_err();
+    assert!(why.reason.contains("a haunch is intended where none is detailed"), "{}", why.reason);
 }
