@@ -3,6 +3,7 @@
 
 mod axial;
 mod butt_welds;
+mod haunches;
 mod intended;
 pub mod joint;
 mod known_limits;

@@ -81,6 +81,9 @@ pub const BOUND_BY_TENSION: &str =
 /// The same beside an axial tension that is not neglected.
 const BOUND_BY_AXIAL: &str =
     "the resistance is only a lower bound: beside the axial tension the bolts are taken as fully in tension";
+/// Why the resistance in the sense that leaves out the haunch is only a lower bound.
+const BOUND_BY_HAUNCH: &str =
+    "the resistance is only a lower bound: the haunch is not credited with tension at the bottom";
 
 /// The same where something that would raise it is not known.
 fn lower_bound(gaps: &[Gap]) -> Option<String> {
@@ -151,6 +154,9 @@ pub fn assess_with<'l>(
         }
         noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
+        if n.side.haunch.is_some() {
+            noted.assumptions.push("with tension at the bottom the haunch and the rows beside it are left out".into());
+        }
         let turned = n.upside_down();
         let solve = |sense: Sense, beta: f64, beside: Beside, rule: Option<RowForces>| {
             solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, beside, rule)
@@ -327,6 +333,7 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.bolts.F_t_Rd);
         let unknown = rule == RowForces::LinearBeyond19
             && (self.lower_bound.is_some()
+                || self.without_haunch(sense).is_some()
                 || at_bound(opposite) && (self.solve)(sense, 0.0, beside, Some(rule))?.rows.iter().any(steep));
         if !unknown || solved.rows.first().is_some_and(steep) {
             return Ok(solved);
@@ -335,12 +342,18 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         Ok(if linear.without_welds < solved.without_welds { linear } else { solved })
     }
 
+    /// Why the resistance in this sense leaves out a haunch, if it does.
+    fn without_haunch(&self, sense: Sense) -> Option<&'static str> {
+        (sense == Sense::Sagging && self.n.side.haunch.is_some()).then_some(BOUND_BY_HAUNCH)
+    }
+
     fn result(&self, case: usize, demand: &Demand<'_>) -> CaseResult {
         let LoadCase { moment, shear, axial, .. } = demand.case;
         let mut verdicts = Vec::new();
         let beside = Beside::of(demand.case);
         let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
         let bound = at_bound(demand.opposite).then_some(BOUND_BY_OPPOSITE);
+        let bound = bound.or(moment.and_then(|m| self.without_haunch(sense_of(m))));
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {
                 let governed = if resistance.moment < resistance.without_welds {
@@ -424,6 +437,9 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         let beyond = |why: &str| {
             left(format!("N = {n} is above {percent:.0} % of the beam's N_pl,Rd ({limit}), 6.2.7.1(2): {why}"))
         };
+        if self.n.side.haunch.is_some() {
+            return (beyond("moment with axial force at a haunch is not assessed yet"), None);
+        }
         let Some((m, resistance)) = moment else {
             return (beyond("moment with axial force needs the moment and its resistance"), None);
         };

@@ -48,7 +48,7 @@ pub fn stiffness(
         Some(column) => {
             let M_c_pl_Rd = column.section.w_pl_y * column.strength.f_y_flange / gamma_M0;
             // A column that ends within a beam's depth is one at its top.
-            let runs_on = [column.above, column.below].into_iter().flatten().all(|end| end > n.side.beam.h);
+            let runs_on = [column.above, column.below].into_iter().flatten().all(|end| end > n.side.depth());
             classification::full_strength(&mut w, M_b_pl_Rd, M_c_pl_Rd, runs_on)
         }
         None => M_b_pl_Rd,
