@@ -1,6 +1,7 @@
 //! The strength of end-plate joints: laws on invented joints, a second way of computing, limits known from theory, and what
 //! once slipped through.
 
+mod butt_welds;
 mod intended;
 pub mod joint;
 mod known_limits;

@@ -181,6 +181,8 @@ pub struct IntendedDetail {
     pub stiffener_top: Option<Option<IntendedStiffener>>,
     /// The same at the bottom flange.
     pub stiffener_bottom: Option<Option<IntendedStiffener>>,
+    /// Whether the steel is exposed to weather or to other corrosive influences.
+    pub exposed: Option<bool>,
     /// Supplementary web plates: `Some(None)` means "none intended".
     pub web_plates: Option<Option<IntendedStiffener>>,
     /// On how many sides of the web they are: 1 or 2.
@@ -191,8 +193,6 @@ pub struct IntendedDetail {
     pub diagonal_form: Option<DiagonalForm>,
     /// Backing plates behind the column's flange, on both sides of the web.
     pub backing_plates: Option<Option<IntendedStiffener>>,
-    /// Whether the steel is exposed to weather or to other corrosive influences.
-    pub exposed: Option<bool>,
     /// Where it is written.
     pub at: Option<Place>,
 }

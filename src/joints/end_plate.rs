@@ -6,7 +6,7 @@ use super::bolts::{self, Behind};
 use super::boxes::{Ply, Slab};
 use super::draft::{Draft, Seat};
 use super::frame::{Frame, Span, are_parallel, corners};
-use super::layout::{EndPlate, EndPlateLayout, Layout, MemberAt, Welds};
+use super::layout::{EndPlate, EndPlateLayout, FullButts, Layout, MemberAt, Welds};
 use super::scene::Scene;
 use super::stiffeners::{self, OnColumn};
 use super::touch::{EndOn, Pass};
@@ -278,9 +278,15 @@ pub(super) fn plate_at(scene: &Scene, plate: usize, outline: &[DVec2]) -> Result
 /// The throats of a member's welds to its end plate, `frame` being that member's own.
 pub(super) fn welds_at(scene: &Scene, frame: &Frame, member: usize, roles: &[(usize, Role)]) -> Welds {
     let throat = |role, what| welds::throat(scene, frame, member, roles, role, what);
+    let full = |role| welds::full_butt(scene, frame, member, roles, role);
     Welds {
         flange_top: throat(Role::FlangeTop, "weld at the top flange"),
         flange_bottom: throat(Role::FlangeBottom, "weld at the bottom flange"),
         web: throat(Role::Web, "weld at the web"),
+        full: FullButts {
+            flange_top: full(Role::FlangeTop),
+            flange_bottom: full(Role::FlangeBottom),
+            web: full(Role::Web),
+        },
     }
 }

@@ -74,10 +74,24 @@ pub struct Bolts {
 pub struct Held {
     /// Thickness of each rigid packing plate between the plies; as large as the end plate.
     pub packing: Vec<Length>,
+    /// The shank without thread: the shortest of the bolts' lengths less their threads; `None` unless all state both.
+    pub shank: Option<Length>,
     /// Category of Table 3.2; `None` where nobody states one.
     pub category: Option<Datum<Category>>,
     /// Slip factor μ of the friction surfaces; `None` where nobody states one.
     pub slip_factor: Option<Datum<f64>>,
+}
+
+/// Which of a beam's welds are butt welds of full penetration: as strong as the weaker part (EN 1993-1-8 4.7.1), and no
+/// fillet beside the bolts. Their throat is the thickness of the part.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct FullButts {
+    /// At the upper flange.
+    pub flange_top: bool,
+    /// At the lower flange.
+    pub flange_bottom: bool,
+    /// At the web.
+    pub web: bool,
 }
 
 /// Throats a of the fillets between beam and end plate; each both sides of its plate.
@@ -89,6 +103,8 @@ pub struct Welds {
     pub flange_bottom: Known<Length>,
     /// At the web.
     pub web: Known<Length>,
+    /// Which of them are no fillets.
+    pub full: FullButts,
 }
 
 /// A transverse stiffener of the column: a pair, one plate on each side of the web.
@@ -251,6 +267,17 @@ pub struct BoltedPlate<'a> {
     pub bolts: &'a Bolts,
 }
 
+impl BoltedPlate<'_> {
+    /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
+    pub fn plies(&self) -> Option<[Length; 2]> {
+        let behind = match self.support {
+            Support::Column(layout) => layout.column.section.as_ref().ok()?.value.t_f,
+            Support::Plate(other) => other.plate.thickness,
+        };
+        Some([self.side.plate.thickness, behind])
+    }
+}
+
 impl Half {
     fn side(&self, which: Which) -> PlateSide<'_> {
         PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
@@ -301,11 +328,7 @@ impl Layout {
 
     /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
     pub fn plies(&self) -> Option<[Length; 2]> {
-        let behind = match self {
-            Self::EndPlate(layout) => layout.column.section.as_ref().ok()?.value.t_f,
-            Self::Splice(layout) => layout.supporting.plate.thickness,
-        };
-        Some([self.side().plate.thickness, behind])
+        BoltedPlate::from(self).plies()
     }
 
     /// All that the bolts hold together: both plies and the packing between them.

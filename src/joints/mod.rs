@@ -24,8 +24,8 @@ mod touch;
 mod welds;
 
 pub use layout::{
-    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, Half, Held, Layout, MemberAt,
-    PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
+    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Held, Layout,
+    MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;

@@ -5,7 +5,9 @@ use std::sync::LazyLock;
 use faying::assess::end_plate::{Demand, Opposite, assess};
 use faying::assess::{About, Assessment, MomentResistance, Sense, State, Verdict};
 use faying::intent::LoadCase;
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, MemberAt, Stiffener, Strengthening, Welds};
+use faying::joints::{
+    BoltRow, Bolts, EndPlate, EndPlateLayout, FullButts, Held, MemberAt, Stiffener, Strengthening, Welds,
+};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::rulebook::{Rulebook, Section};
 use faying::units::{Length, kn, knm, mm};
@@ -135,6 +137,7 @@ impl Sketch {
                 flange_top: known(mm(self.flange_weld)),
                 flange_bottom: known(mm(self.flange_weld)),
                 web: known(mm(self.web_weld)),
+                full: FullButts::default(),
             },
             stiffeners: (self.top.map(|t| pair(h - 0.5 * t_f, t)).into_iter())
                 .chain(self.bottom.map(|t| pair(0.5 * t_f, t)))

@@ -6,8 +6,8 @@ use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, Sta
 use faying::findings::{Context, rule};
 use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
 use faying::joints::{
-    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, Held, Joint, Kind, Layout, MemberAt,
-    Stiffener, WebPlate, Welds,
+    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Held, Joint, Kind, Layout,
+    MemberAt, Stiffener, WebPlate, Welds,
 };
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
@@ -250,7 +250,12 @@ fn joint(rulebook: &Rulebook) -> Joint {
             rows: rows(&[560.0, 440.0, 350.0, 60.0]),
             held: Held::default(),
         },
-        welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
+        welds: Welds {
+            flange_top: known(mm(8.5)),
+            flange_bottom: known(mm(8.5)),
+            web: known(mm(5.0)),
+            full: FullButts::default(),
+        },
         stiffeners: vec![stiffener(8.0)],
         strengthening: Default::default(),
         column_above: Some(mm(500.0)),
@@ -314,6 +319,7 @@ fn steelwork(rulebook: &Rulebook) -> Steelwork {
         end: DVec3::X,
         diameter: known(mm(24.0)),
         length: known(mm(90.0)),
+        thread: None,
         class: known("8.8".into()),
         hole: None,
         slot: None,
@@ -372,14 +378,14 @@ fn intended() -> IntendedDetail {
             grade: Some("S355".into()),
             ..IntendedStiffener::default()
         })),
+        exposed: None,
+        bolt_category: None,
+        friction: None,
         web_plates: None,
         web_plate_sides: None,
         diagonals: None,
         diagonal_form: None,
         backing_plates: None,
-        exposed: None,
-        bolt_category: None,
-        friction: None,
         at: Some(Place { file: "details.toml".into(), line: 1, column: 1 }),
     }
 }

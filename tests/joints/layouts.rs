@@ -86,10 +86,32 @@ fn what_no_weld_states_is_missing() {
     let mut steel = frame(&[Detail::default()]);
     steel.welds[0].sort = WeldSort::Butt;
     let reason = layout(&steel).welds.flange_top.unwrap_err().reason;
-    assert_eq!(reason, "butt weld: not assessed yet");
+    assert_eq!(reason, "a butt weld that is not known to go through, or not all along: not assessed yet");
     steel.welds.remove(0);
     let top = layout(&steel).welds.flange_top.unwrap_err();
     assert_eq!((top.what.as_str(), top.reason.as_str()), ("weld at the top flange", "no weld is modelled there"));
+}
+
+#[test]
+fn a_butt_weld_that_goes_through_all_along_is_as_strong_as_the_flange() {
+    let welds = |change: &dyn Fn(&mut Weld)| {
+        let mut steel = frame(&[Detail::default()]);
+        change(&mut steel.welds[0]);
+        layout(&steel).welds
+    };
+    // The flange is 12.8 thick.
+    let through = welds(&|weld| (weld.sort, weld.throat) = (WeldSort::FullButt, missing("throat")));
+    assert!(through.full.flange_top && !through.full.flange_bottom && !through.full.web);
+    assert_eq!(length(&through.flange_top), Some(12.8));
+    assert!(matches!(through.flange_top.unwrap().origin, Origin::Assumed(_)));
+    assert!(welds(&|weld| (weld.sort, weld.throat) = (WeldSort::Butt, known(mm(12.8)))).full.flange_top);
+    let partial = welds(&|weld| (weld.sort, weld.throat) = (WeldSort::Butt, known(mm(9.0))));
+    assert!(!partial.full.flange_top && partial.flange_top.is_err());
+    let short = welds(&|weld| {
+        weld.sort = WeldSort::FullButt;
+        shorten(weld, DVec3::Y, 0.6);
+    });
+    assert!(!short.full.flange_top && short.flange_top.is_err());
 }
 
 /// Draws a weld's body over a share of its length, about its middle.

@@ -171,6 +171,11 @@ impl Stated<'_> {
         lay(&mut welds.flange_top, self.detail.flange_weld);
         lay(&mut welds.flange_bottom, self.detail.flange_weld);
         lay(&mut welds.web, self.detail.web_weld);
+        // A stated throat means a fillet.
+        let fillets = self.detail.flange_weld.is_some();
+        welds.full.flange_top &= !fillets;
+        welds.full.flange_bottom &= !fillets;
+        welds.full.web &= self.detail.web_weld.is_none();
     }
 
     /// Rows by intended heights and gauge; edge distances follow from the plate's width and that of what it is bolted to,

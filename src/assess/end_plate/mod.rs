@@ -14,7 +14,7 @@ mod turning;
 mod weld_checks;
 
 pub use intended::{intended, intended_layout, with_category};
-use numbers::{Noted, Numbers};
+use numbers::{Noted, Numbers, PlateSide};
 use shear::Tension;
 use solver::Solved;
 pub use solver::Solver;
@@ -344,7 +344,7 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
                     governed,
                     bound,
                 ));
-                if self.n.sides().all(|side| side.a_tension.is_some() && side.a_web.is_some()) {
+                if self.n.sides().all(PlateSide::welds_known) {
                     verdicts.push(self.weld_verdict(*m, resistance, bound));
                 }
             }
@@ -443,7 +443,12 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
             .filter(|c| matches!(c.id.as_str(), "flange-weld" | "web-weld"))
             .max_by(|a, b| used(a).total_cmp(&used(b)));
         let Some(worst) = worst else {
-            return unproven(About::Weld, Some(required), "no weld could be computed".into());
+            if !self.n.sides().all(PlateSide::no_fillet_pulled) {
+                return unproven(About::Weld, Some(required), "no weld could be computed".into());
+            }
+            let limit = resistance.without_welds.knm();
+            let governs = "butt weld as strong as the weaker part".into();
+            return self.verdict(About::Weld, required.knm().abs(), limit, "kNm", governs, bound);
         };
         // Without a row in tension nothing pulls at the welds: they carry as much as the rest does.
         let limit = match used(worst) {

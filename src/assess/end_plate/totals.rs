@@ -34,8 +34,8 @@ impl Total {
     }
 }
 
-/// All total limits for tension at the top and one β, beside what else acts. `web_range`: the column's web in tension and
-/// compression.
+/// All total limits for tension at the top and one β, beside what else acts. `web_range`: the column's web in tension
+/// and compression.
 ///
 /// # Errors
 /// Why the web panel or a beam can't be assessed.
@@ -48,7 +48,7 @@ pub fn totals(
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
     let mut totals = match n.column() {
-        Some(column) => on_column(n, column, rulebook, beta, beside, web_range.unwrap_or_default(), notes)?,
+        Some(column) => on_column(n, column, rulebook, beta, (beside, web_range.unwrap_or_default()), notes)?,
         None => {
             level(n)?;
             Vec::new()
@@ -106,7 +106,7 @@ fn pair_at(column: &ColumnSide, level: Length, t_fb: Length) -> Option<&Stiffene
     level.min_by(|a, b| off(a).get().total_cmp(&off(b).get()).then(a.height.get().total_cmp(&b.height.get())))
 }
 
-/// The column's lower end lies this far below a level.
+/// How far the column's lower end lies below a level.
 fn to_end(n: &Numbers, column: &ColumnSide, level: Length) -> Option<Length> {
     Some(level - n.rows.last()?.height + column.below?)
 }
@@ -146,8 +146,7 @@ fn on_column(
     own: &ColumnSide,
     rulebook: &Rulebook,
     beta: f64,
-    beside: Beside,
-    web_range: (Length, Length),
+    (beside, web_range): (Beside, (Length, Length)),
     notes: &mut Vec<String>,
 ) -> Result<Vec<Total>, String> {
     let (gamma_M0, gamma_M1, gamma_M2) = (rulebook.annex.gamma_m0, rulebook.annex.gamma_m1, rulebook.annex.gamma_m2);
@@ -159,11 +158,12 @@ fn on_column(
     let tension_pair = pair_at(own, side.flange_top() - 0.5 * t_fb, t_fb);
 
     let mut w = Working::default();
-    let A_vc = strengthening::shear_area(own, web_range, rulebook, &mut w);
-    let added = w.clone();
     let k_wc = beside.column.map_or(rulebook.settings.k_wc, |actions| {
         column_web::k_wc(&mut w, actions, (column.area, column.i_y()), d_wc, strength.f_y_web)
     });
+    let mut added = Working::default();
+    let A_vc = strengthening::shear_area(own, web_range, rulebook, &mut added);
+    w.absorb(added.clone());
     let plain_web = column_web::Compression { A_vc, ..web_in_compression(n, own, beta, k_wc) };
     let half = 0.5 * column_web::b_eff(&mut Working::default(), &plain_web);
     let level = side.compression();
