@@ -30,7 +30,11 @@ pub fn stiffness(
     let mut springs = Vec::new();
     if let Some(column) = n.column() {
         let section = &column.section;
-        let k_1 = stiffness::web_panel(&mut w, section.a_v_z, beta, z);
+        // Table 6.11: a panel with diagonals does not give way.
+        let k_1 = match column.strengthened.diagonals.as_slice() {
+            [] => stiffness::web_panel(&mut w, section.a_v_z, beta, z),
+            _ => None,
+        };
         let k_2 = (!totals::stiffens(n, column)).then(|| {
             let web = totals::web_in_compression(n, column, beta, 1.0);
             let b_eff = column_web::b_eff(&mut w, &web);
