@@ -165,10 +165,11 @@ impl View<'_> {
         let taken = |y: f64| rows.iter().map(|row| (row.height_mm - y).abs()).fold(f64::INFINITY, f64::min);
         let free = (2..=8).map(|part| low + f64::from(part) / 10.0 * h);
         let middle = free.max_by(|a, b| taken(*a).total_cmp(&taken(*b))).unwrap_or(low + h / 2.0);
-        let anchor = if self.to > 0.0 { Anchor::Start } else { Anchor::End };
+        // On the left the rows' numbers come first.
+        let (anchor, aside) = if self.to > 0.0 { (Anchor::Start, 2.2) } else { (Anchor::End, 18.0) };
         for (a, y, shift) in [(top, high - t_f, 3.0), (web, middle, 0.95), (bottom, low + t_f, -0.8)] {
             let (x, y) = self.at(t_p, y);
-            canvas.text("", anchor, (x + 2.2 * self.to, y + shift), &said(a));
+            canvas.text("", anchor, (x + aside * self.to, y + shift), &said(a));
         }
     }
 

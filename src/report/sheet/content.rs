@@ -1,8 +1,8 @@
 //! What stands on a sheet, in order; how it looks is a matter of [`text`](super::text) and [`html`](super::html).
 
 use super::formula::{Line, Piece, text};
-use super::parts;
 use super::working::{self, WorkLine};
+use super::{geometry, parts};
 use crate::report::group;
 use crate::review::{CheckResult, JointReview, Review};
 use crate::working::Working;
@@ -81,10 +81,10 @@ pub(super) fn sheet(review: &Review, joint: &JointReview) -> Sheet {
     };
     add("Outcome", parts::outcome(review, joint));
     if let Some(sketch) = &joint.sketch {
-        add("The joint as detailed", parts::detailed(sketch));
+        add("The joint as detailed", geometry::detailed(sketch));
     }
     if let Some((intended, detailed)) = &joint.difference {
-        add("Intended and detailed", parts::difference(joint, intended, detailed));
+        add("Intended and detailed", geometry::difference(joint, intended, detailed));
     }
     if !joint.inputs.is_empty() {
         add("Inputs and where they came from", vec![parts::inputs(review, joint)]);
