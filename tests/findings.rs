@@ -17,6 +17,7 @@ mod distance_beyond_greatest;
 mod edge_distance_short;
 mod gauge_differs;
 mod grade_unknown;
+mod haunch_differs;
 mod head_without_room;
 mod joint_handed_wrong;
 mod joint_not_found;

@@ -121,6 +121,16 @@ pub fn lines(layout: &Layout) -> Vec<String> {
             plate.top.get()
         ));
     }
+    for haunch in sides.iter().filter_map(|side| side.haunch) {
+        lines.push(format!(
+            "haunch {:.0} mm deep, {:.0} mm long, flange {:.0} × {:.0} mm, web {:.0} mm",
+            haunch.depth.get(),
+            haunch.length.get(),
+            haunch.flange_width.get(),
+            haunch.flange_thickness.get(),
+            haunch.web_thickness.get()
+        ));
+    }
     let bolts = layout.bolts();
     lines.push(format!(
         "bolts M{} {}",

@@ -11,6 +11,7 @@ pub mod classification;
 pub mod column_web;
 pub mod diagonals;
 pub mod effective_length;
+pub mod haunch;
 pub mod slip;
 pub mod stiffeners;
 pub mod stiffness;

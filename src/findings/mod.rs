@@ -18,6 +18,7 @@ mod distance_beyond_greatest;
 mod edge_distance_short;
 mod gauge_differs;
 mod grade_unknown;
+mod haunch_differs;
 mod head_without_room;
 mod joint_handed_wrong;
 mod joint_not_found;
@@ -90,6 +91,7 @@ pub const RULES: &[Rule] = &[
     web_plate_missing::RULE,
     diagonal_missing::RULE,
     backing_plate_missing::RULE,
+    haunch_differs::RULE,
     section_differs::RULE,
     plate_grade_lower::RULE,
     row_moved::RULE,

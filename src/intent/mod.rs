@@ -138,6 +138,21 @@ pub enum DiagonalForm {
     K,
 }
 
+/// An intended haunch below the beam; what is not stated is not compared.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct IntendedHaunch {
+    /// From the beam's soffit down to the underside of its flange at the end plate.
+    pub depth: Option<Length>,
+    /// From the end plate to where its flange ends.
+    pub length: Option<Length>,
+    /// Thickness of its flange.
+    pub flange_thickness: Option<Length>,
+    /// Width of its flange.
+    pub flange_width: Option<Length>,
+    /// Thickness of its web.
+    pub web_thickness: Option<Length>,
+}
+
 /// An intended detail; what is not stated is not compared.
 #[derive(Clone, Debug, Default)]
 pub struct IntendedDetail {
@@ -193,6 +208,8 @@ pub struct IntendedDetail {
     pub diagonal_form: Option<DiagonalForm>,
     /// Backing plates behind the column's flange, on both sides of the web.
     pub backing_plates: Option<Option<IntendedStiffener>>,
+    /// The haunch below the beam: `Some(None)` means "none intended".
+    pub haunch: Option<Option<IntendedHaunch>>,
     /// Where it is written.
     pub at: Option<Place>,
 }

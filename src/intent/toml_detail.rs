@@ -8,7 +8,7 @@ use toml::de::DeValue;
 use super::actions::decimal;
 use super::source::tidy;
 use super::toml_form::{Reader, Sign, Table};
-use super::{DiagonalForm, Friction, IntendedDetail, IntendedStiffener};
+use super::{DiagonalForm, Friction, IntendedDetail, IntendedHaunch, IntendedStiffener};
 use crate::rulebook::Category;
 use crate::units::{Length, mm};
 
@@ -20,7 +20,7 @@ impl Reader<'_> {
             return None;
         };
         let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
-        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members", "exposed"]);
+        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "haunch", "members", "exposed"]);
         let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
         match tidy(name.get_ref()) {
             Ok(name) if !name.is_empty() => detail.name = name,
@@ -72,6 +72,7 @@ impl Reader<'_> {
                 detail.diagonal_form = table.and_then(|table| self.form(&table));
             }
         }
+        detail.haunch = self.haunch(&table);
         if let Some(members) = self.inner(&table, "members") {
             self.known(&members, &["supporting_section", "supported_section", "supporting_grade", "supported_grade"]);
             detail.supporting_section = self.text(&members, "supporting_section");
@@ -136,6 +137,25 @@ impl Reader<'_> {
             return None;
         }
         Some(rows)
+    }
+
+    fn haunch(&mut self, detail: &Table<'_>) -> Option<Option<IntendedHaunch>> {
+        let value = detail.table.get("haunch")?;
+        match value.get_ref() {
+            DeValue::String(text) if text == "none" => Some(None),
+            DeValue::Table(_) => {
+                let table = self.inner(detail, "haunch")?;
+                let keys = ["depth_mm", "length_mm", "flange_thickness_mm", "flange_width_mm", "web_thickness_mm"];
+                self.known(&table, &keys);
+                let [depth, length, flange_thickness, flange_width, web_thickness] =
+                    keys.map(|key| self.length(&table, key, Sign::Positive));
+                Some(Some(IntendedHaunch { depth, length, flange_thickness, flange_width, web_thickness }))
+            }
+            _ => {
+                self.wrong(value, "haunch", "\"none\" or a table such as { depth_mm = 300, length_mm = 700 }");
+                None
+            }
+        }
     }
 
     fn plates(&mut self, stiffeners: &Table<'_>, key: &str, keys: &[&str]) -> Option<Option<IntendedStiffener>> {

@@ -130,6 +130,35 @@ pub struct Stiffener {
     pub weld: Known<Length>,
 }
 
+/// A haunch below the beam: a web plate and an inclined flange plate between the beam's lower flange and the end plate.
+#[derive(Clone, Debug)]
+pub struct Haunch {
+    /// GlobalIds of its plates.
+    pub guids: Vec<String>,
+    /// From the beam's soffit down to the underside of its flange at the end plate.
+    pub depth: Length,
+    /// From the end plate to where its flange ends.
+    pub length: Length,
+    /// Between its flange and the beam's, degrees.
+    pub angle: f64,
+    /// Thickness of its flange.
+    pub flange_thickness: Length,
+    /// Width of its flange.
+    pub flange_width: Length,
+    /// Thickness of its web.
+    pub web_thickness: Length,
+    /// Steel grade of its flange.
+    pub flange_grade: Known<Grade>,
+    /// Steel grade of its web.
+    pub web_grade: Known<Grade>,
+    /// Throat of its flange's fillets at the end plate.
+    pub flange_weld: Known<Length>,
+    /// Throat of its web's fillets at the end plate.
+    pub web_weld: Known<Length>,
+    /// Whether a stiffener stands on the beam's web where the haunch ends.
+    pub stiffened: bool,
+}
+
 /// An end-plate joint on a column's flange.
 #[derive(Clone, Debug)]
 pub struct EndPlateLayout {
@@ -143,6 +172,8 @@ pub struct EndPlateLayout {
     pub bolts: Bolts,
     /// The beam's welds.
     pub welds: Welds,
+    /// The haunch below the beam, if there is one.
+    pub haunch: Option<Haunch>,
     /// The column's stiffeners near the joint, from the top down.
     pub stiffeners: Vec<Stiffener>,
     /// What else strengthens the column.
@@ -203,6 +234,11 @@ pub enum Which {
 }
 
 impl Which {
+    /// How many end plates it stands for.
+    pub fn count(self) -> usize {
+        if self == Self::Both { 2 } else { 1 }
+    }
+
     /// Before a part's name: "supported ".
     pub fn owner(self) -> &'static str {
         match self {
@@ -245,6 +281,8 @@ pub struct PlateSide<'a> {
     pub plate: &'a EndPlate,
     /// Its welds.
     pub welds: &'a Welds,
+    /// The haunch below it.
+    pub haunch: Option<&'a Haunch>,
 }
 
 /// What an end plate is bolted to.
@@ -280,14 +318,21 @@ impl BoltedPlate<'_> {
 
 impl Half {
     fn side(&self, which: Which) -> PlateSide<'_> {
-        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
+        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds, haunch: None }
     }
 }
 
 impl EndPlateLayout {
     /// The beam's side.
     pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { which: Which::Only, beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
+        PlateSide {
+            which: Which::Only,
+            beam: &self.beam,
+            soffit: Length::ZERO,
+            plate: &self.plate,
+            welds: &self.welds,
+            haunch: self.haunch.as_ref(),
+        }
     }
 }
 

@@ -9,6 +9,7 @@ mod draft;
 mod end_plate;
 mod frame;
 mod graph;
+mod haunch;
 mod layout;
 mod marks;
 mod near;
@@ -24,8 +25,8 @@ mod touch;
 mod welds;
 
 pub use layout::{
-    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Held, Layout,
-    MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
+    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Haunch, Held,
+    Layout, MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;
@@ -110,9 +111,9 @@ pub struct Joint {
     pub at_end: Option<bool>,
     /// Its bolts.
     pub bolts: Vec<usize>,
-    /// Its plates, with their role: "end-plate", "packing", "stiffener", "plate".
+    /// Its plates, with their role: "end-plate", "packing", "stiffener", "haunch", "plate".
     pub plates: Vec<(usize, &'static str)>,
-    /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "other".
+    /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "haunch", "other".
     pub welds: Vec<(usize, &'static str)>,
     /// The joint in its own frame, or why it could not be laid out.
     pub layout: Result<Layout, String>,

@@ -185,7 +185,14 @@ fn long_edges(scene: &Scene, case: &Case, at: &At) -> Known<EdgeWeld> {
     }
     along.sort_unstable();
     along.dedup();
-    if along.iter().all(|weld| scene.steel.welds[*weld].sort == WeldSort::Butt) {
+    let t_s = scene.steel.plates[at.plate].thickness;
+    // A butt weld whose depth is not that of the plate is not known to go through.
+    let through = |weld: &usize| {
+        let weld = &scene.steel.welds[*weld];
+        let deep = || weld.throat.as_ref().is_ok_and(|a| a.value >= t_s - scene.tolerances().size);
+        weld.sort == WeldSort::FullButt || weld.sort == WeldSort::Butt && deep()
+    };
+    if along.iter().all(through) {
         let first = along.first().map(|weld| scene.place(Part::Weld(*weld)));
         return Ok(Datum::new(EdgeWeld::Butt, Origin::Modelled { by: "butt welds along its edges".into(), at: first }));
     }

@@ -146,6 +146,7 @@ impl Sketch {
             column_above: self.column_above.map(mm),
             column_below: None,
             not_credited: Vec::new(),
+            haunch: None,
             column: member(column),
             beam: member(beam),
         }

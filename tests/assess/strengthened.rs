@@ -169,6 +169,17 @@ fn diagonals_and_the_panel() {
     close(kn(&other, PANEL), kn(&n, PANEL), 1e-9);
 }
 
+/// Table 6.11: k_1 is infinite with diagonals.
+#[test]
+fn diagonals_take_the_panel_out_of_the_stiffness() {
+    let panel = |layout: &EndPlateLayout| {
+        let stiffness = hogging(layout).stiffness.clone().unwrap();
+        stiffness.springs.iter().find(|spring| spring.title.contains("k1")).unwrap().k
+    };
+    assert!(panel(&weak()).is_some());
+    assert!(panel(&with(|l| l.strengthening.diagonals = n_form())).is_none());
+}
+
 #[test]
 fn diagonals_that_do_not_count_are_none() {
     let plain = both(&weak());

@@ -58,7 +58,7 @@ impl Bench {
             verdict(About::Weld, State::Met, 300.0, "kNm"),
             verdict(About::Axial, State::Met, 0.0, "kN"),
         ];
-        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None }];
+        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None, axial: None }];
         self.assessment = Some(Assessment { cases, ..Assessment::default() });
     }
 
@@ -256,6 +256,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
             web: known(mm(5.0)),
             full: FullButts::default(),
         },
+        haunch: None,
         stiffeners: vec![stiffener(8.0)],
         strengthening: Default::default(),
         column_above: Some(mm(500.0)),
@@ -356,6 +357,7 @@ fn scheduled() -> ScheduledJoint {
 
 fn intended() -> IntendedDetail {
     IntendedDetail {
+        haunch: None,
         name: "E1".into(),
         supporting_section: Some("HEB 300".into()),
         supported_section: Some("IPE 500".into()),

@@ -1,7 +1,7 @@
 //! Intended details.
 
 use super::sound;
-use faying::intent::{DiagonalForm, Friction, IntendedStiffener, read};
+use faying::intent::{DiagonalForm, Friction, IntendedHaunch, IntendedStiffener, read};
 use faying::rulebook::Category;
 use faying::units::mm;
 
@@ -17,6 +17,7 @@ fn every_field_is_read() {
          stiffeners = {{ top = {{ thickness_mm = 15, grade = 'S275' }}, bottom = 'none' }}\n\
          members = {{ supporting_section = 'UC 1', supported_section = 'UB 1', supporting_grade = 'S355', \
          supported_grade = 'S235' }}\n\
+         haunch = {{ depth_mm = 300, length_mm = 700, flange_thickness_mm = 15 }}\n\
          exposed = true\n"
     );
     let intent = sound("s.toml", &text);
@@ -25,6 +26,8 @@ fn every_field_is_read() {
     assert_eq!(d.at.as_ref().map(ToString::to_string).as_deref(), Some("s.toml:4:9"));
     assert_eq!((d.bolt_diameter, d.bolt_class.as_deref()), (Some(mm(24.0)), Some("8.8")));
     assert_eq!(d.exposed, Some(true));
+    let [depth, length, flange_thickness] = [300.0, 700.0, 15.0].map(|size| Some(mm(size)));
+    assert_eq!(d.haunch, Some(Some(IntendedHaunch { depth, length, flange_thickness, ..IntendedHaunch::default() })));
     assert_eq!(d.rows, Some(vec![mm(573.1), mm(483.0), mm(-60.0)]));
     assert_eq!((d.gauge, d.plate_thickness, d.plate_width), (Some(mm(100.0)), Some(mm(25.0)), Some(mm(250.0))));
     assert_eq!((d.plate_top, d.plate_bottom), (Some(mm(620.0)), Some(mm(-50.5))));

@@ -145,7 +145,10 @@ fn faults_of_toml_files() {
             ),
             ("[detail.M3]\n[detail.'m 3']\n", &[("2:9", "\"m 3\" is defined already at s.toml:1:9", "once")]),
             ("[detail]\nM3 = 1\n", &[("2:6", "M3: given \"1\"", "[detail.NAME]")]),
-            ("[detail.M3]\nplates = {}\n", &[("2:1", "\"plates\"", "bolts, plate, welds, stiffeners, members")]),
+            (
+                "[detail.M3]\nplates = {}\n",
+                &[("2:1", "\"plates\"", "bolts, plate, welds, stiffeners, haunch, members")],
+            ),
             ("[detail.M3]\nplate = { thick = 1 }\n", &[("2:11", "\"thick\"", "thickness_mm")]),
             ("[detail.M3]\nplate = { thickness_mm = 0 }\n", &[("2:26", "\"0\"", "above 0")]),
             ("[detail.M3]\nplate = { top_mm = 1, bottom_mm = 1 }\n", &[("2:9", "top_mm 1.000 mm", "higher top")]),

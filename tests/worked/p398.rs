@@ -55,6 +55,7 @@ pub fn example(rulebook: &Rulebook) -> EndPlateLayout {
             web: known(throat(8.0)),
             full: FullButts::default(),
         },
+        haunch: None,
         stiffeners: Vec::new(),
         strengthening: Default::default(),
         column_above: None,

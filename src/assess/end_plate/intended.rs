@@ -3,7 +3,7 @@
 mod column;
 
 use crate::intent::{Friction, IntendedDetail};
-use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Layout, MemberAt, SpliceLayout, Welds};
+use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Haunch, Held, Layout, MemberAt, SpliceLayout, Welds};
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook};
 use crate::units::Length;
@@ -76,6 +76,7 @@ pub fn intended(
     meant.column_above = layout.column_above.map(|above| above - up);
     meant.column_below = layout.column_below.map(|below| below + down);
     stated.welds(&mut meant.welds);
+    stated.haunch(&mut meant.haunch)?;
 
     stated.strengthening(&mut meant)?;
     Ok(meant)
@@ -159,6 +160,32 @@ impl Stated<'_> {
         if let Some((mu, what)) = stated {
             held.slip_factor = Some(Datum::new(mu, self.by(&what)));
         }
+    }
+
+    /// What is stated over the haunch as detailed.
+    fn haunch(&self, haunch: &mut Option<Haunch>) -> Result<(), Missing> {
+        let Some(stated) = &self.detail.haunch else { return Ok(()) };
+        let Some(stated) = stated else {
+            *haunch = None;
+            return Ok(());
+        };
+        let Some(own) = haunch else {
+            let why = "a haunch is intended where none is detailed: what it would carry is not computed";
+            return Err(missing("intended haunch", why.into(), self.detail));
+        };
+        let angle = own.angle;
+        let changed = stated.depth.is_some() || stated.length.is_some();
+        for (value, stated) in [
+            (&mut own.depth, stated.depth),
+            (&mut own.length, stated.length),
+            (&mut own.flange_thickness, stated.flange_thickness),
+            (&mut own.flange_width, stated.flange_width),
+            (&mut own.web_thickness, stated.web_thickness),
+        ] {
+            *value = stated.unwrap_or(*value);
+        }
+        own.angle = if changed { (own.depth / own.length).atan().to_degrees() } else { angle };
+        Ok(())
     }
 
     fn welds(&self, welds: &mut Welds) {

@@ -1,12 +1,14 @@
 //! The numbers of an end-plate joint: what the layout states and the rulebook adds, or what is missing.
 
 mod column_side;
+mod haunch_side;
 mod noted;
 mod plate_side;
 
 use std::sync::Arc;
 
 pub use column_side::{ColumnSide, StiffenerPair};
+pub use haunch_side::HaunchSide;
 pub use noted::Noted;
 use noted::print_length;
 use plate_side::NOISE;
@@ -137,8 +139,9 @@ impl Numbers {
                 (ends, other.map(Behind::Plate))
             }
         };
+        let haunch = HaunchSide::gather(joint.side.haunch, ends.as_ref(), rulebook, noted);
         let bolts = BoltNumbers::gather(joint.bolts, joint.plies(), rulebook, noted);
-        let (behind, ends, bolts) = (behind?, ends?, bolts?);
+        let (behind, ends, haunch, bolts) = (behind?, ends?, haunch?, bolts?);
 
         let other_h = if let Behind::Plate(other) = &behind { Some(other.beam.h) } else { None };
         let reasons = sound::reasons(joint, ends.beam.h, other_h, &bolts, rulebook);
@@ -149,13 +152,13 @@ impl Numbers {
             return None;
         }
         let mut w = Working::default();
-        let side = ends.with(joint.side, &bolts, rulebook, noted, &mut w);
+        let side = ends.with(joint.side, haunch, &bolts, rulebook, noted, &mut w);
         let support = match (behind, joint.support) {
             (Behind::Column(column), joints::Support::Column(layout)) => {
                 Some(Support::Column(column.with(layout, &bolts, rulebook, &mut w)))
             }
             (Behind::Plate(other), joints::Support::Plate(laid)) => {
-                other.with(laid, &bolts, rulebook, noted, &mut w).map(Support::Plate)
+                other.with(laid, None, &bolts, rulebook, noted, &mut w).map(Support::Plate)
             }
             _ => None,
         };
@@ -215,17 +218,30 @@ impl Numbers {
         self.least(|side| row.height - side.compression())
     }
 
-    /// The same joint turned upside down, so that its lower side is the tension side.
+    /// The same joint turned upside down, so that its lower side is the tension side. A haunch is left out then, with the
+    /// rows beside it: what is left carries no more than the whole.
     pub fn upside_down(&self) -> Self {
         let h = self.side.beam.h;
+        let mut rows = self.rows.clone();
+        if self.side.haunch.is_some() {
+            rows.retain(|row| row.height >= self.side.soffit);
+        }
+        let left_out = match (rows.last(), self.rows.last()) {
+            (Some(last), Some(lowest)) => last.height - lowest.height,
+            _ => Length::ZERO,
+        };
         Self {
             side: self.side.upside_down(h),
             support: match &self.support {
-                Support::Column(column) => Support::Column(column.upside_down(h)),
+                Support::Column(column) => {
+                    let mut column = column.upside_down(h);
+                    column.above = column.above.map(|above| above + left_out);
+                    Support::Column(column)
+                }
                 Support::Plate(other) => Support::Plate(other.upside_down(h)),
                 Support::Twin => Support::Twin,
             },
-            rows: self.rows.iter().rev().map(|row| Row { height: h - row.height, ..*row }).collect(),
+            rows: rows.iter().rev().map(|row| Row { height: h - row.height, ..*row }).collect(),
             ..self.clone()
         }
     }

@@ -1,5 +1,6 @@
 //! The numbers of a beam with its end plate.
 
+use super::haunch_side::HaunchSide;
 use super::noted::{Noted, R_MOST};
 use super::{BoltNumbers, MemberStrength};
 use crate::eurocode::{beam, bolts};
@@ -40,12 +41,14 @@ pub struct PlateSide {
     pub a_web: Option<Length>,
     /// Butt welds of full penetration, which have no fillet; for tension at the top as well.
     pub full: FullButts,
+    /// The haunch below, on the compression side.
+    pub haunch: Option<HaunchSide>,
 }
 
 /// The numbers of a beam and its plate that do not depend on the bolts.
 pub(super) struct Ends {
     pub(super) beam: Section,
-    beam_strength: MemberStrength,
+    pub(super) beam_strength: MemberStrength,
     r_b: Length,
     plate_grade: Grade,
     strength: Strength,
@@ -109,6 +112,7 @@ impl Ends {
     pub(super) fn with(
         self,
         laid: Laid<'_>,
+        haunch: Option<HaunchSide>,
         bolts: &BoltNumbers,
         rulebook: &Rulebook,
         noted: &mut Noted,
@@ -147,6 +151,7 @@ impl Ends {
             a_compression: a_bottom,
             a_web,
             full,
+            haunch,
             beam,
         })
     }
@@ -158,9 +163,25 @@ impl PlateSide {
         self.soffit + self.beam.h
     }
 
-    /// Height of the centre of compression, the middle of the compression flange (6.2.7.1, Figure 6.15).
+    /// Height of the centre of compression, the middle of the compression flange (6.2.7.1, Figure 6.15), the haunch's if
+    /// there is one.
     pub fn compression(&self) -> Length {
-        self.soffit + 0.5 * self.beam.t_f
+        self.lowest() + 0.5 * self.compression_flange()
+    }
+
+    /// Thickness of the compression flange, measured along the end plate.
+    pub fn compression_flange(&self) -> Length {
+        self.haunch.as_ref().map_or(self.beam.t_f, HaunchSide::upright)
+    }
+
+    /// Height of the outer face of the compression flange.
+    pub fn lowest(&self) -> Length {
+        self.soffit - self.haunch.as_ref().map_or(Length::ZERO, |haunch| haunch.depth)
+    }
+
+    /// Depth of the beam, with its haunch.
+    pub fn depth(&self) -> Length {
+        self.flange_top() - self.lowest()
     }
 
     /// Whether both welds on the tension side are known.
@@ -208,7 +229,7 @@ impl PlateSide {
         rest(self) == rest(other) && lengths(self).zip(lengths(other)).all(same)
     }
 
-    /// The same upside down; `h` is the height that 0 is turned to.
+    /// The same upside down, without its haunch; `h` is the height that 0 is turned to.
     pub(super) fn upside_down(&self, h: Length) -> Self {
         Self {
             soffit: h - self.flange_top(),
@@ -217,6 +238,7 @@ impl PlateSide {
             a_tension: self.a_compression,
             a_compression: self.a_tension,
             full: FullButts { flange_top: self.full.flange_bottom, flange_bottom: self.full.flange_top, ..self.full },
+            haunch: None,
             ..self.clone()
         }
     }
