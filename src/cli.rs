@@ -181,7 +181,10 @@ fn review(args: &ReviewArgs) -> Result<u8, Failure> {
         Format::Json => Ok(Drawn::Written(|review, to| json::write_review(review, to))),
     };
     let review = report(&args.path, Some(&args.schedule), &args.common.places(), draw)?;
-    Ok(match review.exit_code() {
+    let code = review.exit_code();
+    // The program ends: the system takes all memory back at once.
+    std::mem::forget(review);
+    Ok(match code {
         3 if args.allow_unproven => 0,
         code => code,
     })
@@ -192,7 +195,7 @@ fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
         Format::Text => Ok(Drawn::Whole(survey::render(review, &output.options(args.common.all)))),
         Format::Json => Ok(Drawn::Written(|review, to| json::write_survey(review, to))),
     };
-    report(&args.path, None, &args.common.places(), draw).map(|_| 0)
+    report(&args.path, None, &args.common.places(), draw).map(std::mem::forget).map(|()| 0)
 }
 
 fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {

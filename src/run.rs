@@ -71,5 +71,8 @@ pub fn run_by(inputs: &Inputs<'_>, annex: Option<&str>) -> Result<Review, Failed
         pairing: &pairing,
         schedules: inputs.schedules.iter().map(|(file, _)| *file).collect(),
     };
-    Ok(compose::review(&sources, file, bytes))
+    let review = compose::review(&sources, file, bytes);
+    // What nobody asks any more is let go while the report is drawn.
+    rayon::spawn(move || drop((steelwork, joints)));
+    Ok(review)
 }

@@ -2,6 +2,7 @@
 
 mod action_not_stated;
 mod axial_force_beyond_limit;
+mod backing_plate_missing;
 mod bench;
 mod bolt_class_higher;
 mod bolt_class_lower;
@@ -11,6 +12,7 @@ mod bolt_larger;
 mod bolt_size_unknown;
 mod bolt_smaller;
 mod bolt_too_short;
+mod diagonal_missing;
 mod distance_beyond_greatest;
 mod edge_distance_short;
 mod gauge_differs;
@@ -41,7 +43,9 @@ mod stiffener_added;
 mod stiffener_in_root;
 mod stiffener_missing;
 mod stiffness_differs;
+mod strengthening_added;
 mod tool_without_room;
+mod web_plate_missing;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;

@@ -8,3 +8,4 @@ mod layouts;
 mod marks;
 mod refusals;
 mod splices;
+mod strengthening;

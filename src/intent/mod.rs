@@ -116,13 +116,26 @@ pub enum Friction {
     Factor(f64),
 }
 
-/// An intended pair of transverse stiffeners.
-#[derive(Clone, Debug, PartialEq)]
+/// Intended plates that strengthen the column: a pair of stiffeners, web plates, diagonals or backing plates.
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct IntendedStiffener {
     /// Thickness.
     pub thickness: Option<Length>,
     /// Grade as written.
     pub grade: Option<String>,
+    /// Throat of their fillets; backing plates have none.
+    pub throat: Option<Length>,
+    /// How long a pair of stiffeners is that does not reach from flange to flange; the others have none.
+    pub length: Option<Length>,
+}
+
+/// How diagonals stand in a column's web.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum DiagonalForm {
+    /// One pair, from the level of one flange of the beam to that of the other.
+    N,
+    /// Two pairs from the levels of the flanges that meet between them.
+    K,
 }
 
 /// An intended haunch below the beam; what is not stated is not compared.
@@ -185,6 +198,16 @@ pub struct IntendedDetail {
     pub stiffener_bottom: Option<Option<IntendedStiffener>>,
     /// Whether the steel is exposed to weather or to other corrosive influences.
     pub exposed: Option<bool>,
+    /// Supplementary web plates: `Some(None)` means "none intended".
+    pub web_plates: Option<Option<IntendedStiffener>>,
+    /// On how many sides of the web they are: 1 or 2.
+    pub web_plate_sides: Option<u8>,
+    /// Diagonal stiffeners in pairs.
+    pub diagonals: Option<Option<IntendedStiffener>>,
+    /// How they stand.
+    pub diagonal_form: Option<DiagonalForm>,
+    /// Backing plates behind the column's flange, on both sides of the web.
+    pub backing_plates: Option<Option<IntendedStiffener>>,
     /// The haunch below the beam: `Some(None)` means "none intended".
     pub haunch: Option<Option<IntendedHaunch>>,
     /// Where it is written.

@@ -7,7 +7,7 @@ use super::boxes::Ply;
 use super::draft::{Draft, Seat};
 use super::frame::{Frame, Span, are_parallel};
 use super::haunch;
-use super::layout::{EndPlate, EndPlateLayout, Haunch, Layout, MemberAt, Welds};
+use super::layout::{EndPlate, EndPlateLayout, FullButts, Haunch, Layout, MemberAt, Welds};
 use super::scene::Scene;
 use super::stiffeners::{self, OnColumn};
 use super::touch::{EndOn, Pass};
@@ -51,6 +51,11 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
         draft.joint.plates.extend(plates.iter().map(|plate| (*plate, "stiffener")));
         draft.joint.welds.extend(welded.iter().map(|weld| (*weld, Role::Stiffener.word())));
     }
+    let strengthening = &on_column.strengthening;
+    draft.joint.plates.retain(|(plate, _)| !strengthening.plates.iter().any(|(other, _)| other == plate));
+    draft.joint.plates.extend(&strengthening.plates);
+    let welded = strengthening.welds.iter().filter(|weld| !case.welds.iter().any(|(other, _)| other == *weld));
+    draft.joint.welds.extend(welded.map(|weld| (*weld, Role::Stiffener.word())));
     let listed: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
     draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
     draft.joint.layout = assessable(scene, case, &outline, &bolted)
@@ -230,6 +235,7 @@ fn laid_out(
         welds: welds_at(scene, &case.frame, case.end.member, &case.welds),
         haunch,
         stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),
+        strengthening: on_column.strengthening.layout,
         column_above: (above <= RUNS_ON).then_some(mm(above)),
         column_below: (below <= RUNS_ON).then_some(mm(below)),
         not_credited,
@@ -264,9 +270,15 @@ pub(super) fn plate_at(scene: &Scene, plate: usize, outline: &[DVec2]) -> Result
 /// The throats of a member's welds to its end plate, `frame` being that member's own.
 pub(super) fn welds_at(scene: &Scene, frame: &Frame, member: usize, roles: &[(usize, Role)]) -> Welds {
     let throat = |role, what| welds::throat(scene, frame, member, roles, role, what);
+    let full = |role| welds::full_butt(scene, frame, member, roles, role);
     Welds {
         flange_top: throat(Role::FlangeTop, "weld at the top flange"),
         flange_bottom: throat(Role::FlangeBottom, "weld at the bottom flange"),
         web: throat(Role::Web, "weld at the web"),
+        full: FullButts {
+            flange_top: full(Role::FlangeTop),
+            flange_bottom: full(Role::FlangeBottom),
+            web: full(Role::Web),
+        },
     }
 }

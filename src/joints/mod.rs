@@ -19,13 +19,14 @@ mod recognise;
 mod scene;
 mod splice;
 mod stiffeners;
+mod strengthening;
 mod told;
 mod touch;
 mod welds;
 
 pub use layout::{
-    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Haunch, Held, Layout, MemberAt, PlateSide,
-    SpliceLayout, Stiffener, Support, Welds, Which,
+    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Haunch, Held,
+    Layout, MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;

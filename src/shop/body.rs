@@ -28,44 +28,41 @@ impl<'a> Reading<'a> {
     /// The solids of a part's body in the world; an error where there is none at all.
     pub fn body(&self, product: Entity<'a>) -> Result<Vec<Solid>, String> {
         let world = self.placement_of(product)?;
-        let representations: Vec<_> =
-            product.entity("Representation").map(|r| r.entities("Representations")).unwrap_or_default();
-        let body = |r: &&Entity<'_>| {
+        let shape = product.entity("Representation");
+        let representations = || shape.into_iter().flat_map(|shape| self.each(shape, "Representations"));
+        let body = |r: &Entity<'_>| {
             r.text("RepresentationIdentifier").is_some_and(|identifier| identifier.eq_ignore_ascii_case("Body"))
         };
-        let mut bodies =
-            representations.iter().filter(body).map(|r| r.entities("Items")).filter(|items| !items.is_empty());
-        let mut items = bodies.next().unwrap_or_default();
+        let mut bodies = representations().filter(body).filter(|r| self.each(*r, "Items").next().is_some());
+        let own = bodies.next();
         if bodies.next().is_some() {
             self.problem(product, "It has several bodies; only the first is looked at.");
         }
-        if items.is_empty() {
-            let solid = |item: &Entity<'_>| {
-                item.is_a("IfcMappedItem")
-                    || item.is_a("IfcBooleanResult")
-                    || SOLIDS.iter().any(|class| item.is_a(class))
-            };
-            items = representations.iter().flat_map(|r| r.entities("Items")).filter(solid).collect();
-        }
         let (mut solids, mut budget) = (Vec::new(), ITEMS);
-        for item in items {
-            self.solids(item, world, 0, &mut budget, &mut solids);
+        let mut take = |item| self.solids(item, world, 0, &mut budget, &mut solids);
+        match own {
+            Some(body) => self.each(body, "Items").for_each(&mut take),
+            None => {
+                let solid = |item: &Entity<'_>| {
+                    item.is_a("IfcMappedItem")
+                        || item.is_a("IfcBooleanResult")
+                        || SOLIDS.iter().any(|class| item.is_a(class))
+                };
+                representations().flat_map(|r| self.each(r, "Items")).filter(solid).for_each(&mut take);
+            }
         }
         if solids.is_empty() { Err("it has no body".into()) } else { Ok(solids) }
     }
 
     /// End points of its Axis representation in the world, if it is a polyline.
     pub fn axis_line(&self, product: Entity<'a>) -> Option<Vec<DVec3>> {
-        let line = product
-            .entity("Representation")?
-            .entities("Representations")
-            .into_iter()
+        let line = self
+            .each(product.entity("Representation")?, "Representations")
             .filter(|r| r.text("RepresentationIdentifier").is_some_and(|i| i.eq_ignore_ascii_case("Axis")))
-            .flat_map(|r| r.entities("Items"))
+            .flat_map(|r| self.each(r, "Items"))
             .find(|item| item.is_a("IfcPolyline"))?;
         let world = self.placement_of(product).ok()?;
-        let points = line.entities("Points");
-        let ends = [*points.first()?, *points.last()?];
+        let ends = [self.each(line, "Points").next()?, self.each(line, "Points").last()?];
         ends.into_iter().map(|p| Some(world.transform_point3(self.point(Some(p)).ok()?))).collect()
     }
 

@@ -43,7 +43,7 @@ pub(super) struct Kin<'a> {
     pub called: OnceCell<Option<Word>>,
     pub is_weld: OnceCell<bool>,
     pub not_of_steel: OnceCell<Option<String>>,
-    pub grade: Once<'a, Known<Grade>>,
+    pub grade: Once<'a, Rc<Known<Grade>>>,
     pub bolt: Once<'a, Rc<BoltSaid<'a>>>,
     pub weld: Once<'a, Rc<WeldSaid>>,
 }

@@ -1,6 +1,7 @@
 //! Materials of a part and the steel grade that they name.
 
 use std::borrow::Cow;
+use std::rc::Rc;
 
 use super::kin::said_of;
 use super::profile::Profile;
@@ -104,7 +105,7 @@ impl<'a> Reading<'a> {
 
     /// The steel grade of a part, from its materials and its properties; never from other parts.
     pub fn grade(&self, element: Entity<'a>) -> Known<Grade> {
-        let (with, grade) = self.once(element, &self.kin(element).grade, || self.find_grade(element));
+        let (with, grade) = self.once(element, &self.kin(element).grade, || Rc::new(self.find_grade(element)));
         said_of(&grade, with, element)
     }
 

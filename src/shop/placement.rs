@@ -18,6 +18,33 @@ impl Reading<'_> {
     }
 
     fn placement(&self, placement: Entity<'_>) -> Result<DAffine3, String> {
+        if let Some((id, known)) = self.last_placement.get()
+            && id == placement.id
+        {
+            return Ok(known);
+        }
+        // Most stand on what others stand on too.
+        let parent = placement.entity("PlacementRelTo").map(|parent| parent.id);
+        let known = parent.map_or(Some(DAffine3::IDENTITY), |id| self.placements.borrow().get(&id).copied());
+        let world = match known {
+            Some(parent) => self.placed(placement, parent)?,
+            None => self.chained(placement)?,
+        };
+        self.last_placement.set(Some((placement.id, world)));
+        Ok(world)
+    }
+
+    /// A placement on one that is known.
+    fn placed(&self, link: Entity<'_>, parent: DAffine3) -> Result<DAffine3, String> {
+        if !link.is_a("IfcLocalPlacement") {
+            return Err(format!("its placement is {}; only IfcLocalPlacement is read", link.class()));
+        }
+        let relative = link.entity("RelativePlacement").ok_or("its placement has no RelativePlacement".to_owned())?;
+        Ok(parent * self.axes(relative)?)
+    }
+
+    /// A placement with all that it is relative to, which is kept.
+    fn chained(&self, placement: Entity<'_>) -> Result<DAffine3, String> {
         let mut chain = Vec::new();
         let mut next = Some(placement);
         let mut world = DAffine3::IDENTITY;
@@ -33,12 +60,7 @@ impl Reading<'_> {
             next = link.entity("PlacementRelTo");
         }
         for link in chain.into_iter().rev() {
-            if !link.is_a("IfcLocalPlacement") {
-                return Err(format!("its placement is {}; only IfcLocalPlacement is read", link.class()));
-            }
-            let relative =
-                link.entity("RelativePlacement").ok_or("its placement has no RelativePlacement".to_owned())?;
-            world *= self.axes(relative)?;
+            world = self.placed(link, world)?;
             self.placements.borrow_mut().insert(link.id, world);
         }
         Ok(world)

@@ -1,6 +1,6 @@
 //! What the takers of parts share: the graph, the units, who is related to whom, and the problems met on the way.
 
-use std::cell::RefCell;
+use std::cell::{Cell, RefCell};
 use std::collections::HashMap;
 use std::rc::Rc;
 use std::sync::Arc;
@@ -16,7 +16,7 @@ use super::properties::Property;
 use super::solid::Solid;
 use super::text::Text;
 use super::units::Units;
-use crate::exchange::{Entities, Entity, Exchange, Id};
+use crate::exchange::{Entities, Entity, Exchange, Id, List, View};
 use crate::origin::Problem;
 use crate::rulebook::Rulebook;
 
@@ -29,8 +29,9 @@ pub(super) struct Reading<'a> {
     pub rulebook: &'a Rulebook,
     pub units: Units,
     pub links: Arc<Links>,
-    /// World placements that were already computed.
+    /// World placements to which others are relative, and the one that was asked last.
     pub placements: RefCell<HashMap<Id, DAffine3, RandomState>>,
+    pub last_placement: Cell<Option<(Id, DAffine3)>>,
     /// Solids of items that more than one part may use.
     pub solids_of: RefCell<HashMap<Id, Rc<Vec<Solid>>, RandomState>>,
     /// Texts that were already looked up.
@@ -66,6 +67,7 @@ impl<'a> Common<'a> {
             units: self.units,
             links: self.links.clone(),
             placements: RefCell::default(),
+            last_placement: Cell::default(),
             solids_of: RefCell::default(),
             texts: RefCell::default(),
             kins: RefCell::default(),
@@ -95,6 +97,20 @@ impl<'a> Reading<'a> {
     /// Takes some solids off what may still be read; false once too many were asked for.
     pub fn spend(&self, solids: usize) -> bool {
         self.links.spend(solids)
+    }
+
+    /// The entities of a list attribute (or the single one it holds), one by one.
+    pub fn each(&self, of: Entity<'a>, attribute: &str) -> impl Iterator<Item = Entity<'a>> + use<'a> {
+        let mut value = of.value(attribute);
+        while let View::Typed(_, inner) = value {
+            value = inner.view();
+        }
+        let (list, one) = match value {
+            View::List(items) => (Some(items), None),
+            value => (None, value.entity()),
+        };
+        let entities = self.entities;
+        list.into_iter().flat_map(List::iter).filter_map(View::entity).chain(one).map(|id| entities.get(id))
     }
 
     pub fn type_of(&self, object: Entity<'_>) -> Option<Entity<'a>> {

@@ -110,6 +110,15 @@ fn faults_of_toml_files() {
             ("joint = [1]\n", &[("1:10", "given \"1\"", "[[joint]]")]),
             ("[[joint]]\nsupporting = 'C1'\n", &[("1:1", "not named", "mark nor supported")]),
             ("[[joint]]\nmark = 3\n", &[("2:8", "mark: given \"3\"", "text in quotes")]),
+            ("[detail.A.stiffeners]\nweb_plates = { sides = 3 }\n", &[("2:24", "sides: given \"3\"", "1 or 2 sides")]),
+            (
+                "[detail.A.stiffeners]\ndiagonals = { form = 'X' }\n",
+                &[("2:22", "form: given \"'X'\"", "\"N\" or \"K\"")],
+            ),
+            (
+                "[detail.A.stiffeners]\nbacking_plates = { throat_mm = 5 }\n",
+                &[("2:20", "throat_mm", "thickness_mm, grade")],
+            ),
             ("[[joint]]\nmark = ' '\n", &[("2:8", "mark: given", "not stated")]),
             ("[[joint]]\nmark = 'J1'\nend = 'top'\n", &[("3:7", "end: given \"'top'\"", "\"start\" or \"end\"")]),
             ("[[joint]]\nmark = 'J1'\n[[joint.case]]\nM_Ed_kip = 1\n", &[("4:1", "\"kip\"", "kNm")]),

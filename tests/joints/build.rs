@@ -97,6 +97,7 @@ pub fn bolt(mark: &str, start: DVec3, end: DVec3, d: f64) -> Bolt {
         start,
         end,
         diameter: known(mm(d)),
+        thread: None,
         length: missing("bolt length"),
         class: known("8.8".into()),
         hole: None,

@@ -70,9 +70,21 @@ impl<'a> TensionSide<'a> {
     pub fn new(n: &'a Numbers, rulebook: &'a Rulebook, beta: f64) -> Result<Self, String> {
         let deepest = n.sides().map(PlateSide::depth).fold(Length::ZERO, Length::max);
         let least = rulebook.settings.shear_only_below * deepest;
+        Self::of(n, rulebook, beta, |row| n.lever_arm(row) >= least)
+    }
+
+    /// The same with the rows that are picked.
+    ///
+    /// # Errors
+    /// As [`TensionSide::new`].
+    pub fn of(
+        n: &'a Numbers,
+        rulebook: &'a Rulebook,
+        beta: f64,
+        picked: impl Fn(&Row) -> bool,
+    ) -> Result<Self, String> {
         // Rows beside a haunch carry shear only.
-        let in_tension = |row: &&Row| n.lever_arm(row) >= least && n.sides().all(|side| row.height >= side.soffit);
-        let rows: Vec<Row> = n.rows.iter().filter(in_tension).copied().collect();
+        let rows: Vec<Row> = n.rows.iter().filter(|row| picked(row) && !n.beside_haunch(row)).copied().collect();
         let mut plates = Vec::new();
         for side in n.sides() {
             plates.push(PlateRows { side, places: places(side, &rows)? });
@@ -173,6 +185,10 @@ impl<'a> TensionSide<'a> {
 
     fn gamma_M0(&self) -> f64 {
         self.rulebook.annex.gamma_m0
+    }
+
+    fn gamma_M2(&self) -> f64 {
+        self.rulebook.annex.gamma_m2
     }
 
     fn mode_one(&self) -> ModeOne {

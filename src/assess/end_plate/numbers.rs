@@ -78,7 +78,10 @@ pub struct BoltNumbers {
     pub f_ub: Stress,
     pub A_s: Area,
     pub A: Area,
+    /// With the thread in the shear plane.
     pub alpha_v: f64,
+    /// Whether the thread lies in the shear plane; `None` where the model does not show it.
+    pub thread_in_plane: Option<bool>,
     pub washer: Length,
     pub washer_thickness: Length,
     pub head: Length,
@@ -137,7 +140,7 @@ impl Numbers {
             }
         };
         let haunch = HaunchSide::gather(joint.side.haunch, ends.as_ref(), rulebook, noted);
-        let bolts = BoltNumbers::gather(joint.bolts, rulebook, noted);
+        let bolts = BoltNumbers::gather(joint.bolts, joint.plies(), rulebook, noted);
         let (behind, ends, haunch, bolts) = (behind?, ends?, haunch?, bolts?);
 
         let other_h = if let Behind::Plate(other) = &behind { Some(other.beam.h) } else { None };
@@ -215,6 +218,11 @@ impl Numbers {
         self.least(|side| row.height - side.compression())
     }
 
+    /// Whether a row lies below a haunched beam.
+    pub fn beside_haunch(&self, row: &Row) -> bool {
+        self.side.haunch.is_some() && !(row.height >= self.side.soffit)
+    }
+
     /// The same joint turned upside down, so that its lower side is the tension side. A haunch is left out then, with the
     /// rows beside it: what is left carries no more than the whole.
     pub fn upside_down(&self) -> Self {
@@ -250,7 +258,13 @@ impl Numbers {
 }
 
 impl BoltNumbers {
-    fn gather(laid: &joints::Bolts, rulebook: &Rulebook, noted: &mut Noted) -> Option<Self> {
+    /// `plies`: thickness of both plies, where known.
+    fn gather(
+        laid: &joints::Bolts,
+        plies: Option<[Length; 2]>,
+        rulebook: &Rulebook,
+        noted: &mut Noted,
+    ) -> Option<Self> {
         let d = noted.take("bolt diameter", &laid.diameter, print_length);
         let class = noted.take("bolt class", &laid.class, String::clone);
         let d_0 = noted.take("bolt hole", &laid.hole, print_length);
@@ -281,6 +295,24 @@ impl BoltNumbers {
             "head and nut across flats {}, the smallest that the product standards allow, for punching",
             size.across_flats
         ));
+        let thread_in_plane = laid.held.shank.zip(plies).map(|(shank, [a, b])| {
+            // From under the head, which may be on either side, through a washer to the furthest shear plane.
+            let packing: Length = laid.held.packing.iter().copied().sum();
+            let plane = a.max(b) + packing + rulebook.distances.washers * size.washer_thickness;
+            let in_plane = !(shank >= plane);
+            if !in_plane {
+                noted.given("shank without thread", shank, "the bolts' stated length less their thread's");
+            }
+            in_plane
+        });
+        noted.assumptions.push(match thread_in_plane {
+            Some(true) => "thread in the shear plane, by the bolts' length and thread".into(),
+            Some(false) => "shank in the shear plane, by the bolts' length and thread".into(),
+            None if rulebook.settings.thread_in_shear_plane => {
+                "thread in the shear plane: no model says where it ends".into()
+            }
+            None => "shank in the shear plane, by the rule file: no model says where the thread ends".into(),
+        });
         let slip = slip(&laid.held, &class.name, rulebook, noted);
         let packing: Length = laid.held.packing.iter().copied().sum();
         for t_p in &laid.held.packing {
@@ -298,6 +330,7 @@ impl BoltNumbers {
             A_s: size.a_s,
             A: size.a,
             alpha_v: class.alpha_v,
+            thread_in_plane,
             washer: size.washer,
             washer_thickness: size.washer_thickness,
             head: size.head,

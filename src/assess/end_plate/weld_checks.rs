@@ -110,6 +110,12 @@ pub fn web_length(n: &PlateSide, limits: &[Limit], row: usize) -> Length {
     limits.iter().find(own).map_or(Length::ZERO, |limit| limit.length)
 }
 
+/// What the web's fillets carry across over a length, both sides of the web; `None` where not known.
+pub fn over_web(n: &PlateSide, rulebook: &Rulebook, length: Length) -> Option<Force> {
+    let (beta_w, f_u) = parts(n)?;
+    Some(2.0 * welds::across(n.a_web?, f_u, beta_w, rulebook.annex.gamma_m2).per_length * length)
+}
+
 /// The web's fillets against the vertical shear: the length of web below the rows in tension. `None` where not known.
 pub fn in_shear(n: &PlateSide, rulebook: &Rulebook, tension_reach: Length) -> Option<Component> {
     let (beta_w, f_u) = parts(n)?;

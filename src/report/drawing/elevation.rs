@@ -50,7 +50,17 @@ impl View<'_> {
         (self.x0 + self.to * out * self.scene.scale, self.scene.y(height))
     }
 
-    /// What the bolts go through on the other side, mm of steel.
+    /// What the bolts at a height go through on the other side, mm of steel.
+    fn grip(&self, height: f64) -> f64 {
+        let backing = match &self.scene.sketch.against {
+            Against::Column(part) => part.backing.as_slice(),
+            Against::Beam(_) => &[],
+        };
+        let behind = backing.iter().filter(|plate| plate.bottom_mm <= height && height <= plate.top_mm);
+        self.ply() + behind.map(|plate| plate.thickness_mm).fold(0.0, f64::max)
+    }
+
+    /// The flange or plate on the other side, mm of steel.
     fn ply(&self) -> f64 {
         match &self.scene.sketch.against {
             Against::Column(part) => part.column.flange_mm.unwrap_or(0.0),
@@ -68,6 +78,22 @@ impl View<'_> {
             let half = stiffener.thickness_mm / 2.0;
             let (a, b) = (self.at(-t_f - reach, stiffener.height_mm - half), self.at(-t_f, stiffener.height_mm + half));
             canvas.rect(if stiffener.both_sides { Ink::Cut } else { Ink::Plate }, a, b);
+        }
+        for plate in &part.web_plates {
+            let (middle, half) = (-h / 2.0, plate.width_mm / 2.0);
+            let (a, b) = (self.at(middle - half, plate.bottom_mm), self.at(middle + half, plate.top_mm));
+            canvas.rect(Ink::Hidden, a, b);
+        }
+        for diagonal in &part.diagonals {
+            let half = diagonal.thickness_mm / 2.0;
+            let ends = [(-t_f, diagonal.near_mm, half), (-t_f, diagonal.near_mm, -half)];
+            let others = [(t_f - h, diagonal.far_mm, -half), (t_f - h, diagonal.far_mm, half)];
+            let points = ends.into_iter().chain(others).map(|(x, y, half)| self.at(x, y + half));
+            let ink = if diagonal.both_sides { Ink::Cut } else { Ink::Plate };
+            canvas.polygon(ink, &points.collect::<Vec<_>>());
+        }
+        for plate in &part.backing {
+            canvas.rect(Ink::Cut, self.at(-t_f - plate.thickness_mm, plate.bottom_mm), self.at(-t_f, plate.top_mm));
         }
         let edges = if t_f > 0.0 { vec![-h, t_f - h, -t_f, 0.0] } else { vec![-h, 0.0] };
         for x in edges {
@@ -95,9 +121,10 @@ impl View<'_> {
     /// Heads and nuts at both ends of each bolt, its axis, its row's number.
     fn bolts(&self, canvas: &mut Canvas) {
         let sketch = self.scene.sketch;
-        let (t_p, ply) = (sketch.end.plate.thickness_mm, self.ply());
+        let t_p = sketch.end.plate.thickness_mm;
         for (i, row) in sketch.rows.iter().enumerate() {
             let y = row.height_mm;
+            let ply = self.grip(y);
             let reach = sketch.bolt_mm.unwrap_or(0.0);
             if let Some(d) = sketch.bolt_mm {
                 canvas.rect(Ink::Bolt, self.at(-ply - 0.8 * d, y - 0.8 * d), self.at(-ply, y + 0.8 * d));

@@ -125,6 +125,7 @@ fn strip(expr: &Expr) -> &Expr {
 /// How tightly an expression binds: a sum, a product, a sign, or a thing of its own.
 fn binding(expr: &Expr) -> u8 {
     match expr {
+        Expr::Binary(binary) if squared(binary) => 4,
         Expr::Binary(binary) => match binary.op {
             BinOp::Add(_) | BinOp::Sub(_) => 1,
             _ => 2,

@@ -2,13 +2,13 @@
 
 use super::content::{Block, Table, governs};
 use super::formula::text;
-use super::working::shown;
+use super::working::{self, shown};
 use crate::origin::{Ask, Place};
 use crate::report::drawing::figure;
 use crate::report::number::{factor, one_decimal, utilisation};
 use crate::report::{group, hold};
-use crate::review::sketch::{Against, BeamEnd, ColumnPart, Sketch, SketchStiffener};
-use crate::review::{CAUTION, CheckResult, JointReview, Review};
+use crate::review::sketch::{Against, BeamEnd, ColumnPart, FlatPlate, Sketch, SketchDiagonal, SketchStiffener};
+use crate::review::{CAUTION, CheckResult, JointReview, Review, StiffnessResult};
 use crate::units::Quantity;
 
 /// Said once above all workings.
@@ -110,6 +110,7 @@ pub(super) fn detailed(sketch: &Sketch) -> Vec<Block> {
         Against::Column(part) => {
             pairs.insert(0, ("column", part.column.label.clone()));
             pairs.push(("stiffeners", stiffeners(part)));
+            pairs.extend(strengthening(part).into_iter().filter(|(_, said)| !said.is_empty()));
             ">edge of column flange"
         }
     };
@@ -156,6 +157,23 @@ fn stiffeners(part: &ColumnPart) -> String {
     };
     let all: Vec<String> = part.stiffeners.iter().map(one).collect();
     if all.is_empty() { "none".into() } else { all.join("; ") }
+}
+
+fn strengthening(part: &ColumnPart) -> [(&'static str, String); 3] {
+    let flat = |p: &FlatPlate| {
+        let [thick, wide, bottom, top] = [p.thickness_mm, p.width_mm, p.bottom_mm, p.top_mm].map(figure);
+        format!("{thick} thick, {wide} wide, from {bottom} to {top}")
+    };
+    let diagonal = |d: &SketchDiagonal| {
+        let sides = if d.both_sides { "a pair" } else { "on one side only" };
+        let [thick, near, far] = [d.thickness_mm, d.near_mm, d.far_mm].map(figure);
+        format!("{thick} thick, from {near} at the joint to {far}, {sides}")
+    };
+    [
+        ("web plates", part.web_plates.iter().map(flat).collect::<Vec<_>>().join("; ")),
+        ("diagonals", part.diagonals.iter().map(diagonal).collect::<Vec<_>>().join("; ")),
+        ("backing plates", part.backing.iter().map(flat).collect::<Vec<_>>().join("; ")),
+    ]
 }
 
 /// The intended detail beside what was detailed.
@@ -270,16 +288,42 @@ pub(super) fn checks(review: &Review, joint: &JointReview) -> Vec<Block> {
 pub(super) fn result(joint: &JointReview, check: &CheckResult) -> Block {
     let acts = check.action.filter(|a| a.is_finite()).map(|a| format!(", acts {} {}", one_decimal(a), check.unit));
     let ratio = check.utilisation.map(|ratio| format!(", utilisation {}", utilisation(ratio)));
+    let needed = check.needed_throat_mm.map(|a| format!("; throat needed {} mm", figure(a)));
     let governs = if governs(joint, check) { "; governs" } else { "" };
     Block::Line(text(format!(
-        "{}: resistance {} {}{}{}: {}{governs}",
+        "{}: resistance {} {}{}{}: {}{}{governs}",
         check.clause,
         plain(check.resistance),
         check.unit,
         acts.unwrap_or_default(),
         ratio.unwrap_or_default(),
         check.outcome,
+        needed.unwrap_or_default(),
     )))
+}
+
+/// Rotational stiffness and class: the springs, then the working.
+pub(super) fn stiffness(result: &StiffnessResult, common: &[(&'static str, f64)]) -> Vec<Block> {
+    let beta = shown(result.beta.shown());
+    let finite = result.initial.is_finite();
+    let said = if finite { hold::turning(result) } else { format!("stiffness: no number; {}", result.strength) };
+    let mut blocks = vec![
+        Block::Line(text(format!("With {}, β = {beta}. {said}.", result.sense))),
+        Block::Line(text(format!(
+            "The analysis takes it for: {}. Rotation capacity: {}.",
+            result.assumed.unwrap_or("not stated"),
+            result.rotation.trim_end_matches('.')
+        ))),
+    ];
+    let mut table = Table::new("Springs in a row", &["spring", ">k mm"]);
+    let k = |k: Option<f64>| k.map_or_else(|| "infinitely stiff".into(), |k| plain(Some(k)));
+    table.rows.extend(result.springs.iter().map(|(name, own)| vec![name.clone(), k(*own)]));
+    blocks.push(Block::Table(table));
+    if !result.notes.is_empty() {
+        blocks.push(Block::List(result.notes.clone()));
+    }
+    blocks.push(Block::Working(working::lines(&result.working, &[], common)));
+    blocks
 }
 
 /// Findings, each with the parts it stands on and the place.
