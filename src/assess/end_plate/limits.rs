@@ -70,9 +70,7 @@ impl<'a> TensionSide<'a> {
     pub fn new(n: &'a Numbers, rulebook: &'a Rulebook, beta: f64) -> Result<Self, String> {
         let deepest = n.sides().map(PlateSide::depth).fold(Length::ZERO, Length::max);
         let least = rulebook.settings.shear_only_below * deepest;
-        // Rows beside a haunch carry shear only.
-        let in_tension = |row: &Row| n.lever_arm(row) >= least && n.sides().all(|side| row.height >= side.soffit);
-        Self::of(n, rulebook, beta, in_tension)
+        Self::of(n, rulebook, beta, |row| n.lever_arm(row) >= least)
     }
 
     /// The same with the rows that are picked.
@@ -85,7 +83,8 @@ impl<'a> TensionSide<'a> {
         beta: f64,
         picked: impl Fn(&Row) -> bool,
     ) -> Result<Self, String> {
-        let rows: Vec<Row> = n.rows.iter().filter(|row| picked(row)).copied().collect();
+        // Rows beside a haunch carry shear only.
+        let rows: Vec<Row> = n.rows.iter().filter(|row| picked(row) && !n.beside_haunch(row)).copied().collect();
         let mut plates = Vec::new();
         for side in n.sides() {
             plates.push(PlateRows { side, places: places(side, &rows)? });

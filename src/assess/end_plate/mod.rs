@@ -78,12 +78,13 @@ pub const BOUND_BY_OPPOSITE: &str =
 pub const BOUND_BY_TENSION: &str =
     "the resistance is only a lower bound: M is not stated, and the bolts are taken as fully in tension";
 
-/// The same beside an axial tension that is not neglected.
-const BOUND_BY_AXIAL: &str =
-    "the resistance is only a lower bound: beside the axial tension the bolts are taken as fully in tension";
 /// Why the resistance in the sense that leaves out the haunch is only a lower bound.
 const BOUND_BY_HAUNCH: &str =
     "the resistance is only a lower bound: the haunch is not credited with tension at the bottom";
+
+/// The same beside an axial tension that is not neglected.
+const BOUND_BY_AXIAL: &str =
+    "the resistance is only a lower bound: beside the axial tension the bolts are taken as fully in tension";
 
 /// The same where something that would raise it is not known.
 fn lower_bound(gaps: &[Gap]) -> Option<String> {
@@ -437,12 +438,12 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         let beyond = |why: &str| {
             left(format!("N = {n} is above {percent:.0} % of the beam's N_pl,Rd ({limit}), 6.2.7.1(2): {why}"))
         };
-        if self.n.side.haunch.is_some() {
-            return (beyond("moment with axial force at a haunch is not assessed yet"), None);
-        }
         let Some((m, resistance)) = moment else {
             return (beyond("moment with axial force needs the moment and its resistance"), None);
         };
+        if self.n.side.haunch.is_some() {
+            return (beyond("moment with axial force of a haunched beam is not assessed yet"), None);
+        }
         let (beta, rule) = (resistance.beta, Some(self.rulebook.settings.row_forces));
         let own = if n < Force::ZERO {
             let sense = |sense| (self.solve)(sense, beta, beside, rule);

@@ -218,6 +218,11 @@ impl Numbers {
         self.least(|side| row.height - side.compression())
     }
 
+    /// Whether a row lies below a haunched beam.
+    pub fn beside_haunch(&self, row: &Row) -> bool {
+        self.side.haunch.is_some() && !(row.height >= self.side.soffit)
+    }
+
     /// The same joint turned upside down, so that its lower side is the tension side. A haunch is left out then, with the
     /// rows beside it: what is left carries no more than the whole.
     pub fn upside_down(&self) -> Self {

@@ -226,7 +226,10 @@ pub fn credit(noted: &mut Noted, layout: &EndPlateLayout, members: &Members<'_>,
             Err(why) => refuse(noted, &what, why),
         }
     }
-    let form = form(at_levels.iter().map(|(_, at, _)| *at).collect(), members, rulebook);
+    let form = match &layout.haunch {
+        Some(_) if !at_levels.is_empty() => Err("beside a haunched beam it is not assessed yet".into()),
+        _ => form(at_levels.iter().map(|(_, at, _)| *at).collect(), members, rulebook),
+    };
     for (what, _, pair) in &at_levels {
         match &form {
             Ok(_) => input(noted, what, pair.thickness, &pair.grade),

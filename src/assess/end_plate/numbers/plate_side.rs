@@ -39,10 +39,10 @@ pub struct PlateSide {
     pub a_tension: Option<Length>,
     pub a_compression: Option<Length>,
     pub a_web: Option<Length>,
-    /// Butt welds of full penetration, which have no fillet; for tension at the top as well.
-    pub full: FullButts,
     /// The haunch below, on the compression side.
     pub haunch: Option<HaunchSide>,
+    /// Butt welds of full penetration, which have no fillet; for tension at the top as well.
+    pub full: FullButts,
 }
 
 /// The numbers of a beam and its plate that do not depend on the bolts.
@@ -150,8 +150,8 @@ impl Ends {
             a_tension: a_top,
             a_compression: a_bottom,
             a_web,
-            full,
             haunch,
+            full,
             beam,
         })
     }
@@ -237,8 +237,8 @@ impl PlateSide {
             bottom: h - self.top,
             a_tension: self.a_compression,
             a_compression: self.a_tension,
-            full: FullButts { flange_top: self.full.flange_bottom, flange_bottom: self.full.flange_top, ..self.full },
             haunch: None,
+            full: FullButts { flange_top: self.full.flange_bottom, flange_bottom: self.full.flange_top, ..self.full },
             ..self.clone()
         }
     }
