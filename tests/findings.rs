@@ -56,7 +56,7 @@ use std::path::Path;
 
 use faying::assess::{About, State};
 use faying::findings::{RULES, look};
-use faying::joints::{EndPlate, Half, Layout, SpliceLayout, Welds};
+use faying::joints::{EndPlate, Half, Laid, Layout, SpliceLayout, Welds};
 use faying::review::Outcome;
 use faying::units::{Length, mm};
 
@@ -185,7 +185,7 @@ fn the_other_half_of_a_splice_is_compared_too() {
     supporting.welds.flange_top = Err(bench::missing("throat"));
     let mut bolts = good.bolts.clone();
     bolts.rows.iter_mut().for_each(|row| row.edge_column = mm(20.0));
-    bench.joint().layout = Ok(Layout::Splice(SpliceLayout { supported, supporting, bolts }));
+    bench.joint().layout = Ok(Laid::Plates(Box::new(Layout::Splice(SpliceLayout { supported, supporting, bolts }))));
     let rules = ["plate-thinner", "plate-size-differs", "plate-grade-unknown", "weld-thinner", "weld-not-found"];
     for rule in rules {
         let found = bench.find(rule);

@@ -2,6 +2,7 @@
 
 pub mod classification;
 pub mod end_plate;
+pub mod simple;
 
 use std::sync::Arc;
 
@@ -156,6 +157,8 @@ pub enum About {
     Shear,
     /// The welds between beam and end plate.
     Weld,
+    /// A tying force of EN 1991-1-7 against the resistance by γ_Mu.
+    Tying,
     /// N_Ed against the 5 % limit of 6.2.7.1(2); beyond it M_Ed and N_Ed together by 6.2.7.1(3).
     Axial,
 }
@@ -238,6 +241,8 @@ pub struct Assessment {
     pub sagging: Option<Arc<MomentResistance>>,
     /// V_Rd.
     pub shear: Option<Arc<ShearResistance>>,
+    /// Every component in tying, by γ_Mu; empty where the kind has no method.
+    pub tying: Vec<Component>,
     /// Results for each load case.
     pub cases: Vec<CaseResult>,
     /// What keeps it from being a proof.

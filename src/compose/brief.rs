@@ -1,6 +1,6 @@
 //! The joint in short: members, bolts, plates, welds, and the detail in lines for a comparison.
 
-use crate::joints::{Joint, Layout, MemberAt, Strengthening};
+use crate::joints::{Joint, Laid, Layout, MemberAt, Strengthening};
 use crate::origin::Known;
 use crate::review::{BoltsBrief, MemberBrief, PlateBrief, WeldBrief};
 use crate::shop::{Member, Steelwork};
@@ -26,13 +26,18 @@ fn common<T: PartialEq + Clone>(mut all: impl Iterator<Item = T>) -> Option<T> {
     all.all(|other| other == first).then_some(first)
 }
 
+/// End plates that carry moments, if the joint is laid out by them.
+fn laid(joint: &Joint) -> Option<&Layout> {
+    joint.layout.as_ref().ok().and_then(Laid::plates)
+}
+
 /// The bolts in short; without a layout only what the bolts themselves say.
 pub fn bolts(steelwork: &Steelwork, joint: &Joint) -> Option<BoltsBrief> {
     if joint.bolts.is_empty() {
         return None;
     }
     let own = || joint.bolts.iter().filter_map(|&i| steelwork.bolts.get(i));
-    let rows = joint.layout.as_ref().map_or(&[][..], |layout| &layout.bolts().rows);
+    let rows = laid(joint).map_or(&[][..], |layout| &layout.bolts().rows);
     Some(BoltsBrief {
         count: joint.bolts.len(),
         diameter_mm: common(own().map(|b| value(&b.diameter, |d| d.get()))).flatten(),
@@ -51,8 +56,8 @@ pub fn plates(steelwork: &Steelwork, joint: &Joint) -> Vec<PlateBrief> {
             all().fold(f64::MIN, f64::max) - all().fold(f64::MAX, f64::min)
         };
         let (mut width, mut depth) = (size(|p| p.x), size(|p| p.y));
-        match &joint.layout {
-            Ok(layout) if role == "end-plate" => {
+        match laid(joint) {
+            Some(layout) if role == "end-plate" => {
                 let sides = layout.sides();
                 let laid = sides.iter().map(|side| side.plate).find(|laid| laid.guid == plate.identity.guid);
                 let laid = laid.unwrap_or(layout.side().plate);
@@ -79,8 +84,8 @@ pub fn plates(steelwork: &Steelwork, joint: &Joint) -> Vec<PlateBrief> {
 pub fn welds(steelwork: &Steelwork, joint: &Joint) -> Vec<WeldBrief> {
     let brief =
         |role: &str, throat: &Known<Length>| WeldBrief { role: role.to_owned(), throat_mm: value(throat, |a| a.get()) };
-    match &joint.layout {
-        Ok(layout) => (layout.sides().iter())
+    match laid(joint) {
+        Some(layout) => (layout.sides().iter())
             .flat_map(|side| {
                 [
                     brief("flange-top", &side.welds.flange_top),
@@ -89,7 +94,7 @@ pub fn welds(steelwork: &Steelwork, joint: &Joint) -> Vec<WeldBrief> {
                 ]
             })
             .collect(),
-        Err(_) => (joint.welds.iter())
+        None => (joint.welds.iter())
             .filter_map(|&(index, role)| Some(brief(role, &steelwork.welds.get(index)?.throat)))
             .collect(),
     }

@@ -59,7 +59,7 @@ pub fn review(
         assumptions: assessment.map(assumptions).unwrap_or_default(),
         inputs: inputs.into_iter().map(|i| (i.name, i.value, i.origin.printed())).collect(),
         difference: intended
-            .and_then(|(meant, _)| Some((brief::lines(meant), brief::lines(joint.layout.as_ref().ok()?)))),
+            .and_then(|(meant, _)| Some((brief::lines(meant), brief::lines(joint.layout.as_ref().ok()?.plates()?)))),
         sketch: sketch::sketch(steel, joint),
         at: joint.place.clone(),
     }
@@ -186,6 +186,7 @@ fn missing(
                 About::Shear => "proof of the shear",
                 About::Weld => "proof of the welds",
                 About::Axial => "proof of the axial force",
+                About::Tying => "proof of the tying force",
             };
             let engineers = verdict.required.is_none() || reason == BOUND_BY_OPPOSITE || reason == BOUND_BY_TENSION;
             let gap = said(what, reason.clone(), if engineers { Ask::Engineer } else { Ask::Method });

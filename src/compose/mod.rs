@@ -9,10 +9,11 @@ use sha2::{Digest, Sha256};
 
 use crate::assess::Assessment;
 use crate::assess::end_plate::{self, Demand, Opposite, Solver};
+use crate::assess::simple;
 use crate::exchange::Exchange;
 use crate::findings::{self, Context};
 use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
-use crate::joints::{Joint, Joints, Layout};
+use crate::joints::{Joint, Joints, Laid, Layout};
 use crate::origin::{Missing, Problem};
 use crate::review::{Basis, Counts, JointReview, Outcome, Review, Survey};
 use crate::rulebook::{Alpha, ModeOne, RowForces, Rulebook};
@@ -207,8 +208,15 @@ impl<'a> Sources<'a> {
     }
 
     fn compute(&self, solver: &Solver<'_>, joint: &Joint, scheduled: Option<&ScheduledJoint>) -> Computed {
-        let Ok(layout) = &joint.layout else { return Computed { detailed: None, intended: None } };
         let cases = scheduled.map_or(&[][..], |s| &s.cases);
+        let layout = match &joint.layout {
+            Ok(Laid::Plates(layout)) => layout,
+            Ok(Laid::Simple(layout)) => {
+                let cases: Vec<&LoadCase> = cases.iter().collect();
+                return Computed { detailed: Some(simple::assess(layout, &cases, self.rulebook)), intended: None };
+            }
+            Err(_) => return Computed { detailed: None, intended: None },
+        };
         let demands = self.demands(joint, cases);
         let two_sided = joint.opposite.is_some() || joint.opposite_unclear.is_some();
         let assess = |layout: &Layout| end_plate::assess_with(solver, layout, &demands, two_sided);
@@ -230,7 +238,7 @@ impl<'a> Sources<'a> {
             steelwork: self.steelwork,
             schedule_given: !self.schedules.is_empty(),
             joint: Some(joint),
-            layout: joint.layout.as_ref().ok(),
+            layout: joint.layout.as_ref().ok().and_then(Laid::plates),
             scheduled,
             intended: self.detail(scheduled),
             assessment: computed.detailed.as_ref(),

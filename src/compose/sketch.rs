@@ -12,7 +12,7 @@ use crate::units::Length;
 
 /// The sketch of a joint; `None` if it could not be laid out.
 pub fn sketch(steelwork: &Steelwork, joint: &Joint) -> Option<Arc<Sketch>> {
-    let layout = joint.layout.as_ref().ok()?;
+    let layout = joint.layout.as_ref().ok()?.plates()?;
     let member = |index: Option<usize>| index.and_then(|i| steelwork.members.get(i));
     let supported = member(joint.supported);
     let end = |beam: &MemberAt, body: Option<&Member>, soffit: Length, plate: &EndPlate, welds: &Welds| {

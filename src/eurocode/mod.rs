@@ -12,6 +12,7 @@ pub mod column_web;
 pub mod diagonals;
 pub mod effective_length;
 pub mod haunch;
+pub mod net_section;
 pub mod slip;
 pub mod stiffeners;
 pub mod stiffness;

@@ -35,6 +35,8 @@ pub struct LoadCase {
     pub shear: Option<Force>,
     /// N_Ed.
     pub axial: Option<Force>,
+    /// A tying force of EN 1991-1-7, by magnitude.
+    pub tying: Option<Force>,
     /// N_col,Ed of the supporting member at the joint, positive in tension.
     pub column_axial: Option<Force>,
     /// M_col,Ed of the supporting member at the joint, by magnitude.
@@ -46,7 +48,16 @@ pub struct LoadCase {
 impl LoadCase {
     /// One that states nothing yet.
     pub fn blank(name: &str, at: Place) -> Self {
-        Self { name: name.into(), moment: None, shear: None, axial: None, column_axial: None, column_moment: None, at }
+        Self {
+            name: name.into(),
+            moment: None,
+            shear: None,
+            axial: None,
+            tying: None,
+            column_axial: None,
+            column_moment: None,
+            at,
+        }
     }
 }
 

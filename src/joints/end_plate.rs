@@ -2,6 +2,7 @@
 
 use glam::DVec2;
 
+use super::Laid;
 use super::bolts::{self, Behind};
 use super::boxes::Ply;
 use super::draft::{Draft, Seat};
@@ -65,7 +66,7 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
             let below = haunch.map(|found| take(draft, found));
             laid_out(scene, draft, case, &outline, on_column, below)
         })
-        .map(Layout::EndPlate);
+        .map(|layout| Laid::Plates(Box::new(Layout::EndPlate(layout))));
 }
 
 /// # Errors

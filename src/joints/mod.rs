@@ -17,6 +17,7 @@ mod opposite;
 mod rank;
 mod recognise;
 mod scene;
+mod simple;
 mod splice;
 mod stiffeners;
 mod strengthening;
@@ -28,6 +29,7 @@ pub use layout::{
     Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Haunch, Held,
     Layout, MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
+pub use simple::SimpleLayout;
 
 use petgraph::graphmap::UnGraphMap;
 
@@ -96,6 +98,33 @@ impl Kind {
     }
 }
 
+/// A joint laid out.
+#[derive(Clone, Debug)]
+pub enum Laid {
+    /// By end plates that carry moments.
+    Plates(Box<Layout>),
+    /// By anything else.
+    Simple(SimpleLayout),
+}
+
+impl Laid {
+    /// End plates that carry moments, if it is laid out by them.
+    pub fn plates(&self) -> Option<&Layout> {
+        match self {
+            Self::Plates(layout) => Some(layout),
+            Self::Simple(_) => None,
+        }
+    }
+
+    /// The layout of any other kind.
+    pub fn simple(&self) -> Option<&SimpleLayout> {
+        match self {
+            Self::Plates(_) => None,
+            Self::Simple(layout) => Some(layout),
+        }
+    }
+}
+
 /// One joint as found in the steel.
 #[derive(Clone, Debug)]
 pub struct Joint {
@@ -116,7 +145,7 @@ pub struct Joint {
     /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "haunch", "other".
     pub welds: Vec<(usize, &'static str)>,
     /// The joint in its own frame, or why it could not be laid out.
-    pub layout: Result<Layout, String>,
+    pub layout: Result<Laid, String>,
     /// Index of the joint on the opposite flange of the same column at the same level, if there is one.
     pub opposite: Option<usize>,
     /// Why the moment on the column's other flange can't be told although something stands there; one clause.

@@ -4,7 +4,6 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use rayon::prelude::*;
 
-use super::Kind;
 use super::boxes::{Ply, Slab, thicknesses};
 use super::cut::{self, Cluster};
 use super::draft::Draft;
@@ -15,6 +14,7 @@ use super::scene::Scene;
 use super::splice;
 use super::touch::EndOn;
 use super::welds::{self, Role};
+use super::{Kind, Laid, simple};
 use crate::shop::{Member, Part, Shape};
 
 /// A member whose axis is within 60° of the vertical can stand on a base plate.
@@ -29,6 +29,11 @@ pub(super) fn name_kinds(scene: &Scene, clusters: Vec<Cluster>) -> Vec<Draft> {
     };
     let mut drafts: Vec<Draft> = clusters.into_par_iter().filter_map(draft).collect();
     drafts.extend((0..scene.steel.plates.len()).filter_map(|plate| base_without_bolts(scene, plate)));
+    for draft in &mut drafts {
+        if let Some(laid) = simple::lay_out(scene, draft) {
+            draft.joint.layout = laid.map(Laid::Simple);
+        }
+    }
     drafts.iter_mut().for_each(|draft| say_what_is_not_assessed(scene, draft));
     drafts
 }

@@ -4,6 +4,7 @@ use std::collections::BTreeSet;
 
 use glam::DVec2;
 
+use super::Laid;
 use super::bolts::{self, Behind};
 use super::cut;
 use super::draft::Draft;
@@ -42,7 +43,7 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, plates: &[usize]) {
     let placed: BTreeSet<usize> = roles.iter().map(|(weld, _)| *weld).collect();
     roles.extend(draft.joint.welds.iter().filter(|(weld, _)| !placed.contains(weld)));
     draft.joint.welds = roles;
-    draft.joint.layout = laid_out(scene, draft, &found).map(Layout::Splice);
+    draft.joint.layout = laid_out(scene, draft, &found).map(|layout| Laid::Plates(Box::new(Layout::Splice(layout))));
 }
 
 /// The half of the supported member, then the other.

@@ -22,6 +22,7 @@ pub(super) const EMBEDDED: &[(&str, &str)] = &[
     ("annexes/uk.toml", include_str!("../../rules/annexes/uk.toml")),
     ("bolts.toml", include_str!("../../rules/bolts.toml")),
     ("detailing.toml", include_str!("../../rules/detailing.toml")),
+    ("simple.toml", include_str!("../../rules/simple.toml")),
     ("distances.toml", include_str!("../../rules/distances.toml")),
     ("sections/hea.csv", include_str!("../../rules/sections/hea.csv")),
     ("sections/heb.csv", include_str!("../../rules/sections/heb.csv")),

@@ -7,6 +7,7 @@ mod error;
 mod load;
 mod names;
 mod section;
+mod simple;
 mod steel;
 mod tables;
 mod vocabulary;
@@ -17,7 +18,7 @@ use std::sync::OnceLock;
 pub use error::RuleError;
 pub use tables::{
     Alpha, Annex, BoltClass, BoltSize, Category, Clearance, Distances, Grade, ModeOne, RowForces, Section, Settings,
-    SlipRules, Strength, Tolerances, WeldRules,
+    SimpleRules, SlipRules, Strength, Tolerances, WeldRules,
 };
 
 use crate::origin::Known;
@@ -50,6 +51,8 @@ pub struct Rulebook {
     pub slip: SlipRules,
     /// Distances and room of bolts.
     pub distances: Distances,
+    /// Factors of joints that carry shear.
+    pub simple: SimpleRules,
     /// Rules for fillet welds.
     pub welds: WeldRules,
     annexes: Vec<(String, Annex)>,
@@ -132,6 +135,7 @@ impl Rulebook {
             clearances: bolts.clearances,
             slip: bolts.slip,
             distances: file("distances.toml").distances()?,
+            simple: file("simple.toml").simple()?,
             welds: file("welds.toml").welds()?,
             annexes,
             steel: Steel::load(file("steel.toml"))?,

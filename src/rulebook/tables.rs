@@ -268,6 +268,19 @@ pub struct Settings {
     pub k_wc: f64,
 }
 
+/// Factors that EN 1993-1-8 leaves open in joints that carry shear.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct SimpleRules {
+    /// What divides the gross shear area of a plate.
+    pub gross_shear: f64,
+    /// The share of the bolts' shear resistance that a group beside a flexible end plate has.
+    pub bolt_group: f64,
+    /// The share of the shear area that a web has beside an end plate or a hole pattern.
+    pub local_shear: f64,
+    /// The share of the tension part in block tearing of a group loaded eccentrically.
+    pub block_tearing: f64,
+}
+
 /// What counts as the same place or as touching, mm.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Tolerances {

@@ -6,7 +6,7 @@ use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, Sta
 use faying::findings::{Context, rule};
 use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
 use faying::joints::{
-    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Held, Joint, Kind, Layout,
+    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Held, Joint, Kind, Laid, Layout,
     MemberAt, Stiffener, WebPlate, Welds,
 };
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
@@ -69,7 +69,7 @@ impl Bench {
             schedule_given: self.schedule_given,
             unclear: self.unclear,
             joint: self.joint.as_ref(),
-            layout: self.joint.as_ref().and_then(|joint| joint.layout.as_ref().ok()),
+            layout: self.joint.as_ref().and_then(|joint| joint.layout.as_ref().ok()?.plates()),
             scheduled: self.scheduled.as_ref(),
             intended: self.intended.as_ref(),
             assessment: self.assessment.as_ref(),
@@ -102,7 +102,8 @@ impl Bench {
     }
 
     pub fn layout(&mut self) -> &mut EndPlateLayout {
-        match self.joint().layout.as_mut().expect("a layout") {
+        let Laid::Plates(laid) = self.joint().layout.as_mut().expect("a layout") else { panic!("no end plate") };
+        match &mut **laid {
             Layout::EndPlate(layout) => layout,
             other => panic!("{other:?}"),
         }
@@ -272,7 +273,7 @@ fn joint(rulebook: &Rulebook) -> Joint {
         bolts: vec![0, 1],
         plates: vec![(0, "end-plate"), (1, "stiffener")],
         welds: vec![(0, "flange-top"), (1, "web")],
-        layout: Ok(Layout::EndPlate(layout)),
+        layout: Ok(Laid::Plates(Box::new(Layout::EndPlate(layout)))),
         opposite: None,
         opposite_unclear: None,
         disagreements: Vec::new(),

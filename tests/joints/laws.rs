@@ -29,7 +29,7 @@ fn essence(steel: &Steelwork) -> Vec<String> {
             joint.at_end,
             joint.opposite.map(|i| found.joints[i].mark.clone()),
             joint.disagreements,
-            joint.layout.as_ref().map(|layout| numbers(layout.on_column().unwrap())),
+            joint.layout.as_ref().map(|layout| numbers(layout.plates().unwrap().on_column().unwrap())),
         )
     };
     found.joints.iter().map(one).collect()

@@ -1,6 +1,6 @@
 //! What is laid out of an end-plate joint.
 
-use faying::joints::{EndPlateLayout, Joint, Joints, Kind, Layout, recognise};
+use faying::joints::{EndPlateLayout, Joint, Joints, Kind, Laid, Layout, recognise};
 use faying::origin::Origin;
 use faying::rulebook::Grade;
 use faying::shop::{Steelwork, Weld, WeldSort};
@@ -22,7 +22,7 @@ pub fn only(steel: &Steelwork) -> Joint {
 /// The layout of a joint on a column's flange.
 pub fn on_column(joint: &Joint) -> EndPlateLayout {
     match &joint.layout {
-        Ok(Layout::EndPlate(layout)) => layout.clone(),
+        Ok(Laid::Plates(laid)) if let Layout::EndPlate(layout) = &**laid => layout.clone(),
         other => panic!("{other:?}"),
     }
 }

@@ -161,7 +161,7 @@ fn rigid_packing_is_laid_out() {
     }
     steel.bolts.iter_mut().for_each(|bolt| bolt.start.x -= 10.0);
     let joint = only(&steel);
-    let layout = joint.layout.as_ref().unwrap();
+    let layout = joint.layout.as_ref().unwrap().plates().unwrap();
     assert_eq!(layout.bolts().held.packing, [mm(4.0), mm(6.0)]);
     assert_eq!(layout.on_column().unwrap().not_credited, Vec::<String>::new());
     assert_eq!(joint.plates.iter().filter(|(_, role)| *role == "packing").count(), 2);

@@ -25,8 +25,8 @@ fn half(mark: &'static str) -> Detail {
 fn splice(steel: &Steelwork) -> SpliceLayout {
     let joint = only(steel);
     assert_eq!(joint.kind, Kind::EndPlateSplice);
-    match joint.layout {
-        Ok(Layout::Splice(layout)) => layout,
+    match joint.layout.expect("laid out").plates() {
+        Some(Layout::Splice(layout)) => layout.clone(),
         other => panic!("{other:?}"),
     }
 }

@@ -44,7 +44,8 @@ pub fn forces(
     let mut linear: Option<Linear> = None;
     for (r, (&lever_arm, &number)) in lever_arms.iter().zip(numbers).enumerate() {
         let mut potential: Option<(Force, &str)> = None;
-        for limit in limits.iter().filter(|limit| limit.last == r) {
+        // A group that reaches further down limits the row too, though it seldom does: what lies below carries at least 0.
+        for limit in limits.iter().filter(|limit| (limit.first..=limit.last).contains(&r)) {
             let above: Force = forces[limit.first..r].iter().map(|f| f.force).sum();
             let left = limit.resistance.value - above;
             if potential.is_none_or(|(least, _)| tighter(left, least)) {

@@ -21,8 +21,11 @@ pub struct Solver<'a> {
     /// The rules by which it solves.
     pub rulebook: &'a Rulebook,
     solved: Mutex<HashMap<u64, Vec<Entry>>>,
-    sheared: Mutex<HashMap<u64, Vec<(Numbers, Drawn, Arc<ShearResistance>)>>>,
+    sheared: Mutex<HashMap<u64, Vec<Sheared>>>,
 }
+
+/// A joint with the tension of its bolts, and its resistance in shear.
+type Sheared = (Numbers, Drawn, Arc<ShearResistance>);
 
 /// Everything that a resistance depends on besides the rulebook. Compared as a whole; a NaN equals nothing, so it is
 /// never found again.
