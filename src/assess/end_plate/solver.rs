@@ -21,7 +21,7 @@ pub struct Solver<'a> {
     /// The rules by which it solves.
     pub rulebook: &'a Rulebook,
     solved: Mutex<HashMap<u64, Vec<Entry>>>,
-    sheared: Mutex<HashMap<u64, Vec<(Numbers, Drawn, Arc<ShearResistance>)>>>,
+    sheared: Mutex<HashMap<u64, Vec<Sheared>>>,
 }
 
 /// Everything that a resistance depends on besides the rulebook. Compared as a whole; a NaN equals nothing, so it is
@@ -34,6 +34,9 @@ struct Question {
     beside: Beside,
     rule: Option<RowForces>,
 }
+
+/// A shear resistance with all that it depends on besides the rulebook.
+type Sheared = (Numbers, Drawn, Arc<ShearResistance>);
 
 /// What of the bolts' tension bears on their shear.
 #[derive(PartialEq)]
@@ -108,7 +111,7 @@ impl<'a> Solver<'a> {
     pub fn shear(&self, n: &Numbers, tension: Tension<'_>) -> Arc<ShearResistance> {
         let drawn = Drawn::of(tension);
         let shelf = shelf(n, drawn.number(), Force::ZERO);
-        let asked = |(numbers, other, _): &&(Numbers, Drawn, Arc<ShearResistance>)| *other == drawn && numbers == n;
+        let asked = |(numbers, other, _): &&Sheared| *other == drawn && numbers == n;
         if let Some((.., known)) = locked(&self.sheared).get(&shelf).and_then(|entries| entries.iter().find(asked)) {
             return known.clone();
         }
