@@ -1,6 +1,9 @@
 //! The strength of end-plate joints: laws on invented joints, a second way of computing, limits known from theory, and what
 //! once slipped through.
 
+mod axial;
+mod butt_welds;
+mod haunches;
 mod intended;
 pub mod joint;
 mod known_limits;
@@ -12,4 +15,5 @@ mod safe;
 mod slip;
 mod splices;
 mod stiffness;
+pub mod strengthened;
 mod strengthening;

@@ -8,6 +8,7 @@ use faying::assess::{Component, Sense};
 use faying::rulebook::Rulebook;
 
 use crate::assess::joint::{PLAIN, Sketch, asked, case, resistance};
+use crate::assess::strengthened;
 
 const PAGE: &str = include_str!("../rules/coverage.md");
 
@@ -91,8 +92,8 @@ fn every_clause_that_a_calculation_prints_stands_there() {
     let rulebook = Rulebook::embedded();
     let mut all = Vec::new();
     let stiffened = Sketch { top: Some(12.0), bottom: Some(12.0), ..PLAIN };
-    for sketch in [PLAIN, stiffened] {
-        let layout = sketch.layout(&rulebook);
+    let plain = [PLAIN, stiffened].map(|sketch| sketch.layout(&rulebook));
+    for layout in plain.into_iter().chain(strengthened::each()) {
         for sense in [Sense::Hogging, Sense::Sagging] {
             printed(&resistance(&layout, sense, 1.5, &rulebook).unwrap().components, &mut all);
         }

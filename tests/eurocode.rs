@@ -1,5 +1,7 @@
 //! Formulas against published values; every expected value carries its source.
 
+mod strengthening;
+
 use faying::eurocode::alpha::{alpha, alpha_of_draft, lambda_1_on_curve};
 use faying::eurocode::bolts::{self, BearingPlace};
 use faying::eurocode::effective_length::{self as el, RowPlace};
@@ -173,6 +175,7 @@ fn stub(t: f64, m: f64, l: f64) -> TStub {
         n: mm(1.25 * m),
         sum_F_t_Rd: kn(282.2),
         mode_one: ModeOne::Method1,
+        backing: None,
     }
 }
 

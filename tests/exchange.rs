@@ -1,6 +1,7 @@
 //! Reading an exchange: the same graph from every way of writing it, and a place for what is not understood.
 
 mod archive;
+mod broken;
 mod dialects;
 mod forms;
 mod hostile;

@@ -1,9 +1,11 @@
 //! Joints found in hand-built steel. Expected values are the parameters with which the steel was built.
 
 mod build;
+mod haunches;
 mod kinds;
 mod laws;
 mod layouts;
 mod marks;
 mod refusals;
 mod splices;
+mod strengthening;

@@ -2,6 +2,7 @@
 
 mod build;
 mod cli;
+mod sheet;
 
 use std::ffi::OsStr;
 use std::fmt::Write;

@@ -156,7 +156,7 @@ pub enum About {
     Shear,
     /// The welds between beam and end plate.
     Weld,
-    /// N_Ed against the 5 % limit of 6.2.7.1(2).
+    /// N_Ed against the 5 % limit of 6.2.7.1(2); beyond it M_Ed and N_Ed together by 6.2.7.1(3).
     Axial,
 }
 
@@ -203,6 +203,19 @@ pub struct CaseResult {
     pub moment: Option<Arc<MomentResistance>>,
     /// The shear resistance beside this case's bolt tensions; `None` if V is not stated.
     pub shear: Option<Arc<ShearResistance>>,
+    /// Moment with axial force, 6.2.7.1(3), where the force passes the limit below which it may be neglected.
+    pub axial: Option<Component>,
+}
+
+/// N_j,Rd: the axial resistance of a joint without moment.
+#[derive(Clone, Debug)]
+pub struct AxialResistance {
+    /// N_j,Rd.
+    pub force: Force,
+    /// What governs.
+    pub governed_by: String,
+    /// The working.
+    pub working: Arc<Working>,
 }
 
 /// The shear resistance of a joint, with the bolts' tension at its full moment resistance.
@@ -231,6 +244,8 @@ pub struct Assessment {
     pub gaps: Vec<Gap>,
     /// What was assumed, one sentence each.
     pub assumptions: Vec<String>,
+    /// Strengthening parts that no check credits, and why: one sentence each.
+    pub not_credited: Vec<String>,
     /// Inputs with their origins.
     pub inputs: Vec<Input>,
 }

@@ -1,6 +1,6 @@
 //! The joint in short: members, bolts, plates, welds, and the detail in lines for a comparison.
 
-use crate::joints::{Joint, Layout, MemberAt};
+use crate::joints::{Joint, Layout, MemberAt, Strengthening};
 use crate::origin::Known;
 use crate::review::{BoltsBrief, MemberBrief, PlateBrief, WeldBrief};
 use crate::shop::{Member, Steelwork};
@@ -121,6 +121,16 @@ pub fn lines(layout: &Layout) -> Vec<String> {
             plate.top.get()
         ));
     }
+    for haunch in sides.iter().filter_map(|side| side.haunch) {
+        lines.push(format!(
+            "haunch {:.0} mm deep, {:.0} mm long, flange {:.0} × {:.0} mm, web {:.0} mm",
+            haunch.depth.get(),
+            haunch.length.get(),
+            haunch.flange_width.get(),
+            haunch.flange_thickness.get(),
+            haunch.web_thickness.get()
+        ));
+    }
     let bolts = layout.bolts();
     lines.push(format!(
         "bolts M{} {}",
@@ -148,6 +158,40 @@ pub fn lines(layout: &Layout) -> Vec<String> {
             stiffener.height.get(),
             stiffener.thickness.get(),
             or(value(&stiffener.grade, |g| g.0.clone()))
+        ));
+    }
+    let Some(Strengthening { web_plates, diagonals, backing }) = layout.on_column().map(|own| &own.strengthening)
+    else {
+        return lines;
+    };
+    for plate in web_plates {
+        lines.push(format!(
+            "web plate from {:.0} to {:.0} mm: {:.0} mm {}, {:.0} mm wide",
+            plate.bottom.get(),
+            plate.top.get(),
+            plate.thickness.get(),
+            or(value(&plate.grade, |g| g.0.clone())),
+            plate.width.get()
+        ));
+    }
+    for diagonal in diagonals {
+        let sides = if diagonal.both_sides { "pair" } else { "one side only" };
+        lines.push(format!(
+            "diagonal from {:.0} mm at the joint to {:.0} mm: {:.0} mm {}, {sides}",
+            diagonal.near.get(),
+            diagonal.far.get(),
+            diagonal.thickness.get(),
+            or(value(&diagonal.grade, |g| g.0.clone()))
+        ));
+    }
+    for backing in backing {
+        let sides = if backing.both_sides { "pair" } else { "one side only" };
+        lines.push(format!(
+            "backing plates from {:.0} to {:.0} mm: {:.0} mm {}, {sides}",
+            backing.bottom.get(),
+            backing.top.get(),
+            backing.thickness.get(),
+            or(value(&backing.grade, |g| g.0.clone()))
         ));
     }
     lines

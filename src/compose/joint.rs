@@ -213,7 +213,9 @@ fn resistance(assessment: &Assessment) -> Resistance {
         moment_knm: hogging.map(|m| m.moment.knm()),
         moment_reversed_knm: sagging.map(|m| m.moment.knm()),
         shear_kn: shear.map(|s| s.shear.kn()),
-        axial_kn: None,
+        axial_kn: (assessment.cases.iter().filter_map(|case| case.axial.as_ref()))
+            .map(|axial| axial.resistance.kn())
+            .min_by(f64::total_cmp),
         governed_by: governs,
     }
 }
@@ -362,7 +364,18 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>, checks: 
     let shear = shear_case.and_then(|case| case.shear.as_ref()).or(assessment.shear.as_ref());
     let verdict = shear_case.and_then(|case| case.verdicts.iter().find(|v| v.about == About::Shear));
     let actions = [share, moment_knm, verdict.and_then(|v| v.required)];
-    let checks = checks.of(Held { moment: moment.cloned(), shear: shear.cloned(), actions });
+    let least_throat = checks.least_throat;
+    let mut checks = checks.of(Held { moment: moment.cloned(), shear: shear.cloned(), actions });
+    // Moment and axial force together: its use is their sum, not the force's own share.
+    let together = (assessment.cases.iter())
+        .filter_map(|case| Some((case.axial.as_ref()?, use_of(&case.verdicts, About::Axial))))
+        .max_by(|a, b| a.1.total_cmp(&b.1));
+    if let Some((axial, used)) = together {
+        let result = component(axial, Some(axial.at_full.kn()), least_throat);
+        let outcome = if used <= 1.0 { "met" } else { "unproven" };
+        let result = CheckResult { utilisation: Some(used), outcome, ..result };
+        checks = checks.iter().cloned().chain([result]).collect();
+    }
     let shear_case = shear_case.filter(|case| case.shear.is_some()).and_then(|case| named(case.case));
     Leading { rows, row_basis, shear_case, stiffness, checks }
 }

@@ -4,7 +4,9 @@ use std::sync::Arc;
 
 use crate::joints::{EndPlate, EndPlateLayout, Joint, Layout, MemberAt, Welds};
 use crate::origin::Known;
-use crate::review::sketch::{Against, BeamEnd, ColumnPart, PlateFace, Profile, Sketch, SketchRow, SketchStiffener};
+use crate::review::sketch::{
+    Against, BeamEnd, ColumnPart, FlatPlate, PlateFace, Profile, Sketch, SketchDiagonal, SketchRow, SketchStiffener,
+};
 use crate::shop::{Member, Steelwork};
 use crate::units::Length;
 
@@ -60,8 +62,10 @@ fn said<T>(known: &Known<T>, print: impl Fn(&T) -> String, unknown: &str) -> Str
 
 fn column(layout: &EndPlateLayout, body: Option<&Member>) -> Option<ColumnPart> {
     let rows = &layout.bolts.rows;
+    let column = profile(&layout.column, body)?;
+    let column_width = column.width_mm;
     Some(ColumnPart {
-        column: profile(&layout.column, body)?,
+        column,
         top_mm: rows.first().zip(layout.column_above).map(|(row, above)| (row.height + above).get()),
         bottom_mm: rows.last().zip(layout.column_below).map(|(row, below)| (row.height - below).get()),
         stiffeners: (layout.stiffeners.iter())
@@ -71,6 +75,30 @@ fn column(layout: &EndPlateLayout, body: Option<&Member>) -> Option<ColumnPart> 
                 reach_mm: stiffener.reach.get(),
                 both_sides: stiffener.both_sides,
                 full_depth: stiffener.full_depth,
+            })
+            .collect(),
+        web_plates: (layout.strengthening.web_plates.iter())
+            .map(|plate| FlatPlate {
+                thickness_mm: plate.thickness.get(),
+                width_mm: plate.width.get(),
+                bottom_mm: plate.bottom.get(),
+                top_mm: plate.top.get(),
+            })
+            .collect(),
+        diagonals: (layout.strengthening.diagonals.iter())
+            .map(|diagonal| SketchDiagonal {
+                thickness_mm: diagonal.thickness.get(),
+                near_mm: diagonal.near.get(),
+                far_mm: diagonal.far.get(),
+                both_sides: diagonal.both_sides,
+            })
+            .collect(),
+        backing: (layout.strengthening.backing.iter())
+            .map(|backing| FlatPlate {
+                thickness_mm: backing.thickness.get(),
+                width_mm: column_width - 2.0 * backing.short_of_edge.get(),
+                bottom_mm: backing.bottom.get(),
+                top_mm: backing.top.get(),
             })
             .collect(),
     })

@@ -78,7 +78,7 @@ pub fn k_wc(
         step!(w, "6.2.6.2(2), (6.14)", k_wc = 1.0);
         k_wc
     } else {
-        step!(w, "6.2.6.2(2), (6.14)", k_wc = (1.7 - sigma_com_Ed / f_y_wc).max(0.0));
+        step!(w, "6.2.6.2(2), (6.14)", k_wc = (1.7 - sigma_com_Ed / f_y_wc).clamp(0.0, 1.0));
         k_wc
     }
 }

@@ -9,12 +9,15 @@ pub mod beam;
 pub mod bolts;
 pub mod classification;
 pub mod column_web;
+pub mod diagonals;
 pub mod effective_length;
+pub mod haunch;
 pub mod slip;
 pub mod stiffeners;
 pub mod stiffness;
 pub mod t_stub;
 pub mod web_panel;
+pub mod web_plates;
 pub mod welds;
 
 use crate::units::Force;

@@ -4,6 +4,17 @@ use crate::units::{Length, LineForce, Stress};
 use crate::working::Working;
 use crate::{given, step};
 
+/// Fillets of one throat and what the parts that they join are made of.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct Fillets {
+    /// a.
+    pub a: Length,
+    /// f_u of the weaker part joined.
+    pub f_u: Stress,
+    /// β_w of Table 4.1, the larger of the two parts'.
+    pub beta_w: f64,
+}
+
 /// A fillet's resistance per length for one direction of force.
 #[derive(Clone, Debug)]
 pub struct FilletResistance {
@@ -28,5 +39,14 @@ pub fn along(a: Length, f_u: Stress, beta_w: f64, gamma_M2: f64) -> FilletResist
     let mut w = Working::default();
     given!(w, "fillet, weaker part joined"; a, f_u, beta_w);
     step!(w, "4.5.3.2, (4.1)", F_w_Rd = f_u / (3.0_f64.sqrt() * beta_w * gamma_M2) * a);
+    FilletResistance { per_length: F_w_Rd, working: w }
+}
+
+/// One fillet whatever the direction of its force: the simplified method, (4.3) and (4.4).
+pub fn any_direction(fillets: &Fillets, gamma_M2: f64) -> FilletResistance {
+    let mut w = Working::default();
+    let Fillets { a, f_u, beta_w } = *fillets;
+    given!(w, "fillet, weaker part joined"; a, f_u, beta_w);
+    step!(w, "4.5.3.3, (4.3) and (4.4)", F_w_Rd = f_u / (3.0_f64.sqrt() * beta_w * gamma_M2) * a);
     FilletResistance { per_length: F_w_Rd, working: w }
 }

@@ -298,20 +298,19 @@ impl Entities {
         range.and_then(|range| from.get(range)).unwrap_or_default().iter().copied()
     }
 
+    /// Calls with each entity that is pointed to and who points.
+    fn each_pointer(&self, mut with: impl FnMut(usize, Id)) {
+        for from in (0..self.nodes.len() as u32).map(Id) {
+            self.each_reference(from, &mut |to| with(to.0 as usize, from));
+        }
+    }
+
     /// Counts who points to each entity, then puts them in their places.
     fn pointers(&self) -> Pointers {
-        let each = |with: &mut dyn FnMut(usize, Id)| {
-            for from in (0..self.nodes.len() as u32).map(Id) {
-                let cells = self.cells(from).iter().chain(self.extras(from).iter().map(|(_, cell)| cell));
-                for cell in cells {
-                    self.store.each_entity(*cell, &mut |to| with(to.0 as usize, from));
-                }
-            }
-        };
         // who points twice is counted once: its pointers come one after the other
         let mut last = vec![u32::MAX; self.nodes.len()];
         let mut starts = vec![0_u32; self.nodes.len() + 1];
-        each(&mut |to, from| {
+        self.each_pointer(|to, from| {
             if last.get(to).is_some_and(|last| *last != from.0) {
                 last[to] = from.0;
                 starts[to + 1] += 1;
@@ -323,7 +322,7 @@ impl Entities {
         let mut from_all = vec![Id(0); starts.last().map_or(0, |all| *all as usize)];
         let mut next = starts.clone();
         last.fill(u32::MAX);
-        each(&mut |to, from| {
+        self.each_pointer(|to, from| {
             if last.get(to).is_some_and(|last| *last != from.0) {
                 last[to] = from.0;
                 from_all[next[to] as usize] = from;

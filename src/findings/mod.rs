@@ -2,6 +2,7 @@
 
 mod action_not_stated;
 mod axial_force_beyond_limit;
+mod backing_plate_missing;
 mod bolt_class_higher;
 mod bolt_class_lower;
 mod bolt_class_unknown;
@@ -12,10 +13,12 @@ mod bolt_smaller;
 mod bolt_too_short;
 mod compare;
 mod context;
+mod diagonal_missing;
 mod distance_beyond_greatest;
 mod edge_distance_short;
 mod gauge_differs;
 mod grade_unknown;
+mod haunch_differs;
 mod head_without_room;
 mod joint_handed_wrong;
 mod joint_not_found;
@@ -44,7 +47,10 @@ mod stiffener_in_root;
 mod stiffener_missing;
 mod stiffeners;
 mod stiffness_differs;
+mod strengthening;
+mod strengthening_added;
 mod tool_without_room;
+mod web_plate_missing;
 mod weld_not_found;
 mod weld_short;
 mod weld_thinner;
@@ -82,6 +88,10 @@ pub const RULES: &[Rule] = &[
     plate_thinner::RULE,
     weld_thinner::RULE,
     stiffener_missing::RULE,
+    web_plate_missing::RULE,
+    diagonal_missing::RULE,
+    backing_plate_missing::RULE,
+    haunch_differs::RULE,
     section_differs::RULE,
     plate_grade_lower::RULE,
     row_moved::RULE,
@@ -109,6 +119,7 @@ pub const RULES: &[Rule] = &[
     stiffener_in_root::RULE,
     tool_without_room::RULE,
     stiffener_added::RULE,
+    strengthening_added::RULE,
     not_credited::RULE,
 ];
 

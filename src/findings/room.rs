@@ -57,10 +57,10 @@ pub(super) fn beside(context: &Context<'_>) -> Vec<Beside> {
     blocks.into_iter().filter_map(nearest).collect()
 }
 
-/// The leg of a fillet, with the words that tell whether it is in.
-fn leg(throat: &Known<Length>) -> (Length, &'static str) {
+/// The leg of a fillet (a butt weld has none), with the words that tell whether it is in.
+fn leg(throat: &Known<Length>, butt: bool) -> (Length, &'static str) {
     match throat {
-        Ok(throat) if throat.value > Length::ZERO => (2.0_f64.sqrt() * throat.value, " or its weld"),
+        Ok(throat) if !butt && throat.value > Length::ZERO => (2.0_f64.sqrt() * throat.value, " or its weld"),
         _ => (Length::ZERO, ""),
     }
 }
@@ -69,15 +69,15 @@ fn leg(throat: &Known<Length>) -> (Length, &'static str) {
 fn on_plate(side: PlateSide<'_>) -> Vec<(String, Block)> {
     let Ok(beam) = &side.beam.section else { return Vec::new() };
     let Section { h, b, t_w, t_f, .. } = beam.value;
-    let (low, high) = (side.soffit, side.soffit + h);
-    let flange = |name: &str, throat, low: Length, high: Length| {
-        let (leg, weld) = leg(throat);
+    let (low, high, full) = (side.soffit, side.soffit + h, side.welds.full);
+    let flange = |name: &str, throat, butt, low: Length, high: Length| {
+        let (leg, weld) = leg(throat, butt);
         (format!("the beam's {name} flange{weld}"), Block { outer: 0.5 * b, low: low - leg, high: high + leg })
     };
-    let (web_leg, web_weld) = leg(&side.welds.web);
+    let (web_leg, web_weld) = leg(&side.welds.web, full.web);
     vec![
-        flange("top", &side.welds.flange_top, high - t_f, high),
-        flange("bottom", &side.welds.flange_bottom, low, low + t_f),
+        flange("top", &side.welds.flange_top, full.flange_top, high - t_f, high),
+        flange("bottom", &side.welds.flange_bottom, full.flange_bottom, low, low + t_f),
         (format!("the beam's web{web_weld}"), Block { outer: 0.5 * t_w + web_leg, low, high }),
     ]
 }
@@ -95,7 +95,7 @@ fn stiffeners(layout: &EndPlateLayout) -> Vec<(String, Block, Vec<&str>)> {
     let Ok(column) = &layout.column.section else { return Vec::new() };
     let mut all = Vec::new();
     for stiffener in &layout.stiffeners {
-        let (leg, weld) = leg(&stiffener.weld);
+        let (leg, weld) = leg(&stiffener.weld, false);
         let half = 0.5 * stiffener.thickness + leg;
         let block = Block {
             outer: 0.5 * column.value.t_w + stiffener.outstand,

@@ -116,13 +116,41 @@ pub enum Friction {
     Factor(f64),
 }
 
-/// An intended pair of transverse stiffeners.
-#[derive(Clone, Debug, PartialEq)]
+/// Intended plates that strengthen the column: a pair of stiffeners, web plates, diagonals or backing plates.
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct IntendedStiffener {
     /// Thickness.
     pub thickness: Option<Length>,
     /// Grade as written.
     pub grade: Option<String>,
+    /// Throat of their fillets; backing plates have none.
+    pub throat: Option<Length>,
+    /// How long a pair of stiffeners is that does not reach from flange to flange; the others have none.
+    pub length: Option<Length>,
+}
+
+/// How diagonals stand in a column's web.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum DiagonalForm {
+    /// One pair, from the level of one flange of the beam to that of the other.
+    N,
+    /// Two pairs from the levels of the flanges that meet between them.
+    K,
+}
+
+/// An intended haunch below the beam; what is not stated is not compared.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct IntendedHaunch {
+    /// From the beam's soffit down to the underside of its flange at the end plate.
+    pub depth: Option<Length>,
+    /// From the end plate to where its flange ends.
+    pub length: Option<Length>,
+    /// Thickness of its flange.
+    pub flange_thickness: Option<Length>,
+    /// Width of its flange.
+    pub flange_width: Option<Length>,
+    /// Thickness of its web.
+    pub web_thickness: Option<Length>,
 }
 
 /// An intended detail; what is not stated is not compared.
@@ -170,6 +198,18 @@ pub struct IntendedDetail {
     pub stiffener_bottom: Option<Option<IntendedStiffener>>,
     /// Whether the steel is exposed to weather or to other corrosive influences.
     pub exposed: Option<bool>,
+    /// Supplementary web plates: `Some(None)` means "none intended".
+    pub web_plates: Option<Option<IntendedStiffener>>,
+    /// On how many sides of the web they are: 1 or 2.
+    pub web_plate_sides: Option<u8>,
+    /// Diagonal stiffeners in pairs.
+    pub diagonals: Option<Option<IntendedStiffener>>,
+    /// How they stand.
+    pub diagonal_form: Option<DiagonalForm>,
+    /// Backing plates behind the column's flange, on both sides of the web.
+    pub backing_plates: Option<Option<IntendedStiffener>>,
+    /// The haunch below the beam: `Some(None)` means "none intended".
+    pub haunch: Option<Option<IntendedHaunch>>,
     /// Where it is written.
     pub at: Option<Place>,
 }

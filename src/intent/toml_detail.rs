@@ -8,7 +8,7 @@ use toml::de::DeValue;
 use super::actions::decimal;
 use super::source::tidy;
 use super::toml_form::{Reader, Sign, Table};
-use super::{Friction, IntendedDetail, IntendedStiffener};
+use super::{DiagonalForm, Friction, IntendedDetail, IntendedHaunch, IntendedStiffener};
 use crate::rulebook::Category;
 use crate::units::{Length, mm};
 
@@ -20,7 +20,7 @@ impl Reader<'_> {
             return None;
         };
         let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
-        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "members", "exposed"]);
+        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "haunch", "members", "exposed"]);
         let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
         match tidy(name.get_ref()) {
             Ok(name) if !name.is_empty() => detail.name = name,
@@ -55,10 +55,24 @@ impl Reader<'_> {
             detail.web_weld = self.length(&welds, "web_throat_mm", Sign::Positive);
         }
         if let Some(stiffeners) = self.inner(&table, "stiffeners") {
-            self.known(&stiffeners, &["top", "bottom"]);
-            detail.stiffener_top = self.stiffener(&stiffeners, "top");
-            detail.stiffener_bottom = self.stiffener(&stiffeners, "bottom");
+            self.known(&stiffeners, &["top", "bottom", "web_plates", "diagonals", "backing_plates"]);
+            const PAIR: [&str; 4] = ["thickness_mm", "grade", "throat_mm", "length_mm"];
+            detail.stiffener_top = self.plates(&stiffeners, "top", &PAIR);
+            detail.stiffener_bottom = self.plates(&stiffeners, "bottom", &PAIR);
+            detail.web_plates =
+                self.plates(&stiffeners, "web_plates", &["thickness_mm", "grade", "throat_mm", "sides"]);
+            detail.diagonals = self.plates(&stiffeners, "diagonals", &["thickness_mm", "grade", "throat_mm", "form"]);
+            detail.backing_plates = self.plates(&stiffeners, "backing_plates", &["thickness_mm", "grade"]);
+            if let Some(Some(_)) = detail.web_plates {
+                let table = self.inner(&stiffeners, "web_plates");
+                detail.web_plate_sides = table.and_then(|table| self.sides(&table));
+            }
+            if let Some(Some(_)) = detail.diagonals {
+                let table = self.inner(&stiffeners, "diagonals");
+                detail.diagonal_form = table.and_then(|table| self.form(&table));
+            }
         }
+        detail.haunch = self.haunch(&table);
         if let Some(members) = self.inner(&table, "members") {
             self.known(&members, &["supporting_section", "supported_section", "supporting_grade", "supported_grade"]);
             detail.supporting_section = self.text(&members, "supporting_section");
@@ -125,20 +139,64 @@ impl Reader<'_> {
         Some(rows)
     }
 
-    fn stiffener(&mut self, stiffeners: &Table<'_>, key: &str) -> Option<Option<IntendedStiffener>> {
+    fn haunch(&mut self, detail: &Table<'_>) -> Option<Option<IntendedHaunch>> {
+        let value = detail.table.get("haunch")?;
+        match value.get_ref() {
+            DeValue::String(text) if text == "none" => Some(None),
+            DeValue::Table(_) => {
+                let table = self.inner(detail, "haunch")?;
+                let keys = ["depth_mm", "length_mm", "flange_thickness_mm", "flange_width_mm", "web_thickness_mm"];
+                self.known(&table, &keys);
+                let [depth, length, flange_thickness, flange_width, web_thickness] =
+                    keys.map(|key| self.length(&table, key, Sign::Positive));
+                Some(Some(IntendedHaunch { depth, length, flange_thickness, flange_width, web_thickness }))
+            }
+            _ => {
+                self.wrong(value, "haunch", "\"none\" or a table such as { depth_mm = 300, length_mm = 700 }");
+                None
+            }
+        }
+    }
+
+    fn plates(&mut self, stiffeners: &Table<'_>, key: &str, keys: &[&str]) -> Option<Option<IntendedStiffener>> {
         let value = stiffeners.table.get(key)?;
         match value.get_ref() {
             DeValue::String(text) if text == "none" => Some(None),
             DeValue::Table(_) => {
                 let table = self.inner(stiffeners, key)?;
-                self.known(&table, &["thickness_mm", "grade"]);
+                self.known(&table, keys);
                 let thickness = self.length(&table, "thickness_mm", Sign::Positive);
-                Some(Some(IntendedStiffener { thickness, grade: self.text(&table, "grade") }))
+                let throat = self.length(&table, "throat_mm", Sign::Positive);
+                let length = self.length(&table, "length_mm", Sign::Positive);
+                Some(Some(IntendedStiffener { thickness, grade: self.text(&table, "grade"), throat, length }))
             }
             _ => {
                 self.wrong(value, key, "\"none\" or a table such as { thickness_mm = 15, grade = \"S275\" }");
                 None
             }
         }
+    }
+
+    fn sides(&mut self, plates: &Table<'_>) -> Option<u8> {
+        let value = plates.table.get("sides")?;
+        let count = value.get_ref().as_integer().and_then(|count| count.as_str().parse().ok());
+        let sides = count.filter(|count| matches!(count, 1..=2));
+        if sides.is_none() {
+            self.wrong(value, "sides", "1 or 2 sides of the column's web");
+        }
+        sides
+    }
+
+    fn form(&mut self, diagonals: &Table<'_>) -> Option<DiagonalForm> {
+        let value = diagonals.table.get("form")?;
+        let form = match value.get_ref().as_str() {
+            Some("N") => Some(DiagonalForm::N),
+            Some("K") => Some(DiagonalForm::K),
+            _ => None,
+        };
+        if form.is_none() {
+            self.wrong(value, "form", "\"N\" or \"K\"");
+        }
+        form
     }
 }

@@ -111,7 +111,9 @@ pub(super) fn lay_out(
         Behind::Plate(other) => vec![end_plate, other],
     };
     let hole = hole(scene, draft, &plates, &placed, &diameter)?;
-    Ok(Bolts { diameter, class, hole, rows: laid, held: Held::default() })
+    let shanks = bodies.iter().map(|bolt| Some(bolt.length.as_ref().ok()?.value - bolt.thread?));
+    let shank = shanks.collect::<Option<Vec<Length>>>().and_then(|all| all.into_iter().reduce(Length::min));
+    Ok(Bolts { diameter, class, hole, rows: laid, held: Held { shank, ..Held::default() } })
 }
 
 /// From a bolt to the outline's side edge on its own side of the web, at the bolt's height.

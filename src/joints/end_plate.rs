@@ -3,10 +3,11 @@
 use glam::DVec2;
 
 use super::bolts::{self, Behind};
-use super::boxes::{Ply, Slab};
+use super::boxes::Ply;
 use super::draft::{Draft, Seat};
-use super::frame::{Frame, Span, are_parallel, corners};
-use super::layout::{EndPlate, EndPlateLayout, Layout, MemberAt, Welds};
+use super::frame::{Frame, Span, are_parallel};
+use super::haunch;
+use super::layout::{EndPlate, EndPlateLayout, FullButts, Haunch, Layout, MemberAt, Welds};
 use super::scene::Scene;
 use super::stiffeners::{self, OnColumn};
 use super::touch::{EndOn, Pass};
@@ -50,11 +51,20 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
         draft.joint.plates.extend(plates.iter().map(|plate| (*plate, "stiffener")));
         draft.joint.welds.extend(welded.iter().map(|weld| (*weld, Role::Stiffener.word())));
     }
+    let strengthening = &on_column.strengthening;
+    draft.joint.plates.retain(|(plate, _)| !strengthening.plates.iter().any(|(other, _)| other == plate));
+    draft.joint.plates.extend(&strengthening.plates);
+    let welded = strengthening.welds.iter().filter(|weld| !case.welds.iter().any(|(other, _)| other == *weld));
+    draft.joint.welds.extend(welded.map(|weld| (*weld, Role::Stiffener.word())));
     let listed: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
     draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
     draft.joint.layout = assessable(scene, case, &outline, &bolted)
-        .and_then(|()| every_bolt_passes_flange(scene, draft, case))
-        .and_then(|()| laid_out(scene, draft, case, &outline, on_column))
+        .and_then(|()| haunch::find(scene, &case.frame, case.plate, case.end.member, &bolted))
+        .and_then(|haunch| {
+            every_bolt_passes_flange(scene, draft, case)?;
+            let below = haunch.map(|found| take(draft, found));
+            laid_out(scene, draft, case, &outline, on_column, below)
+        })
         .map(Layout::EndPlate);
 }
 
@@ -114,7 +124,7 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
     if !is_rectangular(outline, position) {
         return Err("the end plate is no upright rectangle: not assessed yet".into());
     }
-    beside_beam(scene, &case.frame, case.plate, case.end.member, bolted)
+    Ok(())
 }
 
 /// Bolted plates between the end plate and the column's flange, from the end plate on.
@@ -147,30 +157,15 @@ fn not_rigid(scene: &Scene, case: &Case, pack: usize, outline: &[DVec2]) -> Opti
     None
 }
 
-/// Haunches and ribs made of plates.
-pub(super) fn beside_beam(
-    scene: &Scene,
-    frame: &Frame,
-    plate: usize,
-    beam: usize,
-    bolted: &[usize],
-) -> Result<(), String> {
-    let touch = scene.tolerances().touch.get();
-    let beam = Slab::of_member(&scene.steel.members[beam]);
-    for other in scene.touches.plates[plate].iter().filter(|other| !bolted.contains(other)) {
-        let plate = &scene.steel.plates[*other];
-        let outward = Span::of(corners(plate).map(|p| frame.outward(p)));
-        let stands_out = outward.is_some_and(|span| span.lo >= -touch && span.hi > plate.thickness.get() + touch);
-        let within = beam.zip(Slab::of_plate(plate)).is_some_and(|(beam, plate)| {
-            let beam = Slab { half: beam.half + touch, ..beam };
-            let local = beam.local(plate.centre);
-            (0..3).all(|i| local[i].abs() <= beam.half[i])
-        });
-        if stands_out && !within {
-            return Err("a plate stands on the end plate beside the beam (a haunch or a rib): not assessed yet".into());
-        }
+/// A haunch belongs to the joint: its plates and welds, and how far down it sits on the column.
+fn take(draft: &mut Draft, found: haunch::Found) -> Haunch {
+    draft.joint.plates.extend(found.plates.iter().map(|plate| (*plate, "haunch")));
+    draft.joint.welds.extend(found.welds.iter().map(|weld| (*weld, "haunch")));
+    if let Some(seat) = &mut draft.seat {
+        let depth = found.haunch.depth.get();
+        (seat.level, seat.depth) = (seat.level - depth, seat.depth + depth);
     }
-    Ok(())
+    found.haunch
 }
 
 fn every_bolt_passes_flange(scene: &Scene, draft: &Draft, case: &Case) -> Result<(), String> {
@@ -204,6 +199,7 @@ fn laid_out(
     case: &Case,
     outline: &[DVec2],
     on_column: OnColumn,
+    haunch: Option<Haunch>,
 ) -> Result<EndPlateLayout, String> {
     let column = &scene.steel.members[case.column];
     let plate = plate_at(scene, case.plate, outline)?;
@@ -237,7 +233,9 @@ fn laid_out(
         plate,
         bolts,
         welds: welds_at(scene, &case.frame, case.end.member, &case.welds),
+        haunch,
         stiffeners: on_column.stiffeners.into_iter().map(|(stiffener, _, _)| stiffener).collect(),
+        strengthening: on_column.strengthening.layout,
         column_above: (above <= RUNS_ON).then_some(mm(above)),
         column_below: (below <= RUNS_ON).then_some(mm(below)),
         not_credited,
@@ -272,9 +270,15 @@ pub(super) fn plate_at(scene: &Scene, plate: usize, outline: &[DVec2]) -> Result
 /// The throats of a member's welds to its end plate, `frame` being that member's own.
 pub(super) fn welds_at(scene: &Scene, frame: &Frame, member: usize, roles: &[(usize, Role)]) -> Welds {
     let throat = |role, what| welds::throat(scene, frame, member, roles, role, what);
+    let full = |role| welds::full_butt(scene, frame, member, roles, role);
     Welds {
         flange_top: throat(Role::FlangeTop, "weld at the top flange"),
         flange_bottom: throat(Role::FlangeBottom, "weld at the bottom flange"),
         web: throat(Role::Web, "weld at the web"),
+        full: FullButts {
+            flange_top: full(Role::FlangeTop),
+            flange_bottom: full(Role::FlangeBottom),
+            web: full(Role::Web),
+        },
     }
 }

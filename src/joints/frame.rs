@@ -69,6 +69,11 @@ impl Frame {
         (point - self.origin).dot(self.out)
     }
 
+    /// The outline of a plate on a column's web as (along the column's depth, height).
+    pub(super) fn height_outline(&self, plate: &Plate, column: &Member) -> Vec<DVec2> {
+        corners(plate).map(|p| DVec2::new((p - column.start).dot(column.depth), self.height(p))).collect()
+    }
+
     /// A plate's outline as (across, height).
     pub(super) fn outline(&self, plate: &Plate) -> Vec<DVec2> {
         corners(plate).map(|p| DVec2::new(self.across(p), self.height(p))).collect()

@@ -3,6 +3,10 @@
 //! Heights are measured up from the soffit of the supported member's lower flange, in the direction of the member's
 //! depth that points to the sky; sides are measured across, from the supported member's web.
 
+mod strengthening;
+
+pub use strengthening::{Backing, Diagonal, EdgeWeld, Strengthening, WebPlate};
+
 use crate::origin::{Datum, Known};
 use crate::rulebook::{Category, Grade, Section};
 use crate::units::Length;
@@ -70,10 +74,24 @@ pub struct Bolts {
 pub struct Held {
     /// Thickness of each rigid packing plate between the plies; as large as the end plate.
     pub packing: Vec<Length>,
+    /// The shank without thread: the shortest of the bolts' lengths less their threads; `None` unless all state both.
+    pub shank: Option<Length>,
     /// Category of Table 3.2; `None` where nobody states one.
     pub category: Option<Datum<Category>>,
     /// Slip factor μ of the friction surfaces; `None` where nobody states one.
     pub slip_factor: Option<Datum<f64>>,
+}
+
+/// Which of a beam's welds are butt welds of full penetration: as strong as the weaker part (EN 1993-1-8 4.7.1), and no
+/// fillet beside the bolts. Their throat is the thickness of the part.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq)]
+pub struct FullButts {
+    /// At the upper flange.
+    pub flange_top: bool,
+    /// At the lower flange.
+    pub flange_bottom: bool,
+    /// At the web.
+    pub web: bool,
 }
 
 /// Throats a of the fillets between beam and end plate; each both sides of its plate.
@@ -85,6 +103,8 @@ pub struct Welds {
     pub flange_bottom: Known<Length>,
     /// At the web.
     pub web: Known<Length>,
+    /// Which of them are no fillets.
+    pub full: FullButts,
 }
 
 /// A transverse stiffener of the column: a pair, one plate on each side of the web.
@@ -110,6 +130,35 @@ pub struct Stiffener {
     pub weld: Known<Length>,
 }
 
+/// A haunch below the beam: a web plate and an inclined flange plate between the beam's lower flange and the end plate.
+#[derive(Clone, Debug)]
+pub struct Haunch {
+    /// GlobalIds of its plates.
+    pub guids: Vec<String>,
+    /// From the beam's soffit down to the underside of its flange at the end plate.
+    pub depth: Length,
+    /// From the end plate to where its flange ends.
+    pub length: Length,
+    /// Between its flange and the beam's, degrees.
+    pub angle: f64,
+    /// Thickness of its flange.
+    pub flange_thickness: Length,
+    /// Width of its flange.
+    pub flange_width: Length,
+    /// Thickness of its web.
+    pub web_thickness: Length,
+    /// Steel grade of its flange.
+    pub flange_grade: Known<Grade>,
+    /// Steel grade of its web.
+    pub web_grade: Known<Grade>,
+    /// Throat of its flange's fillets at the end plate.
+    pub flange_weld: Known<Length>,
+    /// Throat of its web's fillets at the end plate.
+    pub web_weld: Known<Length>,
+    /// Whether a stiffener stands on the beam's web where the haunch ends.
+    pub stiffened: bool,
+}
+
 /// An end-plate joint on a column's flange.
 #[derive(Clone, Debug)]
 pub struct EndPlateLayout {
@@ -123,13 +172,17 @@ pub struct EndPlateLayout {
     pub bolts: Bolts,
     /// The beam's welds.
     pub welds: Welds,
+    /// The haunch below the beam, if there is one.
+    pub haunch: Option<Haunch>,
     /// The column's stiffeners near the joint, from the top down.
     pub stiffeners: Vec<Stiffener>,
+    /// What else strengthens the column.
+    pub strengthening: Strengthening,
     /// From the top row up to the column's upper end; `None` where the column runs on past 10 m.
     pub column_above: Option<Length>,
     /// From the lowest row down to the column's lower end.
     pub column_below: Option<Length>,
-    /// Parts welded to the column here that no check credits (web plates, diagonals, backing plates): one sentence each.
+    /// Parts at the column here that are none of these, so that no check can credit them: one sentence each.
     pub not_credited: Vec<String>,
 }
 
@@ -181,6 +234,11 @@ pub enum Which {
 }
 
 impl Which {
+    /// How many end plates it stands for.
+    pub fn count(self) -> usize {
+        if self == Self::Both { 2 } else { 1 }
+    }
+
     /// Before a part's name: "supported ".
     pub fn owner(self) -> &'static str {
         match self {
@@ -223,6 +281,8 @@ pub struct PlateSide<'a> {
     pub plate: &'a EndPlate,
     /// Its welds.
     pub welds: &'a Welds,
+    /// The haunch below it.
+    pub haunch: Option<&'a Haunch>,
 }
 
 /// What an end plate is bolted to.
@@ -245,16 +305,34 @@ pub struct BoltedPlate<'a> {
     pub bolts: &'a Bolts,
 }
 
+impl BoltedPlate<'_> {
+    /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
+    pub fn plies(&self) -> Option<[Length; 2]> {
+        let behind = match self.support {
+            Support::Column(layout) => layout.column.section.as_ref().ok()?.value.t_f,
+            Support::Plate(other) => other.plate.thickness,
+        };
+        Some([self.side.plate.thickness, behind])
+    }
+}
+
 impl Half {
     fn side(&self, which: Which) -> PlateSide<'_> {
-        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds }
+        PlateSide { which, beam: &self.beam, soffit: self.soffit, plate: &self.plate, welds: &self.welds, haunch: None }
     }
 }
 
 impl EndPlateLayout {
     /// The beam's side.
     pub fn side(&self) -> PlateSide<'_> {
-        PlateSide { which: Which::Only, beam: &self.beam, soffit: Length::ZERO, plate: &self.plate, welds: &self.welds }
+        PlateSide {
+            which: Which::Only,
+            beam: &self.beam,
+            soffit: Length::ZERO,
+            plate: &self.plate,
+            welds: &self.welds,
+            haunch: self.haunch.as_ref(),
+        }
     }
 }
 
@@ -295,11 +373,7 @@ impl Layout {
 
     /// Thickness of the supported member's end plate and of the ply behind it; `None` if the column's section is not known.
     pub fn plies(&self) -> Option<[Length; 2]> {
-        let behind = match self {
-            Self::EndPlate(layout) => layout.column.section.as_ref().ok()?.value.t_f,
-            Self::Splice(layout) => layout.supporting.plate.thickness,
-        };
-        Some([self.side().plate.thickness, behind])
+        BoltedPlate::from(self).plies()
     }
 
     /// All that the bolts hold together: both plies and the packing between them.

@@ -9,6 +9,7 @@ mod draft;
 mod end_plate;
 mod frame;
 mod graph;
+mod haunch;
 mod layout;
 mod marks;
 mod near;
@@ -18,13 +19,14 @@ mod recognise;
 mod scene;
 mod splice;
 mod stiffeners;
+mod strengthening;
 mod told;
 mod touch;
 mod welds;
 
 pub use layout::{
-    BoltRow, BoltedPlate, Bolts, EndPlate, EndPlateLayout, Half, Held, Layout, MemberAt, PlateSide, SpliceLayout,
-    Stiffener, Support, Welds, Which,
+    Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Haunch, Held,
+    Layout, MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
 
 use petgraph::graphmap::UnGraphMap;
@@ -109,9 +111,9 @@ pub struct Joint {
     pub at_end: Option<bool>,
     /// Its bolts.
     pub bolts: Vec<usize>,
-    /// Its plates, with their role: "end-plate", "packing", "stiffener", "plate".
+    /// Its plates, with their role: "end-plate", "packing", "stiffener", "haunch", "plate".
     pub plates: Vec<(usize, &'static str)>,
-    /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "other".
+    /// Its welds, with their role: "flange-top", "flange-bottom", "web", "stiffener", "haunch", "other".
     pub welds: Vec<(usize, &'static str)>,
     /// The joint in its own frame, or why it could not be laid out.
     pub layout: Result<Layout, String>,

@@ -9,6 +9,7 @@ use super::cut;
 use super::draft::Draft;
 use super::end_plate::{self, UPRIGHT};
 use super::frame::{Frame, are_parallel};
+use super::haunch;
 use super::layout::{Half, Layout, SpliceLayout};
 use super::recognise::{covers_both_flanges, reaches_a_flange, say_how_joined};
 use super::scene::Scene;
@@ -118,7 +119,10 @@ fn assessable(scene: &Scene, half: &Found, frame: &Frame) -> Result<(), String> 
     if !reaches_a_flange(&half.welds) {
         return Err("an end plate is welded to its beam's web only: not assessed yet".into());
     }
-    end_plate::beside_beam(scene, &half.frame, *plate, end.member, &[])
+    if !haunch::beside_beam(scene, &half.frame, *plate, end.member, &[]).is_empty() {
+        return Err("a plate stands on an end plate beside its beam (a haunch or a rib): not assessed yet".into());
+    }
+    Ok(())
 }
 
 /// # Errors

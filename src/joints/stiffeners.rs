@@ -8,11 +8,12 @@ use super::end_plate::Case;
 use super::frame::{Span, are_parallel, are_square, corners};
 use super::layout::Stiffener;
 use super::scene::Scene;
+use super::strengthening::{self, Found};
 use super::welds;
 use crate::origin::{Ask, Known, Missing};
 use crate::rulebook::Grade;
 use crate::shop::{Member, Part, Plate};
-use crate::units::mm;
+use crate::units::{Length, mm};
 
 /// Plates of the column further than this beyond the end plate, mm, are none of the joint's.
 const BEYOND: f64 = 200.0;
@@ -20,6 +21,8 @@ const BEYOND: f64 = 200.0;
 /// What stands on the column near the joint.
 #[derive(Default)]
 pub(super) struct OnColumn {
+    /// Web plates, diagonals and backing plates.
+    pub(super) strengthening: Found,
     /// From the top down, each with its plates and welds.
     pub(super) stiffeners: Vec<(Stiffener, Vec<usize>, Vec<usize>)>,
     /// One sentence each.
@@ -43,6 +46,8 @@ pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) 
     let mut found = OnColumn::default();
     let mut halves = Vec::new();
     let mut others: BTreeMap<&str, usize> = BTreeMap::new();
+    let mut rest = Vec::new();
+    let on_web = strengthening::plates_on_web(scene, case);
     for index in scene.touches.plates_of[case.column].iter().copied() {
         let plate = &scene.steel.plates[index];
         let near = Span::of(corners(plate).map(|p| case.frame.height(p)))
@@ -52,14 +57,17 @@ pub(super) fn find(scene: &Scene, case: &Case, heights: Span, bolted: &[usize]) 
         if !near || end_plate || packing.contains(&index) {
             continue;
         }
-        match half(scene, case, index).filter(|_| !bolted.contains(&index)) {
+        match half(scene, case, index, &on_web).filter(|_| !bolted.contains(&index)) {
             Some(half) => halves.push(half),
             None if is_bolted_elsewhere(scene, index, bolted) => {}
-            None => {
-                let what = not_a_stiffener(scene, column, plate);
-                *others.entry(what).or_default() += 1;
-                found.others.push(index);
-            }
+            None => rest.push(index),
+        }
+    }
+    found.strengthening = strengthening::find(scene, case, &rest, &on_web, bolted);
+    for index in rest {
+        if !found.strengthening.plates.iter().any(|(plate, _)| *plate == index) {
+            *others.entry(not_a_stiffener(scene, column, &scene.steel.plates[index])).or_default() += 1;
+            found.others.push(index);
         }
     }
     found.not_credited = others.into_iter().map(|(what, count)| not_credited(what, count)).collect();
@@ -86,18 +94,18 @@ fn is_bolted_elsewhere(scene: &Scene, plate: usize, bolted: &[usize]) -> bool {
 }
 
 /// The plate as one half of a pair of transverse stiffeners, if it is one.
-fn half(scene: &Scene, case: &Case, index: usize) -> Option<Half> {
+fn half(scene: &Scene, case: &Case, index: usize, on_web: &[usize]) -> Option<Half> {
     let (column, plate) = (&scene.steel.members[case.column], &scene.steel.plates[index]);
     let touch = scene.tolerances().touch.get();
-    let (t_f, t_w) = thicknesses(column);
+    let (t_f, _) = thicknesses(column);
     let across = Span::of(corners(plate).map(|p| (p - column.start).dot(column.across)))?;
     let depth = Span::of(corners(plate).map(|p| (p - column.start).dot(column.depth)))?;
     let clear = column.extents.y / 2.0 - t_f + touch;
     let inside = depth.lo >= -clear && depth.hi <= clear;
     // One that stops short of the flange with the joint does nothing for it.
     let at_joint = if case.ply.sign() > 0.0 { depth.hi } else { -depth.lo } >= clear - 2.0 * touch;
-    let on_web = (across.lo - t_w / 2.0).abs() <= touch || (across.hi + t_w / 2.0).abs() <= touch;
-    (is_transverse(scene, column, plate) && inside && at_joint && on_web).then(|| Half {
+    let stands = is_transverse(scene, column, plate) && strengthening::stands_on_web(scene, column, across, on_web);
+    (stands && inside && at_joint).then(|| Half {
         plate: index,
         height: case.frame.height(plate.centre),
         across,
@@ -147,15 +155,30 @@ fn stiffener(scene: &Scene, column: &Member, one: &Half, two: Option<&Half>) -> 
     let least = |of: &dyn Fn(&Half) -> f64| halves.iter().map(|half| of(half)).fold(f64::INFINITY, f64::min);
     let plate = |half: &Half| &scene.steel.plates[half.plate];
     let clear = column.extents.y / 2.0 - t_f - touch;
-    let mut at_welds = Vec::new();
-    for half in &halves {
-        at_welds.push(scene.welds_at(Part::Plate(half.plate)));
-    }
-    let what = "weld of the stiffener";
-    let mut welded: Vec<usize> = at_welds.iter().copied().flatten().copied().collect();
+    let plates: Vec<usize> = halves.iter().map(|half| half.plate).collect();
+    let (weld, welded) = fillets(scene, &plates, "weld of the stiffener");
+    let stiffener = Stiffener {
+        guids: halves.iter().map(|half| plate(half).identity.guid.clone()).collect(),
+        height: mm(halves.iter().map(|half| half.height).sum::<f64>() / halves.len() as f64),
+        thickness: mm(least(&|half| plate(half).thickness.get())),
+        outstand: mm(least(&|half| half.across.lo.abs().max(half.across.hi.abs()) - t_w / 2.0)),
+        reach: mm(least(&|half| half.depth.size())),
+        both_sides: two.is_some(),
+        full_depth: halves.iter().all(|half| half.depth.lo <= -clear && half.depth.hi >= clear),
+        grade: common_grade(halves.iter().map(|half| plate(half)), "stiffener"),
+        weld,
+    };
+    (stiffener, plates, welded)
+}
+
+/// The least throat at plates that do one job, and their welds, ascending.
+pub(super) fn fillets(scene: &Scene, plates: &[usize], what: &str) -> (Known<Length>, Vec<usize>) {
+    let at: Vec<&[usize]> = plates.iter().map(|plate| scene.welds_at(Part::Plate(*plate))).collect();
+    let mut welded: Vec<usize> = at.iter().copied().flatten().copied().collect();
     welded.sort_unstable();
     welded.dedup();
-    let weld = if at_welds.iter().all(|welds| welds.is_empty()) || at_welds.iter().all(|welds| !welds.is_empty()) {
+    let alike = at.iter().all(|welds| welds.is_empty()) || at.iter().all(|welds| !welds.is_empty());
+    let least = if alike {
         welds::least_throat(scene, &welded, what)
     } else {
         Err(Missing {
@@ -165,27 +188,13 @@ fn stiffener(scene: &Scene, column: &Member, one: &Half, two: Option<&Half>) -> 
             ask: Ask::Fabricator,
         })
     };
-    let stiffener = Stiffener {
-        guids: halves.iter().map(|half| plate(half).identity.guid.clone()).collect(),
-        height: mm(halves.iter().map(|half| half.height).sum::<f64>() / halves.len() as f64),
-        thickness: mm(least(&|half| plate(half).thickness.get())),
-        outstand: mm(least(&|half| half.across.lo.abs().max(half.across.hi.abs()) - t_w / 2.0)),
-        reach: mm(least(&|half| half.depth.size())),
-        both_sides: two.is_some(),
-        full_depth: halves.iter().all(|half| half.depth.lo <= -clear && half.depth.hi >= clear),
-        grade: common_grade(halves.iter().map(|half| plate(half))),
-        weld,
-    };
-    (stiffener, halves.iter().map(|half| half.plate).collect(), welded)
+    (least, welded)
 }
 
-fn common_grade<'p>(mut plates: impl Iterator<Item = &'p Plate>) -> Known<Grade> {
-    let missing = |reason: String| Missing {
-        what: "steel grade of the stiffener".into(),
-        reason,
-        at: None,
-        ask: Ask::Fabricator,
-    };
+/// The grade that all the plates of one thing have.
+pub(super) fn common_grade<'p>(mut plates: impl Iterator<Item = &'p Plate>, of: &str) -> Known<Grade> {
+    let missing =
+        |reason: String| Missing { what: format!("steel grade of the {of}"), reason, at: None, ask: Ask::Fabricator };
     let first = plates.next().ok_or_else(|| missing("it has no plate".into()))?.grade.clone()?;
     for plate in plates {
         let other = plate.grade.clone()?;

@@ -3,9 +3,9 @@
 use super::boxes::thicknesses;
 use super::frame::{Frame, Span};
 use super::scene::{Scene, shared};
-use crate::origin::{Ask, Known, Missing};
+use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::shop::{Part, WeldSort};
-use crate::units::Length;
+use crate::units::{Length, mm};
 
 /// A weld's middle may lie this far from the middle of the flange or web that it welds, mm, beyond half its thickness:
 /// a fillet's leg and the slackness with which welds are drawn.
@@ -111,6 +111,11 @@ pub(super) fn throat(
     what: &str,
 ) -> Known<Length> {
     let welds: Vec<usize> = roles.iter().filter(|(_, r)| *r == role).map(|(weld, _)| *weld).collect();
+    if full_butt(scene, frame, member, roles, role) {
+        let t = part_thickness(scene, member, role);
+        let by = "full penetration by its name, its depth or the sign of a preparation without a depth (ISO 2553)";
+        return Ok(Datum::new(mm(t), Origin::Assumed(by.into())));
+    }
     let least = least_throat(scene, &welds, what)?;
     match short(scene, frame, member, &welds, role).or_else(|| one_sided(scene, frame, member, &welds, role)) {
         None => Ok(least),
@@ -121,6 +126,28 @@ pub(super) fn throat(
             ask: Ask::Fabricator,
         }),
     }
+}
+
+/// Whether butt welds of full penetration run along the whole of the flange or web; fillets beside them only reinforce.
+pub(super) fn full_butt(scene: &Scene, frame: &Frame, member: usize, roles: &[(usize, Role)], role: Role) -> bool {
+    let t = part_thickness(scene, member, role);
+    let through = |weld: &usize| {
+        let weld = &scene.steel.welds[*weld];
+        let depth = weld.throat.as_ref().map_or(0.0, |throat| throat.value.get());
+        match weld.sort {
+            WeldSort::FullButt => t > 0.0,
+            WeldSort::Butt => t > 0.0 && depth >= t - scene.tolerances().size.get(),
+            WeldSort::Fillet | WeldSort::Unknown => false,
+        }
+    };
+    let butts: Vec<usize> = roles.iter().filter(|(_, r)| *r == role).map(|(weld, _)| *weld).filter(through).collect();
+    !butts.is_empty() && short(scene, frame, member, &butts, role).is_none()
+}
+
+/// t_f or t_w of the member, mm; 0 where its section is not known.
+fn part_thickness(scene: &Scene, member: usize, role: Role) -> f64 {
+    let (t_f, t_w) = thicknesses(&scene.steel.members[member]);
+    if role == Role::Web { t_w } else { t_f }
 }
 
 /// Why welds do not run along the whole of what they weld, if they do not. A seam is often drawn in pieces, so their union
@@ -213,8 +240,9 @@ pub(super) fn least_throat(scene: &Scene, welds: &[usize], what: &str) -> Known<
     let mut least: Known<Length> = Err(missing("no weld is modelled there", None));
     for weld in welds {
         let sort = scene.steel.welds[*weld].sort;
-        if sort == WeldSort::Butt {
-            return Err(Missing { ask: Ask::Method, ..missing("butt weld: not assessed yet", Some(*weld)) });
+        if matches!(sort, WeldSort::Butt | WeldSort::FullButt) {
+            let why = "a butt weld that is not known to go through, or not all along: not assessed yet";
+            return Err(Missing { ask: Ask::Method, ..missing(why, Some(*weld)) });
         }
         let throat = match &scene.steel.welds[*weld].throat {
             Ok(throat) => throat.clone(),

@@ -61,7 +61,7 @@ pub(super) fn draw(
 }
 
 /// "stiffness: Sj,ini 24310 kNm/rad, semi-rigid (rigid from 48500); partial-strength".
-fn turning(s: &StiffnessResult) -> String {
+pub(super) fn turning(s: &StiffnessResult) -> String {
     let least = if s.lower_bound { "at least " } else { "" };
     let from = s.rigid_from.map_or(String::new(), |rigid| format!(" (rigid from {rigid:.0})"));
     let class = if s.class.starts_with("not stated") { format!("class {}", s.class) } else { s.class.clone() };

@@ -58,6 +58,32 @@ pub struct SketchStiffener {
     pub full_depth: bool,
 }
 
+/// A plate flat on the column's web, or behind its flange.
+#[derive(Clone, Debug, PartialEq)]
+pub struct FlatPlate {
+    /// mm.
+    pub thickness_mm: f64,
+    /// Along the column's depth (on the web) or across it (behind the flange), mm.
+    pub width_mm: f64,
+    /// Height of its lower edge, mm.
+    pub bottom_mm: f64,
+    /// Height of its upper edge, mm.
+    pub top_mm: f64,
+}
+
+/// A diagonal stiffener of the column's web.
+#[derive(Clone, Debug, PartialEq)]
+pub struct SketchDiagonal {
+    /// t, mm.
+    pub thickness_mm: f64,
+    /// Height at which it meets the flange with the joint, mm.
+    pub near_mm: f64,
+    /// The same at the other flange, mm.
+    pub far_mm: f64,
+    /// Whether there is a plate on both sides of the web.
+    pub both_sides: bool,
+}
+
 /// A beam's end with its end plate.
 #[derive(Clone, Debug, PartialEq)]
 pub struct BeamEnd {
@@ -82,6 +108,12 @@ pub struct ColumnPart {
     pub bottom_mm: Option<f64>,
     /// Its stiffeners, from the top down.
     pub stiffeners: Vec<SketchStiffener>,
+    /// Supplementary plates on its web.
+    pub web_plates: Vec<FlatPlate>,
+    /// Diagonal stiffeners.
+    pub diagonals: Vec<SketchDiagonal>,
+    /// Backing plates behind its flange.
+    pub backing: Vec<FlatPlate>,
 }
 
 /// What an end plate is bolted to.

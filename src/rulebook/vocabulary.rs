@@ -10,10 +10,11 @@ use super::error::RuleError;
 use super::load::RuleFile;
 
 /// The concepts that have words: of properties and columns, then of parts.
-pub(super) const CONCEPTS: [&str; 28] = [
+pub(super) const CONCEPTS: [&str; 30] = [
     "mark",
     "bolt-diameter",
     "bolt-length",
+    "thread-length",
     "bolt-class",
     "bolt-count",
     "nut-count",
@@ -35,6 +36,7 @@ pub(super) const CONCEPTS: [&str; 28] = [
     "countersunk",
     "weld",
     "butt-weld",
+    "full-penetration",
     "fillet-weld",
     "plate",
     "stiffener",

@@ -47,6 +47,7 @@ pub(super) struct BoltSaid<'a> {
     stated: Vec<Statement<'a, f64>>,
     length: Known<Length>,
     class: Known<String>,
+    thread: Option<Length>,
     hole: Option<Length>,
     slot: Option<Length>,
     /// Whether nuts or washers are counted.
@@ -170,6 +171,7 @@ impl<'a> Reading<'a> {
                 end: shank.end,
                 diameter: Ok(diameter),
                 length: length.clone(),
+                thread: said.thread,
                 class: said_of(&said.class, with, element),
                 hole: said.hole,
                 slot: said.slot,
@@ -187,6 +189,7 @@ impl<'a> Reading<'a> {
             stated: self.diameters(element, &properties),
             length: self.length(element, &properties),
             class: self.class(element, &properties),
+            thread: self.thread(element, &properties),
             hole: self.hole(element, &properties),
             slot: self.slot(element, &properties),
             held: counted("nut-count") || counted("washer-count"),
@@ -373,6 +376,16 @@ impl<'a> Reading<'a> {
         }
         Some(mm(first.value))
     }
+
+    /// The length of the thread: by the standard's property, or one that the vocabulary knows.
+    fn thread(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Option<Length> {
+        let all = self.property_lengths(element, properties, Plausible(5.0, 1000.0), |p| {
+            p.name == "ThreadLength" || p.means("thread-length")
+        });
+        let first = all.first()?;
+        all.iter().all(|s| (s.value - first.value).abs() <= 1.0).then(|| mm(first.value))
+    }
+
     /// The length of slotted holes; of two that differ the longer one counts.
     fn slot(&self, element: Entity<'a>, properties: &[Property<'a>]) -> Option<Length> {
         let all = self.property_lengths(element, properties, Plausible(1.0, 500.0), |p| p.means("slot-length"));

@@ -189,6 +189,8 @@ pub struct Bolt {
     pub diameter: Known<Length>,
     /// Nominal length as stated (in the wild it may be the grip).
     pub length: Known<Length>,
+    /// Length of the thread as stated; `None` where nothing states it, or two statements differ.
+    pub thread: Option<Length>,
     /// Strength class: "8.8".
     pub class: Known<String>,
     /// Hole diameter as stated by a property.
@@ -204,8 +206,10 @@ pub struct Bolt {
 pub enum WeldSort {
     /// Fillet.
     Fillet,
-    /// Butt, full penetration where stated.
+    /// Butt, of a penetration that its throat tells, if anything does.
     Butt,
+    /// Butt, of full penetration: by a word, or by the sign of a preparation without a depth (ISO 2553).
+    FullButt,
     /// Nobody says.
     Unknown,
 }

@@ -80,8 +80,15 @@ impl<'a> Reading<'a> {
 
     fn weld_sort(&self, element: Entity<'a>, properties: &[Property<'a>]) -> WeldSort {
         // ISO 2553 names of butt preparations, besides the words.
-        const BUTT: [&str; 12] = ["i", "v", "hv", "y", "hy", "u", "hu", "j", "x", "k", "dv", "dhv"];
+        const FULL: [&str; 10] = ["i", "v", "hv", "u", "hu", "j", "x", "k", "dv", "dhv"];
+        // With a broad root face: never through.
+        const PARTIAL: [&str; 2] = ["y", "hy"];
         let seam = properties.iter().filter(|p| p.set == SET && p.name == "Type1").find_map(Property::text);
+        // A stated penetration tells more than a word or a sign.
+        let depth = properties.iter().any(|p| {
+            let said = ["s", "DeepPenetrationThroatThickness", "a", "NominalThroatThickness"];
+            p.set == SET && said.contains(&p.name)
+        });
         let names = self.names_of(element);
         let names = names.iter().map(|(_, text)| *text);
         for text in seam.as_deref().into_iter().chain(names) {
@@ -90,12 +97,20 @@ impl<'a> Reading<'a> {
             if words.says("fillet-weld") {
                 return WeldSort::Fillet;
             }
-            if words.says("butt-weld") {
-                return WeldSort::Butt;
+            if words.says("butt-weld") || words.says("full-penetration") {
+                let full = words.says("full-penetration") && !depth;
+                return if full { WeldSort::FullButt } else { WeldSort::Butt };
             }
         }
         match seam {
-            Some(letter) if BUTT.contains(&letter.to_lowercase().as_str()) => WeldSort::Butt,
+            Some(letter) if PARTIAL.contains(&letter.to_lowercase().as_str()) => WeldSort::Butt,
+            Some(letter) if FULL.contains(&letter.to_lowercase().as_str()) => {
+                if depth {
+                    WeldSort::Butt
+                } else {
+                    WeldSort::FullButt
+                }
+            }
             _ => WeldSort::Unknown,
         }
     }
@@ -140,7 +155,7 @@ impl<'a> Reading<'a> {
                 a.by, a.value, z.by, z.value
             ))),
             (Some(a), _) => modelled(a),
-            (None, Some(z)) if sort != WeldSort::Butt => {
+            (None, Some(z)) if !matches!(sort, WeldSort::Butt | WeldSort::FullButt) => {
                 let how = format!("throat a = z/√2 from {}, z = {:.1} mm ({})", z.by, z.value, z.at.place());
                 Ok(Datum::new(mm(z.value / SQRT_2), Origin::Derived(how)))
             }

@@ -2,7 +2,7 @@
 
 use faying::assess::Sense;
 use faying::assess::end_plate::intended;
-use faying::intent::{IntendedDetail, IntendedStiffener};
+use faying::intent::{DiagonalForm, IntendedDetail, IntendedStiffener};
 use faying::joints::EndPlateLayout;
 use faying::units::{Length, mm};
 
@@ -24,7 +24,7 @@ fn same(a: &EndPlateLayout, b: &EndPlateLayout) {
 }
 
 fn pair(thickness: f64) -> Option<Option<IntendedStiffener>> {
-    Some(Some(IntendedStiffener { thickness: Some(mm(thickness)), grade: None }))
+    Some(Some(IntendedStiffener { thickness: Some(mm(thickness)), grade: None, ..IntendedStiffener::default() }))
 }
 
 fn heights(layout: &EndPlateLayout) -> Vec<Length> {
@@ -112,4 +112,61 @@ fn a_joint_handed_wrong() {
         ..IntendedDetail::default()
     };
     same(&meant(&turned, &detail), &wanted);
+}
+
+/// What one joint intends is what another has: web plates, diagonals, backing plates and a pair that ends in the web.
+#[test]
+fn the_stated_strengthening_counts_whatever_is_detailed() {
+    let stated = |thickness: f64, throat: Option<f64>| {
+        Some(Some(IntendedStiffener {
+            thickness: Some(mm(thickness)),
+            grade: Some("S355".into()),
+            throat: throat.map(mm),
+            length: None,
+        }))
+    };
+    // Panel and column flange govern, the web in compression does not.
+    let bare = Sketch {
+        column: "HEA 300",
+        beam: "UKB 533x210x92",
+        inner: 3,
+        d: 30.0,
+        gauge: 150.0,
+        t_p: 40.0,
+        flange_weld: 15.0,
+        web_weld: 10.0,
+        bottom: Some(15.0),
+        ..PLAIN
+    };
+    let bare = bare.layout(&RULES);
+    let plain = both(&bare);
+    let short =
+        IntendedStiffener { thickness: Some(mm(12.0)), throat: Some(mm(6.0)), length: Some(mm(160.0)), grade: None };
+    let details = [
+        IntendedDetail { web_plates: stated(10.0, Some(7.0)), ..IntendedDetail::default() },
+        IntendedDetail { diagonals: stated(15.0, Some(7.0)), ..IntendedDetail::default() },
+        IntendedDetail {
+            diagonals: stated(15.0, Some(7.0)),
+            diagonal_form: Some(DiagonalForm::K),
+            ..IntendedDetail::default()
+        },
+        IntendedDetail { backing_plates: stated(10.0, None), ..IntendedDetail::default() },
+        IntendedDetail { stiffener_top: Some(Some(short)), ..IntendedDetail::default() },
+    ];
+    for detail in &details {
+        let strong = meant(&bare, detail);
+        assert!(both(&strong)[0] > plain[0], "{detail:?}");
+        // Laid over itself it stays; where none are intended they go.
+        same(&meant(&strong, detail), &strong);
+    }
+    let none = IntendedDetail {
+        web_plates: Some(None),
+        diagonals: Some(None),
+        backing_plates: Some(None),
+        stiffener_top: Some(None),
+        ..IntendedDetail::default()
+    };
+    for detail in &details {
+        same(&meant(&meant(&bare, detail), &none), &bare);
+    }
 }

@@ -5,7 +5,9 @@ use std::sync::LazyLock;
 use faying::assess::end_plate::{Demand, Opposite, assess};
 use faying::assess::{About, Assessment, MomentResistance, Sense, State, Verdict};
 use faying::intent::LoadCase;
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, MemberAt, Stiffener, Welds};
+use faying::joints::{
+    BoltRow, Bolts, EndPlate, EndPlateLayout, FullButts, Held, MemberAt, Stiffener, Strengthening, Welds,
+};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::rulebook::{Rulebook, Section};
 use faying::units::{Length, kn, knm, mm};
@@ -135,13 +137,16 @@ impl Sketch {
                 flange_top: known(mm(self.flange_weld)),
                 flange_bottom: known(mm(self.flange_weld)),
                 web: known(mm(self.web_weld)),
+                full: FullButts::default(),
             },
             stiffeners: (self.top.map(|t| pair(h - 0.5 * t_f, t)).into_iter())
                 .chain(self.bottom.map(|t| pair(0.5 * t_f, t)))
                 .collect(),
+            strengthening: Strengthening::default(),
             column_above: self.column_above.map(mm),
             column_below: None,
             not_credited: Vec::new(),
+            haunch: None,
             column: member(column),
             beam: member(beam),
         }
@@ -223,6 +228,10 @@ pub fn mirrored(layout: &EndPlateLayout) -> EndPlateLayout {
     turned.welds.flange_top = layout.welds.flange_bottom.clone();
     turned.welds.flange_bottom = layout.welds.flange_top.clone();
     turned.stiffeners = layout.stiffeners.iter().map(|s| Stiffener { height: h - s.height, ..s.clone() }).collect();
+    let strengthening = &mut turned.strengthening;
+    strengthening.web_plates.iter_mut().for_each(|p| (p.top, p.bottom) = (h - p.bottom, h - p.top));
+    strengthening.diagonals.iter_mut().for_each(|d| (d.near, d.far) = (h - d.near, h - d.far));
+    strengthening.backing.iter_mut().for_each(|b| (b.top, b.bottom) = (h - b.bottom, h - b.top));
     (turned.column_above, turned.column_below) = (layout.column_below, layout.column_above);
     turned
 }

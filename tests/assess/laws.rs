@@ -8,7 +8,7 @@ use faying::units::{Area, Force, Length, knm, mm};
 use proptest::prelude::*;
 
 use super::joint::{RULES, Sketch, asked, case, known, mirrored, resistance, sketches, unknown};
-use faying::joints::Welds;
+use faying::joints::{FullButts, Welds};
 use faying::origin::Known;
 
 const SENSES: [Sense; 2] = [Sense::Hogging, Sense::Sagging];
@@ -198,7 +198,7 @@ proptest! {
         }
         let with_welds = |weld: Known<Length>| {
             let mut layout = layout.clone();
-            layout.welds = Welds { flange_top: weld.clone(), flange_bottom: weld.clone(), web: weld };
+            layout.welds = Welds { flange_top: weld.clone(), flange_bottom: weld.clone(), web: weld, full: FullButts::default() };
             moment(&layout, Opposite::None)
         };
         if let (Some(unknown), Some(of_a)) = (with_welds(unknown("weld")), with_welds(known(mm(a)))) {

@@ -4,8 +4,8 @@ use faying::assess::end_plate::{Opposite, assess};
 use faying::assess::{About, Assessment, Component, Gap, State};
 use faying::joints::EndPlateLayout;
 use faying::origin::{Datum, Origin};
-use faying::rulebook::Category;
-use faying::units::mm;
+use faying::rulebook::{Category, Rulebook};
+use faying::units::{Length, mm};
 use proptest::prelude::*;
 
 use super::joint::{PLAIN, RULES, asked, case, known, sketches, state, verdict};
@@ -119,6 +119,37 @@ fn packing_reduces_the_bolts_shear_and_is_said() {
     let t_p = 0.6 * d;
     let beta_p = 9.0 * d / (8.0 * d + 3.0 * t_p);
     assert!((shear(&[0.3 * d, 0.3 * d]) / shear(&[]) - beta_p).abs() < 1e-12);
+}
+
+/// α_v 0.6 with A in the shank, and with A_s (0.5 for 10.9) in the thread: EN 1993-1-8:2005 Table 3.4. The head may be on
+/// either side, so the shank must reach through the thicker ply and a washer.
+#[test]
+fn where_the_thread_ends_the_model_may_show() {
+    let plain = PLAIN.layout(&RULES);
+    let size = RULES.bolt_size(mm(PLAIN.d)).unwrap();
+    let [t_p, t_fc] = faying::joints::BoltedPlate::from(&plain).plies().unwrap();
+    let plane = t_p.max(t_fc) + size.washer_thickness;
+    let shear = |shank: Option<Length>, rules: &Rulebook| {
+        let mut layout = plain.clone();
+        layout.bolts.held.shank = shank;
+        let assessment = asked(&layout, &case(Some(0.0), Some(1.0), Some(0.0)), Opposite::None, rules);
+        let shear = assessment.cases[0].shear.clone().unwrap();
+        let words: Vec<String> =
+            assessment.assumptions.into_iter().filter(|said| said.contains("shear plane")).collect();
+        (shear.components.iter().find(|c| c.id == "bolts-in-shear").unwrap().resistance, words)
+    };
+    let (thread, words) = shear(None, &RULES);
+    assert_eq!(words, ["thread in the shear plane: no model says where it ends"]);
+    let (shank, words) = shear(Some(plane), &RULES);
+    assert_eq!(words, ["shank in the shear plane, by the bolts' length and thread"]);
+    assert!((shank / thread - size.a / size.a_s).abs() < 1e-12, "8.8: the same α_v");
+    assert_eq!(shear(Some(plane - mm(0.1)), &RULES).0, thread);
+    // What the model shows counts, whatever the rule file takes where it shows nothing.
+    let mut rules = RULES.clone();
+    rules.settings.thread_in_shear_plane = false;
+    assert_eq!(shear(None, &rules).0, shank);
+    assert_eq!(shear(Some(plane - mm(0.1)), &rules).0, thread);
+    assert_eq!(shear(Some(mm(f64::NAN)), &rules).0, thread);
 }
 
 proptest! {

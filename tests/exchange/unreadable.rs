@@ -8,7 +8,6 @@ fn a_file_that_is_no_exchange_says_why_in_one_sentence() {
         ("", "the file is empty"),
         (" \r\n\t ", "the file is empty"),
         ("\u{feff}\nISO-10303-21;\nHEADER;", "the file breaks off before its DATA section: the file is truncated"),
-        ("ISO-10303-21;HEADER;ENDSEC;END-ISO-10303-21;", "the file holds no DATA section"),
         (
             "ISO-10303-21;HEADER;\n FILE_SCHEMA(('AUTOMOTIVE_DESIGN { 1 0 10303 214 }'));ENDSEC;DATA;ENDSEC;",
             "the file is STEP of the schema \"AUTOMOTIVE_DESIGN\" at line 2, column 2; IFC2X3, IFC4 and IFC4X3 are read",
@@ -21,10 +20,6 @@ fn a_file_that_is_no_exchange_says_why_in_one_sentence() {
             "<ex:iso_10303_28 xmlns:ex='urn:iso.org:standard:10303:part(28):version(2):xmlschema:common'/>",
             "the file is ifcXML by ISO 10303-28 without a uos, which would hold the entities",
         ),
-        (
-            "<?xml version='1.0'?>\n <html><p>x</p></html>",
-            "the file is no exchange: its document element at line 2, column 2 is \"html\", ifcXML is required",
-        ),
         ("<!-- nothing -->", "the file holds no XML element"),
         (
             "<ifcXML>\n<IfcBeam>",
@@ -35,17 +30,8 @@ fn a_file_that_is_no_exchange_says_why_in_one_sentence() {
             "the file breaks off inside the markup at line 2, column 1: tag not closed: `>` not found before end of input",
         ),
         (
-            "<ifcXML><IfcBeam></IfcPlate></ifcXML>",
-            "the file is not well-formed XML at line 1, column 18: ill-formed document: expected `</IfcBeam>`, but `</IfcPlate>` was found",
-        ),
-        (
             "<ifcXML>\n<IfcBeam Name=x/></ifcXML>",
             "the file is not well-formed XML at line 2, column 1: position 13: attribute value must be enclosed in `\"` or `'`",
-        ),
-        ("<ifcXML/>\n<ifcXML/>", "the file has a second document element at line 2, column 1"),
-        (
-            "<?xml version='1.0'?>\n<!DOCTYPE ifcXML [<!ENTITY x SYSTEM 'file:///etc/hostname'>]><ifcXML/>",
-            "the file holds a document type declaration (DTD) at line 2, column 1, which is not allowed in an exchange",
         ),
     ] {
         let error = read(text.as_bytes(), "model.ifcxml").unwrap_err();

@@ -5,7 +5,10 @@ use std::sync::Arc;
 use faying::assess::{About, Assessment, CaseResult, MomentResistance, Sense, State, Verdict};
 use faying::findings::{Context, rule};
 use faying::intent::{InFrame, IntendedDetail, IntendedStiffener, LoadCase, ScheduledJoint};
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Joint, Kind, Layout, MemberAt, Stiffener, Welds};
+use faying::joints::{
+    Backing, BoltRow, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Held, Joint, Kind, Layout,
+    MemberAt, Stiffener, WebPlate, Welds,
+};
 use faying::origin::{Ask, Datum, Known, Missing, Origin, Place};
 use faying::review::Finding;
 use faying::rulebook::{Grade, Rulebook, Section};
@@ -55,7 +58,7 @@ impl Bench {
             verdict(About::Weld, State::Met, 300.0, "kNm"),
             verdict(About::Axial, State::Met, 0.0, "kN"),
         ];
-        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None }];
+        let cases = vec![CaseResult { case: 0, verdicts, moment: None, shear: None, axial: None }];
         self.assessment = Some(Assessment { cases, ..Assessment::default() });
     }
 
@@ -247,8 +250,15 @@ fn joint(rulebook: &Rulebook) -> Joint {
             rows: rows(&[560.0, 440.0, 350.0, 60.0]),
             held: Held::default(),
         },
-        welds: Welds { flange_top: known(mm(8.5)), flange_bottom: known(mm(8.5)), web: known(mm(5.0)) },
+        welds: Welds {
+            flange_top: known(mm(8.5)),
+            flange_bottom: known(mm(8.5)),
+            web: known(mm(5.0)),
+            full: FullButts::default(),
+        },
+        haunch: None,
         stiffeners: vec![stiffener(8.0)],
+        strengthening: Default::default(),
         column_above: Some(mm(500.0)),
         column_below: None,
         not_credited: Vec::new(),
@@ -310,6 +320,7 @@ fn steelwork(rulebook: &Rulebook) -> Steelwork {
         end: DVec3::X,
         diameter: known(mm(24.0)),
         length: known(mm(90.0)),
+        thread: None,
         class: known("8.8".into()),
         hole: None,
         slot: None,
@@ -346,6 +357,7 @@ fn scheduled() -> ScheduledJoint {
 
 fn intended() -> IntendedDetail {
     IntendedDetail {
+        haunch: None,
         name: "E1".into(),
         supporting_section: Some("HEB 300".into()),
         supported_section: Some("IPE 500".into()),
@@ -363,10 +375,69 @@ fn intended() -> IntendedDetail {
         flange_weld: Some(mm(8.5)),
         web_weld: Some(mm(5.0)),
         stiffener_top: Some(None),
-        stiffener_bottom: Some(Some(IntendedStiffener { thickness: Some(mm(12.0)), grade: Some("S355".into()) })),
+        stiffener_bottom: Some(Some(IntendedStiffener {
+            thickness: Some(mm(12.0)),
+            grade: Some("S355".into()),
+            ..IntendedStiffener::default()
+        })),
         exposed: None,
         bolt_category: None,
         friction: None,
+        web_plates: None,
+        web_plate_sides: None,
+        diagonals: None,
+        diagonal_form: None,
+        backing_plates: None,
         at: Some(Place { file: "details.toml".into(), line: 1, column: 1 }),
     }
+}
+
+/// A 12 mm plate of S355 on one side of the web, its fillets 7 mm.
+pub fn web_plate(positive: bool) -> WebPlate {
+    WebPlate {
+        guid: if positive { "0guidS1" } else { "0guidS2" }.into(),
+        positive,
+        thickness: mm(12.0),
+        width: mm(240.0),
+        half_width: mm(120.0),
+        bottom: mm(-300.0),
+        top: mm(800.0),
+        grade: grade("S355"),
+        weld: known(EdgeWeld::Fillet(mm(7.0))),
+    }
+}
+
+/// A pair of 12 mm diagonals of S355, its fillets 6 mm.
+pub fn diagonal(near: f64, far: f64) -> Diagonal {
+    Diagonal {
+        guids: vec!["0guidS1".into(), "0guidS2".into()],
+        near: mm(near),
+        far: mm(far),
+        thickness: mm(12.0),
+        outstand: mm(120.0),
+        both_sides: true,
+        full_depth: true,
+        grade: grade("S355"),
+        weld: known(mm(6.0)),
+    }
+}
+
+/// A pair of 10 mm backing plates of S355.
+pub fn backing() -> Backing {
+    Backing {
+        guids: vec!["0guidS1".into(), "0guidS2".into()],
+        thickness: mm(10.0),
+        bottom: mm(0.0),
+        top: mm(600.0),
+        from_web: mm(20.0),
+        short_of_edge: mm(0.0),
+        both_sides: true,
+        grade: grade("S355"),
+    }
+}
+
+/// Intended plates of S355.
+pub fn plates(thickness: f64, throat: Option<f64>) -> Option<Option<IntendedStiffener>> {
+    let (thickness, throat) = (Some(mm(thickness)), throat.map(mm));
+    Some(Some(IntendedStiffener { thickness, throat, grade: Some("S355".into()), length: None }))
 }

@@ -54,7 +54,7 @@ fn the_resistance_of_the_very_case_comes_first() {
     bench.assessment.as_mut().unwrap().cases[0].moment = Some(moment(Sense::Hogging, 360.0));
     assert_eq!(lost_capacity(&bench.context()), Some(0.25), "only one of the two has it");
     let moment = Some(moment(Sense::Hogging, 480.0));
-    let case = CaseResult { case: 0, verdicts: Vec::new(), moment, shear: None };
+    let case = CaseResult { case: 0, verdicts: Vec::new(), moment, shear: None, axial: None };
     bench.intended_assessment.as_mut().unwrap().cases.push(case);
     assert_eq!(lost_capacity(&bench.context()), Some(0.25), "1 - 360 / 480");
     bench.intended_assessment.as_mut().unwrap().cases[0].moment = Some(super::bench::moment(Sense::Hogging, 720.0));

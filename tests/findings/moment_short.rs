@@ -7,7 +7,7 @@ fn cases(bench: &mut Bench, first: (f64, State), second: (f64, State)) {
     bench.cases().push(load_case("W2", Some(-420.0), Some(100.0), Some(0.0), 3));
     let case = |case, (required, state)| {
         let verdicts = vec![verdict(About::Moment, state, required, "kNm")];
-        CaseResult { case, verdicts, moment: None, shear: None }
+        CaseResult { case, verdicts, moment: None, shear: None, axial: None }
     };
     bench.assessment.as_mut().unwrap().cases = vec![case(0, first), case(1, second)];
 }

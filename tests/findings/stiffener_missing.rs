@@ -70,3 +70,27 @@ fn without_the_beams_depth_only_their_absence_can_be_told() {
     let both = |b: &mut Bench| (b.layout().beam.section = Err(missing("section")), b.layout().stiffeners.clear()).1;
     check(ID, both, &[GONE]);
 }
+
+/// A pair that need not reach the far flange is held to its length; a throat to the one intended.
+#[test]
+fn length_and_throat() {
+    let partial = |b: &mut Bench, length: f64| {
+        let intended = b.intended().stiffener_bottom.as_mut().unwrap().as_mut().unwrap();
+        (intended.length, intended.throat) = (Some(mm(160.0)), Some(mm(5.0)));
+        let stiffener = &mut b.layout().stiffeners[0];
+        (stiffener.full_depth, stiffener.reach) = (false, mm(length));
+        stiffener.weld = super::bench::known(mm(if length < 160.0 { 3.0 } else { 5.0 }));
+    };
+    check(ID, |b| partial(b, 160.0), &[]);
+    check(
+        ID,
+        |b| partial(b, 120.0),
+        &[
+            "comment | the column stiffeners level with the beam's bottom flange are less than intended: 120 mm long instead of \
+           160 mm and welded with a throat of 3 mm instead of 5 mm | a pair, 12 mm, S355, throat 5 mm, 160 mm long | a \
+           pair, 12 mm, S355, throat 3 mm, 120 mm long",
+        ],
+    );
+    // One from flange to flange is more than was asked for.
+    check(ID, |b| (partial(b, 160.0), b.layout().stiffeners[0].full_depth = true).1, &[]);
+}

@@ -110,6 +110,15 @@ fn faults_of_toml_files() {
             ("joint = [1]\n", &[("1:10", "given \"1\"", "[[joint]]")]),
             ("[[joint]]\nsupporting = 'C1'\n", &[("1:1", "not named", "mark nor supported")]),
             ("[[joint]]\nmark = 3\n", &[("2:8", "mark: given \"3\"", "text in quotes")]),
+            ("[detail.A.stiffeners]\nweb_plates = { sides = 3 }\n", &[("2:24", "sides: given \"3\"", "1 or 2 sides")]),
+            (
+                "[detail.A.stiffeners]\ndiagonals = { form = 'X' }\n",
+                &[("2:22", "form: given \"'X'\"", "\"N\" or \"K\"")],
+            ),
+            (
+                "[detail.A.stiffeners]\nbacking_plates = { throat_mm = 5 }\n",
+                &[("2:20", "throat_mm", "thickness_mm, grade")],
+            ),
             ("[[joint]]\nmark = ' '\n", &[("2:8", "mark: given", "not stated")]),
             ("[[joint]]\nmark = 'J1'\nend = 'top'\n", &[("3:7", "end: given \"'top'\"", "\"start\" or \"end\"")]),
             ("[[joint]]\nmark = 'J1'\n[[joint.case]]\nM_Ed_kip = 1\n", &[("4:1", "\"kip\"", "kNm")]),
@@ -136,7 +145,10 @@ fn faults_of_toml_files() {
             ),
             ("[detail.M3]\n[detail.'m 3']\n", &[("2:9", "\"m 3\" is defined already at s.toml:1:9", "once")]),
             ("[detail]\nM3 = 1\n", &[("2:6", "M3: given \"1\"", "[detail.NAME]")]),
-            ("[detail.M3]\nplates = {}\n", &[("2:1", "\"plates\"", "bolts, plate, welds, stiffeners, members")]),
+            (
+                "[detail.M3]\nplates = {}\n",
+                &[("2:1", "\"plates\"", "bolts, plate, welds, stiffeners, haunch, members")],
+            ),
             ("[detail.M3]\nplate = { thick = 1 }\n", &[("2:11", "\"thick\"", "thickness_mm")]),
             ("[detail.M3]\nplate = { thickness_mm = 0 }\n", &[("2:26", "\"0\"", "above 0")]),
             ("[detail.M3]\nplate = { top_mm = 1, bottom_mm = 1 }\n", &[("2:9", "top_mm 1.000 mm", "higher top")]),

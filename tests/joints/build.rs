@@ -97,6 +97,7 @@ pub fn bolt(mark: &str, start: DVec3, end: DVec3, d: f64) -> Bolt {
         start,
         end,
         diameter: known(mm(d)),
+        thread: None,
         length: missing("bolt length"),
         class: known("8.8".into()),
         hole: None,
@@ -272,6 +273,46 @@ pub fn spliced(one: &Detail, two: &Detail) -> Steelwork {
         }
     }
     steel
+}
+
+/// A haunch welded from plates below the beam of a joint on the flange of a column at the origin.
+#[derive(Clone, Copy, Debug)]
+pub struct Haunched {
+    /// From the soffit to the underside of its flange.
+    pub depth: f64,
+    pub length: f64,
+    pub flange: f64,
+    pub width: f64,
+    pub web: f64,
+    pub throat: Option<f64>,
+}
+
+/// See [`Haunched`].
+pub const HAUNCH: Haunched =
+    Haunched { depth: 300.0, length: 700.0, flange: 15.0, width: 180.0, web: 10.0, throat: Some(6.0) };
+
+/// Adds the plates H-F and H-W to the first joint of [`frame`], whose plate must reach below them.
+pub fn add_haunch(steel: &mut Steelwork, detail: &Detail, haunch: Haunched) {
+    let face = COLUMN.1 / 2.0 + detail.thickness;
+    let point = |out: f64, up: f64| DVec3::new(face + out, 0.0, detail.soffit + up);
+    // The flange's middle plane from the end plate up to the soffit.
+    let angle = (haunch.depth / haunch.length).atan();
+    let half = haunch.flange / 2.0 / angle.cos();
+    let (foot, tip) = (point(0.0, -haunch.depth + half), point(haunch.length, half));
+    let along = (tip - foot).normalize();
+    let size = ((tip - foot).length(), haunch.width);
+    let mut flange = plate("H-F", (foot + tip) / 2.0, along, DVec3::Y, size, haunch.flange);
+    flange.grade = known(Grade("S355".into()));
+    let mut web = plate("H-W", point(0.0, 0.0), DVec3::X, DVec3::Z, (2.0, 2.0), haunch.web);
+    web.outline = vec![DVec2::ZERO, DVec2::new(0.0, -haunch.depth + 2.0 * half), DVec2::new(haunch.length, 0.0)];
+    web.grade = known(Grade("S355".into()));
+    steel.plates.extend([flange, web]);
+    if let Some(a) = haunch.throat {
+        let lo = foot + DVec3::new(0.0, -haunch.width / 2.0, half);
+        steel.welds.push(weld("H-F-W", lo, lo + DVec3::new(a, haunch.width, a), a));
+        let lo = point(0.0, -haunch.depth + 4.0 * half) - DVec3::Y * (haunch.web / 2.0 + a);
+        steel.welds.push(weld("H-W-W", lo, point(a, -40.0) + DVec3::Y * (haunch.web / 2.0 + a), a));
+    }
 }
 
 pub fn hole(x: f64, y: f64, diameter: f64, length: f64) -> Hole {

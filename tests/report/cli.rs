@@ -189,3 +189,21 @@ fn annexes_and_readings_come_by_the_command_line() {
     let told = refused(&["review", text(&sample), "--annex", "xx"]);
     assert!(told.contains("annex \"xx\"; allowed is de, es, fr, it, nl, recommended, uk"), "{told}");
 }
+
+/// The stiffness is given whatever the schedule states; the class needs the span.
+#[test]
+fn a_report_says_the_stiffness_and_what_the_class_would_need() {
+    let sample = Path::new(env!("CARGO_MANIFEST_DIR")).join("sample-exchange");
+    let json = faying(["review", text(&sample), "--format", "json"]).stdout;
+    let json: serde_json::Value = serde_json::from_slice(&json).unwrap();
+    let all: Vec<_> = json["joints"].as_array().unwrap().iter().filter(|j| !j["stiffness"].is_null()).collect();
+    assert!(!all.is_empty());
+    for stiffness in all.iter().map(|joint| &joint["stiffness"]) {
+        assert!(stiffness["initial_knm_per_rad"].as_f64().is_some_and(|s| s > 0.0), "{stiffness}");
+        assert!(stiffness["class"].as_str().unwrap().starts_with("not stated"), "{stiffness}");
+        assert!(stiffness["rigid_from_knm_per_rad"].is_null() && stiffness["assumed"].is_null());
+        assert_eq!(stiffness["springs"][2]["title"], "rows in tension, keq");
+    }
+    let page = String::from_utf8(faying(["review", text(&sample)]).stdout).unwrap();
+    assert!(page.contains("stiffness: Sj,ini "), "{page}");
+}

@@ -130,6 +130,18 @@ fn the_diameter_is_stated_by_attribute_property_name_or_geometry() {
 }
 
 #[test]
+fn the_length_of_the_thread_is_read_where_it_is_stated_once() {
+    const L: &str = "IfcPositiveLengthMeasure";
+    let thread = |set: &str, all: &[(&str, &str, &str)]| {
+        bolt(r#"Name="M20 x 80""#, &properties(set, all), "").bolts[0].thread.map(|l| l.get())
+    };
+    assert_eq!(thread("Pset_MechanicalFastenerBolt", &[("ThreadLength", L, "46")]), Some(46.0));
+    assert_eq!(thread("Shop", &[("Gewindelänge", L, "46")]), Some(46.0));
+    assert_eq!(thread("Shop", &[("Length", L, "80")]), None);
+    assert_eq!(thread("Shop", &[("Thread length", L, "46"), ("Gewindelänge", L, "80")]), None);
+}
+
+#[test]
 fn diameters_that_disagree_give_the_smaller_and_a_problem() {
     // The shank is drawn 20 mm thick.
     for (attributes, d) in [

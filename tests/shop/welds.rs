@@ -50,7 +50,13 @@ fn sort_and_length_are_read() {
     let fillet = weld("Weld", SET, &[("Type1", "IfcLabel", "Fillet"), ("a", L, "6"), ("l", L, "180")]);
     assert_eq!(fillet.sort, WeldSort::Fillet);
     close(fillet.length.unwrap().value.get(), 180.0, 0.0);
-    assert_eq!(weld("Weld", SET, &[("Type1", "IfcLabel", "HV")]).sort, WeldSort::Butt);
+    // A preparation without a depth goes through (ISO 2553, from memory); a broad root face never does.
+    let sign = |letter: &str| weld("Weld", SET, &[("Type1", "IfcLabel", letter)]).sort;
+    assert_eq!((sign("HV"), sign("K"), sign("HY")), (WeldSort::FullButt, WeldSort::FullButt, WeldSort::Butt));
+    let deep = weld("Weld", SET, &[("Type1", "IfcLabel", "HV"), ("s", L, "12")]);
+    assert_eq!(deep.sort, WeldSort::Butt);
+    assert_eq!(weld("Butt weld, full penetration", SET, &[]).sort, WeldSort::FullButt);
+    assert_eq!(weld("PJP weld", SET, &[]).sort, WeldSort::Butt);
     assert_eq!(weld("Butt weld", SET, &[]).sort, WeldSort::Butt);
     assert_eq!(weld("Weld", SET, &[]).sort, WeldSort::Unknown);
     assert!(weld("Weld", SET, &[("l", "IfcLengthMeasure", "0")]).length.is_err());

@@ -60,8 +60,12 @@ fn group(data: &mut Value, groups: &BTreeMap<String, String>) {
     }
 }
 
-/// Where the size of a bolt is said: by its type, in IFC2X3 by itself, of a proxy in its name.
+/// Where the size of a bolt is said, and its thread: by its type, in IFC2X3 by itself, of a proxy in its name.
 fn said_by(body: BoltBody, version: Version, origin: &str) -> String {
+    // A proxy has no property set for its thread.
+    if let (BoltBody::Proxies, Some(thread)) = (body, origin.strip_suffix(", by the bolts' length and thread")) {
+        return format!("{thread}: no model says where it ends");
+    }
     let Some((before, after)) = origin.split_once("NominalDiameter of the type of the fastener") else {
         return origin.into();
     };

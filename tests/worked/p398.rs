@@ -5,7 +5,7 @@
 use faying::assess::end_plate::{Demand, Opposite, assess};
 use faying::assess::{Assessment, Component, MomentResistance};
 use faying::intent::LoadCase;
-use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, MemberAt, Welds};
+use faying::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, FullButts, Held, MemberAt, Welds};
 use faying::origin::{Datum, Known, Origin, Place};
 use faying::rulebook::Rulebook;
 use faying::units::{Length, kn, knm, mm};
@@ -49,8 +49,15 @@ pub fn example(rulebook: &Rulebook) -> EndPlateLayout {
             rows: [0.0, 100.0, 190.0, 460.0].map(|below| row(height_of_row_1 - below)).to_vec(),
             held: Held::default(),
         },
-        welds: Welds { flange_top: known(throat(12.0)), flange_bottom: known(throat(12.0)), web: known(throat(8.0)) },
+        welds: Welds {
+            flange_top: known(throat(12.0)),
+            flange_bottom: known(throat(12.0)),
+            web: known(throat(8.0)),
+            full: FullButts::default(),
+        },
+        haunch: None,
         stiffeners: Vec::new(),
+        strengthening: Default::default(),
         column_above: None,
         column_below: None,
         not_credited: Vec::new(),

@@ -1,7 +1,9 @@
 //! The intended detail as a layout: what the schedule states, on the joint as detailed for everything it does not state.
 
-use crate::intent::{Friction, IntendedDetail, IntendedStiffener};
-use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Held, Layout, MemberAt, SpliceLayout, Stiffener, Welds};
+mod column;
+
+use crate::intent::{Friction, IntendedDetail};
+use crate::joints::{BoltRow, Bolts, EndPlate, EndPlateLayout, Haunch, Held, Layout, MemberAt, SpliceLayout, Welds};
 use crate::origin::{Ask, Datum, Known, Missing, Origin};
 use crate::rulebook::{Grade, Rulebook};
 use crate::units::Length;
@@ -74,30 +76,9 @@ pub fn intended(
     meant.column_above = layout.column_above.map(|above| above - up);
     meant.column_below = layout.column_below.map(|below| below + down);
     stated.welds(&mut meant.welds);
+    stated.haunch(&mut meant.haunch)?;
 
-    if let (Ok(beam), Ok(column)) = (&meant.beam.section, &meant.column.section) {
-        let (h, t_f) = (beam.value.h, beam.value.t_f);
-        let free = 0.5 * (column.value.b - column.value.t_w);
-        let reach = column.value.h - 2.0 * column.value.t_f;
-        for (intended, height) in [(&detail.stiffener_top, h - 0.5 * t_f), (&detail.stiffener_bottom, 0.5 * t_f)] {
-            let Some(intended) = intended else { continue };
-            let level = |s: &Stiffener| (s.height - height).abs() <= t_f;
-            let own = meant.stiffeners.iter().position(level).map(|i| meant.stiffeners.remove(i));
-            if let Some(pair) = intended {
-                meant.stiffeners.push(stiffener(
-                    pair,
-                    own,
-                    height,
-                    free,
-                    reach,
-                    &meant.column.grade,
-                    detail,
-                    rulebook,
-                )?);
-            }
-        }
-        meant.stiffeners.sort_by(|a, b| b.height.get().total_cmp(&a.height.get()));
-    }
+    stated.strengthening(&mut meant)?;
     Ok(meant)
 }
 
@@ -181,6 +162,32 @@ impl Stated<'_> {
         }
     }
 
+    /// What is stated over the haunch as detailed.
+    fn haunch(&self, haunch: &mut Option<Haunch>) -> Result<(), Missing> {
+        let Some(stated) = &self.detail.haunch else { return Ok(()) };
+        let Some(stated) = stated else {
+            *haunch = None;
+            return Ok(());
+        };
+        let Some(own) = haunch else {
+            let why = "a haunch is intended where none is detailed: what it would carry is not computed";
+            return Err(missing("intended haunch", why.into(), self.detail));
+        };
+        let angle = own.angle;
+        let changed = stated.depth.is_some() || stated.length.is_some();
+        for (value, stated) in [
+            (&mut own.depth, stated.depth),
+            (&mut own.length, stated.length),
+            (&mut own.flange_thickness, stated.flange_thickness),
+            (&mut own.flange_width, stated.flange_width),
+            (&mut own.web_thickness, stated.web_thickness),
+        ] {
+            *value = stated.unwrap_or(*value);
+        }
+        own.angle = if changed { (own.depth / own.length).atan().to_degrees() } else { angle };
+        Ok(())
+    }
+
     fn welds(&self, welds: &mut Welds) {
         let by = || self.by("weld throat");
         let lay = |own: &mut Known<Length>, throat: Option<Length>| {
@@ -191,6 +198,11 @@ impl Stated<'_> {
         lay(&mut welds.flange_top, self.detail.flange_weld);
         lay(&mut welds.flange_bottom, self.detail.flange_weld);
         lay(&mut welds.web, self.detail.web_weld);
+        // A stated throat means a fillet.
+        let fillets = self.detail.flange_weld.is_some();
+        welds.full.flange_top &= !fillets;
+        welds.full.flange_bottom &= !fillets;
+        welds.full.web &= self.detail.web_weld.is_none();
     }
 
     /// Rows by intended heights and gauge; edge distances follow from the plate's width and that of what it is bolted to,
@@ -216,47 +228,6 @@ impl Stated<'_> {
         });
         bolts.rows = rows.collect();
     }
-}
-
-#[allow(clippy::too_many_arguments)]
-fn stiffener(
-    pair: &IntendedStiffener,
-    own: Option<Stiffener>,
-    height: Length,
-    free: Length,
-    reach: Length,
-    column_grade: &Known<Grade>,
-    detail: &IntendedDetail,
-    rulebook: &Rulebook,
-) -> Result<Stiffener, Missing> {
-    let by = Origin::Modelled { by: format!("stiffener of detail {}", detail.name), at: detail.at.clone() };
-    let thickness = pair.thickness.or(own.as_ref().map(|s| s.thickness)).ok_or_else(|| {
-        missing("intended stiffener thickness", "the detail asks for stiffeners and states no thickness".into(), detail)
-    })?;
-    let grade = match &pair.grade {
-        Some(text) => match rulebook.grade(text) {
-            Some(grade) => Ok(Datum::new(grade, by)),
-            None => {
-                return Err(missing(
-                    "intended stiffener grade",
-                    format!("'{text}' is no grade of the steel table"),
-                    detail,
-                ));
-            }
-        },
-        None => own.as_ref().map_or_else(|| column_grade.clone(), |s| s.grade.clone()),
-    };
-    Ok(Stiffener {
-        guids: own.as_ref().map(|s| s.guids.clone()).unwrap_or_default(),
-        height,
-        thickness,
-        outstand: own.as_ref().filter(|s| s.both_sides).map_or(free, |s| s.outstand),
-        reach,
-        both_sides: true,
-        full_depth: true,
-        grade,
-        weld: own.map_or_else(|| Err(missing("stiffener weld", "the detail states none".into(), detail)), |s| s.weld),
-    })
 }
 
 fn missing(what: &str, reason: String, detail: &IntendedDetail) -> Missing {

@@ -68,9 +68,24 @@ impl<'a> TensionSide<'a> {
     /// # Errors
     /// Why this arrangement of rows has no rule in the standard.
     pub fn new(n: &'a Numbers, rulebook: &'a Rulebook, beta: f64) -> Result<Self, String> {
-        let deepest = n.sides().map(|side| side.beam.h).fold(Length::ZERO, Length::max);
+        let deepest = n.sides().map(PlateSide::depth).fold(Length::ZERO, Length::max);
         let least = rulebook.settings.shear_only_below * deepest;
-        let rows: Vec<Row> = n.rows.iter().filter(|row| n.lever_arm(row) >= least).copied().collect();
+        // Rows beside a haunch carry shear only.
+        let in_tension = |row: &Row| n.lever_arm(row) >= least && n.sides().all(|side| row.height >= side.soffit);
+        Self::of(n, rulebook, beta, in_tension)
+    }
+
+    /// The same with the rows that are picked.
+    ///
+    /// # Errors
+    /// As [`TensionSide::new`].
+    pub fn of(
+        n: &'a Numbers,
+        rulebook: &'a Rulebook,
+        beta: f64,
+        picked: impl Fn(&Row) -> bool,
+    ) -> Result<Self, String> {
+        let rows: Vec<Row> = n.rows.iter().filter(|row| picked(row)).copied().collect();
         let mut plates = Vec::new();
         for side in n.sides() {
             plates.push(PlateRows { side, places: places(side, &rows)? });
@@ -171,6 +186,10 @@ impl<'a> TensionSide<'a> {
 
     fn gamma_M0(&self) -> f64 {
         self.rulebook.annex.gamma_m0
+    }
+
+    fn gamma_M2(&self) -> f64 {
+        self.rulebook.annex.gamma_m2
     }
 
     fn mode_one(&self) -> ModeOne {

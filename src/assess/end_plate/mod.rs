@@ -1,5 +1,6 @@
 //! The bolted end-plate joint between a beam and a column's flange, EN 1993-1-8:2005 6.2.
 
+mod axial;
 mod intended;
 mod limits;
 mod moment;
@@ -8,12 +9,13 @@ mod rows;
 mod shear;
 mod solver;
 mod sound;
+mod strengthening;
 mod totals;
 mod turning;
 mod weld_checks;
 
 pub use intended::{intended, intended_layout, with_category};
-use numbers::{Noted, Numbers};
+use numbers::{Noted, Numbers, PlateSide};
 use shear::Tension;
 use solver::Solved;
 pub use solver::Solver;
@@ -75,6 +77,13 @@ pub const BOUND_BY_OPPOSITE: &str =
 /// Why a shear resistance is only a lower bound in a load case that leaves M blank.
 pub const BOUND_BY_TENSION: &str =
     "the resistance is only a lower bound: M is not stated, and the bolts are taken as fully in tension";
+
+/// The same beside an axial tension that is not neglected.
+const BOUND_BY_AXIAL: &str =
+    "the resistance is only a lower bound: beside the axial tension the bolts are taken as fully in tension";
+/// Why the resistance in the sense that leaves out the haunch is only a lower bound.
+const BOUND_BY_HAUNCH: &str =
+    "the resistance is only a lower bound: the haunch is not credited with tension at the bottom";
 
 /// The same where something that would raise it is not known.
 fn lower_bound(gaps: &[Gap]) -> Option<String> {
@@ -145,10 +154,23 @@ pub fn assess_with<'l>(
         }
         noted.assumptions.push("the compression flange bears on the end plate in contact: its weld is not checked in compression (common practice without a source)".into());
         let plain_beta = if two_sided { BETA_MAX } else { 1.0 };
+        if n.side.haunch.is_some() {
+            noted.assumptions.push("with tension at the bottom the haunch and the rows beside it are left out".into());
+        }
         let turned = n.upside_down();
         let solve = |sense: Sense, beta: f64, beside: Beside, rule: Option<RowForces>| {
             solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, beside, rule)
         };
+        // The side that no case asks for keeps no proof back.
+        let needed = |sense| {
+            demands.is_empty() && sense == Sense::Hogging
+                || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense))
+        };
+        for (sense, n) in [(Sense::Hogging, n), (Sense::Sagging, &turned)] {
+            if needed(sense) {
+                noted.gaps.extend(strengthening::short_in_compression(n));
+            }
+        }
         let at_rest = |sense, noted: &mut Noted| match solve(
             sense,
             plain_beta,
@@ -158,10 +180,7 @@ pub fn assess_with<'l>(
             Ok(resistance) => Some(resistance),
             Err(reason) => {
                 let what = if sense == Sense::Hogging { "tension at the top" } else { "tension at the bottom" };
-                // The side that no case asks for keeps no proof back.
-                let needed = demands.is_empty() && sense == Sense::Hogging
-                    || demands.iter().any(|d| d.case.moment.is_some_and(|m| sense_of(m) == sense));
-                if needed {
+                if needed(sense) {
                     noted.gaps.push(Gap::NotChecked(Missing {
                         what: format!("moment with {what}"),
                         reason,
@@ -185,7 +204,7 @@ pub fn assess_with<'l>(
                 .map(|reach| reach.unwrap_or(n.side.beam.h))
                 .fold(Length::ZERO, Length::max),
         };
-        let context = Cases { n, solver, rulebook, n_pl, lower_bound, unknown, solve: &solve };
+        let context = Cases { n, turned: &turned, solver, rulebook, n_pl, lower_bound, unknown, solve: &solve };
         for (case, demand) in demands.iter().enumerate() {
             assessment.cases.push(context.result(case, demand));
         }
@@ -196,10 +215,17 @@ pub fn assess_with<'l>(
         assessment.shear = Some(solver.shear(n, tension));
     } else {
         for (case, demand) in demands.iter().enumerate() {
-            assessment.cases.push(CaseResult { case, verdicts: not_computed(demand.case), moment: None, shear: None });
+            assessment.cases.push(CaseResult {
+                case,
+                verdicts: not_computed(demand.case),
+                moment: None,
+                shear: None,
+                axial: None,
+            });
         }
     }
     assessment.gaps = noted.gaps;
+    assessment.not_credited = noted.not_credited;
     assessment.assumptions = noted.assumptions;
     assessment.inputs = noted.inputs;
     assessment
@@ -286,6 +312,7 @@ fn not_computed(case: &LoadCase) -> Vec<Verdict> {
 
 struct Cases<'a, F> {
     n: &'a Numbers,
+    turned: &'a Numbers,
     solver: &'a Solver<'a>,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,
@@ -306,6 +333,7 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         let steep = |row: &RowForce| !(row.force <= 1.9 * self.n.bolts.F_t_Rd);
         let unknown = rule == RowForces::LinearBeyond19
             && (self.lower_bound.is_some()
+                || self.without_haunch(sense).is_some()
                 || at_bound(opposite) && (self.solve)(sense, 0.0, beside, Some(rule))?.rows.iter().any(steep));
         if !unknown || solved.rows.first().is_some_and(steep) {
             return Ok(solved);
@@ -314,12 +342,18 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         Ok(if linear.without_welds < solved.without_welds { linear } else { solved })
     }
 
+    /// Why the resistance in this sense leaves out a haunch, if it does.
+    fn without_haunch(&self, sense: Sense) -> Option<&'static str> {
+        (sense == Sense::Sagging && self.n.side.haunch.is_some()).then_some(BOUND_BY_HAUNCH)
+    }
+
     fn result(&self, case: usize, demand: &Demand<'_>) -> CaseResult {
         let LoadCase { moment, shear, axial, .. } = demand.case;
         let mut verdicts = Vec::new();
         let beside = Beside::of(demand.case);
         let solved = moment.map(|m| self.moment(m, demand.opposite, beside));
         let bound = at_bound(demand.opposite).then_some(BOUND_BY_OPPOSITE);
+        let bound = bound.or(moment.and_then(|m| self.without_haunch(sense_of(m))));
         match (moment, &solved) {
             (Some(m), Some(Ok(resistance))) => {
                 let governed = if resistance.moment < resistance.without_welds {
@@ -335,7 +369,7 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
                     governed,
                     bound,
                 ));
-                if self.n.sides().all(|side| side.a_tension.is_some() && side.a_web.is_some()) {
+                if self.n.sides().all(PlateSide::welds_known) {
                     verdicts.push(self.weld_verdict(*m, resistance, bound));
                 }
             }
@@ -343,8 +377,10 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
             _ => verdicts.push(unproven(About::Moment, None, "M is not stated".into())),
         }
         let solved = solved.and_then(Result::ok);
+        // Tension that counts pulls at rows on both sides: every bolt may be fully used.
+        let pulled = axial.is_some_and(|n| n > self.neglected());
         let tension = match (&solved, moment) {
-            (Some(resistance), Some(m)) => {
+            (Some(resistance), Some(m)) if !pulled => {
                 let share = m.abs() / resistance.without_welds;
                 Tension::Rows(resistance, if share.is_finite() { share.min(1.0) } else { 1.0 })
             }
@@ -354,7 +390,11 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         verdicts.push(match (shear, &shear_resistance) {
             (Some(v), Some(resistance)) => {
                 let (kn, governed) = (resistance.shear.kn(), resistance.governed_by.clone());
-                let bound = solved.is_none().then_some(BOUND_BY_TENSION);
+                let bound = match (&solved, pulled) {
+                    (None, _) => Some(BOUND_BY_TENSION),
+                    (Some(_), true) => Some(BOUND_BY_AXIAL),
+                    (Some(_), false) => None,
+                };
                 let mut verdict = self.verdict(About::Shear, v.kn().abs(), kn, "kN", governed, bound);
                 // More than the bolts carry without any tension is proven not to be carried, whatever is not known.
                 let most = || self.solver.shear(self.n, Tension::None).shear;
@@ -365,37 +405,74 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
             }
             _ => unproven_shear(),
         });
-        let limit = (self.rulebook.settings.axial_limit * self.n_pl).kn();
-        verdicts.push(match axial {
-            Some(n) if n.kn().abs() <= limit => Verdict {
-                about: About::Axial,
-                state: State::Met,
-                required: Some(n.kn()),
-                resistance: Some(limit),
-                unit: "kN",
-                utilisation: None,
-                governed_by: format!("within {:.0} % of N_pl,Rd, neglected by 6.2.7.1(2)", 100.0 * self.rulebook.settings.axial_limit),
-                reason: None,
-            },
-            stated => Verdict {
-                about: About::Axial,
-                state: State::Unproven,
-                required: stated.map(|n| n.kn()),
-                resistance: Some(limit),
-                unit: "kN",
-                utilisation: None,
-                governed_by: String::new(),
-                reason: Some(match stated {
-                    Some(n) => format!(
-                        "N = {:.1} kN is above {:.0} % of the beam's N_pl,Rd ({limit:.1} kN), 6.2.7.1(2): moment with axial force is not assessed yet",
-                        n.kn(),
-                        100.0 * self.rulebook.settings.axial_limit
-                    ),
-                    None => "N is not stated".into(),
-                }),
-            },
-        });
-        CaseResult { case, verdicts, moment: solved, shear: shear_resistance }
+        let (verdict, together) = self.axial(*axial, moment.zip(solved.as_deref()), beside, bound);
+        verdicts.push(verdict);
+        CaseResult { case, verdicts, moment: solved, shear: shear_resistance, axial: together }
+    }
+
+    /// Up to here N may be neglected, 6.2.7.1(2).
+    fn neglected(&self) -> Force {
+        self.rulebook.settings.axial_limit * self.n_pl
+    }
+
+    /// N against the limit of 6.2.7.1(2), and beyond it M and N together, 6.2.7.1(3).
+    fn axial(
+        &self,
+        axial: Option<Force>,
+        moment: Option<(Moment, &MomentResistance)>,
+        beside: Beside,
+        bound: Option<&str>,
+    ) -> (Verdict, Option<Component>) {
+        let limit = self.neglected();
+        let percent = 100.0 * self.rulebook.settings.axial_limit;
+        let left = |reason: String| {
+            let (required, resistance) = (axial.map(|n| n.kn()), Some(limit.kn()));
+            Verdict { unit: "kN", required, resistance, ..unproven(About::Axial, None, reason) }
+        };
+        let Some(n) = axial else { return (left("N is not stated".into()), None) };
+        if n.abs() <= limit {
+            let governed_by = format!("within {percent:.0} % of N_pl,Rd, neglected by 6.2.7.1(2)");
+            return (Verdict { state: State::Met, governed_by, reason: None, ..left(String::new()) }, None);
+        }
+        let beyond = |why: &str| {
+            left(format!("N = {n} is above {percent:.0} % of the beam's N_pl,Rd ({limit}), 6.2.7.1(2): {why}"))
+        };
+        if self.n.side.haunch.is_some() {
+            return (beyond("moment with axial force at a haunch is not assessed yet"), None);
+        }
+        let Some((m, resistance)) = moment else {
+            return (beyond("moment with axial force needs the moment and its resistance"), None);
+        };
+        let (beta, rule) = (resistance.beta, Some(self.rulebook.settings.row_forces));
+        let own = if n < Force::ZERO {
+            let sense = |sense| (self.solve)(sense, beta, beside, rule);
+            sense(Sense::Hogging)
+                .and_then(|hogging| Ok(axial::compression(self.n, self.turned, [&*hogging, &*sense(Sense::Sagging)?])))
+        } else {
+            axial::tension(self.n, self.turned, beta, rule, self.rulebook)
+        };
+        let own = match own {
+            Ok(own) => own,
+            Err(why) => return (beyond(&why), None),
+        };
+        let (used, component) = axial::interaction((m, resistance.moment), (n, &own));
+        let met = used <= 1.0 + self.rulebook.tolerances.utilisation;
+        let by = "the conservative method of 6.2.7.1(3)";
+        let reason = match bound.or(self.lower_bound.as_deref()) {
+            Some(bound) => format!("M and N together come to {used:.2} by {by}; {bound}"),
+            None => format!("M and N together come to {used:.2} by {by}, which proves no failure"),
+        };
+        let verdict = Verdict {
+            about: About::Axial,
+            state: if met { State::Met } else { State::Unproven },
+            required: Some(n.kn()),
+            resistance: Some(own.force.kn()),
+            unit: "kN",
+            utilisation: Some(used).filter(|used| used.is_finite()),
+            governed_by: component.title.clone(),
+            reason: (!met).then_some(reason),
+        };
+        (verdict, Some(component))
     }
 
     fn verdict(
@@ -434,7 +511,12 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
             .filter(|c| matches!(c.id.as_str(), "flange-weld" | "web-weld"))
             .max_by(|a, b| used(a).total_cmp(&used(b)));
         let Some(worst) = worst else {
-            return unproven(About::Weld, Some(required), "no weld could be computed".into());
+            if !self.n.sides().all(PlateSide::no_fillet_pulled) {
+                return unproven(About::Weld, Some(required), "no weld could be computed".into());
+            }
+            let limit = resistance.without_welds.knm();
+            let governs = "butt weld as strong as the weaker part".into();
+            return self.verdict(About::Weld, required.knm().abs(), limit, "kNm", governs, bound);
         };
         // Without a row in tension nothing pulls at the welds: they carry as much as the rest does.
         let limit = match used(worst) {

@@ -24,7 +24,8 @@ pub fn resistance(
     let mut notes = Vec::new();
     let side = TensionSide::new(n, rulebook, beta)?;
     let limits = side.limits();
-    let totals = totals::totals(n, rulebook, beta, beside, &mut notes)?;
+    let web_range = n.column().map(|column| side.web_range(column));
+    let totals = totals::totals(n, rulebook, beta, beside, web_range, &mut notes)?;
     let arms: Vec<Length> = side.rows.iter().map(|row| n.lever_arm(row)).collect();
     let heights: Vec<Length> = side.rows.iter().map(|row| row.height).collect();
     let numbers: Vec<usize> = side.rows.iter().map(|row| row.number).collect();

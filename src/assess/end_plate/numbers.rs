@@ -1,12 +1,14 @@
 //! The numbers of an end-plate joint: what the layout states and the rulebook adds, or what is missing.
 
 mod column_side;
+mod haunch_side;
 mod noted;
 mod plate_side;
 
 use std::sync::Arc;
 
 pub use column_side::{ColumnSide, StiffenerPair};
+pub use haunch_side::HaunchSide;
 pub use noted::Noted;
 use noted::print_length;
 use plate_side::NOISE;
@@ -76,7 +78,10 @@ pub struct BoltNumbers {
     pub f_ub: Stress,
     pub A_s: Area,
     pub A: Area,
+    /// With the thread in the shear plane.
     pub alpha_v: f64,
+    /// Whether the thread lies in the shear plane; `None` where the model does not show it.
+    pub thread_in_plane: Option<bool>,
     pub washer: Length,
     pub washer_thickness: Length,
     pub head: Length,
@@ -134,8 +139,9 @@ impl Numbers {
                 (ends, other.map(Behind::Plate))
             }
         };
-        let bolts = BoltNumbers::gather(joint.bolts, rulebook, noted);
-        let (behind, ends, bolts) = (behind?, ends?, bolts?);
+        let haunch = HaunchSide::gather(joint.side.haunch, ends.as_ref(), rulebook, noted);
+        let bolts = BoltNumbers::gather(joint.bolts, joint.plies(), rulebook, noted);
+        let (behind, ends, haunch, bolts) = (behind?, ends?, haunch?, bolts?);
 
         let other_h = if let Behind::Plate(other) = &behind { Some(other.beam.h) } else { None };
         let reasons = sound::reasons(joint, ends.beam.h, other_h, &bolts, rulebook);
@@ -146,13 +152,13 @@ impl Numbers {
             return None;
         }
         let mut w = Working::default();
-        let side = ends.with(joint.side, &bolts, rulebook, noted, &mut w);
+        let side = ends.with(joint.side, haunch, &bolts, rulebook, noted, &mut w);
         let support = match (behind, joint.support) {
             (Behind::Column(column), joints::Support::Column(layout)) => {
                 Some(Support::Column(column.with(layout, &bolts, rulebook, &mut w)))
             }
             (Behind::Plate(other), joints::Support::Plate(laid)) => {
-                other.with(laid, &bolts, rulebook, noted, &mut w).map(Support::Plate)
+                other.with(laid, None, &bolts, rulebook, noted, &mut w).map(Support::Plate)
             }
             _ => None,
         };
@@ -212,17 +218,30 @@ impl Numbers {
         self.least(|side| row.height - side.compression())
     }
 
-    /// The same joint turned upside down, so that its lower side is the tension side.
+    /// The same joint turned upside down, so that its lower side is the tension side. A haunch is left out then, with the
+    /// rows beside it: what is left carries no more than the whole.
     pub fn upside_down(&self) -> Self {
         let h = self.side.beam.h;
+        let mut rows = self.rows.clone();
+        if self.side.haunch.is_some() {
+            rows.retain(|row| row.height >= self.side.soffit);
+        }
+        let left_out = match (rows.last(), self.rows.last()) {
+            (Some(last), Some(lowest)) => last.height - lowest.height,
+            _ => Length::ZERO,
+        };
         Self {
             side: self.side.upside_down(h),
             support: match &self.support {
-                Support::Column(column) => Support::Column(column.upside_down(h)),
+                Support::Column(column) => {
+                    let mut column = column.upside_down(h);
+                    column.above = column.above.map(|above| above + left_out);
+                    Support::Column(column)
+                }
                 Support::Plate(other) => Support::Plate(other.upside_down(h)),
                 Support::Twin => Support::Twin,
             },
-            rows: self.rows.iter().rev().map(|row| Row { height: h - row.height, ..*row }).collect(),
+            rows: rows.iter().rev().map(|row| Row { height: h - row.height, ..*row }).collect(),
             ..self.clone()
         }
     }
@@ -234,7 +253,13 @@ impl Numbers {
 }
 
 impl BoltNumbers {
-    fn gather(laid: &joints::Bolts, rulebook: &Rulebook, noted: &mut Noted) -> Option<Self> {
+    /// `plies`: thickness of both plies, where known.
+    fn gather(
+        laid: &joints::Bolts,
+        plies: Option<[Length; 2]>,
+        rulebook: &Rulebook,
+        noted: &mut Noted,
+    ) -> Option<Self> {
         let d = noted.take("bolt diameter", &laid.diameter, print_length);
         let class = noted.take("bolt class", &laid.class, String::clone);
         let d_0 = noted.take("bolt hole", &laid.hole, print_length);
@@ -265,6 +290,24 @@ impl BoltNumbers {
             "head and nut across flats {}, the smallest that the product standards allow, for punching",
             size.across_flats
         ));
+        let thread_in_plane = laid.held.shank.zip(plies).map(|(shank, [a, b])| {
+            // From under the head, which may be on either side, through a washer to the furthest shear plane.
+            let packing: Length = laid.held.packing.iter().copied().sum();
+            let plane = a.max(b) + packing + rulebook.distances.washers * size.washer_thickness;
+            let in_plane = !(shank >= plane);
+            if !in_plane {
+                noted.given("shank without thread", shank, "the bolts' stated length less their thread's");
+            }
+            in_plane
+        });
+        noted.assumptions.push(match thread_in_plane {
+            Some(true) => "thread in the shear plane, by the bolts' length and thread".into(),
+            Some(false) => "shank in the shear plane, by the bolts' length and thread".into(),
+            None if rulebook.settings.thread_in_shear_plane => {
+                "thread in the shear plane: no model says where it ends".into()
+            }
+            None => "shank in the shear plane, by the rule file: no model says where the thread ends".into(),
+        });
         let slip = slip(&laid.held, &class.name, rulebook, noted);
         let packing: Length = laid.held.packing.iter().copied().sum();
         for t_p in &laid.held.packing {
@@ -282,6 +325,7 @@ impl BoltNumbers {
             A_s: size.a_s,
             A: size.a,
             alpha_v: class.alpha_v,
+            thread_in_plane,
             washer: size.washer,
             washer_thickness: size.washer_thickness,
             head: size.head,

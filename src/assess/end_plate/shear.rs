@@ -34,8 +34,8 @@ pub enum Tension<'a> {
 /// row (each bolt the smaller of its shear and bearing resistance); the shear may act up or down, the worse counts.
 pub fn resistance(n: &Numbers, tension: Tension<'_>, rulebook: &Rulebook) -> ShearResistance {
     let gamma_M2 = rulebook.annex.gamma_m2;
-    let (alpha_v, area) =
-        if rulebook.settings.thread_in_shear_plane { (n.bolts.alpha_v, n.bolts.A_s) } else { (0.6, n.bolts.A) };
+    let thread = n.bolts.thread_in_plane.unwrap_or(rulebook.settings.thread_in_shear_plane);
+    let (alpha_v, area) = if thread { (n.bolts.alpha_v, n.bolts.A_s) } else { (rulebook.alpha_v_shank, n.bolts.A) };
     let shear = bolts::shear(alpha_v, n.bolts.f_ub, area, beta_hole(n), gamma_M2);
     let (beta_p, packing) = slip::packing(n.bolts.d, n.bolts.packing);
 

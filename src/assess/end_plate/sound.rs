@@ -77,10 +77,11 @@ fn plate_size(side: PlateSide<'_>, beam_h: Length, rulebook: &Rulebook, reasons:
     let position = rulebook.tolerances.position;
     let (bottom, top) = (plate.bottom - soffit, plate.top - soffit);
     let finite = bottom.get().is_finite() && top.get().is_finite();
-    if !(finite && bottom <= position && top >= beam_h - position) {
+    let depth = side.haunch.map_or(Length::ZERO, |haunch| haunch.depth);
+    if !(finite && bottom <= position - depth && top >= beam_h - position) {
         reasons.push((
             "end plate shorter than the beam",
-            format!("it reaches from {bottom} to {top} above the soffit, the beam from 0 to {beam_h}"),
+            format!("it reaches from {bottom} to {top} above the soffit, the beam from {} to {beam_h}", -depth),
         ));
     }
 }

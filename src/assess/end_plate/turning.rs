@@ -30,7 +30,11 @@ pub fn stiffness(
     let mut springs = Vec::new();
     if let Some(column) = n.column() {
         let section = &column.section;
-        let k_1 = stiffness::web_panel(&mut w, section.a_v_z, beta, z);
+        // Table 6.11: a panel with diagonals does not give way.
+        let k_1 = match column.strengthened.diagonals.as_slice() {
+            [] => stiffness::web_panel(&mut w, section.a_v_z, beta, z),
+            _ => None,
+        };
         let k_2 = (!totals::stiffens(n, column)).then(|| {
             let web = totals::web_in_compression(n, column, beta, 1.0);
             let b_eff = column_web::b_eff(&mut w, &web);
@@ -48,7 +52,7 @@ pub fn stiffness(
         Some(column) => {
             let M_c_pl_Rd = column.section.w_pl_y * column.strength.f_y_flange / gamma_M0;
             // A column that ends within a beam's depth is one at its top.
-            let runs_on = [column.above, column.below].into_iter().flatten().all(|end| end > n.side.beam.h);
+            let runs_on = [column.above, column.below].into_iter().flatten().all(|end| end > n.side.depth());
             classification::full_strength(&mut w, M_b_pl_Rd, M_c_pl_Rd, runs_on)
         }
         None => M_b_pl_Rd,

@@ -2,9 +2,9 @@
 #![allow(non_snake_case)]
 
 use super::limits::Limit;
-use super::numbers::PlateSide;
+use super::numbers::{HaunchSide, PlateSide};
 use crate::assess::{Component, RowForce};
-use crate::eurocode::welds;
+use crate::eurocode::{Resistance, welds};
 use crate::joints::Which;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Length};
@@ -110,6 +110,12 @@ pub fn web_length(n: &PlateSide, limits: &[Limit], row: usize) -> Length {
     limits.iter().find(own).map_or(Length::ZERO, |limit| limit.length)
 }
 
+/// What the web's fillets carry across over a length, both sides of the web; `None` where not known.
+pub fn over_web(n: &PlateSide, rulebook: &Rulebook, length: Length) -> Option<Force> {
+    let (beta_w, f_u) = parts(n)?;
+    Some(2.0 * welds::across(n.a_web?, f_u, beta_w, rulebook.annex.gamma_m2).per_length * length)
+}
+
 /// The web's fillets against the vertical shear: the length of web below the rows in tension. `None` where not known.
 pub fn in_shear(n: &PlateSide, rulebook: &Rulebook, tension_reach: Length) -> Option<Component> {
     let (beta_w, f_u) = parts(n)?;
@@ -118,7 +124,16 @@ pub fn in_shear(n: &PlateSide, rulebook: &Rulebook, tension_reach: Length) -> Op
     let (F_w_Rd, h, t_f, r) = (fillet.per_length, n.beam.h, n.beam.t_f, n.r_b_most);
     given!(w, "beam web"; h, t_f, r, tension_reach);
     step!(w, "the web below the rows in tension", l_w = (h - 2.0 * (t_f + r) - tension_reach).max(Length::ZERO));
-    step!(w, "both sides of the web, 4.5.3.2", V_w_Rd = 2.0 * F_w_Rd * l_w);
+    let mut V_haunch = Force::ZERO;
+    if let Some((haunch, a)) = n.haunch.as_ref().and_then(|haunch| haunch.a_web.map(|a| (haunch, a))) {
+        let fillet = welds::along(a, f_u, beta_w, rulebook.annex.gamma_m2);
+        w.absorb(fillet.working);
+        let (F_wh_Rd, h_h, t_fh) = (fillet.per_length, haunch.depth, haunch.upright());
+        given!(w, "the haunch's web"; F_wh_Rd, h_h, t_fh);
+        step!(w, "both sides of the haunch's web", V_wh_Rd = 2.0 * F_wh_Rd * (h_h - t_fh));
+        V_haunch = V_wh_Rd;
+    }
+    step!(w, "both sides of the web, 4.5.3.2", V_w_Rd = 2.0 * F_w_Rd * l_w + V_haunch);
     Some(Component {
         id: "web-weld-in-shear".into(),
         title: format!("weld at the web in shear{}", n.which.suffix()),
@@ -127,4 +142,17 @@ pub fn in_shear(n: &PlateSide, rulebook: &Rulebook, tension_reach: Length) -> Op
         at_full: Force::ZERO,
         working: w.into(),
     })
+}
+
+/// The fillets of the haunch's flange against that part of its force that runs along the end plate; the part square to the
+/// plate bears in contact. `None` where a throat or a grade is not known.
+pub fn of_haunch(n: &PlateSide, haunch: &HaunchSide, rulebook: &Rulebook) -> Option<Resistance> {
+    let (beta_w, f_u) = parts(n)?;
+    let fillet = welds::across(haunch.a_flange?, f_u, beta_w, rulebook.annex.gamma_m2);
+    let mut w = fillet.working;
+    let (F_w_Rd, b_f, t_w, b_p) = (fillet.per_length, haunch.b_f, haunch.t_w, n.b_p);
+    given!(w, "haunch flange on the plate"; b_f, t_w, b_p);
+    step!(w, "its upper face, 4.5.1", l_w = b_f.min(b_p) - t_w);
+    step!(w, "4.5.3.2", F_haunch_w_Rd = F_w_Rd * l_w);
+    Some(Resistance { value: F_haunch_w_Rd, working: w })
 }

@@ -170,6 +170,13 @@ impl<'x> Reader<'x> {
                     parser.text(text, spot);
                 }
             }
+            Piece::Escape(escape) => {
+                if !parser.is_skipping() {
+                    let spot = self.ruler.spot(self.scanner.at - escape.len());
+                    let text = head::text(self.document, escape, spot, &mut parser.problems);
+                    parser.text(text, spot);
+                }
+            }
             Piece::EndOfFile => return if self.scanner.open.is_empty() { Ok(false) } else { Err(Unusual) },
         }
         Ok(true)

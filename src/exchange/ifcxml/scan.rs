@@ -1,8 +1,8 @@
-//! A quick look at plain XML: start tags with well-formed attributes, end tags, text without escapes, comments. At
+//! A quick look at plain XML: start tags with well-formed attributes, end tags, text, comments. At
 //! anything else it gives up, and the whole document is read by the library's reader, which knows all of XML and says
 //! what is wrong with it. So the two must agree in nothing but what is plain.
 
-use memchr::{memchr, memchr2, memmem};
+use memchr::{memchr2, memmem};
 
 /// Something that is not plain.
 pub(super) struct Unusual;
@@ -17,8 +17,10 @@ pub(super) enum Piece<'x> {
         is_empty: bool,
     },
     End,
-    /// Not empty.
+    /// Not empty; between two escapes and tags.
     Text(&'x [u8]),
+    /// `&amp;` and its like.
+    Escape(&'x [u8]),
     EndOfFile,
 }
 
@@ -61,17 +63,20 @@ impl<'x> Scanner<'x> {
                 [b'<', b'?', ..] => self.at += 2 + memmem::find(&rest[2..], b"?>").ok_or(Unusual)? + 2,
                 [b'<', b'!', ..] => return Err(Unusual),
                 [b'<', ..] => return self.start(),
+                [b'&', after @ ..] => {
+                    let name = after.iter().position(|byte| !byte.is_ascii_alphanumeric() && *byte != b'#');
+                    let length = name.filter(|at| *at > 0 && after[*at] == b';').ok_or(Unusual)? + 2;
+                    self.at += length;
+                    return Ok(Piece::Escape(&rest[..length]));
+                }
                 _ => {
                     let blank = rest.iter().position(|byte| !matches!(byte, b'\n' | b' ')).unwrap_or(rest.len());
-                    let length = match rest.get(blank) {
-                        Some(b'<') | None => blank,
-                        Some(_) => blank + memchr(b'<', &rest[blank..]).unwrap_or(rest.len() - blank),
+                    let more = match rest.get(blank) {
+                        Some(b'<') | None => 0,
+                        Some(_) => memchr2(b'<', b'&', &rest[blank..]).unwrap_or(rest.len() - blank),
                     };
-                    let text = &rest[..length];
-                    if memchr(b'&', &text[blank..]).is_some() {
-                        return Err(Unusual);
-                    }
-                    self.at += length;
+                    let text = &rest[..blank + more];
+                    self.at += text.len();
                     return Ok(Piece::Text(text));
                 }
             }
@@ -133,6 +138,16 @@ impl<'x> Scanner<'x> {
 }
 
 /// Whether a byte may be part of a plain name; what is not ASCII is looked at by others.
+#[inline]
 fn is_of_name(byte: u8) -> bool {
-    byte.is_ascii_alphanumeric() || matches!(byte, b'_' | b'-' | b'.' | b':')
+    const OF_NAME: [bool; 256] = {
+        let mut of_name = [false; 256];
+        let mut byte = 0;
+        while byte < 128 {
+            of_name[byte] = (byte as u8).is_ascii_alphanumeric() || matches!(byte as u8, b'_' | b'-' | b'.' | b':');
+            byte += 1;
+        }
+        of_name
+    };
+    OF_NAME[usize::from(byte)]
 }

@@ -81,7 +81,17 @@ impl<'a> Cursor<'a> {
 
     /// Everything up to the next mark or blank, which may be empty.
     pub fn word(&mut self) -> &'a [u8] {
-        self.take_while(|b| b > b' ' && !matches!(b, b',' | b'(' | b')' | b';' | b'\'' | b'"' | b'/' | 0xA0 | 0xC2))
+        const ENDS: [bool; 256] = {
+            let mut ends = [false; 256];
+            let mut byte = 0;
+            while byte < 256 {
+                ends[byte] =
+                    byte <= 0x20 || matches!(byte as u8, b',' | b'(' | b')' | b';' | b'\'' | b'"' | b'/' | 0xA0 | 0xC2);
+                byte += 1;
+            }
+            ends
+        };
+        self.take_while(|b| !ENDS[usize::from(b)])
     }
 
     /// What stands between the quotes, the first of which comes next; quotes as they are written.

@@ -41,6 +41,10 @@ struct Reader<'a> {
     items: Vec<Cell>,
     /// The numbers in references that have no room in one.
     large: Vec<u64>,
+    /// The references in the attribute that is being read.
+    recent: Vec<u64>,
+    /// References in values that were not kept, and who refers.
+    dropped: Vec<(Id, u64)>,
     /// Where the first text that is not UTF-8 stands, and how many there are.
     latin1: Option<(Spot, usize)>,
     limits: Limits,
@@ -61,6 +65,8 @@ pub(super) fn read(bytes: &[u8], problems: Problems, file: Arc<str>, limits: Lim
         problems,
         items: Vec::new(),
         large: Vec::new(),
+        recent: Vec::new(),
+        dropped: Vec::new(),
         latin1: None,
         limits,
         started: 0,
@@ -175,15 +181,23 @@ impl Reader<'_> {
         let numbers = Numbers::of(&self.entities, &mut self.problems);
         let large = self.large;
         let number = |id: Id| numbers::number(id, &large);
-        if self.entities.settle(|id| numbers.find(number(id)?)) {
+        let is_missing = self.entities.settle(|id| numbers.find(number(id)?));
+        self.dropped.retain(|(_, number)| numbers.find(*number).is_none());
+        if is_missing || !self.dropped.is_empty() {
+            let mut dropped = self.dropped.as_slice();
             for from in (0..self.entities.len() as u32).map(Id) {
                 let entity = self.entities.get(from);
-                self.entities.each_reference(from, &mut |id| {
-                    let Some(number) = number(id) else { return };
+                let mut missing = Vec::new();
+                self.entities.each_reference(from, &mut |id| missing.extend(number(id)));
+                while let Some(((_, number), others)) = dropped.split_first().filter(|((id, _), _)| *id == from) {
+                    missing.push(*number);
+                    dropped = others;
+                }
+                for number in missing {
                     self.problems.add("reference to nothing", entity.spot(), || {
                         format!("{} {} refers to #{number}, but no entity has that id", entity.class(), entity.label())
                     });
-                });
+                }
             }
             self.entities.drop_waiting();
         }

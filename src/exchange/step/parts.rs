@@ -8,7 +8,7 @@ use memchr::memmem;
 use rayon::prelude::*;
 
 use super::super::Entities;
-use super::{Reader, numbers};
+use super::{Id, Reader, numbers};
 
 impl<'a> Reader<'a> {
     /// Reads as many records of the section as come one after the other, of a long one.
@@ -45,6 +45,8 @@ impl<'a> Reader<'a> {
             problems: self.problems.without_any(),
             items: Vec::new(),
             large: Vec::new(),
+            recent: Vec::new(),
+            dropped: Vec::new(),
             latin1: None,
             limits: self.limits,
             started: start,
@@ -56,7 +58,8 @@ impl<'a> Reader<'a> {
     }
 
     fn absorb(&mut self, part: Self) {
-        let large = self.large.len();
+        let (ids, large) = (self.entities.len() as u32, self.large.len());
+        self.dropped.extend(part.dropped.into_iter().map(|(id, number)| (Id(id.0 + ids), number)));
         if self.entities.is_empty() {
             self.entities = part.entities;
         } else {

@@ -4,7 +4,6 @@ use super::super::Id;
 use super::super::problems::{Sort, Spot};
 use super::super::scalar::quoted;
 use super::super::schema::{Attribute, Kind};
-use super::super::store::Cell;
 use super::Reader;
 use super::cursor::starts_record;
 
@@ -100,7 +99,11 @@ impl Reader<'_> {
             match known.get(*given) {
                 Some(attribute) => {
                     let value = self.attribute(attribute.kind, At { id, spot, attribute: attribute.name })?;
-                    self.entities.set(id, *given, if attribute.derived { Cell::ABSENT } else { value });
+                    if attribute.derived {
+                        self.drop_recent(id);
+                    } else {
+                        self.entities.set(id, *given, value);
+                    }
                 }
                 None => {
                     let name = (*given + 1).to_string();

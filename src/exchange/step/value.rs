@@ -1,5 +1,6 @@
 //! The values in a record, by the kinds that the schema asks for.
 
+use super::super::Id;
 use super::super::scalar::{self, quoted};
 use super::super::schema::{Base, Kind};
 use super::super::store::{Cell, Store};
@@ -26,14 +27,24 @@ impl Reader<'_> {
     /// # Errors
     /// The record is broken here.
     pub(super) fn attribute(&mut self, kind: Kind, at: At) -> Result<Cell, String> {
+        self.recent.clear();
         match self.value(kind, at, 0) {
             Ok(value) => Ok(value),
-            Err(Trouble::Broken(wrong)) => Err(wrong),
+            Err(Trouble::Broken(wrong)) => {
+                self.drop_recent(at.id);
+                Err(wrong)
+            }
             Err(Trouble::Wrong(wrong)) => {
+                self.drop_recent(at.id);
                 self.note("value that is not understood", at, |named| format!("{named} {wrong}"));
                 Ok(Cell::ABSENT)
             }
         }
+    }
+
+    /// Notes that the attribute that was read last is not kept: what it refers to is looked for all the same.
+    pub(super) fn drop_recent(&mut self, from: Id) {
+        self.dropped.extend(self.recent.drain(..).map(|number| (from, number)));
     }
 
     fn value(&mut self, kind: Kind, at: At, level: usize) -> Read<Cell> {
@@ -126,6 +137,7 @@ impl Reader<'_> {
             Some(number) => number,
             None => self.odd_reference()?,
         };
+        self.recent.push(number);
         Ok(Cell::entity(numbers::reference(number, &mut self.large)))
     }
 

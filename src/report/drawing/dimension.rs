@@ -6,8 +6,11 @@ use crate::report::number;
 /// Figures that stand closer than this would run into each other, mm of paper.
 const APART: f64 = 3.1;
 
-/// A length as it is written on a drawing: to a tenth, without a useless zero.
+/// A length as it is written on a drawing: to a tenth, without a useless zero; a dash for what is no number.
 pub(in crate::report) fn figure(mm: f64) -> String {
+    if !mm.is_finite() {
+        return "-".into();
+    }
     let tenth = number::one_decimal(mm);
     tenth.strip_suffix(".0").unwrap_or(&tenth).to_owned()
 }

@@ -50,7 +50,17 @@ impl View<'_> {
         (self.x0 + self.to * out * self.scene.scale, self.scene.y(height))
     }
 
-    /// What the bolts go through on the other side, mm of steel.
+    /// What the bolts at a height go through on the other side, mm of steel.
+    fn grip(&self, height: f64) -> f64 {
+        let backing = match &self.scene.sketch.against {
+            Against::Column(part) => part.backing.as_slice(),
+            Against::Beam(_) => &[],
+        };
+        let behind = backing.iter().filter(|plate| plate.bottom_mm <= height && height <= plate.top_mm);
+        self.ply() + behind.map(|plate| plate.thickness_mm).fold(0.0, f64::max)
+    }
+
+    /// The flange or plate on the other side, mm of steel.
     fn ply(&self) -> f64 {
         match &self.scene.sketch.against {
             Against::Column(part) => part.column.flange_mm.unwrap_or(0.0),
@@ -68,6 +78,22 @@ impl View<'_> {
             let half = stiffener.thickness_mm / 2.0;
             let (a, b) = (self.at(-t_f - reach, stiffener.height_mm - half), self.at(-t_f, stiffener.height_mm + half));
             canvas.rect(if stiffener.both_sides { Ink::Cut } else { Ink::Plate }, a, b);
+        }
+        for plate in &part.web_plates {
+            let (middle, half) = (-h / 2.0, plate.width_mm / 2.0);
+            let (a, b) = (self.at(middle - half, plate.bottom_mm), self.at(middle + half, plate.top_mm));
+            canvas.rect(Ink::Hidden, a, b);
+        }
+        for diagonal in &part.diagonals {
+            let half = diagonal.thickness_mm / 2.0;
+            let ends = [(-t_f, diagonal.near_mm, half), (-t_f, diagonal.near_mm, -half)];
+            let others = [(t_f - h, diagonal.far_mm, -half), (t_f - h, diagonal.far_mm, half)];
+            let points = ends.into_iter().chain(others).map(|(x, y, half)| self.at(x, y + half));
+            let ink = if diagonal.both_sides { Ink::Cut } else { Ink::Plate };
+            canvas.polygon(ink, &points.collect::<Vec<_>>());
+        }
+        for plate in &part.backing {
+            canvas.rect(Ink::Cut, self.at(-t_f - plate.thickness_mm, plate.bottom_mm), self.at(-t_f, plate.top_mm));
         }
         let edges = if t_f > 0.0 { vec![-h, t_f - h, -t_f, 0.0] } else { vec![-h, 0.0] };
         for x in edges {
@@ -95,9 +121,10 @@ impl View<'_> {
     /// Heads and nuts at both ends of each bolt, its axis, its row's number.
     fn bolts(&self, canvas: &mut Canvas) {
         let sketch = self.scene.sketch;
-        let (t_p, ply) = (sketch.end.plate.thickness_mm, self.ply());
+        let t_p = sketch.end.plate.thickness_mm;
         for (i, row) in sketch.rows.iter().enumerate() {
             let y = row.height_mm;
+            let ply = self.grip(y);
             let reach = sketch.bolt_mm.unwrap_or(0.0);
             if let Some(d) = sketch.bolt_mm {
                 canvas.rect(Ink::Bolt, self.at(-ply - 0.8 * d, y - 0.8 * d), self.at(-ply, y + 0.8 * d));
@@ -138,10 +165,11 @@ impl View<'_> {
         let taken = |y: f64| rows.iter().map(|row| (row.height_mm - y).abs()).fold(f64::INFINITY, f64::min);
         let free = (2..=8).map(|part| low + f64::from(part) / 10.0 * h);
         let middle = free.max_by(|a, b| taken(*a).total_cmp(&taken(*b))).unwrap_or(low + h / 2.0);
-        let anchor = if self.to > 0.0 { Anchor::Start } else { Anchor::End };
+        // On the left the rows' numbers come first.
+        let (anchor, aside) = if self.to > 0.0 { (Anchor::Start, 2.2) } else { (Anchor::End, 18.0) };
         for (a, y, shift) in [(top, high - t_f, 3.0), (web, middle, 0.95), (bottom, low + t_f, -0.8)] {
             let (x, y) = self.at(t_p, y);
-            canvas.text("", anchor, (x + 2.2 * self.to, y + shift), &said(a));
+            canvas.text("", anchor, (x + aside * self.to, y + shift), &said(a));
         }
     }
 
@@ -198,7 +226,8 @@ impl View<'_> {
         let flange = if at_top { h - t_b } else { 0.0 };
         let tension = if at_top { 0.0 } else { h - t_b };
         let spread = 0.12 * h;
-        let places: [(&[&str], (f64, f64), (f64, f64)); 10] = [
+        type Corner = (f64, f64);
+        let places: [(&[&str], Corner, Corner); 10] = [
             (&["column-web-panel"], (t_c - h_c, 0.0), (-t_c, h)),
             (&["column-web-in-compression"], (t_c - h_c, flange - spread), (-t_c, flange + t_b + spread)),
             (&["column-web", "column-stiffener", "stiffener"], (t_c - h_c, lower), (-t_c, upper)),

@@ -133,7 +133,14 @@ fn described(scene: &Scene<'_>) -> String {
     };
     let other = match &sketch.against {
         Against::Column(part) => {
-            format!("column {} with {} stiffeners", part.column.label, part.stiffeners.len())
+            let counts = [
+                (part.stiffeners.len(), "stiffeners"),
+                (part.web_plates.len(), "web plates"),
+                (part.diagonals.len(), "diagonals"),
+                (part.backing.len(), "backing plates"),
+            ];
+            let with: Vec<String> = counts.map(|(count, what)| format!("{count} {what}")).into();
+            format!("column {} with {}", part.column.label, with.join(", "))
         }
         Against::Beam(other) => format!("against it {}", end(other)),
     };

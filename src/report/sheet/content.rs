@@ -1,8 +1,8 @@
 //! What stands on a sheet, in order; how it looks is a matter of [`text`](super::text) and [`html`](super::html).
 
 use super::formula::{Line, Piece, text};
-use super::parts;
 use super::working::{self, WorkLine};
+use super::{geometry, parts};
 use crate::report::group;
 use crate::review::{CheckResult, JointReview, Review};
 use crate::working::Working;
@@ -71,6 +71,8 @@ pub(super) struct Sheet {
 
 /// The sheet of a joint.
 pub(super) fn sheet(review: &Review, joint: &JointReview) -> Sheet {
+    let common =
+        [("gamma_M0", review.basis.gamma_m0), ("gamma_M1", review.basis.gamma_m1), ("gamma_M2", review.basis.gamma_m2)];
     let mut sections: Vec<Section> = Vec::new();
     let mut add = |heading: &str, blocks: Vec<Block>| {
         let number = sections.iter().filter(|section| section.level == 2).count() + 1;
@@ -79,10 +81,10 @@ pub(super) fn sheet(review: &Review, joint: &JointReview) -> Sheet {
     };
     add("Outcome", parts::outcome(review, joint));
     if let Some(sketch) = &joint.sketch {
-        add("The joint as detailed", parts::detailed(sketch));
+        add("The joint as detailed", geometry::detailed(sketch));
     }
     if let Some((intended, detailed)) = &joint.difference {
-        add("Intended and detailed", parts::difference(joint, intended, detailed));
+        add("Intended and detailed", geometry::difference(joint, intended, detailed));
     }
     if !joint.inputs.is_empty() {
         add("Inputs and where they came from", vec![parts::inputs(review, joint)]);
@@ -93,11 +95,6 @@ pub(super) fn sheet(review: &Review, joint: &JointReview) -> Sheet {
     if !joint.checks.is_empty() {
         add("Checks", parts::checks(review, joint));
         let number = add("Working", vec![Block::Line(text(parts::HOW_TO_READ))]);
-        let common = [
-            ("gamma_M0", review.basis.gamma_m0),
-            ("gamma_M1", review.basis.gamma_m1),
-            ("gamma_M2", review.basis.gamma_m2),
-        ];
         let mut earlier: Vec<(String, &Working)> = Vec::new();
         for (i, check) in joint.checks.iter().enumerate().filter(|(_, check)| !check.working.steps.is_empty()) {
             let called = format!("{number}.{}", i + 1);
@@ -114,6 +111,9 @@ pub(super) fn sheet(review: &Review, joint: &JointReview) -> Sheet {
         let number = sections.iter().filter(|section| section.level == 2).count() + 1;
         sections.push(Section { level: 2, heading: format!("{number} {heading}"), blocks });
     };
+    if let Some(result) = &joint.stiffness {
+        add("Rotational stiffness and class", parts::stiffness(result, &common));
+    }
     add("Findings", parts::findings(review, joint));
     add("Unproven, and what to ask", parts::unproven(review, joint));
     add("Assumptions", parts::assumptions(joint));

@@ -3,8 +3,10 @@
 //! What stands on it is put together once ([`content`]) and drawn twice. Whatever checks a joint has are printed, none by
 //! name; formulas and numbers are those of the workings, so a sheet can't say anything else than what was computed.
 
+mod code;
 mod content;
 mod formula;
+mod geometry;
 mod html;
 mod parts;
 mod text;

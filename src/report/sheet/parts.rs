@@ -2,13 +2,12 @@
 
 use super::content::{Block, Table, governs};
 use super::formula::text;
-use super::working::shown;
+use super::working::{self, shown};
 use crate::origin::{Ask, Place};
 use crate::report::drawing::figure;
 use crate::report::number::{factor, one_decimal, utilisation};
 use crate::report::{group, hold};
-use crate::review::sketch::{Against, BeamEnd, ColumnPart, Sketch, SketchStiffener};
-use crate::review::{CAUTION, CheckResult, JointReview, Review};
+use crate::review::{CAUTION, CheckResult, JointReview, Review, StiffnessResult};
 use crate::units::Quantity;
 
 /// Said once above all workings.
@@ -17,7 +16,7 @@ numbers are rounded for reading and were computed unrounded. A step without its 
 page. Lengths in mm, forces in kN, moments in kNm, strengths in N/mm². E = 210000 N/mm² (EN 1993-1-1 3.2.6).";
 
 /// One decimal, or a dash for what nobody stated or is no number.
-fn plain(value: Option<f64>) -> String {
+pub(super) fn plain(value: Option<f64>) -> String {
     value.filter(|v| v.is_finite()).map_or_else(|| "-".into(), one_decimal)
 }
 
@@ -97,81 +96,6 @@ pub(super) fn outcome(review: &Review, joint: &JointReview) -> Vec<Block> {
     }));
     blocks.push(Block::Table(table));
     blocks
-}
-
-/// The drawing and its measures.
-pub(super) fn detailed(sketch: &Sketch) -> Vec<Block> {
-    let mut pairs = beam_end("beam", "end plate", "welds", &sketch.end);
-    let other = match &sketch.against {
-        Against::Beam(end) => {
-            pairs.extend(beam_end("other beam", "other end plate", "other welds", end));
-            ">edge of other plate"
-        }
-        Against::Column(part) => {
-            pairs.insert(0, ("column", part.column.label.clone()));
-            pairs.push(("stiffeners", stiffeners(part)));
-            ">edge of column flange"
-        }
-    };
-    pairs.push(("bolts", sketch.bolts.clone()));
-    let head = ["row", ">height", ">gauge", ">edge of plate", other, ">to the row above"];
-    let mut table = Table::new("Bolt rows, mm; heights from the soffit of the beam's lower flange", &head);
-    let mut above: Option<f64> = None;
-    for (i, row) in sketch.rows.iter().enumerate() {
-        let pitch = above.replace(row.height_mm).map(|above| above - row.height_mm);
-        table.rows.push(vec![
-            (i + 1).to_string(),
-            plain(Some(row.height_mm)),
-            plain(Some(row.gauge_mm)),
-            plain(Some(row.edge_plate_mm)),
-            plain(Some(row.edge_other_mm)),
-            plain(pitch),
-        ]);
-    }
-    vec![Block::Drawing, Block::Pairs(pairs), Block::Table(table)]
-}
-
-fn beam_end(
-    beam: &'static str,
-    plate: &'static str,
-    welds: &'static str,
-    end: &BeamEnd,
-) -> Vec<(&'static str, String)> {
-    let throat = |a: Option<f64>| a.map_or_else(|| "not known".into(), |a| format!("throat {} mm", figure(a)));
-    let [top, web, bottom] = end.throats_mm.map(throat);
-    let face = &end.plate;
-    let sizes = [face.width_mm, face.bottom_mm, face.top_mm].map(figure);
-    vec![
-        (beam, end.beam.label.clone()),
-        (plate, format!("{}, {} wide, from {} to {} mm", face.label, sizes[0], sizes[1], sizes[2])),
-        (welds, format!("top flange {top}; web {web}; lower flange {bottom}")),
-    ]
-}
-
-fn stiffeners(part: &ColumnPart) -> String {
-    let one = |s: &SketchStiffener| {
-        let sides = if s.both_sides { "a pair" } else { "on one side only" };
-        let depth = if s.full_depth { "" } else { ", not from flange to flange" };
-        format!("at {}, {} thick, {sides}{depth}", figure(s.height_mm), figure(s.thickness_mm))
-    };
-    let all: Vec<String> = part.stiffeners.iter().map(one).collect();
-    if all.is_empty() { "none".into() } else { all.join("; ") }
-}
-
-/// The intended detail beside what was detailed.
-pub(super) fn difference(joint: &JointReview, intended: &[String], detailed: &[String]) -> Vec<Block> {
-    let caption = joint.detail.as_ref().map_or("The detail".into(), |name| format!("Detail {name}"));
-    let mut table = Table::new(caption, &["intended", "", "detailed"]);
-    let ops = similar::capture_diff_slices(similar::Algorithm::Myers, intended, detailed);
-    for op in ops {
-        let (left, right) = (&intended[op.old_range()], &detailed[op.new_range()]);
-        for row in 0..left.len().max(right.len()) {
-            let cell = |side: &[String]| side.get(row).cloned().unwrap_or_else(|| "-".into());
-            let sign = if matches!(op, similar::DiffOp::Equal { .. }) { "" } else { "differs" };
-            table.rows.push(vec![cell(left), sign.into(), cell(right)]);
-        }
-    }
-    vec![Block::Table(table)]
 }
 
 /// Every number that entered a check.
@@ -270,16 +194,42 @@ pub(super) fn checks(review: &Review, joint: &JointReview) -> Vec<Block> {
 pub(super) fn result(joint: &JointReview, check: &CheckResult) -> Block {
     let acts = check.action.filter(|a| a.is_finite()).map(|a| format!(", acts {} {}", one_decimal(a), check.unit));
     let ratio = check.utilisation.map(|ratio| format!(", utilisation {}", utilisation(ratio)));
+    let needed = check.needed_throat_mm.map(|a| format!("; throat needed {} mm", figure(a)));
     let governs = if governs(joint, check) { "; governs" } else { "" };
     Block::Line(text(format!(
-        "{}: resistance {} {}{}{}: {}{governs}",
+        "{}: resistance {} {}{}{}: {}{}{governs}",
         check.clause,
         plain(check.resistance),
         check.unit,
         acts.unwrap_or_default(),
         ratio.unwrap_or_default(),
         check.outcome,
+        needed.unwrap_or_default(),
     )))
+}
+
+/// Rotational stiffness and class: the springs, then the working.
+pub(super) fn stiffness(result: &StiffnessResult, common: &[(&'static str, f64)]) -> Vec<Block> {
+    let beta = shown(result.beta.shown());
+    let finite = result.initial.is_finite();
+    let said = if finite { hold::turning(result) } else { format!("stiffness: no number; {}", result.strength) };
+    let mut blocks = vec![
+        Block::Line(text(format!("With {}, β = {beta}. {said}.", result.sense))),
+        Block::Line(text(format!(
+            "The analysis takes it for: {}. Rotation capacity: {}.",
+            result.assumed.unwrap_or("not stated"),
+            result.rotation.trim_end_matches('.')
+        ))),
+    ];
+    let mut table = Table::new("Springs in a row", &["spring", ">k mm"]);
+    let k = |k: Option<f64>| k.map_or_else(|| "infinitely stiff".into(), |k| plain(Some(k)));
+    table.rows.extend(result.springs.iter().map(|(name, own)| vec![name.clone(), k(*own)]));
+    blocks.push(Block::Table(table));
+    if !result.notes.is_empty() {
+        blocks.push(Block::List(result.notes.clone()));
+    }
+    blocks.push(Block::Working(working::lines(&result.working, &[], common)));
+    blocks
 }
 
 /// Findings, each with the parts it stands on and the place.

@@ -1,6 +1,7 @@
 //! A working line by line: what was given, then each step in symbols, in numbers, with its value and clause.
 
-use super::formula::{Line, Piece, Values, printed, text};
+use super::code::Values;
+use super::formula::{Line, Piece, printed, text};
 use crate::units::Shown;
 use crate::working::Working;
 

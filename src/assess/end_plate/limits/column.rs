@@ -3,6 +3,7 @@
 
 use super::{Limit, TensionSide, sum};
 use crate::assess::end_plate::numbers::{ColumnSide, Numbers, Row, StiffenerPair};
+use crate::assess::end_plate::{strengthening, totals};
 use crate::eurocode::effective_length::{self as el, EffectiveLength, RowPlace};
 use crate::eurocode::t_stub::{TStub, t_stub};
 use crate::eurocode::{Resistance, column_web, stiffeners};
@@ -159,7 +160,24 @@ impl TensionSide<'_> {
             n: n_e.min(1.25 * m),
             sum_F_t_Rd: self.bolt_force(first, last, column.B_p_Rd),
             mode_one: self.mode_one(),
+            backing: (column.strengthened)
+                .behind(self.rows[first].height, self.rows[last].height, self.n.bolts.d)
+                .filter(|_| stiffened),
         }
+    }
+
+    /// All of the column's web in tension and in compression: what a web plate must reach over to add to the panel
+    /// (6.2.6.1(10)), as far as there is a column.
+    pub(in crate::assess::end_plate) fn web_range(&self, column: &ColumnSide) -> (Length, Length) {
+        let n = self.n;
+        let stub = |i: usize| self.column_stub(column, i, i, false, column.r_most, &mut Working::default());
+        let hi = (0..self.rows.len()).map(|i| self.rows[i].height + 0.5 * stub(i).l_eff_1);
+        let hi = hi.fold(n.side.flange_top(), Length::max);
+        let web = totals::web_in_compression(n, column, self.beta, self.rulebook.settings.k_wc);
+        let lo = n.side.compression() - 0.5 * column_web::b_eff(&mut Working::default(), &web);
+        let top = n.rows.first().zip(column.above).map(|(row, above)| row.height + above);
+        let foot = n.rows.last().zip(column.below).map(|(row, below)| row.height - below);
+        (foot.map_or(lo, |foot| lo.max(foot)), top.map_or(hi, |top| hi.min(top)))
     }
 
     pub(super) fn column_limits(&self, column: &ColumnSide, first: usize, last: usize, limits: &mut Vec<Limit>) {
@@ -178,21 +196,18 @@ impl TensionSide<'_> {
         // A large radius brings the yield lines nearer and leaves less of the web.
         let mut w = Working::default();
         let length = self.column_stub(column, first, last, false, column.r_most, &mut w).l_eff_1.max(Length::ZERO);
-        let mut web = column_web::tension(
-            length,
-            column.section.t_w,
-            column.strength.f_y_web,
-            column.section.a_v_z,
-            self.beta,
-            self.gamma_M0(),
-        );
+        let middle = 0.5 * (self.rows[first].height + self.rows[last].height);
+        let range = (middle - 0.5 * length, middle + 0.5 * length);
+        let t_wc = strengthening::in_tension(column, range, &mut w);
+        let A_vc = strengthening::shear_area(column, self.web_range(column), self.rulebook, &mut w);
+        let mut web = column_web::tension(length, t_wc, column.strength.f_y_web, A_vc, self.beta, self.gamma_M0());
         w.absorb(web.working);
-        for pair in &pairs {
-            let stiffened = stiffeners::tension(&pair.plates(column), web.value, self.gamma_M0());
+        for pair in pairs.iter().filter(|pair| pair.full_depth) {
+            let stiffened = stiffeners::tension(&pair.plates(column), web.value, self.gamma_M0(), self.gamma_M2());
             w.absorb(stiffened.working);
             web.value = stiffened.value;
         }
-        let what = if pairs.is_empty() { "column web" } else { "column web and stiffener" };
+        let what = if !pairs.iter().any(|pair| pair.full_depth) { "column web" } else { "column web and stiffener" };
         limits.push(Limit {
             id: "column-web-in-tension",
             title: format!("{what} in tension, {}", self.named(first, last)),
@@ -233,12 +248,12 @@ impl TensionSide<'_> {
         };
         let value = match (beside_one, [share(first), share(last)].into_iter().flatten().reduce(f64::max)) {
             (Some(pair), Some(most)) => {
-                let support = stiffeners::support(&pair.plates(column), most, gamma_M0);
+                let support = stiffeners::support(&pair.plates(column), most, gamma_M0, self.gamma_M2());
                 w.absorb(support.working);
                 support.value.max(flange.value)
             }
             _ => pairs.iter().fold(flange.value, |value, pair| {
-                let with = stiffeners::tension(&pair.plates(column), value, gamma_M0);
+                let with = stiffeners::tension(&pair.plates(column), value, gamma_M0, self.gamma_M2());
                 w.absorb(with.working);
                 with.value
             }),

@@ -140,6 +140,7 @@ impl TensionSide<'_> {
             n: Length::ZERO,
             sum_F_t_Rd: self.bolt_force(first, last, plate.side.B_p_Rd),
             mode_one: self.mode_one(),
+            backing: None,
         }
     }
 }

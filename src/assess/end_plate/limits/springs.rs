@@ -15,7 +15,7 @@ impl TensionSide<'_> {
             .column()
             .map(|column| column.section.t_f)
             .into_iter()
-            .chain(self.plates.iter().map(|plate| plate.side.t_p))
+            .chain(self.plates.iter().map(|plate| plate.side.which.count() as f64 * plate.side.t_p))
             .sum();
         // One under the head and one under the nut: fewer make the bolts stiffer.
         let washers = 2.0 * bolts.washer_thickness;
@@ -36,7 +36,8 @@ impl TensionSide<'_> {
             }
             for plate in &self.plates {
                 let (l_eff, m) = self.least_on_plate(plate, i);
-                k.push(stiffness::plate_in_bending(w, l_eff, plate.side.t_p, m));
+                let k_5 = stiffness::plate_in_bending(w, l_eff, plate.side.t_p, m);
+                k.extend(std::iter::repeat_n(k_5, plate.side.which.count()));
             }
             crate::step!(w, "6.3.3.1, (6.30)", k_eff_r = stiffness::in_series(&k));
             springs.push((k_eff_r, self.n.lever_arm(row)));

@@ -2,12 +2,14 @@
 
 use super::noted::{Noted, R_MOST, print_length};
 use super::{BoltNumbers, MemberStrength};
+use crate::assess::end_plate::strengthening::{self, Members, Strengthened};
 use crate::assess::{Gap, Input};
 use crate::eurocode::bolts;
 use crate::eurocode::stiffeners::Pair;
+use crate::eurocode::welds::Fillets;
 use crate::joints::{EndPlateLayout, Stiffener};
 use crate::origin::{Ask, Datum, Missing, Origin};
-use crate::rulebook::{Rulebook, Section};
+use crate::rulebook::{Grade, Rulebook, Section};
 use crate::units::{Force, Length, Stress, mm};
 use crate::working::Working;
 
@@ -20,13 +22,28 @@ pub struct StiffenerPair {
     pub f_y: Stress,
     /// 0 if nobody states it: the safe geometry for m_2.
     pub throat: Length,
+    /// Its length along the column's depth.
+    pub reach: Length,
+    /// Whether it reaches from flange to flange; else it holds the flange in tension and nothing more.
+    pub full_depth: bool,
+    /// Its fillets, by its own f_u; `None` if nobody states them.
+    pub fillets: Option<Fillets>,
 }
 
 impl StiffenerPair {
     /// As the formulas take it: no wider than the column's flange, cut back by the column's root radius.
     pub fn plates(&self, column: &ColumnSide) -> Pair {
         let free = 0.5 * (column.section.b - column.section.t_w);
-        Pair { b_s: self.b_s.min(free), t_s: self.t_s, cope: column.r_most, f_y_s: self.f_y }
+        let cope = column.r_most;
+        Pair {
+            b_s: self.b_s.min(free),
+            t_s: self.t_s,
+            cope,
+            f_y_s: self.f_y,
+            l_s: (self.reach - if self.full_depth { 2.0 } else { 1.0 } * cope).max(Length::ZERO),
+            fillets: self.fillets.map(|own| Fillets { f_u: own.f_u.min(column.strength.f_u), ..own }),
+            ends_in_web: (!self.full_depth).then_some((column.section.t_w, column.strength.f_y_web)),
+        }
     }
 }
 
@@ -41,6 +58,7 @@ pub struct ColumnSide {
     pub r_most: Length,
     pub B_p_Rd: Force,
     pub stiffeners: Vec<StiffenerPair>,
+    pub strengthened: Strengthened,
     /// From the top row up to the column's end; `None` where it runs on.
     pub above: Option<Length>,
     /// From the lowest row down to the column's end.
@@ -53,15 +71,18 @@ pub(super) struct Member {
     strength: MemberStrength,
     r: Length,
     stiffeners: Vec<StiffenerPair>,
+    strengthened: Strengthened,
 }
 
 impl Member {
     /// `None` if something is missing without which no resistance can be computed.
     pub(super) fn gather(layout: &EndPlateLayout, rulebook: &Rulebook, noted: &mut Noted) -> Option<Self> {
         let member = noted.member("column", &layout.column, rulebook);
-        let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, rulebook)).collect();
+        let column_grade = layout.column.grade.as_ref().ok().map(|grade| &grade.value);
+        let stiffeners = layout.stiffeners.iter().filter_map(|s| credit(noted, s, column_grade, rulebook)).collect();
         // What strengthens and is not credited makes the joint no weaker, so a joint that fails without it is not proven to.
         for part in &layout.not_credited {
+            noted.not_credited.push(part.clone());
             noted.gaps.push(Gap::LowerBound(Missing {
                 what: "credit for a strengthening part".into(),
                 reason: part.clone(),
@@ -70,7 +91,12 @@ impl Member {
             }));
         }
         let (section, strength, r) = member?;
-        Some(Self { section, strength, r, stiffeners })
+        let beam = layout.beam.section.as_ref().map(|beam| &beam.value);
+        let strengthened = beam.map_or_else(
+            |_| Strengthened::default(),
+            |beam| strengthening::credit(noted, layout, &Members { column: &section, strength, beam }, rulebook),
+        );
+        Some(Self { section, strength, r, stiffeners, strengthened })
     }
 
     /// With the bolts; punching is worked out in `w`.
@@ -81,7 +107,7 @@ impl Member {
         rulebook: &Rulebook,
         w: &mut Working,
     ) -> ColumnSide {
-        let Self { section, strength, r, stiffeners } = self;
+        let Self { section, strength, r, stiffeners, strengthened } = self;
         let punching = bolts::punching(bolts.d_m, section.t_f, strength.f_u, rulebook.annex.gamma_m2);
         w.absorb(punching.working);
         ColumnSide {
@@ -90,6 +116,7 @@ impl Member {
             r_most: section.r.unwrap_or(R_MOST),
             B_p_Rd: punching.value,
             stiffeners,
+            strengthened,
             above: layout.column_above,
             below: layout.column_below,
             section,
@@ -103,6 +130,7 @@ impl ColumnSide {
         let turned = |s: &StiffenerPair| StiffenerPair { height: h - s.height, ..*s };
         Self {
             stiffeners: self.stiffeners.iter().rev().map(turned).collect(),
+            strengthened: self.strengthened.upside_down(h),
             above: self.below,
             below: self.above,
             ..self.clone()
@@ -110,30 +138,23 @@ impl ColumnSide {
     }
 }
 
-fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Option<StiffenerPair> {
+fn credit(
+    noted: &mut Noted,
+    stiffener: &Stiffener,
+    column_grade: Option<&Grade>,
+    rulebook: &Rulebook,
+) -> Option<StiffenerPair> {
     let at = format!("stiffener at {:.0} mm", stiffener.height.get());
     let mut refuse = |why: &str| {
         noted.assumptions.push(format!("{at} is not credited: {why}"));
         None
     };
-    let sizes = [stiffener.thickness, stiffener.outstand];
+    let sizes = [stiffener.thickness, stiffener.outstand, stiffener.reach];
     if !(stiffener.height.get().is_finite() && sizes.iter().all(|t| t.get().is_finite() && *t > mm(0.0))) {
         return refuse(&format!("a thickness of {} and an outstand of {}", stiffener.thickness, stiffener.outstand));
     }
     if !stiffener.both_sides {
         return refuse("it is on one side of the web only");
-    }
-    if !stiffener.full_depth {
-        const WHY: &str = "it does not reach from flange to flange (partial-depth stiffeners are not assessed yet)";
-        let refused = refuse(WHY);
-        // Like every strengthening part without credit: what fails without it is not proven to fail.
-        noted.gaps.push(Gap::LowerBound(Missing {
-            what: "credit for a strengthening part".into(),
-            reason: format!("{at}: {WHY}"),
-            at: None,
-            ask: Ask::Method,
-        }));
-        return refused;
     }
     let grade = match &stiffener.grade {
         Ok(grade) => grade,
@@ -149,23 +170,36 @@ fn credit(noted: &mut Noted, stiffener: &Stiffener, rulebook: &Rulebook) -> Opti
         print_length,
     ));
     noted.inputs.push(Input::of(&format!("{at}: grade"), grade, |g| g.0.clone()));
-    let throat = match &stiffener.weld {
-        Ok(weld) => {
-            noted.assumptions.push(format!("{at}: its own weld is not checked"));
-            weld.value
+    let beta_w = column_grade.and_then(|column| rulebook.beta_w(column)).zip(rulebook.beta_w(&grade.value));
+    let fillets = match (&stiffener.weld, beta_w) {
+        (Err(missing), _) => Err((missing.reason.clone(), missing.ask)),
+        (Ok(weld), _) if !(weld.value >= rulebook.welds.min_throat && weld.value.get().is_finite()) => {
+            let least = rulebook.welds.min_throat;
+            Err((
+                format!("a throat of {} is not counted, {least} is the least (4.5.2(2))", weld.value),
+                Ask::Fabricator,
+            ))
         }
-        Err(_) => {
-            noted.assumptions.push(format!(
-                "{at}: no throat known, m2 is measured to its face (the safe geometry) and its weld is not checked"
-            ));
-            mm(0.0)
+        (Ok(_), None) => Err(("β_w is not known for its grade and the column's".into(), Ask::Method)),
+        (Ok(weld), Some((column, own))) => {
+            noted.inputs.push(Input::of(&format!("{at}: weld"), weld, |a| format!("throat {a}")));
+            Ok(Fillets { a: weld.value, f_u: strength.value.f_u, beta_w: own.max(column) })
         }
     };
+    if let Err((reason, ask)) = &fillets {
+        noted.not_checked(&format!("weld of the {at}"), reason.clone(), *ask);
+        noted
+            .assumptions
+            .push(format!("{at}: its weld is not checked, and m2 is measured to its face (the safe geometry)"));
+    }
     Some(StiffenerPair {
         height: stiffener.height,
         b_s: stiffener.outstand,
         t_s: stiffener.thickness,
         f_y: strength.value.f_y,
-        throat,
+        throat: fillets.as_ref().map_or(mm(0.0), |fillets| fillets.a),
+        reach: stiffener.reach,
+        full_depth: stiffener.full_depth,
+        fillets: fillets.ok(),
     })
 }

@@ -16,6 +16,7 @@ pub struct Noted {
     pub inputs: Vec<Input>,
     pub assumptions: Vec<String>,
     pub gaps: Vec<Gap>,
+    pub not_credited: Vec<String>,
 }
 
 impl Noted {

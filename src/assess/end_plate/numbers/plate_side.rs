@@ -1,9 +1,10 @@
 //! The numbers of a beam with its end plate.
 
+use super::haunch_side::HaunchSide;
 use super::noted::{Noted, R_MOST};
 use super::{BoltNumbers, MemberStrength};
 use crate::eurocode::{beam, bolts};
-use crate::joints::{PlateSide as Laid, Which};
+use crate::joints::{FullButts, PlateSide as Laid, Which};
 use crate::origin::{Ask, Known};
 use crate::rulebook::{Grade, Rulebook, Section, Strength};
 use crate::units::{Force, Length, Modulus, mm};
@@ -38,18 +39,23 @@ pub struct PlateSide {
     pub a_tension: Option<Length>,
     pub a_compression: Option<Length>,
     pub a_web: Option<Length>,
+    /// Butt welds of full penetration, which have no fillet; for tension at the top as well.
+    pub full: FullButts,
+    /// The haunch below, on the compression side.
+    pub haunch: Option<HaunchSide>,
 }
 
 /// The numbers of a beam and its plate that do not depend on the bolts.
 pub(super) struct Ends {
     pub(super) beam: Section,
-    beam_strength: MemberStrength,
+    pub(super) beam_strength: MemberStrength,
     r_b: Length,
     plate_grade: Grade,
     strength: Strength,
     a_top: Option<Length>,
     a_bottom: Option<Length>,
     a_web: Option<Length>,
+    full: FullButts,
 }
 
 impl Ends {
@@ -69,24 +75,50 @@ impl Ends {
             .and_then(|grade| noted.strength(&format!("{of}end plate strength"), rulebook, grade, plate.thickness));
         let least = rulebook.welds.min_throat;
         let suffix = which.suffix();
-        let mut weld = |at: &str, known| throat(noted, &format!("weld at the {at}{suffix}"), known, least);
-        let a_top = weld("top flange", &laid.welds.flange_top);
-        let a_bottom = weld("bottom flange", &laid.welds.flange_bottom);
-        let a_web = weld("web", &laid.welds.web);
+        // On a plate narrower than the flange no weld is as strong as the flange.
+        let wide = beam.as_ref().is_some_and(|(beam, ..)| plate.width >= beam.b - rulebook.tolerances.position);
+        let laid_full = laid.welds.full;
+        let full = FullButts {
+            flange_top: laid_full.flange_top && wide,
+            flange_bottom: laid_full.flange_bottom && wide,
+            web: laid_full.web,
+        };
+        if full != laid_full {
+            let reason = "a butt weld on an end plate that is narrower than the flange: not assessed yet";
+            noted.not_checked(&format!("butt weld{}", which.suffix()), reason.into(), Ask::Method);
+        }
+        let mut weld = |at: &str, known: &Known<Length>, full: bool| {
+            let name = format!("weld at the {at}{suffix}");
+            if full { butt(noted, &name, known) } else { throat(noted, &name, known, least) }
+        };
+        let a_top = weld("top flange", &laid.welds.flange_top, full.flange_top);
+        let a_bottom = weld("bottom flange", &laid.welds.flange_bottom, full.flange_bottom);
+        let a_web = weld("web", &laid.welds.web, full.web);
         let (beam, beam_strength, r_b) = beam?;
-        Some(Self { beam, beam_strength, r_b, plate_grade: plate_grade?, strength: strength?, a_top, a_bottom, a_web })
+        Some(Self {
+            beam,
+            beam_strength,
+            r_b,
+            plate_grade: plate_grade?,
+            strength: strength?,
+            a_top,
+            a_bottom,
+            a_web,
+            full,
+        })
     }
 
     /// With the bolts; punching is worked out in `w`. `None` for a beam of class 4.
     pub(super) fn with(
         self,
         laid: Laid<'_>,
+        haunch: Option<HaunchSide>,
         bolts: &BoltNumbers,
         rulebook: &Rulebook,
         noted: &mut Noted,
         w: &mut Working,
     ) -> Option<PlateSide> {
-        let Self { beam, beam_strength, r_b, plate_grade, strength, a_top, a_bottom, a_web } = self;
+        let Self { beam, beam_strength, r_b, plate_grade, strength, a_top, a_bottom, a_web, full } = self;
         let clear = |section: &Section, r: Length| {
             (0.5 * (section.b - section.t_w - 2.0 * r), section.h - 2.0 * (section.t_f + r))
         };
@@ -118,6 +150,8 @@ impl Ends {
             a_tension: a_top,
             a_compression: a_bottom,
             a_web,
+            full,
+            haunch,
             beam,
         })
     }
@@ -129,9 +163,37 @@ impl PlateSide {
         self.soffit + self.beam.h
     }
 
-    /// Height of the centre of compression, the middle of the compression flange (6.2.7.1, Figure 6.15).
+    /// Height of the centre of compression, the middle of the compression flange (6.2.7.1, Figure 6.15), the haunch's if
+    /// there is one.
     pub fn compression(&self) -> Length {
-        self.soffit + 0.5 * self.beam.t_f
+        self.lowest() + 0.5 * self.compression_flange()
+    }
+
+    /// Thickness of the compression flange, measured along the end plate.
+    pub fn compression_flange(&self) -> Length {
+        self.haunch.as_ref().map_or(self.beam.t_f, HaunchSide::upright)
+    }
+
+    /// Height of the outer face of the compression flange.
+    pub fn lowest(&self) -> Length {
+        self.soffit - self.haunch.as_ref().map_or(Length::ZERO, |haunch| haunch.depth)
+    }
+
+    /// Depth of the beam, with its haunch.
+    pub fn depth(&self) -> Length {
+        self.flange_top() - self.lowest()
+    }
+
+    /// Whether both welds on the tension side are known.
+    pub fn welds_known(&self) -> bool {
+        (self.a_tension.is_some() || self.full.flange_top) && (self.a_web.is_some() || self.full.web)
+    }
+
+    /// Whether a side without any weld to compute has none that could fail: a butt weld at the flange, and at the web one
+    /// too or a fillet that no row pulls at.
+    pub fn no_fillet_pulled(&self) -> bool {
+        let fillets = self.beta_w_beam.is_some() && self.beta_w_plate.is_some();
+        self.full.flange_top && (self.full.web || fillets)
     }
 
     /// V_pl,Rd of the beam, EN 1993-1-1 6.2.6 (6.18).
@@ -167,7 +229,7 @@ impl PlateSide {
         rest(self) == rest(other) && lengths(self).zip(lengths(other)).all(same)
     }
 
-    /// The same upside down; `h` is the height that 0 is turned to.
+    /// The same upside down, without its haunch; `h` is the height that 0 is turned to.
     pub(super) fn upside_down(&self, h: Length) -> Self {
         Self {
             soffit: h - self.flange_top(),
@@ -175,9 +237,21 @@ impl PlateSide {
             bottom: h - self.top,
             a_tension: self.a_compression,
             a_compression: self.a_tension,
+            full: FullButts { flange_top: self.full.flange_bottom, flange_bottom: self.full.flange_top, ..self.full },
+            haunch: None,
             ..self.clone()
         }
     }
+}
+
+/// A butt weld of full penetration is as strong as the weaker part it joins (4.7.1) and is not checked; it has no fillet
+/// that anybody states, so there is no throat.
+fn butt(noted: &mut Noted, name: &str, known: &Known<Length>) -> Option<Length> {
+    noted.take(name, known, |t| format!("butt weld through {t}"));
+    noted
+        .assumptions
+        .push(format!("{name}: as strong as the weaker part (4.7.1), its weld metal no weaker than the steel"));
+    None
 }
 
 /// The throat, or the safe geometry (no fillet), said twice: the weld itself can't be checked, and the T-stubs beside it
