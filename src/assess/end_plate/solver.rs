@@ -38,6 +38,9 @@ struct Question {
     rule: Option<RowForces>,
 }
 
+/// A shear resistance with all that it depends on besides the rulebook.
+type Sheared = (Numbers, Drawn, Arc<ShearResistance>);
+
 /// What of the bolts' tension bears on their shear.
 #[derive(PartialEq)]
 enum Drawn {
@@ -111,7 +114,7 @@ impl<'a> Solver<'a> {
     pub fn shear(&self, n: &Numbers, tension: Tension<'_>) -> Arc<ShearResistance> {
         let drawn = Drawn::of(tension);
         let shelf = shelf(n, drawn.number(), Force::ZERO);
-        let asked = |(numbers, other, _): &&(Numbers, Drawn, Arc<ShearResistance>)| *other == drawn && numbers == n;
+        let asked = |(numbers, other, _): &&Sheared| *other == drawn && numbers == n;
         if let Some((.., known)) = locked(&self.sheared).get(&shelf).and_then(|entries| entries.iter().find(asked)) {
             return known.clone();
         }
