@@ -6,10 +6,10 @@ use std::ops::Range;
 use foldhash::fast::RandomState;
 use rayon::prelude::*;
 
+use super::cell::Cell;
 use super::problems::Problems;
 use super::scalar::quoted;
 use super::schema::{Attribute, Base, Kind};
-use super::store::Cell;
 use super::{Entities, Entity, Id};
 
 /// Notes what contradicts the schema and would mislead whoever follows the graph; the graph stays as it is.

@@ -1,9 +1,9 @@
 //! One entity of the graph and its values.
 
+use super::cell::Cell;
 use super::graph::Entities;
 use super::problems::Spot;
 use super::schema::{Attribute, ClassId};
-use super::store::Cell;
 use super::value::View;
 use crate::origin::Place;
 

@@ -3,9 +3,10 @@
 use std::collections::{BTreeMap, HashMap};
 use std::sync::{Arc, OnceLock};
 
+use super::cell::Cell;
 use super::problems::Spot;
 use super::schema::{Attribute, ClassId, Kind, Schema};
-use super::store::{Cell, Store};
+use super::store::Store;
 use super::{Entity, Id, Value};
 
 /// All entities of one exchange.

@@ -1,6 +1,7 @@
 //! Reads an exchange, of whatever form, into one entity graph. The only room that knows IFC syntax.
 
 mod archive;
+mod cell;
 mod conform;
 mod entity;
 mod graph;

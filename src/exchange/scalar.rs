@@ -1,7 +1,8 @@
 //! Text of an XML attribute or element into a value of the kind that the schema asks for.
 
+use super::cell::Cell;
 use super::schema::{Base, Kind};
-use super::store::{Cell, Store};
+use super::store::Store;
 
 /// The value of a text; lists are separated by white space, lists of lists flattened.
 ///

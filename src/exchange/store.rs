@@ -1,127 +1,11 @@
-//! The values of a graph, eight bytes each, because exchanges hold very many: a finite real is itself, everything else
-//! stands where a real would be infinite or no number.
+//! The values of a graph: their cells, and what has no room in these.
 
 use std::collections::HashMap;
 
 use super::Id;
+use super::cell::{Case, Cell};
 use super::schema::{Schema, TypeId};
 use super::value::{Inner, List, Value, View};
-use super::waiting::WAITING;
-
-/// A value in a [`Store`].
-///
-/// Where the exponent of a real has all its bits set, four bits tell which case it is, then 16 bits a length or type,
-/// then 32 bits an index.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub(super) struct Cell(u64);
-
-const EXPONENT: u64 = 0x7FF0 << 48;
-
-#[derive(Clone, Copy, PartialEq)]
-enum Case {
-    Absent,
-    Truth,
-    Entity,
-    /// Of up to 31 bits and a sign; the index.
-    Integer,
-    /// The index is in `wide`, as for all that follow with that word.
-    WideInteger,
-    /// A real that is not finite.
-    WideNumber,
-    Text,
-    WideText,
-    Token,
-    WideToken,
-    List,
-    WideList,
-    Typed,
-}
-
-impl Cell {
-    pub const ABSENT: Self = Self(EXPONENT);
-    pub const EMPTY_LIST: Self = Self::of(Case::List, 0, 0);
-
-    const fn of(case: Case, length: u16, index: u32) -> Self {
-        Self(EXPONENT | (case as u64) << 48 | (length as u64) << 32 | index as u64)
-    }
-
-    pub const fn entity(id: Id) -> Self {
-        Self::of(Case::Entity, 0, id.0)
-    }
-
-    pub fn truth(truth: bool) -> Self {
-        Self::of(Case::Truth, 0, u32::from(truth))
-    }
-
-    pub fn is_absent(self) -> bool {
-        self == Self::ABSENT
-    }
-
-    /// What it points to.
-    pub fn to_entity(self) -> Option<Id> {
-        (self.case() == Some(Case::Entity)).then(|| Id(self.index()))
-    }
-
-    /// Replaces a waiting reference by its target; whether it has one.
-    pub fn settle(&mut self, target: impl Fn(Id) -> Option<Id>) -> bool {
-        match self.to_entity() {
-            Some(id) if id.0 >= WAITING => match target(id) {
-                Some(target) => *self = Self::entity(target),
-                None => return false,
-            },
-            _ => {}
-        }
-        true
-    }
-
-    /// Makes it absent if it is a reference that still waits.
-    pub fn drop_waiting(&mut self) {
-        if self.to_entity().is_some_and(|id| id.0 >= WAITING) {
-            *self = Self::ABSENT;
-        }
-    }
-
-    pub fn is_list(self) -> bool {
-        matches!(self.case(), Some(Case::List | Case::WideList))
-    }
-
-    /// Whether it is an enumeration item or a truth.
-    pub fn is_token(self) -> bool {
-        matches!(self.case(), Some(Case::Token | Case::WideToken | Case::Truth))
-    }
-
-    /// `None` for a finite real.
-    fn case(self) -> Option<Case> {
-        use Case::*;
-        const CASES: [Case; 13] = [
-            Absent,
-            Truth,
-            Entity,
-            Integer,
-            WideInteger,
-            WideNumber,
-            Text,
-            WideText,
-            Token,
-            WideToken,
-            List,
-            WideList,
-            Typed,
-        ];
-        if self.0 & EXPONENT != EXPONENT {
-            return None;
-        }
-        Some(CASES.get((self.0 >> 48) as usize & 0xF).copied().unwrap_or(Absent))
-    }
-
-    fn length(self) -> usize {
-        (self.0 >> 32) as usize & 0xFFFF
-    }
-
-    fn index(self) -> u32 {
-        self.0 as u32
-    }
-}
 
 /// Where the values of another store are that was taken over.
 pub(super) struct Moved {
@@ -157,7 +41,7 @@ impl Store {
     }
 
     pub fn number(&mut self, number: f64) -> Cell {
-        if number.is_finite() { Cell(number.to_bits()) } else { self.wide(Case::WideNumber, &[number.to_bits()]) }
+        Cell::real(number).unwrap_or_else(|| self.wide(Case::WideNumber, &[number.to_bits()]))
     }
 
     pub fn integer(&mut self, integer: i64) -> Cell {
@@ -242,7 +126,7 @@ impl Store {
 
     #[inline]
     pub fn view(&self, cell: Cell) -> View<'_> {
-        let Some(case) = cell.case() else { return View::Number(f64::from_bits(cell.0)) };
+        let Some(case) = cell.case() else { return cell.to_real().map_or(View::Absent, View::Number) };
         match case {
             Case::Absent => View::Absent,
             Case::Truth => View::Truth(cell.index() != 0),

@@ -1,7 +1,8 @@
 //! Values as they are given to a graph and as they are seen in one.
 
 use super::Id;
-use super::store::{Cell, Store};
+use super::cell::Cell;
+use super::store::Store;
 
 /// A value by itself, to build small graphs by hand and to compare with.
 #[derive(Clone, Debug, PartialEq, Default)]

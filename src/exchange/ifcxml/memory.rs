@@ -1,8 +1,8 @@
 //! What texts were read as before: coordinates, directions and names come again and again, and take time to read and
 //! room to keep.
 
+use super::super::cell::Cell;
 use super::super::schema::{Base, Kind};
-use super::super::store::Cell;
 
 /// How many texts are remembered, a power of two; a new one takes the place of an older one.
 const PLACES: usize = 1 << 12;

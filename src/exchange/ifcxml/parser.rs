@@ -3,13 +3,13 @@
 use std::borrow::Cow;
 use std::sync::Arc;
 
+use super::super::cell::Cell;
 use super::super::labels::Labels;
 use super::super::limits::Limits;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Attribute, Base, ClassId, Kind, Named, Schema};
 use super::super::source::Source;
-use super::super::store::Cell;
 use super::super::waiting::WAITING;
 use super::super::{Entities, Id};
 use super::head::{self, Head, Pos};

@@ -74,7 +74,13 @@ fn read_in(
 fn starts(scanner: &Scanner, parts: usize) -> Vec<usize> {
     let rest = scanner.bytes.get(scanner.at..).unwrap_or_default();
     let Some(first) = memchr::memchr(b'<', rest) else { return Vec::new() };
-    let indent = &rest[memchr::memrchr(b'\n', &rest[..first]).unwrap_or(first)..=first];
+    let Some(line) = memchr::memrchr(b'\n', &rest[..first]) else { return Vec::new() };
+    let indent = &rest[line..=first];
+    // where nothing is indented it does not tell how deep an element stands
+    let is_indented = |line: &[u8]| matches!(line, [b'\n', b' ' | b'\t']);
+    if indent.len() == 2 && !rest[..rest.len().min(1 << 14)].windows(2).any(is_indented) {
+        return Vec::new();
+    }
     let element = memmem::Finder::new(indent);
     let is_start = |at: &usize| rest.get(at + indent.len()).is_some_and(u8::is_ascii_alphabetic);
     let start_near = |near: usize| {

@@ -2,7 +2,7 @@
 
 use std::collections::HashSet;
 
-use super::super::store::Cell;
+use super::super::cell::Cell;
 use super::super::waiting::WAITING;
 use super::super::{Exchange, Id, conform};
 use super::parser::{Link, Parser};

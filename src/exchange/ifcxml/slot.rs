@@ -2,10 +2,11 @@
 
 use std::borrow::Cow;
 
+use super::super::cell::Cell;
 use super::super::problems::{Problems, Spot};
 use super::super::scalar;
 use super::super::schema::{Base, Kind, TypeId};
-use super::super::store::{Cell, Store};
+use super::super::store::Store;
 use super::head::{Head, Pos};
 
 /// Where a value goes.

@@ -14,10 +14,10 @@ use std::sync::Arc;
 
 use self::cursor::Cursor;
 use self::numbers::Numbers;
+use super::cell::Cell;
 use super::limits::Limits;
 use super::problems::{Problems, Ruler, Spot};
 use super::schema::Schema;
-use super::store::Cell;
 use super::{Entities, Exchange, Id, conform};
 
 /// Where in the file the reading stands.

@@ -1,9 +1,10 @@
 //! The values in a record, by the kinds that the schema asks for.
 
 use super::super::Id;
+use super::super::cell::Cell;
 use super::super::scalar::{self, quoted};
 use super::super::schema::{Base, Kind};
-use super::super::store::{Cell, Store};
+use super::super::store::Store;
 use super::super::value::View;
 use super::Reader;
 use super::cursor::starts_record;
