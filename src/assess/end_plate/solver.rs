@@ -24,9 +24,6 @@ pub struct Solver<'a> {
     sheared: Mutex<HashMap<u64, Vec<Sheared>>>,
 }
 
-/// A joint with the tension of its bolts, and its resistance in shear.
-type Sheared = (Numbers, Drawn, Arc<ShearResistance>);
-
 /// Everything that a resistance depends on besides the rulebook. Compared as a whole; a NaN equals nothing, so it is
 /// never found again.
 #[derive(PartialEq)]
