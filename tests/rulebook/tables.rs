@@ -183,7 +183,8 @@ fn annexes() {
         rules.use_annex(id).unwrap();
         let annex = &rules.annex;
         assert_eq!((annex.gamma_m0, annex.gamma_m1, annex.gamma_m2), (gamma_m0, gamma_m1, 1.25), "{id}");
-        assert_eq!(annex.source.matches("from memory").count(), 4, "{id}");
+        assert_eq!(annex.gamma_m3, Some((1.25, 1.10)), "{id}");
+        assert_eq!(annex.source.matches("from memory").count(), 6, "{id}");
         assert_eq!(rules.settings.row_forces, RowForces::LinearBeyond19, "{id}");
     }
     // A choice in the settings stands whatever the annex.
