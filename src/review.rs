@@ -116,6 +116,9 @@ pub struct Resistance {
     pub moment_knm: Option<f64>,
     /// Tension at the bottom, kNm.
     pub moment_reversed_knm: Option<f64>,
+    /// What every component but the welds would carry, kNm, in the sense of `moment_knm`, or of `moment_reversed_knm` where
+    /// there is no other.
+    pub moment_without_welds_knm: Option<f64>,
     /// kN.
     pub shear_kn: Option<f64>,
     /// kN.

@@ -407,7 +407,7 @@ fn the_json_has_the_keys_of_version_one() {
         ),
         (
             "/joints/0/resistance",
-            json!({"moment_knm": 200.0, "moment_reversed_knm": 90.0, "shear_kn": 400.0, "axial_kn": null,
+            json!({"moment_knm": 200.0, "moment_reversed_knm": 90.0, "moment_without_welds_knm": 262.0, "shear_kn": 400.0, "axial_kn": null,
                    "governed_by": "end plate in bending, rows 1-2 (mode 1)"}),
         ),
         ("/joints/0/intended_resistance/moment_knm", json!(270.14)),

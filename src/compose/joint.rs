@@ -213,6 +213,7 @@ fn resistance(assessment: &Assessment) -> Resistance {
     Resistance {
         moment_knm: hogging.map(|m| m.moment.knm()),
         moment_reversed_knm: sagging.map(|m| m.moment.knm()),
+        moment_without_welds_knm: hogging.or(sagging).map(|m| m.without_welds.knm()),
         shear_kn: shear.map(|s| s.shear.kn()),
         axial_kn: (assessment.cases.iter().filter_map(|case| case.axial.as_ref()))
             .map(|axial| axial.resistance.kn())

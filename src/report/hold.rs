@@ -136,8 +136,7 @@ fn against(joint: &JointReview, case: &Required) -> String {
         Some(m) if m < 0.0 => joint.resistance.moment_reversed_knm,
         _ => joint.resistance.moment_knm,
     });
-    let shear = action(joint.resistance.shear_kn, "kN", "not known");
-    format!("M {}, V {shear}{cases}", action(moment, "kNm", "not known"))
+    format!("{}{cases}", carried(moment, String::new(), joint.resistance.shear_kn))
 }
 
 /// "M 270.1 kNm (-180.0 kNm reversed), V 400.0 kN".
@@ -150,11 +149,16 @@ pub(super) fn resistance(resistance: &Resistance) -> String {
         Some(_) => format!(", N {}", action(resistance.axial_kn, "kN", "")),
         None => String::new(),
     };
-    format!(
-        "M {}{reversed}, V {}{axial}",
-        action(resistance.moment_knm, "kNm", "not known"),
-        action(resistance.shear_kn, "kN", "not known"),
-    )
+    format!("{}{axial}", carried(resistance.moment_knm, reversed, resistance.shear_kn))
+}
+
+/// A joint that carries shear alone has no moment resistance to speak of.
+fn carried(moment: Option<f64>, reversed: String, shear: Option<f64>) -> String {
+    let by_shear = format!("V {}", action(shear, "kN", "not known"));
+    if moment.is_none() && shear.is_some() {
+        return by_shear;
+    }
+    format!("M {}{reversed}, {by_shear}", action(moment, "kNm", "not known"))
 }
 
 fn findings(page: &mut Page, joint: &JointReview, said: Option<&Place>) {

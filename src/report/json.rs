@@ -256,6 +256,7 @@ fn resistance(r: &review::Resistance) -> Resistance {
     Resistance {
         moment_knm: r.moment_knm.and_then(thousandth),
         moment_reversed_knm: r.moment_reversed_knm.and_then(thousandth),
+        moment_without_welds_knm: r.moment_without_welds_knm.and_then(thousandth),
         shear_kn: r.shear_kn.and_then(thousandth),
         axial_kn: r.axial_kn.and_then(thousandth),
         governed_by: r.governed_by.clone(),

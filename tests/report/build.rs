@@ -52,6 +52,7 @@ pub fn joint(n: usize, outcome: Outcome) -> JointReview {
 pub fn used(mut joint: JointReview, resistance_knm: f64, moment_knm: f64) -> JointReview {
     let governed_by = Some("end plate in bending, rows 1-2 (mode 1)".to_owned());
     joint.resistance = Resistance {
+        moment_without_welds_knm: Some(262.0),
         moment_knm: Some(resistance_knm),
         moment_reversed_knm: Some(90.0),
         shear_kn: Some(400.0),

@@ -219,6 +219,9 @@ pub struct Resistance {
     pub moment_knm: Option<f64>,
     /// Tension at the bottom.
     pub moment_reversed_knm: Option<f64>,
+    /// The moment resistance without the welds' limit, in the sense of `moment_knm` or else the reversed one.
+    #[serde(default)]
+    pub moment_without_welds_knm: Option<f64>,
     /// Shear.
     pub shear_kn: Option<f64>,
     /// Axial.
