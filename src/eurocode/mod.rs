@@ -6,13 +6,16 @@
 
 pub mod alpha;
 pub mod beam;
+pub mod bolt_group;
 pub mod bolts;
 pub mod classification;
 pub mod column_web;
 pub mod diagonals;
 pub mod effective_length;
+pub mod fin_plate;
 pub mod haunch;
 pub mod net_section;
+pub mod notch;
 pub mod slip;
 pub mod stiffeners;
 pub mod stiffness;
