@@ -15,7 +15,6 @@ pub mod effective_length;
 pub mod fin_plate;
 pub mod haunch;
 pub mod net_section;
-pub mod notch;
 pub mod slip;
 pub mod stiffeners;
 pub mod stiffness;

@@ -1,17 +1,28 @@
 //! Joints that carry shear or axial force and are no moment joints: each kind in a file of its own, in a frame of its own.
 
+mod fin_plate;
+mod grid;
+
+pub use fin_plate::{FinPlate, On};
+pub use grid::Grid;
+
 use super::Kind;
 use super::draft::Draft;
 use super::scene::Scene;
 
 /// A joint that is no moment joint, laid out: all that its assessment needs, nothing else.
 #[derive(Clone, Debug)]
-pub enum SimpleLayout {}
+pub enum SimpleLayout {
+    /// A fin plate.
+    FinPlate(Box<FinPlate>),
+}
 
 impl SimpleLayout {
     /// The detail in lines, always the same lines in the same order, for a difference between two submissions.
     pub fn lines(&self) -> Vec<String> {
-        match *self {}
+        match self {
+            Self::FinPlate(layout) => layout.lines(),
+        }
     }
 }
 
@@ -20,10 +31,10 @@ impl SimpleLayout {
 /// # Errors
 /// One sentence on the first thing that the assessment of the kind does not cover; that of kinds without an assessment is
 /// the draft's own.
-pub(super) fn lay_out(_scene: &Scene, draft: &mut Draft) -> Option<Result<SimpleLayout, String>> {
+pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Option<Result<SimpleLayout, String>> {
     match draft.joint.kind {
-        Kind::FinPlate
-        | Kind::FlexibleEndPlate
+        Kind::FinPlate => Some(fin_plate::lay_out(scene, draft).map(|layout| SimpleLayout::FinPlate(Box::new(layout)))),
+        Kind::FlexibleEndPlate
         | Kind::WebCleats
         | Kind::CoverPlateSplice
         | Kind::ColumnBase

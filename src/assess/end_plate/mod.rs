@@ -4,7 +4,7 @@ mod axial;
 mod intended;
 mod limits;
 mod moment;
-mod numbers;
+pub(in crate::assess) mod numbers;
 mod rows;
 mod shear;
 mod solver;
