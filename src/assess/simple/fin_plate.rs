@@ -67,7 +67,7 @@ fn in_shear(n: &Numbers<'_>) -> Vec<Component> {
     all.push(component("plate-net-shear", "plate, net section in shear", GUIDE, net_shear_of_plate(n, gamma_M2)));
     let plate = n.plate();
     let factors = (rules.block_tearing, gamma_M0, gamma_M2);
-    let torn = ends(&plate).filter_map(|end| block_tearing(n, &plate, end, factors)).reduce(weaker);
+    let torn = ends(&plate).map(|end| block_tearing(n, &plate, end, factors)).reduce(weaker);
     all.extend(torn.map(|r| component("plate-block-tearing", "plate in block tearing", "EN 1993-1-8:2005 3.10.2", r)));
     all.push(component("plate-in-bending", "plate in bending", GUIDE, fin_plate::bending(t_p, h_p, n.z(), f_y, gamma_M0)));
     if n.is_long() {
@@ -87,7 +87,7 @@ fn in_shear(n: &Numbers<'_>) -> Vec<Component> {
     all.push(component("beam-web-gross-shear", "beam web, gross section in shear", "EN 1993-1-1 6.2.6", gross));
     let net = Resistance { value: net.value, working: w };
     all.push(component("beam-web-net-shear", "beam web, net section in shear", GUIDE, net));
-    let torn = ends(&web).filter_map(|end| block_tearing(n, &web, end, factors)).reduce(weaker);
+    let torn = ends(&web).map(|end| block_tearing(n, &web, end, factors)).reduce(weaker);
     all.extend(torn.map(|r| component("beam-web-block-tearing", "beam web in block tearing", "EN 1993-1-8:2005 3.10.2", r)));
     all.extend(n.notch_bending(gamma_M0).map(|r| component("beam-notch-in-bending", "beam at the notch in bending", "EN 1993-1-1 6.2.8", r)));
 
@@ -151,9 +151,9 @@ fn net_shear_of_plate(n: &Numbers<'_>, gamma_M2: f64) -> Resistance {
     Resistance { value: net.value, working: w }
 }
 
-/// Both edges of a ply towards which a block could be torn off.
+/// Edges of a ply towards which a block could be torn off: towards a flange it would have to take that along.
 fn ends(ply: &Ply) -> impl Iterator<Item = Length> + use<> {
-    ply.torn_to().into_iter().flatten()
+    ply.edges().into_iter().flatten()
 }
 
 /// The block of all bolts torn off towards an edge along the load, `e_1` from the last row: sheared along the line furthest from
@@ -164,7 +164,7 @@ fn block_tearing(
     ply: &Ply,
     e_1: Length,
     (share, gamma_M0, gamma_M2): (f64, f64, f64),
-) -> Option<Resistance> {
+) -> Resistance {
     let mut w = Working::default();
     let (n_1, n_2, d_0, t, e_2) = (n.rows() as f64, n.lines() as f64, n.bolts.d_0, ply.t, ply.side);
     let (length, width) = (n.length(), n.width());
@@ -173,5 +173,5 @@ fn block_tearing(
     step!(w, "3.10.2, net areas", A_nv = t * (e_1 + length - (n_1 - 0.5) * d_0));
     let torn = net_section::block_tearing((A_nt, A_nv), (ply.f_y, ply.f_u), share, (gamma_M0, gamma_M2));
     w.absorb(torn.working);
-    Some(Resistance { value: torn.value, working: w })
+    Resistance { value: torn.value, working: w }
 }

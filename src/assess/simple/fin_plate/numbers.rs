@@ -52,11 +52,6 @@ impl Ply {
     pub(super) fn beside(&self) -> Length {
         self.to[0].0.min(self.to[1].0)
     }
-
-    /// Edges that a block could be torn off to: at a flange the block takes it along, and it counts as the web goes on.
-    pub(super) fn torn_to(&self) -> [Option<Length>; 2] {
-        self.to.map(|(to, _)| Some(to))
-    }
 }
 
 impl<'a> Numbers<'a> {
