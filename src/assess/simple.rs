@@ -1,5 +1,7 @@
 //! Joints that carry shear or axial force and are no moment joints: what every kind shares, and which file assesses which.
 
+mod flexible;
+
 use std::sync::Arc;
 
 use super::{About, Assessment, CaseResult, Component, Gap, Input, ShearResistance, State, Verdict};
@@ -24,8 +26,10 @@ pub struct Strength {
 }
 
 /// Assesses a joint as laid out, against load cases if there are any.
-pub fn assess(layout: &SimpleLayout, _cases: &[&LoadCase], _rulebook: &Rulebook) -> Assessment {
-    match *layout {}
+pub fn assess(layout: &SimpleLayout, cases: &[&LoadCase], rulebook: &Rulebook) -> Assessment {
+    match layout {
+        SimpleLayout::FlexibleEndPlate(layout) => flexible::assess(layout, cases, rulebook),
+    }
 }
 
 /// The component with the least resistance; `None` for none, or where a resistance is no number.
