@@ -1,6 +1,7 @@
 //! Joints that carry shear or axial force and are no moment joints: what every kind shares, and which file assesses which.
 
 mod fin_plate;
+mod flexible;
 
 use std::sync::Arc;
 
@@ -29,6 +30,7 @@ pub struct Strength {
 pub fn assess(layout: &SimpleLayout, cases: &[&LoadCase], rulebook: &Rulebook) -> Assessment {
     match layout {
         SimpleLayout::FinPlate(layout) => pinned(fin_plate::strength(layout, rulebook), cases, rulebook),
+        SimpleLayout::FlexibleEndPlate(layout) => flexible::assess(layout, cases, rulebook),
     }
 }
 

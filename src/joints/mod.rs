@@ -29,7 +29,7 @@ pub use layout::{
     Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Haunch, Held,
     Layout, MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
-pub use simple::{FinPlate, Grid, On, SimpleLayout};
+pub use simple::{Cope, FinPlate, FlexibleEndPlate, Grid, HeldBy, On, SimpleLayout};
 
 use petgraph::graphmap::UnGraphMap;
 

@@ -1,9 +1,11 @@
 //! Joints that carry shear or axial force and are no moment joints: each kind in a file of its own, in a frame of its own.
 
 mod fin_plate;
+mod flexible;
 mod grid;
 
 pub use fin_plate::{FinPlate, On};
+pub use flexible::{Cope, FlexibleEndPlate, Held as HeldBy};
 pub use grid::Grid;
 
 use super::Kind;
@@ -15,6 +17,8 @@ use super::scene::Scene;
 pub enum SimpleLayout {
     /// A fin plate.
     FinPlate(Box<FinPlate>),
+    /// A flexible end plate.
+    FlexibleEndPlate(Box<FlexibleEndPlate>),
 }
 
 impl SimpleLayout {
@@ -22,6 +26,14 @@ impl SimpleLayout {
     pub fn lines(&self) -> Vec<String> {
         match self {
             Self::FinPlate(layout) => layout.lines(),
+            Self::FlexibleEndPlate(layout) => layout.lines(),
+        }
+    }
+
+    /// Whether the assessment takes notches at the supported member's end into account.
+    pub fn takes_notches(&self) -> bool {
+        match self {
+            Self::FinPlate(_) | Self::FlexibleEndPlate(_) => true,
         }
     }
 }
@@ -34,8 +46,10 @@ impl SimpleLayout {
 pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Option<Result<SimpleLayout, String>> {
     match draft.joint.kind {
         Kind::FinPlate => Some(fin_plate::lay_out(scene, draft).map(|layout| SimpleLayout::FinPlate(Box::new(layout)))),
-        Kind::FlexibleEndPlate
-        | Kind::WebCleats
+        Kind::FlexibleEndPlate => {
+            Some(flexible::lay_out(scene, draft).map(|layout| SimpleLayout::FlexibleEndPlate(Box::new(layout))))
+        }
+        Kind::WebCleats
         | Kind::CoverPlateSplice
         | Kind::ColumnBase
         | Kind::Gusset

@@ -8,7 +8,7 @@ pub(in crate::assess) mod numbers;
 mod rows;
 mod shear;
 mod solver;
-mod sound;
+pub(in crate::assess) mod sound;
 mod strengthening;
 mod totals;
 mod turning;
