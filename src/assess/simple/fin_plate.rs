@@ -79,7 +79,7 @@ fn in_shear(n: &Numbers<'_>) -> Vec<Component> {
     let gross = n.beam_gross(gamma_M0);
     let mut w = gross.working.clone();
     let (n_1, d_0, t_w, f_u) = (n.rows() as f64, n.bolts.d_0, n.beam.t_w, n.beam_steel.f_u);
-    let A_v = gross.value / (n.beam_steel.f_y_flange / (3.0_f64.sqrt() * gamma_M0));
+    let A_v = gross.value / (n.beam_f_y() / (3.0_f64.sqrt() * gamma_M0));
     given!(w, "the beam's shear area, holes in one line"; A_v, n_1, d_0, t_w);
     step!(w, "net section, design guides", A_v_net = A_v - n_1 * (d_0 * t_w));
     let net = net_section::net_shear(A_v_net, f_u, gamma_M2);
@@ -89,7 +89,7 @@ fn in_shear(n: &Numbers<'_>) -> Vec<Component> {
     all.push(component("beam-web-net-shear", "beam web, net section in shear", GUIDE, net));
     let torn = ends(&web).map(|end| block_tearing(n, &web, end, factors)).reduce(weaker);
     all.extend(torn.map(|r| component("beam-web-block-tearing", "beam web in block tearing", "EN 1993-1-8:2005 3.10.2", r)));
-    all.extend(n.notch_bending(gamma_M0).map(|r| component("beam-notch-in-bending", "beam at the notch in bending", "EN 1993-1-1 6.2.8", r)));
+    all.extend(n.notch_bending(gamma_M0).into_iter().reduce(weaker).map(|r| component("beam-notch-in-bending", "beam at the notch in bending", "EN 1993-1-1 6.2.8", r)));
 
     if let Some((a, beta_w, f_u)) = n.fillets() {
         let welds = fin_plate::welds((a, h_p), n.z(), (f_u, beta_w), gamma_M2);

@@ -2,6 +2,7 @@
 
 use glam::DVec3;
 
+use super::flexible::Cope;
 use super::grid::{self, Axes, Grid};
 use crate::joints::boxes::thicknesses;
 use crate::joints::draft::Draft;
@@ -66,6 +67,10 @@ pub struct FinPlate {
     pub bolts: Grid,
     /// Distance of the beam's end.
     pub gap: Length,
+    /// The notch at the beam's top.
+    pub top_notch: Option<Cope>,
+    /// The notch at its bottom.
+    pub bottom_notch: Option<Cope>,
     /// Throat of the fillets on both sides of the plate along the support.
     pub weld: Known<Length>,
     /// Whether another plate stands on the other side of the same web beside this one.
@@ -77,6 +82,7 @@ impl FinPlate {
     pub(super) fn lines(&self) -> Vec<String> {
         let list = |all: &[Length]| all.iter().map(|x| format!("{:.1}", x.get())).collect::<Vec<_>>().join(" ");
         let known = |length: &Known<Length>| length.as_ref().map_or("not known".into(), |l| format!("{}", l.value));
+        let notch = |cope: Option<Cope>| cope.map_or("none".into(), |c| format!("{} × {}", c.length, c.depth));
         let grade = self.grade.as_ref().map_or("not known", |grade| grade.value.0.as_str());
         vec![
             format!("fin plate on {}", self.on.words()),
@@ -85,6 +91,8 @@ impl FinPlate {
             format!("bolt lines at {} mm", list(&self.bolts.lines)),
             format!("bolts {} {}", known(&self.bolts.diameter), self.bolts.class.as_ref().map_or("", |c| &c.value)),
             format!("gap {}", self.gap),
+            format!("notch at the top {}", notch(self.top_notch)),
+            format!("notch at the bottom {}", notch(self.bottom_notch)),
             format!("weld throat {}", known(&self.weld)),
         ]
     }
@@ -173,6 +181,15 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FinPlate, Stri
         return Err(format!("fin plate: {n_2} lines of {n_1} bolts: assessed are one or two lines of at least two"));
     }
     let heights = Span { lo: high.lo, hi: high.hi };
+    let upwards = beam.depth.dot(up) > 0.0;
+    let at_end = draft.joint.at_end == Some(true);
+    let notch = |top: bool| {
+        let own = beam.notches.iter().filter(|notch| notch.at_end == at_end && (notch.positive == upwards) == top);
+        own.fold(None, |most: Option<Cope>, notch| {
+            let (length, depth) = (mm(notch.length), mm(notch.depth));
+            Some(most.map_or(Cope { length, depth }, |m| Cope { length: m.length.max(length), depth: m.depth.max(depth) }))
+        })
+    };
     Ok(FinPlate {
         beam: member_at(scene, beam_index),
         support: member_at(scene, support_index),
@@ -185,6 +202,8 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FinPlate, Stri
         grade: plate.grade.clone(),
         bolts,
         gap: mm(gap),
+        top_notch: notch(true),
+        bottom_notch: notch(false),
         weld: weld(scene, plate_index, support_index, &Along { origin, up, heights }),
         opposite: on != On::ColumnFlange && is_opposed(scene, plate_index, support_index, inward, &Along { origin, up, heights }),
     })

@@ -2,7 +2,8 @@
 
 use super::numbers::Numbers;
 use crate::assess::end_plate::numbers::Noted;
-use crate::joints::On;
+use crate::eurocode::notched;
+use crate::joints::{Cope, On};
 use crate::origin::Ask;
 use crate::units::Length;
 
@@ -44,14 +45,38 @@ pub(super) fn note(n: &Numbers<'_>, noted: &mut Noted) {
         let reason = format!("the plate is {} high, less than {HELD} of the beam's {}: it does not hold the beam's end against twisting", n.h_p(), n.beam.h);
         noted.not_checked("hold against twisting", reason, Ask::Engineer);
     }
-    let straight = [n.beam.t_f + n.r_b, n.beam.h - n.beam.t_f - n.r_b];
+    let root = n.beam.t_f + n.r_b;
+    let at = |notch: Option<Cope>| notch.map_or(root, |notch| notch.depth);
+    let straight = [at(n.layout.bottom_notch), n.beam.h - at(n.layout.top_notch)];
     let slack = n.rulebook.tolerances.position;
     if !(n.layout.bottom >= straight[0] - slack && n.layout.top <= straight[1] + slack) {
-        noted.not_checked("rotation of the joint", "the plate runs over the beam's root radius or flange".into(), Ask::Fabricator);
+        noted.not_checked("rotation of the joint", "the plate runs over the beam's root radius, flange or notched edge".into(), Ask::Fabricator);
     }
     rotation(n, noted);
+    notches(n, noted);
     if n.layout.on != On::ColumnFlange {
         web(n, noted);
+    }
+}
+
+/// Whether the notched edges need no check of their stability; limits of depth of the guides, from memory.
+fn notches(n: &Numbers<'_>, noted: &mut Noted) {
+    let notches = [("top", n.layout.top_notch), ("bottom", n.layout.bottom_notch)];
+    let all: Vec<_> = notches.into_iter().filter_map(|(at, notch)| Some((at, notch?))).collect();
+    let deepest = if all.len() > 1 { 0.2 * n.beam.h } else { 0.5 * n.beam.h };
+    let longest = notched::longest_stable(n.beam.h, n.beam.t_w, n.beam_steel.f_y_web);
+    for (at, notch) in &all {
+        if !(notch.depth <= deepest && longest.is_some_and(|longest| notch.length <= longest)) {
+            let longest = longest.map_or("no figure for its steel".into(), |l| format!("{l} long"));
+            let reason = format!(
+                "{} long and {} deep; its edge is stable by the design guides up to {longest} and {deepest} deep",
+                notch.length, notch.depth
+            );
+            noted.not_checked(&format!("stability of the notch at the {at}"), reason, Ask::Method);
+        }
+    }
+    if !all.is_empty() {
+        noted.assumptions.push("the notched beam is held against lateral torsional buckling".into());
     }
 }
 

@@ -2,8 +2,9 @@
 
 use crate::assess::end_plate::numbers::{BoltNumbers, MemberStrength, Noted, print_length};
 use crate::eurocode::bolt_group::{self, Place};
+use crate::eurocode::notched::{self, Left};
 use crate::eurocode::{Resistance, bolts};
-use crate::joints::{self, FinPlate, On};
+use crate::joints::{self, Cope, FinPlate, On};
 use crate::origin::Ask;
 use crate::rulebook::{Grade, Rulebook, Section, Strength};
 use crate::units::{Length, Stress};
@@ -71,6 +72,12 @@ impl<'a> Numbers<'a> {
         ] {
             noted.given(what, value, by);
         }
+        for (at, notch) in [("top", layout.top_notch), ("bottom", layout.bottom_notch)] {
+            if let Some(notch) = notch {
+                noted.given(&format!("notch at the {at}, length"), notch.length, "the box round what is cut off the beam");
+                noted.given(&format!("notch at the {at}, depth"), notch.depth, "the box round what is cut off the beam");
+            }
+        }
         for (i, row) in layout.bolts.rows.iter().enumerate() {
             noted.given(&format!("row {} height", i + 1), *row, "bolt axes above the soffit");
         }
@@ -131,6 +138,13 @@ impl<'a> Numbers<'a> {
         asked.extend(self.p_2().map(|p_2| ("p_2", p_2, rules.gauge)));
         asked.extend(plate.edges().into_iter().flatten().map(|e| ("e_1 of the plate", e, rules.end)));
         asked.extend(web.edges().into_iter().flatten().map(|e| ("e_1 of the beam's web", e, rules.end)));
+        let left = self.beam.h - cut(self.layout.top_notch) - cut(self.layout.bottom_notch);
+        for notch in [self.layout.top_notch, self.layout.bottom_notch].into_iter().flatten() {
+            // A notch that leaves part of the flange is none that the sections know.
+            if !(notch.depth >= self.beam.t_f && notch.length > Length::ZERO && left >= 0.25 * self.beam.h) {
+                return Some("the notches leave no section that is known: not assessed".into());
+            }
+        }
         asked.push(("height of the plate", self.h_p(), 1.0));
         asked.push(("distance of the bolts from the support", self.z_p(), 0.5));
         let short = asked.iter().find(|(_, own, least)| !(*own >= *least * d_0 - slack));
@@ -214,7 +228,10 @@ impl<'a> Numbers<'a> {
             f_y: self.beam_steel.f_y_web,
             f_u: self.beam_steel.f_u,
             side: self.z_p() - self.layout.gap,
-            to: [(self.beam.h - top, false), (low, false)],
+            to: [
+                (self.beam.h - cut(self.layout.top_notch) - top, self.layout.top_notch.is_some()),
+                (low - cut(self.layout.bottom_notch), self.layout.bottom_notch.is_some()),
+            ],
         }
     }
 
@@ -228,9 +245,36 @@ impl<'a> Numbers<'a> {
         bolts::shear(alpha_v, bolts.f_ub, area, if small { 0.85 } else { 1.0 }, gamma)
     }
 
-    /// V_pl,Rd of the beam.
+    /// What notches leave of the beam, each with its length from the beam's end; empty without.
+    fn notched(&self) -> Vec<(notched::Section, Length)> {
+        let beam = &self.beam;
+        let tee = Left::Tee { b: beam.b, t_f: beam.t_f, r: self.r_b };
+        let section = |left, cut: Length| notched::Section {
+            left,
+            h_n: beam.h - cut,
+            t_w: beam.t_w,
+            f_y: self.beam_steel.f_y_web,
+        };
+        match (self.layout.top_notch, self.layout.bottom_notch) {
+            (Some(top), Some(bottom)) => {
+                // Where one is longer, its end has the other flange again.
+                let longer = if top.length > bottom.length { top } else { bottom };
+                vec![
+                    (section(Left::Web, top.depth + bottom.depth), top.length.min(bottom.length)),
+                    (section(tee, longer.depth), longer.length),
+                ]
+            }
+            (Some(one), None) | (None, Some(one)) => vec![(section(tee, one.depth), one.length)],
+            (None, None) => Vec::new(),
+        }
+    }
+
+    /// V_pl,Rd of the beam beside the bolts, notched or not.
     #[allow(non_snake_case)]
     pub(super) fn beam_gross(&self, gamma_M0: f64) -> Resistance {
+        if let Some((section, _)) = self.notched().first() {
+            return notched::shear(section, gamma_M0);
+        }
         let mut w = Working::default();
         let (A_v, f_y) = (self.beam.a_v_z, self.beam_steel.f_y_flange);
         given!(w, "beam"; A_v, f_y);
@@ -238,9 +282,16 @@ impl<'a> Numbers<'a> {
         Resistance { value: V_pl_Rd, working: w }
     }
 
-    /// The beam in bending at the root of its notch.
-    pub(super) fn notch_bending(&self, _gamma_m0: f64) -> Option<Resistance> {
-        None
+    /// The strength that [`Numbers::beam_gross`] is computed with.
+    pub(super) fn beam_f_y(&self) -> Stress {
+        self.notched().first().map_or(self.beam_steel.f_y_flange, |(section, _)| section.f_y)
+    }
+
+    /// The beam in bending where its notches end, or at the last line of bolts beyond.
+    pub(super) fn notch_bending(&self, gamma_m0: f64) -> Vec<Resistance> {
+        let last = self.z_p() + self.width();
+        let at = |length: Length| (self.layout.gap + length).max(last);
+        self.notched().iter().map(|(section, length)| notched::bending(section, at(*length), gamma_m0)).collect()
     }
 
     /// Throat, β_w and f_u of the weaker part of the plate's fillets.
@@ -258,6 +309,10 @@ fn throat(layout: &FinPlate, rulebook: &Rulebook, noted: &mut Noted) -> Option<L
     }
     noted.not_checked(name, format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"), Ask::Fabricator);
     None
+}
+
+fn cut(notch: Option<Cope>) -> Length {
+    notch.map_or(Length::ZERO, |notch| notch.depth)
 }
 
 fn spread(values: &[Length]) -> Length {
