@@ -8,6 +8,7 @@ pub mod alpha;
 pub mod beam;
 pub mod bolts;
 pub mod classification;
+pub mod column_base;
 pub mod column_web;
 pub mod diagonals;
 pub mod effective_length;

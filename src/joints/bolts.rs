@@ -20,11 +20,11 @@ pub(super) enum Behind {
 }
 
 /// A bolt where its axis crosses the end plate.
-struct Placed {
-    bolt: usize,
-    point: DVec3,
-    across: f64,
-    height: f64,
+pub(super) struct Placed {
+    pub(super) bolt: usize,
+    pub(super) point: DVec3,
+    pub(super) across: f64,
+    pub(super) height: f64,
 }
 
 /// The bolts in rows from the top down.
@@ -130,7 +130,7 @@ fn to_side(outline: &[DVec2], bolt: &Placed) -> Option<f64> {
 }
 
 /// One value for all, or why there is none: a bolt without it, or two that differ.
-fn all_alike<'k, T: Clone + 'k>(
+pub(super) fn all_alike<'k, T: Clone + 'k>(
     what: &str,
     all: impl Iterator<Item = &'k Known<T>> + Clone,
     same: impl Fn(&T, &T) -> bool,
@@ -164,7 +164,7 @@ fn all_alike<'k, T: Clone + 'k>(
 }
 
 /// d_0: modelled in the plate, else a property of the bolts, else the normal hole of the bolt size.
-fn hole(
+pub(super) fn hole(
     scene: &Scene,
     draft: &mut Draft,
     plates: &[usize],
