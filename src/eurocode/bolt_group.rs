@@ -81,8 +81,7 @@ pub fn bearing(group: &Eccentric, F_b_ver_Rd: Force, F_b_hor_Rd: Force) -> Resis
     step!(
         w,
         "bolt group, design guides",
-        V_b_Rd =
-            n * F_b_ver_Rd / ((1.0 + alpha * n).powi(2) + (beta * n * (F_b_ver_Rd / F_b_hor_Rd)).powi(2)).sqrt()
+        V_b_Rd = n * F_b_ver_Rd / ((1.0 + alpha * n).powi(2) + (beta * n * (F_b_ver_Rd / F_b_hor_Rd)).powi(2)).sqrt()
     );
     Resistance { value: V_b_Rd, working: w }
 }

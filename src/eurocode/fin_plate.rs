@@ -18,12 +18,7 @@ pub fn bending(t_p: Length, h_p: Length, z: Length, f_y: Stress, gamma_M0: f64) 
 
 /// Lateral torsional buckling of a long plate, `z_p` from the support to the first line of bolts, `z` to their centre. χ_LT
 /// by EN 1993-1-1 6.3.2.2, curve d; 0.6 for the moment's triangle.
-pub fn buckling(
-    (t_p, h_p): (Length, Length),
-    (z_p, z): (Length, Length),
-    f_y: Stress,
-    gamma_M1: f64,
-) -> Resistance {
+pub fn buckling((t_p, h_p): (Length, Length), (z_p, z): (Length, Length), f_y: Stress, gamma_M1: f64) -> Resistance {
     let mut w = Working::default();
     given!(w, "long plate"; t_p, h_p, z_p, z, f_y);
     step!(w, "EN 1993-1-1 6.2.5", W_el = t_p * (h_p * h_p) / 6.0);

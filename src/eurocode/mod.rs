@@ -9,6 +9,7 @@ pub mod beam;
 pub mod bolt_group;
 pub mod bolts;
 pub mod classification;
+pub mod column_base;
 pub mod column_web;
 pub mod diagonals;
 pub mod effective_length;

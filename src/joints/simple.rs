@@ -1,9 +1,11 @@
 //! Joints that carry shear or axial force and are no moment joints: each kind in a file of its own, in a frame of its own.
 
+mod column_base;
 mod fin_plate;
 mod flexible;
 mod grid;
 
+pub use column_base::{Anchor, ColumnBase, Foundation, Spread};
 pub use fin_plate::{FinPlate, On};
 pub use flexible::{Cope, FlexibleEndPlate, Held as HeldBy};
 pub use grid::Grid;
@@ -19,6 +21,8 @@ pub enum SimpleLayout {
     FinPlate(Box<FinPlate>),
     /// A flexible end plate.
     FlexibleEndPlate(Box<FlexibleEndPlate>),
+    /// A column's base plate on concrete.
+    ColumnBase(Box<ColumnBase>),
 }
 
 impl SimpleLayout {
@@ -27,6 +31,7 @@ impl SimpleLayout {
         match self {
             Self::FinPlate(layout) => layout.lines(),
             Self::FlexibleEndPlate(layout) => layout.lines(),
+            Self::ColumnBase(base) => base.lines(),
         }
     }
 
@@ -34,6 +39,7 @@ impl SimpleLayout {
     pub fn takes_notches(&self) -> bool {
         match self {
             Self::FinPlate(_) | Self::FlexibleEndPlate(_) => true,
+            Self::ColumnBase(_) => false,
         }
     }
 }
@@ -49,9 +55,11 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Option<Result<SimpleL
         Kind::FlexibleEndPlate => {
             Some(flexible::lay_out(scene, draft).map(|layout| SimpleLayout::FlexibleEndPlate(Box::new(layout))))
         }
+        Kind::ColumnBase => {
+            column_base::lay_out(scene, draft).map(|laid| laid.map(|base| SimpleLayout::ColumnBase(Box::new(base))))
+        }
         Kind::WebCleats
         | Kind::CoverPlateSplice
-        | Kind::ColumnBase
         | Kind::Gusset
         | Kind::EndPlateMoment
         | Kind::EndPlateSplice

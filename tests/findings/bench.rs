@@ -360,6 +360,7 @@ fn scheduled() -> ScheduledJoint {
 fn intended() -> IntendedDetail {
     IntendedDetail {
         haunch: None,
+        base: None,
         name: "E1".into(),
         supporting_section: Some("HEB 300".into()),
         supported_section: Some("IPE 500".into()),

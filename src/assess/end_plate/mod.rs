@@ -15,7 +15,8 @@ mod turning;
 mod weld_checks;
 
 pub use intended::{intended, intended_layout, with_category};
-use numbers::{Noted, Numbers, PlateSide};
+pub(in crate::assess) use numbers::Noted;
+use numbers::{Numbers, PlateSide};
 use shear::Tension;
 use solver::Solved;
 pub use solver::Solver;

@@ -69,7 +69,12 @@ fn in_shear(n: &Numbers<'_>) -> Vec<Component> {
     let factors = (rules.block_tearing, gamma_M0, gamma_M2);
     let torn = ends(&plate).map(|end| block_tearing(n, &plate, end, factors)).reduce(weaker);
     all.extend(torn.map(|r| component("plate-block-tearing", "plate in block tearing", "EN 1993-1-8:2005 3.10.2", r)));
-    all.push(component("plate-in-bending", "plate in bending", GUIDE, fin_plate::bending(t_p, h_p, n.z(), f_y, gamma_M0)));
+    all.push(component(
+        "plate-in-bending",
+        "plate in bending",
+        GUIDE,
+        fin_plate::bending(t_p, h_p, n.z(), f_y, gamma_M0),
+    ));
     if n.is_long() {
         let buckling = fin_plate::buckling((t_p, h_p), (n.z_p(), n.z()), f_y, gamma_M1);
         all.push(component("plate-buckling", "plate in lateral torsional buckling", GUIDE, buckling));
@@ -88,8 +93,15 @@ fn in_shear(n: &Numbers<'_>) -> Vec<Component> {
     let net = Resistance { value: net.value, working: w };
     all.push(component("beam-web-net-shear", "beam web, net section in shear", GUIDE, net));
     let torn = ends(&web).map(|end| block_tearing(n, &web, end, factors)).reduce(weaker);
-    all.extend(torn.map(|r| component("beam-web-block-tearing", "beam web in block tearing", "EN 1993-1-8:2005 3.10.2", r)));
-    all.extend(n.notch_bending(gamma_M0).into_iter().reduce(weaker).map(|r| component("beam-notch-in-bending", "beam at the notch in bending", "EN 1993-1-1 6.2.8", r)));
+    all.extend(
+        torn.map(|r| component("beam-web-block-tearing", "beam web in block tearing", "EN 1993-1-8:2005 3.10.2", r)),
+    );
+    all.extend(
+        n.notch_bending(gamma_M0)
+            .into_iter()
+            .reduce(weaker)
+            .map(|r| component("beam-notch-in-bending", "beam at the notch in bending", "EN 1993-1-1 6.2.8", r)),
+    );
 
     if let Some((a, beta_w, f_u)) = n.fillets() {
         let welds = fin_plate::welds((a, h_p), n.z(), (f_u, beta_w), gamma_M2);
@@ -159,12 +171,7 @@ fn ends(ply: &Ply) -> impl Iterator<Item = Length> + use<> {
 /// The block of all bolts torn off towards an edge along the load, `e_1` from the last row: sheared along the line furthest from
 /// the side, in tension from the first row to the side.
 #[allow(non_snake_case)]
-fn block_tearing(
-    n: &Numbers<'_>,
-    ply: &Ply,
-    e_1: Length,
-    (share, gamma_M0, gamma_M2): (f64, f64, f64),
-) -> Resistance {
+fn block_tearing(n: &Numbers<'_>, ply: &Ply, e_1: Length, (share, gamma_M0, gamma_M2): (f64, f64, f64)) -> Resistance {
     let mut w = Working::default();
     let (n_1, n_2, d_0, t, e_2) = (n.rows() as f64, n.lines() as f64, n.bolts.d_0, ply.t, ply.side);
     let (length, width) = (n.length(), n.width());

@@ -107,7 +107,10 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FinPlate, Stri
         return Err("fin plate: it is not told what holds the plate".into());
     };
     let [(plate_index, _)] = draft.joint.plates[..] else {
-        return Err(format!("fin plate: {} plates are bolted to the beam's web: not assessed yet", draft.joint.plates.len()));
+        return Err(format!(
+            "fin plate: {} plates are bolted to the beam's web: not assessed yet",
+            draft.joint.plates.len()
+        ));
     };
     let (beam, support) = (&scene.steel.members[beam_index], &scene.steel.members[support_index]);
     let plate = &scene.steel.plates[plate_index];
@@ -163,7 +166,9 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FinPlate, Stri
     }
     let off = (plate.centre - support.start).dot(support.across).abs();
     if on == On::ColumnFlange && !(off <= OFF_WEB) {
-        return Err(format!("fin plate: it stands {off:.0} mm beside the column's web on its flange: not assessed yet"));
+        return Err(format!(
+            "fin plate: it stands {off:.0} mm beside the column's web on its flange: not assessed yet"
+        ));
     }
     let plies: Vec<Vec<Pass>> = draft.joint.bolts.iter().map(|bolt| scene.touches.passes[*bolt].clone()).collect();
     let both = |passes: &Vec<Pass>| {
@@ -172,7 +177,9 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FinPlate, Stri
             && passes.iter().any(|pass| matches!(pass, Pass::Member(member, _) if *member == beam_index))
     };
     if !plies.iter().all(both) {
-        return Err("fin plate: its bolts pass through other plies than the plate and the beam's web: not assessed yet".into());
+        return Err(
+            "fin plate: its bolts pass through other plies than the plate and the beam's web: not assessed yet".into(),
+        );
     }
     let bolts = grid::lay_out(scene, draft, plate_index, &Axes { origin, along: inward, up })
         .map_err(|why| format!("fin plate: {why}"))?;
@@ -183,13 +190,17 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FinPlate, Stri
     let heights = Span { lo: high.lo, hi: high.hi };
     let upwards = beam.depth.dot(up) > 0.0;
     let at_end = draft.joint.at_end == Some(true);
-    let notch = |top: bool| {
-        let own = beam.notches.iter().filter(|notch| notch.at_end == at_end && (notch.positive == upwards) == top);
-        own.fold(None, |most: Option<Cope>, notch| {
-            let (length, depth) = (mm(notch.length), mm(notch.depth));
-            Some(most.map_or(Cope { length, depth }, |m| Cope { length: m.length.max(length), depth: m.depth.max(depth) }))
-        })
-    };
+    let notch =
+        |top: bool| {
+            let own = beam.notches.iter().filter(|notch| notch.at_end == at_end && (notch.positive == upwards) == top);
+            own.fold(None, |most: Option<Cope>, notch| {
+                let (length, depth) = (mm(notch.length), mm(notch.depth));
+                Some(most.map_or(Cope { length, depth }, |m| Cope {
+                    length: m.length.max(length),
+                    depth: m.depth.max(depth),
+                }))
+            })
+        };
     Ok(FinPlate {
         beam: member_at(scene, beam_index),
         support: member_at(scene, support_index),
@@ -205,7 +216,8 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FinPlate, Stri
         top_notch: notch(true),
         bottom_notch: notch(false),
         weld: weld(scene, plate_index, support_index, &Along { origin, up, heights }),
-        opposite: on != On::ColumnFlange && is_opposed(scene, plate_index, support_index, inward, &Along { origin, up, heights }),
+        opposite: on != On::ColumnFlange
+            && is_opposed(scene, plate_index, support_index, inward, &Along { origin, up, heights }),
     })
 }
 
@@ -248,7 +260,9 @@ fn weld(scene: &Scene, plate: usize, support: usize, along: &Along) -> Known<Len
         let full = along.heights.size();
         match run {
             Some(run) => runs.push(Span { hi: run.hi.min(run.lo + stated), ..run }),
-            None if stated.is_finite() => runs.push(Span { lo: along.heights.lo, hi: along.heights.lo + stated.min(full) }),
+            None if stated.is_finite() => {
+                runs.push(Span { lo: along.heights.lo, hi: along.heights.lo + stated.min(full) })
+            }
             None => return missing("the welds there have neither a place nor a length".into()),
         }
         let beside = Span::of(weld.points.iter().map(|point| (*point - body.centre).dot(body.normal)));
@@ -284,7 +298,8 @@ fn is_opposed(scene: &Scene, plate: usize, support: usize, inward: DVec3, along:
     scene.touches.plates_of[support].iter().any(|other| {
         let body = &scene.steel.plates[*other];
         let behind = (body.centre - middle).dot(inward) < 0.0;
-        let level = along.span(corners(body)).is_some_and(|own| own.lo <= along.heights.hi && own.hi >= along.heights.lo);
+        let level =
+            along.span(corners(body)).is_some_and(|own| own.lo <= along.heights.hi && own.hi >= along.heights.lo);
         let near = (body.centre - scene.steel.plates[plate].centre).dot(scene.steel.members[support].along).abs()
             <= 2.0 * along.heights.size()
             && body.centre.distance(scene.steel.plates[plate].centre) <= 2.0 * along.heights.size() + 500.0;

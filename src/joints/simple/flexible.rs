@@ -81,7 +81,10 @@ impl FlexibleEndPlate {
         let notch = |cope: Option<Cope>| cope.map_or("none".into(), |c| format!("{} × {}", c.length, c.depth));
         let mut lines = vec![
             format!("on the {}", self.held.word()),
-            format!("end plate {} × {}, from {} to {}", self.plate.thickness, self.plate.width, self.plate.bottom, self.plate.top),
+            format!(
+                "end plate {} × {}, from {} to {}",
+                self.plate.thickness, self.plate.width, self.plate.bottom, self.plate.top
+            ),
             format!("bolts d {}, d0 {}", print(&self.bolts.diameter), print(&self.bolts.hole)),
             format!("weld at the web a {}", print(&self.weld)),
             format!("notch at the top {}", notch(self.top)),
@@ -197,7 +200,11 @@ fn held(scene: &Scene, draft: &Draft, at: &Member, supporting: usize, frame: &Fr
         Some(Ply::Web) if stands => (Ply::Web, Held::ColumnWeb),
         Some(Ply::Web) if lies => (Ply::Web, Held::BeamWeb),
         Some(ply) if ply.sign() != 0.0 && stands => (*ply, Held::ColumnFlange),
-        Some(_) => return Err("the beam's depth runs neither along the supporting member nor with its depth: not assessed yet".into()),
+        Some(_) => {
+            return Err(
+                "the beam's depth runs neither along the supporting member nor with its depth: not assessed yet".into(),
+            );
+        }
         None => return Err("the bolts do not all pass through one flange or web: not assessed yet".into()),
     };
     let through = |bolt: &&usize| scene.touches.passes[**bolt].contains(&Pass::Member(supporting, ply));

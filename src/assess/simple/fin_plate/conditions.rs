@@ -24,7 +24,8 @@ pub(super) fn note(n: &Numbers<'_>, noted: &mut Noted) {
     if let Some(a) = n.a {
         // By the plate's nominal strength: a thicker plate of the same grade has the same factor.
         let nominal = n.plate_grade.0.trim_start_matches('S').get(..3).and_then(|f_y| f_y.parse::<f64>().ok());
-        let share = FULL_STRENGTH.iter().find(|(f_y, _)| nominal.is_some_and(|own| own <= *f_y)).map(|(_, share)| *share);
+        let share =
+            FULL_STRENGTH.iter().find(|(f_y, _)| nominal.is_some_and(|own| own <= *f_y)).map(|(_, share)| *share);
         match share {
             Some(share) if a >= share * t_p - n.rulebook.tolerances.size => {}
             Some(share) => noted.not_checked(
@@ -38,11 +39,18 @@ pub(super) fn note(n: &Numbers<'_>, noted: &mut Noted) {
     let d = n.bolts.d;
     let thin = by(&DUCTILE).is_some_and(|share| t_p <= share * d || n.beam.t_w <= share * d);
     if !thin {
-        let reason = format!("neither plate ({t_p}) nor web ({}) is thin enough beside a bolt of {d} to wear before the bolts shear", n.beam.t_w);
+        let reason = format!(
+            "neither plate ({t_p}) nor web ({}) is thin enough beside a bolt of {d} to wear before the bolts shear",
+            n.beam.t_w
+        );
         noted.not_checked("ductility of the bolts", reason, Ask::Method);
     }
     if !(n.h_p() >= HELD * n.beam.h) {
-        let reason = format!("the plate is {} high, less than {HELD} of the beam's {}: it does not hold the beam's end against twisting", n.h_p(), n.beam.h);
+        let reason = format!(
+            "the plate is {} high, less than {HELD} of the beam's {}: it does not hold the beam's end against twisting",
+            n.h_p(),
+            n.beam.h
+        );
         noted.not_checked("hold against twisting", reason, Ask::Engineer);
     }
     let root = n.beam.t_f + n.r_b;
@@ -50,7 +58,11 @@ pub(super) fn note(n: &Numbers<'_>, noted: &mut Noted) {
     let straight = [at(n.layout.bottom_notch), n.beam.h - at(n.layout.top_notch)];
     let slack = n.rulebook.tolerances.position;
     if !(n.layout.bottom >= straight[0] - slack && n.layout.top <= straight[1] + slack) {
-        noted.not_checked("rotation of the joint", "the plate runs over the beam's root radius, flange or notched edge".into(), Ask::Fabricator);
+        noted.not_checked(
+            "rotation of the joint",
+            "the plate runs over the beam's root radius, flange or notched edge".into(),
+            Ask::Fabricator,
+        );
     }
     rotation(n, noted);
     notches(n, noted);
@@ -96,7 +108,11 @@ fn rotation(n: &Numbers<'_>, noted: &mut Noted) {
         1000.0 * free
     ));
     if !(free > 0.0) {
-        noted.not_checked("rotation of the joint", format!("a gap of {gap:.1} mm leaves the beam's end no room to turn"), Ask::Fabricator);
+        noted.not_checked(
+            "rotation of the joint",
+            format!("a gap of {gap:.1} mm leaves the beam's end no room to turn"),
+            Ask::Fabricator,
+        );
     }
 }
 
@@ -105,7 +121,9 @@ fn web(n: &Numbers<'_>, noted: &mut Noted) {
     let t_w = n.support.t_w;
     let most = t_w * (n.support_steel.f_u / (f_yp * n.rulebook.annex.gamma_m2));
     if !(t_p <= most) {
-        let reason = format!("a plate of {t_p} may punch through the supporting web of {t_w}: the design guides let it be {most} at most");
+        let reason = format!(
+            "a plate of {t_p} may punch through the supporting web of {t_w}: the design guides let it be {most} at most"
+        );
         noted.not_checked("punching of the supporting web", reason, Ask::Method);
     }
     if n.layout.opposite {

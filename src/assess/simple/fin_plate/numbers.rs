@@ -74,8 +74,16 @@ impl<'a> Numbers<'a> {
         }
         for (at, notch) in [("top", layout.top_notch), ("bottom", layout.bottom_notch)] {
             if let Some(notch) = notch {
-                noted.given(&format!("notch at the {at}, length"), notch.length, "the box round what is cut off the beam");
-                noted.given(&format!("notch at the {at}, depth"), notch.depth, "the box round what is cut off the beam");
+                noted.given(
+                    &format!("notch at the {at}, length"),
+                    notch.length,
+                    "the box round what is cut off the beam",
+                );
+                noted.given(
+                    &format!("notch at the {at}, depth"),
+                    notch.depth,
+                    "the box round what is cut off the beam",
+                );
             }
         }
         for (i, row) in layout.bolts.rows.iter().enumerate() {
@@ -148,7 +156,9 @@ impl<'a> Numbers<'a> {
         asked.push(("height of the plate", self.h_p(), 1.0));
         asked.push(("distance of the bolts from the support", self.z_p(), 0.5));
         let short = asked.iter().find(|(_, own, least)| !(*own >= *least * d_0 - slack));
-        short.map(|(what, own, least)| format!("{what} is {own}, Table 3.3 asks for {least} d0 = {}: not assessed", *least * d_0))
+        short.map(|(what, own, least)| {
+            format!("{what} is {own}, Table 3.3 asks for {least} d0 = {}: not assessed", *least * d_0)
+        })
     }
 
     pub(super) fn h_p(&self) -> Length {
@@ -307,7 +317,11 @@ fn throat(layout: &FinPlate, rulebook: &Rulebook, noted: &mut Noted) -> Option<L
     if a >= least && a.get().is_finite() {
         return Some(a);
     }
-    noted.not_checked(name, format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"), Ask::Fabricator);
+    noted.not_checked(
+        name,
+        format!("a throat of {a} is not counted, {least} is the least (4.5.2(2))"),
+        Ask::Fabricator,
+    );
     None
 }
 
