@@ -159,6 +159,8 @@ pub enum About {
     Weld,
     /// A tying force of EN 1991-1-7 against the resistance by γ_Mu.
     Tying,
+    /// N_Ed against the joint's own axial resistance.
+    Force,
     /// N_Ed against the 5 % limit of 6.2.7.1(2); beyond it M_Ed and N_Ed together by 6.2.7.1(3).
     Axial,
 }
@@ -243,6 +245,10 @@ pub struct Assessment {
     pub shear: Option<Arc<ShearResistance>>,
     /// Every component in tying, by γ_Mu; empty where the kind has no method.
     pub tying: Vec<Component>,
+    /// N_j,Rd in compression without a moment, where the kind has it.
+    pub axial: Option<AxialResistance>,
+    /// Components beside those of moment and shear, each with what the leading load case puts on it.
+    pub beside: Vec<(Component, Option<Force>)>,
     /// Results for each load case.
     pub cases: Vec<CaseResult>,
     /// What keeps it from being a proof.

@@ -1,9 +1,13 @@
 //! Joints that carry shear or axial force and are no moment joints: what every kind shares, and which file assesses which.
 
+pub mod column_base;
+mod fin_plate;
+mod flexible;
+
 use std::sync::Arc;
 
 use super::{About, Assessment, CaseResult, Component, Gap, Input, ShearResistance, State, Verdict};
-use crate::intent::LoadCase;
+use crate::intent::{IntendedDetail, LoadCase};
 use crate::joints::SimpleLayout;
 use crate::rulebook::Rulebook;
 use crate::units::{Force, Moment};
@@ -24,8 +28,23 @@ pub struct Strength {
 }
 
 /// Assesses a joint as laid out, against load cases if there are any.
-pub fn assess(layout: &SimpleLayout, _cases: &[&LoadCase], _rulebook: &Rulebook) -> Assessment {
-    match *layout {}
+pub fn assess(layout: &SimpleLayout, cases: &[&LoadCase], rulebook: &Rulebook) -> Assessment {
+    match layout {
+        SimpleLayout::FinPlate(layout) => pinned(fin_plate::strength(layout, rulebook), cases, rulebook),
+        SimpleLayout::FlexibleEndPlate(layout) => flexible::assess(layout, cases, rulebook),
+        SimpleLayout::ColumnBase(base) => column_base::assess(base, cases, rulebook),
+    }
+}
+
+/// The layout with what only a schedule states, where its detail states something of the kind.
+pub fn with_detail(layout: &SimpleLayout, detail: &IntendedDetail) -> Option<SimpleLayout> {
+    match layout {
+        SimpleLayout::ColumnBase(base) => {
+            let base = column_base::with_foundation(base, detail)?;
+            Some(SimpleLayout::ColumnBase(Box::new(base)))
+        }
+        SimpleLayout::FinPlate(_) | SimpleLayout::FlexibleEndPlate(_) => None,
+    }
 }
 
 /// The component with the least resistance; `None` for none, or where a resistance is no number.

@@ -6,6 +6,7 @@ use std::sync::{Arc, Mutex, MutexGuard, PoisonError};
 use super::{Computed, Sources, brief, sketch};
 use crate::assess::classification::classify;
 use crate::assess::end_plate::{BOUND_BY_OPPOSITE, BOUND_BY_TENSION};
+use crate::assess::simple::column_base::BASE_IN_SHEAR;
 use crate::assess::{About, Assessment, Component, Gap, MomentResistance, Sense, ShearResistance, State, Verdict};
 use crate::intent::{JointClass, ScheduledJoint};
 use crate::joints::Joint;
@@ -14,7 +15,7 @@ use crate::review::{
     CheckResult, Finding, JointReview, Outcome, REQUIRED_ACTIONS, Required, Resistance, RowBasis, RowResult,
     StiffnessResult,
 };
-use crate::units::{Length, Moment, kn};
+use crate::units::{Force, Length, Moment, kn};
 
 /// A joint of the steel.
 pub fn review(
@@ -185,7 +186,7 @@ fn missing(
                 About::Moment => "proof of the moment",
                 About::Shear => "proof of the shear",
                 About::Weld => "proof of the welds",
-                About::Axial => "proof of the axial force",
+                About::Axial | About::Force => "proof of the axial force",
                 About::Tying => "proof of the tying force",
             };
             let engineers = verdict.required.is_none() || reason == BOUND_BY_OPPOSITE || reason == BOUND_BY_TENSION;
@@ -209,7 +210,9 @@ fn missing(
 fn resistance(assessment: &Assessment) -> Resistance {
     let (hogging, sagging) = (assessment.hogging.as_ref(), assessment.sagging.as_ref());
     let shear = assessment.shear.as_ref();
-    let governs = hogging.or(sagging).map(|m| m.governed_by.clone()).or(shear.map(|s| s.governed_by.clone()));
+    let governs = (hogging.or(sagging).map(|m| m.governed_by.clone()))
+        .or(assessment.axial.as_ref().map(|axial| axial.governed_by.clone()))
+        .or(shear.map(|s| s.governed_by.clone()));
     Resistance {
         moment_knm: hogging.map(|m| m.moment.knm()),
         moment_reversed_knm: sagging.map(|m| m.moment.knm()),
@@ -217,7 +220,8 @@ fn resistance(assessment: &Assessment) -> Resistance {
         shear_kn: shear.map(|s| s.shear.kn()),
         axial_kn: (assessment.cases.iter().filter_map(|case| case.axial.as_ref()))
             .map(|axial| axial.resistance.kn())
-            .min_by(f64::total_cmp),
+            .min_by(f64::total_cmp)
+            .or(assessment.axial.as_ref().map(|axial| axial.force.kn())),
         governed_by: governs,
     }
 }
@@ -236,6 +240,7 @@ fn required(assessment: Option<&Assessment>, scheduled: Option<&ScheduledJoint>)
             moment_knm: case.moment.map(|m| m.knm()),
             shear_kn: case.shear.map(|v| v.kn()),
             axial_kn: case.axial.map(|n| n.kn()),
+            tying_kn: case.tying.map(|force| force.kn()),
             utilisation: worst.and_then(|v| v.utilisation),
             governed_by: worst.map(|v| v.governed_by.clone()),
             moment_resistance_knm: result.and_then(|r| r.moment.as_ref()).map(|m| m.moment.knm()),
@@ -319,7 +324,10 @@ impl Held {
         }
         if let Some(shear) = &self.shear {
             let resistance = shear.shear.kn();
-            checks.push(check("shear", "vertical shear", "EN 1993-1-8:2005 3.6, 3.7", resistance, shear_kn, "kN"));
+            let of_base = shear.components.iter().any(|c| c.id == BASE_IN_SHEAR);
+            let title = if of_base { "shear" } else { "vertical shear" };
+            let clause = if of_base { "EN 1993-1-8:2005 6.2.2" } else { "EN 1993-1-8:2005 3.6, 3.7" };
+            checks.push(check("shear", title, clause, resistance, shear_kn, "kN"));
             checks.extend(shear.components.iter().map(|c| component(c, shear_kn, least_throat)));
         }
         checks.into()
@@ -377,6 +385,16 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>, checks: 
         let outcome = if used <= 1.0 { "met" } else { "unproven" };
         let result = CheckResult { utilisation: Some(used), outcome, ..result };
         checks = checks.iter().cloned().chain([result]).collect();
+    }
+    if !assessment.tying.is_empty() {
+        let stated = scheduled.iter().flat_map(|s| &s.cases).filter_map(|case| case.tying);
+        let most = stated.map(|force| force.kn().abs()).max_by(f64::total_cmp);
+        let tying = assessment.tying.iter().map(|c| component(c, most, least_throat));
+        checks = checks.iter().cloned().chain(tying).collect();
+    }
+    if !assessment.beside.is_empty() {
+        let beside = assessment.beside.iter().map(|(part, force)| component(part, force.map(Force::kn), least_throat));
+        checks = beside.chain(checks.iter().cloned()).collect();
     }
     let shear_case = shear_case.filter(|case| case.shear.is_some()).and_then(|case| named(case.case));
     Leading { rows, row_basis, shear_case, stiffness, checks }

@@ -7,14 +7,14 @@ mod sketch;
 use rayon::prelude::*;
 use sha2::{Digest, Sha256};
 
-use crate::assess::Assessment;
 use crate::assess::end_plate::{self, Demand, Opposite, Solver};
 use crate::assess::simple;
+use crate::assess::{Assessment, Gap};
 use crate::exchange::Exchange;
 use crate::findings::{self, Context};
 use crate::intent::{IntendedDetail, Intent, LoadCase, Pairing, ScheduledJoint};
 use crate::joints::{Joint, Joints, Laid, Layout};
-use crate::origin::{Missing, Problem};
+use crate::origin::{Ask, Missing, Problem};
 use crate::review::{Basis, Counts, JointReview, Outcome, Review, Survey};
 use crate::rulebook::{Alpha, ModeOne, RowForces, Rulebook};
 use crate::shop::Steelwork;
@@ -53,7 +53,7 @@ pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
     let ends = |outcome| joints.iter().filter(|joint| joint.outcome == outcome).count();
     let resistance = |joint: &&JointReview| {
         let r = &joint.resistance;
-        r.moment_knm.is_some() || r.moment_reversed_knm.is_some() || r.shear_kn.is_some()
+        r.moment_knm.is_some() || r.moment_reversed_knm.is_some() || r.shear_kn.is_some() || r.axial_kn.is_some()
     };
     let counts = Counts {
         found: sources.joints.joints.len(),
@@ -178,6 +178,13 @@ fn survey(sources: &Sources<'_>) -> Survey {
     }
 }
 
+/// A detail of the schedule that nothing of the steel is held against.
+fn not_compared() -> Missing {
+    let reason =
+        "what the schedule's detail states of steel, bolts and welds is not compared with a joint of this kind yet";
+    Missing { what: "comparison with the intended detail".into(), reason: reason.into(), at: None, ask: Ask::Method }
+}
+
 /// What was computed for one joint.
 struct Computed {
     detailed: Option<Assessment>,
@@ -213,7 +220,13 @@ impl<'a> Sources<'a> {
             Ok(Laid::Plates(layout)) => layout,
             Ok(Laid::Simple(layout)) => {
                 let cases: Vec<&LoadCase> = cases.iter().collect();
-                return Computed { detailed: Some(simple::assess(layout, &cases, self.rulebook)), intended: None };
+                let detail = self.detail(scheduled);
+                let asked = detail.and_then(|detail| simple::with_detail(layout, detail));
+                let mut detailed = simple::assess(asked.as_ref().unwrap_or(layout), &cases, self.rulebook);
+                if detail.is_some_and(IntendedDetail::states_steel) {
+                    detailed.gaps.push(Gap::NotChecked(not_compared()));
+                }
+                return Computed { detailed: Some(detailed), intended: None };
             }
             Err(_) => return Computed { detailed: None, intended: None },
         };

@@ -3,6 +3,7 @@
 //! `rules/schedule.md` says how a schedule is written; this room is its reader.
 
 mod actions;
+mod base;
 mod csv_cells;
 mod csv_form;
 mod fault;
@@ -19,6 +20,7 @@ pub use pairing::pair;
 pub(crate) use source::fold;
 pub use source::{MAX_BYTES, MAX_LINE_BYTES};
 
+use crate::joints::Foundation;
 use crate::origin::{Place, Problem};
 use crate::rulebook::Category;
 use crate::units::{Force, Length, Moment};
@@ -165,7 +167,7 @@ pub struct IntendedHaunch {
 }
 
 /// An intended detail; what is not stated is not compared.
-#[derive(Clone, Debug, Default)]
+#[derive(Clone, Debug, Default, PartialEq)]
 pub struct IntendedDetail {
     /// Its name in the schedule.
     pub name: String,
@@ -221,8 +223,17 @@ pub struct IntendedDetail {
     pub backing_plates: Option<Option<IntendedStiffener>>,
     /// The haunch below the beam: `Some(None)` means "none intended".
     pub haunch: Option<Option<IntendedHaunch>>,
+    /// The foundation below a column's base plate.
+    pub base: Option<Foundation>,
     /// Where it is written.
     pub at: Option<Place>,
+}
+
+impl IntendedDetail {
+    /// Whether it states anything besides the foundation.
+    pub fn states_steel(&self) -> bool {
+        Self { name: String::new(), base: None, at: None, ..self.clone() } != Self::default()
+    }
 }
 
 /// All that the engineer stated.

@@ -20,7 +20,7 @@ impl Reader<'_> {
             return None;
         };
         let table = Table { table, span: value.span(), name: format!("[detail.{}]", name.get_ref()) };
-        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "haunch", "members", "exposed"]);
+        self.known(&table, &["bolts", "plate", "welds", "stiffeners", "haunch", "base", "members", "exposed"]);
         let mut detail = IntendedDetail { at: Some(self.source.place(name.span().start)), ..IntendedDetail::default() };
         match tidy(name.get_ref()) {
             Ok(name) if !name.is_empty() => detail.name = name,
@@ -73,6 +73,7 @@ impl Reader<'_> {
             }
         }
         detail.haunch = self.haunch(&table);
+        detail.base = self.base(&table);
         if let Some(members) = self.inner(&table, "members") {
             self.known(&members, &["supporting_section", "supported_section", "supporting_grade", "supported_grade"]);
             detail.supporting_section = self.text(&members, "supporting_section");

@@ -300,6 +300,7 @@ fn steelwork(rulebook: &Rulebook) -> Steelwork {
         extents: DVec2::ONE,
         section: known(section(rulebook, name)),
         grade: grade("S355"),
+        notches: Vec::new(),
         not_assessed: None,
         disagreements: Vec::new(),
     };
@@ -359,6 +360,7 @@ fn scheduled() -> ScheduledJoint {
 fn intended() -> IntendedDetail {
     IntendedDetail {
         haunch: None,
+        base: None,
         name: "E1".into(),
         supporting_section: Some("HEB 300".into()),
         supported_section: Some("IPE 500".into()),

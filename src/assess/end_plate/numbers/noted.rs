@@ -20,7 +20,12 @@ pub struct Noted {
 }
 
 impl Noted {
-    pub(super) fn take<T: Clone>(&mut self, name: &str, known: &Known<T>, print: impl Fn(&T) -> String) -> Option<T> {
+    pub(in crate::assess) fn take<T: Clone>(
+        &mut self,
+        name: &str,
+        known: &Known<T>,
+        print: impl Fn(&T) -> String,
+    ) -> Option<T> {
         match known {
             Ok(datum) => {
                 self.inputs.push(Input::of(name, datum, print));
@@ -36,15 +41,15 @@ impl Noted {
         }
     }
 
-    pub(super) fn not_checked(&mut self, what: &str, reason: String, ask: Ask) {
+    pub(in crate::assess) fn not_checked(&mut self, what: &str, reason: String, ask: Ask) {
         self.gaps.push(Gap::NotChecked(Missing { what: what.into(), reason, at: None, ask }));
     }
 
-    pub(super) fn lower_bound(&mut self, what: &str, reason: String) {
+    pub(in crate::assess) fn lower_bound(&mut self, what: &str, reason: String) {
         self.gaps.push(Gap::LowerBound(Missing { what: what.into(), reason, at: None, ask: Ask::Fabricator }));
     }
 
-    pub(super) fn member(
+    pub(in crate::assess) fn member(
         &mut self,
         role: &str,
         at: &MemberAt,
@@ -70,17 +75,23 @@ impl Noted {
         Some((section, strength, r))
     }
 
-    pub(super) fn strength(&mut self, name: &str, rulebook: &Rulebook, grade: &Grade, t: Length) -> Option<Strength> {
+    pub(in crate::assess) fn strength(
+        &mut self,
+        name: &str,
+        rulebook: &Rulebook,
+        grade: &Grade,
+        t: Length,
+    ) -> Option<Strength> {
         let known = rulebook.strength(grade, t);
         self.take(name, &known, |s| format!("fy {}, fu {} at {t}", s.f_y, s.f_u))
     }
 
     /// A size taken from the geometry.
-    pub(super) fn given(&mut self, name: &str, value: Length, what: &str) {
+    pub(in crate::assess) fn given(&mut self, name: &str, value: Length, what: &str) {
         self.inputs.push(Input::of(name, &Datum::new(value, Origin::Derived(what.into())), print_length));
     }
 }
 
-pub(super) fn print_length(length: &Length) -> String {
+pub(in crate::assess) fn print_length(length: &Length) -> String {
     length.to_string()
 }
