@@ -37,17 +37,17 @@ fn fin() -> Fin {
     }
 }
 
-/// Flexible end plates: F2 of partial depth, F3 of full depth; welded to the web only.
-pub fn flexible(detail: &str) -> Detail {
+/// Flexible end plates of "partial" and of "full" depth, welded to the web only.
+pub fn flexible(depth: &str) -> Detail {
     let of = intended("M4");
-    let (bottom, top, rows) = match detail {
-        "F2" => (43.4, 263.4, vec![223.4, 153.4, 83.4]),
+    let (bottom, top, rows) = match depth {
+        "partial" => (43.4, 263.4, vec![223.4, 153.4, 83.4]),
         _ => (-10.0, 313.4, vec![253.4, 183.4, 113.4, 50.0]),
     };
     let plate = EndPlate { thickness: 10.0, width: 170.0, bottom, top, grade: "S275JR".into() };
     let mut bolts = of.bolts;
     bolts.rows = rows;
-    Detail { plate, bolts, welds: Some(Welds { flange: 0.0, web: 4.0, bodies: false }), stiffeners: vec![] }
+    Detail { plate, bolts, welds: Some(Welds { flange: -1.0, web: 4.0, bodies: false }), stiffeners: vec![] }
 }
 
 /// Puts the jetty into the building.
@@ -79,12 +79,12 @@ pub fn add(building: &mut Building) {
     let free = |x, y| End::Free([x, y]);
     let (light, heavy) = ("UKB 305x165x40", "UKB 457x191x74");
     let beams = building.beams.len();
-    // A weld of half the throat, at the full-depth plate.
-    let mut slight = flexible("F3");
-    slight.welds = Some(Welds { flange: 0.0, web: 2.0, bodies: false });
+    // A weld too slight to count, at the full-depth plate.
+    let mut slight = flexible("full");
+    slight.welds = Some(Welds { flange: -1.0, web: 2.0, bodies: false });
     building.beams.extend([
         beam("B21", light, [free(flange + 10.0, LINE), free(6000.0 - flange - 10.0, LINE)]),
-        beam("B22", light, [joint(first + 1, "J53", flexible("F2")), joint(first + 2, "J54", slight)]),
+        beam("B22", light, [joint(first + 1, "J53", flexible("partial")), joint(first + 2, "J54", slight)]),
         // On the quay walls at both ends.
         beam("B23", heavy, [free(0.0, QUAY), free(5995.0, QUAY)]),
         beam("B24", heavy, [free(6005.0, QUAY), free(12000.0, QUAY)]),

@@ -68,6 +68,8 @@ fn group(data: &mut Value, groups: &BTreeMap<String, String>) {
 
 /// Where the size of a bolt is said, and its thread: by its type, in IFC2X3 by itself, of a proxy in its name.
 fn said_by(body: BoltBody, version: Version, origin: &str) -> String {
+    // Anchors are fasteners in every shape of the building.
+    let body = if origin.contains("ANCHOR") { BoltBody::Shank } else { body };
     // A proxy has no property set for its thread.
     if let (BoltBody::Proxies, Some(thread)) = (body, origin.strip_suffix(", by the bolts' length and thread")) {
         return format!("{thread}: no model says where it ends");

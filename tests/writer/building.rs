@@ -271,7 +271,7 @@ pub enum PlateAs {
 /// Throats of the fillets, both sides of each flange and of the web.
 #[derive(Clone, Debug)]
 pub struct Welds {
-    /// At both flanges; 0: none.
+    /// At both flanges; negative: none are written.
     pub flange: f64,
     /// At the web.
     pub web: f64,
