@@ -3,6 +3,7 @@
 
 mod axial;
 mod butt_welds;
+pub mod column_bases;
 mod haunches;
 mod intended;
 pub mod joint;

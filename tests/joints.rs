@@ -1,5 +1,6 @@
 //! Joints found in hand-built steel. Expected values are the parameters with which the steel was built.
 
+mod bases;
 mod build;
 mod haunches;
 mod kinds;

@@ -181,7 +181,9 @@ fn a_base_plate() {
     for (x, y) in [(-200.0, -100.0), (-200.0, 100.0), (200.0, -100.0), (200.0, 100.0)] {
         steel.bolts.push(bolt("N", DVec3::new(x, y, -400.0), DVec3::new(x, y, 50.0), 24.0));
     }
-    let joint = is(&steel, Kind::ColumnBase, 4, None, Some(0));
+    let joint = only(&steel);
+    assert_eq!((joint.kind, joint.bolts.len(), joint.supported), (Kind::ColumnBase, 4, Some(0)));
+    assert!(joint.layout.is_ok_and(|laid| laid.simple().is_some()));
     assert_eq!((joint.at_end, joint.mark.as_str()), (Some(false), "C1"));
     assert!(find(&steel).loose_bolts.is_empty());
 }
