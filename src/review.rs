@@ -138,6 +138,8 @@ pub struct Required {
     pub shear_kn: Option<f64>,
     /// As stated.
     pub axial_kn: Option<f64>,
+    /// As stated.
+    pub tying_kn: Option<f64>,
     /// The largest ratio of required to resistance over everything that was checked; `None` if nothing was.
     pub utilisation: Option<f64>,
     /// What that ratio belongs to.

@@ -46,6 +46,7 @@ mod stiffener_missing;
 mod stiffness_differs;
 mod strengthening_added;
 mod tool_without_room;
+mod tying_short;
 mod web_plate_missing;
 mod weld_not_found;
 mod weld_short;

@@ -4,6 +4,7 @@ pub mod boathouse;
 mod detailing;
 mod exchange_file;
 mod papers;
+mod slip_house;
 
 use std::path::PathBuf;
 

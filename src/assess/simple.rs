@@ -1,6 +1,8 @@
 //! Joints that carry shear or axial force and are no moment joints: what every kind shares, and which file assesses which.
 
 pub mod column_base;
+mod fin_plate;
+mod flexible;
 
 use std::sync::Arc;
 
@@ -28,6 +30,8 @@ pub struct Strength {
 /// Assesses a joint as laid out, against load cases if there are any.
 pub fn assess(layout: &SimpleLayout, cases: &[&LoadCase], rulebook: &Rulebook) -> Assessment {
     match layout {
+        SimpleLayout::FinPlate(layout) => pinned(fin_plate::strength(layout, rulebook), cases, rulebook),
+        SimpleLayout::FlexibleEndPlate(layout) => flexible::assess(layout, cases, rulebook),
         SimpleLayout::ColumnBase(base) => column_base::assess(base, cases, rulebook),
     }
 }
@@ -39,6 +43,7 @@ pub fn with_detail(layout: &SimpleLayout, detail: &IntendedDetail) -> Option<Sim
             let base = column_base::with_foundation(base, detail)?;
             Some(SimpleLayout::ColumnBase(Box::new(base)))
         }
+        SimpleLayout::FinPlate(_) | SimpleLayout::FlexibleEndPlate(_) => None,
     }
 }
 

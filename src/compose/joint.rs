@@ -240,6 +240,7 @@ fn required(assessment: Option<&Assessment>, scheduled: Option<&ScheduledJoint>)
             moment_knm: case.moment.map(|m| m.knm()),
             shear_kn: case.shear.map(|v| v.kn()),
             axial_kn: case.axial.map(|n| n.kn()),
+            tying_kn: case.tying.map(|force| force.kn()),
             utilisation: worst.and_then(|v| v.utilisation),
             governed_by: worst.map(|v| v.governed_by.clone()),
             moment_resistance_knm: result.and_then(|r| r.moment.as_ref()).map(|m| m.moment.knm()),
@@ -384,6 +385,12 @@ fn leading(assessment: &Assessment, scheduled: Option<&ScheduledJoint>, checks: 
         let outcome = if used <= 1.0 { "met" } else { "unproven" };
         let result = CheckResult { utilisation: Some(used), outcome, ..result };
         checks = checks.iter().cloned().chain([result]).collect();
+    }
+    if !assessment.tying.is_empty() {
+        let stated = scheduled.iter().flat_map(|s| &s.cases).filter_map(|case| case.tying);
+        let most = stated.map(|force| force.kn().abs()).max_by(f64::total_cmp);
+        let tying = assessment.tying.iter().map(|c| component(c, most, least_throat));
+        checks = checks.iter().cloned().chain(tying).collect();
     }
     if !assessment.beside.is_empty() {
         let beside = assessment.beside.iter().map(|(part, force)| component(part, force.map(Force::kn), least_throat));

@@ -6,14 +6,18 @@
 
 pub mod alpha;
 pub mod beam;
+pub mod bolt_group;
 pub mod bolts;
 pub mod classification;
 pub mod column_base;
 pub mod column_web;
 pub mod diagonals;
 pub mod effective_length;
+pub mod fin_plate;
+pub mod flexible;
 pub mod haunch;
 pub mod net_section;
+pub mod notched;
 pub mod slip;
 pub mod stiffeners;
 pub mod stiffness;

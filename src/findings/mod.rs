@@ -51,6 +51,7 @@ mod stiffness_differs;
 mod strengthening;
 mod strengthening_added;
 mod tool_without_room;
+mod tying_short;
 mod web_plate_missing;
 mod weld_not_found;
 mod weld_short;
@@ -80,6 +81,7 @@ pub const RULES: &[Rule] = &[
     weld_short::RULE,
     shear_short::RULE,
     axial_short::RULE,
+    tying_short::RULE,
     joint_handed_wrong::RULE,
     edge_distance_short::RULE,
     head_without_room::RULE,

@@ -10,6 +10,7 @@ pub(super) enum Action {
     Moment,
     Shear,
     Axial,
+    Tying,
     ColumnAxial,
     ColumnMoment,
 }
@@ -33,6 +34,7 @@ impl Action {
             Self::Moment => "M_Ed",
             Self::Shear => "V_Ed",
             Self::Axial => "N_Ed",
+            Self::Tying => "F_tie_Ed",
             Self::ColumnAxial => "N_col_Ed",
             Self::ColumnMoment => "M_col_Ed",
         }
@@ -48,6 +50,7 @@ impl Action {
             Self::Moment => case.moment = Some(Moment(value)),
             Self::Shear => case.shear = Some(Force(value)),
             Self::Axial => case.axial = Some(Force(value)),
+            Self::Tying => case.tying = Some(Force(value)),
             Self::ColumnAxial => case.column_axial = Some(Force(value)),
             Self::ColumnMoment => case.column_moment = Some(Moment(value)),
         }
@@ -57,24 +60,21 @@ impl Action {
 /// The action that a heading names and what its unit is in N·mm or N; `None` if it names no action, `Err` if its unit
 /// is missing or not known.
 pub(super) fn action(heading: &str) -> Option<Result<(Action, f64), String>> {
-    let mut letters = heading.char_indices().filter(|(_, c)| !BETWEEN.contains(c));
-    let (_, first) = letters.next()?;
-    let action = match first.to_ascii_uppercase() {
-        'M' => Action::Moment,
-        'V' => Action::Shear,
-        'N' => Action::Axial,
-        _ => return None,
+    let letters = || heading.char_indices().filter(|(_, c)| !BETWEEN.contains(c));
+    let begins = |symbol: &str| {
+        let mut after = letters();
+        symbol.chars().all(|want| after.next().is_some_and(|(_, c)| c.eq_ignore_ascii_case(&want))).then_some(after)
     };
-    let mut after = letters.clone();
-    let column =
-        ["c", "o", "l"].iter().all(|want| after.next().is_some_and(|(_, c)| want.starts_with(c.to_ascii_lowercase())));
-    let action = match action {
-        Action::Moment if column => Action::ColumnMoment,
-        Action::Axial if column => Action::ColumnAxial,
-        _ if column => return None,
-        own => own,
-    };
-    let mut letters = if column { after } else { letters };
+    // The longer symbols first: an "N" also begins "N_col".
+    let symbols = [
+        ("Mcol", Action::ColumnMoment),
+        ("Ncol", Action::ColumnAxial),
+        ("Ftie", Action::Tying),
+        ("M", Action::Moment),
+        ("V", Action::Shear),
+        ("N", Action::Axial),
+    ];
+    let (action, mut letters) = symbols.iter().find_map(|(symbol, action)| Some((*action, begins(symbol)?)))?;
     let (_, e) = letters.next()?;
     let (at, d) = letters.next()?;
     if !e.eq_ignore_ascii_case(&'e') || !d.eq_ignore_ascii_case(&'d') {

@@ -50,7 +50,7 @@ const HEADINGS: &[(Column, &[&str])] = &[
 
 /// What the reader is told when a heading is not known.
 const KNOWN: &str = "joint, supporting, supported, end, case, M_Ed, V_Ed and N_Ed with their units (M_Ed_kNm, V_Ed_kN, \
-                     N_Ed_kN), N_col_Ed and M_col_Ed likewise, detail, span_m, frame, class, and remarks (a heading that starts with note, remark or comment)";
+                     N_Ed_kN), F_tie_Ed, N_col_Ed and M_col_Ed likewise, detail, span_m, frame, class, and remarks (a heading that starts with note, remark or comment)";
 
 /// Reads the lines of a schedule.
 pub(super) fn lines(source: &Source, faults: &mut Faults) -> Vec<Line> {

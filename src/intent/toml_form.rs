@@ -241,7 +241,7 @@ impl<'a> Reader<'a> {
             match action(name) {
                 None => {
                     let given = given(name);
-                    let allowed = "name, M_Ed, V_Ed and N_Ed with their units (M_Ed_kNm, V_Ed_kN, N_Ed_kN), N_col_Ed and M_col_Ed likewise";
+                    let allowed = "name, M_Ed, V_Ed and N_Ed with their units (M_Ed_kNm, V_Ed_kN, N_Ed_kN), F_tie_Ed, N_col_Ed and M_col_Ed likewise";
                     let message = format!("no known key of {}: given {given}; allowed are {allowed}", table.name);
                     self.fault(key.span(), message);
                 }

@@ -2,12 +2,13 @@
 
 use glam::{DVec2, DVec3};
 
+use super::boxes::thicknesses;
 use super::draft::Draft;
 use super::frame::Frame;
 use super::layout::{BoltRow, Bolts, Held};
 use super::scene::Scene;
 use crate::origin::{Ask, Datum, Known, Missing, Origin, Place};
-use crate::shop::{Bolt, Part};
+use crate::shop::{Bolt, Member, Part};
 use crate::units::{Length, mm};
 
 /// What an end plate's bolts pass through besides it.
@@ -17,6 +18,8 @@ pub(super) enum Behind {
     Column(usize),
     /// Another end plate.
     Plate(usize),
+    /// The web of a member. An edge across the load is that of the web between the flanges, or the member's end.
+    Web(usize),
 }
 
 /// A bolt where its axis crosses the end plate.
@@ -63,7 +66,7 @@ pub(super) fn lay_out(
     }
     let outline = frame.outline(plate);
     let other = match behind {
-        Behind::Column(_) => Vec::new(),
+        Behind::Column(_) | Behind::Web(_) => Vec::new(),
         Behind::Plate(other) => frame.outline(&scene.steel.plates[other]),
     };
     let mut laid = Vec::new();
@@ -89,6 +92,7 @@ pub(super) fn lay_out(
                 Some(column.extents.x / 2.0 - (bolt.point - column.start).dot(column.across).abs())
             }
             Behind::Plate(_) => to_side(&other, bolt),
+            Behind::Web(member) => beside_in_web(&scene.steel.members[member], frame, bolt.point),
         });
         let to_other = to_other[0].zip(to_other[1]).map(|(a, b)| a.min(b));
         let (Some(edge_plate), Some(edge_column)) = (edge(to_plate), edge(to_other)) else {
@@ -107,13 +111,25 @@ pub(super) fn lay_out(
     );
     let class = all_alike("bolt class", bodies.iter().map(|bolt| &bolt.class), |a, b| a == b, Clone::clone);
     let plates = match behind {
-        Behind::Column(_) => vec![end_plate],
+        Behind::Column(_) | Behind::Web(_) => vec![end_plate],
         Behind::Plate(other) => vec![end_plate, other],
     };
     let hole = hole(scene, draft, &plates, &placed, &diameter)?;
     let shanks = bodies.iter().map(|bolt| Some(bolt.length.as_ref().ok()?.value - bolt.thread?));
     let shank = shanks.collect::<Option<Vec<Length>>>().and_then(|all| all.into_iter().reduce(Length::min));
     Ok(Bolts { diameter, class, hole, rows: laid, held: Held { shank, ..Held::default() } })
+}
+
+/// From a bolt across to the nearer edge of the web that it passes: the flange's inner face where the member stands along
+/// the joint's height, the member's end where it lies across.
+fn beside_in_web(member: &Member, frame: &Frame, point: DVec3) -> Option<f64> {
+    let from = point - member.start;
+    if member.along.dot(frame.up).abs() > 0.5 {
+        let (t_f, _) = thicknesses(member);
+        return Some(member.extents.y / 2.0 - t_f - from.dot(member.depth).abs());
+    }
+    let at = from.dot(member.along);
+    Some(at.min(member.start.distance(member.end) - at))
 }
 
 /// From a bolt to the outline's side edge on its own side of the web, at the bolt's height.

@@ -29,7 +29,9 @@ pub use layout::{
     Backing, BoltRow, BoltedPlate, Bolts, Diagonal, EdgeWeld, EndPlate, EndPlateLayout, FullButts, Half, Haunch, Held,
     Layout, MemberAt, PlateSide, SpliceLayout, Stiffener, Strengthening, Support, WebPlate, Welds, Which,
 };
-pub use simple::{Anchor, ColumnBase, Foundation, SimpleLayout, Spread};
+pub use simple::{
+    Anchor, ColumnBase, Cope, FinPlate, FlexibleEndPlate, Foundation, Grid, HeldBy, On, SimpleLayout, Spread,
+};
 
 use petgraph::graphmap::UnGraphMap;
 

@@ -55,7 +55,13 @@ fn halves(scene: &Scene, draft: &Draft, plates: &[usize]) -> Result<[Found; 2], 
     for plate in [*a, *b] {
         let ends = cut::ends_on(scene, plate);
         let end = *ends.first().ok_or("no member ends on the end plate")?;
-        if ends.len() > 1 {
+        // A fillet behind a thin plate reaches through it: a member belongs to the plate that it sits on.
+        let sits_on_the_other = |end: &EndOn| {
+            let other = if plate == *a { *b } else { *a };
+            let own = |o: &EndOn| (o.member, o.at_end) == (end.member, end.at_end) && o.gap.abs() < end.gap.abs();
+            cut::ends_on(scene, other).iter().any(own)
+        };
+        if !ends.iter().skip(1).all(sits_on_the_other) {
             return Err("another member ends on the same end plate (a haunch?): not assessed yet".into());
         }
         let member = &scene.steel.members[end.member];

@@ -163,6 +163,33 @@ fn short(scene: &Scene, frame: &Frame, member: usize, welds: &[usize], role: Rol
         (Err(_), Role::Web) => beam.extents.y,
         _ => beam.extents.x,
     };
+    short_of(scene, frame, welds, role, full)
+}
+
+/// The throat of the web's welds if they run over `full` mm of it: those of a plate that is shorter than the web.
+pub(super) fn throat_over(
+    scene: &Scene,
+    frame: &Frame,
+    member: usize,
+    roles: &[(usize, Role)],
+    full: f64,
+) -> Known<Length> {
+    let what = "weld at the web";
+    let welds: Vec<usize> = roles.iter().filter(|(_, r)| *r == Role::Web).map(|(weld, _)| *weld).collect();
+    let least = least_throat(scene, &welds, what)?;
+    let short = short_of(scene, frame, &welds, Role::Web, full);
+    match short.or_else(|| one_sided(scene, frame, member, &welds, Role::Web)) {
+        None => Ok(least),
+        Some(reason) => Err(Missing {
+            what: what.into(),
+            reason,
+            at: welds.first().map(|weld| scene.place(Part::Weld(*weld))),
+            ask: Ask::Fabricator,
+        }),
+    }
+}
+
+fn short_of(scene: &Scene, frame: &Frame, welds: &[usize], role: Role, full: f64) -> Option<String> {
     let rules = &scene.rules.welds;
     let mut runs: Vec<Span> = Vec::new();
     let mut placeless = 0.0_f64;

@@ -96,7 +96,7 @@ fn names(text: &str, value: &str) -> bool {
 }
 
 /// Rules that lay an action on a resistance: their numbers belong to the joint, not to the fault.
-const OF_ACTIONS: [&str; 4] = ["moment-short", "shear-short", "weld-short", "axial-force-beyond-limit"];
+const OF_ACTIONS: [&str; 5] = ["moment-short", "shear-short", "tying-short", "weld-short", "axial-force-beyond-limit"];
 
 /// Whether a finding lays an action on a resistance.
 pub(super) fn of_actions(finding: &Finding) -> bool {

@@ -117,8 +117,9 @@ fn member(member: &MemberBrief) -> String {
 
 /// "M 262.0 kNm, V 120.0 kN, N not stated".
 pub(super) fn required(case: &Required) -> String {
+    let tying = case.tying_kn.map_or(String::new(), |kn| format!(", tying {}", action(Some(kn), "kN", "")));
     format!(
-        "M {}, V {}, N {}",
+        "M {}, V {}, N {}{tying}",
         action(case.moment_knm, "kNm", "not stated"),
         action(case.shear_kn, "kN", "not stated"),
         action(case.axial_kn, "kN", "not stated"),

@@ -269,6 +269,7 @@ fn required(r: &review::Required) -> Required {
         moment_knm: r.moment_knm.and_then(thousandth),
         shear_kn: r.shear_kn.and_then(thousandth),
         axial_kn: r.axial_kn.and_then(thousandth),
+        tying_kn: r.tying_kn.and_then(thousandth),
         utilisation: r.utilisation.and_then(ratio),
         governed_by: r.governed_by.clone(),
         moment_resistance_knm: r.moment_resistance_knm.and_then(thousandth),

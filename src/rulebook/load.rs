@@ -139,7 +139,7 @@ impl RuleFile<'_> {
         let file: File = self.parse()?;
         let mut sources: Vec<String> = Vec::new();
         let mut factor = |what: &str, factor: &Factor| {
-            sources.push(format!("{what}: {}", self.text("source", &factor.source)?));
+            sources.push(format!("{}: {}", what.replace("gamma_", "γ_"), self.text("source", &factor.source)?));
             self.within(what, &factor.value, 1.0..=2.0)
         };
         let gamma_m0 = factor("gamma_M0", &file.gamma_M0)?;

@@ -6,7 +6,7 @@ use super::profile::Kind;
 use super::reading::Reading;
 use super::section::{Seen, see};
 use super::solid::{Cut, Prism};
-use super::{Member, Shape};
+use super::{Member, Notch, Shape};
 use crate::exchange::Entity;
 use crate::origin::{Ask, Missing};
 
@@ -16,6 +16,8 @@ pub(super) const LONG: f64 = 2.0;
 const BAND: f64 = 0.6;
 /// A plane nearer to the member's axis than this (as a sine) cuts along it, not off its end.
 const ALONG: f64 = 0.17;
+/// A cut that stops this short of a face, mm, still takes all of it.
+const NOISE: f64 = 1.0;
 /// A round cut up to this size is a bolt hole, which no member's section loses at its end, mm.
 const BOLT_HOLE: f64 = 100.0;
 
@@ -33,10 +35,23 @@ impl<'a> Reading<'a> {
             seen.shape = Shape::I;
         }
         let (from, to) = ends(prism, &seen, &mut disagreements);
+        let mut notches = Vec::new();
+        let mut take =
+            |cut: &Prism, cutter: &str, told: &mut Vec<String>| match notch(prism, &seen, (from, to), cut, cutter) {
+                Some(notch) => notches.push(notch),
+                None => told.push(untaken(cutter)),
+            };
+        for cut in &prism.cuts {
+            if let Cut::Prism(cut) = cut
+                && !is_bolt_hole(cut)
+            {
+                take(cut, "an extrusion", &mut disagreements);
+            }
+        }
         for opening in self.openings(element) {
             match opening {
                 Ok(opening) if is_bolt_hole(&opening) => {}
-                Ok(_) => disagreements.push(untaken("an opening element")),
+                Ok(opening) => take(&opening, "an opening element", &mut disagreements),
                 Err(reason) => disagreements.push(format!("an opening in it can't be read: {reason}")),
             }
         }
@@ -58,6 +73,7 @@ impl<'a> Reading<'a> {
             extents: seen.bounds.size,
             section,
             grade: self.grade(element),
+            notches,
             not_assessed: prism.beyond.clone(),
             disagreements,
         }
@@ -98,6 +114,7 @@ impl<'a> Reading<'a> {
             extents: DVec2::new(size[across], size[depth]),
             section: Err(no_section(element, &reason)),
             grade: self.grade(element),
+            notches: Vec::new(),
             not_assessed: Some(reason),
             disagreements: Vec::new(),
         })
@@ -147,8 +164,8 @@ fn ends(prism: &Prism, seen: &Seen, notes: &mut Vec<String>) -> (f64, f64) {
     for cut in &prism.cuts {
         let Cut::Plane { at, keep, bounds } = cut else {
             match cut {
-                Cut::Prism(inner) if is_bolt_hole(inner) => {}
-                Cut::Prism(_) => notes.push(untaken("an extrusion")),
+                // By itself: a notch or told of.
+                Cut::Prism(_) => {}
                 Cut::Other(class) => notes.push(untaken(class)),
                 Cut::Trim(sentence) => notes.push(sentence.clone()),
                 Cut::Plane { .. } => {}
@@ -186,6 +203,35 @@ fn ends(prism: &Prism, seen: &Seen, notes: &mut Vec<String>) -> (f64, f64) {
 
 pub(super) fn untaken(cutter: &str) -> String {
     format!("its body is cut by {cutter} (a cope, notch or slot) that is not taken into account")
+}
+
+/// The notch that a cut makes at one end of a member, if it reaches past the end and past one flange over all of its width,
+/// and leaves something of the other half. It is the box round the cut: no less than what is missing.
+fn notch(prism: &Prism, seen: &Seen, (from, to): (f64, f64), cut: &Prism, cutter: &str) -> Option<Notch> {
+    let (x, y) = (seen.bounds.x, seen.bounds.x.perp());
+    let (mut low, mut high) = (DVec3::INFINITY, DVec3::NEG_INFINITY);
+    for corner in cut.corners() {
+        let local = prism.frame.inverse().transform_point3(corner);
+        let across = local.truncate() - seen.bounds.centre;
+        let own = DVec3::new(across.dot(x), across.dot(y), local.z);
+        (low, high) = (low.min(own), high.max(own));
+    }
+    let half = seen.bounds.size / 2.0;
+    if seen.shape != Shape::I || !(low.x <= NOISE - half.x && high.x >= half.x - NOISE) {
+        return None;
+    }
+    let (length, at_end) = match (low.z <= from + NOISE, high.z >= to - NOISE) {
+        (true, false) => (high.z - from, false),
+        (false, true) => (to - low.z, true),
+        _ => return None,
+    };
+    let (depth, positive) = match (high.y >= half.y - NOISE, low.y <= NOISE - half.y) {
+        (true, false) => (half.y - low.y, true),
+        (false, true) => (high.y + half.y, false),
+        _ => return None,
+    };
+    let fits = length > 0.0 && depth > 0.0 && length < 0.5 * (to - from);
+    fits.then(|| Notch { at_end, positive, length, depth, untaken: untaken(cutter) })
 }
 
 fn is_bolt_hole(prism: &Prism) -> bool {

@@ -111,6 +111,21 @@ pub enum Shape {
     Other,
 }
 
+/// A notch at a member's end: a rectangle taken off its web with all of one flange.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Notch {
+    /// Which end: false = start.
+    pub at_end: bool,
+    /// Whether it takes the flange on the positive side of the member's depth.
+    pub positive: bool,
+    /// From the member's end, mm: of the box round what is cut off, so never less than it is.
+    pub length: f64,
+    /// From the flange's outer face, mm; the same.
+    pub depth: f64,
+    /// The sentence for those who do not take it into account.
+    pub untaken: String,
+}
+
 /// A member: one straight prism, or something recognised as "not assessed".
 #[derive(Clone, Debug)]
 pub struct Member {
@@ -134,6 +149,8 @@ pub struct Member {
     pub section: Known<Section>,
     /// The steel grade.
     pub grade: Known<Grade>,
+    /// Notches at its ends.
+    pub notches: Vec<Notch>,
     /// Why it can't be assessed although it was recognised: curved, tapered, built up.
     pub not_assessed: Option<String>,
     /// Where two witnesses disagree: name against geometry, for instance. One sentence each.

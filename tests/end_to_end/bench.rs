@@ -59,6 +59,7 @@ fn detail() -> Detail {
             class: Some(("8.8".into(), ClassIn::Material)),
             gauge: 100.0,
             rows: vec![502.0, 392.0, 302.0, 70.0],
+            length: None,
             body: BoltBody::Shank,
         },
         welds: Some(Welds { flange: 10.0, web: 6.0, bodies: false }),
@@ -87,6 +88,8 @@ pub fn shed() -> Building {
             top: 3600.0,
             ends: [end(0, "J1"), end(1, "J2")],
         }],
+        fittings: Vec::new(),
+        boltings: Vec::new(),
         plates: PlateAs::Plate,
     }
 }

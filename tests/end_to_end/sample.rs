@@ -83,27 +83,29 @@ fn add_up(review: &Value) {
 #[test]
 fn the_counts_add_up() {
     add_up(&json(&["review", "sample-exchange"], 1));
-    add_up(&json(&["review", "sample-exchange/model.ifcxml"], 3));
+    add_up(&json(&["review", "sample-exchange/model.ifcxml"], 1));
 }
 
 #[test]
 fn without_a_schedule_every_joint_is_unproven_and_still_resists() {
-    let review = json(&["review", "sample-exchange/model.ifcxml"], 3);
+    let review = json(&["review", "sample-exchange/model.ifcxml"], 1);
     assert_eq!(review["schedule"], Value::Null);
-    assert_eq!(list(&review, "joints").len(), 27);
+    assert_eq!(list(&review, "joints").len(), 41);
     for joint in list(&review, "joints") {
         let mark = word(joint, "mark");
-        assert_eq!(word(joint, "outcome"), "unproven", "{mark}");
+        // B18 / S6 is J44: that its bolts are too short shows without a schedule.
+        let outcome = if mark == "B18 / S6" { "hold" } else { "unproven" };
+        assert_eq!(word(joint, "outcome"), outcome, "{mark}");
         assert!(list(joint, "missing").iter().any(|missing| word(missing, "what") == "required actions"), "{mark}");
-        // W1 / K2 is J14: its bolts have no class.
+        // W1 / K2 is J14: its bolts have no class. B12 / S2 is J33: nothing is credited with its haunch.
         let resists = joint["resistance"]["moment_knm"].as_f64().is_some_and(|m| m > 0.0);
-        assert_eq!(resists, mark != "W1 / K2", "{mark}");
+        assert_eq!(resists, !["W1 / K2", "B12 / S2"].contains(&mark), "{mark}");
     }
     let (code, text) = printed(root(), &["review", "sample-exchange/model.ifcxml"]);
-    assert_eq!(code, Some(3));
+    assert_eq!(code, Some(1));
     let text = text.split_whitespace().collect::<Vec<_>>().join(" ");
     assert!(text.contains("without a schedule: resistances only, no joint can be proven"), "{text}");
-    assert_eq!(printed(root(), &["review", "sample-exchange/model.ifcxml", "--allow-unproven"]).0, Some(0));
+    assert_eq!(printed(root(), &["review", "sample-exchange/model.ifcxml", "--allow-unproven"]).0, Some(1));
 }
 
 #[test]
@@ -315,14 +317,14 @@ fn the_document_has_every_key_of_version_1() {
     let words =
         |key: &str| -> BTreeSet<&str> { list(&review, "joints").iter().map(|joint| word(joint, key)).collect() };
     assert_eq!(words("outcome"), BTreeSet::from(["clear", "comment", "hold", "unproven"]));
-    assert_eq!(words("kind"), BTreeSet::from(["end-plate-moment", "not-found"]));
+    assert_eq!(words("kind"), BTreeSet::from(["end-plate-moment", "end-plate-splice", "not-found"]));
     let sum = review["model"]["sha256"].as_str().expect("a sum");
     assert!(sum.len() == 64 && sum.bytes().all(|b| b.is_ascii_hexdigit()), "{sum}");
     // Every list of the list above has been seen with something in it.
     for key in ["plates", "welds", "required", "rows", "checks", "findings"] {
         assert!(list(&review, "joints").iter().any(|joint| !list(joint, key).is_empty()), "{key}");
     }
-    has(&json(&["review", "sample-exchange/model.ifcxml"], 3), REVIEW, "review");
+    has(&json(&["review", "sample-exchange/model.ifcxml"], 1), REVIEW, "review");
 }
 
 /// J01 once by hand: marks, sizes and signs arrive where they belong.

@@ -300,6 +300,7 @@ fn steelwork(rulebook: &Rulebook) -> Steelwork {
         extents: DVec2::ONE,
         section: known(section(rulebook, name)),
         grade: grade("S355"),
+        notches: Vec::new(),
         not_assessed: None,
         disagreements: Vec::new(),
     };

@@ -233,3 +233,15 @@ fn the_actions_in_the_column_are_read_beside_those_of_the_beam() {
     assert!(read(b"joint,V_col_Ed_kN\nJ1,1\n", "s.csv").is_err());
     assert!(read(b"joint,N_col_Ed\nJ1,1\n", "s.csv").is_err());
 }
+
+#[test]
+fn a_tying_force_is_read_from_both_forms() {
+    let read_one = |file: &str, text: &str| sound(file, text).joints[0].cases[0].tying.map(|force| force.kn());
+    assert_eq!(read_one("s.csv", "joint,V_Ed_kN,F_tie_Ed [kN]\nJ1,100,75\n"), Some(75.0));
+    assert_eq!(read_one("s.csv", "joint,V_Ed_kN,f tie ed / MN\nJ1,100,0.075\n"), Some(75.0));
+    assert_eq!(read_one("s.csv", "joint,V_Ed_kN,F_tie_Ed_kN\nJ1,100,\n"), None);
+    assert_eq!(read_one("s.toml", "[[joint]]\nmark = \"J1\"\n[[joint.case]]\nF_tie_Ed_kN = 75\n"), Some(75.0));
+    for heading in ["F_tie_Ed", "F_tie_Ed_kNm", "F_Ed_kN", "tie_Ed_kN"] {
+        assert!(read(format!("joint,{heading}\nJ1,1\n").as_bytes(), "s.csv").is_err(), "{heading}");
+    }
+}

@@ -69,6 +69,7 @@ pub fn member(mark: &str, sizes: Sizes, start: DVec3, end: DVec3, depth: DVec3) 
         extents: DVec2::new(sizes.2, sizes.1),
         section: known(section(sizes)),
         grade: known(Grade("S355".into())),
+        notches: Vec::new(),
         not_assessed: None,
         disagreements: Vec::new(),
     }

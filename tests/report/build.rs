@@ -64,6 +64,7 @@ pub fn used(mut joint: JointReview, resistance_knm: f64, moment_knm: f64) -> Joi
         moment_knm: Some(moment_knm),
         shear_kn: Some(120.0),
         axial_kn: None,
+        tying_kn: None,
         utilisation: Some(moment_knm / resistance_knm),
         governed_by,
         moment_resistance_knm: Some(resistance_knm),

@@ -2,6 +2,7 @@
 //!
 //! A boat hall of British sections on grid lines A to D by 1 and 2, and a clubroom wing of European sections on E and F.
 
+use super::slip_house;
 use crate::writer::building::{
     Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, PlateAs, Section,
     Stiffener, Storey, Welds,
@@ -14,7 +15,7 @@ type Place = (&'static str, &'static str, &'static str);
 pub const NOT_SCHEDULED: &str = "W5 / K1";
 
 // Sizes: BS 4-1 and EN 10365, from memory; the rule book's section tables hold the same.
-fn section(name: &str) -> Section {
+pub fn section(name: &str) -> Section {
     let [h, b, t_w, t_f, r] = match name {
         "UKC 254x254x89" => [260.3, 256.3, 10.3, 17.3, 12.7],
         "UKB 457x191x74" => [457.0, 190.4, 9.0, 14.5, 10.2],
@@ -36,6 +37,7 @@ pub fn intended(detail: &str) -> Detail {
         class: Some(("8.8".into(), ClassIn::Name)),
         gauge: 100.0,
         rows: rows.to_vec(),
+        length: None,
         body: BoltBody::Shank,
     };
     let welds = |flange, web| Some(Welds { flange, web, bodies: false });
@@ -69,6 +71,43 @@ pub fn intended(detail: &str) -> Detail {
             welds: welds(7.0, 5.0),
             stiffeners: vec![],
         },
+        // Splice of two beams, extended both ways.
+        "M5" => Detail {
+            plate: plate(25.0, 200.0, -95.0, 501.4),
+            bolts: bolts(24.0, &[451.4, 341.4, 65.0, -45.0]),
+            welds: welds(8.0, 6.0),
+            stiffeners: vec![],
+        },
+        // Splice of two beams, flush.
+        "M6" => Detail {
+            plate: plate(20.0, 200.0, -20.0, 477.0),
+            bolts: bolts(24.0, &[387.0, 297.0, 70.0]),
+            welds: welds(10.0, 6.0),
+            stiffeners: vec![],
+        },
+        // Haunched, extended above the beam.
+        "M7" => Detail {
+            plate: plate(25.0, 200.0, -270.0, 501.4),
+            bolts: bolts(24.0, &[451.4, 341.4, 241.4, -180.0]),
+            welds: welds(8.0, 6.0),
+            stiffeners: vec![],
+        },
+        // As M1, the column strengthened by diagonals, which leave no room for nuts near the lower flange.
+        "M9" => {
+            let mut of = intended("M8");
+            of.bolts.rows[3] = 130.0;
+            of
+        }
+        // As M1, the column strengthened by web plates, by a stiffener of partial depth.
+        "M8" | "M10" => Detail { stiffeners: vec![], ..intended("M1") },
+        // As M1, slip-resistant.
+        "M11" => {
+            let mut of = intended("M1");
+            of.bolts.class = Some(("10.9".into(), ClassIn::Name));
+            of
+        }
+        // As M3 with a web plate.
+        "M12" => intended("M3"),
         other => panic!("{other} is no detail of the boathouse"),
     }
 }
@@ -152,14 +191,18 @@ pub fn boathouse() -> Building {
     let landing = [end((NOT_SCHEDULED, "M4", "K1")), End::Free([24000.0, -2200.0])];
     beams.push(beam("W5", "IPE 330", "S275JR", 2100.0, landing));
     let storey = |name: &str, elevation| Storey { name: name.into(), elevation };
-    Building {
+    let mut building = Building {
         name: "Boathouse".into(),
         site: [52000.0, 18500.0, 4200.0],
         storeys: vec![storey("Slipway", 0.0), storey("Boat store and clubroom", 3300.0), storey("Roof", 6000.0)],
         columns,
         beams,
+        fittings: Vec::new(),
+        boltings: Vec::new(),
         plates: PlateAs::Plate,
-    }
+    };
+    slip_house::add(&mut building);
+    building
 }
 
 /// Section, grade, upper end and direction of four columns, each with its mark and place.

@@ -105,12 +105,18 @@ fn both_layouts_hold_the_same_entities() {
     };
     let nested = counts(STYLES[0]);
     assert_eq!(nested, counts(STYLES[1]));
-    // What boathouse.rs lists: 12 columns; 9 + 5 beams; 27 end plates; a bolt type of M1 and M3 has 8, of M2 and M4 6.
-    assert_eq!(nested["IfcColumn"], 12);
-    assert_eq!(nested["IfcBeam"], 14);
-    assert_eq!(nested["IfcMechanicalFastener"], 12 * 8 + 6 * 8 + 9 * 6);
-    // 27 end plates, and pairs of stiffeners: 7 columns with one of M1, 4 columns with two of M3.
-    assert_eq!(nested["IfcPlate"], 27 + 2 * 7 + 4 * 4);
+    // What boathouse.rs and slip_house.rs list: 12 + 6 columns; 9 + 5 + 8 beams. Bolts: M1 and what follows it and M3, M5, M7 have
+    // 8 a joint, M2, M4 and M6 6.
+    assert_eq!(nested["IfcColumn"], 18);
+    assert_eq!(nested["IfcBeam"], 22);
+    assert_eq!(nested["IfcMechanicalFastener"], 12 * 8 + 6 * 8 + 9 * 6 + 13 * 8 + 6);
+    // 27 end plates, and pairs of stiffeners: 7 columns with one of M1, 4 columns with two of M3. In the slip house 12 + 4 end plates,
+    // pairs of stiffeners at J40, J43, J44 (one) and J41, J42 (two); haunches of two plates, each with a pair in the beam and in
+    // the column; web plates, diagonals and stiffeners of partial depth.
+    assert_eq!(
+        nested["IfcPlate"],
+        27 + 2 * 7 + 4 * 4 + 12 + 4 + 3 * 2 + 2 * 4 + 2 * (2 + 2 + 2) + (4 + 1) + (2 + 1) + 2
+    );
     assert_eq!(nested["IfcRelConnectsWithRealizingElements"], 12);
 }
 

@@ -1,5 +1,8 @@
 //! A building in plain words: what stands where. Lengths mm, z up, heights of a joint above the beam's soffit.
 
+use super::fastening::Seam;
+use super::space::Frame;
+
 /// A building of columns and beams.
 #[derive(Clone, Debug)]
 pub struct Building {
@@ -13,8 +16,69 @@ pub struct Building {
     pub columns: Vec<Column>,
     /// Beams with the joints at their ends.
     pub beams: Vec<Beam>,
+    /// Plates welded to members besides the end plates and stiffeners of [`Detail`].
+    pub fittings: Vec<Fitting>,
+    /// Bolts besides those of [`Detail`].
+    pub boltings: Vec<Bolting>,
     /// What its plates are written as.
     pub plates: PlateAs,
+}
+
+/// A plate welded to a member, where it stands.
+#[derive(Clone, Debug)]
+pub struct Fitting {
+    /// The member of whose shipping piece it is.
+    pub on: Owner,
+    /// Mark, unique in the building.
+    pub mark: String,
+    /// Name as written.
+    pub name: &'static str,
+    /// Its thickness runs along z from the origin; x and y are those of the outline.
+    pub frame: Frame,
+    /// Corners of the outline.
+    pub corners: Vec<[f64; 2]>,
+    /// Round holes by centre and diameter.
+    pub holes: Vec<([f64; 2], f64)>,
+    /// Thickness.
+    pub thickness: f64,
+    /// Grade as written.
+    pub grade: String,
+    /// Welds along lines, with their throats.
+    pub seams: Vec<(Seam, f64)>,
+}
+
+/// A member.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Owner {
+    /// A column by its index.
+    Column(usize),
+    /// A beam by its index.
+    Beam(usize),
+}
+
+/// Alike bolts.
+#[derive(Clone, Debug)]
+pub struct Bolting {
+    /// Path, unique in the building.
+    pub path: String,
+    /// Level by which they belong to a storey.
+    pub level: f64,
+    /// Nominal diameter.
+    pub diameter: f64,
+    /// Strength class and where it is stated; `None`: nowhere.
+    pub class: Option<(String, ClassIn)>,
+    /// What their bodies look like.
+    pub body: BoltBody,
+    /// What they hold together.
+    pub grip: f64,
+    /// Length under the head; `None`: the shortest that does.
+    pub length: Option<f64>,
+    /// Whether they are anchors.
+    pub anchors: bool,
+    /// A point under the heads, z from head to nut.
+    pub frame: Frame,
+    /// Names and places of the bolts along x and y of the frame.
+    pub at: Vec<(String, [f64; 2])>,
 }
 
 /// A storey.
@@ -150,6 +214,8 @@ pub struct Bolts {
     pub gauge: f64,
     /// Heights of the rows, from the top down.
     pub rows: Vec<f64>,
+    /// Length under the head; `None`: the shortest that does.
+    pub length: Option<f64>,
     /// What their bodies look like.
     pub body: BoltBody,
 }

@@ -4,7 +4,7 @@ use std::io;
 
 use glam::DVec3;
 
-use super::building::{Beam, BoltBody, Bolts, ClassIn, Column, Joint, Section};
+use super::building::{Beam, BoltBody, Bolting, Bolts, ClassIn, Column, Detail, Joint, Section, Welds};
 use super::entity::{Declared::*, Entity, Link, Simple};
 use super::hardware;
 use super::model::{Model, Reference, level};
@@ -12,6 +12,7 @@ use super::shapes::{axes, circle, extrusion, hexagon, mapped, moved, outline, po
 use super::space::{Face, Frame};
 
 /// A weld along a line, with a fillet on both sides of a plate's edge.
+#[derive(Clone, Copy, Debug)]
 pub struct Seam {
     /// Where it starts.
     pub from: DVec3,
@@ -25,46 +26,54 @@ pub struct Seam {
     pub half: f64,
 }
 
-/// What the bolts of a joint have in common.
-struct Kind {
+/// What alike bolts have in common.
+struct Kind<'b> {
     name: String,
     size: hardware::Size,
-    grip: f64,
     length: f64,
-    level: f64,
+    of: &'b Bolting,
 }
 
-/// Where a bolt is.
-struct Place {
-    name: String,
-    origin: DVec3,
-    /// In the frame of a group: x up from the soffit, y across.
-    in_group: DVec3,
+/// The welds of a beam's end at a plate: at both flanges and at the web, each with its name and throat.
+pub fn beam_seams(section: &Section, face: Face, plate: f64, welds: &Welds) -> [(&'static str, Seam, f64); 3] {
+    let Section { h, b, t_w, t_f, r, .. } = *section;
+    let across = DVec3::Z.cross(face.out);
+    let behind = face.soffit + face.out * plate;
+    let at = |x: f64, z: f64| behind + across * x + DVec3::Z * z;
+    let flange =
+        |z: f64| Seam { from: at(-b / 2.0, z), to: at(b / 2.0, z), into: face.out, across: DVec3::Z, half: t_f / 2.0 };
+    let web = Seam { from: at(0.0, t_f + r), to: at(0.0, h - t_f - r), into: face.out, across, half: t_w / 2.0 };
+    [
+        ("upper flange", flange(h - t_f / 2.0), welds.flange),
+        ("lower flange", flange(t_f / 2.0), welds.flange),
+        ("web", web, welds.web),
+    ]
+}
+
+/// The bolts of an end plate, heads on the plate, nuts behind a part of that thickness.
+pub fn end_plate_bolts(path: &str, level: f64, face: Face, plate: f64, other: f64, bolts: &Bolts) -> Bolting {
+    let place =
+        |row: usize, side: f64, hand: char| (format!("bolt {}{hand}", row + 1), [bolts.rows[row], side * bolts.gauge]);
+    Bolting {
+        path: path.into(),
+        level,
+        diameter: bolts.diameter,
+        class: bolts.class.clone(),
+        body: bolts.body,
+        grip: plate + other,
+        length: bolts.length,
+        anchors: false,
+        frame: Frame { origin: face.soffit + face.out * plate, z: -face.out, x: DVec3::Z },
+        at: (0..bolts.rows.len()).flat_map(|row| [place(row, -0.5, 'L'), place(row, 0.5, 'R')]).collect(),
+    }
 }
 
 impl Model<'_> {
     /// Writes the welds of a beam's end: at both flanges and at the web.
     pub fn beam_welds(&mut self, owner: &str, beam: &Beam, joint: &Joint, face: Face) -> io::Result<Vec<Reference>> {
         let Some(welds) = &joint.detail.welds else { return Ok(Vec::new()) };
-        let Section { h, b, t_w, t_f, r, .. } = beam.section;
-        let across = DVec3::Z.cross(face.out);
-        let behind = face.soffit + face.out * joint.detail.plate.thickness;
-        let at = |x: f64, z: f64| behind + across * x + DVec3::Z * z;
-        let flange = |z: f64| Seam {
-            from: at(-b / 2.0, z),
-            to: at(b / 2.0, z),
-            into: face.out,
-            across: DVec3::Z,
-            half: t_f / 2.0,
-        };
-        let web = Seam { from: at(0.0, t_f + r), to: at(0.0, h - t_f - r), into: face.out, across, half: t_w / 2.0 };
-        let seams = [
-            ("upper flange", flange(h - t_f / 2.0), welds.flange),
-            ("lower flange", flange(t_f / 2.0), welds.flange),
-            ("web", web, welds.web),
-        ];
         let mut parts = Vec::new();
-        for (name, seam, throat) in &seams {
+        for (name, seam, throat) in &beam_seams(&beam.section, face, joint.detail.plate.thickness, welds) {
             parts.push(self.weld(&format!("{owner}/weld {name}"), level(beam), seam, *throat, welds.bodies)?);
         }
         Ok(parts)
@@ -115,40 +124,38 @@ impl Model<'_> {
         joint: &Joint,
         face: Face,
     ) -> io::Result<Vec<Reference>> {
-        let (plate, bolts) = (&joint.detail.plate, &joint.detail.bolts);
-        let size = hardware::size(bolts.diameter);
-        let grip = plate.thickness + column.section.t_f;
-        let length = hardware::length(size, grip);
+        let Detail { plate, bolts, .. } = &joint.detail;
+        self.bolting(&end_plate_bolts(owner, level(beam), face, plate.thickness, column.section.t_f, bolts))
+    }
+
+    /// Writes alike bolts.
+    pub fn bolting(&mut self, of: &Bolting) -> io::Result<Vec<Reference>> {
+        let size = hardware::size(of.diameter);
+        let length = of.length.unwrap_or_else(|| hardware::length(size, of.grip));
         let plain = format!("M{} x {length}", size.d);
-        let name = match &bolts.class {
+        let name = match &of.class {
             Some((class, ClassIn::Name)) => format!("{plain} - {class}"),
-            _ => plain.clone(),
+            _ => plain,
         };
-        let behind = face.soffit + face.out * plate.thickness;
-        let place = |row: usize, side: f64, hand: char| {
-            let aside = side * bolts.gauge;
-            let origin = behind + DVec3::Z * bolts.rows[row] + DVec3::Z.cross(face.out) * aside;
-            let name = format!("{owner}/bolt {}{hand}", row + 1);
-            Place { name, origin, in_group: DVec3::new(bolts.rows[row], aside, 0.0) }
-        };
-        let both = |row| [place(row, -0.5, 'L'), place(row, 0.5, 'R')];
-        let places: Vec<Place> = (0..bolts.rows.len()).flat_map(both).collect();
-        let kind = Kind { name, size, grip, length, level: level(beam) };
-        let frame = |origin| Frame { origin, z: -face.out, x: DVec3::Z };
+        let name = if of.anchors { format!("ANCHOR {name}") } else { name };
+        let kind = Kind { name, size, length, of };
+        let Frame { origin, z, x } = of.frame;
+        let frame = |[along, aside]: [f64; 2]| Frame { origin: origin + x * along + z.cross(x) * aside, z, x };
         let mut parts = Vec::new();
-        match bolts.body {
+        match of.body {
             BoltBody::Group => {
-                let at: Vec<DVec3> = places.iter().map(|place| place.in_group).collect();
-                parts.push(self.fastener(&format!("{owner}/bolts"), &kind, bolts, frame(behind), &at)?);
+                let at: Vec<DVec3> = of.at.iter().map(|(_, [x, y])| DVec3::new(*x, *y, 0.0)).collect();
+                parts.push(self.fastener(&format!("{}/bolts", of.path), &kind, of.frame, &at)?);
             }
             BoltBody::Shank | BoltBody::Mapped => {
-                for place in &places {
-                    parts.push(self.fastener(&place.name, &kind, bolts, frame(place.origin), &[DVec3::ZERO])?);
+                for (name, place) in &of.at {
+                    let path = format!("{}/{name}", of.path);
+                    parts.push(self.fastener(&path, &kind, frame(*place), &[DVec3::ZERO])?);
                 }
             }
             BoltBody::Proxies => {
-                for place in &places {
-                    parts.extend(self.proxies(&place.name, &kind, bolts, frame(place.origin))?);
+                for (name, place) in &of.at {
+                    parts.extend(self.proxies(&format!("{}/{name}", of.path), &kind, frame(*place))?);
                 }
             }
         }
@@ -156,15 +163,9 @@ impl Model<'_> {
     }
 
     /// A fastener of bolts at places in its frame.
-    fn fastener(
-        &mut self,
-        path: &str,
-        kind: &Kind,
-        bolts: &Bolts,
-        frame: Frame,
-        at: &[DVec3],
-    ) -> io::Result<Reference> {
-        let Kind { name, size, grip, length, level } = kind;
+    fn fastener(&mut self, path: &str, kind: &Kind<'_>, frame: Frame, at: &[DVec3]) -> io::Result<Reference> {
+        let Kind { name, size, length, of: bolts } = kind;
+        let (grip, level) = (&bolts.grip, &bolts.level);
         let is_mapped = bolts.body != BoltBody::Shank;
         let key = format!("bolt type {name} {:?} {grip}", bolts.body);
         let of = self.bolt_type(&key, name, *size, *length, is_mapped.then_some(*grip));
@@ -185,7 +186,7 @@ impl Model<'_> {
             .text("Name", name)
             .real("NominalDiameter", size.d)
             .real("NominalLength", *length)
-            .token("PredefinedType", "BOLT")
+            .token("PredefinedType", if bolts.anchors { "ANCHORBOLT" } else { "BOLT" })
             .held_single("IsTypedBy", "RelatedObjects", of)
             .held("IsDefinedBy", "RelatedObjects", vec![set])
             .one("ObjectPlacement", Wider, self.placed(*level, frame))
@@ -197,8 +198,9 @@ impl Model<'_> {
     }
 
     /// A bolt, its washer and its nut as elements of no class.
-    fn proxies(&mut self, path: &str, kind: &Kind, bolts: &Bolts, frame: Frame) -> io::Result<[Reference; 3]> {
-        let Kind { name, size, grip, length, level } = kind;
+    fn proxies(&mut self, path: &str, kind: &Kind<'_>, frame: Frame) -> io::Result<[Reference; 3]> {
+        let Kind { name, size, length, of: bolts } = kind;
+        let (grip, level) = (&bolts.grip, &bolts.level);
         let from = |z: f64| Some(moved(DVec3::Z * z));
         let bolt = vec![
             extrusion(hexagon(size.across_flats), from(-size.head), size.head).into(),
@@ -229,7 +231,7 @@ impl Model<'_> {
     }
 
     /// Says the strength class as a material, where that is how it is said.
-    fn of_class(&mut self, bolts: &Bolts, element: Reference) {
+    fn of_class(&mut self, bolts: &Bolting, element: Reference) {
         if let Some((class, ClassIn::Material)) = &bolts.class {
             self.of_material(class, element);
         }

@@ -21,6 +21,8 @@ pub fn frames(joints: usize, told: bool) -> Building {
         storeys: (0..=STOREYS).map(|i| Storey { name: format!("Level {i}"), elevation: i as f64 * HEIGHT }).collect(),
         columns: Vec::new(),
         beams: Vec::with_capacity(beams),
+        fittings: Vec::new(),
+        boltings: Vec::new(),
         plates: PlateAs::Plate,
     };
     for frame in 0..beams.div_ceil(BAYS * STOREYS) {
@@ -65,6 +67,7 @@ fn detail() -> Detail {
             class: Some(("8.8".into(), ClassIn::Name)),
             gauge: 100.0,
             rows: vec![502.0, 392.0, 302.0, 70.0],
+            length: None,
             body: BoltBody::Shank,
         },
         welds: Some(Welds { flange: 10.0, web: 6.0, bodies: false }),

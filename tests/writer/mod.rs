@@ -7,7 +7,8 @@
 
 pub mod building;
 pub mod entity;
-mod fastening;
+pub mod fastening;
+pub mod fittings;
 pub mod frames;
 pub mod guid;
 pub mod hardware;
@@ -17,7 +18,7 @@ pub mod part28;
 mod parts;
 mod schema;
 mod shapes;
-mod space;
+pub mod space;
 pub mod step;
 pub mod two_ended;
 pub mod version;

@@ -55,13 +55,16 @@ pub fn write(building: &Building, sink: &mut dyn Sink) -> io::Result<()> {
     let root = model.project(project, site, [context, body, axis]);
     model.put(root)?;
     let stiffeners = parts::stiffeners_by_column(building);
-    for (column, stiffeners) in building.columns.iter().zip(&stiffeners) {
-        model.column(column, stiffeners)?;
+    for (index, stiffeners) in stiffeners.iter().enumerate() {
+        model.column(index, stiffeners)?;
     }
     let column_ids: Vec<u64> =
         building.columns.iter().filter_map(|column| model.known(&format!("column {}", column.mark))).collect();
-    for beam in &building.beams {
-        model.beam(beam, &column_ids)?;
+    for index in 0..building.beams.len() {
+        model.beam(index, &column_ids)?;
+    }
+    for bolting in &building.boltings {
+        model.bolting(bolting)?;
     }
     model.spaces(site, hall, site_placement, hall_placement)?;
     model.materials()

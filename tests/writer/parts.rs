@@ -4,7 +4,7 @@ use std::io;
 
 use glam::DVec3;
 
-use super::building::{Beam, Building, Column, End, Joint, Level, PlateAs, Section, Stiffener};
+use super::building::{Beam, Building, Column, End, Fitting, Joint, Level, Owner, PlateAs, Section, Stiffener};
 use super::entity::{Declared::*, Entity, Link, Simple, links};
 use super::fastening::Seam;
 use super::hardware;
@@ -57,7 +57,8 @@ impl Model<'_> {
     }
 
     /// Writes a column with its stiffeners and their welds as one shipping piece.
-    pub fn column(&mut self, column: &Column, stiffeners: &[Pair]) -> io::Result<()> {
+    pub fn column(&mut self, index: usize, stiffeners: &[Pair]) -> io::Result<()> {
+        let column = &self.building.columns[index];
         let depth = depth_of(column);
         let foot = DVec3::new(column.at[0], column.at[1], column.bottom);
         let owner = format!("column {}", column.mark);
@@ -87,7 +88,8 @@ impl Model<'_> {
                 parts.extend(self.stiffener(&name, column, pair, depth * side)?);
             }
         }
-        if stiffeners.is_empty() {
+        parts.extend(self.fittings(Owner::Column(index), column.bottom)?);
+        if parts.len() == 1 {
             self.contain(column.bottom, this);
             return Ok(());
         }
@@ -165,8 +167,9 @@ impl Model<'_> {
     }
 
     /// Writes a beam, its end plates and their welds as one shipping piece, then its bolts and its relations.
-    pub fn beam(&mut self, beam: &Beam, columns: &[u64]) -> io::Result<()> {
+    pub fn beam(&mut self, index: usize, columns: &[u64]) -> io::Result<()> {
         let building = self.building;
+        let beam = &building.beams[index];
         let [start, end] = ends(&building.columns, beam);
         let along = (end - start).normalize();
         let owner = format!("beam {}", beam.mark);
@@ -204,6 +207,7 @@ impl Model<'_> {
             pieces.extend(&welded);
             bolted.push((joint, columns[*column], [welded, bolts].concat()));
         }
+        pieces.extend(self.fittings(Owner::Beam(index), level(beam))?);
         if pieces.len() > 1 {
             self.piece(&format!("P-{}", beam.mark), "BEAM", level(beam), &pieces)?;
         } else {
@@ -220,6 +224,21 @@ impl Model<'_> {
             self.put(relation)?;
         }
         Ok(())
+    }
+
+    /// Writes the fittings of a member with their welds.
+    fn fittings(&mut self, on: Owner, level: f64) -> io::Result<Vec<Reference>> {
+        let building = self.building;
+        let mut parts = Vec::new();
+        for fitting in building.fittings.iter().filter(|fitting| fitting.on == on) {
+            let Fitting { name, frame, corners, holes, thickness, grade, .. } = fitting;
+            let path = format!("fitting {}", fitting.mark);
+            parts.push(self.plate(&path, name, level, *frame, (corners, holes), *thickness, grade)?);
+            for (index, (seam, throat)) in fitting.seams.iter().enumerate() {
+                parts.push(self.weld(&format!("{path}/weld {}", index + 1), level, seam, *throat, false)?);
+            }
+        }
+        Ok(parts)
     }
 
     fn end_plate(&mut self, owner: &str, beam: &Beam, which: &str, joint: &Joint, face: Face) -> io::Result<Reference> {

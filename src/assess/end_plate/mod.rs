@@ -4,11 +4,11 @@ mod axial;
 mod intended;
 mod limits;
 mod moment;
-mod numbers;
+pub(in crate::assess) mod numbers;
 mod rows;
 mod shear;
 mod solver;
-mod sound;
+pub(in crate::assess) mod sound;
 mod strengthening;
 mod totals;
 mod turning;
@@ -21,7 +21,7 @@ use shear::Tension;
 use solver::Solved;
 pub use solver::Solver;
 
-use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict};
+use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict, simple};
 use crate::intent::LoadCase;
 use crate::joints::BoltedPlate;
 use crate::origin::{Ask, Missing};
@@ -305,11 +305,19 @@ fn not_computed(case: &LoadCase) -> Vec<Verdict> {
         governed_by: String::new(),
         reason: Some(reason.into()),
     };
-    vec![
+    let mut verdicts = vec![
         unproven(About::Moment, case.moment.map(|m| m.knm()), "kNm"),
         unproven(About::Shear, case.shear.map(|v| v.kn()), "kN"),
         unproven(About::Axial, case.axial.map(|n| n.kn()), "kN"),
-    ]
+    ];
+    verdicts.extend(tying(case));
+    verdicts
+}
+
+/// A tying force on a joint that carries a moment has no method here.
+fn tying(case: &LoadCase) -> Option<Verdict> {
+    let reason = "the resistance to tying of this kind of joint is not assessed yet";
+    case.tying.map(|force| simple::unproven(About::Tying, Some(force.kn()), "kN", reason.into()))
 }
 
 struct Cases<'a, F> {
@@ -409,6 +417,7 @@ impl<F: Fn(Sense, f64, Beside, Option<RowForces>) -> Solved> Cases<'_, F> {
         });
         let (verdict, together) = self.axial(*axial, moment.zip(solved.as_deref()), beside, bound);
         verdicts.push(verdict);
+        verdicts.extend(tying(demand.case));
         CaseResult { case, verdicts, moment: solved, shear: shear_resistance, axial: together }
     }
 

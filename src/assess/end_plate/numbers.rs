@@ -10,7 +10,7 @@ use std::sync::Arc;
 pub use column_side::{ColumnSide, StiffenerPair};
 pub use haunch_side::HaunchSide;
 pub use noted::Noted;
-use noted::print_length;
+pub(in crate::assess) use noted::print_length;
 use plate_side::NOISE;
 pub use plate_side::PlateSide;
 
@@ -259,7 +259,7 @@ impl Numbers {
 
 impl BoltNumbers {
     /// `plies`: thickness of both plies, where known.
-    fn gather(
+    pub(in crate::assess) fn gather(
         laid: &joints::Bolts,
         plies: Option<[Length; 2]>,
         rulebook: &Rulebook,

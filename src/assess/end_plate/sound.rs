@@ -1,7 +1,7 @@
 //! Whether a layout's sizes are such that the formulas have a meaning.
 
 use super::numbers::BoltNumbers;
-use crate::joints::{BoltedPlate, PlateSide, Support};
+use crate::joints::{BoltRow, BoltedPlate, PlateSide, Support};
 use crate::rulebook::Rulebook;
 use crate::units::Length;
 
@@ -15,11 +15,29 @@ pub fn reasons(
     rulebook: &Rulebook,
 ) -> Vec<(&'static str, String)> {
     let mut reasons = Vec::new();
-    let (d, d_0, rows) = (bolts.d, bolts.d_0, &joint.bolts.rows);
     plate_size(joint.side, beam_h, rulebook, &mut reasons);
     if let (Support::Plate(other), Some(h)) = (joint.support, other_h) {
         plate_size(other, h, rulebook, &mut reasons);
     }
+    reasons.extend(of_bolts(&joint.bolts.rows, bolts, rulebook));
+    let ends = match joint.support {
+        Support::Column(layout) => [layout.column_above, layout.column_below],
+        Support::Plate(_) => [None, None],
+    };
+    if !ends.into_iter().flatten().all(|end| end.get().is_finite()) {
+        reasons.push(("column end", "its distance from the rows is no number".into()));
+    }
+    reasons
+}
+
+/// The same of rows of two bolts and their holes.
+pub(in crate::assess) fn of_bolts(
+    rows: &[BoltRow],
+    bolts: &BoltNumbers,
+    rulebook: &Rulebook,
+) -> Vec<(&'static str, String)> {
+    let mut reasons = Vec::new();
+    let (d, d_0) = (bolts.d, bolts.d_0);
     for (i, row) in rows.iter().enumerate() {
         if !(row.height.get().is_finite() && [row.gauge, row.edge_plate, row.edge_column].into_iter().all(positive)) {
             reasons.push((
@@ -43,13 +61,6 @@ pub fn reasons(
             reasons.push(("bolt pitch", format!("rows {} and {} lie {pitch} apart, bolts of {d}", i + 1, i + 2)));
         }
     }
-    let ends = match joint.support {
-        Support::Column(layout) => [layout.column_above, layout.column_below],
-        Support::Plate(_) => [None, None],
-    };
-    if !ends.into_iter().flatten().all(|end| end.get().is_finite()) {
-        reasons.push(("column end", "its distance from the rows is no number".into()));
-    }
     let size = rulebook.tolerances.size;
     match rulebook.clearance(d) {
         Some(normal) if d_0 >= d && d_0 <= d + normal.round + size => {}
@@ -65,7 +76,7 @@ pub fn reasons(
     reasons
 }
 
-fn positive(value: Length) -> bool {
+pub(in crate::assess) fn positive(value: Length) -> bool {
     value.get().is_finite() && value > Length::ZERO
 }
 

@@ -241,6 +241,9 @@ pub struct Required {
     pub shear_kn: Option<f64>,
     /// N_Ed.
     pub axial_kn: Option<f64>,
+    /// F_tie,Ed.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    pub tying_kn: Option<f64>,
     /// The largest ratio over everything checked.
     pub utilisation: Option<f64>,
     /// What that ratio belongs to.
