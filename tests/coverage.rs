@@ -8,7 +8,7 @@ use faying::assess::{Component, Sense};
 use faying::rulebook::Rulebook;
 
 use crate::assess::joint::{PLAIN, Sketch, asked, case, resistance};
-use crate::assess::strengthened;
+use crate::assess::{flexible, strengthened};
 
 const PAGE: &str = include_str!("../rules/coverage.md");
 
@@ -101,6 +101,13 @@ fn every_clause_that_a_calculation_prints_stands_there() {
         // A shear above half of the beam's own.
         let sheared = asked(&layout, &case(Some(1.0), Some(700.0), Some(0.0)), Opposite::None, &rulebook);
         printed(&sheared.cases[0].moment.as_ref().unwrap().components, &mut all);
+    }
+    let cut = Some((90.0, 50.0));
+    let notched = flexible::Plain { top: cut, gauge: 180.0, shared: true, ..flexible::PLAIN };
+    for detail in [notched, flexible::Plain { top: cut, bottom: cut, ..flexible::PLAIN }] {
+        let simple = detail.assessed(&flexible::RULES);
+        printed(&simple.tying, &mut all);
+        printed(&simple.shear.unwrap().components, &mut all);
     }
     all.sort();
     all.dedup();

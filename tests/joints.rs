@@ -1,6 +1,7 @@
 //! Joints found in hand-built steel. Expected values are the parameters with which the steel was built.
 
 mod build;
+mod flexible;
 mod haunches;
 mod kinds;
 mod laws;

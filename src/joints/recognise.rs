@@ -125,7 +125,10 @@ fn end_plate(scene: &Scene, plate: usize, bolts: Vec<usize>) -> Option<Draft> {
     } else if !strong && (flange.is_some() || on_web) {
         (Kind::FlexibleEndPlate, None)
     } else if on_web {
-        (Kind::EndPlateToWeb, Some("a moment into a web bends it about the supporting member's minor axis, which is not assessed"))
+        (
+            Kind::EndPlateToWeb,
+            Some("a moment into a web bends it about the supporting member's minor axis, which is not assessed"),
+        )
     } else if let Some((column, _)) = flange {
         let column = &scene.steel.members[column];
         if are_square(beam.across, column.along, scene.tolerances().angle) {

@@ -36,10 +36,11 @@ impl<'a> Reading<'a> {
         }
         let (from, to) = ends(prism, &seen, &mut disagreements);
         let mut notches = Vec::new();
-        let mut take = |cut: &Prism, cutter: &str, told: &mut Vec<String>| match notch(prism, &seen, (from, to), cut, cutter) {
-            Some(notch) => notches.push(notch),
-            None => told.push(untaken(cutter)),
-        };
+        let mut take =
+            |cut: &Prism, cutter: &str, told: &mut Vec<String>| match notch(prism, &seen, (from, to), cut, cutter) {
+                Some(notch) => notches.push(notch),
+                None => told.push(untaken(cutter)),
+            };
         for cut in &prism.cuts {
             if let Cut::Prism(cut) = cut
                 && !is_bolt_hole(cut)

@@ -27,6 +27,7 @@ fn member(guid: &str, mark: Option<&str>) -> Member {
         section: Err(missing()),
         grade: Err(missing()),
         not_assessed: None,
+        notches: Vec::new(),
         disagreements: Vec::new(),
     }
 }

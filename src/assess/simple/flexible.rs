@@ -94,8 +94,16 @@ impl<'a> Numbers<'a> {
         }
         for (name, cope) in [("top", layout.top), ("bottom", layout.bottom)] {
             if let Some(cope) = cope {
-                noted.given(&format!("notch at the {name}, length"), cope.length, "the box round what is cut off the beam");
-                noted.given(&format!("notch at the {name}, depth"), cope.depth, "the box round what is cut off the beam");
+                noted.given(
+                    &format!("notch at the {name}, length"),
+                    cope.length,
+                    "the box round what is cut off the beam",
+                );
+                noted.given(
+                    &format!("notch at the {name}, depth"),
+                    cope.depth,
+                    "the box round what is cut off the beam",
+                );
             }
         }
         let grade = noted.take("end plate grade", &plate.grade, |g: &Grade| g.0.clone());
@@ -186,7 +194,12 @@ impl<'a> Numbers<'a> {
         let share = self.rulebook.simple.bolt_group;
         given!(w, "bolts, share beside the tension in them"; n_s, share);
         step!(w, "flexible end plates, design guides", V_v_Rd = share * n_s * F_v_Rd);
-        component("bolts-in-shear", "bolts in shear", "EN 1993-1-8:2005 3.6.1", Resistance { value: V_v_Rd, working: w })
+        component(
+            "bolts-in-shear",
+            "bolts in shear",
+            "EN 1993-1-8:2005 3.6.1",
+            Resistance { value: V_v_Rd, working: w },
+        )
     }
 
     /// Bearing of the group by 3.7: the sum, or where a bolt would shear off first, as often the smallest.
@@ -271,7 +284,8 @@ impl<'a> Numbers<'a> {
         let gamma_M0 = self.rulebook.annex.gamma_m0;
         let (beam, f_y) = (&self.beam, self.beam_steel.f_y_web);
         let web = flexible::local_shear(self.beside_web(), beam.t_w, self.rulebook.simple.local_shear, f_y, gamma_M0);
-        let mut all = vec![component("beam-web-in-shear", "beam web in shear beside the plate", "EN 1993-1-1 6.2.6", web)];
+        let mut all =
+            vec![component("beam-web-in-shear", "beam web in shear beside the plate", "EN 1993-1-1 6.2.6", web)];
         let tee = Left::Tee { b: beam.b, t_f: beam.t_f, r: self.r_b };
         let section = |left, cut: Length| notched::Section { left, h_n: beam.h - cut, t_w: beam.t_w, f_y };
         // Where one notch is longer, its end has the other flange again.
@@ -317,10 +331,12 @@ impl<'a> Numbers<'a> {
         // t_p ≤ d/2.8 √(f_ub/f_y): the plate or the ply behind yields before the bolts break (design guides).
         let thickest = |f_y: Stress| b.d / 2.8 * (b.f_ub / f_y).sqrt();
         let (t_p, limit) = (plate.thickness, thickest(self.steel.f_y));
-        let behind = self.layout.held == HeldBy::ColumnFlange
-            && self.support.t_f <= thickest(self.support_steel.f_y_flange);
+        let behind =
+            self.layout.held == HeldBy::ColumnFlange && self.support.t_f <= thickest(self.support_steel.f_y_flange);
         if !(t_p <= limit) && !behind {
-            let reason = format!("an end plate of {t_p} is no ductile one with these bolts: {limit:.1} at most by the design guides");
+            let reason = format!(
+                "an end plate of {t_p} is no ductile one with these bolts: {limit:.1} at most by the design guides"
+            );
             noted.not_checked("rotation of the joint", reason, Ask::Engineer);
         }
         let full = FULL_STRENGTH.iter().find(|(f_y, _)| self.beam_steel.f_y_web.get() <= *f_y).map(|(_, share)| *share);

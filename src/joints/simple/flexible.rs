@@ -8,7 +8,7 @@ use super::super::end_plate::{UPRIGHT, is_rectangular, member_at, plate_at};
 use super::super::frame::{Frame, are_parallel};
 use super::super::scene::Scene;
 use super::super::touch::{EndOn, Pass};
-use super::super::welds;
+use super::super::welds::{self, Role};
 use super::super::{Bolts, EndPlate, MemberAt};
 use crate::origin::{Ask, Known, Missing};
 use crate::shop::Member;
@@ -81,7 +81,10 @@ impl FlexibleEndPlate {
         let notch = |cope: Option<Cope>| cope.map_or("none".into(), |c| format!("{} × {}", c.length, c.depth));
         let mut lines = vec![
             format!("on the {}", self.held.word()),
-            format!("end plate {} × {}, from {} to {}", self.plate.thickness, self.plate.width, self.plate.bottom, self.plate.top),
+            format!(
+                "end plate {} × {}, from {} to {}",
+                self.plate.thickness, self.plate.width, self.plate.bottom, self.plate.top
+            ),
             format!("bolts d {}, d0 {}", print(&self.bolts.diameter), print(&self.bolts.hole)),
             format!("weld at the web a {}", print(&self.weld)),
             format!("notch at the top {}", notch(self.top)),
@@ -116,6 +119,12 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FlexibleEndPla
         }
     }
     let frame = Frame::new(&scene.steel.members[beam], &end, body).ok_or("the beam's end has no direction")?;
+    let roles = welds::at_plate(scene, &frame, beam, plate);
+    if roles.iter().any(|(_, role)| matches!(role, Role::FlangeTop | Role::FlangeBottom)) {
+        return Err(
+            "the end plate is welded to one of the beam's flanges, and so not flexible: not assessed yet".into()
+        );
+    }
     let held = held(scene, draft, at, supporting, &frame)?;
     placed(scene, &end, &frame, at, plate, held)?;
     let outline = frame.outline(body);
@@ -168,7 +177,6 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FlexibleEndPla
         shared,
     };
     let run = layout.beside_web(mm(scene.steel.members[beam].extents.y), t_f, r);
-    let roles = welds::at_plate(scene, &frame, beam, plate);
     layout.weld = welds::throat_over(scene, &frame, beam, &roles, run.get());
     Ok(layout)
 }
@@ -197,7 +205,11 @@ fn held(scene: &Scene, draft: &Draft, at: &Member, supporting: usize, frame: &Fr
         Some(Ply::Web) if stands => (Ply::Web, Held::ColumnWeb),
         Some(Ply::Web) if lies => (Ply::Web, Held::BeamWeb),
         Some(ply) if ply.sign() != 0.0 && stands => (*ply, Held::ColumnFlange),
-        Some(_) => return Err("the beam's depth runs neither along the supporting member nor with its depth: not assessed yet".into()),
+        Some(_) => {
+            return Err(
+                "the beam's depth runs neither along the supporting member nor with its depth: not assessed yet".into(),
+            );
+        }
         None => return Err("the bolts do not all pass through one flange or web: not assessed yet".into()),
     };
     let through = |bolt: &&usize| scene.touches.passes[**bolt].contains(&Pass::Member(supporting, ply));

@@ -20,7 +20,12 @@ pub struct Noted {
 }
 
 impl Noted {
-    pub(in crate::assess) fn take<T: Clone>(&mut self, name: &str, known: &Known<T>, print: impl Fn(&T) -> String) -> Option<T> {
+    pub(in crate::assess) fn take<T: Clone>(
+        &mut self,
+        name: &str,
+        known: &Known<T>,
+        print: impl Fn(&T) -> String,
+    ) -> Option<T> {
         match known {
             Ok(datum) => {
                 self.inputs.push(Input::of(name, datum, print));
@@ -70,7 +75,13 @@ impl Noted {
         Some((section, strength, r))
     }
 
-    pub(in crate::assess) fn strength(&mut self, name: &str, rulebook: &Rulebook, grade: &Grade, t: Length) -> Option<Strength> {
+    pub(in crate::assess) fn strength(
+        &mut self,
+        name: &str,
+        rulebook: &Rulebook,
+        grade: &Grade,
+        t: Length,
+    ) -> Option<Strength> {
         let known = rulebook.strength(grade, t);
         self.take(name, &known, |s| format!("fy {}, fu {} at {t}", s.f_y, s.f_u))
     }

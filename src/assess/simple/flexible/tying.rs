@@ -3,9 +3,9 @@
 use super::{Numbers, component};
 use crate::assess::Component;
 use crate::assess::end_plate::numbers::Noted;
+use crate::eurocode::Resistance;
 use crate::eurocode::t_stub::{ModeOne, TStub, t_stub};
 use crate::eurocode::{bolts, flexible, welds};
-use crate::eurocode::Resistance;
 use crate::joints::HeldBy;
 use crate::origin::Ask;
 use crate::rulebook;
@@ -27,7 +27,12 @@ impl Numbers<'_> {
         step!(w, "4.5.3.2", N_weld_Rd_u = 2.0 * F_w_Rd * l_w);
         let weld = Resistance { value: N_weld_Rd_u, working: w };
         let mut all = vec![
-            component("end-plate-in-tying", "end plate in tying", "EN 1993-1-8:2005 6.2.4", self.plate_pulled(a, gamma_Mu)),
+            component(
+                "end-plate-in-tying",
+                "end plate in tying",
+                "EN 1993-1-8:2005 6.2.4",
+                self.plate_pulled(a, gamma_Mu),
+            ),
             component("beam-web-in-tying", "beam web in tying", "EN 1993-1-1 6.2.3", tearing),
             component("web-weld-in-tying", "weld at the web in tying", "EN 1993-1-8:2005 4.5.3.2", weld),
         ];
@@ -70,7 +75,11 @@ impl Numbers<'_> {
         let e_min = self.edge();
         given!(w, "to the plate's edge"; e_min);
         step!(w, "6.2.4", n = e_min.min(1.25 * m));
-        step!(w, "a row's reach past itself, design guides", reach = 0.5 * (p_3 - t_w - 2.0 * 2.0_f64.sqrt() * a) + 0.5 * d_0);
+        step!(
+            w,
+            "a row's reach past itself, design guides",
+            reach = 0.5 * (p_3 - t_w - 2.0 * 2.0_f64.sqrt() * a) + 0.5 * d_0
+        );
         let ends = (rows.first().map_or(Length::ZERO, |row| self.layout.plate.top - row.height), rows.last());
         let lower = ends.1.map_or(Length::ZERO, |row| row.height - self.layout.plate.bottom);
         let between: Length = rows.windows(2).map(|pair| (pair[0].height - pair[1].height).min(2.0 * reach)).sum();
