@@ -4,6 +4,7 @@
 mod axial;
 mod butt_welds;
 pub mod column_bases;
+pub mod flexible;
 mod haunches;
 mod intended;
 pub mod joint;

@@ -8,7 +8,7 @@ use faying::assess::{Component, Sense};
 use faying::rulebook::Rulebook;
 
 use crate::assess::joint::{PLAIN, Sketch, asked, case, resistance};
-use crate::assess::{column_bases, strengthened};
+use crate::assess::{column_bases, flexible, strengthened};
 
 const PAGE: &str = include_str!("../rules/coverage.md");
 
@@ -107,6 +107,13 @@ fn every_clause_that_a_calculation_prints_stands_there() {
         let based = column_bases::asked(&column_bases::base(), [Some(n), Some(80.0), Some(50.0)]);
         printed(&based.beside.iter().map(|(component, _)| component.clone()).collect::<Vec<_>>(), &mut all);
         printed(&based.shear.as_ref().unwrap().components, &mut all);
+    }
+    let cut = Some((90.0, 50.0));
+    let notched = flexible::Plain { top: cut, gauge: 180.0, shared: true, ..flexible::PLAIN };
+    for detail in [notched, flexible::Plain { top: cut, bottom: cut, ..flexible::PLAIN }] {
+        let simple = detail.assessed(&flexible::RULES);
+        printed(&simple.tying, &mut all);
+        printed(&simple.shear.unwrap().components, &mut all);
     }
     all.sort();
     all.dedup();

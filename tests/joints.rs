@@ -2,6 +2,7 @@
 
 mod bases;
 mod build;
+mod flexible;
 mod haunches;
 mod kinds;
 mod laws;
