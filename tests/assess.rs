@@ -3,6 +3,7 @@
 
 mod axial;
 mod butt_welds;
+pub mod fin_plates;
 mod haunches;
 mod intended;
 pub mod joint;

@@ -26,6 +26,7 @@ fn member(guid: &str, mark: Option<&str>) -> Member {
         extents: DVec2::ONE,
         section: Err(missing()),
         grade: Err(missing()),
+        notches: Vec::new(),
         not_assessed: None,
         disagreements: Vec::new(),
     }
