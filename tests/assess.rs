@@ -5,6 +5,7 @@ mod axial;
 mod butt_welds;
 pub mod column_bases;
 pub mod flexible;
+pub mod fin_plates;
 mod haunches;
 mod intended;
 pub mod joint;
