@@ -3,6 +3,7 @@
 pub mod boathouse;
 mod detailing;
 mod exchange_file;
+mod jetty;
 mod papers;
 mod slip_house;
 

@@ -99,10 +99,14 @@ impl Loop {
         }
     }
 
-    /// Unit direction of its longest edge.
-    pub fn longest_edge(&self) -> Option<DVec2> {
-        let edges = neighbours(&self.points).map(|(before, at, _)| at - before);
-        edges.max_by(|a, b| a.length_squared().total_cmp(&b.length_squared()))?.try_normalize()
+    /// Unit direction of the edge, among the longest, along which its box has the least sum of sides: a triangle lies along
+    /// a leg, so that its box ends where it does. Of equal ones the longest.
+    pub fn snug_edge(&self) -> Option<DVec2> {
+        let mut edges: Vec<DVec2> = neighbours(&self.points).map(|(before, at, _)| at - before).collect();
+        edges.sort_by(|a, b| b.length_squared().total_cmp(&a.length_squared()));
+        let sides = |x: DVec2| self.box_along(x).size.element_sum();
+        let directions = edges.into_iter().take(EDGES).filter_map(DVec2::try_normalize);
+        directions.map(|x| (x, sides(x))).reduce(|a, b| if b.1 < 0.999 * a.1 { b } else { a }).map(|(x, _)| x)
     }
 
     /// Length of its edges, mm.

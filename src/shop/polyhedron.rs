@@ -75,8 +75,8 @@ impl Asked<'_> {
     }
 
     fn prism(&self, levels: &Levels<'_>, slice: Slice, from: f64, to: f64) -> Prism {
-        // The levels' own x means nothing: the longest side of the section does.
-        let along = slice.outer.longest_edge().filter(|_| slice.outer.circle.is_none()).unwrap_or(DVec2::X);
+        // The levels' own x means nothing: the sides of the section do.
+        let along = slice.outer.snug_edge().filter(|_| slice.outer.circle.is_none()).unwrap_or(DVec2::X);
         let turn = DAffine2::from_mat2(DMat2::from_cols(along, along.perp()).transpose());
         let x = levels.x * along.x + levels.y * along.y;
         let frame = DMat3::from_cols(x, levels.axis.cross(x), levels.axis);

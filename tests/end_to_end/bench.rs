@@ -90,6 +90,7 @@ pub fn shed() -> Building {
         }],
         fittings: Vec::new(),
         boltings: Vec::new(),
+        notches: Vec::new(),
         plates: PlateAs::Plate,
     }
 }

@@ -2,7 +2,7 @@
 //!
 //! A boat hall of British sections on grid lines A to D by 1 and 2, and a clubroom wing of European sections on E and F.
 
-use super::slip_house;
+use super::{jetty, slip_house};
 use crate::writer::building::{
     Along, Beam, BoltBody, Bolts, Building, ClassIn, Column, Detail, End, EndPlate, Joint, Level, PlateAs, Section,
     Stiffener, Storey, Welds,
@@ -21,6 +21,7 @@ pub fn section(name: &str) -> Section {
         "UKB 457x191x74" => [457.0, 190.4, 9.0, 14.5, 10.2],
         "UKB 406x178x60" => [406.4, 177.9, 7.9, 12.8, 10.2],
         "UKB 406x178x54" => [402.6, 177.7, 7.7, 10.9, 10.2],
+        "UKB 305x165x40" => [303.4, 165.0, 6.0, 10.2, 8.9],
         "HE 240 B" => [240.0, 240.0, 10.0, 17.0, 21.0],
         "IPE 360" => [360.0, 170.0, 8.0, 12.7, 18.0],
         "IPE 330" => [330.0, 160.0, 7.5, 11.5, 18.0],
@@ -199,9 +200,11 @@ pub fn boathouse() -> Building {
         beams,
         fittings: Vec::new(),
         boltings: Vec::new(),
+        notches: Vec::new(),
         plates: PlateAs::Plate,
     };
     slip_house::add(&mut building);
+    jetty::add(&mut building);
     building
 }
 

@@ -20,7 +20,7 @@ fn shaped(body: BoltBody, plates: PlateAs) -> Building {
             joint.detail.bolts.body = body;
         }
     }
-    building.boltings.iter_mut().for_each(|bolting| bolting.body = body);
+    building.boltings.iter_mut().filter(|bolting| !bolting.anchors).for_each(|bolting| bolting.body = body);
     building
 }
 
@@ -39,7 +39,7 @@ fn groups(building: &Building) -> BTreeMap<String, String> {
             }
         }
     }
-    for bolting in &building.boltings {
+    for bolting in building.boltings.iter().filter(|bolting| !bolting.anchors) {
         let group = global_id(&format!("{}/{}/bolts", building.name, bolting.path));
         let bolt = |(name, _): &(String, _)| global_id(&format!("{}/{}/{name}", building.name, bolting.path));
         groups.extend(bolting.at.iter().map(|place| (bolt(place), group.clone())));

@@ -20,8 +20,23 @@ pub struct Building {
     pub fittings: Vec<Fitting>,
     /// Bolts besides those of [`Detail`].
     pub boltings: Vec<Bolting>,
+    /// Notches at beams' ends.
+    pub notches: Vec<Notch>,
     /// What its plates are written as.
     pub plates: PlateAs,
+}
+
+/// A notch of a beam's upper flange.
+#[derive(Clone, Copy, Debug)]
+pub struct Notch {
+    /// Index of the beam.
+    pub beam: usize,
+    /// 0: at its start, 1: at its end.
+    pub end: usize,
+    /// Along the beam.
+    pub length: f64,
+    /// Down from the beam's top.
+    pub depth: f64,
 }
 
 /// A plate welded to a member, where it stands.
@@ -54,6 +69,8 @@ pub enum Owner {
     Column(usize),
     /// A beam by its index.
     Beam(usize),
+    /// None: it is shipped loose.
+    Loose,
 }
 
 /// Alike bolts.
@@ -254,7 +271,7 @@ pub enum PlateAs {
 /// Throats of the fillets, both sides of each flange and of the web.
 #[derive(Clone, Debug)]
 pub struct Welds {
-    /// At both flanges.
+    /// At both flanges; 0: none.
     pub flange: f64,
     /// At the web.
     pub web: f64,

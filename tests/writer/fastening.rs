@@ -4,7 +4,7 @@ use std::io;
 
 use glam::DVec3;
 
-use super::building::{Beam, BoltBody, Bolting, Bolts, ClassIn, Column, Detail, Joint, Section, Welds};
+use super::building::{Beam, BoltBody, Bolting, Bolts, ClassIn, Column, Detail, EndPlate, Joint, Section, Welds};
 use super::entity::{Declared::*, Entity, Link, Simple};
 use super::hardware;
 use super::model::{Model, Reference, level};
@@ -34,20 +34,23 @@ struct Kind<'b> {
     of: &'b Bolting,
 }
 
-/// The welds of a beam's end at a plate: at both flanges and at the web, each with its name and throat.
-pub fn beam_seams(section: &Section, face: Face, plate: f64, welds: &Welds) -> [(&'static str, Seam, f64); 3] {
+/// The welds of a beam's end at a plate: at both flanges and at the web as far as the plate reaches, each with its name
+/// and throat.
+pub fn beam_seams(section: &Section, face: Face, plate: &EndPlate, welds: &Welds) -> Vec<(&'static str, Seam, f64)> {
     let Section { h, b, t_w, t_f, r, .. } = *section;
     let across = DVec3::Z.cross(face.out);
-    let behind = face.soffit + face.out * plate;
+    let behind = face.soffit + face.out * plate.thickness;
     let at = |x: f64, z: f64| behind + across * x + DVec3::Z * z;
     let flange =
         |z: f64| Seam { from: at(-b / 2.0, z), to: at(b / 2.0, z), into: face.out, across: DVec3::Z, half: t_f / 2.0 };
-    let web = Seam { from: at(0.0, t_f + r), to: at(0.0, h - t_f - r), into: face.out, across, half: t_w / 2.0 };
-    [
+    let (low, high) = ((t_f + r).max(plate.bottom), (h - t_f - r).min(plate.top));
+    let web = Seam { from: at(0.0, low), to: at(0.0, high), into: face.out, across, half: t_w / 2.0 };
+    let all = [
         ("upper flange", flange(h - t_f / 2.0), welds.flange),
         ("lower flange", flange(t_f / 2.0), welds.flange),
         ("web", web, welds.web),
-    ]
+    ];
+    all.into_iter().filter(|(.., throat)| *throat > 0.0).collect()
 }
 
 /// The bolts of an end plate, heads on the plate, nuts behind a part of that thickness.
@@ -73,7 +76,7 @@ impl Model<'_> {
     pub fn beam_welds(&mut self, owner: &str, beam: &Beam, joint: &Joint, face: Face) -> io::Result<Vec<Reference>> {
         let Some(welds) = &joint.detail.welds else { return Ok(Vec::new()) };
         let mut parts = Vec::new();
-        for (name, seam, throat) in &beam_seams(&beam.section, face, joint.detail.plate.thickness, welds) {
+        for (name, seam, throat) in &beam_seams(&beam.section, face, &joint.detail.plate, welds) {
             parts.push(self.weld(&format!("{owner}/weld {name}"), level(beam), seam, *throat, welds.bodies)?);
         }
         Ok(parts)
@@ -168,8 +171,9 @@ impl Model<'_> {
         let (grip, level) = (&bolts.grip, &bolts.level);
         let is_mapped = bolts.body != BoltBody::Shank;
         let key = format!("bolt type {name} {:?} {grip}", bolts.body);
-        let of = self.bolt_type(&key, name, *size, *length, is_mapped.then_some(*grip));
-        let set = self.bolt_properties(*size, *length);
+        let sort = if bolts.anchors { "ANCHORBOLT" } else { "BOLT" };
+        let of = self.bolt_type(&key, name, sort, *size, *length, is_mapped.then_some(*grip));
+        let set = if bolts.anchors { Vec::new() } else { vec![self.bolt_properties(*size, *length)] };
         let body = match self.known(&format!("{key} map")) {
             Some(map) => {
                 let items = at.iter().map(|place| mapped(map, *place).into());
@@ -186,9 +190,9 @@ impl Model<'_> {
             .text("Name", name)
             .real("NominalDiameter", size.d)
             .real("NominalLength", *length)
-            .token("PredefinedType", if bolts.anchors { "ANCHORBOLT" } else { "BOLT" })
+            .token("PredefinedType", sort)
             .held_single("IsTypedBy", "RelatedObjects", of)
-            .held("IsDefinedBy", "RelatedObjects", vec![set])
+            .held("IsDefinedBy", "RelatedObjects", set)
             .one("ObjectPlacement", Wider, self.placed(*level, frame))
             .one("Representation", Wider, shape(body));
         self.of_class(bolts, this);
@@ -241,6 +245,7 @@ impl Model<'_> {
         &mut self,
         key: &str,
         name: &str,
+        sort: &'static str,
         size: hardware::Size,
         length: f64,
         mapped_grip: Option<f64>,
@@ -251,7 +256,7 @@ impl Model<'_> {
             let mut of = Entity::root("IfcMechanicalFastenerType", &path)
                 .id(id)
                 .text("Name", name)
-                .token("PredefinedType", "BOLT")
+                .token("PredefinedType", sort)
                 .real("NominalDiameter", size.d)
                 .real("NominalLength", length);
             if let Some(grip) = mapped_grip {

@@ -2,7 +2,7 @@
 
 use glam::DVec3;
 
-use super::building::{Column, Detail, Fitting, Owner, Section};
+use super::building::{BoltBody, Bolting, ClassIn, Column, Detail, Fitting, Owner, Section};
 use super::fastening::{Seam, beam_seams};
 use super::hardware;
 use super::space::{Face, Frame, depth_of};
@@ -22,7 +22,7 @@ pub fn end_plate(on: usize, mark: &str, section: &Section, face: Face, detail: &
     let (plate, bolts) = (&detail.plate, &detail.bolts);
     let hole = hardware::size(bolts.diameter).hole;
     let places = bolts.rows.iter().flat_map(|row| [-0.5, 0.5].map(|side| [side * bolts.gauge, row - plate.bottom]));
-    let welds = detail.welds.iter().flat_map(|welds| beam_seams(section, face, plate.thickness, welds));
+    let welds = detail.welds.iter().flat_map(|welds| beam_seams(section, face, plate, welds));
     Fitting {
         on: Owner::Beam(on),
         mark: mark.into(),
@@ -250,4 +250,171 @@ pub fn column_plate((on, column): (usize, &Column), mark: &str, out: DVec3, at: 
         grade: of.grade.clone(),
         seams: seams.into_iter().map(|seam| (seam, of.throat)).collect(),
     }
+}
+
+/// A fin plate with one column of bolts.
+#[derive(Clone, Debug)]
+pub struct Fin {
+    /// Thickness, grade, throat of its fillets.
+    pub plate: Plain,
+    /// Heights of its lower and upper edge above the beam's soffit.
+    pub edges: [f64; 2],
+    /// How far it reaches out.
+    pub width: f64,
+    /// Nominal diameter of the bolts.
+    pub diameter: f64,
+    /// Heights of the bolts above the beam's soffit, from the top down.
+    pub rows: Vec<f64>,
+    /// From the supporting member's face to the bolts.
+    pub out: f64,
+}
+
+/// Bolts 8.8 whose class stands in their names.
+fn bolts(path: String, level: f64, diameter: f64, grip: f64, frame: Frame, at: Vec<[f64; 2]>) -> Bolting {
+    Bolting {
+        path,
+        level,
+        diameter,
+        class: Some(("8.8".into(), ClassIn::Name)),
+        body: BoltBody::Shank,
+        grip,
+        length: None,
+        anchors: false,
+        frame,
+        at: at.into_iter().enumerate().map(|(index, place)| (format!("bolt {}", index + 1), place)).collect(),
+    }
+}
+
+/// A fin plate beside a beam's web, on the face of what carries the beam, and its bolts.
+pub fn fin_plate(on: Owner, mark: &str, (section, top): (&Section, f64), face: Face, fin: &Fin) -> (Fitting, Bolting) {
+    let Plain { thickness, grade, throat } = &fin.plate;
+    let (out, across) = (face.out, DVec3::Z.cross(face.out));
+    let outer = face.soffit + across * (section.t_w / 2.0 + thickness);
+    let [low, high] = fin.edges;
+    let hole = hardware::size(fin.diameter).hole;
+    let middle = outer - across * (thickness / 2.0);
+    let weld = seam(middle + DVec3::Z * low, middle + DVec3::Z * high, out, across, *thickness);
+    let plate = Fitting {
+        on,
+        mark: mark.into(),
+        name: "FIN PLATE",
+        frame: Frame { origin: outer, z: -across, x: out },
+        corners: rectangle([0.0, low], [fin.width, high]),
+        holes: fin.rows.iter().map(|row| ([fin.out, *row], hole)).collect(),
+        thickness: *thickness,
+        grade: grade.clone(),
+        seams: vec![(weld, *throat)],
+    };
+    // Along x up, along y towards the support.
+    let frame = Frame { origin: outer, z: -across, x: DVec3::Z };
+    let at = fin.rows.iter().map(|row| [*row, -fin.out]).collect();
+    (plate, bolts(format!("fin {mark}"), top, fin.diameter, thickness + section.t_w, frame, at))
+}
+
+/// Cover plates on both flanges and on both sides of the web of two beams in line along x.
+#[derive(Clone, Debug)]
+pub struct Covers {
+    /// Thickness and width of those on the flanges, thickness and height of those on the web.
+    pub sizes: [[f64; 2]; 2],
+    /// Grade as written.
+    pub grade: String,
+    /// Nominal diameter of the bolts.
+    pub diameter: f64,
+    /// From the middle of the splice to the flange's bolts.
+    pub along: Vec<f64>,
+    /// Between the two bolts of the flange across the beam.
+    pub gauge: f64,
+    /// From the middle of the splice to the web's bolts, and their heights above the soffit.
+    pub web: (f64, Vec<f64>),
+    /// Distance from the last bolts to the plates' ends.
+    pub end: f64,
+}
+
+/// The plates and bolts of a splice whose middle lies at the soffit.
+pub fn covers(mark: &str, section: &Section, middle: DVec3, of: &Covers) -> (Vec<Fitting>, Vec<Bolting>) {
+    let [[t, b], [t_web, high]] = of.sizes;
+    let hole = hardware::size(of.diameter).hole;
+    let top = middle.z + section.h;
+    let both = |at: &f64| [-*at, *at];
+    let on_flange: Vec<[f64; 2]> =
+        of.along.iter().flat_map(both).flat_map(|x| [-0.5, 0.5].map(|side| [x, side * of.gauge])).collect();
+    let on_web: Vec<[f64; 2]> =
+        both(&of.web.0).into_iter().flat_map(|x| of.web.1.iter().map(move |z| [x, *z])).collect();
+    let reach = of.along.iter().fold(0.0_f64, |a, b| a.max(*b)) + of.end;
+    let plate = |part: &str, frame, corners, holes: &[[f64; 2]], thickness| Fitting {
+        on: Owner::Loose,
+        mark: format!("{mark}-{part}"),
+        name: "COVER PLATE",
+        frame,
+        corners,
+        holes: holes.iter().map(|place| (*place, hole)).collect(),
+        thickness,
+        grade: of.grade.clone(),
+        seams: Vec::new(),
+    };
+    let flange = || rectangle([-reach, -b / 2.0], [reach, b / 2.0]);
+    let up = DVec3::Z;
+    let side = (of.web.1.iter().sum::<f64>()) / of.web.1.len() as f64;
+    let web = || {
+        let wide = of.web.0 + of.end;
+        rectangle([-wide, side - high / 2.0], [wide, side + high / 2.0])
+    };
+    // Seen from the south: x along the beams, y up, z towards the south.
+    let on_side = |y: f64| Frame { origin: middle + DVec3::Y * y, z: -DVec3::Y, x: DVec3::X };
+    let half = section.t_w / 2.0;
+    let plates = vec![
+        plate("T", Frame { origin: middle + up * section.h, z: up, x: DVec3::X }, flange(), &on_flange, t),
+        plate("B", Frame { origin: middle - up * t, z: up, x: DVec3::X }, flange(), &on_flange, t),
+        plate("N", on_side(half + t_web), web(), &on_web, t_web),
+        plate("S", on_side(-half), web(), &on_web, t_web),
+    ];
+    let frame = |origin, z| Frame { origin, z, x: DVec3::X };
+    let group = |part: &str, grip, frame, at: &[[f64; 2]]| {
+        bolts(format!("covers {mark}/{part}"), top, of.diameter, grip, frame, at.to_vec())
+    };
+    let grip = t + section.t_f;
+    let boltings = vec![
+        group("top", grip, frame(middle + up * (section.h + t), -up), &on_flange),
+        group("bottom", grip, frame(middle - up * t, up), &on_flange),
+        group("web", section.t_w + 2.0 * t_web, on_side(half + t_web), &on_web),
+    ];
+    (plates, boltings)
+}
+
+/// A base plate below a column whose depth runs along x, with a square of four anchors of class 8.8, and fillets at both
+/// flanges and at the web.
+pub fn base(
+    (on, column): (usize, &Column),
+    mark: &str,
+    of: &Plain,
+    size: f64,
+    (diameter, spacing, length): (f64, f64, f64),
+) -> (Fitting, Bolting) {
+    let Section { h, b, t_w, t_f, r, .. } = column.section;
+    let foot = DVec3::new(column.at[0], column.at[1], column.bottom);
+    let half = spacing / 2.0;
+    let places = [[-half, -half], [half, -half], [half, half], [-half, half]];
+    let at = |x: f64, y: f64| foot + DVec3::X * x + DVec3::Y * y;
+    let edge = (h - t_f) / 2.0;
+    let clear = h / 2.0 - t_f - r;
+    let seams = vec![
+        (seam(at(-edge, -b / 2.0), at(-edge, b / 2.0), DVec3::Z, DVec3::X, t_f), of.throat),
+        (seam(at(edge, -b / 2.0), at(edge, b / 2.0), DVec3::Z, DVec3::X, t_f), of.throat),
+        (seam(at(-clear, 0.0), at(clear, 0.0), DVec3::Z, DVec3::Y, t_w), of.throat),
+    ];
+    let plate = Fitting {
+        on: Owner::Column(on),
+        mark: mark.into(),
+        name: "BASE PLATE",
+        frame: Frame { origin: foot - DVec3::Z * of.thickness, z: DVec3::Z, x: DVec3::X },
+        corners: rectangle([-size / 2.0; 2], [size / 2.0; 2]),
+        holes: places.map(|place| (place, diameter + 4.0)).to_vec(),
+        thickness: of.thickness,
+        grade: of.grade.clone(),
+        seams,
+    };
+    let frame = Frame { origin: foot + DVec3::Z * 60.0, z: -DVec3::Z, x: DVec3::X };
+    let mut anchors = bolts(format!("base {mark}"), column.bottom, diameter, of.thickness, frame, places.to_vec());
+    (anchors.anchors, anchors.length) = (true, Some(length));
+    (plate, anchors)
 }

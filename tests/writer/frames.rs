@@ -23,6 +23,7 @@ pub fn frames(joints: usize, told: bool) -> Building {
         beams: Vec::with_capacity(beams),
         fittings: Vec::new(),
         boltings: Vec::new(),
+        notches: Vec::new(),
         plates: PlateAs::Plate,
     };
     for frame in 0..beams.div_ceil(BAYS * STOREYS) {

@@ -5,7 +5,7 @@ use std::io;
 
 use glam::{DVec3, dvec3};
 
-use super::building::{Beam, Building, Section};
+use super::building::{Beam, Building, Owner, Section};
 use super::entity::{Declared::*, Entity, Field, Link, Simple, Sink, links};
 use super::shapes::{axes, moved, placement};
 use super::{parts, space};
@@ -62,6 +62,9 @@ pub fn write(building: &Building, sink: &mut dyn Sink) -> io::Result<()> {
         building.columns.iter().filter_map(|column| model.known(&format!("column {}", column.mark))).collect();
     for index in 0..building.beams.len() {
         model.beam(index, &column_ids)?;
+    }
+    for part in model.fittings(Owner::Loose, 0.0)? {
+        model.contain(0.0, part);
     }
     for bolting in &building.boltings {
         model.bolting(bolting)?;

@@ -4,12 +4,14 @@ use std::io;
 
 use glam::DVec3;
 
-use super::building::{Beam, Building, Column, End, Fitting, Joint, Level, Owner, PlateAs, Section, Stiffener};
+use super::building::{Beam, Building, Column, End, Fitting, Joint, Level, Notch, Owner, PlateAs, Section, Stiffener};
 use super::entity::{Declared::*, Entity, Link, Simple, links};
 use super::fastening::Seam;
 use super::hardware;
 use super::model::{Model, Reference, level};
-use super::shapes::{Outline, extrusion, faceted, i_profile, outline, outline_with_holes, representation, shape};
+use super::shapes::{
+    Outline, extrusion, faceted, i_profile, moved, outline, outline_with_holes, representation, shape,
+};
 use super::space::{Face, Frame, depth_of, ends, face};
 
 /// A pair of stiffeners in a column: its middle level and what it is.
@@ -190,7 +192,7 @@ impl Model<'_> {
             .held_single("IsTypedBy", "RelatedObjects", of)
             .held("IsDefinedBy", "RelatedObjects", vec![common])
             .one("ObjectPlacement", Wider, self.placed(level(beam), frame))
-            .one("Representation", Wider, self.solid(vec![extrusion(profile, None, start.distance(end)).into()]));
+            .one("Representation", Wider, self.notched(index, extrusion(profile, None, start.distance(end))));
         self.of_profile(&beam.section, &beam.grade, this);
         self.put(entity)?;
         let mut pieces = vec![this];
@@ -226,8 +228,31 @@ impl Model<'_> {
         Ok(())
     }
 
+    /// A beam's body less its notches.
+    fn notched(&self, index: usize, whole: Entity) -> Entity {
+        let building = self.building;
+        let beam = &building.beams[index];
+        let [start, end] = ends(&building.columns, beam);
+        let Section { h, b, .. } = beam.section;
+        let mut body = whole;
+        let notches: Vec<&Notch> = building.notches.iter().filter(|notch| notch.beam == index).collect();
+        for notch in &notches {
+            // Ten millimetres beyond the beam on all free sides.
+            let (half, low) = (b / 2.0 + 10.0, h / 2.0 - notch.depth);
+            let corners = [[-half, low], [half, low], [half, h / 2.0 + 10.0], [-half, h / 2.0 + 10.0]];
+            let from = if notch.end == 0 { -10.0 } else { start.distance(end) - notch.length };
+            let cutter = extrusion(outline(&corners), Some(moved(DVec3::Z * from)), notch.length + 10.0);
+            body = Entity::new("IfcBooleanResult")
+                .token("Operator", "DIFFERENCE")
+                .one("FirstOperand", Select, body)
+                .one("SecondOperand", Select, cutter);
+        }
+        let kind = if notches.is_empty() { "SweptSolid" } else { "CSG" };
+        shape(representation(self.body, "Body", kind, vec![body.into()]))
+    }
+
     /// Writes the fittings of a member with their welds.
-    fn fittings(&mut self, on: Owner, level: f64) -> io::Result<Vec<Reference>> {
+    pub fn fittings(&mut self, on: Owner, level: f64) -> io::Result<Vec<Reference>> {
         let building = self.building;
         let mut parts = Vec::new();
         for fitting in building.fittings.iter().filter(|fitting| fitting.on == on) {
