@@ -4,8 +4,8 @@
 mod axial;
 mod butt_welds;
 pub mod column_bases;
-pub mod flexible;
 pub mod fin_plates;
+pub mod flexible;
 mod haunches;
 mod intended;
 pub mod joint;

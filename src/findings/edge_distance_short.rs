@@ -19,7 +19,7 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let (bolts, distances) = match (context.layout, simple) {
         (Some(layout), _) => (layout.bolts(), distances(layout, least)),
         (None, Some(SimpleLayout::FlexibleEndPlate(layout))) => (&layout.bolts, of_flexible(layout, least)),
-        (None, None) => return Vec::new(),
+        (None, None | Some(SimpleLayout::FinPlate(_) | SimpleLayout::ColumnBase(_))) => return Vec::new(),
     };
     let Ok(hole) = &bolts.hole else { return Vec::new() };
     let findings = distances.into_iter().filter_map(|(what, factor, all)| {

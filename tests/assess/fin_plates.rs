@@ -116,7 +116,8 @@ fn two_lines() -> Fin {
 #[test]
 fn the_two_lines_of_the_design_guide() {
     // Values as printed there; the example has f_u 430 by EN 1993-1-1 Table 3.1, and γ_Mu 1.10.
-    let steel = include_str!("../../rules/steel.toml").replace("table = \"EN 10025-2\"", "table = \"EN 1993-1-1:2005 Table 3.1\"");
+    let steel = include_str!("../../rules/steel.toml")
+        .replace("table = \"EN 10025-2\"", "table = \"EN 1993-1-1:2005 Table 3.1\"");
     let mut rulebook = Rulebook::with_overrides(&[("steel.toml", steel.as_str())]).unwrap();
     rulebook.annex.gamma_mu = Some(1.10);
     let layout = two_lines().layout(&rulebook);
@@ -167,7 +168,9 @@ fn what_is_missing_or_outside_the_method_is_never_proven() {
         ("before the plate yields", |l| l.weld = known(mm(4.0))),
         ("e_1 of the plate", |l| l.bottom = l.bolts.rows[2] - mm(20.0)),
         ("twisting", |l| l.beam.section = known(RULES.section("IPE 400").unwrap().clone())),
-        ("thin enough", |l| (l.thickness, l.bolts.diameter, l.bolts.hole) = (mm(12.0), known(mm(12.0)), known(mm(13.0)))),
+        ("thin enough", |l| {
+            (l.thickness, l.bolts.diameter, l.bolts.hole) = (mm(12.0), known(mm(12.0)), known(mm(13.0)))
+        }),
         ("root radius", |l| l.top = mm(290.0)),
         ("other side", |l| (l.on, l.opposite) = (On::ColumnWeb, true)),
     ];
@@ -177,7 +180,9 @@ fn what_is_missing_or_outside_the_method_is_never_proven() {
         let asked = case(10.0, None);
         let assessment = assessed(layout, &[&asked], &RULES);
         let said = assessment.gaps.iter().any(|gap| match gap {
-            Gap::NotChecked(m) | Gap::LowerBound(m) => format!("{} {}", m.what, m.reason).contains(word) || m.what == word,
+            Gap::NotChecked(m) | Gap::LowerBound(m) => {
+                format!("{} {}", m.what, m.reason).contains(word) || m.what == word
+            }
         });
         assert!(said || word == "fin plate grade" || word == "weld", "{word}: {:?}", assessment.gaps);
         assert_ne!(assessment.carries(), State::Met, "{word}");

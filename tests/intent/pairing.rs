@@ -28,7 +28,6 @@ fn member(guid: &str, mark: Option<&str>) -> Member {
         grade: Err(missing()),
         notches: Vec::new(),
         not_assessed: None,
-        notches: Vec::new(),
         disagreements: Vec::new(),
     }
 }
