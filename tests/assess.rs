@@ -3,6 +3,9 @@
 
 mod axial;
 mod butt_welds;
+pub mod column_bases;
+pub mod fin_plates;
+pub mod flexible;
 mod haunches;
 mod intended;
 pub mod joint;

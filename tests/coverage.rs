@@ -8,7 +8,7 @@ use faying::assess::{Component, Sense};
 use faying::rulebook::Rulebook;
 
 use crate::assess::joint::{PLAIN, Sketch, asked, case, resistance};
-use crate::assess::strengthened;
+use crate::assess::{column_bases, flexible, strengthened};
 
 const PAGE: &str = include_str!("../rules/coverage.md");
 
@@ -77,8 +77,9 @@ fn printed(components: &[Component], all: &mut Vec<String>) {
 
 /// The first clause or table named in a text: "EN 1993-1-5 9.1", "6.2.6.2", "Table 6.2".
 fn cited(text: &str) -> Option<(Option<&str>, String)> {
-    let standard =
-        ["EN 1993-1-1", "EN 1993-1-5", "EN 1993-1-8:2005", "EN 1993-1-8"].into_iter().find(|s| text.starts_with(s));
+    let standard = ["EN 1992-1-1", "EN 1993-1-1", "EN 1993-1-5", "EN 1993-1-8:2005", "EN 1993-1-8"]
+        .into_iter()
+        .find(|s| text.starts_with(s));
     let rest = text.trim_start_matches(standard.unwrap_or("")).trim_start();
     let words = ["Tables ", "Table ", "Figure "];
     let (word, tail) = words.into_iter().find_map(|word| Some((word, rest.strip_prefix(word)?))).unwrap_or(("", rest));
@@ -101,6 +102,18 @@ fn every_clause_that_a_calculation_prints_stands_there() {
         // A shear above half of the beam's own.
         let sheared = asked(&layout, &case(Some(1.0), Some(700.0), Some(0.0)), Opposite::None, &rulebook);
         printed(&sheared.cases[0].moment.as_ref().unwrap().components, &mut all);
+    }
+    for n in [-300.0, 300.0] {
+        let based = column_bases::asked(&column_bases::base(), [Some(n), Some(80.0), Some(50.0)]);
+        printed(&based.beside.iter().map(|(component, _)| component.clone()).collect::<Vec<_>>(), &mut all);
+        printed(&based.shear.as_ref().unwrap().components, &mut all);
+    }
+    let cut = Some((90.0, 50.0));
+    let notched = flexible::Plain { top: cut, gauge: 180.0, shared: true, ..flexible::PLAIN };
+    for detail in [notched, flexible::Plain { top: cut, bottom: cut, ..flexible::PLAIN }] {
+        let simple = detail.assessed(&flexible::RULES);
+        printed(&simple.tying, &mut all);
+        printed(&simple.shear.unwrap().components, &mut all);
     }
     all.sort();
     all.dedup();

@@ -2,6 +2,7 @@
 
 mod action_not_stated;
 mod axial_force_beyond_limit;
+mod axial_short;
 mod backing_plate_missing;
 mod bench;
 mod bolt_class_higher;

@@ -1,5 +1,6 @@
 //! The schedule: how it is read, what is said about its faults, and which joint each line means.
 
+mod bases;
 mod details;
 mod faults;
 mod laws;

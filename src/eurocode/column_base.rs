@@ -54,14 +54,12 @@ pub struct Foot {
 /// The T-stubs in compression below a column.
 #[derive(Clone, Debug)]
 pub struct Stubs {
-    /// F_c,pl,Rd below one flange.
-    pub flange: Force,
+    /// F_c,pl,Rd below one flange, even about the flange's middle, 6.2.6.9.
+    pub flange: Resistance,
     /// N_j,Rd: below both flanges and the web, 6.2.8.2.
-    pub all: Force,
-    /// z_C: from the column's axis to the middle of the T-stub below a flange, no further than the flange's own middle.
+    pub all: Resistance,
+    /// z_C: from the column's axis to the flange's middle.
     pub z_C: Length,
-    /// How they were computed.
-    pub working: Working,
 }
 
 /// The T-stubs below flanges and web, 6.2.5 and 6.2.8.2: they do not overlap and end with the plate.
@@ -73,13 +71,16 @@ pub fn compression(foot: &Foot, gamma_M0: f64) -> Stubs {
     step!(w, "6.2.5, to the plate's edge at most", c_out = c.min(beyond_h));
     step!(w, "6.2.8.2, to the web's middle at most", c_in = c.min(0.5 * (h - 2.0 * t_f)));
     step!(w, "6.2.5, to the plate's edge at most", c_side = c.min(beyond_b));
-    step!(w, "6.2.5, (6.4)", F_c_pl_Rd = f_jd * ((c_out + t_f + c_in) * (b + 2.0 * c_side)));
+    step!(w, "6.2.5, (6.4)", F_flange = f_jd * ((c_out + t_f + c_in) * (b + 2.0 * c_side)));
     step!(w, "6.2.8.2, between the flanges' own", l_web = h - 2.0 * (t_f + c_in));
     step!(w, "6.2.5, to the plate's edge at most", b_web = (t_w + 2.0 * c).min(b + 2.0 * c_side));
     step!(w, "6.2.5, (6.4)", F_web = f_jd * (l_web * b_web));
-    step!(w, "6.2.8.2", N_j_Rd = 2.0 * F_c_pl_Rd + F_web);
-    step!(w, "6.2.8.1", z_C = 0.5 * (h - t_f) + 0.5 * (c_out - c_in).min(Length::ZERO));
-    Stubs { flange: F_c_pl_Rd, all: N_j_Rd, z_C, working: w }
+    step!(w, "6.2.8.2", N_j_Rd = 2.0 * F_flange + F_web);
+    let all = w.clone();
+    // A T-stub that is even about the flange's middle keeps its force there.
+    step!(w, "6.2.6.9, even about the flange", F_c_pl_Rd = f_jd * ((t_f + 2.0 * c_out.min(c_in)) * (b + 2.0 * c_side)));
+    step!(w, "6.2.8.1", z_C = 0.5 * (h - t_f));
+    Stubs { flange: Resistance { value: F_c_pl_Rd, working: w }, all: Resistance { value: N_j_Rd, working: all }, z_C }
 }
 
 /// What a base's two sides carry of N_Ed (positive in tension) and M_Ed (by magnitude): F_C,Ed of the side that is compressed
@@ -87,8 +88,8 @@ pub fn compression(foot: &Foot, gamma_M0: f64) -> Stubs {
 /// a side is in tension and has no `z_T`.
 pub fn sides(M_Ed: Moment, N_Ed: Force, z_C: Length, z_T: Option<Length>) -> Option<((Force, Force), Working)> {
     let mut w = Working::default();
+    given!(w, "about the column's axis, N in tension"; M_Ed, N_Ed, z_C);
     step!(w, "compression of the column", N_c_Ed = -N_Ed);
-    given!(w, "about the column's axis"; M_Ed, z_C);
     if M_Ed <= N_c_Ed * z_C {
         step!(w, "6.2.8.3, Table 6.7, both sides in compression", F_C_Ed = 0.5 * N_c_Ed + M_Ed / (2.0 * z_C));
         return Some(((F_C_Ed, Force::ZERO), w));

@@ -24,9 +24,10 @@ pub(super) fn check(entities: &Entities, problems: &mut Problems) {
         check_values(entities, bound(part)..end, &mut problems);
         problems
     };
-    let values: Vec<Problems> = (0..parts).into_par_iter().map(part).collect();
-    values.into_iter().for_each(|more| problems.absorb(more));
-    check_global_ids(entities, problems);
+    let mut ids = some();
+    let values = || (0..parts).into_par_iter().map(part).collect();
+    let (values, ()): (Vec<Problems>, ()) = rayon::join(values, || check_global_ids(entities, &mut ids));
+    values.into_iter().chain([ids]).for_each(|more| problems.absorb(more));
 }
 
 fn check_values(entities: &Entities, ids: Range<u32>, problems: &mut Problems) {

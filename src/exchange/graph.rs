@@ -168,7 +168,7 @@ impl Entities {
     }
 
     /// Replaces waiting references by their targets; whether some have none, which are left as they are.
-    pub(super) fn settle(&mut self, target: impl Fn(Id) -> Option<Id>) -> bool {
+    pub(super) fn settle(&mut self, target: impl Fn(Id) -> Option<Id> + Sync) -> bool {
         let mut is_missing = self.store.settle(&target);
         for (_, value) in self.extras.values_mut().flatten() {
             is_missing |= !value.settle(&target);

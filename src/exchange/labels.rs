@@ -16,6 +16,25 @@ pub(super) struct Labels {
 }
 
 impl Labels {
+    /// None yet, to be taken over by these later.
+    pub fn further_on(&self) -> Self {
+        Self { ids: HashTable::new(), hasher: self.hasher.clone() }
+    }
+
+    /// Takes over the labels of a later part of the file, made by [`Labels::further_on`], whose entities will follow
+    /// those that there are; whether none of its labels was known.
+    pub fn absorb(&mut self, entities: &Entities, later: Self, others: &Entities) -> bool {
+        let before = entities.len() as u32;
+        self.ids.reserve(later.ids.len(), |(hash, _)| spread(*hash));
+        later.ids.into_iter().all(|(hash, id)| {
+            let label = others.label(id);
+            let same = |(of, id): &(u32, Id)| *of == hash && id.0 < before && entities.label(*id) == label;
+            let is_new = self.ids.find(spread(hash), same).is_none();
+            self.ids.insert_unique(spread(hash), (hash, Id(before + id.0)), |(hash, _)| spread(*hash));
+            is_new
+        })
+    }
+
     /// The first entity of that label.
     pub fn find(&self, label: &str, entities: &Entities) -> Option<Id> {
         let hash = self.hash(label);

@@ -2,10 +2,15 @@
 
 use std::collections::HashMap;
 
+use rayon::prelude::*;
+
 use super::Id;
 use super::cell::{Case, Cell};
 use super::schema::{Schema, TypeId};
 use super::value::{Inner, List, Value, View};
+
+/// So many cells are settled by one thread in a go.
+const GO: usize = 1 << 15;
 
 /// Where the values of another store are that was taken over.
 pub(super) struct Moved {
@@ -199,12 +204,9 @@ impl Store {
     }
 
     /// Replaces waiting references by their targets; whether some have none, which are left as they are.
-    pub fn settle(&mut self, target: impl Fn(Id) -> Option<Id>) -> bool {
-        let mut all = true;
-        for cell in &mut self.cells {
-            all &= cell.settle(&target);
-        }
-        !all
+    pub fn settle(&mut self, target: impl Fn(Id) -> Option<Id> + Sync) -> bool {
+        let settle = |cells: &mut [Cell]| cells.iter_mut().fold(false, |missing, cell| missing | !cell.settle(&target));
+        self.cells.par_chunks_mut(GO).map(settle).reduce(|| false, |a, b| a | b)
     }
 
     /// Makes the references absent that still wait, or takes them out of the list they stand in.

@@ -3,7 +3,7 @@
 use super::compare::less;
 use super::say::mm;
 use super::{Context, Rule};
-use crate::joints::{Layout, PlateSide};
+use crate::joints::{FlexibleEndPlate, HeldBy, Layout, PlateSide, SimpleLayout};
 use crate::review::{Finding, Outcome};
 use crate::rulebook::Distances;
 use crate::units::Length;
@@ -14,9 +14,15 @@ pub(super) const RULE: Rule = Rule { id: ID, look, page: include_str!("../../rul
 /// Needs no intention and no required action: below these distances the formulas of the standard do not hold. Of each
 /// sort the shortest is told.
 fn look(context: &Context<'_>) -> Vec<Finding> {
-    let Some(layout) = context.layout else { return Vec::new() };
-    let Ok(hole) = &layout.bolts().hole else { return Vec::new() };
-    let findings = distances(layout, &context.rulebook.distances).into_iter().filter_map(|(what, factor, all)| {
+    let least = &context.rulebook.distances;
+    let simple = context.joint.and_then(|joint| joint.layout.as_ref().ok()?.simple());
+    let (bolts, distances) = match (context.layout, simple) {
+        (Some(layout), _) => (layout.bolts(), distances(layout, least)),
+        (None, Some(SimpleLayout::FlexibleEndPlate(layout))) => (&layout.bolts, of_flexible(layout, least)),
+        (None, None | Some(SimpleLayout::FinPlate(_) | SimpleLayout::ColumnBase(_))) => return Vec::new(),
+    };
+    let Ok(hole) = &bolts.hole else { return Vec::new() };
+    let findings = distances.into_iter().filter_map(|(what, factor, all)| {
         let shortest = all.into_iter().reduce(Length::min)?;
         let least = factor * hole.value;
         if !less(shortest, least, context.rulebook.tolerances.size) {
@@ -54,6 +60,36 @@ fn distances(layout: &Layout, least: &Distances) -> Vec<(&'static str, f64, Vec<
         ("the end distance e1 of the bolts in the column", least.end, column_ends),
         ("the edge distance e2 of the bolts in the end plate", least.edge, plates),
         ("the edge distance e2 of the bolts in the column flange", least.edge, flange),
+        ("the spacing p1 of the bolt rows", least.pitch, pitches.collect()),
+        ("the gauge p2 of the bolts", least.gauge, rows.iter().map(|row| row.gauge).collect()),
+    ]
+}
+
+/// The same of a flexible end plate and what it is bolted to.
+fn of_flexible(layout: &FlexibleEndPlate, least: &Distances) -> Vec<(&'static str, f64, Vec<Length>)> {
+    let rows = &layout.bolts.rows;
+    let ends = [
+        rows.first().map(|row| layout.plate.top - row.height),
+        rows.last().map(|row| row.height - layout.plate.bottom),
+    ];
+    let behind: Vec<Length> = rows.iter().map(|row| row.edge_column).collect();
+    let column_ends = vec![layout.above, layout.below];
+    // The flanges close a column's web across, and a beam's web up and down.
+    let (end, edge) = match layout.held {
+        HeldBy::ColumnFlange => (column_ends, behind),
+        HeldBy::ColumnWeb => (column_ends, Vec::new()),
+        HeldBy::BeamWeb => (Vec::new(), behind),
+    };
+    let pitches = rows.windows(2).filter_map(|pair| Some(pair.first()?.height - pair.last()?.height));
+    vec![
+        ("the end distance e1 of the bolts in the end plate", least.end, ends.into_iter().flatten().collect()),
+        ("the end distance e1 of the bolts in the column", least.end, end),
+        (
+            "the edge distance e2 of the bolts in the end plate",
+            least.edge,
+            rows.iter().map(|row| row.edge_plate).collect(),
+        ),
+        ("the edge distance e2 of the bolts in the support", least.edge, edge),
         ("the spacing p1 of the bolt rows", least.pitch, pitches.collect()),
         ("the gauge p2 of the bolts", least.gauge, rows.iter().map(|row| row.gauge).collect()),
     ]

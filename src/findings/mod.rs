@@ -2,6 +2,7 @@
 
 mod action_not_stated;
 mod axial_force_beyond_limit;
+mod axial_short;
 mod backing_plate_missing;
 mod bolt_class_higher;
 mod bolt_class_lower;
@@ -79,6 +80,7 @@ pub const RULES: &[Rule] = &[
     moment_short::RULE,
     weld_short::RULE,
     shear_short::RULE,
+    axial_short::RULE,
     tying_short::RULE,
     joint_handed_wrong::RULE,
     edge_distance_short::RULE,

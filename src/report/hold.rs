@@ -149,6 +149,9 @@ pub(super) fn resistance(resistance: &Resistance) -> String {
         Some(_) => format!(", N {}", action(resistance.axial_kn, "kN", "")),
         None => String::new(),
     };
+    if resistance.moment_knm.is_none() && resistance.shear_kn.is_none() && resistance.axial_kn.is_some() {
+        return axial.trim_start_matches(", ").to_owned();
+    }
     format!("{}{axial}", carried(resistance.moment_knm, reversed, resistance.shear_kn))
 }
 

@@ -3,6 +3,8 @@
 use std::collections::HashMap;
 use std::sync::atomic::{AtomicUsize, Ordering};
 
+use foldhash::fast::RandomState;
+
 use crate::exchange::{Entities, Entity, Id, View};
 
 /// Solids that are read of any exchange, and of each entity besides: more is an attack by maps of maps.
@@ -79,7 +81,7 @@ impl Links {
         let mut all = Self::default();
         all.refill(entities);
         // By the address of the class's name: an exchange holds few classes, and very many entities of each.
-        let mut roles: HashMap<*const u8, Role> = HashMap::new();
+        let mut roles: HashMap<*const u8, Role, RandomState> = HashMap::default();
         for entity in entities.all() {
             let role = *roles.entry(entity.class().as_ptr()).or_insert_with(|| {
                 ROLES.iter().find(|(class, _)| entity.is_a(class)).map_or(Role::None, |(_, role)| *role)

@@ -1,6 +1,8 @@
+use faying::joints::{Laid, SimpleLayout};
 use faying::units::mm;
 
 use super::bench::{Bench, check, known, missing, rows};
+use crate::assess::flexible;
 
 const ID: &str = "edge-distance-short";
 
@@ -75,4 +77,15 @@ fn enough_is_enough_and_larger_holes_need_more() {
     assert_eq!(found(31.2, 30.0), 1);
     assert_eq!(found(f64::NAN, 26.0), 1, "what is no number is not enough");
     check(ID, |b| (b.layout().plate.top, b.layout().bolts.hole) = (mm(590.0), Err(missing("hole"))), &[]);
+}
+
+/// Own arithmetic on a hole of 22: the plate of a flexible joint, whose sides are 26.4 away at least.
+#[test]
+fn of_a_flexible_end_plate() {
+    let mut layout = flexible::PLAIN.layout(&flexible::RULES);
+    layout.bolts.rows.iter_mut().for_each(|row| row.edge_plate = mm(20.0));
+    let mut bench = Bench::good();
+    bench.joint().layout = Ok(Laid::Simple(SimpleLayout::FlexibleEndPlate(Box::new(layout))));
+    let [line] = &bench.lines(ID)[..] else { panic!("{:?}", bench.lines(ID)) };
+    assert!(line.starts_with("hold | the edge distance e2 of the bolts in the end plate is 20 mm"), "{line}");
 }

@@ -286,3 +286,44 @@ fn a_ring_is_a_plate_and_a_short_pipe_is_none() {
     let steelwork = part("F1", &extruded(&ring, 100.0, "0 0 1"));
     assert_eq!((steelwork.plates.len(), member(&steelwork).shape), (0, Shape::Hollow));
 }
+
+/// UKB 457x191x67 6 m along z, its depth along y, less a block from `at` with these sizes.
+fn notched(at: &str, (x, y, z): (f64, f64, f64)) -> Member {
+    let sizes =
+        r#"OverallWidth="189.9" OverallDepth="453.4" WebThickness="8.5" FlangeThickness="12.7" FilletRadius="10.2""#;
+    let whole = extruded(&profile("IfcIShapeProfileDef", sizes, ""), 6000.0, "0 0 1");
+    member(&part("UKB 457x191x67", &boolean("difference", &whole, &block(at, x, y, z)))).clone()
+}
+
+/// Own arithmetic on half the depth, 226.7.
+#[test]
+fn a_notch_takes_one_flange_at_one_end() {
+    for (at, size, end, positive, length, depth) in [
+        ("-100 176.7 -10", (200.0, 60.0, 110.0), false, true, 100.0, 50.0),
+        ("-94.95 -226.7 5880", (189.9, 40.0, 120.0), true, false, 120.0, 40.0),
+    ] {
+        let member = notched(at, size);
+        let [notch] = &member.notches[..] else { panic!("{:?} {:?}", member.notches, member.disagreements) };
+        assert_eq!((notch.at_end, notch.positive), (end, positive));
+        close(notch.length, length, 1e-6);
+        close(notch.depth, depth, 1e-6);
+        assert!(member.disagreements.is_empty() && notch.untaken.contains("cut by"));
+    }
+}
+
+#[test]
+fn what_is_no_notch_is_told() {
+    for (at, size) in [
+        // One half of the flange only; between the ends; all of the end; half of the member.
+        ("0 176.7 -10", (200.0, 60.0, 110.0)),
+        ("-100 176.7 3000", (200.0, 60.0, 110.0)),
+        ("-100 -300 -10", (200.0, 600.0, 110.0)),
+        ("-100 176.7 -10", (200.0, 60.0, 3200.0)),
+        // Inside the web.
+        ("-100 -50 -10", (200.0, 100.0, 110.0)),
+    ] {
+        let member = notched(at, size);
+        assert!(member.notches.is_empty(), "{at}");
+        assert!(member.disagreements.iter().any(|told| told.contains("cut by")), "{at}");
+    }
+}

@@ -115,9 +115,9 @@ struct Foot<'a> {
 impl Foot<'_> {
     /// The T-stubs below all of the column.
     fn concrete(&self) -> Option<Component> {
-        let stubs = &self.n.concrete.as_ref()?.stubs;
+        let all = &self.n.concrete.as_ref()?.all;
         let clause = "EN 1993-1-8:2005 6.2.8.2";
-        Some(part("concrete-in-compression", "concrete below the base plate", clause, stubs.all, stubs.working.clone()))
+        Some(part("concrete-in-compression", "concrete below the base plate", clause, all.value, all.working.clone()))
     }
 
     /// N_j,Rd in compression; `None` where the concrete or the column's class leaves it open.
@@ -210,8 +210,7 @@ impl Foot<'_> {
             return (open("the concrete below the base plate is not known"), 2);
         };
         let z_T = self.n.tension.as_ref().map(|(_, z_T)| *z_T);
-        let Some(((F_C_Ed, F_T_Ed), w)) = column_base::sides(m, n, concrete.stubs.z_C, z_T.as_ref().ok().copied())
-        else {
+        let Some(((F_C_Ed, F_T_Ed), w)) = column_base::sides(m, n, concrete.z_C, z_T.as_ref().ok().copied()) else {
             return (open(z_T.as_ref().err().map_or("the anchors are not assessed in tension", |why| why.as_str())), 2);
         };
         let flange = match flange_in_compression(self.n, v, self.rulebook) {
@@ -225,8 +224,8 @@ impl Foot<'_> {
             Component { working: working.into(), ..component.clone() }
         };
         let clause = "EN 1993-1-8:2005 6.2.6.9";
-        let below = concrete.stubs.working.clone();
-        let below = part("concrete-below-flange", "concrete below the flange", clause, concrete.stubs.flange, below);
+        let stub = concrete.flange.clone();
+        let below = part("concrete-below-flange", "concrete below the flange", clause, stub.value, stub.working);
         let mut parts = vec![(with(&below), F_C_Ed), (flange, F_C_Ed)];
         if let (true, Ok((anchors, _))) = (F_T_Ed > Force::ZERO, &self.n.tension) {
             parts.extend(anchors.iter().map(|component| (with(component), F_T_Ed)));

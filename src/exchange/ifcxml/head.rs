@@ -155,8 +155,8 @@ fn local<'x>(document: Source<'x>, name: &'x [u8], spot: Spot, problems: &mut Pr
 
 /// The text of a piece of XML that needs no decoding; `None` where it may need some.
 pub(super) fn plain<'b, 'x: 'b>(document: Source<'x>, raw: &'b [u8]) -> Option<&'b str> {
-    // EF starts the replacement character
-    if raw.iter().any(|b| matches!(b, b'&' | 0xEF)) { None } else { document.text(raw) }
+    // EF starts the replacement character; looking at all bytes is quicker than stopping at the first
+    if raw.iter().fold(false, |any, b| any | (*b == b'&') | (*b == 0xEF)) { None } else { document.text(raw) }
 }
 
 /// The text of a piece of XML: decoded, escapes resolved.

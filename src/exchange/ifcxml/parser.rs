@@ -91,6 +91,7 @@ impl<'x> Parser<'x> {
     /// One for a later part of the document, which starts where this one stands among elements that hold entities.
     pub fn further_on(&self) -> Self {
         let mut part = Self::new(self.document, self.entities.file(), self.problems.without_any(), self.limits);
+        part.labels = self.labels.further_on();
         part.start_document(self.schema);
         part.stack.clear();
         part.stack.extend(self.stack.iter().map(|frame| match frame {
@@ -115,12 +116,10 @@ impl<'x> Parser<'x> {
         }
         let (ids, waiting) = (self.entities.len() as u32, self.waiting.len() as u32);
         let moved = |id: Id| Id(id.0 + if id.0 < WAITING { ids } else { waiting });
-        self.entities.absorb(part.entities, moved);
-        for id in (ids..self.entities.len() as u32).map(Id).filter(|id| !self.entities.label(*id).is_empty()) {
-            if self.labels.enter(id, &self.entities) != id {
-                return Err(Unusual);
-            }
+        if !self.labels.absorb(&self.entities, part.labels, &part.entities) {
+            return Err(Unusual);
         }
+        self.entities.absorb(part.entities, moved);
         self.waiting.extend(part.waiting);
         self.links.extend(part.links.into_iter().map(|link| Link {
             relation: moved(link.relation),

@@ -2,6 +2,8 @@
 
 use std::collections::HashSet;
 
+use rayon::prelude::*;
+
 use super::super::cell::Cell;
 use super::super::waiting::WAITING;
 use super::super::{Exchange, Id, conform};
@@ -9,7 +11,7 @@ use super::parser::{Link, Parser};
 
 pub(super) fn resolve(mut parser: Parser, form: String) -> Exchange {
     let targets: Vec<Option<Id>> =
-        parser.waiting.iter().map(|w| parser.labels.find(&w.label, &parser.entities)).collect();
+        parser.waiting.par_iter().map(|w| parser.labels.find(&w.label, &parser.entities)).collect();
     for (waiting, _) in parser.waiting.iter().zip(&targets).filter(|(_, target)| target.is_none()) {
         let label = &waiting.label;
         parser

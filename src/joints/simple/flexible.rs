@@ -8,7 +8,7 @@ use super::super::end_plate::{UPRIGHT, is_rectangular, member_at, plate_at};
 use super::super::frame::{Frame, are_parallel};
 use super::super::scene::Scene;
 use super::super::touch::{EndOn, Pass};
-use super::super::welds;
+use super::super::welds::{self, Role};
 use super::super::{Bolts, EndPlate, MemberAt};
 use crate::origin::{Ask, Known, Missing};
 use crate::shop::Member;
@@ -119,6 +119,12 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FlexibleEndPla
         }
     }
     let frame = Frame::new(&scene.steel.members[beam], &end, body).ok_or("the beam's end has no direction")?;
+    let roles = welds::at_plate(scene, &frame, beam, plate);
+    if roles.iter().any(|(_, role)| matches!(role, Role::FlangeTop | Role::FlangeBottom)) {
+        return Err(
+            "the end plate is welded to one of the beam's flanges, and so not flexible: not assessed yet".into()
+        );
+    }
     let held = held(scene, draft, at, supporting, &frame)?;
     placed(scene, &end, &frame, at, plate, held)?;
     let outline = frame.outline(body);
@@ -171,7 +177,6 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft) -> Result<FlexibleEndPla
         shared,
     };
     let run = layout.beside_web(mm(scene.steel.members[beam].extents.y), t_f, r);
-    let roles = welds::at_plate(scene, &frame, beam, plate);
     layout.weld = welds::throat_over(scene, &frame, beam, &roles, run.get());
     Ok(layout)
 }

@@ -19,7 +19,7 @@ pub(super) struct Numbers {
     /// N_c,Rd of the column; `None` for class 4.
     pub(super) squash: Option<Component>,
     /// Below the plate; `None` where the concrete is not known.
-    pub(super) concrete: Option<Concrete>,
+    pub(super) concrete: Option<Stubs>,
     /// One side's anchors in tension with what holds them, and z_T; or why they are not assessed.
     pub(super) tension: Result<(Vec<Component>, Length), String>,
     /// One anchor in shear; or why none is credited.
@@ -37,11 +37,6 @@ pub(super) struct Numbers {
     pub(super) of_anchors: Noted,
     /// The same of the flanges' welds, which matter where a flange is in tension.
     pub(super) of_flange: Noted,
-}
-
-/// T-stubs in compression.
-pub(super) struct Concrete {
-    pub(super) stubs: Stubs,
 }
 
 /// A component without an action of its own yet.
@@ -79,7 +74,7 @@ impl Numbers {
         let (section, strength, r) = column?;
         let (plate, f_y) = (plate?, strength.f_y_flange);
 
-        let concrete = f_jd.map(|(f_jd, mut w)| {
+        let concrete = f_jd.map(|(f_jd, w)| {
             let foot = Foot {
                 h: section.h,
                 b: section.b,
@@ -92,9 +87,12 @@ impl Numbers {
                 f_jd,
             };
             let mut stubs = column_base::compression(&foot, rulebook.annex.gamma_m0);
-            w.absorb(stubs.working);
-            stubs.working = w;
-            Concrete { stubs }
+            for stub in [&mut stubs.all, &mut stubs.flange] {
+                let mut working = w.clone();
+                working.absorb(std::mem::take(&mut stub.working));
+                stub.working = working;
+            }
+            stubs
         });
         let epsilon = epsilon(f_y);
         let flange = 0.5 * (section.b - section.t_w - 2.0 * r) / section.t_f;
@@ -291,8 +289,8 @@ fn anchors_in_tension(
     let a_fillet = a_flange.unwrap_or(Length::ZERO);
     let h = section.h;
     given!(w, "anchors beyond the flange"; furthest, gauge, half_depth, half_width, b_p, h, a_fillet);
-    step!(w, "Figure 6.10", m_x = furthest - 0.5 * h - 0.8 * 2.0_f64.sqrt() * a_fillet);
-    step!(w, "Figure 6.10", e_x = half_depth - furthest);
+    step!(w, "6.2.6.5, Figure 6.10", m_x = furthest - 0.5 * h - 0.8 * 2.0_f64.sqrt() * a_fillet);
+    step!(w, "6.2.6.5, Figure 6.10", e_x = half_depth - furthest);
     step!(w, "Table 6.6", e = half_width - 0.5 * gauge);
     if !(m_x > Length::ZERO && e_x > Length::ZERO && e > Length::ZERO) {
         return Err("the anchors lie in the weld or at the plate's edge".into());
