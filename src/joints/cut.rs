@@ -36,13 +36,14 @@ pub(super) fn cut(scene: &Scene) -> Vec<Cluster> {
     clusters
 }
 
-/// Member ends on a plate that make it an end plate, the likeliest first: the end sits on it, or weld or piece say so.
+/// Member ends on a plate that make it an end plate, the likeliest first: the end sits on it, or weld or piece say so. One
+/// that is not half as long as another of them is its haunch.
 pub(super) fn ends_on(scene: &Scene, plate: usize) -> Vec<EndOn> {
     let touch = scene.tolerances().touch.get();
     let mut ends: Vec<(bool, EndOn)> = scene.touches.ends[plate]
         .iter()
         .map(|end| (scene.are_one_piece(Part::Plate(plate), Part::Member(end.member)), *end))
-        .filter(|(joined, end)| *joined || end.gap.abs() <= touch)
+        .filter(|(joined, end)| *joined || end.gap.abs() <= touch || (end.gap + end.mitre).abs() <= touch)
         .collect();
     ends.sort_by(|(a_joined, a), (b_joined, b)| {
         b_joined
@@ -50,6 +51,13 @@ pub(super) fn ends_on(scene: &Scene, plate: usize) -> Vec<EndOn> {
             .then(a.gap.abs().total_cmp(&b.gap.abs()))
             .then_with(|| scene.label(Part::Member(a.member)).cmp(&scene.label(Part::Member(b.member))))
     });
+    let length = |end: &EndOn| {
+        let member = &scene.steel.members[end.member];
+        member.start.distance(member.end)
+    };
+    let joined = ends.iter().any(|(joined, _)| *joined);
+    let longest = ends.iter().filter(|(own, _)| *own == joined).map(|(_, end)| length(end)).fold(0.0, f64::max);
+    ends.sort_by_key(|(own, end)| (*own != joined, 2.0 * length(end) < longest));
     ends.into_iter().map(|(_, end)| end).collect()
 }
 

@@ -60,7 +60,7 @@ pub(super) fn lay_out(scene: &Scene, draft: &mut Draft, case: &Case) {
     let listed: Vec<usize> = draft.joint.plates.iter().map(|(plate, _)| *plate).collect();
     draft.joint.plates.extend(on_column.others.iter().filter(|p| !listed.contains(p)).map(|plate| (*plate, "plate")));
     draft.joint.layout = assessable(scene, case, &outline, &bolted)
-        .and_then(|()| haunch::find(scene, &case.frame, case.plate, case.end.member, &bolted))
+        .and_then(|()| haunch::find(scene, &case.frame, case.plate, case.end.member, &bolted, case.others))
         .and_then(|haunch| {
             every_bolt_passes_flange(scene, draft, case)?;
             let below = haunch.map(|found| take(draft, found));
@@ -100,9 +100,6 @@ fn assessable(scene: &Scene, case: &Case, outline: &[DVec2], bolted: &[usize]) -
     }
     if !(case.end.gap >= -touch) {
         return Err(format!("the beam runs {:.1} mm into the end plate: not assessed", -case.end.gap));
-    }
-    if !case.others.is_empty() {
-        return Err("another member ends on the same end plate (a haunch?): not assessed yet".into());
     }
     let eccentric = (case.frame.origin - column.start).dot(column.across).abs();
     if !(eccentric <= position) {

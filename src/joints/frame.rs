@@ -15,6 +15,10 @@ pub(super) struct Frame {
     pub(super) out: DVec3,
     /// Across.
     pub(super) side: DVec3,
+    /// Cosine of the angle between the member's axis and the plate's normal in the web's plane.
+    pub(super) cos: f64,
+    /// What the member's axis rises along the plate on 1 mm away from it.
+    pub(super) rise: f64,
 }
 
 /// Smallest and largest of something along one direction.
@@ -53,8 +57,22 @@ impl Frame {
         let out = (plate.normal * plate.normal.dot(inward).signum()).try_normalize()?;
         let up = (member.depth - out * member.depth.dot(out)).try_normalize()?;
         let up = if up.z < 0.0 { -up } else { up };
-        let origin = point - out * end.gap - up * (member.extents.y / 2.0);
-        Some(Self { origin, up, out, side: up.cross(out) })
+        let cos = member.depth.dot(up).abs();
+        let rise = inward.dot(up) / inward.dot(out);
+        let on_plate = point - inward * (end.gap / inward.dot(out));
+        let origin = on_plate - up * (member.extents.y / 2.0 / cos);
+        let frame = Self { origin, up, out, side: up.cross(out), cos, rise };
+        (origin.is_finite() && rise.is_finite()).then_some(frame)
+    }
+
+    /// A size square to the member's axis, measured along the plate.
+    pub(super) fn along_plate(&self, size: f64) -> f64 {
+        size / self.cos
+    }
+
+    /// The angle of the member's axis to the plate's normal in the web's plane, degrees, positive where it rises from the plate.
+    pub(super) fn slope(&self) -> f64 {
+        self.rise.atan().to_degrees()
     }
 
     pub(super) fn height(&self, point: DVec3) -> f64 {

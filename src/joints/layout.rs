@@ -130,10 +130,11 @@ pub struct Stiffener {
     pub weld: Known<Length>,
 }
 
-/// A haunch below the beam: a web plate and an inclined flange plate between the beam's lower flange and the end plate.
+/// A haunch below the beam: a web and an inclined flange between the beam's lower flange and the end plate, of two plates or
+/// cut from a rolled section.
 #[derive(Clone, Debug)]
 pub struct Haunch {
-    /// GlobalIds of its plates.
+    /// GlobalIds of its plates, or of the member that it is cut from.
     pub guids: Vec<String>,
     /// From the beam's soffit down to the underside of its flange at the end plate.
     pub depth: Length,

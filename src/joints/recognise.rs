@@ -161,7 +161,20 @@ fn end_plate(scene: &Scene, plate: usize, bolts: Vec<usize>) -> Option<Draft> {
     welds::say_where_names_disagree(scene, &welds, &mut draft.joint.disagreements);
     say_how_joined(scene, plate, &end, &welds, &mut draft.joint.disagreements);
     if let (Kind::EndPlateMoment, Some(frame), Some((column, ply))) = (kind, frame, flange) {
-        end_plate::lay_out(scene, &mut draft, &Case { frame, plate, end, others: &ends[1..], column, ply, welds });
+        let mut others = ends[1..].to_vec();
+        // A sloping one in the beam's plane is seen also where neither weld nor piece holds it to the plate.
+        let known = |end: &EndOn| ends.iter().any(|own| own.member == end.member);
+        let in_plane = |end: &&EndOn| {
+            let member = &scene.steel.members[end.member];
+            let tolerances = scene.tolerances();
+            end.slope > tolerances.angle
+                && member.shape == Shape::I
+                && Some(end.member) != draft.joint.supporting
+                && are_parallel(member.across, frame.side, tolerances.angle)
+                && frame.across(member.start).abs() <= tolerances.position.get()
+        };
+        others.extend(scene.touches.ends[plate].iter().filter(|end| !known(end)).filter(in_plane));
+        end_plate::lay_out(scene, &mut draft, &Case { frame, plate, end, others: &others, column, ply, welds });
     }
     Some(draft)
 }
@@ -175,7 +188,8 @@ pub(super) fn covers_both_flanges(scene: &Scene, frame: &Frame, end: &EndOn, pla
     let beam = &scene.steel.members[end.member];
     let (t_f, _) = thicknesses(beam);
     let heights = Span::of(frame.outline(&scene.steel.plates[plate]).iter().map(|p| p.y));
-    heights.is_some_and(|heights| heights.holds(t_f / 2.0) && heights.holds(beam.extents.y - t_f / 2.0))
+    let middles = [t_f / 2.0, beam.extents.y - t_f / 2.0].map(|height| frame.along_plate(height));
+    heights.is_some_and(|heights| middles.iter().all(|middle| heights.holds(*middle)))
 }
 
 /// Whether a weld lies at a flange, or nothing is known of the welds' places.

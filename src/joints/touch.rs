@@ -37,6 +37,9 @@ pub(super) struct EndOn {
     pub(super) gap: f64,
     /// Between the member's axis and the plate's normal, degrees.
     pub(super) slope: f64,
+    /// How far its end's furthest corner stands out from the middle along the normal: what a mitred end reaches beyond the
+    /// plate's face with its middle, mm.
+    pub(super) mitre: f64,
 }
 
 /// Everything that touches.
@@ -208,7 +211,8 @@ fn end_on(steel: &Steelwork, m: usize, plate: &Plate, slab: &Slab, touch: f64) -
             |axis: DVec3| member.across.dot(axis).abs() * body.half.x + member.depth.dot(axis).abs() * body.half.y;
         let over =
             local.x.abs() <= slab.half.x + reach(slab.axes[0]) && local.y.abs() <= slab.half.y + reach(slab.axes[1]);
-        (seated && over).then_some(EndOn { member: m, at_end, gap, slope })
+        let mitre = reach(plate.normal);
+        (seated && over).then_some(EndOn { member: m, at_end, gap, slope, mitre })
     };
     [at(false), at(true)].into_iter().flatten()
 }

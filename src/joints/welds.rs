@@ -9,7 +9,7 @@ use crate::units::{Length, mm};
 
 /// A weld's middle may lie this far from the middle of the flange or web that it welds, mm, beyond half its thickness:
 /// a fillet's leg and the slackness with which welds are drawn.
-const BESIDE: f64 = 30.0;
+pub(super) const BESIDE: f64 = 30.0;
 
 /// The place of a weld in an end-plate joint.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord)]
@@ -70,7 +70,7 @@ fn by_place(scene: &Scene, frame: &Frame, member: usize, weld: usize) -> Vec<Rol
     vec![role]
 }
 
-fn spans(scene: &Scene, frame: &Frame, weld: usize) -> Option<(Span, Span)> {
+pub(super) fn spans(scene: &Scene, frame: &Frame, weld: usize) -> Option<(Span, Span)> {
     let points = || scene.steel.welds[weld].points.iter().copied().filter(|p| p.is_finite());
     Span::of(points().map(|p| frame.across(p))).zip(Span::of(points().map(|p| frame.height(p))))
 }

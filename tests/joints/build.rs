@@ -316,6 +316,23 @@ pub fn add_haunch(steel: &mut Steelwork, detail: &Detail, haunch: Haunched) {
     }
 }
 
+/// The same haunch cut from an I section that is no smaller than the beam: its flange below, its web as far as the soffit;
+/// its upper flange, which lies within the beam, is cut away.
+pub fn add_cut_haunch(steel: &mut Steelwork, detail: &Detail, sizes: Sizes, (depth, length): (f64, f64), throat: f64) {
+    let face = COLUMN.1 / 2.0 + detail.thickness;
+    let point = |out: f64, up: f64| DVec3::new(face + out, 0.0, detail.soffit + up);
+    let up = DVec3::new(-depth, 0.0, length).normalize();
+    // As the exchange tells a mitred member: from its furthest corner to its furthest corner.
+    let (underside, tip) = (point(0.0, -depth), point(length, 0.0));
+    let haunch = member("H1", sizes, underside + up * sizes.1 / 2.0, tip + up * sizes.1 / 2.0, DVec3::Z);
+    steel.pieces[0].parts.push(Part::Member(steel.members.len()));
+    steel.members.push(haunch);
+    let lo = point(0.0, -depth + sizes.4) - DVec3::Y * sizes.2 / 2.0;
+    steel.welds.push(weld("H-F-W", lo, lo + DVec3::new(throat, sizes.2, throat), throat));
+    let lo = point(0.0, -depth + 2.0 * sizes.4) - DVec3::Y * (sizes.3 / 2.0 + throat);
+    steel.welds.push(weld("H-W-W", lo, point(throat, -40.0) + DVec3::Y * (sizes.3 / 2.0 + throat), throat));
+}
+
 pub fn hole(x: f64, y: f64, diameter: f64, length: f64) -> Hole {
     Hole { centre: DVec2::new(x, y), diameter, length }
 }

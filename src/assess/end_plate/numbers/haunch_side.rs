@@ -34,12 +34,14 @@ impl HaunchSide {
         noted: &mut Noted,
     ) -> Option<Option<Self>> {
         let Some(laid) = laid else { return Some(None) };
+        // Of two plates, or of one section.
+        let body = if laid.guids.len() == 1 { "of the section that it is cut from" } else { "the plate's body" };
         let sizes = [
             ("haunch depth", laid.depth, "from the beam's soffit to the underside of its flange"),
             ("haunch length", laid.length, "from the end plate to its flange's end"),
-            ("haunch flange thickness", laid.flange_thickness, "the plate's body"),
-            ("haunch flange width", laid.flange_width, "the plate's body"),
-            ("haunch web thickness", laid.web_thickness, "the plate's body"),
+            ("haunch flange thickness", laid.flange_thickness, body),
+            ("haunch flange width", laid.flange_width, body),
+            ("haunch web thickness", laid.web_thickness, body),
         ];
         for (name, value, what) in sizes {
             noted.given(name, value, what);
