@@ -180,7 +180,8 @@ fn review(args: &ReviewArgs) -> Result<u8, Failure> {
         Format::Text => Ok(Drawn::Whole(text::render(review, &output.options(args.common.all), Some(model)))),
         Format::Json => Ok(Drawn::Written(|review, to| json::write_review(review, to))),
     };
-    let review = report(&args.path, Some(&args.schedule), &args.common.places(), draw)?;
+    let quotes = matches!(args.common.format, Format::Text);
+    let review = report(&args.path, Some(&args.schedule), &args.common.places(), quotes, draw)?;
     let code = review.exit_code();
     // The program ends: the system takes all memory back at once.
     std::mem::forget(review);
@@ -195,7 +196,7 @@ fn survey(args: &SurveyArgs) -> Result<u8, Failure> {
         Format::Text => Ok(Drawn::Whole(survey::render(review, &output.options(args.common.all)))),
         Format::Json => Ok(Drawn::Written(|review, to| json::write_survey(review, to))),
     };
-    report(&args.path, None, &args.common.places(), draw).map(std::mem::forget).map(|()| 0)
+    report(&args.path, None, &args.common.places(), false, draw).map(std::mem::forget).map(|()| 0)
 }
 
 fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {
@@ -206,7 +207,7 @@ fn sheet_of(args: &SheetArgs) -> Result<u8, Failure> {
         color: args.color,
     };
     let draw = |review: &Review, output: &Output, _: &[u8]| sheet::draw(args, review, output).map(Drawn::Whole);
-    let review = report(&args.path, Some(&args.schedule), &places, draw)?;
+    let review = report(&args.path, Some(&args.schedule), &places, false, draw)?;
     sheet::exit_code(args, &review)
 }
 
@@ -216,17 +217,23 @@ enum Drawn {
     Written(fn(&Review, &mut dyn Write) -> io::Result<()>),
 }
 
-/// Reads, runs, draws and writes; `schedules` is `None` where none is wanted, not even the folder's own.
+/// Reads, runs, draws and writes; `schedules` is `None` where none is wanted, not even the folder's own;
+/// `quotes` says whether the report shows the model's text, which is let go early otherwise.
 fn report(
     path: &Path,
     schedules: Option<&[PathBuf]>,
     places: &Places<'_>,
+    quotes: bool,
     draw: impl FnOnce(&Review, &Output, &[u8]) -> Result<Drawn, Failure>,
 ) -> Result<Review, Failure> {
-    let given = Given::gather(path, schedules, places.rules)?;
+    let mut given = Given::gather(path, schedules, places.rules)?;
     // Before the work is done, so that nobody waits for a report that can't be written.
     let output = Output::open(places.output, places.color, &given.paths)?;
-    let review = progress::watched("reading and checking the model", || run::run_by(&given.inputs(), places.annex))?;
+    let gone = (!quotes).then(|| std::mem::take(&mut given.model.bytes));
+    let review = progress::watched("reading and checking the model", || match gone {
+        Some(bytes) => run::run_letting_go(&given.inputs(), bytes, places.annex),
+        None => run::run_by(&given.inputs(), places.annex),
+    })?;
     let drawn = draw(&review, &output, &given.model.bytes)?;
     output.write(|to| match drawn {
         Drawn::Whole(text) => to.write_all(text.as_bytes()),

@@ -50,14 +50,28 @@ pub fn run(inputs: &Inputs<'_>) -> Result<Review, Failed> {
 /// # Errors
 /// As [`run`].
 pub fn run_by(inputs: &Inputs<'_>, annex: Option<&str>) -> Result<Review, Failed> {
+    run_with(inputs, inputs.model.1, annex)
+}
+
+/// As [`run_by`], but with the model's `bytes` given away instead of those in the inputs: they are let go once the
+/// model is read, because their memory is better used for what follows.
+///
+/// # Errors
+/// As [`run`].
+pub fn run_letting_go(inputs: &Inputs<'_>, bytes: Vec<u8>, annex: Option<&str>) -> Result<Review, Failed> {
+    run_with(inputs, bytes, annex)
+}
+
+fn run_with(inputs: &Inputs<'_>, bytes: impl AsRef<[u8]> + Send, annex: Option<&str>) -> Result<Review, Failed> {
     let mut rulebook = Rulebook::with_overrides(&inputs.rules).map_err(|e| Failed::Rules(Box::new(e)))?;
     if let Some(annex) = annex {
         rulebook.use_annex(annex).map_err(Failed::Annex)?;
     }
     let intent = intent::read_all(&inputs.schedules).map_err(|e| Failed::Schedule(Box::new(e)))?;
-    let (file, bytes) = inputs.model;
-    let mut exchange = exchange::read(bytes, file)?;
-    let steelwork = shop::take_up(&exchange, &rulebook);
+    let file = inputs.model.0;
+    let mut exchange = exchange::read(bytes.as_ref(), file)?;
+    let last_use = move || compose::sha256(bytes.as_ref());
+    let (steelwork, sha256) = rayon::join(|| shop::take_up(&exchange, &rulebook), last_use);
     // Nobody asks the graph any more: its memory is better used for what follows.
     exchange.entities = exchange::Entities::default();
     let joints = joints::recognise(&steelwork, &rulebook);
@@ -71,7 +85,7 @@ pub fn run_by(inputs: &Inputs<'_>, annex: Option<&str>) -> Result<Review, Failed
         pairing: &pairing,
         schedules: inputs.schedules.iter().map(|(file, _)| *file).collect(),
     };
-    let review = compose::review(&sources, file, bytes);
+    let review = compose::review_of(&sources, file, sha256);
     // What nobody asks any more is let go while the report is drawn.
     rayon::spawn(move || drop((steelwork, joints)));
     Ok(review)

@@ -37,14 +37,21 @@ pub struct Sources<'a> {
     pub schedules: Vec<&'a str>,
 }
 
+/// The SHA-256 of a model's bytes, as hexadecimal digits.
+pub fn sha256(bytes: &[u8]) -> String {
+    Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect()
+}
+
 /// The review of everything.
 pub fn review(sources: &Sources<'_>, file: &str, bytes: &[u8]) -> Review {
+    review_of(sources, file, sha256(bytes))
+}
+
+/// The same, for who has let the model's bytes go and kept their [`sha256`].
+pub fn review_of(sources: &Sources<'_>, file: &str, sha256: String) -> Review {
     let (solver, checks) = (Solver::new(sources.rulebook), joint::Checks::new(sources.rulebook.welds.min_throat));
     let found = (0..sources.joints.joints.len()).into_par_iter();
-    let (mut joints, sha256) = rayon::join(
-        || found.map(|index| sources.found(&solver, &checks, index)).collect::<Vec<JointReview>>(),
-        || Sha256::digest(bytes).iter().map(|byte| format!("{byte:02x}")).collect(),
-    );
+    let mut joints: Vec<JointReview> = found.map(|index| sources.found(&solver, &checks, index)).collect();
     let pairing = sources.pairing;
     joints.extend(pairing.not_found.iter().filter_map(|&index| sources.without_steel(index, false)));
     joints.extend(pairing.unclear.iter().filter_map(|&index| sources.without_steel(index, true)));
