@@ -147,7 +147,7 @@ fn faults_of_toml_files() {
             ("[detail]\nM3 = 1\n", &[("2:6", "M3: given \"1\"", "[detail.NAME]")]),
             (
                 "[detail.M3]\nplates = {}\n",
-                &[("2:1", "\"plates\"", "bolts, plate, welds, stiffeners, haunch, base, members")],
+                &[("2:1", "\"plates\"", "bolts, plate, welds, stiffeners, haunch, members, exposed, base")],
             ),
             ("[detail.M3]\nplate = { thick = 1 }\n", &[("2:11", "\"thick\"", "thickness_mm")]),
             ("[detail.M3]\nplate = { thickness_mm = 0 }\n", &[("2:26", "\"0\"", "above 0")]),

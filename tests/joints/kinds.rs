@@ -1,6 +1,6 @@
 //! The other kinds: listed with their parts, not laid out.
 
-use faying::joints::{self, Joint, Kind, Meets};
+use faying::joints::{self, Joint, Kind, Laid, Meets, SimpleLayout};
 use faying::shop::{Part, Shape, Steelwork};
 use glam::DVec3;
 
@@ -148,7 +148,12 @@ fn fin() -> Steelwork {
 
 #[test]
 fn a_fin_plate() {
-    let joint = is(&fin(), Kind::FinPlate, 3, Some(0), Some(1));
+    let joint = only(&fin());
+    assert_eq!(
+        (joint.kind, joint.bolts.len(), joint.supporting, joint.supported),
+        (Kind::FinPlate, 3, Some(0), Some(1))
+    );
+    assert!(matches!(joint.layout, Ok(Laid::Simple(SimpleLayout::FinPlate(_)))));
     assert_eq!((joint.at_end, &joint.plates[..]), (Some(false), &[(0, "plate")][..]));
 }
 

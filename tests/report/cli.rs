@@ -200,9 +200,11 @@ fn a_report_says_the_stiffness_and_what_the_class_would_need() {
     assert!(!all.is_empty());
     for stiffness in all.iter().map(|joint| &joint["stiffness"]) {
         assert!(stiffness["initial_knm_per_rad"].as_f64().is_some_and(|s| s > 0.0), "{stiffness}");
-        assert!(stiffness["class"].as_str().unwrap().starts_with("not stated"), "{stiffness}");
-        assert!(stiffness["rigid_from_knm_per_rad"].is_null() && stiffness["assumed"].is_null());
-        assert_eq!(stiffness["springs"][2]["title"], "rows in tension, keq");
+        // A class only where a limit stands beside it, and the other way round.
+        let class = stiffness["class"].as_str().unwrap();
+        assert_eq!(class.starts_with("not stated"), stiffness["rigid_from_knm_per_rad"].is_null(), "{stiffness}");
+        let springs = stiffness["springs"].as_array().unwrap();
+        assert_eq!(springs.last().unwrap()["title"], "rows in tension, keq");
     }
     let page = String::from_utf8(faying(["review", text(&sample)]).stdout).unwrap();
     assert!(page.contains("stiffness: Sj,ini "), "{page}");

@@ -29,10 +29,15 @@ fn sample(mark: &str, rest: &[&str]) -> (Option<i32>, String, String) {
     run(&[&["sheet", "sample-exchange", "--joint", mark], rest].concat())
 }
 
-/// The sample's joints as the review has them, by mark.
-fn reviewed() -> BTreeMap<String, Value> {
+/// The sample's review.
+fn whole() -> Value {
     let (_, json, _) = run(&["review", "sample-exchange", "--format", "json"]);
-    let review: Value = serde_json::from_str(&json).unwrap();
+    serde_json::from_str(&json).unwrap()
+}
+
+/// Its joints by mark.
+fn reviewed() -> BTreeMap<String, Value> {
+    let review = whole();
     let joints = review["joints"].as_array().unwrap().iter();
     joints.map(|joint| (joint["mark"].as_str().unwrap().to_owned(), joint.clone())).collect()
 }
@@ -151,6 +156,8 @@ const JOINTS: [&str; 6] = ["J02", "J10", "J14", "J21", "J27", "W5 / K1"];
 
 #[test]
 fn a_sheet_says_what_the_review_says_in_text_and_in_html() {
+    let whole = whole();
+    let sha256 = whole["model"]["sha256"].as_str().unwrap();
     for (mark, joint) in reviewed().iter().filter(|(mark, _)| JOINTS.contains(&mark.as_str())) {
         let code = match joint["outcome"].as_str().unwrap() {
             "hold" => 1,
@@ -214,7 +221,7 @@ fn a_sheet_says_what_the_review_says_in_text_and_in_html() {
         );
         let levels: Vec<u8> = page.headings.iter().map(|(level, _)| *level).collect();
         assert!(levels[0] == 1 && levels.windows(2).all(|pair| pair[1] <= pair[0] + 1), "{mark}: {levels:?}");
-        for said in ["Checked by", "Date", "a licensed engineer decide", "af3ddb8203ce9f03"] {
+        for said in ["Checked by", "Date", "a licensed engineer decide", sha256] {
             assert!(text.contains(said) && page.text.contains(said), "{mark}: {said}");
         }
     }
@@ -259,7 +266,7 @@ fn a_joint_is_found_by_its_mark_or_by_a_part_that_no_other_has() {
     assert_eq!(both.len(), 2, "a beam has two ends");
     for (asked, said) in [
         ("J2", vec!["no joint is called \"J2\"; near it: J02"]),
-        ("?", vec!["no joint is called \"?\"; there are: J01, J02", "and 16 more"]),
+        ("?", vec!["no joint is called \"?\"; there are: J01, J02", " more"]),
         (beam, vec!["fits 2 joints: ", both[0], both[1]]),
     ] {
         let (exit, out, told) = sample(asked, &[]);
