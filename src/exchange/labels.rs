@@ -18,7 +18,7 @@ pub(super) struct Labels {
 impl Labels {
     /// None yet, to be taken over by these later.
     pub fn further_on(&self) -> Self {
-        Self { ids: HashTable::new(), hasher: self.hasher.clone() }
+        Self { ids: HashTable::new(), hasher: self.hasher }
     }
 
     /// Takes over the labels of a later part of the file, made by [`Labels::further_on`], whose entities will follow
