@@ -20,6 +20,8 @@ use shear::Tension;
 use solver::Solved;
 pub use solver::Solver;
 
+use std::sync::Arc;
+
 use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict};
 use crate::intent::LoadCase;
 use crate::joints::BoltedPlate;
@@ -140,7 +142,7 @@ pub fn assess_with<'l>(
 ) -> Assessment {
     let rulebook = solver.rulebook;
     let mut noted = Noted::default();
-    let numbers = Numbers::gather(layout.into(), rulebook, &mut noted);
+    let numbers = Numbers::gather(layout.into(), rulebook, &mut noted).map(Arc::new);
     let mut assessment = Assessment { ..Assessment::default() };
     if let Some(n) = &numbers {
         let without: Vec<&LoadCase> =
@@ -158,7 +160,7 @@ pub fn assess_with<'l>(
         if n.side.haunch.is_some() {
             noted.assumptions.push("with tension at the bottom the haunch and the rows beside it are left out".into());
         }
-        let turned = n.upside_down();
+        let turned = Arc::new(n.upside_down());
         let solve = |sense: Sense, beta: f64, beside: Beside, rule: Option<RowForces>| {
             solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, beside, rule)
         };
@@ -312,8 +314,8 @@ fn not_computed(case: &LoadCase) -> Vec<Verdict> {
 }
 
 struct Cases<'a, F> {
-    n: &'a Numbers,
-    turned: &'a Numbers,
+    n: &'a Arc<Numbers>,
+    turned: &'a Arc<Numbers>,
     solver: &'a Solver<'a>,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,
