@@ -13,12 +13,13 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let diameter = context.layout.and_then(|layout| layout.bolts().diameter.as_ref().ok());
     let Some(size) = diameter.and_then(|d| context.rulebook.bolt_size(d.value)) else { return Vec::new() };
     let tolerance = context.rulebook.tolerances.position;
-    let clash = |beside: room::Beside| {
+    let clash = |beside: room::Beside<'_>| {
         let part = |what: &str, needs| {
             let message = format!(
-                "{what} of the bolts in the row at {} does not fit beside {}: {} from the bolt's axis, it needs {}",
+                "{what} of the bolts in the row at {} does not fit beside {}{}: {} from the bolt's axis, it needs {}",
                 mm(beside.row),
-                beside.what,
+                beside.what.0,
+                beside.what.1,
                 mm(beside.distance),
                 mm(needs)
             );
@@ -32,7 +33,7 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
         } else {
             return None;
         };
-        Some(Finding::new(ID, severity, message).against(least, mm(beside.distance)).on(beside.on))
+        Some(Finding::new(ID, severity, message).against(least, mm(beside.distance)).on(context.parts(beside.on)))
     };
     room::beside(context).into_iter().filter_map(clash).collect()
 }

@@ -18,17 +18,18 @@ fn look(context: &Context<'_>) -> Vec<Finding> {
     let tight = room::beside(context)
         .into_iter()
         .filter(|beside| !less(beside.distance, fits, tolerance) && less(beside.distance, socket, tolerance));
-    let finding = |beside: room::Beside| {
+    let finding = |beside: room::Beside<'_>| {
         let message = format!(
-            "a socket hardly fits on the bolts in the row at {} beside {}: {} from the bolt's axis, {} are wanted \
+            "a socket hardly fits on the bolts in the row at {} beside {}{}: {} from the bolt's axis, {} are wanted \
              (common practice without a source)",
             mm(beside.row),
-            beside.what,
+            beside.what.0,
+            beside.what.1,
             mm(beside.distance),
             mm(socket)
         );
         let (wanted, there) = (format!("at least {}", mm(socket)), mm(beside.distance));
-        Finding::new(ID, Outcome::Comment, message).against(wanted, there).on(beside.on)
+        Finding::new(ID, Outcome::Comment, message).against(wanted, there).on(context.parts(beside.on))
     };
     tight.map(finding).collect()
 }

@@ -21,6 +21,8 @@ use shear::Tension;
 use solver::Solved;
 pub use solver::Solver;
 
+use std::sync::Arc;
+
 use super::{About, Assessment, CaseResult, Component, Gap, MomentResistance, RowForce, Sense, State, Verdict, simple};
 use crate::intent::LoadCase;
 use crate::joints::BoltedPlate;
@@ -141,7 +143,7 @@ pub fn assess_with<'l>(
 ) -> Assessment {
     let rulebook = solver.rulebook;
     let mut noted = Noted::default();
-    let numbers = Numbers::gather(layout.into(), rulebook, &mut noted);
+    let numbers = Numbers::gather(layout.into(), rulebook, &mut noted).map(Arc::new);
     let mut assessment = Assessment { ..Assessment::default() };
     if let Some(n) = &numbers {
         let without: Vec<&LoadCase> =
@@ -159,7 +161,7 @@ pub fn assess_with<'l>(
         if n.side.haunch.is_some() {
             noted.assumptions.push("with tension at the bottom the haunch and the rows beside it are left out".into());
         }
-        let turned = n.upside_down();
+        let turned = Arc::new(n.upside_down());
         let solve = |sense: Sense, beta: f64, beside: Beside, rule: Option<RowForces>| {
             solver.moment(if sense == Sense::Hogging { n } else { &turned }, sense, beta, beside, rule)
         };
@@ -321,8 +323,8 @@ fn tying(case: &LoadCase) -> Option<Verdict> {
 }
 
 struct Cases<'a, F> {
-    n: &'a Numbers,
-    turned: &'a Numbers,
+    n: &'a Arc<Numbers>,
+    turned: &'a Arc<Numbers>,
     solver: &'a Solver<'a>,
     rulebook: &'a Rulebook,
     n_pl: crate::units::Force,

@@ -59,8 +59,8 @@ pub fn resistance(
     };
     let bolts_used = forces.iter().map(|row| row.bolt_share).fold(0.0, f64::max);
     for (id, title, resistance, working) in [
-        ("bolts-in-tension", "most used bolt in tension, prying included", n.bolts.F_t_Rd, &n.bolts.tension_working),
-        ("punching", plies, n.punching(), &n.punching_working),
+        ("bolts-in-tension", "most used bolt in tension, prying included", n.bolts.F_t_Rd, &n.bolts.tension_working.0),
+        ("punching", plies, n.punching(), &n.punching_working.0),
     ] {
         components.push(Component {
             id: id.into(),

@@ -91,7 +91,18 @@ pub struct BoltNumbers {
     /// Slip at the ultimate limit state, where the bolts are of category C and everything for it is known.
     pub slip: Option<Slip>,
     pub F_t_Rd: Force,
-    pub tension_working: Arc<Working>,
+    pub tension_working: Worked,
+}
+
+/// The working of what stands beside it, whose words follow from that: compared by its values alone.
+#[derive(Clone, Debug)]
+pub struct Worked(pub Arc<Working>);
+
+impl PartialEq for Worked {
+    fn eq(&self, other: &Self) -> bool {
+        let values = self.0.steps.iter().map(|step| step.value.value);
+        Arc::ptr_eq(&self.0, &other.0) || values.eq(other.0.steps.iter().map(|step| step.value.value))
+    }
 }
 
 /// What the end plate is bolted to.
@@ -112,7 +123,7 @@ pub struct Numbers {
     /// The other side.
     pub support: Support,
     pub bolts: BoltNumbers,
-    pub punching_working: Arc<Working>,
+    pub punching_working: Worked,
     pub rows: Vec<Row>,
 }
 
@@ -174,7 +185,7 @@ impl Numbers {
             side,
             support,
             bolts,
-            punching_working: Arc::new(w),
+            punching_working: Worked(Arc::new(w)),
             rows: (joint.bolts.rows.iter().enumerate())
                 .map(|(i, row)| Row {
                     number: i + 1,
@@ -338,7 +349,7 @@ impl BoltNumbers {
             packing,
             slip,
             F_t_Rd: tension.value,
-            tension_working: Arc::new(tension.working),
+            tension_working: Worked(Arc::new(tension.working)),
         })
     }
 }

@@ -25,10 +25,10 @@ pub struct Solver<'a> {
 }
 
 /// Everything that a resistance depends on besides the rulebook. Compared as a whole; a NaN equals nothing, so it is
-/// never found again.
+/// never found again by another joint.
 #[derive(PartialEq)]
 struct Question {
-    numbers: Numbers,
+    numbers: Arc<Numbers>,
     sense: Sense,
     beta: f64,
     beside: Beside,
@@ -36,7 +36,7 @@ struct Question {
 }
 
 /// A shear resistance with all that it depends on besides the rulebook.
-type Sheared = (Numbers, Drawn, Arc<ShearResistance>);
+type Sheared = (Arc<Numbers>, Drawn, Arc<ShearResistance>);
 
 /// What of the bolts' tension bears on their shear.
 #[derive(PartialEq)]
@@ -83,7 +83,7 @@ impl<'a> Solver<'a> {
     /// M_j,Rd of the joint with its tension side up; see [`moment::resistance`].
     pub(super) fn moment(
         &self,
-        n: &Numbers,
+        n: &Arc<Numbers>,
         sense: Sense,
         beta: f64,
         beside: Beside,
@@ -96,7 +96,7 @@ impl<'a> Solver<'a> {
         let shelf = shelf(n, beta, V_Ed);
         let asked = |entry: &&Entry| {
             let Question { numbers, sense: s, beta: b, beside: v, rule: r } = &entry.question;
-            (*s, *b, *v, *r) == (sense, beta, beside, rule) && numbers == n
+            (*s, *b, *v, *r) == (sense, beta, beside, rule) && same(numbers, n)
         };
         if let Some(entry) = locked(&self.solved).get(&shelf).and_then(|entries| entries.iter().find(asked)) {
             return entry.solved.clone();
@@ -108,10 +108,10 @@ impl<'a> Solver<'a> {
     }
 
     /// V_Rd beside a tension; see [`shear::resistance`].
-    pub fn shear(&self, n: &Numbers, tension: Tension<'_>) -> Arc<ShearResistance> {
+    pub fn shear(&self, n: &Arc<Numbers>, tension: Tension<'_>) -> Arc<ShearResistance> {
         let drawn = Drawn::of(tension);
         let shelf = shelf(n, drawn.number(), Force::ZERO);
-        let asked = |(numbers, other, _): &&Sheared| *other == drawn && numbers == n;
+        let asked = |(numbers, other, _): &&Sheared| *other == drawn && same(numbers, n);
         if let Some((.., known)) = locked(&self.sheared).get(&shelf).and_then(|entries| entries.iter().find(asked)) {
             return known.clone();
         }
@@ -119,6 +119,11 @@ impl<'a> Solver<'a> {
         locked(&self.sheared).entry(shelf).or_default().push((n.clone(), drawn, solved.clone()));
         solved
     }
+}
+
+/// A joint asks for several resistances by the same numbers.
+fn same(a: &Arc<Numbers>, b: &Arc<Numbers>) -> bool {
+    Arc::ptr_eq(a, b) || a == b
 }
 
 fn locked<T>(shelves: &Mutex<T>) -> MutexGuard<'_, T> {
