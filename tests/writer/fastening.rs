@@ -50,7 +50,7 @@ pub fn beam_seams(section: &Section, face: Face, plate: &EndPlate, welds: &Welds
         ("lower flange", flange(t_f / 2.0), welds.flange),
         ("web", web, welds.web),
     ];
-    all.into_iter().filter(|(.., throat)| *throat >= 0.0).collect()
+    all.into_iter().filter(|(.., throat)| !(*throat < 0.0)).collect()
 }
 
 /// The bolts of an end plate, heads on the plate, nuts behind a part of that thickness.
