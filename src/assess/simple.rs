@@ -7,6 +7,7 @@ mod flexible;
 use std::sync::Arc;
 
 use super::{About, Assessment, CaseResult, Component, Gap, Input, ShearResistance, State, Verdict};
+use crate::eurocode::Resistance;
 use crate::intent::{IntendedDetail, LoadCase};
 use crate::joints::SimpleLayout;
 use crate::rulebook::Rulebook;
@@ -44,6 +45,18 @@ pub fn with_detail(layout: &SimpleLayout, detail: &IntendedDetail) -> Option<Sim
             Some(SimpleLayout::ColumnBase(Box::new(base)))
         }
         SimpleLayout::FinPlate(_) | SimpleLayout::FlexibleEndPlate(_) => None,
+    }
+}
+
+/// A component by its resistance; what it carries of V_Ed is told by the case.
+fn component(id: &str, title: &str, clause: &'static str, resistance: Resistance) -> Component {
+    Component {
+        id: id.into(),
+        title: title.into(),
+        clause,
+        resistance: resistance.value,
+        at_full: Force::ZERO,
+        working: resistance.working.into(),
     }
 }
 

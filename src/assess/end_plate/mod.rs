@@ -297,16 +297,7 @@ fn at_upper_bound(assessment: &Assessment, demands: &[Demand<'_>], two_sided: bo
 
 fn not_computed(case: &LoadCase) -> Vec<Verdict> {
     let reason = "an input is missing";
-    let unproven = |about, required: Option<f64>, unit| Verdict {
-        about,
-        state: State::Unproven,
-        required,
-        resistance: None,
-        unit,
-        utilisation: None,
-        governed_by: String::new(),
-        reason: Some(reason.into()),
-    };
+    let unproven = |about, required, unit| simple::unproven(about, required, unit, reason.into());
     let mut verdicts = vec![
         unproven(About::Moment, case.moment.map(|m| m.knm()), "kNm"),
         unproven(About::Shear, case.shear.map(|v| v.kn()), "kN"),
@@ -547,16 +538,7 @@ fn component_governing(resistance: &MomentResistance) -> String {
 }
 
 fn unproven(about: About, required: Option<Moment>, reason: String) -> Verdict {
-    Verdict {
-        about,
-        state: State::Unproven,
-        required: required.map(|m| m.knm()),
-        resistance: None,
-        unit: "kNm",
-        utilisation: None,
-        governed_by: String::new(),
-        reason: Some(reason),
-    }
+    simple::unproven(about, required.map(|m| m.knm()), "kNm", reason)
 }
 
 fn unproven_shear() -> Verdict {

@@ -4,14 +4,14 @@ mod conditions;
 mod numbers;
 mod tying;
 
-use super::Strength;
+use super::{Strength, component};
 use crate::assess::Component;
 use crate::assess::end_plate::numbers::Noted;
 use crate::eurocode::bolts::BearingPlace;
 use crate::eurocode::{Resistance, bolt_group, bolts, fin_plate, net_section};
 use crate::joints::{FinPlate, On};
 use crate::rulebook::Rulebook;
-use crate::units::{Force, Length, Stress};
+use crate::units::{Length, Stress};
 use crate::working::Working;
 use crate::{given, step};
 use numbers::{Numbers, Ply};
@@ -27,17 +27,6 @@ pub(super) fn strength(layout: &FinPlate, rulebook: &Rulebook) -> Strength {
     }
     let Noted { inputs, assumptions, gaps, .. } = noted;
     Strength { shear, tying: pulled, gaps, assumptions, inputs }
-}
-
-fn component(id: &str, title: &str, clause: &'static str, resistance: Resistance) -> Component {
-    Component {
-        id: id.into(),
-        title: title.into(),
-        clause,
-        resistance: resistance.value,
-        at_full: Force::ZERO,
-        working: resistance.working.into(),
-    }
 }
 
 const GUIDE: &str = "fin plates, design guides";

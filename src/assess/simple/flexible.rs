@@ -4,7 +4,7 @@
 mod support;
 mod tying;
 
-use super::{Strength, pinned, weakest};
+use super::{Strength, component, pinned, weakest};
 use crate::assess::end_plate::numbers::{BoltNumbers, MemberStrength, Noted, print_length};
 use crate::assess::end_plate::sound;
 use crate::assess::{Assessment, Component};
@@ -67,17 +67,6 @@ pub fn assess(layout: &FlexibleEndPlate, cases: &[&LoadCase], rulebook: &Ruleboo
     }
     let Noted { inputs, assumptions, gaps, .. } = noted;
     pinned(Strength { shear, tying: pulled, gaps, assumptions, inputs }, cases, rulebook)
-}
-
-fn component(id: &str, title: &str, clause: &'static str, resistance: Resistance) -> Component {
-    Component {
-        id: id.into(),
-        title: title.into(),
-        clause,
-        resistance: resistance.value,
-        at_full: Force::ZERO,
-        working: resistance.working.into(),
-    }
 }
 
 impl<'a> Numbers<'a> {

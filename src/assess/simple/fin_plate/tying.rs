@@ -1,6 +1,6 @@
 //! A fin plate pulled by a tying force, by γ_Mu (design guides).
 
-use super::component;
+use super::super::component;
 use super::numbers::{Numbers, Ply};
 use crate::assess::Component;
 use crate::eurocode::bolts::BearingPlace;

@@ -1,6 +1,7 @@
 //! What the end plate hangs on.
 
-use super::{Numbers, TEARS, component};
+use super::super::component;
+use super::{Numbers, TEARS};
 use crate::assess::Component;
 use crate::eurocode::{Resistance, flexible};
 use crate::joints::HeldBy;

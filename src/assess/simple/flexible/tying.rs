@@ -1,6 +1,7 @@
 //! A tying force along the beam: ultimate strengths by γ_Mu, large deformations allowed (design guides).
 
-use super::{Numbers, component};
+use super::super::component;
+use super::Numbers;
 use crate::assess::Component;
 use crate::assess::end_plate::numbers::Noted;
 use crate::eurocode::Resistance;
